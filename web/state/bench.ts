@@ -1,0 +1,176 @@
+/**
+ * The bench: everything that the page shows and everything that it can ask for. Panels know this interface and nothing behind it,
+ * so a test can stand a fake in its place; `createBench.ts` makes the real one.
+ *
+ * Every call that can be refused returns the sentence to show, or null when it was taken; a refused call changes nothing.
+ * Signals of numbers that are measured now are null until sound has run.
+ */
+import type { ReadonlySignal } from '@preact/signals';
+import type { Design } from '../../model/design/types.ts';
+import type { ToneReading } from '../../model/study/tone.ts';
+
+export interface Bench {
+  // The document
+  readonly design: ReadonlySignal<Design>;
+  readonly heardVariant: ReadonlySignal<number>;
+  hearVariant(index: number): void;
+  /** Appends a copy of the heard variant under the next letter and hears it; refused when there are four. */
+  addVariant(): string | null;
+  /** What setting k leaves alone: the gate's bias and swing, or the control voltage. */
+  readonly keep: ReadonlySignal<Keep>;
+  setKeep(keep: Keep): void;
+  /** `path` is relative to the heard variant: `cell.seriesOhm`. Changes of one path in quick succession (a drag) undo as one. */
+  setValue(path: string, value: unknown): string | null;
+  setDesignValue(path: DesignPath, value: unknown): string | null;
+  setFeedbackFraction(k: number): string | null;
+  undo(): void;
+  redo(): void;
+  readonly canUndo: ReadonlySignal<boolean>;
+  readonly canRedo: ReadonlySignal<boolean>;
+  /** Faults of a file go to `notes`; the document stays as it was. */
+  openDesign(file: File): Promise<void>;
+  openExample(name: string): Promise<void>;
+  /** Downloads the design as JSON. */
+  saveDesign(): void;
+  readonly examples: ReadonlySignal<readonly ExampleEntry[]>;
+
+  // Sound
+  readonly sound: ReadonlySignal<SoundState>;
+  /** Called from a user's gesture. Resolves when sound plays or has failed (then `notes` says why). */
+  start(): Promise<void>;
+  stop(): void;
+  /** Mutes with a ramp; the chain and every reading go on. */
+  readonly muted: ReadonlySignal<boolean>;
+  setMuted(on: boolean): void;
+  readonly hearing: ReadonlySignal<Hearing>;
+  hear(which: Hearing): void;
+  readonly phrases: ReadonlySignal<readonly { readonly name: string; readonly title: string }[]>;
+  readonly source: ReadonlySignal<SourceInfo>;
+  choosePhrase(name: string): Promise<void>;
+  openAudio(file: File): Promise<void>;
+  /** Monitoring level after the chain's output, dB, −60 to 0. */
+  readonly listenDb: ReadonlySignal<number>;
+  setListenDb(db: number): string | null;
+  /** No sample leaves above this, dBFS, −40 to 0. */
+  readonly ceilingDbfs: ReadonlySignal<number>;
+  setCeilingDbfs(db: number): string | null;
+  /** Rate at which the context and the chain run, Hz; null before the first start. */
+  readonly rateHz: ReadonlySignal<number | null>;
+  /** Delay of the chain, input to output, s; null before the first start. */
+  readonly latencySec: ReadonlySignal<number | null>;
+
+  // Measured now
+  readonly live: ReadonlySignal<LiveLevels | null>;
+  /** The shadow tone at the control voltage of this moment (at rest while sound is stopped), about ten times a second. */
+  readonly reading: ReadonlySignal<ToneReading | { readonly fault: string } | null>;
+  /** The highest THD over the control's whole swing. */
+  readonly worst: ReadonlySignal<WorstReading | null>;
+  /** THD against k at this resting gate voltage, ascending in k. */
+  readonly feedbackCurve: ReadonlySignal<readonly FeedbackPoint[] | null>;
+  /** The shadow tone at the cell's input, V peak. */
+  readonly toneV: ReadonlySignal<number>;
+  setToneV(volts: number): string | null;
+  readonly toneHz: ReadonlySignal<number>;
+  setToneHz(hz: number): string | null;
+  /** Fills `into` with the latest samples of what the chain puts out, oldest first; zeros where there are none yet. At most 32768. */
+  outputSamples(into: Float32Array): void;
+  /** The same for what goes into the chain. */
+  inputSamples(into: Float32Array): void;
+  readonly spectrumRateHz: ReadonlySignal<number>;
+
+  // Takes: kept in memory until the page closes
+  readonly takes: ReadonlySignal<readonly Take[]>;
+  readonly taking: ReadonlySignal<{ readonly seconds: number } | null>;
+  readonly rendering: ReadonlySignal<{ readonly fraction: number } | null>;
+  /** Records what the chain puts out, before the listening level and the ceiling. */
+  startTake(): void;
+  endTake(): void;
+  /** Renders the whole source through the heard variant, off the audio thread, with the linear-phase filters. */
+  renderClip(): Promise<void>;
+  endRender(): void;
+  saveTake(id: number, format: TakeFormat): void;
+  /** Marks a take as deleted; `restoreTake` takes that back. */
+  deleteTake(id: number): void;
+  restoreTake(id: number): void;
+  renameTake(id: number, name: string): void;
+  /** Plays a take once in place of the chain's output, at the listening level and under the ceiling; null ends it. */
+  playTake(id: number | null): void;
+  readonly playingTake: ReadonlySignal<number | null>;
+
+  // What the user must be told, newest last
+  readonly notes: ReadonlySignal<readonly Note[]>;
+  dismiss(id: number): void;
+}
+
+export type Keep = 'gate' | 'control';
+export type Hearing = 'cell' | 'bypass';
+export type SoundState = 'idle' | 'starting' | 'playing' | 'stopped' | 'failed';
+export type DesignPath = 'fullScaleV' | 'tempC' | 'oversampling' | 'title';
+export type TakeFormat = 'pcm16' | 'pcm24' | 'float32';
+
+export interface ExampleEntry {
+  readonly name: string;
+  readonly title: string;
+  readonly scenario: string;
+}
+
+export interface SourceInfo {
+  readonly title: string;
+  readonly seconds: number;
+  readonly kind: 'phrase' | 'file';
+}
+
+/** Of the time since the last report (about 1/30 s), unless it says otherwise. dBFS of silence is −Infinity. */
+export interface LiveLevels {
+  readonly controlV: number;
+  readonly gateSourceV: number;
+  readonly inputPeakV: number;
+  readonly drainPeakV: number;
+  /** Of the chain's output, before the listening level. */
+  readonly outputPeakDbfs: number;
+  readonly outputRmsDbfs: number;
+  /** The highest output peak of the last 1.5 s. */
+  readonly recentPeakDbfs: number;
+  /** Of what leaves for the loudspeakers, after level, mute and ceiling. */
+  readonly heardPeakDbfs: number;
+  /** True while the ceiling turns the sound down. */
+  readonly atCeiling: boolean;
+  /** Since the start: times that the chain fell back to its last good values. */
+  readonly faults: number;
+  /** Since the start: gaps in the sound because the machine was late. */
+  readonly underruns: number;
+}
+
+export interface WorstReading {
+  readonly thdFundamental: number;
+  readonly gainDb: number;
+  readonly controlV: number;
+}
+
+export interface FeedbackPoint {
+  readonly k: number;
+  /** Re the fundamental, fractions. */
+  readonly thd: number;
+  /** Second harmonic with its sign: plus, raise k; minus, lower it. */
+  readonly h2Signed: number;
+  readonly h3: number;
+}
+
+/** k is the heard variant's feedback fraction when the take began. */
+export interface Take {
+  readonly id: number;
+  readonly name: string;
+  readonly variant: string;
+  readonly k: number;
+  readonly seconds: number;
+  readonly sampleRateHz: number;
+  readonly how: 'heard' | 'rendered';
+  readonly deleted: boolean;
+}
+
+export interface Note {
+  readonly id: number;
+  readonly kind: 'fault' | 'note';
+  readonly sentence: string;
+  readonly advice?: string;
+}
