@@ -3,9 +3,11 @@ import { readFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { brotliDecompressSync } from 'node:zlib';
 import { expect, test } from 'vitest';
-import manifest from '../../assets/fonts/manifest.json' with { type: 'json' };
 
 const folder = fileURLToPath(new URL('../../assets/fonts/', import.meta.url));
+const manifest: { family: string; fonts: { file: string; style: string; bytes: number; sha256: string }[] } = JSON.parse(
+  readFileSync(`${folder}manifest.json`, 'utf8'),
+);
 const files = manifest.fonts.map((font) => ({ ...font, data: readFileSync(folder + font.file) }));
 
 /** What the page may write without a foreign face: the words and values of a data sheet in western Latin. */
