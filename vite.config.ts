@@ -53,13 +53,16 @@ const assetsWithoutScripts: Plugin = {
 const firstLoadBudget: Plugin = {
   name: 'fettle-budget',
   apply: 'build',
-  writeBundle(_options, bundle) {
-    const weights = weighFirstLoad(bundle);
-    const totalKb = [...weights.values()].reduce((sum, kb) => sum + kb, 0);
-    const list = [...weights].map(([name, kb]) => `${name} ${kb.toFixed(1)}`).join(', ');
-    const sentence = `First-load JavaScript is ${totalKb.toFixed(1)} kB compressed, of ${FIRST_LOAD_LIMIT_KB} kB allowed (${list})`;
-    if (totalKb > FIRST_LOAD_LIMIT_KB) this.error(sentence);
-    this.info(sentence);
+  generateBundle: {
+    order: 'post',
+    handler(_options, bundle) {
+      const weights = weighFirstLoad(bundle);
+      const totalKb = [...weights.values()].reduce((sum, kb) => sum + kb, 0);
+      const list = [...weights].map(([name, kb]) => `${name} ${kb.toFixed(1)}`).join(', ');
+      const sentence = `First-load JavaScript is ${totalKb.toFixed(1)} kB compressed, of ${FIRST_LOAD_LIMIT_KB} kB allowed (${list})`;
+      if (totalKb > FIRST_LOAD_LIMIT_KB) this.error(sentence);
+      this.info(sentence);
+    },
   },
 };
 

@@ -12,12 +12,19 @@ if (major < 20 || (major === 20 && minor < 19)) stop(`This is Node ${process.ver
 
 const { build, preview } = await import('vite').catch(() => stop('Packages are missing: run npm ci first.'));
 
-await build({ configFile, logLevel: 'warn' }).catch((error) => stop(`Fettle could not be built: ${error.message}`));
+await build({ configFile, logLevel: 'warn' }).catch((error) => stop(`Fettle could not be built. ${withoutStack(error.message)}`));
 
 const server = await preview({ configFile, preview: { port: 4173, strictPort: false, host: 'localhost', open: false } }).catch((error) =>
   stop(`Fettle is built but could not be served: ${error.message}`),
 );
 console.log(`Fettle is at ${server.resolvedUrls.local[0]} (stop it with Ctrl+C)`);
+
+function withoutStack(message) {
+  return message
+    .split('\n')
+    .filter((line) => line.trim() !== '' && !/^ +at /.test(line))
+    .join('\n');
+}
 
 function stop(sentence) {
   console.error(sentence);
