@@ -35,7 +35,8 @@ describe('import arrows', () => {
       export * from './g.ts';
       const h = await import('./h.ts');
       let i: import('./i.ts').I;
-      const j = new Worker(new URL('./j.ts', import.meta.url));`;
+      const j = new Worker(new URL('./j.ts', import.meta.url));
+      const notAnImport = new URL('./k.ts', document.baseURI);`;
     const expected: Import[] = ['a', 'b', 'c', 'd', 'e', 'f', 'g', 'h', 'i', 'j'].map((name) => ({
       target: `./${name}.ts`,
       typeOnly: ['c', 'f', 'i'].includes(name),

@@ -29,7 +29,8 @@ export function readImports(path: string, source: string): Import[] {
     ImportExpression: ({ source }) => add(literal(source), false),
     TSImportType: ({ source }) => add(source.value, true),
     NewExpression: ({ callee, arguments: [target, base] }) => {
-      if (callee.type === 'Identifier' && callee.name === 'URL' && base?.type === 'MemberExpression') add(literal(target), false);
+      const besideThisFile = base?.type === 'MemberExpression' && base.object.type === 'MetaProperty';
+      if (callee.type === 'Identifier' && callee.name === 'URL' && besideThisFile) add(literal(target), false);
     },
   }).visit(parsed.program);
   return found;
