@@ -120,7 +120,6 @@ export default defineConfig({
           testTimeout: 120_000,
           hookTimeout: 120_000,
           fileParallelism: false,
-          retry: 0,
         },
       },
     ],
