@@ -1,0 +1,265 @@
+/**
+ * A gain cell that runs: its numbers reduced for one step length, its state, and the kernel of its shape.
+ * `compileCell` checks and may throw; `createCell` allocates; everything after that does neither.
+ */
+import type { Device } from '../design/types.ts';
+import { lawConstants } from '../device/law.ts';
+import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
+import type { Circuit } from './circuit.ts';
+import * as L from './kernels/layout.ts';
+import { SQUARE_KERNELS } from './kernels/square.ts';
+import { factor, solve } from './linear.ts';
+import { DRIVES, GATE_DRAIN, GATE_SOURCE, type Plan, planCircuit } from './plan.ts';
+import { createReduction, discretise, type Reduction, respond, stepColumns } from './reduce.ts';
+
+/** Boltzmann's constant over the elementary charge, V/K (SI 2019, exact values 1.380649e-23 and 1.602176634e-19). */
+const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
+/** Below this many nVT a junction carries its reverse current and no more: e^−10 of it is left out, under 1 aA for 10 fA. */
+const OFF_BELOW = -10;
+
+const BETA = 0;
+const GATE_OFF_V = 1;
+const REVERSE_A = 2;
+const NVT_V = 3;
+export const DEVICE_VALUES = 4;
+
+/** Plain numbers, structured-cloneable. `values` are the elements' movable values, then the device's. */
+export interface CellNumbers {
+  readonly plan: Plan;
+  readonly polarity: 1 | -1;
+  readonly values: Float64Array;
+}
+
+export interface Cell {
+  readonly numbers: CellNumbers;
+  readonly stateCount: number;
+  /** The values in force; changed by `loadValues`. */
+  readonly values: Float64Array;
+  readonly reduction: Reduction;
+  readonly coefficients: Float64Array;
+  readonly state: Float64Array;
+  readonly stepSec: number;
+  readonly rest: RestMemory;
+}
+
+interface RestMemory {
+  readonly coefficients: Float64Array;
+  readonly state: Float64Array;
+  readonly matrix: Float64Array;
+  readonly pivots: Int32Array;
+  readonly columns: Float64Array;
+  readonly audio: Float64Array;
+  readonly control: Float64Array;
+  readonly output: Float64Array;
+}
+
+/** Numbers of a circuit with its device at `tempC`. Throws a RangeError that names what cannot be computed. */
+export function compileCell(circuit: Circuit, device: Device, tempC: number): CellNumbers {
+  if (device.law !== 'square') throw new RangeError(`device.law is ${device.law}; the engine computes square so far`);
+  if (device.lambdaPerV !== 0) throw new RangeError(`device.lambdaPerV is ${device.lambdaPerV}; the engine computes 0 so far`);
+  const plan = planCircuit(circuit);
+  if (plan.states.length >= SQUARE_KERNELS.length) {
+    throw new RangeError(`the circuit has ${plan.states.length} independent capacitors; expected at most ${SQUARE_KERNELS.length - 1}`);
+  }
+  const law = lawConstants(device, tempC);
+  const { junction } = atTemperature(device, tempC).device;
+  const values = new Float64Array(plan.values.length + DEVICE_VALUES);
+  values.set(plan.values);
+  values[plan.values.length + BETA] = law.scale;
+  values[plan.values.length + GATE_OFF_V] = law.gateOffV;
+  values[plan.values.length + REVERSE_A] = junction.reverseA;
+  values[plan.values.length + NVT_V] = junction.ideality * VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
+  return { plan, polarity: device.channel === 'n' ? 1 : -1, values };
+}
+
+/** The same numbers with every capacitor advanced by the trapezoidal rule: second order throughout, for smooth steady signals. */
+export function withTrapezoidalRule(numbers: CellNumbers): CellNumbers {
+  const states = numbers.plan.states.map((state) => ({ ...state, newWeight: 0.5 }));
+  return { ...numbers, plan: { ...numbers.plan, states } };
+}
+
+/** A cell advancing by `stepSec`, with its states at zero: call `settle` before the first sample. Throws when the network is singular. */
+export function createCell(numbers: CellNumbers, stepSec: number): Cell {
+  const n = numbers.plan.states.length;
+  const cell: Cell = {
+    numbers,
+    stateCount: n,
+    values: Float64Array.from(numbers.values),
+    reduction: createReduction(numbers.plan),
+    coefficients: new Float64Array(L.coefficientLayout(n).length),
+    state: new Float64Array(n + L.STATE_SLOTS),
+    stepSec,
+    rest: {
+      coefficients: new Float64Array(L.coefficientLayout(0).length),
+      state: new Float64Array(L.STATE_SLOTS),
+      matrix: new Float64Array(n * n),
+      pivots: new Int32Array(n),
+      columns: new Float64Array(n * DRIVES),
+      audio: new Float64Array(1),
+      control: new Float64Array(1),
+      output: new Float64Array(1),
+    },
+  };
+  if (!loadValues(cell, numbers.values))
+    throw new RangeError('the circuit has a node without a path to ground; expected one for every node');
+  return cell;
+}
+
+/** Puts new values in force; the state stays as it is. False, with the old coefficients kept, when the network would be singular. */
+export function loadValues(cell: Cell, values: Float64Array): boolean {
+  const { reduction, stepSec } = cell;
+  for (let i = 0; i < reduction.values.length; i++) reduction.values[i] = values[i];
+  if (!respond(reduction) || !discretise(reduction, stepSec)) return false;
+  for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
+  packStep(cell);
+  return true;
+}
+
+/** Advances over the samples `from` to `to` of `signal`, V at the step rate: the audio in, the output node in its place. `control` in V. */
+export function advanceCell(cell: Cell, signal: Float64Array, control: Float64Array, from: number, to: number): void {
+  SQUARE_KERNELS[cell.stateCount](cell.coefficients, cell.state, signal, control, signal, from, to);
+}
+
+/** Gate-source voltage of the last sample, V, with the sign of the part's channel. */
+export function gateSourceV(cell: Cell): number {
+  return cell.numbers.polarity * (cell.state[cell.stateCount + L.OVERDRIVE_S] + gateOffV(cell));
+}
+
+/** Overdrives of the last sample, gate-source and gate-drain less VGS(off), V, in the n-channel frame. */
+export function overdriveV(cell: Cell, end: 'source' | 'drain'): number {
+  return cell.state[cell.stateCount + (end === 'source' ? L.OVERDRIVE_S : L.OVERDRIVE_D)];
+}
+
+/** Whether a gate junction carried more than `amperes` forward in the last sample. */
+export function gateConducts(cell: Cell, amperes: number): boolean {
+  return cell.state[cell.stateCount + L.JUNCTION_S] > amperes || cell.state[cell.stateCount + L.JUNCTION_D] > amperes;
+}
+
+function gateOffV(cell: Cell): number {
+  return cell.values[cell.numbers.plan.values.length + GATE_OFF_V];
+}
+
+function packStep(cell: Cell): void {
+  const n = cell.stateCount;
+  const { coefficients: c, reduction } = cell;
+  const { polarity } = cell.numbers;
+  const row = L.rowLayout(n);
+  const all = L.coefficientLayout(n);
+  const columns = stepColumns(n);
+  const { step, response } = reduction;
+  const reverseA = cell.values[cell.numbers.plan.values.length + REVERSE_A];
+  for (let r = 0; r < n + 2; r++) {
+    const from = r * columns.width;
+    const to = r * row.width;
+    const sign = r < 2 ? polarity : 1;
+    for (let k = 0; k < n; k++) c[to + k] = sign * step[from + k];
+    for (let k = 0; k < 2; k++) {
+      c[to + row.newU + k] = sign * step[from + columns.newU + k];
+      if (n > 0) c[to + row.oldU + k] = sign * step[from + columns.oldU + k];
+    }
+    const j = sign * polarity;
+    const newS = j * step[from + columns.newJ];
+    const newD = j * step[from + columns.newJ + 1];
+    const oldS = j * step[from + columns.oldJ];
+    const oldD = j * step[from + columns.oldJ + 1];
+    c[to + row.newI] = newS - newD;
+    if (n > 0) c[to + row.oldI] = oldS - oldD;
+    c[to + row.constant] = -reverseA * (newS + newD + oldS + oldD) - (r < 2 ? gateOffV(cell) : 0);
+    packJunction(c, all.junction + r * L.JUNCTION_WIDTH, newS, newD, oldS, oldD);
+  }
+  const from = (n + 2) * (n + DRIVES);
+  const to = all.outputRow * row.width;
+  for (let k = 0; k < n + 2; k++) c[to + k] = response[from + k];
+  const newS = polarity * response[from + n + GATE_SOURCE];
+  const newD = polarity * response[from + n + GATE_DRAIN];
+  c[to + row.newI] = newS - newD;
+  c[to + row.constant] = -reverseA * (newS + newD);
+  packJunction(c, all.junction + all.outputRow * L.JUNCTION_WIDTH, newS, newD, 0, 0);
+  packDevice(cell, c, all.device, c[row.newI], c[row.width + row.newI]);
+}
+
+function packJunction(c: Float64Array, at: number, newS: number, newD: number, oldS: number, oldD: number): void {
+  c[at + L.NEW_S] = newS;
+  c[at + L.NEW_D] = newD;
+  c[at + L.OLD_S] = oldS;
+  c[at + L.OLD_D] = oldD;
+}
+
+function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: number): void {
+  const from = cell.numbers.plan.values.length;
+  const beta = cell.values[from + BETA];
+  const nVt = cell.values[from + NVT_V];
+  const reverseA = cell.values[from + REVERSE_A];
+  c[at + L.BETA] = beta;
+  c[at + L.BENT] = beta * (aI - bI) * (aI + bI);
+  c[at + L.FALL] = -2 * beta * aI;
+  c[at + L.RISE] = 2 * beta * bI;
+  c[at + L.GATE_OFF_V] = gateOffV(cell);
+  c[at + L.ON_V] = reverseA > 0 ? OFF_BELOW * nVt - gateOffV(cell) : Number.POSITIVE_INFINITY;
+  c[at + L.REVERSE_A] = reverseA;
+  c[at + L.INVERSE_NVT] = 1 / nVt;
+}
+
+/**
+ * Puts the cell at its operating point for steady `audioV` and `controlV`: every capacitor's current is zero. Returns the output, V.
+ * False voltages cannot result: where the direct-current network is singular the states are left as they are and NaN is returned.
+ */
+export function settle(cell: Cell, audioV: number, controlV: number): number {
+  const { rest, reduction, state } = cell;
+  const n = cell.stateCount;
+  const width = n + DRIVES;
+  for (let r = 0; r < n; r++) {
+    for (let k = 0; k < n; k++) rest.matrix[r * n + k] = -reduction.response[r * width + k];
+    for (let k = 0; k < DRIVES; k++) rest.columns[r * DRIVES + k] = reduction.response[r * width + n + k];
+  }
+  if (!factor(rest.matrix, rest.pivots, n)) return Number.NaN;
+  solve(rest.matrix, rest.pivots, n, rest.columns, DRIVES);
+  packRest(cell);
+  rest.audio[0] = audioV;
+  rest.control[0] = controlV;
+  SQUARE_KERNELS[0](rest.coefficients, rest.state, rest.audio, rest.control, rest.output, 0, 1);
+  const { polarity } = cell.numbers;
+  const reverseA = cell.values[cell.numbers.plan.values.length + REVERSE_A];
+  const channelA = rest.state[L.CHANNEL_A];
+  const gateSourceA = polarity * (channelA + rest.state[L.JUNCTION_S] - reverseA);
+  const gateDrainA = polarity * (rest.state[L.JUNCTION_D] - channelA - reverseA);
+  for (let r = 0; r < n; r++) {
+    const at = r * DRIVES;
+    state[r] = rest.columns[at] * audioV + rest.columns[at + 1] * controlV;
+    state[r] += rest.columns[at + GATE_SOURCE] * gateSourceA + rest.columns[at + GATE_DRAIN] * gateDrainA;
+  }
+  for (let slot = 0; slot < L.FAULTS; slot++) state[n + slot] = rest.state[slot];
+  state[n + L.OLD_AUDIO] = audioV;
+  state[n + L.OLD_CONTROL] = controlV;
+  return rest.output[0];
+}
+
+/** The direct-current network as the coefficients of a cell without states. */
+function packRest(cell: Cell): void {
+  const { rest, reduction } = cell;
+  const { polarity } = cell.numbers;
+  const n = cell.stateCount;
+  const width = n + DRIVES;
+  const row = L.rowLayout(0);
+  const all = L.coefficientLayout(0);
+  const c = rest.coefficients;
+  const reverseA = cell.values[cell.numbers.plan.values.length + REVERSE_A];
+  for (let r = 0; r < 3; r++) {
+    const from = (n + r) * width;
+    const to = r * row.width;
+    const sign = r < 2 ? polarity : 1;
+    for (let k = 0; k < 2; k++) c[to + row.newU + k] = sign * throughStates(reduction.response, rest.columns, from, n, k);
+    const newS = sign * polarity * throughStates(reduction.response, rest.columns, from, n, GATE_SOURCE);
+    const newD = sign * polarity * throughStates(reduction.response, rest.columns, from, n, GATE_DRAIN);
+    c[to + row.newI] = newS - newD;
+    c[to + row.constant] = -reverseA * (newS + newD) - (r < 2 ? gateOffV(cell) : 0);
+    packJunction(c, all.junction + r * L.JUNCTION_WIDTH, newS, newD, 0, 0);
+  }
+  packDevice(cell, c, all.device, c[row.newI], c[row.width + row.newI]);
+}
+
+function throughStates(response: Float64Array, columns: Float64Array, from: number, n: number, drive: number): number {
+  let sum = response[from + n + drive];
+  for (let state = 0; state < n; state++) sum += response[from + state] * columns[state * DRIVES + drive];
+  return sum;
+}

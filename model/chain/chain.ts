@@ -1,0 +1,187 @@
+/**
+ * What is heard: a voice, and while the shape of the circuit changes a second one that it fades into. `createChain` and `moveChain` allocate and
+ * belong outside the audio callback; `processChain` computes only.
+ */
+import { gateSourceV } from '../cell/cell.ts';
+import { PHASE } from '../control/oscillator.ts';
+import type { ChainNumbers } from './compile.ts';
+import { oversamplingDelay } from './oversample.ts';
+import { createVoice, LONGEST_BLOCK, moveVoice, processVoice, type Voice } from './voice.ts';
+
+const FADE_SEC = 0.03;
+/** A new voice runs unheard for this long before it is faded in, so that its filters are full. */
+const LEAD_SEC = 0.01;
+/** Input samples beyond this many times full scale are no audio: they count as faults and are taken as silence. */
+const LARGEST_SAMPLE = 1e4;
+
+/** Of the last call of `processChain`; peaks over all channels. `faults` counts blocks with unusable input or a lost state since the start. */
+export interface ChainReadings {
+  controlV: number;
+  gateSourceV: number;
+  drainPeakV: number;
+  inputPeakV: number;
+  /** In samples, 1.0 being full scale. */
+  outputPeak: number;
+  faults: number;
+}
+
+export interface Chain {
+  numbers: ChainNumbers;
+  latencySamples: number;
+  readonly readings: ChainReadings;
+  voice: Voice;
+  /** The voice that is being faded in, and the one that is to follow it. */
+  next: Voice | null;
+  pending: Voice | null;
+  fadeDone: number;
+  readonly inputs: readonly Float64Array[];
+  readonly outputs: readonly Float64Array[];
+  readonly fadeOutputs: readonly Float64Array[];
+}
+
+/** A chain at its operating point. Throws a RangeError when a cell's network is singular. */
+export function createChain(numbers: ChainNumbers): Chain {
+  const buffers = () => numbers.cells.map(() => new Float64Array(LONGEST_BLOCK));
+  const voice = createVoice(numbers);
+  return {
+    numbers,
+    latencySamples: oversamplingDelay(numbers.oversampling, numbers.filters),
+    readings: {
+      controlV: voice.oscillator[0],
+      gateSourceV: gateSourceV(voice.cells[0]),
+      drainPeakV: 0,
+      inputPeakV: 0,
+      outputPeak: 0,
+      faults: 0,
+    },
+    voice,
+    next: null,
+    pending: null,
+    fadeDone: 0,
+    inputs: buffers(),
+    outputs: buffers(),
+    fadeOutputs: buffers(),
+  };
+}
+
+/**
+ * Moves to new numbers: along a ramp where only values differ, by a crossfade where the shape does. The state is kept. Throws a RangeError,
+ * and keeps sounding as before, when the rate or the number of channels differs or a network is singular.
+ */
+export function moveChain(chain: Chain, numbers: ChainNumbers): void {
+  if (numbers.sampleRateHz !== chain.numbers.sampleRateHz || numbers.cells.length !== chain.numbers.cells.length) {
+    throw new RangeError(
+      `the new values are for ${numbers.cells.length} channels at ${numbers.sampleRateHz} Hz; ` +
+        `expected ${chain.numbers.cells.length} at ${chain.numbers.sampleRateHz} Hz`,
+    );
+  }
+  const heading = chain.next ?? chain.voice;
+  if (numbers.shape === heading.numbers.shape) {
+    moveVoice(heading, numbers);
+    chain.pending = null;
+  } else if (chain.next) {
+    chain.pending = createVoice(numbers);
+  } else {
+    startFade(chain, createVoice(numbers));
+  }
+  chain.numbers = numbers;
+}
+
+function startFade(chain: Chain, next: Voice): void {
+  next.oscillator[PHASE] = chain.voice.oscillator[PHASE];
+  chain.next = next;
+  chain.fadeDone = -Math.round(LEAD_SEC * next.numbers.sampleRateHz);
+  chain.latencySamples = oversamplingDelay(next.numbers.oversampling, next.numbers.filters);
+}
+
+/** Any number of frames. Missing inputs are silence. Never throws, allocates nothing. */
+export function processChain(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[]): void {
+  const { readings } = chain;
+  const length = outputs.length > 0 ? outputs[0].length : 0;
+  readings.inputPeakV = 0;
+  readings.outputPeak = 0;
+  readings.drainPeakV = 0;
+  for (let start = 0; start < length; start += LONGEST_BLOCK) {
+    processBlock(chain, inputs, outputs, start, Math.min(LONGEST_BLOCK, length - start));
+  }
+  readings.gateSourceV = gateSourceV(chain.voice.cells[0]);
+}
+
+function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[], start: number, count: number): void {
+  const { readings, voice } = chain;
+  let sound = takeInputs(chain, inputs, start, count);
+  sound = processVoice(voice, chain.inputs, chain.outputs, count) && sound;
+  if (chain.next) sound = crossfade(chain, chain.next, count) && sound;
+  for (let channel = 0; channel < outputs.length; channel++) {
+    const from = chain.outputs[Math.min(channel, chain.outputs.length - 1)];
+    const to = outputs[channel];
+    for (let i = 0; i < count; i++) {
+      const sample = from[i];
+      to[start + i] = sample;
+      const size = Math.abs(sample);
+      if (size > readings.outputPeak) readings.outputPeak = size;
+    }
+  }
+  for (let channel = 0; channel < voice.drainPeakV.length; channel++) {
+    if (voice.drainPeakV[channel] > readings.drainPeakV) readings.drainPeakV = voice.drainPeakV[channel];
+  }
+  readings.controlV = voice.control[count * voice.numbers.oversampling - 1];
+  if (!sound) readings.faults += 1;
+}
+
+/** Copies the block's input to Float64; false when a sample was not a usable number. */
+function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number, count: number): boolean {
+  const { readings } = chain;
+  const fullScaleV = chain.voice.gains.now[0];
+  let sound = true;
+  for (let channel = 0; channel < chain.inputs.length; channel++) {
+    const to = chain.inputs[channel];
+    const from = inputs.length > 0 ? inputs[Math.min(channel, inputs.length - 1)] : null;
+    for (let i = 0; i < count; i++) {
+      const sample = from ? from[start + i] : 0;
+      const size = Math.abs(sample);
+      const usable = size <= LARGEST_SAMPLE;
+      if (!usable) sound = false;
+      to[i] = usable ? sample : 0;
+      if (usable && size * fullScaleV > readings.inputPeakV) readings.inputPeakV = size * fullScaleV;
+    }
+  }
+  return sound;
+}
+
+function crossfade(chain: Chain, next: Voice, count: number): boolean {
+  const sound = processVoice(next, chain.inputs, chain.fadeOutputs, count);
+  const total = Math.round(FADE_SEC * next.numbers.sampleRateHz);
+  for (let channel = 0; channel < chain.outputs.length; channel++) {
+    const out = chain.outputs[channel];
+    const incoming = chain.fadeOutputs[channel];
+    for (let i = 0; i < count; i++) {
+      const share = Math.min(1, Math.max(0, (chain.fadeDone + i + 1) / total));
+      out[i] += share * (incoming[i] - out[i]);
+    }
+  }
+  chain.fadeDone += count;
+  if (chain.fadeDone >= total) {
+    chain.voice = next;
+    chain.next = null;
+    const { pending } = chain;
+    chain.pending = null;
+    if (pending) startFade(chain, pending);
+  }
+  return sound;
+}
+
+const WARM_BLOCKS = 400;
+
+/** Runs every branch often enough to be compiled, on a copy; the chain itself is untouched. */
+export function warmChain(chain: Chain): void {
+  const copy = createChain(chain.numbers);
+  const input = copy.inputs.map(() => new Float32Array(LONGEST_BLOCK));
+  const output = copy.inputs.map(() => new Float32Array(LONGEST_BLOCK));
+  for (let block = 0; block < WARM_BLOCKS; block++) {
+    const peak = block % 4 === 3 ? 40 / chain.numbers.fullScaleV : block % 4;
+    for (const channel of input) for (let i = 0; i < channel.length; i++) channel[i] = peak * (((block + i) % 32) / 16 - 1);
+    if (block % 50 === 0) moveChain(copy, chain.numbers);
+    processChain(copy, input, output);
+  }
+}

@@ -1,0 +1,173 @@
+/**
+ * Elementary functions from + − × ÷ alone, so that every engine returns the same bits.
+ *
+ * Law      exp, log: argument reduction and the minimax polynomials of fdlibm (Sun Microsystems, freely distributable); sine and cosine
+ *          of a phase in turns: reduction to an eighth of a turn, fdlibm's kernels
+ * Error    at most 1 ulp over the ranges tested (test/model/device/math.test.ts, against 50-digit arithmetic)
+ * Source   fdlibm e_exp.c, e_log.c, k_sin.c, k_cos.c (coefficients from memory, held by the test)
+ */
+
+const LN2_HIGH = 6.9314718036912381649e-1;
+const LN2_LOW = 1.90821492927058770002e-10;
+const INVERSE_LN2 = 1.442695040888963387;
+const LOWEST_EXPONENT = -1074;
+
+/** 2^k for k −1074 … 1023, by exact doubling and halving. */
+const POWERS_OF_TWO = powersOfTwo();
+
+function powersOfTwo(): Float64Array {
+  const table = new Float64Array(1023 - LOWEST_EXPONENT + 1);
+  let up = 1;
+  for (let k = 0; k <= 1023; k++, up *= 2) table[k - LOWEST_EXPONENT] = up;
+  let down = 0.5;
+  for (let k = -1; k >= LOWEST_EXPONENT; k--, down /= 2) table[k - LOWEST_EXPONENT] = down;
+  return table;
+}
+
+/** e^x. Overflows to Infinity above 709.78, underflows to 0 below −745.13; NaN in, NaN out. */
+export function exp(x: number): number {
+  if (x > 709.782712893384) return Number.POSITIVE_INFINITY;
+  if (x < -745.1332191019412) return 0;
+  if (Number.isNaN(x)) return Number.NaN;
+  const k = Math.floor(x * INVERSE_LN2 + 0.5);
+  const high = x - k * LN2_HIGH;
+  const low = k * LN2_LOW;
+  const r = high - low;
+  const t = r * r;
+  const c =
+    r -
+    t *
+      (1.66666666666666019037e-1 +
+        t *
+          (-2.77777777770155933842e-3 + t * (6.61375632143793436117e-5 + t * (-1.6533902205465251539e-6 + t * 4.13813679705723846039e-8))));
+  const y = 1 - (low - (r * c) / (2 - c) - high);
+  if (k > -1021) return k > 1022 ? y * 2 * POWERS_OF_TWO[k - 1 - LOWEST_EXPONENT] : y * POWERS_OF_TWO[k - LOWEST_EXPONENT];
+  return y * POWERS_OF_TWO[k + 100 - LOWEST_EXPONENT] * POWERS_OF_TWO[-100 - LOWEST_EXPONENT];
+}
+
+/** Natural logarithm. log(0) is −Infinity, of a negative number NaN. */
+export function log(x: number): number {
+  if (x < 0 || Number.isNaN(x)) return Number.NaN;
+  if (x === 0) return Number.NEGATIVE_INFINITY;
+  if (x === Number.POSITIVE_INFINITY) return x;
+  let k = 0;
+  let m = x;
+  for (let p = 512; p >= 1; p /= 2) {
+    if (m >= POWERS_OF_TWO[p - LOWEST_EXPONENT]) {
+      m *= POWERS_OF_TWO[-p - LOWEST_EXPONENT];
+      k += p;
+    } else if (m < POWERS_OF_TWO[1 - p - LOWEST_EXPONENT]) {
+      m *= POWERS_OF_TWO[p - LOWEST_EXPONENT];
+      k -= p;
+    }
+  }
+  if (m >= 1.4142135623730951) {
+    m /= 2;
+    k += 1;
+  } else if (m < 0.7071067811865476) {
+    m *= 2;
+    k -= 1;
+  }
+  const f = m - 1;
+  const s = f / (2 + f);
+  const z = s * s;
+  const w = z * z;
+  const odd = w * (3.999999999940941908e-1 + w * (2.222219843214978396e-1 + w * 1.531383769920937332e-1));
+  const even = z * (6.66666666666673513e-1 + w * (2.857142874366239149e-1 + w * (1.818357216161805012e-1 + w * 1.479819860511658591e-1)));
+  const r = odd + even;
+  const half = 0.5 * f * f;
+  return k * LN2_HIGH - (half - (s * (half + r) + k * LN2_LOW) - f);
+}
+
+/** Logarithm to base ten, within 2 ulp. */
+export function log10(x: number): number {
+  return log(x) * 0.4342944819032518;
+}
+
+/** x^p for x ≥ 0, as exp(p·log x): the relative error is about |p·log x| ulp. */
+export function power(x: number, p: number): number {
+  if (x === 0) return p === 0 ? 1 : 0;
+  return exp(p * log(x));
+}
+
+/** 20·log10(ratio), dB. */
+export function dbFromRatio(ratio: number): number {
+  return 20 * log10(ratio);
+}
+
+/** 10^(db/20). */
+export function ratioFromDb(db: number): number {
+  return exp(db * 0.11512925464970229);
+}
+
+const TURN = 6.283185307179586;
+/** 2π − TURN. */
+const TURN_LOW = 2.4492935982947064e-16;
+const SPLIT = 134217729;
+
+function sineKernel(x: number, low: number): number {
+  const z = x * x;
+  const v = z * x;
+  const r =
+    8.33333333332248946124e-3 +
+    z * (-1.98412698298579493134e-4 + z * (2.75573137070700676789e-6 + z * (-2.50507602534068634195e-8 + z * 1.58969099521155010221e-10)));
+  return x - (z * (0.5 * low - v * r) - low - v * -1.66666666666666324348e-1);
+}
+
+function cosineKernel(x: number, low: number): number {
+  const z = x * x;
+  const r =
+    z *
+    (4.16666666666666019037e-2 +
+      z *
+        (-1.38888888888741095749e-3 +
+          z *
+            (2.48015872894767294178e-5 +
+              z * (-2.75573143513906633035e-7 + z * (2.0875723212981748279e-9 + z * -1.13596475577881948265e-11)))));
+  const half = 0.5 * z;
+  const w = 1 - half;
+  return w + (1 - w - half + (z * r - x * low));
+}
+
+/** sin(2π·(turns + quarters/4)). The product with 2π is carried to double length (Dekker), so that no bit of the phase is lost. */
+function sineOfTurns(turns: number, quarters: number): number {
+  const nearest = Math.floor(turns * 4 + 0.5);
+  const r = turns - nearest / 4;
+  const x = r * TURN;
+  const rHigh = r * SPLIT - (r * SPLIT - r);
+  const tHigh = TURN * SPLIT - (TURN * SPLIT - TURN);
+  const rLow = r - rHigh;
+  const tLow = TURN - tHigh;
+  const low = rHigh * tHigh - x + rHigh * tLow + rLow * tHigh + rLow * tLow + r * TURN_LOW;
+  const quadrant = (((nearest + quarters) % 4) + 4) % 4;
+  if (quadrant === 0) return sineKernel(x, low);
+  if (quadrant === 1) return cosineKernel(x, low);
+  return quadrant === 2 ? -sineKernel(x, low) : -cosineKernel(x, low);
+}
+
+/** sin(2π·turns), |turns| up to 2^50. */
+export function sinTurns(turns: number): number {
+  return sineOfTurns(turns, 0);
+}
+
+/** cos(2π·turns), |turns| up to 2^50. */
+export function cosTurns(turns: number): number {
+  return sineOfTurns(turns, 1);
+}
+
+/** Angle of the point (x, y) in turns, −½ … ½, by the arctangent's series after halving the angle three times; within 4 ulp. */
+export function turnsOf(y: number, x: number): number {
+  if (x === 0 && y === 0) return 0;
+  const ax = Math.abs(x);
+  const ay = Math.abs(y);
+  const swapped = ay > ax;
+  let t = swapped ? ax / ay : ay / ax;
+  for (let i = 0; i < 3; i++) t = t / (1 + Math.sqrt(1 + t * t));
+  const z = t * t;
+  let sum = 0;
+  for (let n = 21; n >= 1; n -= 2) sum = 1 / n - z * sum;
+  let turns = (8 * t * sum) / TURN;
+  if (swapped) turns = 0.25 - turns;
+  if (x < 0) turns = 0.5 - turns;
+  return y < 0 ? -turns : turns;
+}

@@ -1,0 +1,101 @@
+/**
+ * Periodic steady state of a cell under a tone at a fixed control voltage.
+ *
+ * Scheme   one period as a map of the state, its fixed point by Newton with a Jacobian by differences (exact for the linear part); where that
+ *          does not settle the cell is run period after period until it does
+ * Error    the state repeats within `REPEATS`·(its size + 1 µV) from one period to the next, or the reading says that it did not settle
+ * Source   shooting method: Aprille & Trick, Proc. IEEE 60 (1972) 108, from memory
+ */
+import { advanceCell, type Cell, gateConducts, overdriveV, settle } from '../cell/cell.ts';
+import { factor, solve } from '../cell/linear.ts';
+import { cosTurns } from '../device/math.ts';
+
+const NEWTON_ROUNDS = 12;
+const SETTLING_PERIODS = 4000;
+const REPEATS = 1e-12;
+
+/** Forward current above which a gate junction is said to conduct, A. */
+const CONDUCTS_A = 1e-9;
+
+/** One period at the cell's own step: the output and both overdrives, V; whether a junction conducts. Sample 0 is the tone's crest. */
+export interface SteadyPeriod {
+  readonly output: Float64Array;
+  readonly sourceOverdrive: Float64Array;
+  readonly drainOverdrive: Float64Array;
+  readonly gateOn: Uint8Array;
+  readonly settled: boolean;
+}
+
+/** The period of `size` samples of `toneV`·cos; the cell's step must be the period divided by `size`. */
+export function steadyPeriod(cell: Cell, toneV: number, controlV: number, size: number): SteadyPeriod {
+  const audio = Float64Array.from({ length: size }, (_, i) => toneV * cosTurns((i + 1) / size));
+  const control = new Float64Array(size).fill(controlV);
+  const scratch = new Float64Array(size);
+  settle(cell, 0, controlV);
+  const run = () => {
+    scratch.set(audio);
+    advanceCell(cell, scratch, control, 0, size);
+  };
+  run();
+  const settled = shoot(cell, run) || runUntilSettled(cell, run);
+  return { ...recordPeriod(cell, audio, controlV), settled };
+}
+
+function shoot(cell: Cell, run: () => void): boolean {
+  const n = cell.stateCount;
+  if (n === 0) return true;
+  const start = cell.state.slice();
+  for (let round = 0; round < NEWTON_ROUNDS; round++) {
+    const from = cell.state.slice();
+    run();
+    const miss = Float64Array.from({ length: n }, (_, i) => cell.state[i] - from[i]);
+    if (miss.every((value, i) => Math.abs(value) <= REPEATS * (Math.abs(from[i]) + 1e-6))) return true;
+    const end = cell.state.slice();
+    const matrix = new Float64Array(n * n);
+    for (let column = 0; column < n; column++) {
+      const nudge = 1e-6 * (1 + Math.abs(from[column]));
+      cell.state.set(from);
+      cell.state[column] += nudge;
+      run();
+      for (let row = 0; row < n; row++) matrix[row * n + column] = (row === column ? 1 : 0) - (cell.state[row] - end[row]) / nudge;
+    }
+    const pivots = new Int32Array(n);
+    if (!factor(matrix, pivots, n)) break;
+    solve(matrix, pivots, n, miss, 1);
+    cell.state.set(end);
+    for (let i = 0; i < n; i++) cell.state[i] = from[i] + miss[i];
+    if (!cell.state.every(Number.isFinite)) break;
+  }
+  cell.state.set(start);
+  return false;
+}
+
+function runUntilSettled(cell: Cell, run: () => void): boolean {
+  const n = cell.stateCount;
+  for (let period = 0; period < SETTLING_PERIODS; period++) {
+    const before = cell.state.slice(0, n);
+    run();
+    if (before.every((value, i) => Math.abs(cell.state[i] - value) <= REPEATS * (Math.abs(value) + 1e-6))) return true;
+  }
+  return false;
+}
+
+function recordPeriod(cell: Cell, audio: Float64Array, controlV: number): Omit<SteadyPeriod, 'settled'> {
+  const size = audio.length;
+  const output = new Float64Array(size);
+  const sourceOverdrive = new Float64Array(size);
+  const drainOverdrive = new Float64Array(size);
+  const gateOn = new Uint8Array(size);
+  const one = new Float64Array(1);
+  const control = Float64Array.of(controlV);
+  for (let i = 0; i < size; i++) {
+    one[0] = audio[i];
+    advanceCell(cell, one, control, 0, 1);
+    const at = (i + 1) % size;
+    output[at] = one[0];
+    sourceOverdrive[at] = overdriveV(cell, 'source');
+    drainOverdrive[at] = overdriveV(cell, 'drain');
+    gateOn[at] = gateConducts(cell, CONDUCTS_A) ? 1 : 0;
+  }
+  return { output, sourceOverdrive, drainOverdrive, gateOn };
+}
