@@ -1,0 +1,149 @@
+/**
+ * Level totals over every sample, and the samples themselves, reported to the page at most 30 times a second.
+ *
+ * Reports are a pool of messages made once: one is filled, posted with its arrays transferred, and comes back by `returnReport`.
+ * While none is free nothing is sent; the totals go on, so no peak is lost, only the samples between two reports.
+ */
+import type { ChainReadings } from '../model/chain/chain.ts';
+import type { Monitor } from './monitor.ts';
+import { BROKEN_SAMPLES, CEILING_FRAMES, HEARD_PEAK } from './monitor.ts';
+import type { Report } from './protocol.ts';
+
+const POOL = 6;
+const REPORTS_PER_SEC = 30;
+
+const INPUT_PEAK = 0;
+const OUTPUT_PEAK = 1;
+const OUTPUT_SQUARES = 2;
+const INPUT_PEAK_V = 3;
+const DRAIN_PEAK_V = 4;
+const SAMPLES = 5;
+const TOTALS = 6;
+
+export interface Post {
+  postMessage(message: unknown, transfer: Transferable[]): void;
+}
+
+export interface Meter {
+  readonly post: Post;
+  readonly reports: Report[];
+  readonly transfers: Transferable[][];
+  readonly free: boolean[];
+  readonly totals: Float64Array;
+  readonly frames: number;
+  readonly sampleRateHz: number;
+  /** The report being filled, −1 while none is free, and how many of its frames are there. */
+  slot: number;
+  fill: number;
+}
+
+export function createMeter(post: Post, sampleRateHz: number): Meter {
+  const frames = Math.ceil(sampleRateHz / REPORTS_PER_SEC);
+  const reports = Array.from({ length: POOL }, (_, slot) => createReport(slot, frames));
+  const transfers = reports.map((report): Transferable[] => [report.input.buffer, report.output.buffer]);
+  const totals = new Float64Array(TOTALS);
+  return { post, reports, transfers, free: reports.map((_, slot) => slot > 0), totals, frames, sampleRateHz, slot: 0, fill: 0 };
+}
+
+/** Counts one block. Call it before the monitor writes over the chain's output, which is `outputs`. */
+export function processMeter(
+  meter: Meter,
+  frame: number,
+  inputs: readonly Float32Array[],
+  outputs: readonly Float32Array[],
+  readings: ChainReadings,
+  monitor: Monitor,
+): void {
+  const { totals } = meter;
+  for (let c = 0; c < outputs.length; c++) addLevels(totals, inputs[c], outputs[c]);
+  totals[INPUT_PEAK_V] = Math.max(totals[INPUT_PEAK_V], readings.inputPeakV);
+  totals[DRAIN_PEAK_V] = Math.max(totals[DRAIN_PEAK_V], readings.drainPeakV);
+  for (let n = 0; n < outputs[0].length; n++) {
+    if (meter.slot < 0 && !takeSlot(meter)) return;
+    const report = meter.reports[meter.slot];
+    if (meter.fill === 0) report.frame = frame + n;
+    report.input[meter.fill] = inputs[0][n];
+    report.output[meter.fill] = outputs[0][n];
+    meter.fill++;
+    if (meter.fill === meter.frames) send(meter, report, readings, monitor);
+  }
+}
+
+/** Puts a report's arrays back into the pool. */
+export function returnReport(meter: Meter, slot: number, input: Float32Array<ArrayBuffer>, output: Float32Array<ArrayBuffer>): void {
+  const report = meter.reports[slot];
+  if (report === undefined || input.length !== meter.frames || output.length !== meter.frames) {
+    throw new RangeError(`Report ${slot} came back with ${input.length} and ${output.length} frames; expected ${meter.frames}`);
+  }
+  report.input = input;
+  report.output = output;
+  meter.transfers[slot][0] = input.buffer;
+  meter.transfers[slot][1] = output.buffer;
+  meter.free[slot] = true;
+}
+
+function addLevels(totals: Float64Array, input: Float32Array, output: Float32Array): void {
+  let inputPeak = totals[INPUT_PEAK];
+  let outputPeak = totals[OUTPUT_PEAK];
+  let squares = totals[OUTPUT_SQUARES];
+  for (let n = 0; n < output.length; n++) {
+    const x = Math.abs(input[n]);
+    const y = Math.abs(output[n]);
+    if (x > inputPeak) inputPeak = x;
+    if (y > outputPeak) outputPeak = y;
+    squares += y * y;
+  }
+  totals[INPUT_PEAK] = inputPeak;
+  totals[OUTPUT_PEAK] = outputPeak;
+  totals[OUTPUT_SQUARES] = squares;
+  totals[SAMPLES] += output.length;
+}
+
+function takeSlot(meter: Meter): boolean {
+  meter.slot = meter.free.indexOf(true);
+  if (meter.slot < 0) return false;
+  meter.free[meter.slot] = false;
+  meter.fill = 0;
+  return true;
+}
+
+function send(meter: Meter, report: Report, readings: ChainReadings, monitor: Monitor): void {
+  const { totals } = meter;
+  report.inputPeak = totals[INPUT_PEAK];
+  report.outputPeak = totals[OUTPUT_PEAK];
+  report.outputSquare = totals[OUTPUT_SQUARES] / totals[SAMPLES];
+  report.inputPeakV = totals[INPUT_PEAK_V];
+  report.drainPeakV = totals[DRAIN_PEAK_V];
+  report.lagMs = Date.now() - (1000 * report.frame) / meter.sampleRateHz;
+  report.controlV = readings.controlV;
+  report.gateSourceV = readings.gateSourceV;
+  report.faults = readings.faults + monitor.totals[BROKEN_SAMPLES];
+  report.heardPeak = monitor.totals[HEARD_PEAK];
+  report.ceilingFrames = monitor.totals[CEILING_FRAMES];
+  meter.post.postMessage(report, meter.transfers[meter.slot]);
+  totals.fill(0);
+  monitor.totals[HEARD_PEAK] = 0;
+  monitor.totals[CEILING_FRAMES] = 0;
+  meter.slot = -1;
+}
+
+function createReport(slot: number, frames: number): Report {
+  return {
+    type: 'report',
+    slot,
+    frame: 0,
+    input: new Float32Array(frames),
+    output: new Float32Array(frames),
+    inputPeak: 0,
+    outputPeak: 0,
+    heardPeak: 0,
+    outputSquare: 0,
+    controlV: 0,
+    gateSourceV: 0,
+    inputPeakV: 0,
+    drainPeakV: 0,
+    faults: 0,
+    ceilingFrames: 0,
+    lagMs: 0,
+  };
+}

@@ -1,0 +1,86 @@
+/**
+ * The whole wire between the page and the processors. Every receiver switches on `type` and ends in `message satisfies never`.
+ * Arrays in `report` and `chunk` are transferred to the page and must come back by `return report` and `return chunk`.
+ */
+import type { ChainNumbers } from '../model/chain/compile.ts';
+
+export const CELL_PROCESSOR = 'fettle-cell';
+export const PASS_PROCESSOR = 'fettle-pass';
+
+/** What the listener hears: the chain's output, its delayed input, or the processor's second input (a take being played). */
+export type Heard = 'cell' | 'bypass' | 'aside';
+
+/** `processorOptions` of the cell's processor. `gain` and `ceilingPeak` are linear, 0 to 1. */
+export interface CellOptions {
+  readonly numbers: ChainNumbers;
+  readonly channels: number;
+  readonly heard: Heard;
+  readonly gain: number;
+  readonly ceilingPeak: number;
+  readonly muted: boolean;
+}
+
+export type ToCell =
+  | { readonly type: 'move'; readonly numbers: ChainNumbers }
+  | { readonly type: 'hear'; readonly heard: Heard }
+  | { readonly type: 'gain'; readonly gain: number }
+  | { readonly type: 'ceiling'; readonly peak: number }
+  | { readonly type: 'mute'; readonly on: boolean }
+  | { readonly type: 'record'; readonly on: boolean }
+  | {
+      readonly type: 'return report';
+      readonly slot: number;
+      readonly input: Float32Array<ArrayBuffer>;
+      readonly output: Float32Array<ArrayBuffer>;
+    }
+  | { readonly type: 'return chunk'; readonly slot: number; readonly channels: Float32Array<ArrayBuffer>[] }
+  | { readonly type: 'dispose' };
+
+export type FromCell =
+  | { readonly type: 'ready'; readonly latencySamples: number }
+  | { readonly type: 'latency'; readonly latencySamples: number }
+  | Report
+  | Chunk
+  /** The page did not return chunks in time: so many frames of the take are missing. */
+  | { readonly type: 'lost'; readonly frames: number }
+  /** A message was refused; the last good values go on sounding. */
+  | { readonly type: 'fault'; readonly sentence: string };
+
+export type ToPass = { readonly type: 'dispose' };
+
+/** Levels over the frames since the last report, every sample counted, and those frames themselves (first channel). */
+export interface Report {
+  readonly type: 'report';
+  readonly slot: number;
+  /** Context frame of the first sample of `input` and `output`. */
+  frame: number;
+  input: Float32Array<ArrayBuffer>;
+  output: Float32Array<ArrayBuffer>;
+  /** Peaks of samples, 1.0 being full scale, over all channels. */
+  inputPeak: number;
+  outputPeak: number;
+  heardPeak: number;
+  /** Mean square of the output, all channels. */
+  outputSquare: number;
+  /** The chain's own readings: the voltages of the last block, the peaks of all. */
+  controlV: number;
+  gateSourceV: number;
+  inputPeakV: number;
+  drainPeakV: number;
+  /** Times, since the node was made, that the chain fell back or a sample that is no number was replaced by silence. */
+  faults: number;
+  /** Frames that the ceiling turned down. */
+  ceilingFrames: number;
+  /** How far the audio clock is behind the wall clock, ms, up to a constant: where its least value steps up, there was a gap in the sound. */
+  lagMs: number;
+}
+
+/** Part of a take: `frames` samples of each channel from context frame `frame` on, without a gap from the chunk before. */
+export interface Chunk {
+  readonly type: 'chunk';
+  readonly slot: number;
+  frame: number;
+  frames: number;
+  channels: Float32Array<ArrayBuffer>[];
+  last: boolean;
+}
