@@ -50,6 +50,7 @@ export function log(x: number): number {
   if (x < 0 || Number.isNaN(x)) return Number.NaN;
   if (x === 0) return Number.NEGATIVE_INFINITY;
   if (x === Number.POSITIVE_INFINITY) return x;
+  if (x < POWERS_OF_TWO[-1000 - LOWEST_EXPONENT]) return log(x * POWERS_OF_TWO[100 - LOWEST_EXPONENT]) - 100 * LN2_HIGH - 100 * LN2_LOW;
   let k = 0;
   let m = x;
   for (let p = 512; p >= 1; p /= 2) {

@@ -1,0 +1,115 @@
+/** Cell A and its neighbours: figures computed independently (Brent's method and a Fourier transform), to the digits they were printed with. */
+import { expect, test } from 'vitest';
+import { measureTone } from '../../../model/study/tone.ts';
+import { CELL_A_DEVICE, designOf, REAL_CELL, REAL_DEVICE, variantOf } from '../../support/designs.ts';
+
+/** k through a buffer, so that the control reaches the gate whole and nothing loads the drain. */
+const cellA = (k: number) => designOf(variantOf({ feedback: k === 0 ? { kind: 'none' } : { kind: 'buffered', fraction: k } }));
+const read = (k: number, controlV: number, toneV = 1) => measureTone(cellA(k), 0, { toneV, controlV });
+
+test.each([
+  [0, -32.255, -48.03],
+  [-0.75, -26.432, -36.38],
+  [-1.2, -18.669, -20.71],
+])('Cell A, k = 0, VGS %s V, 1 V peak: gain %s dB, H2 %s dB', (controlV, gainDb, h2Db) => {
+  const reading = read(0, controlV);
+  expect(reading.gainDb).toBeCloseTo(gainDb, 3);
+  expect(reading.harmonics[1].db).toBeCloseTo(h2Db, 2);
+  expect(reading.converged).toBe(true);
+});
+
+test('Cell A, k = 0, VGS −0.75 V: HD3 −66.7 dB', () => {
+  expect(read(0, -0.75).harmonics[2].db).toBeCloseTo(-66.7, 1);
+});
+
+test.each([
+  [0, -32.256],
+  [-0.75, -26.444],
+  [-1.2, -19.085],
+])('Cell A, k = ½, VGS %s V: gain %s dB and no harmonic above −200 dB', (controlV, gainDb) => {
+  const reading = read(0.5, controlV);
+  expect(reading.gainDb).toBeCloseTo(gainDb, 3);
+  for (const { n, db } of reading.harmonics) if (n > 1) expect(db ?? -300).toBeLessThan(-200);
+});
+
+test('Cell A, k = ½, VGS −1.4 V leaves the ohmic region: HD3 −45.2 dB', () => {
+  const reading = read(0.5, -1.4);
+  expect(reading.harmonics[2].db).toBeCloseTo(-45.2, 1);
+  expect(reading.regions.saturated).toBeGreaterThan(0.4);
+});
+
+test.each([
+  [0, -88.0],
+  [-0.75, -76.4],
+  [-1.2, -61.7],
+])('Cell A, k = 0.505, VGS %s V: H2 %s dB', (controlV, h2Db) => {
+  expect(read(0.505, controlV).harmonics[1].db).toBeCloseTo(h2Db, 1);
+});
+
+test('Cell A at VGS −1.6 V, k = 0, 1 V peak: gain −3.31 dB, HD2 24 %, on although VGS is past VGS(off)', () => {
+  const reading = read(0, -1.6);
+  expect(reading.gainDb).toBeCloseTo(-3.31, 2);
+  expect(reading.harmonics[1].amplitudeV / reading.fundamentalV).toBeCloseTo(0.24, 2);
+  expect(reading.regions.saturated).toBeGreaterThan(0);
+  expect(reading.regions.ohmic).toBe(0);
+});
+
+test('nearly voltage driven, k = 0: HD2 of the divider is (1 − H)·V/(4·Vov) of the drain voltage V, first order', () => {
+  for (const toneV of [0.01, 0.05]) {
+    const { fundamentalV, harmonics, gainDb } = measureTone(cellA(0), 0, { toneV, controlV: -0.75 });
+    const h = 10 ** (gainDb / 20);
+    const predicted = ((1 - h) * fundamentalV) / (4 * 0.75);
+    expect(harmonics[1].amplitudeV / fundamentalV / predicted).toBeCloseTo(1, 2);
+  }
+});
+
+test('slope resistance at rest is r0/(1 − VGS/VP), r0 = |VP|/(2·IDSS) (Vishay doc 70293): 250, 500, 1250 Ω', () => {
+  expect(read(0, 0).rdsOhm).toBeCloseTo(250, 9);
+  expect(read(0, -0.75).rdsOhm).toBeCloseTo(500, 9);
+  expect(read(0, -1.2).rdsOhm).toBeCloseTo(1250, 9);
+  expect(read(0, -1.6).rdsOhm).toBe(Number.POSITIVE_INFINITY);
+});
+
+test('both THD divisors: of the fundamental and of the total (IEC 60268-3, from memory)', () => {
+  const { thdFundamental, thdTotal } = read(0, -1.2);
+  expect(thdTotal).toBeCloseTo(thdFundamental / Math.sqrt(1 + thdFundamental ** 2), 12);
+});
+
+test('the sign of H2 turns with k at ½, and the even harmonics vanish there for the pair with its loads', () => {
+  const pair = (drainOhm: number) =>
+    designOf(variantOf({ ...REAL_CELL, loadF: 0, feedback: { kind: 'resistor', drainOhm, blockingF: null } }, CELL_A_DEVICE));
+  const h2 = (drainOhm: number) => measureTone(pair(drainOhm), 0, { controlV: -2.4 }).harmonics[1];
+  expect(Math.cos(h2(5.1e5).phaseRad)).toBeGreaterThan(0.9);
+  expect(Math.cos(h2(4.3e5).phaseRad)).toBeLessThan(-0.9);
+  expect(h2(4.7e5).db ?? -300).toBeLessThan(-200);
+});
+
+test('a blocking capacitor leaves 1/(2πfC(Rg + Rf)) of the second harmonic at k = ½', () => {
+  const reading = (feedback: typeof REAL_CELL.feedback) =>
+    measureTone(designOf(variantOf({ ...REAL_CELL, loadF: 0, feedback }, CELL_A_DEVICE)), 0, { controlV: -1.2, toneV: 0.1, toneHz: 100 });
+  const blocked = reading({ kind: 'resistor', drainOhm: 4.7e5, blockingF: 1e-7 }).harmonics[1];
+  const bare = reading({ kind: 'none' }).harmonics[1];
+  const left = 1 / (2 * Math.PI * 100 * 1e-7 * 9.4e5);
+  expect((blocked.db as number) - (bare.db as number)).toBeCloseTo(20 * Math.log10(left), 0);
+});
+
+test('the whole board converges: junctions, picofarads and blocking capacitor', () => {
+  const reading = measureTone(designOf(variantOf(REAL_CELL, REAL_DEVICE)), 0, { controlV: -1.2, toneV: 0.5 });
+  expect(reading.converged).toBe(true);
+  expect(reading.vgsV).toBeCloseTo(-1.2, 5);
+  const { ohmic, saturated, cutoff } = reading.regions;
+  expect(ohmic + saturated + cutoff).toBeCloseTo(1, 12);
+});
+
+test('make-up gain counts at the output and not at the drain', () => {
+  const variant = { ...variantOf(), output: { gainDb: 20 } };
+  const drain = measureTone(designOf(variant), 0, {});
+  const output = measureTone(designOf(variant), 0, { at: 'output' });
+  expect(output.gainDb - drain.gainDb).toBeCloseTo(20, 9);
+  expect(output.harmonics[1].db).toBeCloseTo(drain.harmonics[1].db as number, 9);
+});
+
+test('an option that makes no sense is named with its value', () => {
+  expect(() => measureTone(cellA(0), 0, { toneHz: -5 })).toThrow('toneHz is -5; expected 0.1 to 1000000 Hz');
+  expect(() => measureTone(cellA(0), 3, {})).toThrow('variant 3 is not in the design; expected 0 to 0');
+});
