@@ -9,6 +9,7 @@ export interface Oversampler {
   readonly buffers: readonly Float64Array[];
   /** Delay line at the upper rate that makes the whole delay a whole number of samples (linear phase only). */
   readonly delay: Float64Array;
+  readonly leaving: Float64Array;
 }
 
 /** Upper-rate samples of extra delay that make the linear-phase round trip a whole number of lower-rate samples. */
@@ -43,6 +44,7 @@ export function createOversampler(factor: number, filters: FilterSet, longest: n
     down: stages.map((stage) => createHalf(filters, stage)),
     buffers,
     delay: new Float64Array(paddingSamples(factor, filters)),
+    leaving: new Float64Array(paddingSamples(factor, filters)),
   };
 }
 
@@ -55,20 +57,20 @@ export function raise(oversampler: Oversampler, count: number): Float64Array {
 
 /** Lowers the last buffer to `count` samples in the first, which it returns. */
 export function lower(oversampler: Oversampler, count: number): Float64Array {
-  const { down, buffers, delay } = oversampler;
+  const { down, buffers, delay, leaving } = oversampler;
   const top = buffers[buffers.length - 1];
-  if (delay.length > 0) delayBy(delay, top, count * oversampler.factor);
+  if (delay.length > 0) delayBy(delay, leaving, top, count * oversampler.factor);
   for (let stage = down.length - 1; stage >= 0; stage--) halveRate(down[stage], buffers[stage + 1], buffers[stage], count * (1 << stage));
   return buffers[0];
 }
 
 /** Delays `signal` in place by `delay.length` samples; `count` is a multiple of the oversampling factor, so never shorter than the delay. */
-function delayBy(delay: Float64Array, signal: Float64Array, count: number): void {
+function delayBy(delay: Float64Array, leaving: Float64Array, signal: Float64Array, count: number): void {
   const length = delay.length;
+  for (let i = 0; i < length; i++) leaving[i] = signal[count - length + i];
+  signal.copyWithin(length, 0, count - length);
   for (let i = 0; i < length; i++) {
-    const last = signal[count - length + i];
-    for (let k = count - length + i; k >= length; k -= length) signal[k] = signal[k - length];
     signal[i] = delay[i];
-    delay[i] = last;
+    delay[i] = leaving[i];
   }
 }

@@ -1,0 +1,154 @@
+import { PerformanceObserver } from 'node:perf_hooks';
+import { expect, test } from 'vitest';
+import { type Chain, createChain, moveChain, processChain, warmChain } from '../../../model/chain/chain.ts';
+import { compileChain } from '../../../model/chain/compile.ts';
+import type { FilterSet } from '../../../model/chain/halfband.ts';
+import { renderClip } from '../../../model/chain/render.ts';
+import type { Control, Design, Variant } from '../../../model/design/types.ts';
+import { measureTone } from '../../../model/study/tone.ts';
+import { CELL_A_DEVICE, designOf, REAL_CELL, REAL_DEVICE, variantOf } from '../../support/designs.ts';
+
+const RATE = 48000;
+const TREMOLO: Control = { source: 'lfo', shape: 'sine', rateHz: 4, fromV: -0.4, toV: -1.7, edgeSec: 0.01 };
+const DESIGN = designOf(variantOf(REAL_CELL, REAL_DEVICE, TREMOLO));
+
+const tone = (length: number, hz = 440, peak = 0.4) =>
+  Float32Array.from({ length }, (_, i) => peak * Math.sin((2 * Math.PI * hz * i) / RATE));
+const chainOf = (design: Design, filters: FilterSet = 'lowLatency') => createChain(compileChain(design, 0, RATE, 1, filters));
+
+function run(chain: Chain, input: Float32Array, block: number): Float32Array {
+  const output = new Float32Array(input.length);
+  for (let at = 0; at < input.length; at += block) {
+    const end = Math.min(input.length, at + block);
+    processChain(chain, [input.subarray(at, end)], [output.subarray(at, end)]);
+  }
+  return output;
+}
+
+const withVariant = (design: Design, change: Partial<Variant>): Design => ({ ...design, variants: [{ ...design.variants[0], ...change }] });
+
+test('block length changes no bit, while values move and shapes fade too', () => {
+  const input = tone(12000);
+  const other = withVariant(DESIGN, { cell: { ...REAL_CELL, seriesOhm: 22000 } });
+  const without = withVariant(DESIGN, { cell: { ...REAL_CELL, feedback: { kind: 'none' } } });
+  const play = (block: number) => {
+    const chain = chainOf(DESIGN);
+    const parts = [run(chain, input.subarray(0, 4000), block)];
+    moveChain(chain, compileChain(other, 0, RATE, 1, 'lowLatency'));
+    parts.push(run(chain, input.subarray(4000, 8000), block));
+    moveChain(chain, compileChain(without, 0, RATE, 1, 'lowLatency'));
+    parts.push(run(chain, input.subarray(8000), block));
+    return parts.flatMap((part) => Array.from(part));
+  };
+  const whole = play(128);
+  for (const block of [1, 37, 128, 333, 4000]) expect(play(block)).toEqual(whole);
+});
+
+test('a rendered tone has the gain and the harmonics of the steady reading, to the oversampling filters and −100 dB', () => {
+  const still = designOf(variantOf(REAL_CELL, REAL_DEVICE, { source: 'fixed', controlV: -1.2 }));
+  const reading = measureTone(still, 0, { toneHz: 1000, toneV: 0.5 });
+  const input = Float32Array.from({ length: 3 * RATE }, (_, i) => 0.5 * Math.cos((2 * Math.PI * i) / 48));
+  const [output] = renderClip(still, 0, [input], RATE);
+  const tail = output.subarray(2 * RATE, 2 * RATE + 4800);
+  for (const n of [1, 2]) {
+    let re = 0;
+    let im = 0;
+    tail.forEach((v, i) => {
+      re += (2 / 4800) * v * Math.cos((2 * Math.PI * n * i) / 48);
+      im += (2 / 4800) * v * Math.sin((2 * Math.PI * n * i) / 48);
+    });
+    const distance = Math.abs(Math.hypot(re, im) - reading.harmonics[n - 1].amplitudeV) / reading.fundamentalV;
+    expect(20 * Math.log10(distance)).toBeLessThan(-100);
+  }
+});
+
+test('a render is as long as its source and in time with it', () => {
+  const wire = designOf(variantOf({ seriesOhm: 1, loadOhm: 1e9 }, CELL_A_DEVICE, { source: 'fixed', controlV: -30 }));
+  const input = tone(5000, 1000);
+  for (const oversampling of [1, 4, 8] as const) {
+    const [output] = renderClip({ ...wire, oversampling }, 0, [input], RATE);
+    expect(output).toHaveLength(5000);
+    let worst = 0;
+    for (let i = 500; i < 4500; i++) worst = Math.max(worst, Math.abs(output[i] - input[i]));
+    expect(worst).toBeLessThan(1e-4);
+  }
+});
+
+test('a move of values makes no step larger than the slope that the signal had', () => {
+  const chain = chainOf(withVariant(DESIGN, { control: { source: 'fixed', controlV: -1 } }));
+  const before = run(chain, tone(RATE), 128);
+  moveChain(chain, compileChain(withVariant(DESIGN, { control: { source: 'fixed', controlV: -1.4 } }), 0, RATE, 1, 'lowLatency'));
+  const after = run(chain, tone(RATE), 128);
+  const steepest = (samples: Float32Array) =>
+    samples.reduce((most, v, i) => (i < 2 ? most : Math.max(most, Math.abs(v - samples[i - 1]))), 0);
+  expect(steepest(after)).toBeLessThan(steepest(after.subarray(RATE / 2)) * 1.1);
+  expect(Math.abs(after[0] - before[before.length - 1])).toBeLessThan(steepest(before) * 1.1);
+});
+
+test('a move that is not for this chain is refused and the old values keep sounding', () => {
+  const chain = chainOf(DESIGN);
+  expect(() => moveChain(chain, compileChain(DESIGN, 0, 44100, 1, 'lowLatency'))).toThrow('expected 1 at 48000 Hz');
+  expect(Math.max(...run(chain, tone(4800), 128))).toBeGreaterThan(0);
+});
+
+test('no input, however wild, brings anything but finite samples, and each such block is counted', () => {
+  const chain = chainOf(DESIGN);
+  for (const wild of [Number.NaN, Number.POSITIVE_INFINITY, 1e38, -9e3]) {
+    const input = tone(512).fill(wild, 100, 110);
+    const output = run(chain, input, 128);
+    expect(output.every(Number.isFinite)).toBe(true);
+  }
+  expect(chain.readings.faults).toBe(3);
+  const calm = run(chain, tone(RATE), 128).subarray(RATE / 2);
+  expect(Math.max(...calm)).toBeGreaterThan(0.01);
+  expect(Math.max(...calm)).toBeLessThan(0.5);
+});
+
+test('missing inputs are silence; two channels keep their own state', () => {
+  const chain = createChain(compileChain(DESIGN, 0, RATE, 2, 'lowLatency'));
+  const outputs = [new Float32Array(4800), new Float32Array(4800)];
+  processChain(chain, [tone(4800), new Float32Array(4800)], outputs);
+  expect(Math.max(...outputs[0])).toBeGreaterThan(0.01);
+  expect(Math.max(...outputs[1].map(Math.abs))).toBeLessThan(Math.max(...outputs[0]) / 10);
+  processChain(chain, [], outputs);
+  expect(outputs[0].every(Number.isFinite)).toBe(true);
+});
+
+/** Garbage collections while `work` runs, by the engine's own account. */
+async function collections(work: () => void): Promise<number> {
+  let count = 0;
+  const observer = new PerformanceObserver((list) => {
+    count += list.getEntries().length;
+  });
+  observer.observe({ entryTypes: ['gc'] });
+  await new Promise((resolve) => setTimeout(resolve, 20));
+  count = 0;
+  work();
+  await new Promise((resolve) => setTimeout(resolve, 20));
+  observer.disconnect();
+  return count;
+}
+
+test('200 000 blocks, values moving and junctions conducting among them, make no garbage', async () => {
+  const design = { ...DESIGN, oversampling: 1 as const };
+  const chain = chainOf(design);
+  const input = [tone(128, 440, 3)];
+  const output = [new Float32Array(128)];
+  warmChain(chain);
+  const numbers = compileChain(design, 0, RATE, 1, 'lowLatency');
+  const blocks = () => {
+    for (let block = 0; block < 200000; block++) processChain(chain, input, output);
+  };
+  moveChain(chain, numbers);
+  for (let block = 0; block < 5000; block++) processChain(chain, input, output);
+  moveChain(chain, numbers);
+  expect(await collections(blocks)).toBe(0);
+  const kept: number[][] = [];
+  const wasteful = () => {
+    for (let block = 0; block < 200000; block++) {
+      processChain(chain, input, output);
+      kept[block % 10] = Array.from(output[0]);
+    }
+  };
+  expect(await collections(wasteful)).toBeGreaterThan(0);
+}, 120000);
