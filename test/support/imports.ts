@@ -50,7 +50,7 @@ const DESIGN_TYPES = 'model/design/types.ts';
 const MODEL = ['design', 'device', 'cell', 'control', 'chain', 'measure', 'study'].map((name) => `model/${name}/`);
 
 const RULES: readonly Rule[] = [
-  { room: 'model/design/', may: [MATHS], packages: ['valibot', '@valibot/to-json-schema'] },
+  { room: 'model/design/', may: [MATHS], packages: [] },
   { room: 'model/device/', may: [], mayTypes: [DESIGN_TYPES], packages: [] },
   { room: 'model/cell/', may: ['model/device/'], mayTypes: [DESIGN_TYPES], packages: [] },
   { room: 'model/control/', may: [MATHS], mayTypes: [DESIGN_TYPES], packages: [] },
