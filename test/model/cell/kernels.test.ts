@@ -34,19 +34,25 @@ test('every solved sample obeys Kirchhoff to 1 pA + 1e-9 of the currents, for st
   const volts = fc.oneof(fc.double({ min: -3, max: 3, noNaN: true }), fc.double({ min: -1000, max: 1000, noNaN: true }));
   const resistance = fc.double({ min: 2, max: 7, noNaN: true }).map((decades) => 10 ** decades);
   fc.assert(
-    fc.property(fc.array(fc.tuple(volts, volts), { minLength: 5, maxLength: 20 }), resistance, resistance, fc.boolean(), (samples, ohm, control, fed) => {
-      const feedback: Cell['feedback'] = fed ? { kind: 'resistor', drainOhm: control, blockingF: null } : { kind: 'none' };
-      const design: Cell = { ...CELL_A, seriesOhm: ohm, loadOhm: 1e6, controlOhm: control, feedback };
-      const cell = createCell(compileCell(shuntCircuit(design, device), device, 25), 1 / 384000);
-      for (const [audioV, controlV] of samples) {
-        const signal = Float64Array.of(audioV);
-        advanceCell(cell, signal, Float64Array.of(controlV), 0, 1);
-        const vgs = overdriveV(cell, 'source') + device.gateOffV;
-        const vgd = overdriveV(cell, 'drain') + device.gateOffV;
-        expect(residualA(design, vgs, vgd, audioV, controlV)).toBeLessThan(1e-12);
-        expect(signal[0]).toBeCloseTo(vgs - vgd, 6);
-      }
-    }),
+    fc.property(
+      fc.array(fc.tuple(volts, volts), { minLength: 5, maxLength: 20 }),
+      resistance,
+      resistance,
+      fc.boolean(),
+      (samples, ohm, control, fed) => {
+        const feedback: Cell['feedback'] = fed ? { kind: 'resistor', drainOhm: control, blockingF: null } : { kind: 'none' };
+        const design: Cell = { ...CELL_A, seriesOhm: ohm, loadOhm: 1e6, controlOhm: control, feedback };
+        const cell = createCell(compileCell(shuntCircuit(design, device), device, 25), 1 / 384000);
+        for (const [audioV, controlV] of samples) {
+          const signal = Float64Array.of(audioV);
+          advanceCell(cell, signal, Float64Array.of(controlV), 0, 1);
+          const vgs = overdriveV(cell, 'source') + device.gateOffV;
+          const vgd = overdriveV(cell, 'drain') + device.gateOffV;
+          expect(residualA(design, vgs, vgd, audioV, controlV)).toBeLessThan(1e-12);
+          expect(signal[0]).toBeCloseTo(vgs - vgd, 6);
+        }
+      },
+    ),
     { numRuns: 2000, seed: 20261201 },
   );
 });

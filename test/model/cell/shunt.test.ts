@@ -10,6 +10,15 @@ import { CELL_A, CELL_A_DEVICE } from '../../support/designs.ts';
 const read = (name: string) => JSON.parse(readFileSync(new URL(`../../reference/${name}`, import.meta.url), 'utf8'));
 const db = (ratio: number) => 20 * Math.log10(ratio);
 
+interface StaticCase extends Record<string, unknown> {
+  readonly id: string;
+  readonly law: Device['law'];
+  readonly temperatureK: number;
+  readonly toneVpk: number;
+  readonly controlV: number;
+  readonly expect: Record<string, number>;
+}
+
 function deviceOf(values: Record<string, number>, law: Device['law']): Device {
   return {
     ...CELL_A_DEVICE,
@@ -31,14 +40,14 @@ function cellOf(values: Record<string, number | null>): Cell {
 }
 
 describe('static.json: the memoryless cell, computed independently in 80-bit arithmetic', () => {
-  const cases = read('static.json').cases.filter((entry: { law: string }) => entry.law === 'square');
+  const cases: StaticCase[] = read('static.json').cases.filter((entry: StaticCase) => entry.law === 'square');
   test('holds twelve square-law cases', () => expect(cases).toHaveLength(12));
 
   test.each(cases)('case $id: fundamental to 1e-6, H2 and H3 to 0.001 dB, zero where zero', (entry) => {
     const tempC = entry.temperatureK - 273.15;
-    const device = { ...deviceOf(entry, entry.law), readAtC: tempC };
+    const device = { ...deviceOf(entry as unknown as Record<string, number>, entry.law), readAtC: tempC };
     const size = 16384;
-    const numbers = compileCell(shuntCircuit(cellOf(entry), device), device, tempC);
+    const numbers = compileCell(shuntCircuit(cellOf(entry as unknown as Record<string, number | null>), device), device, tempC);
     const period = steadyPeriod(createCell(numbers, 1 / (1000 * size)), entry.toneVpk, entry.controlV, size);
     const { mean, real } = harmonicsOf(period.output, 5);
     const { expect: exact } = entry;

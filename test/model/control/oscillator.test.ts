@@ -3,7 +3,14 @@ import { compileOscillator, createOscillator, runOscillator } from '../../../mod
 import { controlRangeV, restControlV } from '../../../model/control/range.ts';
 import type { Control } from '../../../model/design/types.ts';
 
-const lfo = (shape: 'sine' | 'triangle' | 'square', edgeSec = 0.01): Control => ({ source: 'lfo', shape, rateHz: 5, fromV: -0.5, toV: -2, edgeSec });
+const lfo = (shape: 'sine' | 'triangle' | 'square', edgeSec = 0.01): Control => ({
+  source: 'lfo',
+  shape,
+  rateHz: 5,
+  fromV: -0.5,
+  toV: -2,
+  edgeSec,
+});
 
 function run(control: Control, rateHz: number, seconds: number): Float64Array {
   const numbers = compileOscillator(control, rateHz);
@@ -36,7 +43,9 @@ test('the square lasts edgeSec from end to end', () => {
 });
 
 test('an edge longer than half a period is refused by name', () => {
-  expect(() => compileOscillator(lfo('square', 0.11), 48000)).toThrow('control.edgeSec is 0.11; expected at most half a period, 0.1 s at 5 Hz');
+  expect(() => compileOscillator(lfo('square', 0.11), 48000)).toThrow(
+    'control.edgeSec is 0.11; expected at most half a period, 0.1 s at 5 Hz',
+  );
 });
 
 test('cutting into blocks of any size changes no bit', () => {
