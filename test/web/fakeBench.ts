@@ -1,0 +1,191 @@
+/** A bench for looking at the page without sound: a real document, and invented numbers that are plausible. No part of the build. */
+import { computed, type Signal, signal } from '@preact/signals';
+import { defaultDesign } from '../../model/design/defaults.ts';
+import { feedbackFraction } from '../../model/design/feedback.ts';
+import type { Design } from '../../model/design/types.ts';
+import type { ToneReading } from '../../model/study/tone.ts';
+import type { Bench, FeedbackPoint, LiveLevels, Note, SoundState, Take } from '../../web/state/bench.ts';
+import { createDocument } from '../../web/state/document.ts';
+
+export interface FakeOptions {
+  readonly sound?: SoundState;
+  readonly muted?: boolean;
+  readonly notes?: readonly Note[];
+  readonly takes?: readonly Take[];
+  readonly underWay?: boolean;
+  /** Replaces values of the first variant, by path. */
+  readonly values?: Readonly<Record<string, unknown>>;
+  readonly saturated?: number;
+  readonly unread?: boolean;
+}
+
+export function createFakeBench(options: FakeOptions = {}): Bench {
+  const document = createDocument(named(defaultDesign()), () => undefined);
+  document.addVariant();
+  document.addVariant();
+  document.hearVariant(0);
+  for (const [path, value] of Object.entries(options.values ?? {})) {
+    const refused = document.setValue(path, value);
+    if (refused !== null) throw new Error(refused);
+  }
+  const sound = signal<SoundState>(options.sound ?? 'playing');
+  const muted = signal(options.muted ?? false);
+  const hearing = signal<'cell' | 'bypass'>('cell');
+  const listenDb = signal(-18);
+  const ceilingDbfs = signal(-6);
+  const toneV = signal(0.2);
+  const toneHz = signal(997);
+  const takes = signal<readonly Take[]>(options.takes ?? []);
+  const notes = signal<readonly Note[]>(options.notes ?? []);
+  const none = () => undefined;
+  const asyncNone = async () => undefined;
+  const put = (target: { value: number }) => (value: number) => {
+    target.value = value;
+    return null;
+  };
+  const variant = computed(() => document.design.value.variants[document.heardVariant.value]);
+  const k = computed(() => feedbackFraction(variant.value.cell));
+  return {
+    ...document,
+    openDesign: asyncNone,
+    openExample: asyncNone,
+    saveDesign: none,
+    examples: signal([
+      { name: 'harbour', title: 'Harbour tremolo', scenario: 'A slow sine at instrument level, resistors from the drawer.' },
+    ]),
+    sound,
+    start: async () => assign(sound, 'playing'),
+    stop: () => assign(sound, 'stopped'),
+    muted,
+    setMuted: (on) => assign(muted, on),
+    hearing,
+    hear: (which) => assign(hearing, which),
+    phrases: signal([
+      { name: 'chords', title: 'Plucked chords' },
+      { name: 'bass', title: 'Bass line' },
+    ]),
+    source: signal({ title: 'Plucked chords', seconds: 16, kind: 'phrase' }),
+    choosePhrase: asyncNone,
+    openAudio: asyncNone,
+    listenDb,
+    setListenDb: put(listenDb),
+    ceilingDbfs,
+    setCeilingDbfs: put(ceilingDbfs),
+    rateHz: signal(48000),
+    latencySec: signal(0.002),
+    live: signal(options.sound === 'idle' ? null : inventedLevels(muted.value)),
+    reading: computed(() =>
+      options.unread ? { fault: 'The cell cannot be solved here' } : inventedReading(k.value, options.saturated ?? 0),
+    ),
+    worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, controlV: -3.1 })),
+    feedbackCurve: computed(() => inventedCurve()),
+    toneV,
+    setToneV: put(toneV),
+    toneHz,
+    setToneHz: put(toneHz),
+    outputSamples: (into) => inventNoise(into, 0.2),
+    inputSamples: (into) => inventNoise(into, 0.12),
+    spectrumRateHz: signal(48000),
+    takes,
+    taking: signal(options.underWay ? { seconds: 7.3 } : null),
+    rendering: signal(options.underWay ? { fraction: 0.42 } : null),
+    startTake: none,
+    endTake: none,
+    renderClip: asyncNone,
+    endRender: none,
+    saveTake: none,
+    deleteTake: (id) =>
+      assign(
+        takes,
+        takes.value.map((take) => (take.id === id ? { ...take, deleted: true } : take)),
+      ),
+    restoreTake: (id) =>
+      assign(
+        takes,
+        takes.value.map((take) => (take.id === id ? { ...take, deleted: false } : take)),
+      ),
+    renameTake: (id, name) =>
+      assign(
+        takes,
+        takes.value.map((take) => (take.id === id ? { ...take, name } : take)),
+      ),
+    playTake: none,
+    playingTake: signal(null),
+    notes,
+    dismiss: (id) =>
+      assign(
+        notes,
+        notes.value.filter((note) => note.id !== id),
+      ),
+  };
+}
+
+function assign<Value>(target: Signal<Value>, value: Value): void {
+  target.value = value;
+}
+
+function named(design: Design): Design {
+  const [first] = design.variants;
+  const cell = { ...first.cell, controlOhm: 910e3, feedback: { kind: 'resistor', drainOhm: 1e6, blockingF: 100e-9 } } as const;
+  const control = { source: 'lfo', shape: 'sine', rateHz: 4.2, fromV: -0.6, toV: -1.8, edgeSec: 0.005 } as const;
+  return { ...design, title: 'Harbour tremolo', variants: [{ ...first, name: 'A', cell, control, output: { gainDb: 18 } }] };
+}
+
+function inventedLevels(muted: boolean): LiveLevels {
+  return {
+    controlV: -1.53,
+    gateSourceV: -1.38,
+    inputPeakV: 0.2,
+    drainPeakV: 0.059,
+    outputPeakDbfs: 7.4,
+    outputRmsDbfs: -4,
+    recentPeakDbfs: 0,
+    heardPeakDbfs: muted ? Number.NEGATIVE_INFINITY : -17,
+    atCeiling: false,
+    faults: 0,
+    underruns: 0,
+  };
+}
+
+function inventedReading(k: number, saturated: number): ToneReading {
+  const h2 = 0.19 * (0.5 - k) + 1e-6;
+  const harmonic = (n: number, fraction: number) => ({
+    n,
+    amplitudeV: Math.abs(fraction) * 0.059,
+    db: 20 * Math.log10(Math.abs(fraction)),
+    phaseRad: fraction < 0 ? Math.PI : 0,
+  });
+  return {
+    gainDb: -10.5,
+    fundamentalV: 0.059,
+    dcV: 0.0012,
+    restDcV: 0.0001,
+    thdFundamental: Math.hypot(h2, 2.4e-4),
+    thdTotal: Math.hypot(h2, 2.4e-4),
+    harmonics: [harmonic(1, 1), harmonic(2, h2), harmonic(3, -2e-4)],
+    rdsOhm: 4250,
+    vgsV: -1.38,
+    regions: { ohmic: 1 - saturated, saturated, cutoff: 0, gateOn: 0 },
+    gridPoints: 512,
+    converged: true,
+  };
+}
+
+function inventedCurve(): FeedbackPoint[] {
+  return Array.from({ length: 41 }, (_, n) => {
+    const k = 0.4 + n * 0.005;
+    const h2Signed = 0.19 * (0.5 - k);
+    const h3 = 2e-4 + 0.02 * (k - 0.5) ** 2;
+    return { k, thd: Math.hypot(h2Signed, h3), h2Signed, h3 };
+  });
+}
+
+function inventNoise(into: Float32Array, level: number): void {
+  let seed = 7;
+  let low = 0;
+  for (let n = 0; n < into.length; n++) {
+    seed = (seed * 1103515245 + 12345) % 2147483648;
+    low += 0.05 * ((seed / 1073741824 - 1) * level - low);
+    into[n] = low + 0.05 * level * Math.sin(n * 0.05) + 0.03 * level * Math.sin(n * 0.11);
+  }
+}

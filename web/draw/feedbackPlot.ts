@@ -1,0 +1,111 @@
+/** Fig. 2: distortion against k, on a logarithmic scale of per cent. */
+import { linePath, type Point } from './line.ts';
+import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
+import { decadeTicks, insideScale, linearScale, linearTicks, logScale, type Scale, toPixel } from './scale.ts';
+import { decimals, percentText } from './words.ts';
+
+export interface CurvePoint {
+  readonly k: number;
+  /** Fractions of the fundamental. */
+  readonly thd: number;
+  readonly h2Signed: number;
+  readonly h3: number;
+}
+
+export interface FeedbackPlot {
+  readonly area: PlotArea;
+  readonly x: Scale;
+  readonly y: Scale;
+  readonly xTicks: readonly Tick[];
+  readonly yTicks: readonly Tick[];
+  readonly thd: string;
+  readonly h2: string;
+  readonly h3: string;
+  readonly least: { readonly k: number; readonly thd: number; readonly x: number; readonly y: number };
+  /** Where the direct labels of the harmonics stand; null when the curve is out of the frame there. */
+  readonly h2Label: Point | null;
+  readonly h3Label: Point | null;
+}
+
+/** Decades shown at most, from the highest value down: a deeper null runs out of the frame at its foot. */
+const MOST_DECADES = 4;
+const MARGINS = { left: 40, right: 10, top: 8, bottom: 24 };
+
+/** Points drawn for each one measured: between two, harmonics go in straight lines and THD follows from them, so that a null looks like one. */
+const REFINE = 6;
+
+function refined(curve: readonly CurvePoint[]): CurvePoint[] {
+  const others = curve.map(({ thd, h2Signed }) => Math.max(0, thd * thd - h2Signed * h2Signed));
+  return curve.flatMap((point, n) => {
+    const next = curve[n + 1];
+    if (next === undefined) return [point];
+    return Array.from({ length: REFINE }, (_, step) => {
+      const mix = (a: number, b: number) => a + ((b - a) * step) / REFINE;
+      const h2Signed = mix(point.h2Signed, next.h2Signed);
+      const thd = Math.sqrt(h2Signed * h2Signed + mix(others[n], others[n + 1]));
+      return { k: mix(point.k, next.k), thd, h2Signed, h3: mix(point.h3, next.h3) };
+    });
+  });
+}
+
+/** `measured` ascends in k and has at least two points. */
+export function plotFeedback(measured: readonly CurvePoint[], width: number, height: number): FeedbackPlot {
+  const curve = refined(measured);
+  const area = plotArea(width, height, MARGINS);
+  const x = linearScale(curve[0].k, curve[curve.length - 1].k, area.left, area.right);
+  const { from, to } = thdRange(curve);
+  const y = logScale(from, to, area.bottom, area.top);
+  const path = (pick: (point: CurvePoint) => number) =>
+    linePath(curve.map((point) => ({ x: toPixel(x, point.k), y: Math.min(toPixel(y, Math.abs(pick(point))), area.bottom + 40) })));
+  const lowest = curve.reduce((best, point) => (point.thd < best.thd ? point : best));
+  return {
+    area,
+    x,
+    y,
+    xTicks: linearTicks(x.from, x.to, 6).map((k) => ({ at: toPixel(x, k), words: decimals(k, 2) })),
+    yTicks: yTicks(y),
+    thd: path((point) => point.thd),
+    h2: path((point) => point.h2Signed),
+    h3: path((point) => point.h3),
+    least: { ...lowest, x: toPixel(x, lowest.k), y: Math.min(toPixel(y, lowest.thd), area.bottom) },
+    h2Label: labelOn(curve, (point) => Math.abs(point.h2Signed), x, y, 0.61),
+    h3Label: labelOn(curve, (point) => Math.abs(point.h3), x, y, 0.1),
+  };
+}
+
+function thdRange(curve: readonly CurvePoint[]): { from: number; to: number } {
+  const highest = Math.max(...curve.map((point) => point.thd), 1e-6);
+  const top = roundUp(highest * 1.15);
+  const lowest = Math.max(1e-9, Math.min(...curve.map((point) => point.thd)));
+  const bottom = 10 ** Math.floor(Math.log10(lowest));
+  return { from: Math.max(bottom, 10 ** (Math.ceil(Math.log10(top)) - MOST_DECADES), 1e-9), to: top };
+}
+
+/** The next of 1, 3 and 10 times a power of ten. */
+function roundUp(value: number): number {
+  const decade = 10 ** Math.floor(Math.log10(value));
+  return [1, 3, 10].map((n) => n * decade).find((candidate) => candidate >= value * (1 - 1e-9)) ?? 10 * decade;
+}
+
+function yTicks(y: Scale): Tick[] {
+  const values = decadeTicks(y.from, y.to);
+  const top = values.includes(y.to) ? [] : [y.to];
+  const all = [...values, ...top];
+  return all.map((value) => ({ at: toPixel(y, value), words: value === y.to ? `${tickPercent(value)}\u2009%` : tickPercent(value) }));
+}
+
+/** Decades of per cent as short as they go: 10, 0.1, 0.001. */
+function tickPercent(fraction: number): string {
+  return String(Number((100 * fraction).toPrecision(6)));
+}
+
+function labelOn(curve: readonly CurvePoint[], pick: (point: CurvePoint) => number, x: Scale, y: Scale, fraction: number): Point | null {
+  const point = curve[Math.round(fraction * (curve.length - 1))];
+  const value = pick(point);
+  return insideScale(y, value) ? { x: toPixel(x, point.k), y: toPixel(y, value) } : null;
+}
+
+/** Words for the least distortion that k alone can reach. */
+export function leastWords(least: { k: number; thd: number }): string {
+  return `least ${percentText(least.thd)}\u2009% at ${decimals(least.k, 3)}`;
+}

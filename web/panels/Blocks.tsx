@@ -1,0 +1,49 @@
+import { Characteristics } from './Characteristics.tsx';
+import { Distortion } from './Distortion.tsx';
+import { Equation } from './Equation.tsx';
+import { FeedbackFigure } from './FeedbackFigure.tsx';
+import { GateFigure } from './GateFigure.tsx';
+import { Schematic } from './Schematic.tsx';
+import { SpectrumFigure } from './SpectrumFigure.tsx';
+import { Takes } from './Takes.tsx';
+import type { Layout } from './useLayout.ts';
+
+/** Equation, figures and tables, in the order in which each width is read. */
+export function Blocks({ layout }: { readonly layout: Layout }) {
+  const small = (
+    <div class="small-figures">
+      <GateFigure />
+      <SpectrumFigure />
+    </div>
+  );
+  if (layout === 'wide') {
+    return (
+      <div class="blocks">
+        <div class="column first">
+          <Schematic form="wide" />
+          <Characteristics />
+        </div>
+        <div class="column second">
+          <Equation />
+          <Distortion />
+          <FeedbackFigure />
+          <Takes />
+        </div>
+        {small}
+      </div>
+    );
+  }
+  return (
+    <div class="blocks">
+      <div class="column first">
+        <Equation />
+        <Distortion />
+      </div>
+      <FeedbackFigure />
+      <Schematic form={layout === 'phone' ? 'upright' : 'wide'} />
+      <Characteristics />
+      <Takes />
+      {small}
+    </div>
+  );
+}

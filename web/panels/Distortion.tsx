@@ -1,0 +1,110 @@
+import type { Signal } from '@preact/signals';
+import { parseQuantity } from '../../model/design/values.ts';
+import { decimals, percentText, signedPercentText, valueVolts } from '../draw/words.ts';
+import type { Bench } from '../state/bench.ts';
+import { useBench } from './BenchContext.ts';
+import { EditableValue } from './parts/EditableValue.tsx';
+import { LiveReading } from './parts/LiveReading.tsx';
+import { Sym } from './parts/Symbol.tsx';
+import { signedHarmonic } from './readingWords.ts';
+import { overLimit, useThdLimit } from './thdLimit.ts';
+
+const PERCENT = '\u2009%';
+
+/** THD at this gate voltage, the worst over the swing, and the two harmonics that say what to do. */
+export function Distortion() {
+  const bench = useBench();
+  const limit = useThdLimit();
+  const read = bench.reading.value;
+  const reading = read !== null && 'thdFundamental' in read ? read : null;
+  const why = read === null ? 'not measured yet' : 'fault' in read ? read.fault : '';
+  const h2 = reading === null ? null : signedHarmonic(reading, 2);
+  const h3 = reading === null ? null : signedHarmonic(reading, 3);
+  return (
+    <dl class="distortion">
+      <LiveReading
+        large
+        label="THD now"
+        value={reading && percentText(reading.thdFundamental)}
+        unit={PERCENT}
+        meaning={reading ? `gate at ${valueVolts(reading.vgsV)}` : why}
+      />
+      <Worst worst={bench.worst.value} limit={limit} />
+      <LiveReading
+        label={
+          <>
+            <Sym of="H" sub="2" />, even
+          </>
+        }
+        value={h2 === null ? null : signedPercentText(h2)}
+        unit={PERCENT}
+        meaning={h2 === null ? '' : <H2Words h2={h2} />}
+      />
+      <LiveReading
+        label={
+          <>
+            <Sym of="H" sub="3" />, odd
+          </>
+        }
+        value={h3 === null ? null : signedPercentText(h3)}
+        unit={PERCENT}
+        meaning={
+          h3 === null ? (
+            ''
+          ) : (
+            <>
+              not cured by <i>k</i>
+            </>
+          )
+        }
+      />
+    </dl>
+  );
+}
+
+function H2Words({ h2 }: { readonly h2: number }) {
+  if (Math.abs(h2) < 5e-6) return <>nulled</>;
+  return (
+    <>
+      {h2 > 0 ? 'plus: raise ' : 'minus: lower '}
+      <i>k</i>
+    </>
+  );
+}
+
+function Worst({ worst, limit }: { readonly worst: Bench['worst']['value']; readonly limit: Signal<number> }) {
+  const over = worst !== null && overLimit(worst.thdFundamental, limit.value);
+  const editable = (
+    <EditableValue
+      label="Limit of THD over the swing"
+      short="The limit"
+      value={100 * limit.value}
+      stepping={{ kind: 'preferred', series: 'E12', from: 0.01 }}
+      format={(percent) => `${decimals(percent, percent < 1 ? 2 : 1)}${PERCENT}`}
+      read={(text) => parseQuantity(text.replace(/%\s*$/, ''), '')}
+      onSet={(percent) => {
+        if (percent === null || !(percent > 0 && percent <= 100))
+          return `The limit is ${percent} %; expected more than 0 and at most 100 %.`;
+        limit.value = percent / 100;
+        return null;
+      }}
+    />
+  );
+  return (
+    <LiveReading
+      label="Worst over the swing"
+      value={worst && percentText(worst.thdFundamental)}
+      unit={PERCENT}
+      over={over}
+      meaning={
+        worst === null ? (
+          'not measured yet'
+        ) : (
+          <>
+            {over ? <span class="fault">over the limit of</span> : 'within the limit of'} {editable}
+          </>
+        )
+      }
+    />
+  );
+}

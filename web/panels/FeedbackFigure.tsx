@@ -1,0 +1,104 @@
+import { feedbackFraction } from '../../model/design/feedback.ts';
+import { type FeedbackPlot, leastWords, plotFeedback } from '../draw/feedbackPlot.ts';
+import { toPixel } from '../draw/scale.ts';
+import { percentText, valueVolts } from '../draw/words.ts';
+import { useBench, usePlaying, useVariant } from './BenchContext.ts';
+import { FeedbackPointer } from './FeedbackPointer.tsx';
+import { Figure } from './parts/Figure.tsx';
+import { PlotFrame } from './parts/PlotFrame.tsx';
+import { useSheetSize } from './parts/useSheetSize.ts';
+
+/** Fig. 2: distortion against k at this gate voltage. The axis itself is the control of k. */
+export function FeedbackFigure() {
+  const bench = useBench();
+  const { ref, size } = useSheetSize<HTMLDivElement>();
+  const curve = bench.feedbackCurve.value;
+  const read = bench.reading.value;
+  const gate = read !== null && 'vgsV' in read ? `, gate at ${valueVolts(read.vgsV)}` : '';
+  const plot = size && curve && curve.length > 1 ? plotFeedback(curve, size.width, size.height) : null;
+  return (
+    <Figure
+      number={2}
+      className="feedback-figure"
+      caption={
+        <>
+          Distortion against <i>k</i> (drag it){gate}.
+        </>
+      }
+    >
+      <div class="plot" ref={ref}>
+        {plot && <Curves plot={plot} />}
+        {plot && <FeedbackPointer plot={plot} />}
+        {!plot && <p class="unread empty-plot">no reading yet</p>}
+      </div>
+    </Figure>
+  );
+}
+
+function Curves({ plot }: { readonly plot: FeedbackPlot }) {
+  const { area, least, h2Label, h3Label } = plot;
+  return (
+    <svg viewBox={`0 0 ${area.width} ${area.height}`} role="img" aria-label={`Distortion against k: ${leastWords(least)}`}>
+      <PlotFrame area={area} xTicks={plot.xTicks} yTicks={plot.yTicks} under={3} />
+      <clipPath id="feedback-clip">
+        <rect x={area.left} y={area.top} width={area.right - area.left} height={area.bottom - area.top} />
+      </clipPath>
+      <g clip-path="url(#feedback-clip)">
+        <path class="curve-h2-under" d={plot.h2} />
+        <path class="now-line curve-thd" d={plot.thd} />
+        <path class="curve-h2" d={plot.h2} />
+        <path class="curve-h3" d={plot.h3} />
+      </g>
+      <Present plot={plot} />
+      {h2Label && (
+        <text class="note-text halo" x={h2Label.x + 12} y={h2Label.y + 16}>
+          <tspan class="italic">H</tspan>
+          <tspan class="subscript" dy={3}>
+            2
+          </tspan>
+          <tspan dy={-3}>, even</tspan>
+        </text>
+      )}
+      {h3Label && (
+        <text class="note-text halo" x={h3Label.x + 4} y={h3Label.y - 8}>
+          <tspan class="italic">H</tspan>
+          <tspan class="subscript" dy={3}>
+            3
+          </tspan>
+          <tspan dy={-3}>, odd</tspan>
+        </text>
+      )}
+      <text class="note-text halo" x={Math.min(least.x + 14, area.right - 128)} y={area.bottom - 8}>
+        {leastWords(least)}
+      </text>
+    </svg>
+  );
+}
+
+/** The point at the k of now, with its THD, and a line down to the pointer. */
+function Present({ plot }: { readonly plot: FeedbackPlot }) {
+  const bench = useBench();
+  const playing = usePlaying();
+  const k = feedbackFraction(useVariant().cell);
+  const read = bench.reading.value;
+  const { area, x: scale, y } = plot;
+  const x = toPixel(scale, k);
+  if (read === null || !('thdFundamental' in read) || x < area.left || x > area.right) return null;
+  const height = Math.min(area.bottom, Math.max(area.top, toPixel(y, read.thdFundamental)));
+  const words = `THD ${percentText(read.thdFundamental)}\u2009%`;
+  const toLeft = x > area.right - 100;
+  return (
+    <g>
+      <path class="now-line thin" d={`M${x} ${height}V${area.bottom}`} />
+      <circle class={playing ? 'present' : 'present hollow'} cx={x} cy={height} r={4.5} />
+      <text
+        class="note-text halo now-text"
+        x={toLeft ? x - 10 : x + 10}
+        y={height - 6 < area.top + 10 ? height + 18 : height - 6}
+        text-anchor={toLeft ? 'end' : 'start'}
+      >
+        {words}
+      </text>
+    </g>
+  );
+}

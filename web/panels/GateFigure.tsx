@@ -1,0 +1,117 @@
+import { useEffect, useRef } from 'preact/hooks';
+import { type GatePeriod, type GatePlot, gatePeriod, plotGate, turnOf } from '../draw/gatePlot.ts';
+import { toPixel } from '../draw/scale.ts';
+import { valueVolts, voltsText } from '../draw/words.ts';
+import { useBench, usePlaying, useVariant } from './BenchContext.ts';
+import { Figure } from './parts/Figure.tsx';
+import { PlotFrame } from './parts/PlotFrame.tsx';
+import { useSheetSize } from './parts/useSheetSize.ts';
+
+/** Fig. 3: the gate over one period of the control, with its regions in a strip below. */
+export function GateFigure() {
+  const { control, cell, device } = useVariant();
+  const { ref, size } = useSheetSize<HTMLDivElement>();
+  const period = gatePeriod(control, cell);
+  const plot = size && period ? plotGate(period, device.gateOffV, size.width, size.height) : null;
+  const caption =
+    plot &&
+    `${period?.steady ? 'Gate at a fixed control' : 'Gate over a period'}, ${pastWords(plot.deepest.pastV)}. Strip: filled ohmic, empty off, hatched conducting.`;
+  return (
+    <Figure number={3} className="gate-figure" caption={caption}>
+      <div class="plot" ref={ref}>
+        {plot && period && <Drawn plot={plot} period={period} gateOffV={device.gateOffV} />}
+        {!period && <p class="unread empty-plot">this control has no period of its own</p>}
+      </div>
+    </Figure>
+  );
+}
+
+interface DrawnProps {
+  readonly plot: GatePlot;
+  readonly period: GatePeriod;
+  readonly gateOffV: number;
+}
+
+function Drawn({ plot, period, gateOffV }: DrawnProps) {
+  const { area, offY, offArea, deepest } = plot;
+  const roomy = deepest.pastV > 0 && Math.abs(deepest.y - offY) >= 12;
+  const labelLeft = deepest.x > (area.left + area.right) / 2;
+  return (
+    <svg
+      viewBox={`0 0 ${area.width} ${area.height}`}
+      role="img"
+      aria-label={`Gate voltage over a period, against VGS(off) ${valueVolts(gateOffV)}`}
+    >
+      <defs>
+        <pattern id="off-hatch" width="6" height="6" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
+          <path class="hatch" d="M0 0V6" />
+        </pattern>
+      </defs>
+      <PlotFrame area={area} xTicks={plot.xTicks} yTicks={plot.yTicks} under={11} />
+      <rect x={area.left} y={offArea.top} width={area.right - area.left} height={Math.max(0, offArea.height)} fill="url(#off-hatch)" />
+      <path class="dash-dot" d={`M${area.left} ${offY}H${area.right}`} />
+      <path class="now-line" d={plot.gate} />
+      <text
+        class="note-text halo"
+        x={labelLeft ? area.left + 7 : area.right - 7}
+        y={gateOffV < 0 ? offY - 6 : offY + 14}
+        text-anchor={labelLeft ? 'start' : 'end'}
+      >
+        <tspan class="italic">V</tspan>
+        <tspan class="subscript" dy={3}>
+          GS(off)
+        </tspan>
+      </text>
+      {roomy && (
+        <path
+          class="dimension"
+          d={`M${deepest.x} ${offY}V${deepest.y}m-3 ${deepest.y > offY ? -6 : 6}l3 ${deepest.y > offY ? 6 : -6}l3 ${deepest.y > offY ? -6 : 6}`}
+        />
+      )}
+      <Strip plot={plot} />
+      <Present plot={plot} period={period} />
+    </svg>
+  );
+}
+
+/** How far the deepest end of the swing lies past VGS(off). */
+function pastWords(pastV: number): string {
+  return pastV > 0 ? `at most ${voltsText(pastV)} past off` : `${voltsText(-pastV)} short of off`;
+}
+
+function Strip({ plot }: { readonly plot: GatePlot }) {
+  const y = plot.area.bottom + 4;
+  return (
+    <g class="strip">
+      {plot.regions.map(({ region, from, to }) => (
+        <rect key={from} class={`region-${region}`} x={from} y={y} width={to - from} height={7} />
+      ))}
+      <rect class="border" x={plot.area.left} y={y} width={plot.area.right - plot.area.left} height={7} />
+    </g>
+  );
+}
+
+/** The point of this moment: moved at frame rate, outside rendering. */
+function Present({ plot, period }: { readonly plot: GatePlot; readonly period: GatePeriod }) {
+  const bench = useBench();
+  const playing = usePlaying();
+  const point = useRef<SVGCircleElement>(null);
+  const latest = useRef({ plot, period });
+  latest.current = { plot, period };
+  useEffect(() => {
+    let before = 0;
+    return bench.live.subscribe((live) => {
+      if (live === null || point.current === null) return;
+      const { x, y, area } = latest.current.plot;
+      const turn = turnOf(latest.current.period, live.controlV, live.controlV < before);
+      before = live.controlV;
+      const height = Math.max(area.top, Math.min(area.bottom, toPixel(y, live.gateSourceV)));
+      point.current.setAttribute(
+        'cx',
+        String(latest.current.period.steady ? (area.left + area.right) / 2 : x.start + turn * (x.end - x.start)),
+      );
+      point.current.setAttribute('cy', String(height));
+    });
+  }, [bench]);
+  return <circle ref={point} class={playing ? 'present' : 'present hollow'} cx={-20} cy={-20} r={4.5} />;
+}

@@ -1,0 +1,32 @@
+import { Dialog } from './Dialog.tsx';
+import { SHORTCUTS } from './shortcuts.ts';
+
+const ON_VALUES = [
+  ['Enter, or a digit', 'type into the value that has the focus'],
+  ['↑ ↓', 'next and previous preferred value, or a small step'],
+  ['Page Up, Page Down', 'a decade, or ten steps'],
+  ['Esc', 'leave it as it was'],
+  ['Drag, Shift and drag', 'through the steps, or freely'],
+] as const;
+
+/** What the keyboard does. */
+export function KeysDialog({ onClose }: { readonly onClose: () => void }) {
+  return (
+    <Dialog title="Keys" onClose={onClose}>
+      <dl class="keys">
+        {SHORTCUTS.map(({ keys, words }) => (
+          <div key={keys}>
+            <dt>{keys}</dt>
+            <dd>{words}</dd>
+          </div>
+        ))}
+        {ON_VALUES.map(([keys, words]) => (
+          <div key={keys}>
+            <dt>{keys}</dt>
+            <dd>{words}</dd>
+          </div>
+        ))}
+      </dl>
+    </Dialog>
+  );
+}

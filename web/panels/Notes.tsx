@@ -1,0 +1,26 @@
+import { useBench } from './BenchContext.ts';
+import { Note } from './parts/Note.tsx';
+
+/** What the user must be told, in place under the sound row. */
+export function Notes() {
+  const bench = useBench();
+  const notes = bench.notes.value;
+  const failed = bench.sound.value === 'failed';
+  if (notes.length === 0) return null;
+  return (
+    <div class="notes">
+      {notes.map(({ id, kind, sentence, advice }, index) => (
+        <Note key={id} kind={kind} sentence={sentence} advice={advice}>
+          {failed && kind === 'fault' && index === notes.length - 1 && (
+            <button type="button" class="button small" onClick={() => void bench.start()}>
+              Start again
+            </button>
+          )}
+          <button type="button" class="button small" onClick={() => bench.dismiss(id)}>
+            Put away
+          </button>
+        </Note>
+      ))}
+    </div>
+  );
+}

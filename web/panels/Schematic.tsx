@@ -1,0 +1,66 @@
+import type { ComponentChildren } from 'preact';
+import { drawSchematic, fittedIn, type Form, type Place, type Slot } from '../draw/schematic.ts';
+import { useBench, useVariant } from './BenchContext.ts';
+import { Figure } from './parts/Figure.tsx';
+import { rem, useSheetSize } from './parts/useSheetSize.ts';
+import { leavesOhmic } from './readingWords.ts';
+import { SchematicSymbols } from './SchematicSymbols.tsx';
+import { schematicValues } from './SchematicValues.tsx';
+
+/** Fig. 1: the cell as it is fitted, with every value changed where it stands. */
+export function Schematic({ form }: { readonly form: Form }) {
+  const bench = useBench();
+  const variant = useVariant();
+  const { ref, size } = useSheetSize<HTMLDivElement>();
+  const fitted = fittedIn(variant);
+  const drawing = size && drawSchematic(fitted, size.width, form);
+  const read = bench.reading.value;
+  const leaving = read !== null && 'regions' in read ? leavesOhmic(read.regions) : null;
+  const limitWords = leaving && `${leaving.words} ${(100 * leaving.share).toFixed(0)} % of the tone`;
+  const values = schematicValues(fitted, form, limitWords);
+  return (
+    <Figure
+      number={1}
+      className={`schematic ${form}`}
+      caption="The cell, peak voltages in colour. Change a value where it stands: type 6k8, step with arrow keys, or drag."
+    >
+      <div class="drawing" ref={ref} style={drawing ? { height: rem(drawing.height) } : {}}>
+        {drawing && (
+          <>
+            <svg viewBox={`0 0 ${drawing.width} ${drawing.height}`} role="img" aria-label={spoken(fitted.feedback)}>
+              <SchematicSymbols drawing={drawing} fitted={fitted} pastLimit={leaving !== null} />
+            </svg>
+            {(Object.keys(values) as Slot[]).map((slot) => {
+              const place = drawing.places[slot];
+              return (
+                place !== undefined && (
+                  <At key={slot} place={place}>
+                    {values[slot]}
+                  </At>
+                )
+              );
+            })}
+          </>
+        )}
+      </div>
+      {form === 'upright' && limitWords && <p class="fault limit-words">J1 {limitWords}.</p>}
+    </Figure>
+  );
+}
+
+function At({ place, children }: { readonly place: Place; readonly children: ComponentChildren }) {
+  return (
+    <div class={`at ${place.align}`} style={{ left: rem(place.x), top: rem(place.y) }}>
+      {children}
+    </div>
+  );
+}
+
+function spoken(feedback: 'none' | 'resistor' | 'buffered'): string {
+  const ways = {
+    none: 'no feedback',
+    resistor: 'a resistor from drain to gate',
+    buffered: 'a buffered fraction of the drain added at the gate',
+  };
+  return `Schematic: the signal goes through R1 to the drain of a junction FET whose source is at 0 volts, with ${ways[feedback]}; the control reaches the gate through R3, and an amplifier follows the drain`;
+}

@@ -1,0 +1,71 @@
+import { useSignal } from '@preact/signals';
+import { useEffect, useMemo } from 'preact/hooks';
+import type { Bench } from '../state/bench.ts';
+import { BenchContext } from './BenchContext.ts';
+import { Blocks } from './Blocks.tsx';
+import { Conditions } from './Conditions.tsx';
+import { Foot } from './Foot.tsx';
+import { Heading } from './Heading.tsx';
+import { Heard } from './Heard.tsx';
+import { KeysDialog } from './KeysDialog.tsx';
+import { Notes } from './Notes.tsx';
+import { OpenDialog } from './OpenDialog.tsx';
+import { sampled } from './parts/sampled.ts';
+import { Ruler } from './Ruler.tsx';
+import { SoundButtons } from './SoundButtons.tsx';
+import { runShortcut } from './shortcuts.ts';
+import { FIRST_THD_LIMIT, ThdLimitContext } from './thdLimit.ts';
+import { useFileDrop } from './useFileDrop.ts';
+import { useLayout } from './useLayout.ts';
+
+const READ_EVERY_MS = 100;
+const CALM_EVERY_MS = 250;
+
+/** The page «Listen»: one design, heard and measured. */
+export function Sheet({ bench }: { readonly bench: Bench }) {
+  const layout = useLayout();
+  const limit = useSignal(FIRST_THD_LIMIT);
+  const dialog = useSignal<'open' | 'keys' | null>(null);
+  const dropping = useFileDrop(bench);
+  const slow = useMemo(
+    () => sampled(bench.live, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : READ_EVERY_MS),
+    [bench],
+  );
+  useEffect(() => slow.end, [slow]);
+  useEffect(() => {
+    const onKeyDown = (event: KeyboardEvent) => {
+      if (runShortcut(event, bench, () => (dialog.value = 'open'))) event.preventDefault();
+    };
+    window.addEventListener('keydown', onKeyDown);
+    return () => window.removeEventListener('keydown', onKeyDown);
+  }, [bench, dialog]);
+
+  const close = () => {
+    dialog.value = null;
+  };
+  return (
+    <BenchContext.Provider value={{ bench, slowLive: slow.copy }}>
+      <ThdLimitContext.Provider value={limit}>
+        <div class={`sheet ${layout} ${bench.sound.value === 'playing' ? 'is-live' : ''} ${dropping ? 'dropping' : ''}`}>
+          <Heading onOpen={() => (dialog.value = 'open')} onKeys={() => (dialog.value = 'keys')} />
+          <main>
+            <section class="sound" aria-label="Sound">
+              <SoundButtons />
+              <div class="sentences">
+                <Conditions />
+                <Heard />
+              </div>
+              <Ruler />
+            </section>
+            <Notes />
+            <Blocks layout={layout} />
+          </main>
+          <Foot />
+          {dialog.value === 'open' && <OpenDialog onClose={close} />}
+          {dialog.value === 'keys' && <KeysDialog onClose={close} />}
+          {dropping && <p class="drop-word">Drop a recording to hear it through the cell, or a design to open it.</p>}
+        </div>
+      </ThdLimitContext.Provider>
+    </BenchContext.Provider>
+  );
+}

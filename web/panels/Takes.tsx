@@ -1,0 +1,128 @@
+import { useSignal } from '@preact/signals';
+import { clockText } from '../draw/words.ts';
+import type { TakeFormat } from '../state/bench.ts';
+import { useBench } from './BenchContext.ts';
+import { Choice } from './parts/Choice.tsx';
+import { DataTable } from './parts/DataTable.tsx';
+import { WordActions } from './parts/WordActions.tsx';
+import { TakeRow } from './TakeRow.tsx';
+
+const COLUMNS = [
+  { key: 'no', head: 'No.' },
+  { key: 'what', head: 'Name' },
+  { key: 'variant', head: 'Variant' },
+  { key: 'number k', head: <i>k</i> },
+  { key: 'number length', head: 'Length' },
+  { key: 'actions', head: <span class="offscreen">What can be done</span> },
+];
+
+const FORMATS: readonly { value: TakeFormat; words: string }[] = [
+  { value: 'pcm16', words: '16-bit WAV' },
+  { value: 'pcm24', words: '24-bit WAV' },
+  { value: 'float32', words: '32-bit float WAV' },
+];
+
+/** Table 2: what was recorded or rendered, newest first. */
+export function Takes() {
+  const bench = useBench();
+  const format = useSignal<TakeFormat>('pcm24');
+  const takes = [...bench.takes.value].reverse();
+  const busy = bench.taking.value !== null || bench.rendering.value !== null;
+  return (
+    <section class="takes" aria-label="Takes">
+      <DataTable
+        number={2}
+        className="take-table"
+        caption={takes.length === 0 && !busy ? 'Takes: none yet.' : 'Takes, kept until this page closes.'}
+        columns={COLUMNS}
+      >
+        <tbody>
+          <UnderWay />
+          {takes.map((take) => (
+            <TakeRow key={take.id} take={take} format={format.value} />
+          ))}
+          {takes.length === 0 && !busy && (
+            <tr>
+              <td colSpan={6} class="aside">
+                A take keeps what is heard; a render runs the whole source through the cell.
+              </td>
+            </tr>
+          )}
+        </tbody>
+      </DataTable>
+      <p class="buttons">
+        <button
+          type="button"
+          class="button small"
+          disabled={bench.taking.value !== null || bench.sound.value !== 'playing'}
+          onClick={bench.startTake}
+        >
+          Take what is heard
+        </button>
+        <button type="button" class="button small" disabled={bench.rendering.value !== null} onClick={() => void bench.renderClip()}>
+          Render the {bench.source.value.kind === 'phrase' ? 'phrase' : 'file'}
+        </button>
+        <span class="aside">
+          as <Choice label="Format of saved takes" value={format.value} options={FORMATS} onChoose={(next) => (format.value = next)} />
+        </span>
+      </p>
+    </section>
+  );
+}
+
+/** A take being recorded, a source being rendered. */
+function UnderWay() {
+  const bench = useBench();
+  const taking = bench.taking.value;
+  const rendering = bench.rendering.value;
+  return (
+    <>
+      {taking && (
+        <tr>
+          <td class="no" />
+          <td class="what" colSpan={3}>
+            <span class="live">being taken…</span>
+          </td>
+          <td class="number length">
+            <span class="live">{clockText(taking.seconds, true)}</span>
+          </td>
+          <td class="actions">
+            <WordActions actions={[{ words: 'End the take', run: bench.endTake }]} />
+          </td>
+        </tr>
+      )}
+      {rendering && (
+        <tr>
+          <td class="no" />
+          <td class="what" colSpan={4}>
+            <span class="live">rendering</span> <Progress fraction={rendering.fraction} />
+          </td>
+          <td class="actions">
+            <WordActions actions={[{ words: 'End it', run: bench.endRender }]} />
+          </td>
+        </tr>
+      )}
+    </>
+  );
+}
+
+function Progress({ fraction }: { readonly fraction: number }) {
+  const percent = Math.round(100 * fraction);
+  return (
+    <span class="progress">
+      <svg
+        viewBox="0 0 120 4"
+        preserveAspectRatio="none"
+        role="progressbar"
+        aria-label="Rendering"
+        aria-valuemin={0}
+        aria-valuemax={100}
+        aria-valuenow={percent}
+      >
+        <path class="track" d="M0 2H120" />
+        <path class="done" d={`M0 2H${120 * fraction}`} />
+      </svg>{' '}
+      {percent} %
+    </span>
+  );
+}

@@ -1,0 +1,33 @@
+import type { ComponentChildren } from 'preact';
+
+interface NoteProps {
+  readonly kind: 'fault' | 'note' | 'caution';
+  /** One sentence, in bold. */
+  readonly sentence: string;
+  /** One plain sentence more. */
+  readonly advice?: string | undefined;
+  readonly children?: ComponentChildren;
+}
+
+/** A block of paper with what the user must be told, and buttons that name the act. */
+export function Note({ kind, sentence, advice, children }: NoteProps) {
+  return (
+    <section class={`note ${kind}`} role={kind === 'fault' ? 'alert' : 'status'}>
+      <p>
+        {kind === 'caution' && <Caution />}
+        <strong>{sentence}</strong> {advice}
+      </p>
+      {children !== undefined && <p class="buttons">{children}</p>}
+    </section>
+  );
+}
+
+/** The outline triangle that stands before a caution. */
+export function Caution() {
+  return (
+    <svg class="caution-mark" viewBox="0 0 16 14" aria-hidden="true">
+      <path d="M8 1 15 13H1Z" fill="none" stroke="currentColor" stroke-width="1.2" stroke-linejoin="miter" />
+      <path d="M8 5v4M8 10.4v1.2" stroke="currentColor" stroke-width="1.4" />
+    </svg>
+  );
+}

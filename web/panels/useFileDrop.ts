@@ -1,0 +1,30 @@
+import { useSignal } from '@preact/signals';
+import { useEffect } from 'preact/hooks';
+import type { Bench } from '../state/bench.ts';
+
+/** Files dropped anywhere on the page: a design is opened, anything else is heard through the cell. True while one hovers. */
+export function useFileDrop(bench: Bench): boolean {
+  const hovering = useSignal(false);
+  useEffect(() => {
+    const ends = new AbortController();
+    const { signal } = ends;
+    const over = (event: DragEvent) => {
+      event.preventDefault();
+      hovering.value = true;
+    };
+    const leave = (event: DragEvent) => {
+      if (event.relatedTarget === null) hovering.value = false;
+    };
+    const drop = (event: DragEvent) => {
+      event.preventDefault();
+      hovering.value = false;
+      const file = event.dataTransfer?.files[0];
+      if (file) void (/\.json$/i.test(file.name) ? bench.openDesign(file) : bench.openAudio(file));
+    };
+    window.addEventListener('dragover', over, { signal });
+    window.addEventListener('dragleave', leave, { signal });
+    window.addEventListener('drop', drop, { signal });
+    return () => ends.abort();
+  }, [bench, hovering]);
+  return hovering.value;
+}
