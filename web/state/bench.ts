@@ -44,7 +44,7 @@ export interface Bench {
   setMuted(on: boolean): void;
   readonly hearing: ReadonlySignal<Hearing>;
   hear(which: Hearing): void;
-  readonly phrases: ReadonlySignal<readonly { readonly name: string; readonly title: string }[]>;
+  readonly phrases: ReadonlySignal<readonly { readonly name: string; readonly title: string; readonly listenFor?: string }[]>;
   readonly source: ReadonlySignal<SourceInfo>;
   choosePhrase(name: string): Promise<void>;
   openAudio(file: File): Promise<void>;
@@ -112,6 +112,7 @@ export interface ExampleEntry {
   readonly name: string;
   readonly title: string;
   readonly scenario: string;
+  readonly listenFor?: string;
 }
 
 export interface SourceInfo {

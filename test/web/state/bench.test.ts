@@ -1,0 +1,377 @@
+import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest';
+import { readWav, writeWav } from '../../../model/chain/wav.ts';
+import type { Bench } from '../../../web/state/bench.ts';
+import { assembleBench } from '../../../web/state/createBench.ts';
+import type { Chunk, Report } from '../../../worklet/protocol.ts';
+import { createNoise } from '../../support/noise.ts';
+import { createFakeParts, type FakeParts, type FakeSound, runRender } from './fakeParts.ts';
+
+let parts: FakeParts;
+let bench: Bench;
+
+beforeEach(() => {
+  vi.useFakeTimers();
+  parts = createFakeParts();
+  bench = assembleBench(parts);
+});
+afterEach(() => {
+  vi.useRealTimers();
+});
+
+async function startSound(): Promise<FakeSound> {
+  await bench.start();
+  return parts.sounds[parts.sounds.length - 1];
+}
+
+const sentences = () => bench.notes.value.map(({ sentence }) => sentence);
+
+function fileOf(samples: Float32Array[], rate: number, name: string): File {
+  return new File([writeWav(samples, rate, 'float32').bytes], name);
+}
+
+function chunk(frame: number, samples: Float32Array<ArrayBuffer>, last: boolean): Chunk {
+  return { type: 'chunk', slot: 0, frame, frames: samples.length, channels: [samples], last };
+}
+
+describe('starting and stopping', () => {
+  test('starts muted at the phrase’s own rate, loops it, then unmutes', async () => {
+    expect(bench.sound.value).toBe('idle');
+    const started = bench.start();
+    expect(bench.sound.value).toBe('starting');
+    await started;
+    const [sound] = parts.sounds;
+    expect(bench.sound.value).toBe('playing');
+    expect(sound.cells[0]).toMatchObject({ channels: 1, muted: true, heard: 'cell' });
+    expect(sound.cells[0].numbers.sampleRateHz).toBe(48000);
+    expect(sound.loops.map(({ title }) => title)).toEqual([bench.source.value.title]);
+    expect(bench.source.value).toMatchObject({ kind: 'phrase', seconds: 8 });
+    expect(sound.last('mute')).toEqual({ type: 'mute', on: false });
+    expect(bench.latencySec.value).toBe(0.001);
+  });
+
+  test('stays muted when it was muted before', async () => {
+    bench.setMuted(true);
+    const sound = await startSound();
+    expect(sound.told.filter(({ type }) => type === 'mute')).not.toContainEqual({ type: 'mute', on: false });
+    bench.setMuted(false);
+    expect(sound.last('mute')).toEqual({ type: 'mute', on: false });
+  });
+
+  test('stopping mutes first and rests the context once the ramp is over; starting again goes on with the same sound', async () => {
+    const sound = await startSound();
+    bench.stop();
+    expect(bench.sound.value).toBe('stopped');
+    expect(sound.last('mute')).toEqual({ type: 'mute', on: true });
+    expect(sound.state).toBe('running');
+    vi.advanceTimersByTime(100);
+    expect(sound.state).toBe('suspended');
+    await bench.start();
+    expect(sound.state).toBe('running');
+    expect(parts.sounds).toHaveLength(1);
+    expect(sound.last('mute')).toEqual({ type: 'mute', on: false });
+  });
+
+  test('stop pressed while sound is being opened wins', async () => {
+    const started = bench.start();
+    bench.stop();
+    await started;
+    expect(bench.sound.value).toBe('stopped');
+    expect(parts.sounds[0].state).toBe('suspended');
+    expect(parts.sounds[0].told).not.toContainEqual({ type: 'mute', on: false });
+  });
+
+  test('a browser that lacks something is told so in a sentence, and so is one that refuses', async () => {
+    parts.missing = 'This browser has no audio worklet, so Fettle cannot play here.';
+    await bench.start();
+    expect(bench.sound.value).toBe('failed');
+    parts.missing = null;
+    parts.refusal = new Error('The browser would not let sound start. Press Start once more.');
+    await bench.start();
+    expect(sentences()).toEqual(['This browser has no audio worklet, so Fettle cannot play here.', parts.refusal.message]);
+    parts.refusal = null;
+    await bench.start();
+    expect(bench.sound.value).toBe('playing');
+    bench.dismiss(bench.notes.value[0].id);
+    expect(bench.notes.value).toHaveLength(1);
+  });
+
+  test('a pause by the system is told, and Start goes on', async () => {
+    const sound = await startSound();
+    sound.events.paused(true);
+    expect(bench.sound.value).toBe('stopped');
+    expect(sentences()).toEqual(['The system has paused the sound.']);
+    await bench.start();
+    expect(bench.sound.value).toBe('playing');
+  });
+});
+
+describe('changing values while sound plays', () => {
+  test('new numbers go out once for all changes in a frame', async () => {
+    const sound = await startSound();
+    vi.advanceTimersByTime(50);
+    const before = sound.told.filter(({ type }) => type === 'move').length;
+    for (const ohm of [5000, 6000, 6800]) expect(bench.setValue('cell.seriesOhm', ohm)).toBeNull();
+    expect(bench.setDesignValue('tempC', 40)).toBeNull();
+    vi.advanceTimersByTime(50);
+    const moves = sound.told.filter((message) => message.type === 'move');
+    expect(moves).toHaveLength(before + 1);
+    const cells = JSON.stringify(moves.at(-1)?.numbers.cells);
+    expect(cells).not.toBe(JSON.stringify(sound.cells[0].numbers.cells));
+  });
+
+  test('level and ceiling are checked and sent as ratios', async () => {
+    const sound = await startSound();
+    expect(bench.setListenDb(-20)).toBeNull();
+    expect(sound.last('gain')?.gain).toBeCloseTo(0.1, 12);
+    expect(bench.setCeilingDbfs(-40)).toBeNull();
+    expect(sound.last('ceiling')?.peak).toBeCloseTo(0.01, 12);
+    expect(bench.setListenDb(3)).toBe('The listening level is 3 dB; expected -60 to 0 dB.');
+    expect(bench.setCeilingDbfs(-41)).toBe('The ceiling is -41 dBFS; expected -40 to 0 dBFS.');
+    expect(bench.listenDb.value).toBe(-20);
+    expect(bench.ceilingDbfs.value).toBe(-40);
+  });
+
+  test('bypass and another variant are heard at once', async () => {
+    const sound = await startSound();
+    bench.hear('bypass');
+    expect(sound.last('hear')).toEqual({ type: 'hear', heard: 'bypass' });
+    vi.advanceTimersByTime(50);
+    const before = sound.last('move');
+    bench.hearVariant(2);
+    vi.advanceTimersByTime(50);
+    expect(sound.last('move')).not.toBe(before);
+  });
+});
+
+describe('sources', () => {
+  test('a file at another rate opens sound anew at that rate; one with other channels only makes the processor anew', async () => {
+    const first = await startSound();
+    await bench.openAudio(fileOf([createNoise(1, 4410, 0.5), createNoise(2, 4410, 0.5)], 44100, 'loop.wav'));
+    expect(first.state).toBe('closed');
+    const second = parts.sounds[1];
+    expect(second.sampleRateHz).toBe(44100);
+    expect(second.cells[0].channels).toBe(2);
+    expect(second.last('mute')).toEqual({ type: 'mute', on: false });
+    expect(bench.source.value).toEqual({ title: 'loop.wav', seconds: 0.1, kind: 'file' });
+    await bench.openAudio(fileOf([createNoise(1, 4410, 0.5)], 44100, 'mono.wav'));
+    expect(parts.sounds).toHaveLength(2);
+    expect(second.cells[1].channels).toBe(1);
+    expect(second.loops.at(-1)?.channels).toEqual([createNoise(1, 4410, 0.5)]);
+  });
+
+  test('a file that is no sound is named, and what plays goes on', async () => {
+    const sound = await startSound();
+    await bench.openAudio(new File([new Uint8Array(0)], 'nothing.wav'));
+    await bench.choosePhrase('kazoo');
+    expect(sentences()[0]).toBe('“nothing.wav” is empty; expected a sound file.');
+    expect(sentences()[1]).toContain('There is no phrase “kazoo”; expected one of guitar');
+    expect(sound.loops).toHaveLength(1);
+    expect(bench.sound.value).toBe('playing');
+  });
+
+  test('a machine that cannot run at the source’s rate says that it resamples', async () => {
+    parts.onlyRateHz = 44100;
+    await bench.start();
+    expect(sentences()[0]).toContain('This machine plays at 44100 Hz; “Guitar chords” (48000 Hz) is resampled to be heard');
+  });
+});
+
+describe('faults of the processor', () => {
+  test('a processor that dies is made anew and unmuted, three times in ten seconds and no more', async () => {
+    const sound = await startSound();
+    for (let i = 1; i <= 3; i++) {
+      sound.events.broken();
+      await vi.advanceTimersByTimeAsync(100);
+      expect(sound.cells).toHaveLength(1 + i);
+      expect(sound.last('mute')).toEqual({ type: 'mute', on: false });
+    }
+    expect(sentences()).toEqual(['The audio processor failed and was started again.']);
+    sound.events.broken();
+    await vi.advanceTimersByTimeAsync(100);
+    expect(bench.sound.value).toBe('failed');
+    expect(sound.state).toBe('closed');
+    expect(sentences()[1]).toContain('failed four times in ten seconds');
+    await bench.start();
+    expect(bench.sound.value).toBe('playing');
+  });
+
+  test('failures far apart are mended for ever', async () => {
+    const sound = await startSound();
+    for (let i = 0; i < 8; i++) {
+      sound.events.broken();
+      await vi.advanceTimersByTimeAsync(4000);
+    }
+    expect(bench.sound.value).toBe('playing');
+    expect(sound.cells).toHaveLength(9);
+  });
+
+  test('a message that was refused is shown', async () => {
+    const sound = await startSound();
+    sound.events.message({ type: 'fault', sentence: 'The ceiling is 3; expected 0.01 to 1' });
+    expect(sentences()).toEqual(['The ceiling is 3; expected 0.01 to 1']);
+  });
+});
+
+describe('readings', () => {
+  test('every change asks the worker again, and only answers to the latest question count', async () => {
+    const { readingWorker } = parts;
+    const [first] = readingWorker.posted;
+    expect(first).toMatchObject({ type: 'question', question: { toneHz: 1000, variantIndex: 0 } });
+    bench.setValue('cell.seriesOhm', 6800);
+    const latest = readingWorker.posted.findLast((message) => message.type === 'question');
+    expect(latest?.question.design).toBe(bench.design.value);
+    readingWorker.answer({ type: 'worst', id: first.id, worst: { thdFundamental: 1, gainDb: 0, controlV: 0 } });
+    expect(bench.worst.value).toBeNull();
+    const worst = { thdFundamental: 0.02, gainDb: -6, controlV: -1 };
+    readingWorker.answer({ type: 'worst', id: latest?.id ?? 0, worst });
+    expect(bench.worst.value).toEqual(worst);
+    expect(bench.setToneV(-1)).toBe('The shadow tone is -1 V peak; expected 0.0001 to 100 V peak.');
+    expect(bench.setToneHz(440)).toBeNull();
+    expect(readingWorker.posted.findLast((message) => message.type === 'question')?.question.toneHz).toBe(440);
+  });
+
+  test('while sound plays the reading follows the control voltage of the moment, ten times a second, one question at a time', async () => {
+    const { readingWorker } = parts;
+    const sound = await startSound();
+    const report: Report = {
+      ...{ type: 'report', slot: 0, frame: 0, input: new Float32Array(100), output: new Float32Array(100) },
+      ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, inputPeakV: 0, drainPeakV: 0, gateSourceV: 0 },
+      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: -1.75 },
+    };
+    sound.events.message(report);
+    expect(sound.last('return report')).toMatchObject({ slot: 0 });
+    const moments = () => readingWorker.posted.filter((message) => message.type === 'moment');
+    const asked = moments().length;
+    vi.advanceTimersByTime(1000);
+    expect(moments()).toHaveLength(asked);
+    for (let i = 0; i < 10; i++) {
+      readingWorker.answer({ type: 'reading', id: moments().at(-1)?.id ?? 0, reading: { fault: 'none yet' } });
+      vi.advanceTimersByTime(100);
+    }
+    expect(moments().length - asked).toBeGreaterThanOrEqual(9);
+    expect(moments().length - asked).toBeLessThanOrEqual(12);
+    expect(moments().at(-1)?.controlV).toBe(-1.75);
+    expect(bench.reading.value).toEqual({ fault: 'none yet' });
+  });
+});
+
+describe('takes', () => {
+  test('what the processor sends becomes a take, sample by sample, and a WAV', async () => {
+    const sound = await startSound();
+    const line = createNoise(1, 20000, 0.9);
+    bench.startTake();
+    expect(sound.last('record')).toEqual({ type: 'record', on: true });
+    sound.events.message(chunk(0, line.slice(0, 8192), false));
+    sound.events.message(chunk(8192, line.slice(8192, 16384), false));
+    expect(bench.taking.value?.seconds).toBeCloseTo(16384 / 48000, 9);
+    bench.endTake();
+    expect(sound.last('record')).toEqual({ type: 'record', on: false });
+    sound.events.message(chunk(16384, line.slice(16384), true));
+    expect(bench.taking.value).toBeNull();
+    expect(bench.takes.value).toMatchObject([{ name: 'Take 1', variant: 'A', how: 'heard', sampleRateHz: 48000, seconds: 20000 / 48000 }]);
+    bench.renameTake(1, 'with / slash');
+    bench.saveTake(1, 'float32');
+    const [saved] = parts.downloads;
+    expect(saved.name).toBe('with slash.wav');
+    expect(readWav(saved.bytes)).toMatchObject({ sampleRateHz: 48000, channels: [line], float: true });
+  });
+
+  test('samples past full scale are cut in 16 bits, and that is said', async () => {
+    const sound = await startSound();
+    bench.startTake();
+    sound.events.message(chunk(0, Float32Array.from([0.5, 1.5, -2]), true));
+    bench.saveTake(1, 'pcm16');
+    expect(sentences()).toEqual(['2 samples of “Take 1” lie past full scale and were cut.']);
+  });
+
+  test('a take that is cut off by another source is kept up to there', async () => {
+    const sound = await startSound();
+    bench.startTake();
+    sound.events.message(chunk(0, createNoise(1, 8192, 0.5), false));
+    await bench.openAudio(fileOf([createNoise(1, 4410, 0.5)], 44100, 'other.wav'));
+    expect(bench.taking.value).toBeNull();
+    expect(bench.takes.value).toMatchObject([{ seconds: 8192 / 48000, sampleRateHz: 48000 }]);
+  });
+
+  test('rendering takes the whole source through the heard variant in a worker, with progress', async () => {
+    await startSound();
+    await bench.openAudio(fileOf([createNoise(3, 9600, 0.5)], 48000, 'short.wav'));
+    const done = bench.renderClip();
+    expect(bench.rendering.value).toEqual({ fraction: 0 });
+    runRender(parts.renderWorkers[0]);
+    await done;
+    expect(parts.renderWorkers[0].ended).toBe(true);
+    expect(bench.rendering.value).toBeNull();
+    expect(bench.takes.value).toMatchObject([{ how: 'rendered', seconds: 0.2 }]);
+  });
+
+  test('rendering can be ended, and a fault in it is told', async () => {
+    await startSound();
+    const ended = bench.renderClip();
+    bench.endRender();
+    await ended;
+    const faulty = bench.renderClip();
+    parts.renderWorkers[1].answer({ type: 'fault', sentence: 'cell.seriesOhm is 0' });
+    await faulty;
+    expect(sentences()).toEqual(['cell.seriesOhm is 0']);
+    expect(bench.takes.value).toEqual([]);
+    expect(parts.renderWorkers.every((worker) => worker.ended)).toBe(true);
+  });
+
+  test('a take is played in place of the chain, and what was heard before comes back', async () => {
+    const sound = await startSound();
+    bench.startTake();
+    sound.events.message(chunk(0, createNoise(1, 1000, 0.5), true));
+    bench.hear('bypass');
+    bench.playTake(1);
+    expect(bench.playingTake.value).toBe(1);
+    expect(sound.last('hear')).toEqual({ type: 'hear', heard: 'aside' });
+    sound.events.takeEnded();
+    expect(bench.playingTake.value).toBeNull();
+    expect(sound.last('hear')).toEqual({ type: 'hear', heard: 'bypass' });
+    bench.playTake(1);
+    bench.deleteTake(1);
+    expect(sound.played.at(-1)).toBeNull();
+    expect(bench.playingTake.value).toBeNull();
+    expect(bench.takes.value[0].deleted).toBe(true);
+    bench.restoreTake(1);
+    expect(bench.takes.value[0].deleted).toBe(false);
+  });
+
+  test('without sound there is nothing to take or to play it with', () => {
+    bench.startTake();
+    bench.playTake(1);
+    expect(bench.taking.value).toBeNull();
+    expect(sentences()).toEqual([
+      'There is no sound to take. Press Start first.',
+      'A take is heard through the sound that plays. Press Start first.',
+    ]);
+  });
+});
+
+describe('designs', () => {
+  test('the page opens with an example; another is opened by name, saved, and read again as the same', async () => {
+    await vi.advanceTimersByTimeAsync(0);
+    expect(bench.examples.value.length).toBeGreaterThan(1);
+    const first = bench.design.value;
+    await bench.openExample('stage-box-pad');
+    const opened = bench.design.value;
+    expect(opened.title).not.toBe(first.title);
+    bench.saveDesign();
+    const [saved] = parts.downloads;
+    expect(saved.mediaType).toBe('application/json');
+    await bench.openDesign(new File([saved.bytes as Uint8Array<ArrayBuffer>], saved.name));
+    expect(bench.design.value).toEqual(opened);
+    while (bench.canUndo.value) bench.undo();
+    expect(bench.design.value).toEqual(first);
+  });
+
+  test('a faulty file is refused whole, with the file’s name, and the first five faults', async () => {
+    const before = bench.design.value;
+    await bench.openDesign(new File(['{ "fettle": 1, "variants": [ { "cell": { "seriesOhm": -5 } } ] }'], 'bad.json'));
+    expect(sentences().some((sentence) => /^“bad.json”: .*seriesOhm is -5; expected/.test(sentence))).toBe(true);
+    await bench.openDesign(new File(['{'], 'worse.json'));
+    expect(sentences().at(-1)).toMatch(/^“worse.json”: /);
+    expect(bench.design.value).toBe(before);
+  });
+});

@@ -1,0 +1,101 @@
+/** The real bench: document, sound, readings and takes put together. */
+import { computed } from '@preact/signals';
+import firstDesign from '../../assets/designs/harbour-tremolo.json?raw';
+import { compileChain } from '../../model/chain/compile.ts';
+import { readDesign } from '../../model/design/read.ts';
+import type { Design } from '../../model/design/types.ts';
+import type { Bench } from './bench.ts';
+import { createDocument } from './document.ts';
+import { fileName } from './fileName.ts';
+import { createLevels } from './levels.ts';
+import { createLibrary } from './library.ts';
+import type { Listening } from './listening.ts';
+import { createListening } from './listening.ts';
+import { createNotes } from './notes.ts';
+import type { Parts } from './parts.ts';
+import { browserParts } from './parts.ts';
+import { createReadings } from './readings.ts';
+import type { Takes } from './takes.ts';
+import { createTakes } from './takes.ts';
+
+/** Before any sound is open, a design is tried out at the lowest usual rate. */
+const TRY_OUT_HZ = 44100;
+/** Of a faulty file; more would bury the page. */
+const MOST_SENTENCES = 5;
+
+export function createBench(): Bench {
+  return assembleBench(browserParts());
+}
+
+export function assembleBench(parts: Parts): Bench {
+  const notes = createNotes();
+  const levels = createLevels();
+  const library = createLibrary(parts);
+  const document = createDocument(openingDesign(), (design, variantIndex) => {
+    compileChain(design, variantIndex, listening.rateHz.peek() ?? TRY_OUT_HZ, 1, 'lowLatency');
+  });
+  const loadFirstSource = async () => {
+    await library.load();
+    const [first] = library.phrases.peek();
+    if (first !== undefined && listening.source.peek().title === '') await choosePhrase(first.name);
+  };
+  const listening: Listening = createListening({ parts, document, levels, notes, takes: () => takes, loadFirstSource });
+  const takes: Takes = createTakes(parts, document, listening.forTakes, notes);
+  const readings = createReadings(parts.openReadingWorker(), {
+    design: document.design,
+    heardVariant: document.heardVariant,
+    live: levels.live,
+    playing: computed(() => listening.sound.value === 'playing'),
+  });
+
+  /** Runs what may fail; its sentence goes to the notes. */
+  const noting = async (work: () => Promise<unknown>) => {
+    try {
+      await work();
+    } catch (error) {
+      notes.fault(error);
+    }
+  };
+
+  const choosePhrase = (name: string) => noting(async () => listening.setSource(await library.loadPhrase(name), 'phrase'));
+
+  const openText = (text: string, from: string) => {
+    const result = readDesign(text);
+    const sentences = 'faults' in result ? result.faults.map((fault) => fault.sentence) : [document.replace(result.design)];
+    for (const sentence of sentences.slice(0, MOST_SENTENCES)) if (sentence !== null) notes.fault(`“${from}”: ${sentence}`);
+    if (sentences.length > MOST_SENTENCES) notes.fault(`“${from}” has ${sentences.length - MOST_SENTENCES} more faults.`);
+  };
+
+  noting(loadFirstSource).then(parts.prepareSound).catch(notes.fault);
+
+  return {
+    ...document,
+    ...listening,
+    ...levels,
+    ...readings,
+    ...takes,
+    phrases: library.phrases,
+    examples: library.examples,
+    notes: notes.notes,
+    dismiss: notes.dismiss,
+    choosePhrase,
+    openAudio: (file) => noting(async () => listening.setSource(await parts.decodeAudio(await file.arrayBuffer(), file.name), 'file')),
+    openDesign: (file) => noting(async () => openText(await file.text(), file.name)),
+    openExample: (name) => noting(async () => openText(await library.loadExample(name), name)),
+    saveDesign() {
+      const design = document.design.peek();
+      parts.download(
+        `${fileName(design.title)}.json`,
+        new TextEncoder().encode(`${JSON.stringify(design, null, 2)}\n`),
+        'application/json',
+      );
+    },
+  };
+}
+
+/** What the page opens with: an example, so that there is something to hear at the first Start. */
+function openingDesign(): Design {
+  const result = readDesign(firstDesign);
+  if ('faults' in result) throw new Error(`The design that the page opens with is faulty: ${result.faults[0].sentence}`);
+  return result.design;
+}

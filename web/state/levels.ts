@@ -1,0 +1,87 @@
+/** What the processor reports, as signals and as the latest window of samples. */
+import type { ReadonlySignal } from '@preact/signals';
+import { signal } from '@preact/signals';
+import type { Report } from '../../worklet/protocol.ts';
+import type { LiveLevels } from './bench.ts';
+
+export const MOST_SAMPLES = 32768;
+const RECENT_MS = 1500;
+
+export interface Levels {
+  readonly live: ReadonlySignal<LiveLevels | null>;
+  /** Takes a report in; its arrays are copied, so they may go back at once. */
+  note(report: Report, underruns: number): void;
+  outputSamples(into: Float32Array): void;
+  inputSamples(into: Float32Array): void;
+  /** Forgets the samples: silence or another rate lies between. */
+  clear(): void;
+}
+
+export function createLevels(now: () => number = () => performance.now()): Levels {
+  const live = signal<LiveLevels | null>(null);
+  const input = createRing();
+  const output = createRing();
+  let nextFrame = 0;
+  let recent: { atMs: number; peak: number }[] = [];
+  return {
+    live,
+    note(report, underruns) {
+      if (report.frame !== nextFrame) {
+        input.clear();
+        output.clear();
+      }
+      nextFrame = report.frame + report.output.length;
+      input.write(report.input);
+      output.write(report.output);
+      const atMs = now();
+      recent = [...recent.filter((each) => atMs - each.atMs < RECENT_MS), { atMs, peak: report.outputPeak }];
+      live.value = {
+        controlV: report.controlV,
+        gateSourceV: report.gateSourceV,
+        inputPeakV: report.inputPeakV,
+        drainPeakV: report.drainPeakV,
+        outputPeakDbfs: toDb(report.outputPeak),
+        outputRmsDbfs: toDb(Math.sqrt(report.outputSquare)),
+        recentPeakDbfs: toDb(Math.max(...recent.map((each) => each.peak))),
+        heardPeakDbfs: toDb(report.heardPeak),
+        atCeiling: report.ceilingFrames > 0,
+        faults: report.faults,
+        underruns,
+      };
+    },
+    outputSamples: output.read,
+    inputSamples: input.read,
+    clear() {
+      input.clear();
+      output.clear();
+    },
+  };
+}
+
+export function toDb(ratio: number): number {
+  return 20 * Math.log10(ratio);
+}
+
+function createRing() {
+  const ring = new Float32Array(MOST_SAMPLES);
+  let at = 0;
+  return {
+    write(samples: Float32Array) {
+      const head = samples.subarray(0, ring.length - at);
+      ring.set(head, at);
+      ring.set(samples.subarray(head.length), 0);
+      at = (at + samples.length) % ring.length;
+    },
+    read(into: Float32Array) {
+      if (into.length > ring.length)
+        throw new RangeError(`A window of ${into.length} samples was asked for; expected at most ${ring.length}`);
+      const from = (at - into.length + ring.length) % ring.length;
+      const head = ring.subarray(from, Math.min(ring.length, from + into.length));
+      into.set(head, 0);
+      into.set(ring.subarray(0, into.length - head.length), head.length);
+    },
+    clear() {
+      ring.fill(0);
+    },
+  };
+}

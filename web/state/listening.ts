@@ -1,0 +1,255 @@
+/** Sound as the user knows it: start and stop, what is heard, how loud, from which source. */
+import { computed, effect, signal } from '@preact/signals';
+import { compileChain } from '../../model/chain/compile.ts';
+import type { Clip } from '../audio/clip.ts';
+import { clipSeconds } from '../audio/clip.ts';
+import type { Bench, Hearing, SoundState, SourceInfo } from './bench.ts';
+import type { DocumentState } from './document.ts';
+import type { Levels } from './levels.ts';
+import type { Notes } from './notes.ts';
+import { sentenceOf } from './notes.ts';
+import type { Parts } from './parts.ts';
+import { createReceiver } from './receiving.ts';
+import { createSoundLine } from './soundLine.ts';
+import type { Takes, TakeSource } from './takes.ts';
+import { setWithin } from './within.ts';
+
+/** Changes go out together, at most once in about a frame. */
+const MOVE_EVERY_MS = 16;
+/** The processor's mute takes 30 ms; then the context may stop. */
+const MUTE_MS = 60;
+const FIRST_LISTEN_DB = -12;
+const FIRST_CEILING_DBFS = -6;
+const RATE_BEFORE_START_HZ = 48000;
+
+type Shared =
+  | 'sound'
+  | 'start'
+  | 'stop'
+  | 'muted'
+  | 'setMuted'
+  | 'hearing'
+  | 'hear'
+  | 'source'
+  | 'rateHz'
+  | 'latencySec'
+  | 'spectrumRateHz';
+type Level = 'listenDb' | 'setListenDb' | 'ceilingDbfs' | 'setCeilingDbfs';
+
+export interface Listening extends Pick<Bench, Shared | Level> {
+  /** Puts another clip in place of the source; sound that plays goes on. Failures go to the notes. */
+  setSource(clip: Clip, kind: SourceInfo['kind']): Promise<void>;
+  /** What takes need of it. */
+  readonly forTakes: TakeSource;
+}
+
+export interface ListeningNeeds {
+  readonly parts: Parts;
+  readonly document: DocumentState;
+  readonly levels: Levels;
+  readonly notes: Notes;
+  /** Takes stand on listening and are made after it. */
+  takes(): Takes;
+  /** Loads a source when Start is pressed before one is there. */
+  loadFirstSource(): Promise<void>;
+}
+
+export function createListening({ parts, document, levels, notes, takes, loadFirstSource }: ListeningNeeds): Listening {
+  const state = signal<SoundState>('idle');
+  const muted = signal(false);
+  const hearing = signal<Hearing>('cell');
+  const listenDb = signal(FIRST_LISTEN_DB);
+  const ceilingDbfs = signal(FIRST_CEILING_DBFS);
+  const rateHz = signal<number | null>(null);
+  const latencySec = signal<number | null>(null);
+  const source = signal<SourceInfo>({ title: '', seconds: 0, kind: 'phrase' });
+  let clip: Clip | null = null;
+  let pausedBySystem = false;
+  let moveDue = false;
+
+  const compile = (hz: number, channels: number) =>
+    compileChain(document.design.peek(), document.heardVariant.peek(), hz, channels, 'lowLatency');
+
+  const line = createSoundLine(parts.openSound, {
+    cellFor(hz, channels) {
+      rateHz.value = hz;
+      const gain = toRatio(listenDb.peek());
+      return {
+        numbers: compile(hz, channels),
+        channels,
+        heard: hearing.peek(),
+        gain,
+        ceilingPeak: toRatio(ceilingDbfs.peek()),
+        muted: true,
+      };
+    },
+    message: (message) => receive(message),
+    renewed() {
+      takes().cutShort();
+      levels.clear();
+      if (state.peek() === 'playing') line.send({ type: 'mute', on: muted.peek() });
+    },
+    broken(givenUp) {
+      if (!givenUp) return notes.fault('The audio processor failed and was started again.');
+      state.value = 'failed';
+      takes().cutShort();
+      notes.fault(
+        'The audio processor failed four times in ten seconds; sound was stopped.',
+        'Take back the last change, then press Start.',
+      );
+    },
+    failed: (error) => fail(error),
+    paused(on) {
+      if (on && state.peek() === 'playing') {
+        pausedBySystem = true;
+        state.value = 'stopped';
+        notes.add('note', 'The system has paused the sound.', 'Press Start to go on.');
+      } else if (!on && pausedBySystem) {
+        pausedBySystem = false;
+        state.value = 'playing';
+      }
+    },
+    takeEnded: () => endTakeHeard(),
+  });
+
+  const fail = (error: unknown) => {
+    state.value = 'failed';
+    notes.fault(sentenceOf(error));
+  };
+
+  const endTakeHeard = () => {
+    line.send({ type: 'hear', heard: hearing.peek() });
+    takes().noteEnded();
+  };
+
+  const receive = createReceiver({
+    levels,
+    notes,
+    takes,
+    line: () => line,
+    noteLatency(samples) {
+      latencySec.value = samples / (rateHz.peek() ?? RATE_BEFORE_START_HZ);
+    },
+  });
+
+  /** Sends the design's numbers as they are when the frame is over. */
+  const move = () => {
+    moveDue = false;
+    const sound = line.sound();
+    if (sound === null || clip === null) return;
+    try {
+      line.send({ type: 'move', numbers: compile(sound.sampleRateHz, clip.channels.length) });
+    } catch (error) {
+      notes.fault(error);
+    }
+  };
+
+  effect(() => {
+    const changed = document.design.value !== null && document.heardVariant.value >= 0;
+    if (!changed || moveDue) return;
+    moveDue = true;
+    setTimeout(move, MOVE_EVERY_MS);
+  });
+
+  const adapt = async (next: Clip) => {
+    await line.adapt(next);
+    const playedHz = line.sound()?.sampleRateHz ?? next.sampleRateHz;
+    if (playedHz === next.sampleRateHz) return;
+    notes.add(
+      'note',
+      `This machine plays at ${playedHz} Hz; “${next.title}” (${next.sampleRateHz} Hz) is resampled to be heard, never to be rendered.`,
+    );
+  };
+
+  const start = async () => {
+    if (state.peek() === 'starting' || state.peek() === 'playing') return;
+    const missing = parts.missingFeature();
+    if (missing !== null) return fail(missing);
+    state.value = 'starting';
+    try {
+      if (clip === null) await loadFirstSource();
+      if (clip === null) throw new Error('There is nothing to play. Choose a phrase or open a file.');
+      const open = line.sound();
+      if (open !== null) await open.resume();
+      // Another source may be chosen while this one is being opened.
+      for (let adapted: Clip | null = open === null ? null : clip; adapted !== clip; ) {
+        adapted = clip;
+        await adapt(clip);
+      }
+      // Stop may have been pressed meanwhile.
+      if (state.peek() !== ('starting' as SoundState)) return suspend();
+      pausedBySystem = false;
+      state.value = 'playing';
+      line.send({ type: 'mute', on: muted.peek() });
+    } catch (error) {
+      fail(error);
+    }
+  };
+
+  const suspend = () => {
+    line.sound()?.suspend().catch(fail);
+  };
+
+  return {
+    sound: state,
+    muted,
+    hearing,
+    listenDb,
+    ceilingDbfs,
+    rateHz,
+    latencySec,
+    source,
+    spectrumRateHz: computed(() => rateHz.value ?? RATE_BEFORE_START_HZ),
+    start,
+    stop() {
+      if (state.peek() !== 'starting' && state.peek() !== 'playing') return;
+      state.value = 'stopped';
+      takes().endTake();
+      line.send({ type: 'mute', on: true });
+      setTimeout(() => {
+        if (state.peek() === 'stopped') suspend();
+      }, MUTE_MS);
+    },
+    setMuted(on) {
+      muted.value = on;
+      if (state.peek() === 'playing') line.send({ type: 'mute', on });
+    },
+    hear(which) {
+      hearing.value = which;
+      if (takes().playingTake.peek() === null) line.send({ type: 'hear', heard: which });
+    },
+    setListenDb(db) {
+      const refused = setWithin(listenDb, db, -60, 0, 'The listening level', 'dB');
+      if (refused === null) line.send({ type: 'gain', gain: toRatio(db) });
+      return refused;
+    },
+    setCeilingDbfs(db) {
+      const refused = setWithin(ceilingDbfs, db, -40, 0, 'The ceiling', 'dBFS');
+      if (refused === null) line.send({ type: 'ceiling', peak: toRatio(db) });
+      return refused;
+    },
+    async setSource(next, kind) {
+      clip = next;
+      source.value = { title: next.title, seconds: clipSeconds(next), kind };
+      if (line.sound() === null) return;
+      if (state.peek() === 'playing') await adapt(next).catch(fail);
+      else await line.close();
+    },
+    forTakes: {
+      record: (on) => (state.peek() === 'playing' || !on ? line.send({ type: 'record', on }) : false),
+      play(take) {
+        if (line.sound() === null || (take !== null && state.peek() !== 'playing')) return false;
+        line.sound()?.playTake(take);
+        if (take === null) endTakeHeard();
+        else line.send({ type: 'hear', heard: 'aside' });
+        return true;
+      },
+      rateHz: () => rateHz.peek() ?? RATE_BEFORE_START_HZ,
+      clip: () => clip,
+    },
+  };
+}
+
+function toRatio(db: number): number {
+  return 10 ** (db / 20);
+}

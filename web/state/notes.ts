@@ -1,0 +1,33 @@
+/** What the user must be told. The same sentence is never shown twice at once. */
+import type { ReadonlySignal } from '@preact/signals';
+import { signal } from '@preact/signals';
+import type { Note } from './bench.ts';
+
+export interface Notes {
+  readonly notes: ReadonlySignal<readonly Note[]>;
+  add(kind: Note['kind'], sentence: string, advice?: string): void;
+  /** Adds a fault from anything that was thrown. */
+  fault(error: unknown, advice?: string): void;
+  dismiss(id: number): void;
+}
+
+export function createNotes(): Notes {
+  const notes = signal<readonly Note[]>([]);
+  let nextId = 1;
+  const add: Notes['add'] = (kind, sentence, advice) => {
+    const others = notes.value.filter((note) => note.sentence !== sentence);
+    notes.value = [...others, { id: nextId++, kind, sentence, ...(advice === undefined ? {} : { advice }) }];
+  };
+  return {
+    notes,
+    add,
+    fault: (error, advice) => add('fault', sentenceOf(error), advice),
+    dismiss(id) {
+      notes.value = notes.value.filter((note) => note.id !== id);
+    },
+  };
+}
+
+export function sentenceOf(error: unknown): string {
+  return error instanceof Error ? error.message : String(error);
+}

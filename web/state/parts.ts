@@ -1,0 +1,62 @@
+/** What the bench stands on, gathered here so that a test in Node can give it others. */
+import type { Clip } from '../audio/clip.ts';
+import { decodeAudio } from '../audio/decode.ts';
+import { missingFeature } from '../audio/features.ts';
+import type { OpenSound } from '../audio/sound.ts';
+import { openSound, prepareSound } from '../audio/sound.ts';
+import ReadingWorker from './reading.worker.ts?worker';
+import RenderWorker from './render.worker.ts?worker';
+import type { FromReading, FromRender, ToReading, ToRender, WorkerPort } from './workers.ts';
+
+export interface Parts {
+  openSound: OpenSound;
+  /** Fetches what the first start needs. */
+  prepareSound(): Promise<unknown>;
+  missingFeature(): string | null;
+  decodeAudio(bytes: ArrayBuffer, title: string): Promise<Clip>;
+  /** Reads one of the page's own files; throws an Error with a sentence. */
+  fetchBytes(path: string): Promise<ArrayBuffer>;
+  openReadingWorker(): WorkerPort<ToReading, FromReading>;
+  openRenderWorker(): WorkerPort<ToRender, FromRender>;
+  download(name: string, bytes: Uint8Array<ArrayBuffer>, mediaType: string): void;
+}
+
+export function browserParts(): Parts {
+  return {
+    openSound,
+    prepareSound,
+    missingFeature,
+    decodeAudio,
+    fetchBytes,
+    openReadingWorker: () => portOf(new ReadingWorker()),
+    openRenderWorker: () => portOf(new RenderWorker()),
+    download,
+  };
+}
+
+async function fetchBytes(path: string): Promise<ArrayBuffer> {
+  const response = await fetch(path).catch(() => null);
+  if (response === null) throw new Error(`“${path}” could not be fetched: there is no answer from where this page came from.`);
+  if (!response.ok) throw new Error(`“${path}” could not be fetched: the answer was ${response.status}.`);
+  return response.arrayBuffer();
+}
+
+function portOf<Out, In>(worker: Worker): WorkerPort<Out, In> {
+  return {
+    post: (message, transfer = []) => worker.postMessage(message, transfer),
+    receive(handler) {
+      worker.onmessage = ({ data }: MessageEvent<In>) => handler(data);
+    },
+    end: () => worker.terminate(),
+  };
+}
+
+function download(name: string, bytes: Uint8Array<ArrayBuffer>, mediaType: string): void {
+  const url = URL.createObjectURL(new Blob([bytes], { type: mediaType }));
+  const link = document.createElement('a');
+  link.href = url;
+  link.download = name;
+  link.click();
+  // The browser has the blob once the click has been handled; a minute is far more than that.
+  setTimeout(() => URL.revokeObjectURL(url), 60_000);
+}

@@ -1,0 +1,88 @@
+/** The sound's life: opened at the source's rate, fitted to another source, mended when its processor fails, closed. */
+import type { CellOptions, FromCell, ToCell } from '../../worklet/protocol.ts';
+import type { Clip } from '../audio/clip.ts';
+import type { OpenSound, Sound } from '../audio/sound.ts';
+
+const MOST_REBUILDS = 3;
+const REBUILD_WINDOW_MS = 10_000;
+
+export interface LineEvents {
+  /** The options for a processor made now; throws a RangeError with a sentence where the design cannot sound at that rate. */
+  cellFor(sampleRateHz: number, channels: number): CellOptions;
+  message(message: FromCell): void;
+  /** The processor is new and silent: what it records is lost, and it waits to be unmuted. */
+  renewed(): void;
+  /** The processor failed; it is being made anew, or after three times in ten seconds given up and closed. */
+  broken(givenUp: boolean): void;
+  /** Making it anew failed too. */
+  failed(error: unknown): void;
+  paused(on: boolean): void;
+  takeEnded(): void;
+}
+
+export interface SoundLine {
+  /** Null while no sound is open. */
+  sound(): Sound | null;
+  /** Opens sound for the clip, or fits what is open to it, and loops it. Rejects with a sentence. */
+  adapt(clip: Clip): Promise<void>;
+  send(message: ToCell, transfer?: Transferable[]): boolean;
+  close(): Promise<void>;
+}
+
+export function createSoundLine(openSound: OpenSound, events: LineEvents, now: () => number = () => performance.now()): SoundLine {
+  let sound: Sound | null = null;
+  let fitted: { readonly rateHz: number; readonly channels: number } | null = null;
+  let rebuilds: number[] = [];
+  let turn: Promise<unknown> = Promise.resolve();
+
+  /** One at a time, in order, whether the one before succeeded or not. */
+  const inTurn = <T>(work: () => Promise<T>): Promise<T> => {
+    const next = turn.then(work, work);
+    turn = next;
+    return next;
+  };
+
+  const close = async () => {
+    const closing = sound;
+    sound = null;
+    fitted = null;
+    await closing?.close();
+  };
+
+  const rebuild = async (channels: number) => {
+    if (sound === null) return;
+    await sound.rebuild(events.cellFor(sound.sampleRateHz, channels));
+    events.renewed();
+  };
+
+  const mend = () => {
+    const at = now();
+    rebuilds = [...rebuilds.filter((each) => at - each < REBUILD_WINDOW_MS), at];
+    const givenUp = rebuilds.length > MOST_REBUILDS;
+    events.broken(givenUp);
+    inTurn(() => (givenUp || fitted === null ? close() : rebuild(fitted.channels))).catch(events.failed);
+  };
+
+  const adapt = async (clip: Clip) => {
+    const channels = clip.channels.length;
+    if (sound !== null && fitted?.rateHz !== clip.sampleRateHz) await close();
+    if (sound === null) {
+      sound = await openSound(clip.sampleRateHz, (rateHz) => events.cellFor(rateHz, channels), { ...events, broken: mend });
+      events.renewed();
+    } else if (fitted?.channels !== channels) {
+      await rebuild(channels);
+    }
+    fitted = { rateHz: clip.sampleRateHz, channels };
+    sound.loop(clip);
+  };
+
+  return {
+    sound: () => sound,
+    adapt: (clip) => inTurn(() => adapt(clip)),
+    send(message, transfer) {
+      sound?.send(message, transfer);
+      return sound !== null;
+    },
+    close: () => inTurn(close),
+  };
+}

@@ -1,0 +1,100 @@
+/** What the reading worker works out, as a pure plan of small steps: the page's worker runs it, and so can a test in Node. */
+import { controlRangeV, restControlV } from '../../model/control/range.ts';
+import { feedbackFraction, withFeedbackFraction } from '../../model/design/feedback.ts';
+import type { Variant } from '../../model/design/types.ts';
+import type { ToneReading } from '../../model/study/tone.ts';
+import { measureTone } from '../../model/study/tone.ts';
+import type { FeedbackPoint, WorstReading } from './bench.ts';
+import type { ToneQuestion } from './workers.ts';
+
+const SWING_STEPS = 24;
+const CURVE_FROM = 0.4;
+const CURVE_TO = 0.6;
+const CURVE_STEPS = 40;
+
+/** The shadow tone at a control voltage; null is the control at rest. Throws a RangeError where the cell cannot be read. */
+export function readMoment(question: ToneQuestion, controlV: number | null): ToneReading {
+  const { design, variantIndex, toneHz, toneV } = question;
+  return measureTone(design, variantIndex, { toneHz, toneV, ...(controlV === null ? {} : { controlV }) });
+}
+
+/** The highest THD over the swing: 25 control voltages, then the gap around the highest halved four times. Yields between readings. */
+export function* findWorst(question: ToneQuestion): Generator<void, WorstReading> {
+  const [from, to] = controlRangeV(question.design.variants[question.variantIndex].control);
+  const measure = (controlV: number): WorstReading => {
+    const { thdFundamental, gainDb } = readMoment(question, controlV);
+    return { thdFundamental, gainDb, controlV };
+  };
+  let worst = measure(from);
+  if (from === to) return worst;
+  let stepV = (to - from) / SWING_STEPS;
+  for (let i = 1; i <= SWING_STEPS; i++) {
+    yield;
+    worst = higher(worst, measure(from + i * stepV));
+  }
+  for (let halving = 0; halving < 4; halving++) {
+    stepV /= 2;
+    const { controlV } = worst;
+    for (const nearV of [controlV - stepV, controlV + stepV]) {
+      yield;
+      if (nearV >= from && nearV <= to) worst = higher(worst, measure(nearV));
+    }
+  }
+  return worst;
+}
+
+/**
+ * THD against k at the gate voltage of the control at rest, which each k keeps. 41 values from 0.40 to 0.60, widened so that the
+ * present k lies inside; a k that parts within their limits cannot give is left out. A cell without feedback has no such curve: null.
+ */
+export function* readFeedbackCurve(question: ToneQuestion): Generator<void, readonly FeedbackPoint[] | null> {
+  const { design, variantIndex } = question;
+  const variant = design.variants[variantIndex];
+  if (variant.cell.feedback.kind === 'none') return null;
+  const resting: Variant = { ...variant, control: { source: 'fixed', controlV: restControlV(variant.control) } };
+  const present = feedbackFraction(variant.cell);
+  const points: FeedbackPoint[] = [];
+  for (const k of curveFractions(present)) {
+    yield;
+    const moved = variantAtFraction(resting, k);
+    if (moved === null) continue;
+    const variants = design.variants.map((other, i) => (i === variantIndex ? moved : other));
+    points.push(feedbackPoint(k, readMoment({ ...question, design: { ...design, variants } }, null)));
+  }
+  return points;
+}
+
+function variantAtFraction(variant: Variant, k: number): Variant | null {
+  try {
+    return withFeedbackFraction(variant, k, 'gate');
+  } catch (error) {
+    if (error instanceof RangeError) return null;
+    throw error;
+  }
+}
+
+/** 41 even values and the present k, ascending. */
+export function curveFractions(present: number): number[] {
+  const margin = 0.02;
+  const from = Math.min(CURVE_FROM, Math.max(0, present - margin));
+  const to = Math.max(CURVE_TO, Math.min(1, present + margin));
+  const even = Array.from({ length: CURVE_STEPS + 1 }, (_, i) => from + ((to - from) * i) / CURVE_STEPS);
+  const apart = (to - from) / CURVE_STEPS / 1000;
+  return [...even.filter((k) => Math.abs(k - present) > apart), present].sort((a, b) => a - b);
+}
+
+function feedbackPoint(k: number, reading: ToneReading): FeedbackPoint {
+  const harmonic = (n: number) => reading.harmonics.find((each) => each.n === n);
+  const second = harmonic(2);
+  const fraction = (n: number) => (harmonic(n)?.amplitudeV ?? 0) / reading.fundamentalV;
+  return { k, thd: reading.thdFundamental, h2Signed: fraction(2) * secondSign(second?.phaseRad ?? 0), h3: fraction(3) };
+}
+
+/** Plus asks for more feedback, minus for less: the sign of the second harmonic's cosine against the input's. */
+export function secondSign(phaseRad: number): 1 | -1 {
+  return Math.cos(phaseRad) >= 0 ? 1 : -1;
+}
+
+function higher(a: WorstReading, b: WorstReading): WorstReading {
+  return b.thdFundamental > a.thdFundamental ? b : a;
+}
