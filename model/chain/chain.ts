@@ -12,12 +12,16 @@ const FADE_SEC = 0.03;
 /** A new voice runs unheard for this long before it is faded in, so that its filters are full. */
 const LEAD_SEC = 0.01;
 /** Input samples beyond this many times full scale are no audio: they count as faults and are taken as silence. */
-const LARGEST_SAMPLE = 1e4;
+export const LARGEST_SAMPLE = 1e4;
 
 /** Of the last call of `processChain`; peaks over all channels. `faults` counts blocks with unusable input or a lost state since the start. */
 export interface ChainReadings {
+  /** The control voltage used for the last sample. */
   controlV: number;
+  /** Gate-source voltage of the first channel without the audio that rides on it. */
   gateSourceV: number;
+  /** What the control alone leaves at the drain. */
+  feedthroughPeakV: number;
   drainPeakV: number;
   inputPeakV: number;
   /** In samples, 1.0 being full scale. */
@@ -48,7 +52,8 @@ export function createChain(numbers: ChainNumbers): Chain {
     latencySamples: oversamplingDelay(numbers.oversampling, numbers.filters),
     readings: {
       controlV: voice.oscillator[0],
-      gateSourceV: gateSourceV(voice.cells[0]),
+      gateSourceV: gateSourceV(voice.quiet.cell),
+      feedthroughPeakV: 0,
       drainPeakV: 0,
       inputPeakV: 0,
       outputPeak: 0,
@@ -101,10 +106,11 @@ export function processChain(chain: Chain, inputs: readonly Float32Array[], outp
   readings.inputPeakV = 0;
   readings.outputPeak = 0;
   readings.drainPeakV = 0;
+  readings.feedthroughPeakV = 0;
   for (let start = 0; start < length; start += LONGEST_BLOCK) {
     processBlock(chain, inputs, outputs, start, Math.min(LONGEST_BLOCK, length - start));
   }
-  readings.gateSourceV = gateSourceV(chain.voice.cells[0]);
+  readings.gateSourceV = gateSourceV(chain.voice.quiet.cell);
 }
 
 function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[], start: number, count: number): void {
@@ -125,6 +131,7 @@ function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: re
   for (let channel = 0; channel < voice.drainPeakV.length; channel++) {
     if (voice.drainPeakV[channel] > readings.drainPeakV) readings.drainPeakV = voice.drainPeakV[channel];
   }
+  readings.feedthroughPeakV = Math.max(readings.feedthroughPeakV, voice.quiet.feedthroughPeakV);
   readings.controlV = voice.control[count * voice.numbers.oversampling - 1];
   if (!sound) readings.faults += 1;
 }

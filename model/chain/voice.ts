@@ -36,6 +36,11 @@ export interface Voice {
   /** Slices done and to do of the ramp; upper-rate samples done of the slice. */
   readonly ramp: { done: number; total: number; inSlice: number };
   readonly drainPeakV: Float64Array;
+  /**
+   * A silent copy of the first channel's cell at the lower rate: where the gate stands without the audio that rides on it, and what the
+   * control alone leaves at the drain.
+   */
+  readonly quiet: { readonly cell: Cell; readonly signal: Float64Array; readonly control: Float64Array; feedthroughPeakV: number };
 }
 
 function moving(values: Float64Array): Moving {
@@ -52,7 +57,8 @@ export function createVoice(numbers: ChainNumbers): Voice {
   const stepSec = 1 / (sampleRateHz * oversampling);
   const cells = numbers.cells.map((cell) => createCell(cell, stepSec));
   const oscillator = createOscillator(numbers.oscillator);
-  for (const cell of cells) settle(cell, 0, oscillator[MIDDLE_V]);
+  const quietCell = createCell(numbers.cells[0], 1 / sampleRateHz);
+  for (const cell of [...cells, quietCell]) settle(cell, 0, oscillator[MIDDLE_V]);
   return {
     numbers,
     cells,
@@ -64,6 +70,7 @@ export function createVoice(numbers: ChainNumbers): Voice {
     values: numbers.cells.map((cell) => moving(Float64Array.from(cell.values))),
     ramp: { done: 0, total: 0, inSlice: 0 },
     drainPeakV: new Float64Array(cells.length),
+    quiet: { cell: quietCell, signal: new Float64Array(LONGEST_BLOCK), control: new Float64Array(LONGEST_BLOCK), feedthroughPeakV: 0 },
   };
 }
 
@@ -100,6 +107,7 @@ export function processVoice(voice: Voice, inputs: readonly Float64Array[], outp
     raise(oversamplers[channel], count);
   }
   advanceAll(voice, upperCount);
+  advanceQuiet(voice, count);
   let sound = true;
   for (let channel = 0; channel < cells.length; channel++) {
     sound = keepPeak(voice, channel, upperCount) && sound;
@@ -108,6 +116,17 @@ export function processVoice(voice: Voice, inputs: readonly Float64Array[], outp
     for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * perV;
   }
   return sound;
+}
+
+function advanceQuiet(voice: Voice, count: number): void {
+  const { quiet, control, numbers } = voice;
+  for (let i = 0; i < count; i++) {
+    quiet.signal[i] = 0;
+    quiet.control[i] = control[(i + 1) * numbers.oversampling - 1];
+  }
+  advanceCell(quiet.cell, quiet.signal, quiet.control, 0, count);
+  quiet.feedthroughPeakV = 0;
+  for (let i = 0; i < count; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
 }
 
 /** Control and cells, slice by slice while values move. */
@@ -142,6 +161,7 @@ function takeValues(voice: Voice, fraction: number): void {
     follow(values, fraction);
     loadValues(voice.cells[channel], values.now);
   }
+  loadValues(voice.quiet.cell, voice.values[0].now);
 }
 
 /** Notes the drain's peak; puts the cell at rest and silences its block when the voltage is not a number or has run away. */

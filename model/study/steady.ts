@@ -1,5 +1,5 @@
 /**
- * Periodic steady state of a cell under a tone at a fixed control voltage.
+ * Periodic steady state of a cell: under a tone at a fixed control voltage, or under any period of audio and control.
  *
  * Scheme   one period as a map of the state, its fixed point by Newton with a Jacobian by differences (exact for the linear part); where that
  *          does not settle the cell is run period after period until it does
@@ -29,16 +29,20 @@ export interface SteadyPeriod {
 /** The period of `size` samples of `toneV`·cos; the cell's step must be the period divided by `size`. */
 export function steadyPeriod(cell: Cell, toneV: number, controlV: number, size: number): SteadyPeriod {
   const audio = Float64Array.from({ length: size }, (_, i) => toneV * cosTurns((i + 1) / size));
-  const control = new Float64Array(size).fill(controlV);
-  const scratch = new Float64Array(size);
-  settle(cell, 0, controlV);
+  return periodOf(cell, audio, new Float64Array(size).fill(controlV));
+}
+
+/** The period that repeats under one period of audio and control, V, each given at the end of its step. Sample i is the one before step i. */
+export function periodOf(cell: Cell, audio: Float64Array, control: Float64Array): SteadyPeriod {
+  const scratch = new Float64Array(audio.length);
+  settle(cell, 0, control[control.length - 1]);
   const run = () => {
     scratch.set(audio);
-    advanceCell(cell, scratch, control, 0, size);
+    advanceCell(cell, scratch, control, 0, audio.length);
   };
   run();
   const settled = shoot(cell, run) || runUntilSettled(cell, run);
-  return { ...recordPeriod(cell, audio, controlV), settled };
+  return { ...recordPeriod(cell, audio, control), settled };
 }
 
 function shoot(cell: Cell, run: () => void): boolean {
@@ -80,17 +84,18 @@ function runUntilSettled(cell: Cell, run: () => void): boolean {
   return false;
 }
 
-function recordPeriod(cell: Cell, audio: Float64Array, controlV: number): Omit<SteadyPeriod, 'settled'> {
+function recordPeriod(cell: Cell, audio: Float64Array, control: Float64Array): Omit<SteadyPeriod, 'settled'> {
   const size = audio.length;
   const output = new Float64Array(size);
   const sourceOverdrive = new Float64Array(size);
   const drainOverdrive = new Float64Array(size);
   const gateOn = new Uint8Array(size);
   const one = new Float64Array(1);
-  const control = Float64Array.of(controlV);
+  const driver = new Float64Array(1);
   for (let i = 0; i < size; i++) {
     one[0] = audio[i];
-    advanceCell(cell, one, control, 0, 1);
+    driver[0] = control[i];
+    advanceCell(cell, one, driver, 0, 1);
     const at = (i + 1) % size;
     output[at] = one[0];
     sourceOverdrive[at] = overdriveV(cell, 'source');
