@@ -17,8 +17,9 @@ const OUTPUT_PEAK = 1;
 const OUTPUT_SQUARES = 2;
 const INPUT_PEAK_V = 3;
 const DRAIN_PEAK_V = 4;
-const SAMPLES = 5;
-const TOTALS = 6;
+const FEEDTHROUGH_PEAK_V = 5;
+const SAMPLES = 6;
+const TOTALS = 7;
 
 export interface Post {
   postMessage(message: unknown, transfer: Transferable[]): void;
@@ -58,6 +59,7 @@ export function processMeter(
   for (let c = 0; c < outputs.length; c++) addLevels(totals, inputs[c], outputs[c]);
   totals[INPUT_PEAK_V] = Math.max(totals[INPUT_PEAK_V], readings.inputPeakV);
   totals[DRAIN_PEAK_V] = Math.max(totals[DRAIN_PEAK_V], readings.drainPeakV);
+  totals[FEEDTHROUGH_PEAK_V] = Math.max(totals[FEEDTHROUGH_PEAK_V], readings.feedthroughPeakV);
   for (let n = 0; n < outputs[0].length; n++) {
     if (meter.slot < 0 && !takeSlot(meter)) return;
     const report = meter.reports[meter.slot];
@@ -114,6 +116,7 @@ function send(meter: Meter, report: Report, readings: ChainReadings, monitor: Mo
   report.outputSquare = totals[OUTPUT_SQUARES] / totals[SAMPLES];
   report.inputPeakV = totals[INPUT_PEAK_V];
   report.drainPeakV = totals[DRAIN_PEAK_V];
+  report.feedthroughPeakV = totals[FEEDTHROUGH_PEAK_V];
   report.lagMs = Date.now() - (1000 * report.frame) / meter.sampleRateHz;
   report.controlV = readings.controlV;
   report.gateSourceV = readings.gateSourceV;
@@ -142,6 +145,7 @@ function createReport(slot: number, frames: number): Report {
     gateSourceV: 0,
     inputPeakV: 0,
     drainPeakV: 0,
+    feedthroughPeakV: 0,
     faults: 0,
     ceilingFrames: 0,
     lagMs: 0,

@@ -67,6 +67,7 @@ export interface Report {
   gateSourceV: number;
   inputPeakV: number;
   drainPeakV: number;
+  feedthroughPeakV: number;
   /** Times, since the node was made, that the chain fell back or a sample that is no number was replaced by silence. */
   faults: number;
   /** Frames that the ceiling turned down. */

@@ -77,7 +77,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     reading: computed(() =>
       options.unread ? { fault: 'The cell cannot be solved here' } : inventedReading(k.value, options.saturated ?? 0),
     ),
-    worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, controlV: -3.1 })),
+    worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, gateV: -1.55 })),
     feedbackCurve: computed(() => inventedCurve()),
     toneV,
     setToneV: put(toneV),
@@ -135,6 +135,7 @@ function inventedLevels(muted: boolean): LiveLevels {
   return {
     controlV: -1.53,
     gateSourceV: -1.38,
+    feedthroughPeakV: 0.0012,
     inputPeakV: 0.2,
     drainPeakV: 0.059,
     outputPeakDbfs: 7.4,

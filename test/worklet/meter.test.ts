@@ -5,7 +5,15 @@ import { createMonitor } from '../../worklet/monitor.ts';
 import type { Report } from '../../worklet/protocol.ts';
 import { createNoise } from '../support/noise.ts';
 
-const READINGS: ChainReadings = { controlV: -1, gateSourceV: -0.5, drainPeakV: 0.2, inputPeakV: 0.4, outputPeak: 0.1, faults: 0 };
+const READINGS: ChainReadings = {
+  controlV: -1,
+  gateSourceV: -0.5,
+  drainPeakV: 0.2,
+  feedthroughPeakV: 0.001,
+  inputPeakV: 0.4,
+  outputPeak: 0.1,
+  faults: 0,
+};
 const BLOCK = 128;
 
 function runMeter(rate: number, inputs: Float32Array[], outputs: Float32Array[]): Report[] {

@@ -61,7 +61,7 @@ export interface Bench {
 
   // Measured now
   readonly live: ReadonlySignal<LiveLevels | null>;
-  /** The shadow tone at the control voltage of this moment (at rest while sound is stopped), about ten times a second. */
+  /** The shadow tone at the gate voltage of this moment (at rest while sound is stopped), about ten times a second. */
   readonly reading: ReadonlySignal<ToneReading | { readonly fault: string } | null>;
   /** The highest THD over the control's whole swing. */
   readonly worst: ReadonlySignal<WorstReading | null>;
@@ -124,7 +124,10 @@ export interface SourceInfo {
 /** Of the time since the last report (about 1/30 s), unless it says otherwise. dBFS of silence is −Infinity. */
 export interface LiveLevels {
   readonly controlV: number;
+  /** Of the first channel, without the audio that rides on it. */
   readonly gateSourceV: number;
+  /** What the control alone leaves at the drain, peak. */
+  readonly feedthroughPeakV: number;
   readonly inputPeakV: number;
   readonly drainPeakV: number;
   /** Of the chain's output, before the listening level. */
@@ -145,7 +148,7 @@ export interface LiveLevels {
 export interface WorstReading {
   readonly thdFundamental: number;
   readonly gainDb: number;
-  readonly controlV: number;
+  readonly gateV: number;
 }
 
 export interface FeedbackPoint {

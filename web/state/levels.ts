@@ -38,6 +38,7 @@ export function createLevels(now: () => number = () => performance.now()): Level
       live.value = {
         controlV: report.controlV,
         gateSourceV: report.gateSourceV,
+        feedthroughPeakV: report.feedthroughPeakV,
         inputPeakV: report.inputPeakV,
         drainPeakV: report.drainPeakV,
         outputPeakDbfs: toDb(report.outputPeak),

@@ -15,7 +15,7 @@ self.onmessage = ({ data }: MessageEvent<ToReading>) => {
       pump.port2.postMessage(null);
       return;
     case 'moment':
-      return answerMoment(data.id, data.controlV);
+      return answerMoment(data.id, data.gateV);
     default:
       data satisfies never;
       throw new TypeError(`The reading worker does not know the message ${JSON.stringify(data)}`);
@@ -42,13 +42,13 @@ function* answer(id: number, question: ToneQuestion): Generator<void, void> {
   }
 }
 
-function answerMoment(id: number, controlV: number | null): void {
+function answerMoment(id: number, gateV: number | null): void {
   if (asked === null) {
     tell({ type: 'reading', id, reading: { fault: 'No design has been given yet.' } });
     return;
   }
   try {
-    tell({ type: 'reading', id, reading: readMoment(asked.question, controlV) });
+    tell({ type: 'reading', id, reading: readMoment(asked.question, gateV) });
   } catch (error) {
     tell({ type: 'reading', id, reading: { fault: sentenceOf(error) } });
   }

@@ -1,4 +1,4 @@
-/** The shadow tone's readings, from a worker: asked for when something changed, and ten times a second while sound moves the control. */
+/** The shadow tone's readings, from a worker: asked for when something changed, and ten times a second while sound moves the gate. */
 import type { ReadonlySignal } from '@preact/signals';
 import { effect, signal } from '@preact/signals';
 import type { Design } from '../../model/design/types.ts';
@@ -37,7 +37,7 @@ export function createReadings(worker: WorkerPort<ToReading, FromReading>, sourc
     }
     waiting = true;
     askAgain = false;
-    worker.post({ type: 'moment', id, controlV: sources.playing.peek() ? (sources.live.peek()?.controlV ?? null) : null });
+    worker.post({ type: 'moment', id, gateV: sources.playing.peek() ? (sources.live.peek()?.gateSourceV ?? null) : null });
   };
 
   worker.receive((message) => {

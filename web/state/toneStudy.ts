@@ -1,29 +1,32 @@
 /** What the reading worker works out, as a pure plan of small steps: the page's worker runs it, and so can a test in Node. */
-import { controlRangeV, restControlV } from '../../model/control/range.ts';
+import { controlRangeV } from '../../model/control/range.ts';
 import { feedbackFraction, withFeedbackFraction } from '../../model/design/feedback.ts';
 import type { Variant } from '../../model/design/types.ts';
+import { controlSwing } from '../../model/study/swing.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import { measureTone } from '../../model/study/tone.ts';
 import type { FeedbackPoint, WorstReading } from './bench.ts';
 import type { ToneQuestion } from './workers.ts';
 
 const SWING_STEPS = 24;
+/** Of an LFO's period, to find the ends of the gate's swing. */
+const SWING_POINTS = 512;
 const CURVE_FROM = 0.4;
 const CURVE_TO = 0.6;
 const CURVE_STEPS = 40;
 
-/** The shadow tone at a control voltage; null is the control at rest. Throws a RangeError where the cell cannot be read. */
-export function readMoment(question: ToneQuestion, controlV: number | null): ToneReading {
+/** The shadow tone at a gate voltage; null is the gate with the control at rest. Throws a RangeError where the cell cannot be read. */
+export function readMoment(question: ToneQuestion, gateV: number | null): ToneReading {
   const { design, variantIndex, toneHz, toneV } = question;
-  return measureTone(design, variantIndex, { toneHz, toneV, ...(controlV === null ? {} : { controlV }) });
+  return measureTone(design, variantIndex, { toneHz, toneV, ...(gateV === null ? {} : { gateV }) });
 }
 
-/** The highest THD over the swing: 25 control voltages, then the gap around the highest halved four times. Yields between readings. */
+/** The highest THD over the gate's swing: 25 gate voltages, then the gap around the highest halved four times. Yields between readings. */
 export function* findWorst(question: ToneQuestion): Generator<void, WorstReading> {
-  const [from, to] = controlRangeV(question.design.variants[question.variantIndex].control);
-  const measure = (controlV: number): WorstReading => {
-    const { thdFundamental, gainDb } = readMoment(question, controlV);
-    return { thdFundamental, gainDb, controlV };
+  const [from, to] = gateRangeV(question);
+  const measure = (gateV: number): WorstReading => {
+    const { thdFundamental, gainDb } = readMoment(question, gateV);
+    return { thdFundamental, gainDb, gateV };
   };
   let worst = measure(from);
   if (from === to) return worst;
@@ -34,8 +37,8 @@ export function* findWorst(question: ToneQuestion): Generator<void, WorstReading
   }
   for (let halving = 0; halving < 4; halving++) {
     stepV /= 2;
-    const { controlV } = worst;
-    for (const nearV of [controlV - stepV, controlV + stepV]) {
+    const { gateV } = worst;
+    for (const nearV of [gateV - stepV, gateV + stepV]) {
       yield;
       if (nearV >= from && nearV <= to) worst = higher(worst, measure(nearV));
     }
@@ -43,30 +46,39 @@ export function* findWorst(question: ToneQuestion): Generator<void, WorstReading
   return worst;
 }
 
+/** The ends of the gate's swing, V: an LFO's with what a blocking capacitor makes of its rate, any other control's one by one. */
+function gateRangeV({ design, variantIndex }: ToneQuestion): readonly [number, number] {
+  const { control } = design.variants[variantIndex];
+  const gate =
+    control.source === 'lfo'
+      ? controlSwing(design, variantIndex, SWING_POINTS).gateV
+      : controlRangeV(control).map((controlV) => measureTone(design, variantIndex, { controlV }).vgsV);
+  return [Math.min(...gate), Math.max(...gate)];
+}
+
 /**
- * THD against k at the gate voltage of the control at rest, which each k keeps. 41 values from 0.40 to 0.60, widened so that the
- * present k lies inside; a k that parts within their limits cannot give is left out. A cell without feedback has no such curve: null.
+ * THD against k, the gate's voltage kept where the control at rest puts it now. 41 values from 0.40 to 0.60, widened so that the present k
+ * lies inside; a k that parts within their limits cannot give is left out. A cell without feedback has no such curve: null.
  */
 export function* readFeedbackCurve(question: ToneQuestion): Generator<void, readonly FeedbackPoint[] | null> {
   const { design, variantIndex } = question;
   const variant = design.variants[variantIndex];
   if (variant.cell.feedback.kind === 'none') return null;
-  const resting: Variant = { ...variant, control: { source: 'fixed', controlV: restControlV(variant.control) } };
-  const present = feedbackFraction(variant.cell);
+  const { vgsV } = readMoment(question, null);
   const points: FeedbackPoint[] = [];
-  for (const k of curveFractions(present)) {
+  for (const k of curveFractions(feedbackFraction(variant.cell))) {
     yield;
-    const moved = variantAtFraction(resting, k);
+    const moved = variantAtFraction(variant, k);
     if (moved === null) continue;
     const variants = design.variants.map((other, i) => (i === variantIndex ? moved : other));
-    points.push(feedbackPoint(k, readMoment({ ...question, design: { ...design, variants } }, null)));
+    points.push(feedbackPoint(k, readMoment({ ...question, design: { ...design, variants } }, vgsV)));
   }
   return points;
 }
 
 function variantAtFraction(variant: Variant, k: number): Variant | null {
   try {
-    return withFeedbackFraction(variant, k, 'gate');
+    return withFeedbackFraction(variant, k, 'control');
   } catch (error) {
     if (error instanceof RangeError) return null;
     throw error;

@@ -21,8 +21,8 @@ export interface ToneQuestion {
 export type ToReading =
   /** Asks for the worst over the swing and the curve against k; drops what was being computed. */
   | { readonly type: 'question'; readonly id: number; readonly question: ToneQuestion }
-  /** Asks for the reading at a control voltage; null is the control at rest. */
-  | { readonly type: 'moment'; readonly id: number; readonly controlV: number | null };
+  /** Asks for the reading at a gate voltage; null is the gate with the control at rest. */
+  | { readonly type: 'moment'; readonly id: number; readonly gateV: number | null };
 
 export type FromReading =
   | { readonly type: 'reading'; readonly id: number; readonly reading: ToneReading | { readonly fault: string } }

@@ -220,9 +220,9 @@ describe('readings', () => {
     bench.setValue('cell.seriesOhm', 6800);
     const latest = readingWorker.posted.findLast((message) => message.type === 'question');
     expect(latest?.question.design).toBe(bench.design.value);
-    readingWorker.answer({ type: 'worst', id: first.id, worst: { thdFundamental: 1, gainDb: 0, controlV: 0 } });
+    readingWorker.answer({ type: 'worst', id: first.id, worst: { thdFundamental: 1, gainDb: 0, gateV: 0 } });
     expect(bench.worst.value).toBeNull();
-    const worst = { thdFundamental: 0.02, gainDb: -6, controlV: -1 };
+    const worst = { thdFundamental: 0.02, gainDb: -6, gateV: -1 };
     readingWorker.answer({ type: 'worst', id: latest?.id ?? 0, worst });
     expect(bench.worst.value).toEqual(worst);
     expect(bench.setToneV(-1)).toBe('The shadow tone is -1 V peak; expected 0.0001 to 100 V peak.');
@@ -230,13 +230,13 @@ describe('readings', () => {
     expect(readingWorker.posted.findLast((message) => message.type === 'question')?.question.toneHz).toBe(440);
   });
 
-  test('while sound plays the reading follows the control voltage of the moment, ten times a second, one question at a time', async () => {
+  test('while sound plays the reading follows the gate voltage of the moment, ten times a second, one question at a time', async () => {
     const { readingWorker } = parts;
     const sound = await startSound();
     const report: Report = {
       ...{ type: 'report', slot: 0, frame: 0, input: new Float32Array(100), output: new Float32Array(100) },
-      ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, inputPeakV: 0, drainPeakV: 0, gateSourceV: 0 },
-      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: -1.75 },
+      ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, inputPeakV: 0, drainPeakV: 0, feedthroughPeakV: 0 },
+      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: -3.5, gateSourceV: -1.75 },
     };
     sound.events.message(report);
     expect(sound.last('return report')).toMatchObject({ slot: 0 });
@@ -250,7 +250,7 @@ describe('readings', () => {
     }
     expect(moments().length - asked).toBeGreaterThanOrEqual(9);
     expect(moments().length - asked).toBeLessThanOrEqual(12);
-    expect(moments().at(-1)?.controlV).toBe(-1.75);
+    expect(moments().at(-1)?.gateV).toBe(-1.75);
     expect(bench.reading.value).toEqual({ fault: 'none yet' });
   });
 });

@@ -14,6 +14,7 @@ const quiet = {
   gateSourceV: -0.5,
   inputPeakV: 0.1,
   drainPeakV: 0.05,
+  feedthroughPeakV: 0.001,
   faults: 0,
   ceilingFrames: 0,
   lagMs: 0,
