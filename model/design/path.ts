@@ -66,9 +66,22 @@ export function rangeFault(field: FieldInfo, value: number, name = 'This'): stri
  * @throws RangeError with a sentence
  */
 export function setFromText<T extends Design | Variant>(object: T, path: string, text: string): T {
+  return setAllFromText(object, [[path, text]]);
+}
+
+/**
+ * The same for several values, in order, checked after the last: values that agree only with one another can be set together.
+ *
+ * @throws RangeError with a sentence
+ */
+export function setAllFromText<T extends Design | Variant>(object: T, settings: readonly (readonly [path: string, text: string])[]): T {
   const top = schemaOf(object);
-  const steps = walk(top, object, path);
-  const { value, faults } = check(top, setAt(object, path, valueFromText(steps[steps.length - 1].field, path, text.trim())), '');
+  let set = object;
+  for (const [path, text] of settings) {
+    const steps = walk(top, set, path);
+    set = setAt(set, path, valueFromText(steps[steps.length - 1].field, path, text.trim()));
+  }
+  const { value, faults } = check(top, set, '');
   if (faults.length > 0) throw new RangeError(faults.map((fault) => fault.sentence).join('; '));
   return value as T;
 }

@@ -57,7 +57,7 @@ const RULES: readonly Rule[] = [
   { room: 'model/chain/', may: ['model/design/', 'model/device/', 'model/cell/', 'model/control/'], packages: [] },
   { room: 'model/measure/', may: [MATHS], packages: ['fft.js'] },
   { room: 'model/study/', may: MODEL, packages: [] },
-  { room: 'model/command/', may: MODEL, packages: [], node: true },
+  { room: 'model/command/', may: MODEL, packages: ['tsx'], node: true },
   { room: 'worklet/', may: MODEL, packages: [] },
   {
     room: 'web/',

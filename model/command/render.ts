@@ -1,0 +1,72 @@
+/** `fettle render` */
+import { LARGEST_SAMPLE } from '../chain/chain.ts';
+import { renderClip } from '../chain/render.ts';
+import { readWav, type WavClip, type WavFormat, writeWav } from '../chain/wav.ts';
+import { either, shown } from '../design/wording.ts';
+import { CommandFault, judged } from './fault.ts';
+import { outputPath, readBytes, writeWhole } from './files.ts';
+import type { Command, Line, Option } from './line.ts';
+import { createProgress } from './progress.ts';
+import { openSubject, SET, SET_NOTES, VARIANT } from './subject.ts';
+
+const FORMATS: readonly WavFormat[] = ['pcm16', 'pcm24', 'pcm32', 'float32'];
+const FORMAT: Option = { name: 'format', value: 'FORMAT', about: `samples of OUT: ${either(FORMATS)}; those of IN when left out` };
+
+export const render: Command = {
+  name: 'render',
+  files: ['DESIGN', 'IN.wav', 'OUT.wav'],
+  about: 'Puts a sound through one variant of a design.',
+  options: [VARIANT, SET, FORMAT],
+  notes: `IN is a WAV file of PCM with 16, 24 or 32 bits or of 32-bit float, mono or stereo. OUT has its sample rate, channels and number of
+frames, and no delay. Its samples are of IN's kind unless --format says otherwise; PCM is rounded to the nearest step, without dither,
+and samples beyond full scale are cut to it, counted and reported on stderr. OUT appears only when it is whole; IN is never touched.
+
+${SET_NOTES}`,
+  run: runRender,
+};
+
+async function runRender(line: Line): Promise<void> {
+  const [designPath, inPath, outPath] = line.words;
+  const asked = askedFormat(line);
+  const { design, variantIndex } = openSubject(designPath, line);
+  const clip = openClip(inPath);
+  const target = outputPath(outPath, [inPath, designPath]);
+  const progress = createProgress(`${outPath}: `);
+  const about = `${inPath} cannot be rendered with variant ${design.variants[variantIndex].name}: `;
+  const rendered = judged(about, () => renderClip(design, variantIndex, clip.channels, clip.sampleRateHz, progress.show));
+  progress.clear();
+  const format = asked ?? formatOf(clip);
+  const { bytes, cut } = writeWav(rendered, clip.sampleRateHz, format);
+  await writeWhole(target, bytes);
+  if (cut > 0) process.stderr.write(`${outPath}: ${cutSentence(cut, rendered.length * rendered[0].length)}\n`);
+}
+
+function cutSentence(cut: number, count: number): string {
+  const [samples, were] = cut === 1 ? ['1 sample', 'was'] : [`${cut} samples`, 'were'];
+  return `${samples} of ${count} lay beyond full scale and ${were} cut to it; a lower output.gainDb or --format float32 keeps them`;
+}
+
+function askedFormat({ values }: Line): WavFormat | undefined {
+  const [text] = values.get(FORMAT.name) ?? [];
+  const format = FORMATS.find((name) => name === text);
+  if (text !== undefined && !format) throw new CommandFault(`--format is ${shown(text)}; expected ${either(FORMATS)}`);
+  return format;
+}
+
+function formatOf({ float, bits }: WavClip): WavFormat {
+  return float ? 'float32' : `pcm${bits}`;
+}
+
+/** Refuses a file with samples that are no sound, which the chain would take as silence. */
+function openClip(path: string): WavClip {
+  const bytes = readBytes(path);
+  const clip = judged(`${path}: `, () => readWav(bytes));
+  for (const samples of clip.channels) {
+    const frame = samples.findIndex((sample) => !(Math.abs(sample) <= LARGEST_SAMPLE));
+    if (frame >= 0) {
+      const expected = `at most ${LARGEST_SAMPLE} times full scale`;
+      throw new CommandFault(`${path}: frame ${frame + 1} holds a sample of ${samples[frame]}; expected ${expected}`);
+    }
+  }
+  return clip;
+}
