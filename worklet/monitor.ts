@@ -105,7 +105,8 @@ export function processMonitor(
         totals[BROKEN_SAMPLES]++;
       }
       lines[c][n] = x;
-      peak = Math.max(peak, Math.abs(x));
+      // As stored: rounded to a Float32 it may be larger than it was.
+      peak = Math.max(peak, Math.abs(lines[c][n]));
     }
     gain = gain > 1 - 1e-9 ? 1 : gain + (1 - gain) * recover;
     if (peak * gain > limit) {

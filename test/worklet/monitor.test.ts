@@ -66,12 +66,14 @@ describe('the monitor', () => {
   });
 
   test('no sample ever leaves above the ceiling, whatever comes and however the values move', () => {
-    for (const [seed, ceiling] of [
-      [11, 1],
-      [12, 0.5011872336272722],
-      [13, 0.01],
+    for (const [seed, ceiling, gain] of [
+      [11, 1, 1],
+      [12, 0.5011872336272722, 1],
+      [13, 0.01, 1],
+      [14, 0.01, 0.251],
+      [15, 0.7, 0.3],
     ]) {
-      const monitor = createMonitor('cell', 1, ceiling, false, RATE);
+      const monitor = createMonitor('cell', gain, ceiling, false, RATE);
       const loud = createNoise(seed, 128 * 300, 30);
       loud.fill(1e30, 1000, 1100);
       loud[2000] = -3.4e38;
