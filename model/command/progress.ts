@@ -7,7 +7,7 @@ export interface Progress {
 
 const ERASE = '\r\x1b[K';
 
-export function createProgress(about: string): Progress {
+export function createProgress(): Progress {
   const { stderr } = process;
   let shown = -1;
   return {
@@ -15,7 +15,7 @@ export function createProgress(about: string): Progress {
       const percent = Math.floor(fraction * 100);
       if (!stderr.isTTY || percent === shown) return;
       shown = percent;
-      stderr.write(`${ERASE}${about}${percent} %`);
+      stderr.write(`${ERASE}Rendering: ${percent} %`);
     },
     clear() {
       if (shown >= 0) stderr.write(ERASE);

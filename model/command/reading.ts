@@ -53,7 +53,7 @@ function print(value: number, unit: Unit, style: PrintStyle = {}): string {
 }
 
 function percent(ratio: number): string {
-  return `${formatQuantity(ratio * 100, '', 3, { trimmed: true })}\u2009%`;
+  return `${formatQuantity(ratio * 100, '', 3)}\u2009%`;
 }
 
 function inDb(ratio: number): string {

@@ -31,7 +31,7 @@ async function runRender(line: Line): Promise<void> {
   const { design, variantIndex } = openSubject(designPath, line);
   const clip = openClip(inPath);
   const target = outputPath(outPath, [inPath, designPath]);
-  const progress = createProgress(`${outPath}: `);
+  const progress = createProgress();
   const about = `${inPath} cannot be rendered with variant ${design.variants[variantIndex].name}: `;
   const rendered = judged(about, () => renderClip(design, variantIndex, clip.channels, clip.sampleRateHz, progress.show));
   progress.clear();

@@ -101,7 +101,7 @@ test.skipIf(!SCRIPT)('on a terminal the render says how far it has come, and wip
   const shown = await ended(spawn('script', ['-qec', command, '/dev/null'], { cwd: folder.path, stdio: ['ignore', 'pipe', 'pipe'] }));
   expect(shown.code).toBe(0);
   const wipe = '\r\x1b[K';
-  expect(shown.stdout).toContain(`${wipe}out.wav: 100 %${wipe}`);
+  expect(shown.stdout).toContain(`${wipe}Rendering: 100 %${wipe}`);
   expect(shown.stdout.endsWith(wipe)).toBe(true);
   expect(await folder.fettle('render', 'a.json', 'in.wav', 'out.wav')).toEqual(SILENT);
 });
