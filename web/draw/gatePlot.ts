@@ -35,7 +35,11 @@ export interface GatePlot {
   readonly xTicks: readonly Tick[];
   readonly yTicks: readonly Tick[];
   readonly gate: string;
+  /** Where the period starts. */
+  readonly start: Point;
   readonly offY: number;
+  /** Its label stands above the line of VGS(off), else below: on the side of the off region only when the gate is in the way. */
+  readonly labelAbove: boolean;
   /** The half of the frame where the channel is off. */
   readonly offArea: { readonly top: number; readonly height: number };
   readonly regions: readonly { readonly region: Region; readonly from: number; readonly to: number }[];
@@ -89,7 +93,7 @@ const MARGINS = { left: 46, right: 10, top: 8, bottom: 34 };
 export function plotGate(period: GatePeriod, gateOffV: number, width: number, height: number): GatePlot {
   const area = plotArea(width, height, MARGINS);
   const values = [...period.gate, gateOffV, 0];
-  const pad = 0.14 * (Math.max(...values) - Math.min(...values));
+  const pad = 0.22 * (Math.max(...values) - Math.min(...values));
   const y = linearScale(
     Math.min(...values) - (gateOffV < 0 ? pad : 0),
     Math.max(...values) + (gateOffV < 0 ? 0 : pad),
@@ -108,6 +112,8 @@ export function plotGate(period: GatePeriod, gateOffV: number, width: number, he
     xTicks: timeTicks(x, period),
     yTicks: voltTicks(y),
     gate: linePath(points),
+    start: period.steady ? { x: (area.left + area.right) / 2, y: points[0].y } : points[0],
+    labelAbove: gateOffV < 0 !== Math.abs(points[0].y - (gateOffV < 0 ? offY - 11 : offY + 11)) < 14,
     offY,
     offArea: gateOffV < 0 ? { top: offY, height: area.bottom - offY } : { top: area.top, height: offY - area.top },
     regions: regionRuns(period.gate, gateOffV, x, period.seconds),

@@ -29,7 +29,12 @@ export function placeSlip(
   let best = { left: anchor.left, top: anchor.top + anchor.height };
   let bestCost = Number.POSITIVE_INFINITY;
   for (const [left, top, distance] of candidates(anchor, slip)) {
-    const box = { left: Math.max(bounds.left, Math.min(left, bounds.left + bounds.width - slip.width)), top, ...slip };
+    const box = {
+      left: Math.max(bounds.left, Math.min(left, bounds.left + bounds.width - slip.width)),
+      top,
+      width: slip.width,
+      height: slip.height,
+    };
     const cost = costOf(box, anchor, obstacles, bounds) + distance;
     if (cost < bestCost) {
       bestCost = cost;

@@ -37,12 +37,19 @@ const end = (x: number, y: number): Place => ({ x, y, align: 'end' });
 
 /** Heights are fixed, places across are shares of the width. */
 export function wideGrid(fitted: Fitted, width: number): Grid {
-  const [top, gate, bus] = [64, 256, 330];
+  const stretch = Math.round(Math.min(110, Math.max(0, 1.1 * (width - 700))));
+  const [top, gate, bus] = [64, 256 + stretch, 330 + stretch];
   const [series, feedback, device, load] = [0.195 * width, 0.335 * width, 0.533 * width, 0.77 * width];
   const capacitor = fitted.loadCapacitor ? 0.826 * width : load;
-  const [blockingY, drainY, bufferY, loadY, generatorY] = [top + 68, top + 136, top + 104, top + 128, gate + 37];
+  const [blockingY, drainY, bufferY, loadY, generatorY] = [
+    top + 68,
+    top + 136 + stretch / 2,
+    top + 104 + stretch / 2,
+    top + 128 + stretch / 2,
+    gate + 37,
+  ];
   return {
-    ...{ width, height: 346, top, gate, bus, feedback, device, load, capacitor, generator: 46, series, control: series },
+    ...{ width, height: bus + 16, top, gate, bus, feedback, device, load, capacitor, generator: 46, series, control: series },
     ...{
       amplifier: width - 28 - AMPLIFIER.long / 2,
       outTerminal: width - 10,
@@ -77,10 +84,10 @@ export function wideGrid(fitted: Fitted, width: number): Grid {
 
 /** Names stand over their values, and the device's values in a column between the branches. */
 export function uprightGrid(fitted: Fitted, width: number): Grid {
-  const [top, gate, bus] = [62, 400, 516];
+  const [top, gate, bus] = [62, 400, 522];
   const [series, control, feedback, device, load] = [62, 58, 0.275 * width, 0.56 * width, 0.695 * width];
   const capacitor = fitted.loadCapacitor ? 0.77 * width : load;
-  const [blockingY, drainY, bufferY, loadY, generatorY] = [top + 76, top + 190, top + 150, top + 196, gate + 57];
+  const [blockingY, drainY, bufferY, loadY, generatorY] = [top + 76, top + 190, top + 80, top + 196, gate + 57];
   return {
     ...{ width, height: bus + 20, top, gate, bus, feedback, device, load, capacitor, generator: 21, series, control },
     ...{
@@ -102,7 +109,7 @@ export function uprightGrid(fitted: Fitted, width: number): Grid {
       drain: end(feedback - 18, drainY),
       fraction: end(feedback - 24, bufferY),
       control: middle(control, gate - 34),
-      generator: start(45, gate + 60),
+      generator: start(45, gate + 66),
       gateLive: start(feedback + 8, gate - 15),
       drainLive: middle(device, top - 18),
       device: start(feedback + 16, top + 172),

@@ -30,7 +30,7 @@ export function drawSpectrum(
   context.rect(area.left, area.top, area.right - area.left, area.bottom - area.top);
   context.clip();
   trace(context, axes, spectra.before, style.getPropertyValue('--ink3'), 0.9);
-  trace(context, axes, spectra.after, style.getPropertyValue('--live'), 1.5);
+  trace(context, axes, spectra.after, style.getPropertyValue('--now'), 1.5);
   context.restore();
 }
 

@@ -1,8 +1,8 @@
 import { createSpectrumAnalyser } from '../../model/measure/spectrum.ts';
 import type { Spectrum } from './spectrumPlot.ts';
 
-/** Samples in a window: 0.17 s at 48 kHz, bins 5.9 Hz apart. */
-const SIZE = 8192;
+/** Samples in a window: 0.34 s at 48 kHz, bins 2.9 Hz apart. */
+const SIZE = 16384;
 
 /** Reads the latest window and gives its spectrum. Each trace needs a reader of its own: the levels are the same array at every call. */
 export function createSpectrumReader(read: (into: Float32Array) => void): (rateHz: number) => Spectrum {

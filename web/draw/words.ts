@@ -45,7 +45,7 @@ export function voltsText(volts: number): string {
   const size = Math.abs(volts);
   if (size >= 0.9995) return `${decimals(volts, 2)}${THIN}V`;
   if (size >= 0.00995) return `${decimals(volts * 1000, 0)}${THIN}mV`;
-  return size >= 0.0000995 ? `${decimals(volts * 1000, 1)}${THIN}mV` : `${decimals(volts * 1e6, 0)}${THIN}µV`;
+  return size >= 0.0000995 ? `${decimals(volts * 1000, 1)}${THIN}mV` : `${decimals(volts * 1e6, 0)}${THIN}μV`;
 }
 
 /** Level of a sine of this peak voltage, dB re 0.7746 V rms. */
@@ -59,6 +59,11 @@ export function peakFromDbu(dbu: number): number {
 
 /** 0 dBu: the voltage that puts 1 mW into 600 Ω, V rms. */
 const DBU_V = Math.sqrt(0.6);
+
+/** A gate or control voltage that is measured: always two decimals, so that it keeps its width. */
+export function gateVolts(volts: number): string {
+  return `${decimals(volts, 2)}${THIN}V`;
+}
 
 /** A voltage that is set: in volts from 0.1 V up, as many decimals as it has, two at least and three at most; millivolts below. */
 export function valueVolts(volts: number): string {

@@ -76,7 +76,7 @@ function Regions({ ohmic, saturated, cutoff, gateOn }: { ohmic: number; saturate
           <span class="short">Regions</span>
         </th>
         <td colSpan={5}>
-          ohmic {share(ohmic, false)}, saturated {share(saturated, true)}, cut off {share(cutoff, true)}, gate conducting{' '}
+          ohmic {share(ohmic, false)}, saturated {share(saturated, true)}, cut off {share(cutoff, false)}, gate conducting{' '}
           {share(gateOn, true)} %
         </td>
       </tr>

@@ -35,10 +35,18 @@ export function CircuitValue({ path, label, short, zeroIsAbsent = false, signed 
       min={min}
       max={max}
       onSet={(value) =>
-        (value === null ? null : rangeFault(field, value, short)) ?? bench.setValue(path, value ?? (zeroIsAbsent ? 0 : null))
+        (value === null ? null : rangeFault(field, value, short)) ??
+        named(bench.setValue(path, value ?? (zeroIsAbsent ? 0 : null)), path, short)
       }
     />
   );
+}
+
+/** The document's sentences name a value by its path; here it has a name of its own. */
+function named(sentence: string | null, path: string, short: string): string | null {
+  if (sentence === null) return null;
+  const bare = sentence.replace(/^variants\[\d+\]\./, '');
+  return bare.startsWith(`${path} `) ? `${short}${bare.slice(path.length)}` : bare;
 }
 
 function printed(value: number, unit: Unit, signed: boolean): string {

@@ -45,7 +45,8 @@ function Lfo({ shape }: { readonly shape: 'sine' | 'triangle' | 'square' }) {
       )}
       <span class="swing">
         <span>
-          <span class="name">from</span> <CircuitValue path="control.fromV" label="Control voltage at one end of the swing" short="From" />
+          <span class="name from">from</span>{' '}
+          <CircuitValue path="control.fromV" label="Control voltage at one end of the swing" short="From" />
         </span>
         <span>
           <span class="name">to</span> <CircuitValue path="control.toV" label="Control voltage at the other end of the swing" short="To" />

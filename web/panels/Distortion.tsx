@@ -1,6 +1,6 @@
 import type { Signal } from '@preact/signals';
 import { parseQuantity } from '../../model/design/values.ts';
-import { decimals, percentText, signedPercentText, valueVolts } from '../draw/words.ts';
+import { decimals, gateVolts, percentText, signedPercentText } from '../draw/words.ts';
 import type { Bench } from '../state/bench.ts';
 import { useBench } from './BenchContext.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
@@ -27,7 +27,7 @@ export function Distortion() {
         label="THD now"
         value={reading && percentText(reading.thdFundamental)}
         unit={PERCENT}
-        meaning={reading ? `gate at ${valueVolts(reading.vgsV)}` : why}
+        meaning={reading ? `gate at ${gateVolts(reading.vgsV)}` : why}
       />
       <Worst worst={bench.worst.value} limit={limit} />
       <LiveReading

@@ -30,7 +30,7 @@ export function Equation() {
       <p class="aside">
         {kind === 'none' ? (
           <>
-            No feedback reaches the gate. Feed it back through <FeedbackChoice />.
+            Nothing of the drain reaches the gate. Feedback: <FeedbackChoice />.
           </>
         ) : (
           <>

@@ -1,7 +1,8 @@
-import { feedbackFraction } from '../../model/design/feedback.ts';
+import { restControlV } from '../../model/control/range.ts';
+import { feedbackFraction, restGateFraction } from '../../model/design/feedback.ts';
 import { type FeedbackPlot, leastWords, plotFeedback } from '../draw/feedbackPlot.ts';
 import { toPixel } from '../draw/scale.ts';
-import { percentText, valueVolts } from '../draw/words.ts';
+import { gateVolts, percentText } from '../draw/words.ts';
 import { useBench, usePlaying, useVariant } from './BenchContext.ts';
 import { FeedbackPointer } from './FeedbackPointer.tsx';
 import { Figure } from './parts/Figure.tsx';
@@ -13,8 +14,8 @@ export function FeedbackFigure() {
   const bench = useBench();
   const { ref, size } = useSheetSize<HTMLDivElement>();
   const curve = bench.feedbackCurve.value;
-  const read = bench.reading.value;
-  const gate = read !== null && 'vgsV' in read ? `, gate at ${valueVolts(read.vgsV)}` : '';
+  const { cell, control } = useVariant();
+  const restV = restControlV(control) * restGateFraction(cell);
   const plot = size && curve && curve.length > 1 ? plotFeedback(curve, size.width, size.height) : null;
   return (
     <Figure
@@ -22,7 +23,7 @@ export function FeedbackFigure() {
       className="feedback-figure"
       caption={
         <>
-          Distortion against <i>k</i> (drag it){gate}.
+          Distortion against <i>k</i> (drag it), gate resting at {gateVolts(restV)}. Point: now.
         </>
       }
     >
@@ -37,9 +38,11 @@ export function FeedbackFigure() {
 
 function Curves({ plot }: { readonly plot: FeedbackPlot }) {
   const { area, least, h2Label, h3Label } = plot;
+  const pointer = toPixel(plot.x, feedbackFraction(useVariant().cell));
+  const xTicks = plot.xTicks.map((tick) => (Math.abs(tick.at - pointer) < 24 ? { ...tick, words: null } : tick));
   return (
     <svg viewBox={`0 0 ${area.width} ${area.height}`} role="img" aria-label={`Distortion against k: ${leastWords(least)}`}>
-      <PlotFrame area={area} xTicks={plot.xTicks} yTicks={plot.yTicks} under={3} />
+      <PlotFrame area={area} xTicks={xTicks} yTicks={plot.yTicks} under={3} />
       <clipPath id="feedback-clip">
         <rect x={area.left} y={area.top} width={area.right - area.left} height={area.bottom - area.top} />
       </clipPath>
@@ -87,16 +90,12 @@ function Present({ plot }: { readonly plot: FeedbackPlot }) {
   const height = Math.min(area.bottom, Math.max(area.top, toPixel(y, read.thdFundamental)));
   const words = `THD ${percentText(read.thdFundamental)}\u2009%`;
   const toLeft = x > area.right - 100;
+  const labelY = height - 6 < area.top + 10 ? height + 18 : Math.min(height - 6, area.bottom - 24);
   return (
     <g>
       <path class="now-line thin" d={`M${x} ${height}V${area.bottom}`} />
       <circle class={playing ? 'present' : 'present hollow'} cx={x} cy={height} r={4.5} />
-      <text
-        class="note-text halo now-text"
-        x={toLeft ? x - 10 : x + 10}
-        y={height - 6 < area.top + 10 ? height + 18 : height - 6}
-        text-anchor={toLeft ? 'end' : 'start'}
-      >
+      <text class="note-text halo now-text" x={toLeft ? x - 10 : x + 10} y={labelY} text-anchor={toLeft ? 'end' : 'start'}>
         {words}
       </text>
     </g>

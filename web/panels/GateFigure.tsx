@@ -54,7 +54,7 @@ function Drawn({ plot, period, gateOffV }: DrawnProps) {
       <text
         class="note-text halo"
         x={labelLeft ? area.left + 7 : area.right - 7}
-        y={gateOffV < 0 ? offY - 6 : offY + 14}
+        y={plot.labelAbove ? offY - 6 : offY + 13}
         text-anchor={labelLeft ? 'start' : 'end'}
       >
         <tspan class="italic">V</tspan>
@@ -76,7 +76,7 @@ function Drawn({ plot, period, gateOffV }: DrawnProps) {
 
 /** How far the deepest end of the swing lies past VGS(off). */
 function pastWords(pastV: number): string {
-  return pastV > 0 ? `at most ${voltsText(pastV)} past off` : `${voltsText(-pastV)} short of off`;
+  return pastV > 0 ? `past off by ${voltsText(pastV)} at its deepest` : `${voltsText(-pastV)} short of off`;
 }
 
 function Strip({ plot }: { readonly plot: GatePlot }) {
@@ -113,5 +113,5 @@ function Present({ plot, period }: { readonly plot: GatePlot; readonly period: G
       point.current.setAttribute('cy', String(height));
     });
   }, [bench]);
-  return <circle ref={point} class={playing ? 'present' : 'present hollow'} cx={-20} cy={-20} r={4.5} />;
+  return <circle ref={point} class={playing ? 'present' : 'present hollow'} cx={plot.start.x} cy={plot.start.y} r={4.5} />;
 }

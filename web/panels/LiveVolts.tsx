@@ -1,4 +1,4 @@
-import { voltsText } from '../draw/words.ts';
+import { gateVolts, voltsText } from '../draw/words.ts';
 import type { LiveLevels } from '../state/bench.ts';
 import { useBenchView } from './BenchContext.ts';
 import { Sym } from './parts/Symbol.tsx';
@@ -21,7 +21,7 @@ export function LiveVolts({ which, name, symbol = null }: LiveVoltsProps) {
       {name !== undefined && <span class="name">{name} </span>}
       {symbol !== null && <Sym of="V" sub={symbol} />}
       {symbol !== null && ' '}
-      {voltsText(volts)}
+      {which === 'gateSourceV' ? gateVolts(volts) : voltsText(volts)}
     </span>
   );
 }

@@ -4,6 +4,7 @@ import { useBench, useVariant } from './BenchContext.ts';
 import { Figure } from './parts/Figure.tsx';
 import { rem, useSheetSize } from './parts/useSheetSize.ts';
 import { leavesOhmic } from './readingWords.ts';
+import { useHeldLimit } from './useHeldLimit.ts';
 import { SchematicSymbols } from './SchematicSymbols.tsx';
 import { schematicValues } from './SchematicValues.tsx';
 
@@ -15,8 +16,8 @@ export function Schematic({ form }: { readonly form: Form }) {
   const fitted = fittedIn(variant);
   const drawing = size && drawSchematic(fitted, size.width, form);
   const read = bench.reading.value;
-  const leaving = read !== null && 'regions' in read ? leavesOhmic(read.regions) : null;
-  const limitWords = leaving && `${leaving.words} ${(100 * leaving.share).toFixed(0)} % of the tone`;
+  const leaving = useHeldLimit(read !== null && 'regions' in read ? leavesOhmic(read.regions) : null, performance.now());
+  const limitWords = leaving && `${leaving.words} up to\n${Math.max(1, Math.round(100 * leaving.share))}\u2009% of the tone`;
   const values = schematicValues(fitted, form, limitWords);
   return (
     <Figure
@@ -24,7 +25,7 @@ export function Schematic({ form }: { readonly form: Form }) {
       className={`schematic ${form}`}
       caption="The cell, peak voltages in colour. Change a value where it stands: type 6k8, step with arrow keys, or drag."
     >
-      <div class="drawing" ref={ref} style={drawing ? { height: rem(drawing.height) } : {}}>
+      <div class="drawing" ref={ref} style={{ height: rem(drawing?.height ?? 346) }}>
         {drawing && (
           <>
             <svg viewBox={`0 0 ${drawing.width} ${drawing.height}`} role="img" aria-label={spoken(fitted.feedback)}>

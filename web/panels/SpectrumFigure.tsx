@@ -5,7 +5,7 @@ import { linearScale, logScale, toPixel } from '../draw/scale.ts';
 import { createSpectrumReader } from '../draw/spectrumSource.ts';
 import { drawSpectrum } from '../draw/spectrumCanvas.ts';
 import { decimals } from '../draw/words.ts';
-import { useBench, usePlaying } from './BenchContext.ts';
+import { useBench } from './BenchContext.ts';
 import { Figure } from './parts/Figure.tsx';
 import { PlotFrame } from './parts/PlotFrame.tsx';
 import { useSheetSize } from './parts/useSheetSize.ts';
@@ -19,13 +19,13 @@ const EVERY_MS = 66;
 /** Fig. 4: the spectrum of what goes in and of what comes out. */
 export function SpectrumFigure() {
   const { ref, size } = useSheetSize<HTMLDivElement>();
-  const playing = usePlaying();
+  const silent = useBench().sound.value === 'idle';
   return (
     <Figure number={4} className="spectrum-figure" caption="Spectrum, in (grey) and out; 0 dB is a sine at full scale.">
       <div class="plot" ref={ref}>
         {size && <Frame {...size} />}
         {size && <Traces key={`${size.width} ${size.height}`} {...size} />}
-        {!playing && <p class="aside plot-word">no sound yet</p>}
+        {silent && <p class="aside plot-word">no sound yet</p>}
       </div>
     </Figure>
   );
@@ -75,9 +75,10 @@ function Traces({ width, height }: { readonly width: number; readonly height: nu
     });
     const scheme = matchMedia('(prefers-color-scheme: dark)');
     scheme.addEventListener('change', painter.dirty);
-    painter.dirty();
+    const unsubscribeSound = bench.sound.subscribe(painter.dirty);
     return () => {
       unsubscribe();
+      unsubscribeSound();
       scheme.removeEventListener('change', painter.dirty);
       painter.stop();
     };

@@ -34,13 +34,18 @@ function row(
 }
 
 function signalRows(reading: ToneReading): Row[] {
-  const dc = splitQuantity(reading.dcV - reading.restDcV, 'V', 2, { signed: true });
-  const rest = splitQuantity(reading.restDcV, 'V', 2, { signed: true });
+  const dc = smallVolts(reading.dcV - reading.restDcV);
+  const rest = smallVolts(reading.restDcV);
   return [
     row('Gain of the cell, input to drain', 'Gain', ['G'], signedDecimals(reading.gainDb, 1), 'dB'),
     row('DC at the drain, at rest', 'DC at rest', null, rest.number, rest.unit),
     row('DC that the tone adds', 'DC added', null, dc.number, dc.unit),
   ];
+}
+
+/** Under a tenth of a microvolt nobody asks. */
+function smallVolts(volts: number): { number: string; unit: string } {
+  return Math.abs(volts) < 1e-7 ? { number: '0.0', unit: 'μV' } : splitQuantity(volts, 'V', 2, { signed: true });
 }
 
 function channelRow(reading: ToneReading): Row {

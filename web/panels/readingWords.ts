@@ -8,11 +8,13 @@ export function signedHarmonic(reading: ToneReading, n: number): number | null {
   return (sign * harmonic.amplitudeV) / reading.fundamentalV;
 }
 
-/** Which region the shadow tone leaves the ohmic one for, in words with the share of the period; null while it stays ohmic. */
+/**
+ * Where the shadow tone drives the channel past its limits, in words with the share of the period; null while it does not. Being cut off is no
+ * limit: that is how a cell turns the sound on.
+ */
 export function leavesOhmic(regions: ToneReading['regions']): { words: string; share: number } | null {
   const found = [
     { words: 'saturates for', share: regions.saturated },
-    { words: 'is cut off for', share: regions.cutoff },
     { words: 'gate conducts for', share: regions.gateOn },
   ];
   const most = found.reduce((best, each) => (each.share > best.share ? each : best));

@@ -110,11 +110,17 @@ function Steps({
           onClick={() => step(direction)}
         >
           <span class="key">{direction === 1 ? '↑' : '↓'}</span>
-          {format(stepValue(value, stepping, direction))}
+          {withoutUnit(format(stepValue(value, stepping, direction)), format(value))}
         </button>
       ))}
     </>
   );
+}
+
+/** The number alone where the unit is the one that stands beside it already. */
+function withoutUnit(printed: string, beside: string): string {
+  const [number, unit] = printed.split('\u2009');
+  return unit === beside.split('\u2009')[1] ? number : printed;
 }
 
 /** What the text means, or the sentence that says why it means nothing. */

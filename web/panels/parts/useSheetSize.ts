@@ -1,5 +1,8 @@
 import { useLayoutEffect, useRef, useState } from 'preact/hooks';
 
+/** Anything smaller is not laid out yet. */
+const LEAST = 60;
+
 /** Size of an element in sheet pixels (1/16 rem), watched; null until it has been measured. A drawing made at this size never scales its text. */
 export function useSheetSize<Element extends HTMLElement>() {
   const ref = useRef<Element>(null);
@@ -11,6 +14,7 @@ export function useSheetSize<Element extends HTMLElement>() {
       const { width, height } = element.getBoundingClientRect();
       const scale = 16 / rootPixels();
       const next = { width: Math.floor(width * scale), height: Math.floor(height * scale) };
+      if (next.width < LEAST || next.height < LEAST) return;
       setSize((before) => (before?.width === next.width && before.height === next.height ? before : next));
     };
     const observer = new ResizeObserver(measure);
