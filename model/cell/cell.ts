@@ -2,11 +2,14 @@
  * A gain cell that runs: its numbers reduced for one step length, its state, and the kernel of its shape.
  * `compileCell` checks and may throw; `createCell` allocates; everything after that does neither.
  */
-import type { Device } from '../design/types.ts';
-import { lawConstants } from '../device/law.ts';
+import type { Device, Law } from '../design/types.ts';
+import { type LawConstants, lawConstants } from '../device/law.ts';
+import { smoothTable, TERMS } from '../device/table.ts';
 import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
 import type { Circuit } from './circuit.ts';
 import * as L from './kernels/layout.ts';
+import { GRADUAL_KERNELS } from './kernels/gradual.ts';
+import { SMOOTH_KERNELS } from './kernels/smooth.ts';
 import { SQUARE_KERNELS } from './kernels/square.ts';
 import { factor, solve } from './linear.ts';
 import { DRIVES, GATE_DRAIN, GATE_SOURCE, type Plan, planCircuit } from './plan.ts';
@@ -17,16 +20,32 @@ const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
 /** Below this many nVT a junction carries its reverse current and no more: e^−10 of it is left out, under 1 aA for 10 fA. */
 const OFF_BELOW = -10;
 
-const BETA = 0;
+const KERNELS = { square: SQUARE_KERNELS, gradual: GRADUAL_KERNELS, smooth: SMOOTH_KERNELS };
+
+/** The smooth law's table reaches this far past VGS = 0; beyond it, and beyond the longest table, the law is evaluated directly. */
+const TABLE_BEYOND_V = 1.5;
+const LONGEST_TABLE_Z = 400;
+
+/** The device's movable values, after the elements'. */
+const SCALE = 0;
 const GATE_OFF_V = 1;
 const REVERSE_A = 2;
 const NVT_V = 3;
-export const DEVICE_VALUES = 4;
+const LAMBDA = 4;
+/** W of the gradual channel, T of the smooth law, V. */
+const WIDTH_V = 5;
+export const DEVICE_VALUES = 6;
 
 /** Plain numbers, structured-cloneable. `values` are the elements' movable values, then the device's. */
 export interface CellNumbers {
+  /** Equal for two cells that differ in movable values only. */
+  readonly shape: string;
   readonly plan: Plan;
   readonly polarity: 1 | -1;
+  readonly law: Law;
+  readonly exponent: number;
+  /** Of the smooth law; empty for the others. */
+  readonly table: Float64Array;
   readonly values: Float64Array;
 }
 
@@ -55,21 +74,34 @@ interface RestMemory {
 
 /** Numbers of a circuit with its device at `tempC`. Throws a RangeError that names what cannot be computed. */
 export function compileCell(circuit: Circuit, device: Device, tempC: number): CellNumbers {
-  if (device.law !== 'square') throw new RangeError(`device.law is ${device.law}; the engine computes square so far`);
-  if (device.lambdaPerV !== 0) throw new RangeError(`device.lambdaPerV is ${device.lambdaPerV}; the engine computes 0 so far`);
   const plan = planCircuit(circuit);
-  if (plan.states.length >= SQUARE_KERNELS.length) {
-    throw new RangeError(`the circuit has ${plan.states.length} independent capacitors; expected at most ${SQUARE_KERNELS.length - 1}`);
+  if (plan.states.length >= KERNELS.square.length) {
+    throw new RangeError(`the circuit has ${plan.states.length} independent capacitors; expected at most ${KERNELS.square.length - 1}`);
   }
   const law = lawConstants(device, tempC);
   const { junction } = atTemperature(device, tempC).device;
   const values = new Float64Array(plan.values.length + DEVICE_VALUES);
   values.set(plan.values);
-  values[plan.values.length + BETA] = law.scale;
+  values[plan.values.length + SCALE] = law.scale;
   values[plan.values.length + GATE_OFF_V] = law.gateOffV;
   values[plan.values.length + REVERSE_A] = junction.reverseA;
   values[plan.values.length + NVT_V] = junction.ideality * VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
-  return { plan, polarity: device.channel === 'n' ? 1 : -1, values };
+  values[plan.values.length + LAMBDA] = device.lambdaPerV;
+  values[plan.values.length + WIDTH_V] = law.law === 'smooth' ? law.tailV : law.depletionV;
+  return {
+    shape: [device.channel, law.law, law.law === 'smooth' ? law.exponent : '', plan.shape].join(' '),
+    plan,
+    polarity: device.channel === 'n' ? 1 : -1,
+    law: law.law,
+    exponent: law.exponent,
+    table: tableOf(law),
+    values,
+  };
+}
+
+function tableOf(law: LawConstants): Float64Array {
+  if (law.law !== 'smooth') return new Float64Array(0);
+  return smoothTable(law.exponent, Math.min(LONGEST_TABLE_Z, (TABLE_BEYOND_V - law.gateOffV) / law.tailV));
 }
 
 /** The same numbers with every capacitor advanced by the trapezoidal rule: second order throughout, for smooth steady signals. */
@@ -117,7 +149,8 @@ export function loadValues(cell: Cell, values: Float64Array): boolean {
 
 /** Advances over the samples `from` to `to` of `signal`, V at the step rate: the audio in, the output node in its place. `control` in V. */
 export function advanceCell(cell: Cell, signal: Float64Array, control: Float64Array, from: number, to: number): void {
-  SQUARE_KERNELS[cell.stateCount](cell.coefficients, cell.state, signal, control, signal, from, to);
+  const { law, table } = cell.numbers;
+  KERNELS[law][cell.stateCount](cell.coefficients, table, cell.state, signal, control, signal, from, to);
 }
 
 /** Gate-source voltage of the last sample, V, with the sign of the part's channel. */
@@ -187,17 +220,25 @@ function packJunction(c: Float64Array, at: number, newS: number, newD: number, o
 
 function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: number): void {
   const from = cell.numbers.plan.values.length;
-  const beta = cell.values[from + BETA];
+  const { law, exponent, table } = cell.numbers;
+  const scale = cell.values[from + SCALE];
   const nVt = cell.values[from + NVT_V];
   const reverseA = cell.values[from + REVERSE_A];
-  c[at + L.BETA] = beta;
-  c[at + L.BENT] = beta * (aI - bI) * (aI + bI);
-  c[at + L.FALL] = -2 * beta * aI;
-  c[at + L.RISE] = 2 * beta * bI;
+  const widthV = cell.values[from + WIDTH_V];
+  c[at + L.LAW] = L.LAW_NUMBER[law];
   c[at + L.GATE_OFF_V] = gateOffV(cell);
   c[at + L.ON_V] = reverseA > 0 ? OFF_BELOW * nVt - gateOffV(cell) : Number.POSITIVE_INFINITY;
   c[at + L.REVERSE_A] = reverseA;
   c[at + L.INVERSE_NVT] = 1 / nVt;
+  c[at + L.LAMBDA] = cell.values[from + LAMBDA];
+  c[at + L.SCALE] = law === 'gradual' ? (scale * widthV) / 3 : scale;
+  c[at + L.INVERSE_WIDTH] = 1 / widthV;
+  c[at + L.SLOPE] = law === 'gradual' ? scale : scale / widthV;
+  c[at + L.BENT] = scale * (aI - bI) * (aI + bI);
+  c[at + L.FALL] = -2 * scale * aI;
+  c[at + L.RISE] = 2 * scale * bI;
+  c[at + L.PIECES] = table.length / TERMS;
+  c[at + L.EXPONENT] = exponent;
 }
 
 /**
@@ -217,7 +258,8 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   packRest(cell);
   rest.audio[0] = audioV;
   rest.control[0] = controlV;
-  SQUARE_KERNELS[0](rest.coefficients, rest.state, rest.audio, rest.control, rest.output, 0, 1);
+  const { law, table } = cell.numbers;
+  KERNELS[law][0](rest.coefficients, table, rest.state, rest.audio, rest.control, rest.output, 0, 1);
   const { polarity } = cell.numbers;
   const reverseA = cell.values[cell.numbers.plan.values.length + REVERSE_A];
   const channelA = rest.state[L.CHANNEL_A];
@@ -228,7 +270,8 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
     state[r] = rest.columns[at] * audioV + rest.columns[at + 1] * controlV;
     state[r] += rest.columns[at + GATE_SOURCE] * gateSourceA + rest.columns[at + GATE_DRAIN] * gateDrainA;
   }
-  for (let slot = 0; slot < L.FAULTS; slot++) state[n + slot] = rest.state[slot];
+  for (let slot = 0; slot < L.FALLBACKS; slot++) state[n + slot] = rest.state[slot];
+  state[n + L.EARLIER_A] = channelA;
   state[n + L.OLD_AUDIO] = audioV;
   state[n + L.OLD_CONTROL] = controlV;
   return rest.output[0];

@@ -41,13 +41,7 @@ export function compileChain(
   const variant = variantAt(design, variantIndex);
   const oscillator = compileOscillator(variant.control, sampleRateHz * design.oversampling);
   const cells = Array.from({ length: channels }, (_, channel) => cellNumbers(design, variantIndex, channel));
-  const shape = [
-    sampleRateHz,
-    design.oversampling,
-    filters,
-    oscillator.shape,
-    ...cells.map((cell) => `${cell.polarity} ${cell.plan.shape}`),
-  ].join(' | ');
+  const shape = [sampleRateHz, design.oversampling, filters, oscillator.shape, ...cells.map((cell) => cell.shape)].join(' | ');
   return {
     shape,
     sampleRateHz,

@@ -4,17 +4,17 @@
  * Law      ID = F(VGS) − F(VGD), with the overdrive v = VG? − VGS(off) of each end:
  *          square    F = β·max(v, 0)²                                     β = IDSS/VGS(off)²
  *          gradual   F = −G0·(u − ⅔·u^1.5/√W), u = clip(W − v, 0, W)       W = barrier − VGS(off); linear for v > W
- *          smooth    F = β·[T·ln(1 + exp(v/T))]^Q                          T the tail's width, Q the exponent
- *          each with β or G0 set so that ID = IDSS at VGS = 0 in saturation
+ *          smooth    F = B·[ln(1 + exp(v/T))]^Q                            T the tail's width, Q the exponent
+ *          each with β, G0 or B set so that ID = IDSS at VGS = 0 in saturation
  * Valid    any overdrive; F is continuous, with a continuous first derivative, and never falls
  * Source   square: Shichman & Hodges, IEEE JSSC SC-3 (1968) 285; gradual: Shockley, Proc. IRE 40 (1952) 1365;
  *          smooth: after Parker & Skellern, IEEE MTT 45 (1997) 1563 (all from memory)
  */
 import type { Device, Law } from '../design/types.ts';
-import { exp, log, power } from './math.ts';
+import { smoothShape, smoothSlope } from './table.ts';
 import { atTemperature } from './temperature.ts';
 
-/** One law with its constants, in the n-channel frame. `scale` is β (A/V² or A/V^Q) or G0 (S). */
+/** One law with its constants, in the n-channel frame. `scale` is β (A/V²), G0 (S) or B (A). */
 export interface LawConstants {
   readonly law: Law;
   readonly scale: number;
@@ -47,7 +47,7 @@ export function channelTerm(constants: LawConstants, v: number): number {
     if (u <= 0) return -scale * u;
     return -scale * u * (1 - (2 / 3) * Math.sqrt(u / w));
   }
-  return scale * power(softplus(v, constants.tailV), constants.exponent);
+  return scale * smoothShape(v / constants.tailV, constants.exponent);
 }
 
 /** dF/dv, S, at the overdrive `v`. */
@@ -59,18 +59,7 @@ export function channelSlope(constants: LawConstants, v: number): number {
     if (v <= 0) return 0;
     return v >= w ? scale : scale * (1 - Math.sqrt((w - v) / w));
   }
-  const { tailV, exponent } = constants;
-  const e = exp(-Math.abs(v) / tailV);
-  const logistic = v >= 0 ? 1 / (1 + e) : e / (1 + e);
-  return scale * exponent * power(softplus(v, tailV), exponent - 1) * logistic;
-}
-
-/** T·ln(1 + exp(v/T)), without overflow or cancellation. */
-function softplus(v: number, tailV: number): number {
-  const e = exp(-Math.abs(v) / tailV);
-  const u = 1 + e;
-  const logOnePlus = u === 1 ? e : (log(u) * e) / (u - 1);
-  return Math.max(v, 0) + tailV * logOnePlus;
+  return (scale / constants.tailV) * smoothSlope(v / constants.tailV, constants.exponent);
 }
 
 /** Which region the channel is in at the two overdrives (gate-source and gate-drain less VGS(off)), V. They exclude one another. */

@@ -44,7 +44,11 @@ export const REAL_CELL: Cell = {
   feedback: { kind: 'resistor', drainOhm: 4.7e5, blockingF: 1e-7 },
 };
 
-export function variantOf(cell: Partial<Cell> = {}, device: Partial<Device> = {}, control: Control = { source: 'fixed', controlV: -1.2 }): Variant {
+export function variantOf(
+  cell: Partial<Cell> = {},
+  device: Partial<Device> = {},
+  control: Control = { source: 'fixed', controlV: -1.2 },
+): Variant {
   return { name: 'A', device: { ...CELL_A_DEVICE, ...device }, cell: { ...CELL_A, ...cell }, control, output: { gainDb: 0 } };
 }
 

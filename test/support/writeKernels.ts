@@ -1,5 +1,7 @@
-/** Writes the kernels out by shape: `npm run kernels`. A test fails when the written file is out of date. */
+/** Writes the kernels out by law and shape: `npm run kernels`. A test fails when a written file is out of date. */
 import { writeFileSync } from 'node:fs';
 import { kernelModule } from '../../model/cell/kernels/source.ts';
 
-writeFileSync(new URL('../../model/cell/kernels/square.ts', import.meta.url), kernelModule());
+for (const law of ['square', 'gradual', 'smooth'] as const) {
+  writeFileSync(new URL(`../../model/cell/kernels/${law}.ts`, import.meta.url), kernelModule(law));
+}

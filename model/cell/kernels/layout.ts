@@ -21,18 +21,30 @@ export const OLD_S = 2;
 export const OLD_D = 3;
 export const JUNCTION_WIDTH = 4;
 
-/** Device constants after the rows. */
-export const BETA = 0;
-/** β(α² − γ²), 2βα and 2βγ, with α and γ the fall and rise of the two overdrives for each ampere. */
-export const BENT = 1;
-export const FALL = 2;
-export const RISE = 3;
-/** −VGS(off), V: an overdrive above ON_V means that a junction's current is more than its reverse current. */
-export const GATE_OFF_V = 4;
-export const ON_V = 5;
-export const REVERSE_A = 6;
-export const INVERSE_NVT = 7;
-export const DEVICE_WIDTH = 8;
+/** Device constants after the rows: first the law and what is common to all laws. */
+export const LAW = 0;
+export const GATE_OFF_V = 1;
+/** An overdrive above this means that a junction's current is more than its reverse current, V. */
+export const ON_V = 2;
+export const REVERSE_A = 3;
+export const INVERSE_NVT = 4;
+/** 1/V, on what lies beyond the knee. */
+export const LAMBDA = 5;
+/** β (A/V²), G0·W/3 (A), or β·T^Q (A). */
+export const SCALE = 6;
+/** Gradual: 1/W, and the slope G0, S. Smooth: 1/T, and the slope unit β·T^Q/T, S. */
+export const INVERSE_WIDTH = 7;
+export const SLOPE = 8;
+/** Smooth: pieces in the table, and the exponent Q. */
+export const PIECES = 12;
+export const EXPONENT = 13;
+/** Square law: β(α² − γ²), 2βα and 2βγ, with α and γ the fall and rise of the two overdrives for each ampere. */
+export const BENT = 9;
+export const FALL = 10;
+export const RISE = 11;
+export const DEVICE_WIDTH = 14;
+
+export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 
 export function coefficientLayout(stateCount: number) {
   const { width } = rowLayout(stateCount);
@@ -52,6 +64,8 @@ export const JUNCTION_D = 4;
 /** Overdrives of the two ends, V. */
 export const OVERDRIVE_S = 5;
 export const OVERDRIVE_D = 6;
-/** Samples for which no solution was found (kept at zero by the monotonic fallback). */
-export const FAULTS = 7;
-export const STATE_SLOTS = 8;
+/** Channel current of the sample before, for the first guess, A. */
+export const EARLIER_A = 7;
+/** Samples that Newton's method left to the bisection behind it. */
+export const FALLBACKS = 8;
+export const STATE_SLOTS = 9;

@@ -1,13 +1,15 @@
 /**
- * Square-law kernels, one for each number of states: written from source.ts by `npm run kernels`, where the method is explained. Not to be edited.
+ * Kernels of the square law, one for each number of states: written from source.ts by `npm run kernels`, where the method is explained. Not to be edited.
  *
- * Each advances a cell over the samples `from` to `to`: `c` coefficients and `s` state as in layout.ts, `audio` and `control` in V, `output` in V.
+ * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table and `s` state as in layout.ts, `audio` and
+ * `control` in V, `output` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
-import { conduct } from '../ports.ts';
+import { bent } from './channel.ts';
+import { conduct } from './ports.ts';
 
-function square0(c: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square0(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -20,8 +22,13 @@ function square0(c: Float64Array, s: Float64Array, audio: Float64Array, control:
   const y1 = c[9];
   const y2 = c[10];
   const y3 = c[11];
-  const beta = c[24], bent = c[25], fall = c[26], rise = c[27], on = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], vs = 0, vd = 0;
+  const on = c[26];
+  const lambda = c[29];
+  const scale = c[30];
+  const bent_ = c[33];
+  const fall = c[34];
+  const rise = c[35];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = 0, vd = 0;
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * u + a1 * v + a2;
@@ -29,20 +36,21 @@ function square0(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     let I = 0, S = 0, D = 0;
     if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
-      const w = beta * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent * w));
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
       if (!(a + a3 * I >= 0 && b + b3 * I >= 0)) {
         if (a > b) {
-          I = 2 * beta * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
         } else {
-          I = -2 * beta * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
+        if (lambda != 0) I = bent(c, t, 24, 3, 7, a, b, I);
       }
     }
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, 24, 3, 7, 12, s, 0, a, b, I);
+      conduct(c, t, 24, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     let y = 0;
@@ -50,13 +58,13 @@ function square0(c: Float64Array, s: Float64Array, audio: Float64Array, control:
       y = c[20] * S + c[21] * D;
     }
     output[i] = y + y0 * u + y1 * v + y2 + y3 * I;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function square1(c: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square1(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -86,10 +94,15 @@ function square1(c: Float64Array, s: Float64Array, audio: Float64Array, control:
   const y2 = c[26];
   const y6 = c[30];
   const y7 = c[31];
-  const beta = c[48], bent = c[49], fall = c[50], rise = c[51], on = c[53];
+  const on = c[50];
+  const lambda = c[53];
+  const scale = c[54];
+  const bent_ = c[57];
+  const fall = c[58];
+  const rise = c[59];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], vs = 0, vd = 0;
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = 0, vd = 0;
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * u + a2 * v + a3 * u0 + a4 * v0 + a5 * I0 + a6;
@@ -101,20 +114,21 @@ function square1(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     let I = 0, S = 0, D = 0;
     if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
-      const w = beta * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent * w));
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
       if (!(a + a7 * I >= 0 && b + b7 * I >= 0)) {
         if (a > b) {
-          I = 2 * beta * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
         } else {
-          I = -2 * beta * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
+        if (lambda != 0) I = bent(c, t, 48, 7, 15, a, b, I);
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, 48, 7, 15, 32, s, 1, a, b, I);
+      conduct(c, t, 48, 7, 15, 32, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     let z0 = n0_0 * x0 + n0_1 * u + n0_2 * v + n0_3 * u0 + n0_4 * v0 + n0_5 * I0 + n0_6 + n0_7 * I;
@@ -129,15 +143,15 @@ function square1(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     }
     output[i] = y + y0 * x0 + y1 * u + y2 * v + y6 + y7 * I;
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
-function square2(c: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square2(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -180,11 +194,16 @@ function square2(c: Float64Array, s: Float64Array, audio: Float64Array, control:
   const y3 = c[39];
   const y7 = c[43];
   const y8 = c[44];
-  const beta = c[65], bent = c[66], fall = c[67], rise = c[68], on = c[70];
+  const on = c[67];
+  const lambda = c[70];
+  const scale = c[71];
+  const bent_ = c[74];
+  const fall = c[75];
+  const rise = c[76];
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], vs = 0, vd = 0;
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = 0, vd = 0;
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * u + a3 * v + a4 * u0 + a5 * v0 + a6 * I0 + a7;
@@ -196,20 +215,21 @@ function square2(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     let I = 0, S = 0, D = 0;
     if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
-      const w = beta * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent * w));
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
       if (!(a + a8 * I >= 0 && b + b8 * I >= 0)) {
         if (a > b) {
-          I = 2 * beta * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
         } else {
-          I = -2 * beta * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
+        if (lambda != 0) I = bent(c, t, 65, 8, 17, a, b, I);
       }
     }
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, 65, 8, 17, 45, s, 2, a, b, I);
+      conduct(c, t, 65, 8, 17, 45, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * u + n0_3 * v + n0_4 * u0 + n0_5 * v0 + n0_6 * I0 + n0_7 + n0_8 * I;
@@ -228,16 +248,16 @@ function square2(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y7 + y8 * I;
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function square3(c: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square3(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -295,12 +315,17 @@ function square3(c: Float64Array, s: Float64Array, audio: Float64Array, control:
   const y4 = c[54];
   const y8 = c[58];
   const y9 = c[59];
-  const beta = c[84], bent = c[85], fall = c[86], rise = c[87], on = c[89];
+  const on = c[86];
+  const lambda = c[89];
+  const scale = c[90];
+  const bent_ = c[93];
+  const fall = c[94];
+  const rise = c[95];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], vs = 0, vd = 0;
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = 0, vd = 0;
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * u + a4 * v + a5 * u0 + a6 * v0 + a7 * I0 + a8;
@@ -312,20 +337,21 @@ function square3(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     let I = 0, S = 0, D = 0;
     if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
-      const w = beta * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent * w));
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
       if (!(a + a9 * I >= 0 && b + b9 * I >= 0)) {
         if (a > b) {
-          I = 2 * beta * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
         } else {
-          I = -2 * beta * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
+        if (lambda != 0) I = bent(c, t, 84, 9, 19, a, b, I);
       }
     }
     vs = a + a9 * I;
     vd = b + b9 * I;
     if (vs > on || vd > on) {
-      conduct(c, 84, 9, 19, 60, s, 3, a, b, I);
+      conduct(c, t, 84, 9, 19, 60, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * u + n0_4 * v + n0_5 * u0 + n0_6 * v0 + n0_7 * I0 + n0_8 + n0_9 * I;
@@ -348,17 +374,17 @@ function square3(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y8 + y9 * I;
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function square4(c: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square4(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -433,13 +459,18 @@ function square4(c: Float64Array, s: Float64Array, audio: Float64Array, control:
   const y5 = c[71];
   const y9 = c[75];
   const y10 = c[76];
-  const beta = c[105], bent = c[106], fall = c[107], rise = c[108], on = c[110];
+  const on = c[107];
+  const lambda = c[110];
+  const scale = c[111];
+  const bent_ = c[114];
+  const fall = c[115];
+  const rise = c[116];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], vs = 0, vd = 0;
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = 0, vd = 0;
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * u + a5 * v + a6 * u0 + a7 * v0 + a8 * I0 + a9;
@@ -451,20 +482,21 @@ function square4(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     let I = 0, S = 0, D = 0;
     if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
-      const w = beta * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent * w));
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
       if (!(a + a10 * I >= 0 && b + b10 * I >= 0)) {
         if (a > b) {
-          I = 2 * beta * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
         } else {
-          I = -2 * beta * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
+        if (lambda != 0) I = bent(c, t, 105, 10, 21, a, b, I);
       }
     }
     vs = a + a10 * I;
     vd = b + b10 * I;
     if (vs > on || vd > on) {
-      conduct(c, 105, 10, 21, 77, s, 4, a, b, I);
+      conduct(c, t, 105, 10, 21, 77, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * u + n0_5 * v + n0_6 * u0 + n0_7 * v0 + n0_8 * I0 + n0_9 + n0_10 * I;
@@ -491,16 +523,886 @@ function square4(c: Float64Array, s: Float64Array, audio: Float64Array, control:
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y9 + y10 * I;
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
+function square5(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const a8 = c[8];
+  const a9 = c[9];
+  const a10 = c[10];
+  const a11 = c[11];
+  const b0 = c[12];
+  const b1 = c[13];
+  const b2 = c[14];
+  const b3 = c[15];
+  const b4 = c[16];
+  const b5 = c[17];
+  const b6 = c[18];
+  const b7 = c[19];
+  const b8 = c[20];
+  const b9 = c[21];
+  const b10 = c[22];
+  const b11 = c[23];
+  const n0_0 = c[24];
+  const n0_1 = c[25];
+  const n0_2 = c[26];
+  const n0_3 = c[27];
+  const n0_4 = c[28];
+  const n0_5 = c[29];
+  const n0_6 = c[30];
+  const n0_7 = c[31];
+  const n0_8 = c[32];
+  const n0_9 = c[33];
+  const n0_10 = c[34];
+  const n0_11 = c[35];
+  const n1_0 = c[36];
+  const n1_1 = c[37];
+  const n1_2 = c[38];
+  const n1_3 = c[39];
+  const n1_4 = c[40];
+  const n1_5 = c[41];
+  const n1_6 = c[42];
+  const n1_7 = c[43];
+  const n1_8 = c[44];
+  const n1_9 = c[45];
+  const n1_10 = c[46];
+  const n1_11 = c[47];
+  const n2_0 = c[48];
+  const n2_1 = c[49];
+  const n2_2 = c[50];
+  const n2_3 = c[51];
+  const n2_4 = c[52];
+  const n2_5 = c[53];
+  const n2_6 = c[54];
+  const n2_7 = c[55];
+  const n2_8 = c[56];
+  const n2_9 = c[57];
+  const n2_10 = c[58];
+  const n2_11 = c[59];
+  const n3_0 = c[60];
+  const n3_1 = c[61];
+  const n3_2 = c[62];
+  const n3_3 = c[63];
+  const n3_4 = c[64];
+  const n3_5 = c[65];
+  const n3_6 = c[66];
+  const n3_7 = c[67];
+  const n3_8 = c[68];
+  const n3_9 = c[69];
+  const n3_10 = c[70];
+  const n3_11 = c[71];
+  const n4_0 = c[72];
+  const n4_1 = c[73];
+  const n4_2 = c[74];
+  const n4_3 = c[75];
+  const n4_4 = c[76];
+  const n4_5 = c[77];
+  const n4_6 = c[78];
+  const n4_7 = c[79];
+  const n4_8 = c[80];
+  const n4_9 = c[81];
+  const n4_10 = c[82];
+  const n4_11 = c[83];
+  const y0 = c[84];
+  const y1 = c[85];
+  const y2 = c[86];
+  const y3 = c[87];
+  const y4 = c[88];
+  const y5 = c[89];
+  const y6 = c[90];
+  const y10 = c[94];
+  const y11 = c[95];
+  const on = c[130];
+  const lambda = c[133];
+  const scale = c[134];
+  const bent_ = c[137];
+  const fall = c[138];
+  const rise = c[139];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let x4 = s[4];
+  let u0 = s[5], v0 = s[6];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = 0, vd = 0;
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * u + a6 * v + a7 * u0 + a8 * v0 + a9 * I0 + a10;
+    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * u + b6 * v + b7 * u0 + b8 * v0 + b9 * I0 + b10;
+    if (S0 != 0 || D0 != 0) {
+      a += c[98] * S0 + c[99] * D0;
+      b += c[102] * S0 + c[103] * D0;
+    }
+    let I = 0, S = 0, D = 0;
+    if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a11 * I >= 0 && b + b11 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) I = bent(c, t, 128, 11, 23, a, b, I);
+      }
+    }
+    vs = a + a11 * I;
+    vd = b + b11 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 128, 11, 23, 96, s, 5, a, b, I);
+      I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
+    }
+    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * u + n0_6 * v + n0_7 * u0 + n0_8 * v0 + n0_9 * I0 + n0_10 + n0_11 * I;
+    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * u + n1_6 * v + n1_7 * u0 + n1_8 * v0 + n1_9 * I0 + n1_10 + n1_11 * I;
+    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * u + n2_6 * v + n2_7 * u0 + n2_8 * v0 + n2_9 * I0 + n2_10 + n2_11 * I;
+    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * u + n3_6 * v + n3_7 * u0 + n3_8 * v0 + n3_9 * I0 + n3_10 + n3_11 * I;
+    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * u + n4_6 * v + n4_7 * u0 + n4_8 * v0 + n4_9 * I0 + n4_10 + n4_11 * I;
+    if (S0 != 0 || D0 != 0) {
+      z0 += c[106] * S0 + c[107] * D0;
+      z1 += c[110] * S0 + c[111] * D0;
+      z2 += c[114] * S0 + c[115] * D0;
+      z3 += c[118] * S0 + c[119] * D0;
+      z4 += c[122] * S0 + c[123] * D0;
+    }
+    x0 = z0;
+    x1 = z1;
+    x2 = z2;
+    x3 = z3;
+    x4 = z4;
+    let y = 0;
+    if (S != 0 || D != 0) {
+      x0 += c[104] * S + c[105] * D;
+      x1 += c[108] * S + c[109] * D;
+      x2 += c[112] * S + c[113] * D;
+      x3 += c[116] * S + c[117] * D;
+      x4 += c[120] * S + c[121] * D;
+      y = c[124] * S + c[125] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y10 + y11 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = x4;
+  s[5] = u0; s[6] = v0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  if (to > from) { s[10] = vs; s[11] = vd; }
+}
+
+function square6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const a8 = c[8];
+  const a9 = c[9];
+  const a10 = c[10];
+  const a11 = c[11];
+  const a12 = c[12];
+  const b0 = c[13];
+  const b1 = c[14];
+  const b2 = c[15];
+  const b3 = c[16];
+  const b4 = c[17];
+  const b5 = c[18];
+  const b6 = c[19];
+  const b7 = c[20];
+  const b8 = c[21];
+  const b9 = c[22];
+  const b10 = c[23];
+  const b11 = c[24];
+  const b12 = c[25];
+  const n0_0 = c[26];
+  const n0_1 = c[27];
+  const n0_2 = c[28];
+  const n0_3 = c[29];
+  const n0_4 = c[30];
+  const n0_5 = c[31];
+  const n0_6 = c[32];
+  const n0_7 = c[33];
+  const n0_8 = c[34];
+  const n0_9 = c[35];
+  const n0_10 = c[36];
+  const n0_11 = c[37];
+  const n0_12 = c[38];
+  const n1_0 = c[39];
+  const n1_1 = c[40];
+  const n1_2 = c[41];
+  const n1_3 = c[42];
+  const n1_4 = c[43];
+  const n1_5 = c[44];
+  const n1_6 = c[45];
+  const n1_7 = c[46];
+  const n1_8 = c[47];
+  const n1_9 = c[48];
+  const n1_10 = c[49];
+  const n1_11 = c[50];
+  const n1_12 = c[51];
+  const n2_0 = c[52];
+  const n2_1 = c[53];
+  const n2_2 = c[54];
+  const n2_3 = c[55];
+  const n2_4 = c[56];
+  const n2_5 = c[57];
+  const n2_6 = c[58];
+  const n2_7 = c[59];
+  const n2_8 = c[60];
+  const n2_9 = c[61];
+  const n2_10 = c[62];
+  const n2_11 = c[63];
+  const n2_12 = c[64];
+  const n3_0 = c[65];
+  const n3_1 = c[66];
+  const n3_2 = c[67];
+  const n3_3 = c[68];
+  const n3_4 = c[69];
+  const n3_5 = c[70];
+  const n3_6 = c[71];
+  const n3_7 = c[72];
+  const n3_8 = c[73];
+  const n3_9 = c[74];
+  const n3_10 = c[75];
+  const n3_11 = c[76];
+  const n3_12 = c[77];
+  const n4_0 = c[78];
+  const n4_1 = c[79];
+  const n4_2 = c[80];
+  const n4_3 = c[81];
+  const n4_4 = c[82];
+  const n4_5 = c[83];
+  const n4_6 = c[84];
+  const n4_7 = c[85];
+  const n4_8 = c[86];
+  const n4_9 = c[87];
+  const n4_10 = c[88];
+  const n4_11 = c[89];
+  const n4_12 = c[90];
+  const n5_0 = c[91];
+  const n5_1 = c[92];
+  const n5_2 = c[93];
+  const n5_3 = c[94];
+  const n5_4 = c[95];
+  const n5_5 = c[96];
+  const n5_6 = c[97];
+  const n5_7 = c[98];
+  const n5_8 = c[99];
+  const n5_9 = c[100];
+  const n5_10 = c[101];
+  const n5_11 = c[102];
+  const n5_12 = c[103];
+  const y0 = c[104];
+  const y1 = c[105];
+  const y2 = c[106];
+  const y3 = c[107];
+  const y4 = c[108];
+  const y5 = c[109];
+  const y6 = c[110];
+  const y7 = c[111];
+  const y11 = c[115];
+  const y12 = c[116];
+  const on = c[155];
+  const lambda = c[158];
+  const scale = c[159];
+  const bent_ = c[162];
+  const fall = c[163];
+  const rise = c[164];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let x4 = s[4];
+  let x5 = s[5];
+  let u0 = s[6], v0 = s[7];
+  let I0 = s[8], S0 = s[9], D0 = s[10], E0 = s[13], vs = 0, vd = 0;
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * u + a7 * v + a8 * u0 + a9 * v0 + a10 * I0 + a11;
+    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * x5 + b6 * u + b7 * v + b8 * u0 + b9 * v0 + b10 * I0 + b11;
+    if (S0 != 0 || D0 != 0) {
+      a += c[119] * S0 + c[120] * D0;
+      b += c[123] * S0 + c[124] * D0;
+    }
+    let I = 0, S = 0, D = 0;
+    if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a12 * I >= 0 && b + b12 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) I = bent(c, t, 153, 12, 25, a, b, I);
+      }
+    }
+    vs = a + a12 * I;
+    vd = b + b12 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 153, 12, 25, 117, s, 6, a, b, I);
+      I = s[8]; S = s[9]; D = s[10]; vs = s[11]; vd = s[12];
+    }
+    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * u + n0_7 * v + n0_8 * u0 + n0_9 * v0 + n0_10 * I0 + n0_11 + n0_12 * I;
+    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * u + n1_7 * v + n1_8 * u0 + n1_9 * v0 + n1_10 * I0 + n1_11 + n1_12 * I;
+    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * u + n2_7 * v + n2_8 * u0 + n2_9 * v0 + n2_10 * I0 + n2_11 + n2_12 * I;
+    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * x5 + n3_6 * u + n3_7 * v + n3_8 * u0 + n3_9 * v0 + n3_10 * I0 + n3_11 + n3_12 * I;
+    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * x5 + n4_6 * u + n4_7 * v + n4_8 * u0 + n4_9 * v0 + n4_10 * I0 + n4_11 + n4_12 * I;
+    let z5 = n5_0 * x0 + n5_1 * x1 + n5_2 * x2 + n5_3 * x3 + n5_4 * x4 + n5_5 * x5 + n5_6 * u + n5_7 * v + n5_8 * u0 + n5_9 * v0 + n5_10 * I0 + n5_11 + n5_12 * I;
+    if (S0 != 0 || D0 != 0) {
+      z0 += c[127] * S0 + c[128] * D0;
+      z1 += c[131] * S0 + c[132] * D0;
+      z2 += c[135] * S0 + c[136] * D0;
+      z3 += c[139] * S0 + c[140] * D0;
+      z4 += c[143] * S0 + c[144] * D0;
+      z5 += c[147] * S0 + c[148] * D0;
+    }
+    x0 = z0;
+    x1 = z1;
+    x2 = z2;
+    x3 = z3;
+    x4 = z4;
+    x5 = z5;
+    let y = 0;
+    if (S != 0 || D != 0) {
+      x0 += c[125] * S + c[126] * D;
+      x1 += c[129] * S + c[130] * D;
+      x2 += c[133] * S + c[134] * D;
+      x3 += c[137] * S + c[138] * D;
+      x4 += c[141] * S + c[142] * D;
+      x5 += c[145] * S + c[146] * D;
+      y = c[149] * S + c[150] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * u + y7 * v + y11 + y12 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = x4;
+  s[5] = x5;
+  s[6] = u0; s[7] = v0;
+  s[8] = I0; s[9] = S0; s[10] = D0; s[13] = E0;
+  if (to > from) { s[11] = vs; s[12] = vd; }
+}
+
+function square7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const a8 = c[8];
+  const a9 = c[9];
+  const a10 = c[10];
+  const a11 = c[11];
+  const a12 = c[12];
+  const a13 = c[13];
+  const b0 = c[14];
+  const b1 = c[15];
+  const b2 = c[16];
+  const b3 = c[17];
+  const b4 = c[18];
+  const b5 = c[19];
+  const b6 = c[20];
+  const b7 = c[21];
+  const b8 = c[22];
+  const b9 = c[23];
+  const b10 = c[24];
+  const b11 = c[25];
+  const b12 = c[26];
+  const b13 = c[27];
+  const n0_0 = c[28];
+  const n0_1 = c[29];
+  const n0_2 = c[30];
+  const n0_3 = c[31];
+  const n0_4 = c[32];
+  const n0_5 = c[33];
+  const n0_6 = c[34];
+  const n0_7 = c[35];
+  const n0_8 = c[36];
+  const n0_9 = c[37];
+  const n0_10 = c[38];
+  const n0_11 = c[39];
+  const n0_12 = c[40];
+  const n0_13 = c[41];
+  const n1_0 = c[42];
+  const n1_1 = c[43];
+  const n1_2 = c[44];
+  const n1_3 = c[45];
+  const n1_4 = c[46];
+  const n1_5 = c[47];
+  const n1_6 = c[48];
+  const n1_7 = c[49];
+  const n1_8 = c[50];
+  const n1_9 = c[51];
+  const n1_10 = c[52];
+  const n1_11 = c[53];
+  const n1_12 = c[54];
+  const n1_13 = c[55];
+  const n2_0 = c[56];
+  const n2_1 = c[57];
+  const n2_2 = c[58];
+  const n2_3 = c[59];
+  const n2_4 = c[60];
+  const n2_5 = c[61];
+  const n2_6 = c[62];
+  const n2_7 = c[63];
+  const n2_8 = c[64];
+  const n2_9 = c[65];
+  const n2_10 = c[66];
+  const n2_11 = c[67];
+  const n2_12 = c[68];
+  const n2_13 = c[69];
+  const n3_0 = c[70];
+  const n3_1 = c[71];
+  const n3_2 = c[72];
+  const n3_3 = c[73];
+  const n3_4 = c[74];
+  const n3_5 = c[75];
+  const n3_6 = c[76];
+  const n3_7 = c[77];
+  const n3_8 = c[78];
+  const n3_9 = c[79];
+  const n3_10 = c[80];
+  const n3_11 = c[81];
+  const n3_12 = c[82];
+  const n3_13 = c[83];
+  const n4_0 = c[84];
+  const n4_1 = c[85];
+  const n4_2 = c[86];
+  const n4_3 = c[87];
+  const n4_4 = c[88];
+  const n4_5 = c[89];
+  const n4_6 = c[90];
+  const n4_7 = c[91];
+  const n4_8 = c[92];
+  const n4_9 = c[93];
+  const n4_10 = c[94];
+  const n4_11 = c[95];
+  const n4_12 = c[96];
+  const n4_13 = c[97];
+  const n5_0 = c[98];
+  const n5_1 = c[99];
+  const n5_2 = c[100];
+  const n5_3 = c[101];
+  const n5_4 = c[102];
+  const n5_5 = c[103];
+  const n5_6 = c[104];
+  const n5_7 = c[105];
+  const n5_8 = c[106];
+  const n5_9 = c[107];
+  const n5_10 = c[108];
+  const n5_11 = c[109];
+  const n5_12 = c[110];
+  const n5_13 = c[111];
+  const n6_0 = c[112];
+  const n6_1 = c[113];
+  const n6_2 = c[114];
+  const n6_3 = c[115];
+  const n6_4 = c[116];
+  const n6_5 = c[117];
+  const n6_6 = c[118];
+  const n6_7 = c[119];
+  const n6_8 = c[120];
+  const n6_9 = c[121];
+  const n6_10 = c[122];
+  const n6_11 = c[123];
+  const n6_12 = c[124];
+  const n6_13 = c[125];
+  const y0 = c[126];
+  const y1 = c[127];
+  const y2 = c[128];
+  const y3 = c[129];
+  const y4 = c[130];
+  const y5 = c[131];
+  const y6 = c[132];
+  const y7 = c[133];
+  const y8 = c[134];
+  const y12 = c[138];
+  const y13 = c[139];
+  const on = c[182];
+  const lambda = c[185];
+  const scale = c[186];
+  const bent_ = c[189];
+  const fall = c[190];
+  const rise = c[191];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let x4 = s[4];
+  let x5 = s[5];
+  let x6 = s[6];
+  let u0 = s[7], v0 = s[8];
+  let I0 = s[9], S0 = s[10], D0 = s[11], E0 = s[14], vs = 0, vd = 0;
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * x6 + a7 * u + a8 * v + a9 * u0 + a10 * v0 + a11 * I0 + a12;
+    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * x5 + b6 * x6 + b7 * u + b8 * v + b9 * u0 + b10 * v0 + b11 * I0 + b12;
+    if (S0 != 0 || D0 != 0) {
+      a += c[142] * S0 + c[143] * D0;
+      b += c[146] * S0 + c[147] * D0;
+    }
+    let I = 0, S = 0, D = 0;
+    if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a13 * I >= 0 && b + b13 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) I = bent(c, t, 180, 13, 27, a, b, I);
+      }
+    }
+    vs = a + a13 * I;
+    vd = b + b13 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 180, 13, 27, 140, s, 7, a, b, I);
+      I = s[9]; S = s[10]; D = s[11]; vs = s[12]; vd = s[13];
+    }
+    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * x6 + n0_7 * u + n0_8 * v + n0_9 * u0 + n0_10 * v0 + n0_11 * I0 + n0_12 + n0_13 * I;
+    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * x6 + n1_7 * u + n1_8 * v + n1_9 * u0 + n1_10 * v0 + n1_11 * I0 + n1_12 + n1_13 * I;
+    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * x6 + n2_7 * u + n2_8 * v + n2_9 * u0 + n2_10 * v0 + n2_11 * I0 + n2_12 + n2_13 * I;
+    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * x5 + n3_6 * x6 + n3_7 * u + n3_8 * v + n3_9 * u0 + n3_10 * v0 + n3_11 * I0 + n3_12 + n3_13 * I;
+    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * x5 + n4_6 * x6 + n4_7 * u + n4_8 * v + n4_9 * u0 + n4_10 * v0 + n4_11 * I0 + n4_12 + n4_13 * I;
+    let z5 = n5_0 * x0 + n5_1 * x1 + n5_2 * x2 + n5_3 * x3 + n5_4 * x4 + n5_5 * x5 + n5_6 * x6 + n5_7 * u + n5_8 * v + n5_9 * u0 + n5_10 * v0 + n5_11 * I0 + n5_12 + n5_13 * I;
+    let z6 = n6_0 * x0 + n6_1 * x1 + n6_2 * x2 + n6_3 * x3 + n6_4 * x4 + n6_5 * x5 + n6_6 * x6 + n6_7 * u + n6_8 * v + n6_9 * u0 + n6_10 * v0 + n6_11 * I0 + n6_12 + n6_13 * I;
+    if (S0 != 0 || D0 != 0) {
+      z0 += c[150] * S0 + c[151] * D0;
+      z1 += c[154] * S0 + c[155] * D0;
+      z2 += c[158] * S0 + c[159] * D0;
+      z3 += c[162] * S0 + c[163] * D0;
+      z4 += c[166] * S0 + c[167] * D0;
+      z5 += c[170] * S0 + c[171] * D0;
+      z6 += c[174] * S0 + c[175] * D0;
+    }
+    x0 = z0;
+    x1 = z1;
+    x2 = z2;
+    x3 = z3;
+    x4 = z4;
+    x5 = z5;
+    x6 = z6;
+    let y = 0;
+    if (S != 0 || D != 0) {
+      x0 += c[148] * S + c[149] * D;
+      x1 += c[152] * S + c[153] * D;
+      x2 += c[156] * S + c[157] * D;
+      x3 += c[160] * S + c[161] * D;
+      x4 += c[164] * S + c[165] * D;
+      x5 += c[168] * S + c[169] * D;
+      x6 += c[172] * S + c[173] * D;
+      y = c[176] * S + c[177] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * x6 + y7 * u + y8 * v + y12 + y13 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = x4;
+  s[5] = x5;
+  s[6] = x6;
+  s[7] = u0; s[8] = v0;
+  s[9] = I0; s[10] = S0; s[11] = D0; s[14] = E0;
+  if (to > from) { s[12] = vs; s[13] = vd; }
+}
+
+function square8(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const a8 = c[8];
+  const a9 = c[9];
+  const a10 = c[10];
+  const a11 = c[11];
+  const a12 = c[12];
+  const a13 = c[13];
+  const a14 = c[14];
+  const b0 = c[15];
+  const b1 = c[16];
+  const b2 = c[17];
+  const b3 = c[18];
+  const b4 = c[19];
+  const b5 = c[20];
+  const b6 = c[21];
+  const b7 = c[22];
+  const b8 = c[23];
+  const b9 = c[24];
+  const b10 = c[25];
+  const b11 = c[26];
+  const b12 = c[27];
+  const b13 = c[28];
+  const b14 = c[29];
+  const n0_0 = c[30];
+  const n0_1 = c[31];
+  const n0_2 = c[32];
+  const n0_3 = c[33];
+  const n0_4 = c[34];
+  const n0_5 = c[35];
+  const n0_6 = c[36];
+  const n0_7 = c[37];
+  const n0_8 = c[38];
+  const n0_9 = c[39];
+  const n0_10 = c[40];
+  const n0_11 = c[41];
+  const n0_12 = c[42];
+  const n0_13 = c[43];
+  const n0_14 = c[44];
+  const n1_0 = c[45];
+  const n1_1 = c[46];
+  const n1_2 = c[47];
+  const n1_3 = c[48];
+  const n1_4 = c[49];
+  const n1_5 = c[50];
+  const n1_6 = c[51];
+  const n1_7 = c[52];
+  const n1_8 = c[53];
+  const n1_9 = c[54];
+  const n1_10 = c[55];
+  const n1_11 = c[56];
+  const n1_12 = c[57];
+  const n1_13 = c[58];
+  const n1_14 = c[59];
+  const n2_0 = c[60];
+  const n2_1 = c[61];
+  const n2_2 = c[62];
+  const n2_3 = c[63];
+  const n2_4 = c[64];
+  const n2_5 = c[65];
+  const n2_6 = c[66];
+  const n2_7 = c[67];
+  const n2_8 = c[68];
+  const n2_9 = c[69];
+  const n2_10 = c[70];
+  const n2_11 = c[71];
+  const n2_12 = c[72];
+  const n2_13 = c[73];
+  const n2_14 = c[74];
+  const n3_0 = c[75];
+  const n3_1 = c[76];
+  const n3_2 = c[77];
+  const n3_3 = c[78];
+  const n3_4 = c[79];
+  const n3_5 = c[80];
+  const n3_6 = c[81];
+  const n3_7 = c[82];
+  const n3_8 = c[83];
+  const n3_9 = c[84];
+  const n3_10 = c[85];
+  const n3_11 = c[86];
+  const n3_12 = c[87];
+  const n3_13 = c[88];
+  const n3_14 = c[89];
+  const n4_0 = c[90];
+  const n4_1 = c[91];
+  const n4_2 = c[92];
+  const n4_3 = c[93];
+  const n4_4 = c[94];
+  const n4_5 = c[95];
+  const n4_6 = c[96];
+  const n4_7 = c[97];
+  const n4_8 = c[98];
+  const n4_9 = c[99];
+  const n4_10 = c[100];
+  const n4_11 = c[101];
+  const n4_12 = c[102];
+  const n4_13 = c[103];
+  const n4_14 = c[104];
+  const n5_0 = c[105];
+  const n5_1 = c[106];
+  const n5_2 = c[107];
+  const n5_3 = c[108];
+  const n5_4 = c[109];
+  const n5_5 = c[110];
+  const n5_6 = c[111];
+  const n5_7 = c[112];
+  const n5_8 = c[113];
+  const n5_9 = c[114];
+  const n5_10 = c[115];
+  const n5_11 = c[116];
+  const n5_12 = c[117];
+  const n5_13 = c[118];
+  const n5_14 = c[119];
+  const n6_0 = c[120];
+  const n6_1 = c[121];
+  const n6_2 = c[122];
+  const n6_3 = c[123];
+  const n6_4 = c[124];
+  const n6_5 = c[125];
+  const n6_6 = c[126];
+  const n6_7 = c[127];
+  const n6_8 = c[128];
+  const n6_9 = c[129];
+  const n6_10 = c[130];
+  const n6_11 = c[131];
+  const n6_12 = c[132];
+  const n6_13 = c[133];
+  const n6_14 = c[134];
+  const n7_0 = c[135];
+  const n7_1 = c[136];
+  const n7_2 = c[137];
+  const n7_3 = c[138];
+  const n7_4 = c[139];
+  const n7_5 = c[140];
+  const n7_6 = c[141];
+  const n7_7 = c[142];
+  const n7_8 = c[143];
+  const n7_9 = c[144];
+  const n7_10 = c[145];
+  const n7_11 = c[146];
+  const n7_12 = c[147];
+  const n7_13 = c[148];
+  const n7_14 = c[149];
+  const y0 = c[150];
+  const y1 = c[151];
+  const y2 = c[152];
+  const y3 = c[153];
+  const y4 = c[154];
+  const y5 = c[155];
+  const y6 = c[156];
+  const y7 = c[157];
+  const y8 = c[158];
+  const y9 = c[159];
+  const y13 = c[163];
+  const y14 = c[164];
+  const on = c[211];
+  const lambda = c[214];
+  const scale = c[215];
+  const bent_ = c[218];
+  const fall = c[219];
+  const rise = c[220];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let x4 = s[4];
+  let x5 = s[5];
+  let x6 = s[6];
+  let x7 = s[7];
+  let u0 = s[8], v0 = s[9];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = 0, vd = 0;
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * x6 + a7 * x7 + a8 * u + a9 * v + a10 * u0 + a11 * v0 + a12 * I0 + a13;
+    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * x5 + b6 * x6 + b7 * x7 + b8 * u + b9 * v + b10 * u0 + b11 * v0 + b12 * I0 + b13;
+    if (S0 != 0 || D0 != 0) {
+      a += c[167] * S0 + c[168] * D0;
+      b += c[171] * S0 + c[172] * D0;
+    }
+    let I = 0, S = 0, D = 0;
+    if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a14 * I >= 0 && b + b14 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) I = bent(c, t, 209, 14, 29, a, b, I);
+      }
+    }
+    vs = a + a14 * I;
+    vd = b + b14 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 209, 14, 29, 165, s, 8, a, b, I);
+      I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
+    }
+    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * x6 + n0_7 * x7 + n0_8 * u + n0_9 * v + n0_10 * u0 + n0_11 * v0 + n0_12 * I0 + n0_13 + n0_14 * I;
+    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * x6 + n1_7 * x7 + n1_8 * u + n1_9 * v + n1_10 * u0 + n1_11 * v0 + n1_12 * I0 + n1_13 + n1_14 * I;
+    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * x6 + n2_7 * x7 + n2_8 * u + n2_9 * v + n2_10 * u0 + n2_11 * v0 + n2_12 * I0 + n2_13 + n2_14 * I;
+    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * x5 + n3_6 * x6 + n3_7 * x7 + n3_8 * u + n3_9 * v + n3_10 * u0 + n3_11 * v0 + n3_12 * I0 + n3_13 + n3_14 * I;
+    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * x5 + n4_6 * x6 + n4_7 * x7 + n4_8 * u + n4_9 * v + n4_10 * u0 + n4_11 * v0 + n4_12 * I0 + n4_13 + n4_14 * I;
+    let z5 = n5_0 * x0 + n5_1 * x1 + n5_2 * x2 + n5_3 * x3 + n5_4 * x4 + n5_5 * x5 + n5_6 * x6 + n5_7 * x7 + n5_8 * u + n5_9 * v + n5_10 * u0 + n5_11 * v0 + n5_12 * I0 + n5_13 + n5_14 * I;
+    let z6 = n6_0 * x0 + n6_1 * x1 + n6_2 * x2 + n6_3 * x3 + n6_4 * x4 + n6_5 * x5 + n6_6 * x6 + n6_7 * x7 + n6_8 * u + n6_9 * v + n6_10 * u0 + n6_11 * v0 + n6_12 * I0 + n6_13 + n6_14 * I;
+    let z7 = n7_0 * x0 + n7_1 * x1 + n7_2 * x2 + n7_3 * x3 + n7_4 * x4 + n7_5 * x5 + n7_6 * x6 + n7_7 * x7 + n7_8 * u + n7_9 * v + n7_10 * u0 + n7_11 * v0 + n7_12 * I0 + n7_13 + n7_14 * I;
+    if (S0 != 0 || D0 != 0) {
+      z0 += c[175] * S0 + c[176] * D0;
+      z1 += c[179] * S0 + c[180] * D0;
+      z2 += c[183] * S0 + c[184] * D0;
+      z3 += c[187] * S0 + c[188] * D0;
+      z4 += c[191] * S0 + c[192] * D0;
+      z5 += c[195] * S0 + c[196] * D0;
+      z6 += c[199] * S0 + c[200] * D0;
+      z7 += c[203] * S0 + c[204] * D0;
+    }
+    x0 = z0;
+    x1 = z1;
+    x2 = z2;
+    x3 = z3;
+    x4 = z4;
+    x5 = z5;
+    x6 = z6;
+    x7 = z7;
+    let y = 0;
+    if (S != 0 || D != 0) {
+      x0 += c[173] * S + c[174] * D;
+      x1 += c[177] * S + c[178] * D;
+      x2 += c[181] * S + c[182] * D;
+      x3 += c[185] * S + c[186] * D;
+      x4 += c[189] * S + c[190] * D;
+      x5 += c[193] * S + c[194] * D;
+      x6 += c[197] * S + c[198] * D;
+      x7 += c[201] * S + c[202] * D;
+      y = c[205] * S + c[206] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * x6 + y7 * x7 + y8 * u + y9 * v + y13 + y14 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = x4;
+  s[5] = x5;
+  s[6] = x6;
+  s[7] = x7;
+  s[8] = u0; s[9] = v0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  if (to > from) { s[13] = vs; s[14] = vd; }
+}
+
 /** By number of states. */
-export const SQUARE_KERNELS = [square0, square1, square2, square3, square4];
+export const SQUARE_KERNELS = [square0, square1, square2, square3, square4, square5, square6, square7, square8];

@@ -4,58 +4,73 @@ import { expect, test } from 'vitest';
 import { advanceCell, compileCell, createCell, loadValues, overdriveV, settle } from '../../../model/cell/cell.ts';
 import { kernelModule } from '../../../model/cell/kernels/source.ts';
 import { shuntCircuit } from '../../../model/cell/shunt.ts';
-import type { Cell } from '../../../model/design/types.ts';
-import { CELL_A, CELL_A_DEVICE, REAL_CELL, REAL_DEVICE } from '../../support/designs.ts';
+import type { Cell, Device } from '../../../model/design/types.ts';
+import { CELL_A, REAL_CELL, REAL_DEVICE } from '../../support/designs.ts';
 
-test('the written kernels are what their source writes', () => {
-  const written = readFileSync(new URL('../../../model/cell/kernels/square.ts', import.meta.url), 'utf8');
-  expect(written).toBe(kernelModule());
+const LAWS = ['square', 'gradual', 'smooth'] as const;
+
+test.each(LAWS)('the written kernels of the %s law are what their source writes', (law) => {
+  const written = readFileSync(new URL(`../../../model/cell/kernels/${law}.ts`, import.meta.url), 'utf8');
+  expect(written).toBe(kernelModule(law));
 });
 
+/** Channel current, A, written out by hand from the laws' definitions, at the overdrives of both ends. */
+function channelA({ law, idssA, gateOffV, barrierV, tailV, exponent, lambdaPerV }: Device, s: number, d: number): number {
+  const w = barrierV - gateOffV;
+  const shapes = {
+    square: (v: number) => Math.max(0, v) ** 2,
+    gradual: (v: number) => {
+      const u = Math.min(w, w - v);
+      return w / 3 - (u < 0 ? u : u - ((2 / 3) * u ** 1.5) / Math.sqrt(w));
+    },
+    smooth: (v: number) => (v / tailV > 30 ? v / tailV + Math.log1p(Math.exp(-v / tailV)) : Math.log1p(Math.exp(v / tailV))) ** exponent,
+  };
+  const shape = shapes[law];
+  const scale = idssA / shape(-gateOffV);
+  return scale * (shape(s) * (1 + lambdaPerV * Math.max(0, -d)) - shape(d) * (1 + lambdaPerV * Math.max(0, -s)));
+}
+
 /** Drain and gate currents that do not add up to zero, A, for the cell without capacitors: Kirchhoff's law written out by hand. */
-function residualA(cell: Cell, vgs: number, vgd: number, audioV: number, controlV: number): number {
-  const { reverseA, leakageS } = REAL_DEVICE.junction;
+function residualA(device: Device, cell: Cell, vgs: number, vgd: number, audioV: number, controlV: number): number {
+  const { reverseA, leakageS } = device.junction;
   const vt = (1.380649e-23 / 1.602176634e-19) * 298.15;
-  const beta = REAL_DEVICE.idssA / REAL_DEVICE.gateOffV ** 2;
-  const channel = (v: number) => beta * Math.max(0, v - REAL_DEVICE.gateOffV) ** 2;
   const junction = (v: number) => reverseA * Math.expm1(v / vt) + leakageS * v;
   const drainV = vgs - vgd;
   const feedbackS = cell.feedback.kind === 'resistor' ? 1 / cell.feedback.drainOhm : 0;
   const toGate = (controlV - vgs) / cell.controlOhm + (drainV - vgs) * feedbackS;
   const gate = toGate - junction(vgs) - junction(vgd);
-  const id = channel(vgs) - channel(vgd);
+  const id = channelA(device, vgs - device.gateOffV, vgd - device.gateOffV);
   const drain = (audioV - drainV) / cell.seriesOhm - drainV / cell.loadOhm - (drainV - vgs) * feedbackS - id + junction(vgd);
   const largest = Math.max(Math.abs(id), Math.abs(junction(vgs)), Math.abs(junction(vgd)), Math.abs((audioV - drainV) / cell.seriesOhm));
   return Math.max(Math.abs(gate), Math.abs(drain)) - 1e-9 * largest;
 }
 
-test('every solved sample obeys Kirchhoff to 1 pA + 1e-9 of the currents, for steps of up to 1 kV and junctions in conduction', () => {
-  const device = { ...REAL_DEVICE, gateSourceF: 0, gateDrainF: 0 };
-  const volts = fc.oneof(fc.double({ min: -3, max: 3, noNaN: true }), fc.double({ min: -1000, max: 1000, noNaN: true }));
-  const resistance = fc.double({ min: 2, max: 7, noNaN: true }).map((decades) => 10 ** decades);
-  fc.assert(
-    fc.property(
-      fc.array(fc.tuple(volts, volts), { minLength: 5, maxLength: 20 }),
-      resistance,
-      resistance,
-      fc.boolean(),
-      (samples, ohm, control, fed) => {
-        const feedback: Cell['feedback'] = fed ? { kind: 'resistor', drainOhm: control, blockingF: null } : { kind: 'none' };
-        const design: Cell = { ...CELL_A, seriesOhm: ohm, loadOhm: 1e6, controlOhm: control, feedback };
+test.each(LAWS)(
+  '%s law: every solved sample obeys Kirchhoff to 1 pA + 1e-9 of the currents, for steps of up to 1 kV, junctions conducting and λ',
+  (law) => {
+    const volts = fc.oneof(fc.double({ min: -3, max: 3, noNaN: true }), fc.double({ min: -1000, max: 1000, noNaN: true }));
+    const resistance = fc.double({ min: 2, max: 7, noNaN: true }).map((decades) => 10 ** decades);
+    const samples = fc.array(fc.tuple(volts, volts), { minLength: 5, maxLength: 20 });
+    const lambda = fc.constantFrom(0, 0.02, 0.2);
+    fc.assert(
+      fc.property(samples, resistance, resistance, fc.boolean(), lambda, (steps, ohm, controlOhm, fed, lambdaPerV) => {
+        const device: Device = { ...REAL_DEVICE, law, lambdaPerV, exponent: 2.1, gateSourceF: 0, gateDrainF: 0 };
+        const feedback: Cell['feedback'] = fed ? { kind: 'resistor', drainOhm: controlOhm, blockingF: null } : { kind: 'none' };
+        const design: Cell = { ...CELL_A, seriesOhm: ohm, loadOhm: 1e6, controlOhm, feedback };
         const cell = createCell(compileCell(shuntCircuit(design, device), device, 25), 1 / 384000);
-        for (const [audioV, controlV] of samples) {
+        for (const [audioV, controlV] of steps) {
           const signal = Float64Array.of(audioV);
           advanceCell(cell, signal, Float64Array.of(controlV), 0, 1);
           const vgs = overdriveV(cell, 'source') + device.gateOffV;
           const vgd = overdriveV(cell, 'drain') + device.gateOffV;
-          expect(residualA(design, vgs, vgd, audioV, controlV)).toBeLessThan(1e-12);
-          expect(signal[0]).toBeCloseTo(vgs - vgd, 6);
+          expect(residualA(device, design, vgs, vgd, audioV, controlV)).toBeLessThan(1e-12);
+          expect(Math.abs(signal[0] - (vgs - vgd))).toBeLessThan(1e-6);
         }
-      },
-    ),
-    { numRuns: 2000, seed: 20261201 },
-  );
-});
+      }),
+      { numRuns: 1000, seed: 20261201 },
+    );
+  },
+);
 
 test('at rest nothing moves but rounding: an ulp of the 1.2 V at the gate is 2e-16 V', () => {
   const cell = createCell(compileCell(shuntCircuit(REAL_CELL, REAL_DEVICE), REAL_DEVICE, 25), 1 / 384000);
@@ -92,9 +107,4 @@ test('a p-channel part with every voltage reversed is the same cell', () => {
   const n = run('n');
   const p = run('p');
   expect(Math.max(...n.map((v, i) => Math.abs(v - p[i])))).toBeLessThan(1e-12);
-});
-
-test('what the engine does not compute is refused by name', () => {
-  const device = { ...CELL_A_DEVICE, law: 'smooth' as const };
-  expect(() => compileCell(shuntCircuit(CELL_A, device), device, 25)).toThrow('device.law is smooth');
 });

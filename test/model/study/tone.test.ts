@@ -113,3 +113,41 @@ test('an option that makes no sense is named with its value', () => {
   expect(() => measureTone(cellA(0), 0, { toneHz: -5 })).toThrow('toneHz is -5; expected 0.1 to 1000000 Hz');
   expect(() => measureTone(cellA(0), 3, {})).toThrow('variant 3 is not in the design; expected 0 to 0');
 });
+
+test.each([
+  [0, -25.314, -94.363],
+  [-0.75, -18.617, -83.76],
+  [-1.2, -11.67, -66.445],
+])('gradual channel, 1/G0 250 Ω, barrier 0.7 V, k = ½, VGS %s V: gain %s dB, HD3 %s dB (reference/gradual.py)', (controlV, gainDb, h3Db) => {
+  const w = 0.7 + 1.5;
+  const idssA = (1 / 250) * (w / 3 - 0.7 + ((2 / 3) * 0.7 ** 1.5) / Math.sqrt(w));
+  const design = designOf(variantOf({ feedback: { kind: 'buffered', fraction: 0.5 } }, { law: 'gradual', barrierV: 0.7, idssA }));
+  const reading = measureTone(design, 0, { toneV: 1, controlV });
+  expect(reading.gainDb).toBeCloseTo(gainDb, 3);
+  expect(reading.harmonics[2].db).toBeCloseTo(h3Db, 2);
+  expect(reading.harmonics[1].db ?? -300).toBeLessThan(-200);
+});
+
+test.each([
+  [2.3, -0.75, -92.81],
+  [2.3, -1.2, -59.51],
+  [1.8, -0.75, -106.12],
+  [1.8, -1.2, -78.58],
+])('power law with exponent %s, r0 kept at 250 Ω, k = ½, VGS %s V: HD3 %s dB', (exponent, controlV, h3Db) => {
+  const tailV = 0.002;
+  const idssA = 1.5 / (250 * exponent);
+  const design = designOf(variantOf({ feedback: { kind: 'buffered', fraction: 0.5 } }, { law: 'smooth', exponent, tailV, idssA }));
+  const reading = measureTone(design, 0, { toneV: 1, controlV });
+  expect(reading.harmonics[2].db).toBeCloseTo(h3Db, 2);
+  expect(reading.harmonics[1].db ?? -300).toBeLessThan(-200);
+});
+
+test('λ 0.05 leaves every harmonic under −200 dB for the square law at k = ½ while ohmic, and is felt beyond the knee', () => {
+  const design = (lambdaPerV: number) => designOf(variantOf({ feedback: { kind: 'buffered', fraction: 0.5 } }, { lambdaPerV }));
+  for (const controlV of [0, -0.75, -1.2]) {
+    for (const { n, db } of measureTone(design(0.05), 0, { toneV: 1, controlV }).harmonics)
+      if (n > 1) expect(db ?? -300).toBeLessThan(-200);
+  }
+  const deep = (lambdaPerV: number) => measureTone(design(lambdaPerV), 0, { toneV: 1, controlV: -1.4 }).harmonics[2].db as number;
+  expect(Math.abs(deep(0.05) - deep(0))).toBeGreaterThan(0.01);
+});

@@ -8,8 +8,9 @@
  * Error    Newton stops at a step under 1e-11 V, where the next would be under 1e-20 V
  * Source   damping of the exponential: Nagel, UCB/ERL M520 (1975), from memory
  */
-import { exp } from '../device/math.ts';
-import * as L from './kernels/layout.ts';
+import { exp } from '../../device/math.ts';
+import { channelA, slopeAt, termAt } from './channel.ts';
+import * as L from './layout.ts';
 
 const NEWTON_STEPS = 40;
 const SETTLED_V = 1e-11;
@@ -17,6 +18,7 @@ const SETTLED_V = 1e-11;
 /** Writes channel current, junction currents and overdrives into the slots of `s` after its `n` states. Allocates nothing. */
 export function conduct(
   c: Float64Array,
+  t: Float64Array,
   device: number,
   aI: number,
   bI: number,
@@ -33,18 +35,19 @@ export function conduct(
   s[n + L.OVERDRIVE_S] = freeS < knee ? freeS : Math.min(freeS, Math.max(s[n + L.OVERDRIVE_S], knee));
   s[n + L.OVERDRIVE_D] = freeD < knee ? freeD : Math.min(freeD, Math.max(s[n + L.OVERDRIVE_D], knee));
   for (let step = 0; step < NEWTON_STEPS; step++) {
-    if (newtonStep(c, device, aI, bI, junction, s, n, a, b) < SETTLED_V) {
-      currents(c, device, s, n);
+    if (newtonStep(c, t, device, aI, bI, junction, s, n, a, b) < SETTLED_V) {
+      currents(c, t, device, s, n);
       return;
     }
   }
-  bisect(c, device, aI, bI, junction, s, n, a, b);
-  currents(c, device, s, n);
+  bisect(c, t, device, aI, bI, junction, s, n, a, b);
+  currents(c, t, device, s, n);
 }
 
 /** One damped step of both overdrives; returns the larger change, V (Infinity when it is not a number). */
 function newtonStep(
   c: Float64Array,
+  t: Float64Array,
   device: number,
   aI: number,
   bI: number,
@@ -56,19 +59,21 @@ function newtonStep(
 ): number {
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
-  const beta = c[device + L.BETA];
   const rate = c[device + L.INVERSE_NVT];
-  const ps = Math.max(vs, 0);
-  const pd = Math.max(vd, 0);
-  const channel = beta * (ps - pd) * (ps + pd);
+  const lambda = c[device + L.LAMBDA];
+  const past = lambda * Math.max(-vd, 0);
+  const pastReversed = lambda * Math.max(-vs, 0);
+  const Fs = termAt(c, t, device, vs);
+  const Fd = termAt(c, t, device, vd);
+  const channel = Fs * (1 + past) - Fd * (1 + pastReversed);
   const S = junctionCurrent(c, device, vs);
   const D = junctionCurrent(c, device, vd);
   const aS = c[junction + L.NEW_S];
   const aD = c[junction + L.NEW_D];
   const bS = c[junction + L.JUNCTION_WIDTH + L.NEW_S];
   const bD = c[junction + L.JUNCTION_WIDTH + L.NEW_D];
-  const fs = 2 * beta * ps;
-  const fd = 2 * beta * pd;
+  const fs = slopeAt(c, t, device, vs) * (1 + past) + (pastReversed > 0 ? lambda * Fd : 0);
+  const fd = slopeAt(c, t, device, vd) * (1 + pastReversed) + (past > 0 ? lambda * Fs : 0);
   const rs = vs - a - c[aI] * channel - aS * S - aD * D;
   const rd = vd - b - c[bI] * channel - bS * S - bD * D;
   const ss = 1 - c[aI] * fs - aS * S * rate;
@@ -100,12 +105,10 @@ function junctionCurrent(c: Float64Array, device: number, v: number): number {
   return c[device + L.REVERSE_A] * exp((v + c[device + L.GATE_OFF_V]) * c[device + L.INVERSE_NVT]);
 }
 
-function currents(c: Float64Array, device: number, s: Float64Array, n: number): void {
+function currents(c: Float64Array, t: Float64Array, device: number, s: Float64Array, n: number): void {
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
-  const ps = Math.max(vs, 0);
-  const pd = Math.max(vd, 0);
-  s[n + L.CHANNEL_A] = c[device + L.BETA] * (ps - pd) * (ps + pd);
+  s[n + L.CHANNEL_A] = channelA(c, t, device, vs, vd);
   s[n + L.JUNCTION_S] = junctionCurrent(c, device, vs);
   s[n + L.JUNCTION_D] = junctionCurrent(c, device, vd);
 }
@@ -117,19 +120,19 @@ function residual(
   perS: number,
   perD: number,
   c: Float64Array,
+  t: Float64Array,
   device: number,
   vs: number,
   vd: number,
 ): number {
-  const ps = Math.max(vs, 0);
-  const pd = Math.max(vd, 0);
-  const channel = c[device + L.BETA] * (ps - pd) * (ps + pd);
+  const channel = channelA(c, t, device, vs, vd);
   return own - free - perA * channel - perS * junctionCurrent(c, device, vs) - perD * junctionCurrent(c, device, vd);
 }
 
 /** Nested bisection between brackets that are widened until they hold the solution. */
 function bisect(
   c: Float64Array,
+  t: Float64Array,
   device: number,
   aI: number,
   bI: number,
@@ -141,22 +144,23 @@ function bisect(
 ): void {
   let low = -1;
   let high = 1;
-  while (outerResidual(c, device, aI, bI, junction, a, b, low) > 0 && low > -1e12) low *= 2;
-  while (outerResidual(c, device, aI, bI, junction, a, b, high) < 0 && high < 1e12) high *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, a, b, low) > 0 && low > -1e12) low *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, a, b, high) < 0 && high < 1e12) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
-    if (outerResidual(c, device, aI, bI, junction, a, b, middle) > 0) high = middle;
+    if (outerResidual(c, t, device, aI, bI, junction, a, b, middle) > 0) high = middle;
     else low = middle;
   }
   s[n + L.OVERDRIVE_S] = (low + high) / 2;
-  s[n + L.OVERDRIVE_D] = innerOverdrive(c, device, bI, junction, b, (low + high) / 2);
-  s[n + L.FAULTS] += 1;
+  s[n + L.OVERDRIVE_D] = innerOverdrive(c, t, device, bI, junction, b, (low + high) / 2);
+  s[n + L.FALLBACKS] += 1;
 }
 
 /** The source end's equation, with the drain end solved for it: rises with `vs`. */
 function outerResidual(
   c: Float64Array,
+  t: Float64Array,
   device: number,
   aI: number,
   bI: number,
@@ -165,22 +169,22 @@ function outerResidual(
   b: number,
   vs: number,
 ): number {
-  const vd = innerOverdrive(c, device, bI, junction, b, vs);
-  return residual(vs, a, c[aI], c[junction + L.NEW_S], c[junction + L.NEW_D], c, device, vs, vd);
+  const vd = innerOverdrive(c, t, device, bI, junction, b, vs);
+  return residual(vs, a, c[aI], c[junction + L.NEW_S], c[junction + L.NEW_D], c, t, device, vs, vd);
 }
 
 /** The drain end's overdrive that satisfies its own equation for a given source end. */
-function innerOverdrive(c: Float64Array, device: number, bI: number, junction: number, b: number, vs: number): number {
+function innerOverdrive(c: Float64Array, t: Float64Array, device: number, bI: number, junction: number, b: number, vs: number): number {
   const bS = c[junction + L.JUNCTION_WIDTH + L.NEW_S];
   const bD = c[junction + L.JUNCTION_WIDTH + L.NEW_D];
   let low = -1;
   let high = 1;
-  while (residual(low, b, c[bI], bS, bD, c, device, vs, low) > 0 && low > -1e12) low *= 2;
-  while (residual(high, b, c[bI], bS, bD, c, device, vs, high) < 0 && high < 1e12) high *= 2;
+  while (residual(low, b, c[bI], bS, bD, c, t, device, vs, low) > 0 && low > -1e12) low *= 2;
+  while (residual(high, b, c[bI], bS, bD, c, t, device, vs, high) < 0 && high < 1e12) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
-    if (residual(middle, b, c[bI], bS, bD, c, device, vs, middle) > 0) high = middle;
+    if (residual(middle, b, c[bI], bS, bD, c, t, device, vs, middle) > 0) high = middle;
     else low = middle;
   }
   return (low + high) / 2;
