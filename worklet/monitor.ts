@@ -9,11 +9,11 @@
  * Valid    gain 0 to 1; ceiling 0.01 (−40 dBFS) to 1; any block length; a sample that is no finite number leaves as silence and is counted
  */
 import type { Heard } from './protocol.ts';
+import { MUTE_SEC } from './protocol.ts';
 
 const FADE_SEC = 0.01;
 const LEVEL_SEC = 0.03;
 const UNMUTE_SEC = 0.1;
-const MUTE_SEC = 0.03;
 const RECOVER_SEC = 0.2;
 
 const SOURCES: readonly Heard[] = ['cell', 'bypass', 'aside'];

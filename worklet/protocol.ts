@@ -7,6 +7,9 @@ import type { ChainNumbers } from '../model/chain/compile.ts';
 export const CELL_PROCESSOR = 'fettle-cell';
 export const PASS_PROCESSOR = 'fettle-pass';
 
+/** Length of the ramp that mutes. */
+export const MUTE_SEC = 0.03;
+
 /** What the listener hears: the chain's output, its delayed input, or the processor's second input (a take being played). */
 export type Heard = 'cell' | 'bypass' | 'aside';
 

@@ -70,6 +70,8 @@ export interface TabOptions {
   touch?: boolean;
   /** What follows the site's address: `?x=1#y`. */
   path?: string;
+  /** Runs in the tab before the page's own scripts; it must stand by itself. */
+  beforeLoad?: () => void;
 }
 
 export interface Tab {
@@ -102,6 +104,7 @@ export async function openTab(browser: Browser, site: Site, options: TabOptions 
   page.on('request', (request) => {
     if (!request.url().startsWith(site.url) && !/^(data|blob):/.test(request.url())) complaints.push(`asked elsewhere: ${request.url()}`);
   });
+  if (options.beforeLoad) await page.addInitScript(options.beforeLoad);
   await page.goto(site.url + (options.path ?? ''), { waitUntil: 'load' });
   return { page, complaints, close: () => context.close() };
 }

@@ -16,7 +16,8 @@ export interface Players {
   loop(clip: Clip, node: AudioNode): void;
   /** Plays a clip once into the node's second input, then calls `ended`; null ends the one that plays. */
   once(clip: Clip | null, node: AudioNode, ended: () => void): void;
-  dispose(): void;
+  /** Closes the context too: Tone's context takes that upon itself. */
+  close(): Promise<void>;
 }
 
 export function createPlayers(raw: AudioContext): Players {
@@ -55,9 +56,10 @@ export function createPlayers(raw: AudioContext): Players {
       };
       player.start();
     },
-    dispose() {
+    async close() {
       looping?.dispose();
       single?.dispose();
+      await context.close();
       context.dispose();
     },
   };

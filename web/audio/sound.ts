@@ -1,7 +1,7 @@
 /** The audio graph: source (Tone) → the cell's processor (native) → loudspeakers. Knows no design, only numbers and clips. */
 import workletUrl from '../../worklet/fettle.worklet.ts?worker&url';
 import type { CellOptions, FromCell, ToCell } from '../../worklet/protocol.ts';
-import { CELL_PROCESSOR } from '../../worklet/protocol.ts';
+import { CELL_PROCESSOR, MUTE_SEC } from '../../worklet/protocol.ts';
 import type { Clip } from './clip.ts';
 import type { Players } from './players.ts';
 import { countUnderruns } from './underruns.ts';
@@ -32,6 +32,8 @@ export interface Sound {
 
 export type OpenSound = (sampleRateHz: number, cellFor: (sampleRateHz: number) => CellOptions, events: SoundEvents) => Promise<Sound>;
 
+/** Twice the ramp, since the message takes its time as well. */
+const MUTED_AFTER_MS = 2000 * MUTE_SEC;
 const READY_WITHIN_MS = 5000;
 const RESUME_WITHIN_MS = 3000;
 
@@ -85,6 +87,13 @@ function createSound(context: AudioContext, first: AudioWorkletNode, players: Pl
     if (wanted && context.state !== 'closed') events.paused(context.state !== 'running');
   });
 
+  /** Mutes and waits for the end of the ramp, so that nothing is cut off with a click. */
+  const quieten = async () => {
+    if (context.state !== 'running') return;
+    node.port.postMessage({ type: 'mute', on: true } satisfies ToCell);
+    await new Promise((resolve) => setTimeout(resolve, MUTED_AFTER_MS));
+  };
+
   return {
     sampleRateHz: context.sampleRate,
     send: (message, transfer = []) => node.port.postMessage(message, transfer),
@@ -94,6 +103,7 @@ function createSound(context: AudioContext, first: AudioWorkletNode, players: Pl
     },
     playTake: (take) => players.once(take, node, events.takeEnded),
     async rebuild(cell) {
+      await quieten();
       retireNode(node);
       node = await openNode(context, cell, events);
       node.connect(context.destination);
@@ -111,9 +121,9 @@ function createSound(context: AudioContext, first: AudioWorkletNode, players: Pl
     underruns: underruns.count,
     async close() {
       wanted = false;
+      await quieten();
       retireNode(node);
-      players.dispose();
-      await context.close();
+      await players.close();
     },
   };
 }

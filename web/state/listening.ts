@@ -1,6 +1,7 @@
 /** Sound as the user knows it: start and stop, what is heard, how loud, from which source. */
 import { computed, effect, signal } from '@preact/signals';
 import { compileChain } from '../../model/chain/compile.ts';
+import { MUTE_SEC } from '../../worklet/protocol.ts';
 import type { Clip } from '../audio/clip.ts';
 import { clipSeconds } from '../audio/clip.ts';
 import type { Bench, Hearing, SoundState, SourceInfo } from './bench.ts';
@@ -16,8 +17,8 @@ import { setWithin } from './within.ts';
 
 /** Changes go out together, at most once in about a frame. */
 const MOVE_EVERY_MS = 16;
-/** The processor's mute takes 30 ms; then the context may stop. */
-const MUTE_MS = 60;
+/** Twice the ramp, since the message takes its time as well; then the context may rest. */
+const MUTED_AFTER_MS = 2000 * MUTE_SEC;
 const FIRST_LISTEN_DB = -12;
 const FIRST_CEILING_DBFS = -6;
 const RATE_BEFORE_START_HZ = 48000;
@@ -208,7 +209,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       line.send({ type: 'mute', on: true });
       setTimeout(() => {
         if (state.peek() === 'stopped') suspend();
-      }, MUTE_MS);
+      }, MUTED_AFTER_MS);
     },
     setMuted(on) {
       muted.value = on;

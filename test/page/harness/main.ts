@@ -1,0 +1,54 @@
+/** The worklet in an offline context, in reach of a test. Built with the page's settings and served by a test, never shipped. */
+import { compileChain } from '../../../model/chain/compile.ts';
+import type { Design } from '../../../model/design/types.ts';
+import workletUrl from '../../../worklet/fettle.worklet.ts?worker&url';
+import type { CellOptions, FromCell } from '../../../worklet/protocol.ts';
+import { CELL_PROCESSOR } from '../../../worklet/protocol.ts';
+
+declare global {
+  interface Window {
+    /** The samples that leave the cell's processor, as the bytes of Float32 in base64, one text for each channel. */
+    playOffline(design: Design, rateHz: number, channels: readonly string[]): Promise<string[]>;
+  }
+}
+
+window.playOffline = async (design, rateHz, channels) => {
+  const lines = channels.map(toSamples);
+  const length = lines[0].length;
+  const context = new OfflineAudioContext(lines.length, length, rateHz);
+  await context.audioWorklet.addModule(workletUrl);
+  const numbers = compileChain(design, 0, rateHz, lines.length, 'lowLatency');
+  const processorOptions: CellOptions = { numbers, channels: lines.length, heard: 'cell', gain: 1, ceilingPeak: 1, muted: false };
+  const node = new AudioWorkletNode(context, CELL_PROCESSOR, {
+    numberOfInputs: 2,
+    outputChannelCount: [lines.length],
+    channelCount: lines.length,
+    channelCountMode: 'explicit',
+    processorOptions,
+  });
+  await new Promise<void>((resolve) => {
+    node.port.onmessage = ({ data }: MessageEvent<FromCell>) => {
+      if (data.type === 'ready') resolve();
+    };
+  });
+  const buffer = new AudioBuffer({ length, numberOfChannels: lines.length, sampleRate: rateHz });
+  lines.forEach((line, c) => {
+    buffer.copyToChannel(line, c);
+  });
+  const source = new AudioBufferSourceNode(context, { buffer });
+  source.connect(node).connect(context.destination);
+  source.start();
+  const rendered = await context.startRendering();
+  return lines.map((_, c) => toText(rendered.getChannelData(c)));
+};
+
+function toSamples(text: string): Float32Array<ArrayBuffer> {
+  return new Float32Array(Uint8Array.from(atob(text), (letter) => letter.charCodeAt(0)).buffer);
+}
+
+function toText(samples: Float32Array): string {
+  const bytes = new Uint8Array(samples.buffer, samples.byteOffset, samples.byteLength);
+  let text = '';
+  for (const byte of bytes) text += String.fromCharCode(byte);
+  return btoa(text);
+}
