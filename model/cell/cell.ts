@@ -12,7 +12,7 @@ import { GRADUAL_KERNELS } from './kernels/gradual.ts';
 import { SMOOTH_KERNELS } from './kernels/smooth.ts';
 import { SQUARE_KERNELS } from './kernels/square.ts';
 import { factor, solve } from './linear.ts';
-import { DRIVES, GATE_DRAIN, GATE_SOURCE, type Plan, planCircuit } from './plan.ts';
+import { CONSTANT, DRIVES, GATE_DRAIN, GATE_SOURCE, type Plan, planCircuit } from './plan.ts';
 import { createReduction, discretise, type Reduction, respond, stepColumns } from './reduce.ts';
 
 /** Boltzmann's constant over the elementary charge, V/K (SI 2019, exact values 1.380649e-23 and 1.602176634e-19). */
@@ -34,7 +34,10 @@ const NVT_V = 3;
 const LAMBDA = 4;
 /** W of the gradual channel, T of the smooth law, V. */
 const WIDTH_V = 5;
-export const DEVICE_VALUES = 6;
+/** Reverse current of the gate clamp, 0 where there is none, and its nVT. */
+const CLAMP_A = 6;
+const CLAMP_NVT_V = 7;
+export const DEVICE_VALUES = 8;
 
 /** Plain numbers, structured-cloneable. `values` are the elements' movable values, then the device's. */
 export interface CellNumbers {
@@ -85,8 +88,12 @@ export function compileCell(circuit: Circuit, device: Device, tempC: number): Ce
   values[plan.values.length + SCALE] = law.scale;
   values[plan.values.length + GATE_OFF_V] = law.gateOffV;
   values[plan.values.length + REVERSE_A] = junction.reverseA;
-  values[plan.values.length + NVT_V] = junction.ideality * VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
+  const thermalV = VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
+  values[plan.values.length + NVT_V] = junction.ideality * thermalV;
   values[plan.values.length + LAMBDA] = device.lambdaPerV;
+  const clamp = circuit.jfet.clamp ?? { reverseA: 0, ideality: 1 };
+  values[plan.values.length + CLAMP_A] = clamp.reverseA;
+  values[plan.values.length + CLAMP_NVT_V] = clamp.ideality * thermalV;
   values[plan.values.length + WIDTH_V] = law.law === 'smooth' ? law.tailV : law.depletionV;
   return {
     shape: [device.channel, law.law, law.law === 'smooth' ? law.exponent : '', plan.shape].join(' '),
@@ -155,7 +162,7 @@ export function advanceCell(cell: Cell, signal: Float64Array, control: Float64Ar
 
 /** Gate-source voltage of the last sample, V, with the sign of the part's channel. */
 export function gateSourceV(cell: Cell): number {
-  return cell.numbers.polarity * (cell.state[cell.stateCount + L.OVERDRIVE_S] + gateOffV(cell));
+  return cell.numbers.polarity * (cell.state[cell.stateCount + L.OVERDRIVE_S] + deviceValue(cell, GATE_OFF_V));
 }
 
 /** Overdrives of the last sample, gate-source and gate-drain less VGS(off), V, in the n-channel frame. */
@@ -168,19 +175,18 @@ export function gateConducts(cell: Cell, amperes: number): boolean {
   return cell.state[cell.stateCount + L.JUNCTION_S] > amperes || cell.state[cell.stateCount + L.JUNCTION_D] > amperes;
 }
 
-function gateOffV(cell: Cell): number {
-  return cell.values[cell.numbers.plan.values.length + GATE_OFF_V];
+function deviceValue(cell: Cell, index: number): number {
+  return cell.values[cell.numbers.plan.values.length + index];
 }
 
 function packStep(cell: Cell): void {
   const n = cell.stateCount;
   const { coefficients: c, reduction } = cell;
-  const { polarity } = cell.numbers;
+  const { polarity, plan } = cell.numbers;
   const row = L.rowLayout(n);
   const all = L.coefficientLayout(n);
-  const columns = stepColumns(n);
+  const columns = stepColumns(n, plan.noisy.length);
   const { step, response } = reduction;
-  const reverseA = cell.values[cell.numbers.plan.values.length + REVERSE_A];
   for (let r = 0; r < n + 2; r++) {
     const from = r * columns.width;
     const to = r * row.width;
@@ -197,18 +203,25 @@ function packStep(cell: Cell): void {
     const oldD = j * step[from + columns.oldJ + 1];
     c[to + row.newI] = newS - newD;
     if (n > 0) c[to + row.oldI] = oldS - oldD;
-    c[to + row.constant] = -reverseA * (newS + newD + oldS + oldD) - (r < 2 ? gateOffV(cell) : 0);
+    c[to + row.constant] = sign * step[from + columns.constant] + steadyCurrents(cell, newS + oldS, newD + oldD);
+    if (r < 2) c[to + row.constant] -= deviceValue(cell, GATE_OFF_V);
     packJunction(c, all.junction + r * L.JUNCTION_WIDTH, newS, newD, oldS, oldD);
   }
-  const from = (n + 2) * (n + DRIVES);
+  const from = (n + 2) * plan.width;
   const to = all.outputRow * row.width;
   for (let k = 0; k < n + 2; k++) c[to + k] = response[from + k];
   const newS = polarity * response[from + n + GATE_SOURCE];
   const newD = polarity * response[from + n + GATE_DRAIN];
   c[to + row.newI] = newS - newD;
-  c[to + row.constant] = -reverseA * (newS + newD);
+  c[to + row.constant] = response[from + n + CONSTANT] + steadyCurrents(cell, newS, newD);
   packJunction(c, all.junction + all.outputRow * L.JUNCTION_WIDTH, newS, newD, 0, 0);
   packDevice(cell, c, all.device, c[row.newI], c[row.width + row.newI]);
+}
+
+/** What the reverse currents of the junctions and the clamp, which always flow, add to a row with these weights. */
+function steadyCurrents(cell: Cell, weightS: number, weightD: number): number {
+  const reverseA = deviceValue(cell, REVERSE_A);
+  return -(reverseA + deviceValue(cell, CLAMP_A)) * weightS - reverseA * weightD;
 }
 
 function packJunction(c: Float64Array, at: number, newS: number, newD: number, oldS: number, oldD: number): void {
@@ -219,18 +232,24 @@ function packJunction(c: Float64Array, at: number, newS: number, newD: number, o
 }
 
 function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: number): void {
-  const from = cell.numbers.plan.values.length;
   const { law, exponent, table } = cell.numbers;
-  const scale = cell.values[from + SCALE];
-  const nVt = cell.values[from + NVT_V];
-  const reverseA = cell.values[from + REVERSE_A];
-  const widthV = cell.values[from + WIDTH_V];
+  const scale = deviceValue(cell, SCALE);
+  const nVt = deviceValue(cell, NVT_V);
+  const clampNVt = deviceValue(cell, CLAMP_NVT_V);
+  const reverseA = deviceValue(cell, REVERSE_A);
+  const clampA = deviceValue(cell, CLAMP_A);
+  const widthV = deviceValue(cell, WIDTH_V);
+  const offV = deviceValue(cell, GATE_OFF_V);
   c[at + L.LAW] = L.LAW_NUMBER[law];
-  c[at + L.GATE_OFF_V] = gateOffV(cell);
-  c[at + L.ON_V] = reverseA > 0 ? OFF_BELOW * nVt - gateOffV(cell) : Number.POSITIVE_INFINITY;
+  c[at + L.GATE_OFF_V] = offV;
+  c[at + L.JUNCTION_ON_V] = reverseA > 0 ? OFF_BELOW * nVt - offV : Number.POSITIVE_INFINITY;
+  c[at + L.CLAMP_ON_V] = clampA > 0 ? OFF_BELOW * clampNVt - offV : Number.POSITIVE_INFINITY;
+  c[at + L.ON_V] = Math.min(c[at + L.JUNCTION_ON_V], c[at + L.CLAMP_ON_V]);
   c[at + L.REVERSE_A] = reverseA;
   c[at + L.INVERSE_NVT] = 1 / nVt;
-  c[at + L.LAMBDA] = cell.values[from + LAMBDA];
+  c[at + L.CLAMP_A] = clampA;
+  c[at + L.CLAMP_INVERSE_NVT] = 1 / clampNVt;
+  c[at + L.LAMBDA] = deviceValue(cell, LAMBDA);
   c[at + L.SCALE] = law === 'gradual' ? (scale * widthV) / 3 : scale;
   c[at + L.INVERSE_WIDTH] = 1 / widthV;
   c[at + L.SLOPE] = law === 'gradual' ? scale : scale / widthV;
@@ -247,11 +266,11 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
  */
 export function settle(cell: Cell, audioV: number, controlV: number): number {
   const { rest, reduction, state } = cell;
+  const { polarity, plan } = cell.numbers;
   const n = cell.stateCount;
-  const width = n + DRIVES;
   for (let r = 0; r < n; r++) {
-    for (let k = 0; k < n; k++) rest.matrix[r * n + k] = -reduction.response[r * width + k];
-    for (let k = 0; k < DRIVES; k++) rest.columns[r * DRIVES + k] = reduction.response[r * width + n + k];
+    for (let k = 0; k < n; k++) rest.matrix[r * n + k] = -reduction.response[r * plan.width + k];
+    for (let k = 0; k < DRIVES; k++) rest.columns[r * DRIVES + k] = reduction.response[r * plan.width + n + k];
   }
   if (!factor(rest.matrix, rest.pivots, n)) return Number.NaN;
   solve(rest.matrix, rest.pivots, n, rest.columns, DRIVES);
@@ -260,42 +279,41 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   rest.control[0] = controlV;
   const { law, table } = cell.numbers;
   KERNELS[law][0](rest.coefficients, table, rest.state, rest.audio, rest.control, rest.output, 0, 1);
-  const { polarity } = cell.numbers;
-  const reverseA = cell.values[cell.numbers.plan.values.length + REVERSE_A];
+  const reverseA = deviceValue(cell, REVERSE_A);
   const channelA = rest.state[L.CHANNEL_A];
-  const gateSourceA = polarity * (channelA + rest.state[L.JUNCTION_S] - reverseA);
+  const gateSourceA = polarity * (channelA + rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A));
   const gateDrainA = polarity * (rest.state[L.JUNCTION_D] - channelA - reverseA);
   for (let r = 0; r < n; r++) {
     const at = r * DRIVES;
-    state[r] = rest.columns[at] * audioV + rest.columns[at + 1] * controlV;
+    state[r] = rest.columns[at] * audioV + rest.columns[at + 1] * controlV + rest.columns[at + CONSTANT];
     state[r] += rest.columns[at + GATE_SOURCE] * gateSourceA + rest.columns[at + GATE_DRAIN] * gateDrainA;
   }
   for (let slot = 0; slot < L.FALLBACKS; slot++) state[n + slot] = rest.state[slot];
-  state[n + L.EARLIER_A] = channelA;
   state[n + L.OLD_AUDIO] = audioV;
   state[n + L.OLD_CONTROL] = controlV;
+  state[n + L.EARLIER_A] = channelA;
   return rest.output[0];
 }
 
 /** The direct-current network as the coefficients of a cell without states. */
 function packRest(cell: Cell): void {
   const { rest, reduction } = cell;
-  const { polarity } = cell.numbers;
+  const { polarity, plan } = cell.numbers;
   const n = cell.stateCount;
-  const width = n + DRIVES;
   const row = L.rowLayout(0);
   const all = L.coefficientLayout(0);
   const c = rest.coefficients;
-  const reverseA = cell.values[cell.numbers.plan.values.length + REVERSE_A];
+  const { response } = reduction;
   for (let r = 0; r < 3; r++) {
-    const from = (n + r) * width;
+    const from = (n + r) * plan.width;
     const to = r * row.width;
     const sign = r < 2 ? polarity : 1;
-    for (let k = 0; k < 2; k++) c[to + row.newU + k] = sign * throughStates(reduction.response, rest.columns, from, n, k);
-    const newS = sign * polarity * throughStates(reduction.response, rest.columns, from, n, GATE_SOURCE);
-    const newD = sign * polarity * throughStates(reduction.response, rest.columns, from, n, GATE_DRAIN);
+    for (let k = 0; k < 2; k++) c[to + row.newU + k] = sign * throughStates(response, rest.columns, from, n, k);
+    const newS = sign * polarity * throughStates(response, rest.columns, from, n, GATE_SOURCE);
+    const newD = sign * polarity * throughStates(response, rest.columns, from, n, GATE_DRAIN);
     c[to + row.newI] = newS - newD;
-    c[to + row.constant] = -reverseA * (newS + newD) - (r < 2 ? gateOffV(cell) : 0);
+    c[to + row.constant] = sign * throughStates(response, rest.columns, from, n, CONSTANT) + steadyCurrents(cell, newS, newD);
+    if (r < 2) c[to + row.constant] -= deviceValue(cell, GATE_OFF_V);
     packJunction(c, all.junction + r * L.JUNCTION_WIDTH, newS, newD, 0, 0);
   }
   packDevice(cell, c, all.device, c[row.newI], c[row.width + row.newI]);

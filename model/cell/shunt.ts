@@ -23,7 +23,7 @@ export function shuntCircuit(cell: Cell, device: Device): Circuit {
     elements.push({ kind: 'conductance', name: 'gateSourceLeak', a: 'gate', b: GROUND, valueS: leakageS });
     elements.push({ kind: 'conductance', name: 'gateDrainLeak', a: 'gate', b: 'drain', valueS: leakageS });
   }
-  return { elements, jfet: { drain: 'drain', gate: 'gate', source: GROUND }, outputNode: 'drain' };
+  return { elements, jfet: { drain: 'drain', gate: 'gate', source: GROUND, clamp: null }, outputNode: 'drain' };
 }
 
 function feedbackElements(cell: Cell): Element[] {
@@ -31,7 +31,7 @@ function feedbackElements(cell: Cell): Element[] {
   if (feedback.kind === 'none') return [resistor('control', 'control', 'gate', controlOhm)];
   if (feedback.kind === 'buffered') {
     return [
-      { kind: 'summer', name: 'feedback', output: 'sum', direct: 'control', scaled: 'drain', fraction: feedback.fraction },
+      { kind: 'summer', name: 'feedback', output: 'sum', direct: 'control', plus: 'drain', minus: GROUND, fraction: feedback.fraction },
       resistor('control', 'sum', 'gate', controlOhm),
     ];
   }

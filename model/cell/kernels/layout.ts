@@ -42,7 +42,12 @@ export const EXPONENT = 13;
 export const BENT = 9;
 export const FALL = 10;
 export const RISE = 11;
-export const DEVICE_WIDTH = 14;
+/** The same threshold for the junctions and for the clamp from gate to source, and the clamp's reverse current and 1/nVT. */
+export const JUNCTION_ON_V = 14;
+export const CLAMP_ON_V = 15;
+export const CLAMP_A = 16;
+export const CLAMP_INVERSE_NVT = 17;
+export const DEVICE_WIDTH = 18;
 
 export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 

@@ -66,7 +66,8 @@ function newtonStep(
   const Fs = termAt(c, t, device, vs);
   const Fd = termAt(c, t, device, vd);
   const channel = Fs * (1 + past) - Fd * (1 + pastReversed);
-  const S = junctionCurrent(c, device, vs);
+  const clampA = clampCurrent(c, device, vs);
+  const S = junctionCurrent(c, device, vs) + clampA;
   const D = junctionCurrent(c, device, vd);
   const aS = c[junction + L.NEW_S];
   const aD = c[junction + L.NEW_D];
@@ -74,11 +75,12 @@ function newtonStep(
   const bD = c[junction + L.JUNCTION_WIDTH + L.NEW_D];
   const fs = slopeAt(c, t, device, vs) * (1 + past) + (pastReversed > 0 ? lambda * Fd : 0);
   const fd = slopeAt(c, t, device, vd) * (1 + pastReversed) + (past > 0 ? lambda * Fs : 0);
+  const slopeS = (S - clampA) * rate + clampA * c[device + L.CLAMP_INVERSE_NVT];
   const rs = vs - a - c[aI] * channel - aS * S - aD * D;
   const rd = vd - b - c[bI] * channel - bS * S - bD * D;
-  const ss = 1 - c[aI] * fs - aS * S * rate;
+  const ss = 1 - c[aI] * fs - aS * slopeS;
   const sd = c[aI] * fd - aD * D * rate;
-  const ds = -c[bI] * fs - bS * S * rate;
+  const ds = -c[bI] * fs - bS * slopeS;
   const dd = 1 + c[bI] * fd - bD * D * rate;
   const determinant = ss * dd - sd * ds;
   const stepS = shortened((sd * rd - dd * rs) / determinant, vs, c, device);
@@ -101,15 +103,21 @@ function shortened(step: number, v: number, c: Float64Array, device: number): nu
 
 /** Current of a junction above its reverse current, A, at the overdrive `v`; nothing below the threshold at which it is under 5e-5 of that. */
 function junctionCurrent(c: Float64Array, device: number, v: number): number {
-  if (!(v > c[device + L.ON_V])) return 0;
+  if (!(v > c[device + L.JUNCTION_ON_V])) return 0;
   return c[device + L.REVERSE_A] * exp((v + c[device + L.GATE_OFF_V]) * c[device + L.INVERSE_NVT]);
+}
+
+/** The same of the clamp. */
+function clampCurrent(c: Float64Array, device: number, v: number): number {
+  if (!(v > c[device + L.CLAMP_ON_V])) return 0;
+  return c[device + L.CLAMP_A] * exp((v + c[device + L.GATE_OFF_V]) * c[device + L.CLAMP_INVERSE_NVT]);
 }
 
 function currents(c: Float64Array, t: Float64Array, device: number, s: Float64Array, n: number): void {
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
   s[n + L.CHANNEL_A] = channelA(c, t, device, vs, vd);
-  s[n + L.JUNCTION_S] = junctionCurrent(c, device, vs);
+  s[n + L.JUNCTION_S] = junctionCurrent(c, device, vs) + clampCurrent(c, device, vs);
   s[n + L.JUNCTION_D] = junctionCurrent(c, device, vd);
 }
 
@@ -126,7 +134,7 @@ function residual(
   vd: number,
 ): number {
   const channel = channelA(c, t, device, vs, vd);
-  return own - free - perA * channel - perS * junctionCurrent(c, device, vs) - perD * junctionCurrent(c, device, vd);
+  return own - free - perA * channel - perS * (junctionCurrent(c, device, vs) + clampCurrent(c, device, vs)) - perD * junctionCurrent(c, device, vd);
 }
 
 /** Nested bisection between brackets that are widened until they hold the solution. */
