@@ -141,14 +141,17 @@ function matrixStamps(elements: readonly Element[], { row, branchOf, size }: Pla
     switch (element.kind) {
       case 'source':
       case 'supply':
-        return output(element.node, branch);
+        output(element.node, branch);
+        return;
       case 'summer':
         output(element.output, branch);
         add(branch, row(element.direct), -1, -1);
         add(branch, row(element.plus), index, -1);
-        return add(branch, row(element.minus), index, 1);
+        add(branch, row(element.minus), index, 1);
+        return;
       case 'transconductance':
-        return add(row(element.node), row(element.sensed), index, -1);
+        add(row(element.node), row(element.sensed), index, -1);
+        return;
       case 'conductance':
         for (const [node, sign] of [[element.a, 1] as const, [element.b, -1] as const]) {
           add(row(node), row(element.a), index, sign);

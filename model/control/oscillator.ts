@@ -5,12 +5,13 @@
  *          sine      sin(2π·phase)
  *          triangle  ±1 in straight lines
  *          square    the triangle multiplied and cut, so that each edge lasts `edgeSec`
+ *          rising    a straight line from one end to the other, back within `edgeSec`; falling is its mirror image in time
  * Scheme   phase added up sample by sample in turns, so that blocks of any length give the same bits
  */
 import type { Control } from '../design/types.ts';
 import { sinTurns } from '../device/math.ts';
 
-export type Shape = 'fixed' | 'sine' | 'triangle' | 'square';
+export type Shape = 'fixed' | 'sine' | 'triangle' | 'square' | 'rising' | 'falling';
 
 /** Plain numbers. All but `shape` may move while it runs. */
 export interface OscillatorNumbers {
@@ -19,35 +20,35 @@ export interface OscillatorNumbers {
   /** Signed: (to − from)/2. */
   readonly halfV: number;
   readonly turnsPerSample: number;
-  /** Gain on the triangle before it is cut to ±1. */
-  readonly steepness: number;
+  /** Share of the period that one edge (square) or the flyback (ramps) takes. */
+  readonly edgeTurns: number;
 }
 
 /** Slots of a running oscillator: the numbers in force, then the phase. */
 export const MIDDLE_V = 0;
 export const HALF_V = 1;
 export const TURNS = 2;
-export const STEEPNESS = 3;
+export const EDGE_TURNS = 3;
 export const OSCILLATOR_VALUES = 4;
 export const PHASE = 4;
 
 /** Numbers at `rateHz` samples a second. Throws a RangeError for a control that is not an oscillator or cannot be realised. */
 export function compileOscillator(control: Control, rateHz: number): OscillatorNumbers {
-  if (control.source === 'fixed') return { shape: 'fixed', middleV: control.controlV, halfV: 0, turnsPerSample: 0, steepness: 1 };
+  if (control.source === 'fixed') return { shape: 'fixed', middleV: control.controlV, halfV: 0, turnsPerSample: 0, edgeTurns: 1 };
   if (control.source !== 'lfo')
     throw new RangeError(`control.source is ${control.source}; the engine moves the gate by fixed or lfo so far`);
   const { shape, fromV, toV, rateHz: lfoHz, edgeSec } = control;
   const longest = 0.5 / lfoHz;
-  if (shape === 'square' && edgeSec > longest) {
+  const hasEdges = shape === 'square' || shape === 'rising' || shape === 'falling';
+  if (hasEdges && edgeSec > longest) {
     throw new RangeError(`control.edgeSec is ${edgeSec}; expected at most half a period, ${longest} s at ${lfoHz} Hz`);
   }
-  const shortest = 1 / rateHz;
-  const steepness = shape === 'square' ? 0.5 / (Math.max(edgeSec, shortest) * lfoHz) : 1;
-  return { shape, middleV: (fromV + toV) / 2, halfV: (toV - fromV) / 2, turnsPerSample: lfoHz / rateHz, steepness };
+  const edgeTurns = hasEdges ? Math.max(edgeSec, 1 / rateHz) * lfoHz : 1;
+  return { shape, middleV: (fromV + toV) / 2, halfV: (toV - fromV) / 2, turnsPerSample: lfoHz / rateHz, edgeTurns };
 }
 
 export function createOscillator(numbers: OscillatorNumbers): Float64Array {
-  return Float64Array.of(numbers.middleV, numbers.halfV, numbers.turnsPerSample, numbers.steepness, 0);
+  return Float64Array.of(numbers.middleV, numbers.halfV, numbers.turnsPerSample, numbers.edgeTurns, 0);
 }
 
 /** Fills `output` from `from` to `to` with volts. */
@@ -59,10 +60,10 @@ export function runOscillator(shape: Shape, oscillator: Float64Array, output: Fl
     return;
   }
   const turns = oscillator[TURNS];
-  const steepness = oscillator[STEEPNESS];
+  const edgeTurns = oscillator[EDGE_TURNS];
   let phase = oscillator[PHASE];
   for (let i = from; i < to; i++) {
-    output[i] = middle + half * shapeAt(shape, phase, steepness);
+    output[i] = middle + half * shapeAt(shape, phase, edgeTurns);
     phase += turns;
     if (phase >= 1) phase -= 1;
   }
@@ -70,9 +71,31 @@ export function runOscillator(shape: Shape, oscillator: Float64Array, output: Fl
 }
 
 /** The shape at a phase of 0 to 1, −1 … 1. */
-export function shapeAt(shape: Shape, phase: number, steepness: number): number {
-  if (shape === 'sine') return sinTurns(phase);
-  const triangle = phase < 0.25 ? 4 * phase : phase < 0.75 ? 2 - 4 * phase : 4 * phase - 4;
-  if (shape === 'triangle') return triangle;
-  return Math.min(1, Math.max(-1, triangle * steepness));
+export function shapeAt(shape: Shape, phase: number, edgeTurns: number): number {
+  switch (shape) {
+    case 'fixed':
+      return 0;
+    case 'sine':
+      return sinTurns(phase);
+    case 'rising':
+      return ramp(phase, edgeTurns);
+    case 'falling':
+      return ramp(1 - phase, edgeTurns);
+    case 'triangle':
+      return triangle(phase);
+    case 'square':
+      return Math.min(1, Math.max(-1, (0.5 / edgeTurns) * triangle(phase)));
+  }
+}
+
+function triangle(phase: number): number {
+  if (phase < 0.25) return 4 * phase;
+  return phase < 0.75 ? 2 - 4 * phase : 4 * phase - 4;
+}
+
+/** Up through 0 at phase 0 to 1, then back to −1 within `edgeTurns`, centred on phase ½. */
+function ramp(phase: number, edgeTurns: number): number {
+  const half = (1 - edgeTurns) / 2;
+  if (phase <= half) return phase / half;
+  return phase >= 1 - half ? (phase - 1) / half : (1 - 2 * phase) / edgeTurns;
 }

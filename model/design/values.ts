@@ -8,7 +8,7 @@
  */
 
 /** The units of the design; '' is a plain number. */
-export type Unit = 'Ω' | 'F' | 'V' | 'A' | 'Hz' | 's' | 'S' | '1/V' | '°C' | 'dB' | '';
+export type Unit = 'Ω' | 'F' | 'V' | 'A' | 'Hz' | 's' | 'S' | 'H' | 'V/s' | '1/V' | '°C' | 'dB' | '';
 
 /** What was typed is not a quantity. `fault` says so in one sentence, `advice` how to write it. */
 export class QuantityError extends RangeError {
@@ -66,6 +66,8 @@ const RULES: Readonly<Record<Unit, UnitRule>> = {
   Hz: { ...rule('a frequency', '4.2, 4.2 Hz or 1k5', 'Hz', 0, 9), spellings: ['Hz', 'hz'], pointLetter: '' },
   s: { ...rule('a time', '10m, 10 ms or 0.01', 's', -9, 0), spellings: ['s', 'sec'], pointLetter: '' },
   S: rule('a conductance', '1p, 1 pS or 1e-12', 'S', -15, 0),
+  H: rule('an inductance', '4, 4H5 or 100 mH', 'H', -6, 0),
+  'V/s': { ...rule('a slew rate', '13M, 0.5e6 or 500k', 'V/s', 0, 9), spellings: ['V/s'], pointLetter: '' },
   '1/V': { ...rule('a value per volt', '0.02, 20m or 0.02 /V', '/V', 0, 0), spellings: ['/V', '1/V'], pointLetter: '' },
   '°C': { ...PLAIN, noun: 'a temperature', examples: '25, 25 °C or -40', printed: '°C', spellings: ['°C', 'C', '℃'], fixedPoint: true },
   dB: { ...PLAIN, noun: 'a level in decibels', examples: '-6, 18 dB or +0.5', printed: 'dB', spellings: ['dB', 'db'], fixedPoint: true },

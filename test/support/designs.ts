@@ -15,17 +15,30 @@ export const CELL_A_DEVICE: Device = {
   junction: { reverseA: 0, ideality: 1, leakageS: 0 },
   gateSourceF: 0,
   gateDrainF: 0,
+  grading: 0,
 };
 
 /** 10 kΩ in series, next to no load. */
 export const CELL_A: Cell = {
   circuit: 'shunt',
+  feed: { kind: 'direct' },
   sourceOhm: 0,
+  pad: { kind: 'none' },
+  buffer: { kind: 'none' },
+  coupling: { kind: 'none' },
   seriesOhm: 10000,
+  drainReturnOhm: null,
+  outputCouplingF: null,
   loadOhm: 1e12,
   loadF: 0,
+  driverOhm: 0,
+  smoothing: { kind: 'none' },
   controlOhm: 1e9,
   feedback: { kind: 'none' },
+  clamp: { kind: 'none' },
+  reference: { kind: 'ground' },
+  sharedGround: { kind: 'none' },
+  strayF: 0,
 };
 
 /** A whole board: junctions, picofarads, feedback pair with blocking capacitor. */
@@ -49,9 +62,15 @@ export function variantOf(
   device: Partial<Device> = {},
   control: Control = { source: 'fixed', controlV: -1.2 },
 ): Variant {
-  return { name: 'A', device: { ...CELL_A_DEVICE, ...device }, cell: { ...CELL_A, ...cell }, control, output: { gainDb: 0 } };
+  return {
+    name: 'A',
+    device: { ...CELL_A_DEVICE, ...device },
+    cell: { ...CELL_A, ...cell },
+    control,
+    output: { gainDb: 0, gainBandwidthHz: null, slewVPerSec: null, swingV: null },
+  };
 }
 
 export function designOf(variant: Variant, values: Partial<Design> = {}): Design {
-  return { fettle: 1, title: 'Test', fullScaleV: 1, tempC: 25, oversampling: 8, variants: [variant], ...values };
+  return { fettle: 1, title: 'Test', fullScaleV: 1, tempC: 25, oversampling: 8, noise: { kind: 'none' }, variants: [variant], ...values };
 }

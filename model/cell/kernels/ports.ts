@@ -134,7 +134,13 @@ function residual(
   vd: number,
 ): number {
   const channel = channelA(c, t, device, vs, vd);
-  return own - free - perA * channel - perS * (junctionCurrent(c, device, vs) + clampCurrent(c, device, vs)) - perD * junctionCurrent(c, device, vd);
+  return (
+    own -
+    free -
+    perA * channel -
+    perS * (junctionCurrent(c, device, vs) + clampCurrent(c, device, vs)) -
+    perD * junctionCurrent(c, device, vd)
+  );
 }
 
 /** Nested bisection between brackets that are widened until they hold the solution. */
