@@ -38,6 +38,7 @@ const WIDTH_V = 5;
 const CLAMP_A = 6;
 const CLAMP_NVT_V = 7;
 export const DEVICE_VALUES = 8;
+const NO_NOISE = new Float64Array(0);
 
 /** Plain numbers, structured-cloneable. `values` are the elements' movable values, then the device's. */
 export interface CellNumbers {
@@ -76,8 +77,8 @@ interface RestMemory {
 }
 
 /** Numbers of a circuit with its device at `tempC`. Throws a RangeError that names what cannot be computed. */
-export function compileCell(circuit: Circuit, device: Device, tempC: number): CellNumbers {
-  const plan = planCircuit(circuit);
+export function compileCell(circuit: Circuit, device: Device, tempC: number, noise = false): CellNumbers {
+  const plan = planCircuit(circuit, noise);
   if (plan.states.length >= KERNELS.square.length) {
     throw new RangeError(`the circuit has ${plan.states.length} independent capacitors; expected at most ${KERNELS.square.length - 1}`);
   }
@@ -154,10 +155,20 @@ export function loadValues(cell: Cell, values: Float64Array): boolean {
   return true;
 }
 
-/** Advances over the samples `from` to `to` of `signal`, V at the step rate: the audio in, the output node in its place. `control` in V. */
-export function advanceCell(cell: Cell, signal: Float64Array, control: Float64Array, from: number, to: number): void {
+/**
+ * Advances over the samples `from` to `to` of `signal`, V at the step rate: the audio in, the output node in its place. `control` in V;
+ * `noise` as `noise.ts` fills it, or left out.
+ */
+export function advanceCell(
+  cell: Cell,
+  signal: Float64Array,
+  control: Float64Array,
+  from: number,
+  to: number,
+  noise: Float64Array = NO_NOISE,
+): void {
   const { law, table } = cell.numbers;
-  KERNELS[law][cell.stateCount](cell.coefficients, table, cell.state, signal, control, signal, from, to);
+  KERNELS[law][cell.stateCount](cell.coefficients, table, noise, cell.state, signal, control, signal, from, to);
 }
 
 /** Gate-source voltage of the last sample, V, with the sign of the part's channel. */
@@ -278,7 +289,7 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   rest.audio[0] = audioV;
   rest.control[0] = controlV;
   const { law, table } = cell.numbers;
-  KERNELS[law][0](rest.coefficients, table, rest.state, rest.audio, rest.control, rest.output, 0, 1);
+  KERNELS[law][0](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
   const reverseA = deviceValue(cell, REVERSE_A);
   const channelA = rest.state[L.CHANNEL_A];
   const gateSourceA = polarity * (channelA + rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A));

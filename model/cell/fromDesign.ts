@@ -9,11 +9,11 @@ export function deviceOf(variant: Variant, channel: number): Device {
   return variant.devices ? variant.devices[channel === 0 ? 0 : 1] : variant.device;
 }
 
-/** Numbers of the cell of one variant and channel. Throws a RangeError that names what cannot be computed. */
-export function cellNumbers(design: Design, variantIndex: number, channel: number): CellNumbers {
+/** Numbers of the cell of one variant and channel, with `noise` ready for sampled thermal noise. Throws a RangeError that names what cannot be computed. */
+export function cellNumbers(design: Design, variantIndex: number, channel: number, noise = false): CellNumbers {
   const variant = variantAt(design, variantIndex);
   const device = deviceOf(variant, channel);
-  return compileCell(shuntCircuit(variant.cell, atTemperature(device, design.tempC).device), device, design.tempC);
+  return compileCell(shuntCircuit(variant.cell, atTemperature(device, design.tempC).device), device, design.tempC, noise);
 }
 
 /** The variant at an index. Throws a RangeError when there is none. */

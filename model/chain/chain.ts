@@ -3,7 +3,7 @@
  * belong outside the audio callback; `processChain` computes only.
  */
 import { gateSourceV } from '../cell/cell.ts';
-import { PHASE } from '../control/oscillator.ts';
+import { quietControlV } from '../control/control.ts';
 import type { ChainNumbers } from './compile.ts';
 import { oversamplingDelay } from './oversample.ts';
 import { createVoice, LONGEST_BLOCK, moveVoice, processVoice, type Voice } from './voice.ts';
@@ -39,6 +39,7 @@ export interface Chain {
   pending: Voice | null;
   fadeDone: number;
   readonly inputs: readonly Float64Array[];
+  readonly external: Float64Array;
   readonly outputs: readonly Float64Array[];
   readonly fadeOutputs: readonly Float64Array[];
 }
@@ -51,7 +52,7 @@ export function createChain(numbers: ChainNumbers): Chain {
     numbers,
     latencySamples: oversamplingDelay(numbers.oversampling, numbers.filters),
     readings: {
-      controlV: voice.oscillator[0],
+      controlV: quietControlV(numbers.control),
       gateSourceV: gateSourceV(voice.quiet.cell),
       feedthroughPeakV: 0,
       drainPeakV: 0,
@@ -64,6 +65,7 @@ export function createChain(numbers: ChainNumbers): Chain {
     pending: null,
     fadeDone: 0,
     inputs: buffers(),
+    external: new Float64Array(LONGEST_BLOCK),
     outputs: buffers(),
     fadeOutputs: buffers(),
   };
@@ -93,14 +95,19 @@ export function moveChain(chain: Chain, numbers: ChainNumbers): void {
 }
 
 function startFade(chain: Chain, next: Voice): void {
-  next.oscillator[PHASE] = chain.voice.oscillator[PHASE];
+  next.drive.phase[0] = chain.voice.drive.phase[0];
   chain.next = next;
   chain.fadeDone = -Math.round(LEAD_SEC * next.numbers.sampleRateHz);
   chain.latencySamples = oversamplingDelay(next.numbers.oversampling, next.numbers.filters);
 }
 
-/** Any number of frames. Missing inputs are silence. Never throws, allocates nothing. */
-export function processChain(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[]): void {
+/** Any number of frames. Missing inputs are silence; `external` is the recorded control, where the design has one, silence when missing. Never throws, allocates nothing. */
+export function processChain(
+  chain: Chain,
+  inputs: readonly Float32Array[],
+  outputs: readonly Float32Array[],
+  external: Float32Array | null = null,
+): void {
   const { readings } = chain;
   const length = outputs.length > 0 ? outputs[0].length : 0;
   readings.inputPeakV = 0;
@@ -108,6 +115,7 @@ export function processChain(chain: Chain, inputs: readonly Float32Array[], outp
   readings.drainPeakV = 0;
   readings.feedthroughPeakV = 0;
   for (let start = 0; start < length; start += LONGEST_BLOCK) {
+    takeExternal(chain, external, start, Math.min(LONGEST_BLOCK, length - start));
     processBlock(chain, inputs, outputs, start, Math.min(LONGEST_BLOCK, length - start));
   }
   readings.gateSourceV = gateSourceV(chain.voice.quiet.cell);
@@ -116,7 +124,7 @@ export function processChain(chain: Chain, inputs: readonly Float32Array[], outp
 function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[], start: number, count: number): void {
   const { readings, voice } = chain;
   let sound = takeInputs(chain, inputs, start, count);
-  sound = processVoice(voice, chain.inputs, chain.outputs, count) && sound;
+  sound = processVoice(voice, chain.inputs, chain.external, chain.outputs, count) && sound;
   if (chain.next) sound = crossfade(chain, chain.next, count) && sound;
   for (let channel = 0; channel < outputs.length; channel++) {
     const from = chain.outputs[Math.min(channel, chain.outputs.length - 1)];
@@ -128,18 +136,25 @@ function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: re
       if (size > readings.outputPeak) readings.outputPeak = size;
     }
   }
-  for (let channel = 0; channel < voice.drainPeakV.length; channel++) {
-    if (voice.drainPeakV[channel] > readings.drainPeakV) readings.drainPeakV = voice.drainPeakV[channel];
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    readings.drainPeakV = Math.max(readings.drainPeakV, voice.lanes[channel].drainPeakV);
   }
   readings.feedthroughPeakV = Math.max(readings.feedthroughPeakV, voice.quiet.feedthroughPeakV);
-  readings.controlV = voice.control[count * voice.numbers.oversampling - 1];
+  readings.controlV = voice.drive.controls[0][count * voice.numbers.oversampling - 1];
   if (!sound) readings.faults += 1;
+}
+
+function takeExternal(chain: Chain, external: Float32Array | null, start: number, count: number): void {
+  for (let i = 0; i < count; i++) {
+    const sample = external ? external[start + i] : 0;
+    chain.external[i] = Math.abs(sample) <= LARGEST_SAMPLE ? sample : 0;
+  }
 }
 
 /** Copies the block's input to Float64; false when a sample was not a usable number. */
 function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number, count: number): boolean {
   const { readings } = chain;
-  const fullScaleV = chain.voice.gains.now[0];
+  const fullScaleV = chain.voice.scale.now[0];
   let sound = true;
   for (let channel = 0; channel < chain.inputs.length; channel++) {
     const to = chain.inputs[channel];
@@ -157,7 +172,7 @@ function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number
 }
 
 function crossfade(chain: Chain, next: Voice, count: number): boolean {
-  const sound = processVoice(next, chain.inputs, chain.fadeOutputs, count);
+  const sound = processVoice(next, chain.inputs, chain.external, chain.fadeOutputs, count);
   const total = Math.round(FADE_SEC * next.numbers.sampleRateHz);
   for (let channel = 0; channel < chain.outputs.length; channel++) {
     const out = chain.outputs[channel];

@@ -1,9 +1,9 @@
-/** From a design to the flat numbers of a chain: source and pad, oversampling, cell and control, make-up gain. Off the audio thread. */
+/** From a design to the flat numbers of a chain: source and pad, oversampling, cell and control, make-up amplifier. Off the audio thread. */
 import type { CellNumbers } from '../cell/cell.ts';
 import { cellNumbers, variantAt } from '../cell/fromDesign.ts';
-import { compileOscillator, type OscillatorNumbers } from '../control/oscillator.ts';
+import { type ControlNumbers, compileControl, controlShape } from '../control/control.ts';
 import type { Design } from '../design/types.ts';
-import { ratioFromDb } from '../device/math.ts';
+import { amplifierValues, isIdeal } from './amplifier.ts';
 import type { FilterSet } from './halfband.ts';
 
 export type { FilterSet } from './halfband.ts';
@@ -16,11 +16,15 @@ export interface ChainNumbers {
   readonly filters: FilterSet;
   /** Volts for a sample of 1.0. */
   readonly fullScaleV: number;
-  /** Samples for a volt at the drain: the make-up gain over full scale. */
-  readonly outputPerV: number;
-  readonly oscillator: OscillatorNumbers;
+  readonly control: ControlNumbers;
   /** One for each audio channel. */
   readonly cells: readonly CellNumbers[];
+  /** Values of amplifier.ts; an ideal one has only gain, and is applied at the lower rate. */
+  readonly amplifier: Float64Array;
+  readonly idealAmplifier: boolean;
+  /** Seed of the sampled thermal noise; null for none. */
+  readonly noiseSeed: number | null;
+  readonly tempC: number;
 }
 
 const LOWEST_RATE_HZ = 8000;
@@ -39,17 +43,21 @@ export function compileChain(
   }
   if (channels !== 1 && channels !== 2) throw new RangeError(`the audio has ${channels} channels; expected 1 or 2`);
   const variant = variantAt(design, variantIndex);
-  const oscillator = compileOscillator(variant.control, sampleRateHz * design.oversampling);
-  const cells = Array.from({ length: channels }, (_, channel) => cellNumbers(design, variantIndex, channel));
-  const shape = [sampleRateHz, design.oversampling, filters, oscillator.shape, ...cells.map((cell) => cell.shape)].join(' | ');
-  return {
-    shape,
+  const { oversampling, noise, fullScaleV, tempC } = design;
+  const upperHz = sampleRateHz * oversampling;
+  const control = compileControl(variant.control, upperHz);
+  const noiseSeed = noise.kind === 'thermal' ? noise.seed : null;
+  const cells = Array.from({ length: channels }, (_, channel) => cellNumbers(design, variantIndex, channel, noiseSeed !== null));
+  const idealAmplifier = isIdeal(variant.output);
+  const shape = [
     sampleRateHz,
-    oversampling: design.oversampling,
+    oversampling,
     filters,
-    fullScaleV: design.fullScaleV,
-    outputPerV: ratioFromDb(variant.output.gainDb) / design.fullScaleV,
-    oscillator,
-    cells,
-  };
+    controlShape(control),
+    idealAmplifier ? 'ideal' : 'real',
+    noiseSeed ?? 'silent',
+    ...cells.map((cell) => cell.shape),
+  ].join(' | ');
+  const amplifier = amplifierValues(variant.output, upperHz);
+  return { shape, sampleRateHz, oversampling, filters, fullScaleV, control, cells, amplifier, idealAmplifier, noiseSeed, tempC };
 }

@@ -1,10 +1,14 @@
 /**
- * One complete path of a chain, for one shape of circuit: oversamplers, cells and control with their state. Values move along straight lines in
- * conductance, capacitance, volts and gain; the cell's matrices are made anew every `SLICE` upper-rate samples while they do.
+ * One complete path of a chain, for one shape of circuit: oversamplers, cells, control and amplifier with their state. Values move along straight
+ * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `SLICE` upper-rate samples while they do.
  */
 import { advanceCell, type Cell, createCell, loadValues, settle } from '../cell/cell.ts';
-import { createOscillator, MIDDLE_V, OSCILLATOR_VALUES, type OscillatorNumbers, runOscillator } from '../control/oscillator.ts';
+import { noiseWidth } from '../cell/kernels/layout.ts';
+import { quietControlV } from '../control/control.ts';
+import { createGaussian, type GaussianSource } from '../device/random.ts';
+import { createAmplifierState, GAIN, processAmplifier } from './amplifier.ts';
 import type { ChainNumbers } from './compile.ts';
+import { advanceSlice, createDrive, type Drive } from './drive.ts';
 import { createOversampler, lower, type Oversampler, raise } from './oversample.ts';
 
 /** Lower-rate samples that a voice takes at a time. */
@@ -15,30 +19,39 @@ const RAMP_SEC = 0.02;
 /** A voltage that no cell of this kind reaches: beyond it the state is taken to be lost. */
 const RUNAWAY_V = 1e6;
 
-const FULL_SCALE_V = 0;
-const OUTPUT_PER_V = 1;
-
 interface Moving {
   readonly now: Float64Array;
   readonly from: Float64Array;
   readonly to: Float64Array;
 }
 
+/** One audio channel of a voice. */
+export interface Lane {
+  readonly cell: Cell;
+  readonly oversampler: Oversampler;
+  readonly amplifier: Float64Array;
+  readonly values: Moving;
+  readonly noise: Float64Array;
+  readonly gaussian: GaussianSource;
+  /** Of the last block. */
+  drainPeakV: number;
+}
+
 export interface Voice {
   readonly numbers: ChainNumbers;
-  readonly cells: readonly Cell[];
-  readonly oversamplers: readonly Oversampler[];
-  readonly oscillator: Float64Array;
-  readonly control: Float64Array;
-  readonly gains: Moving;
-  readonly controlValues: Moving;
-  readonly values: readonly Moving[];
+  readonly lanes: readonly Lane[];
+  readonly drive: Drive;
+  /** Raises a recorded control; null for other controls. */
+  readonly external: Oversampler | null;
+  /** Full scale, V. */
+  readonly scale: Moving;
+  readonly control: Moving;
+  readonly amplifier: Moving;
   /** Slices done and to do of the ramp; upper-rate samples done of the slice. */
   readonly ramp: { done: number; total: number; inSlice: number };
-  readonly drainPeakV: Float64Array;
   /**
    * A silent copy of the first channel's cell at the lower rate: where the gate stands without the audio that rides on it, and what the
-   * control alone leaves at the drain.
+   * control alone leaves at the output.
    */
   readonly quiet: { readonly cell: Cell; readonly signal: Float64Array; readonly control: Float64Array; feedthroughPeakV: number };
 }
@@ -47,39 +60,48 @@ function moving(values: Float64Array): Moving {
   return { now: values, from: Float64Array.from(values), to: Float64Array.from(values) };
 }
 
-function oscillatorValues(numbers: OscillatorNumbers): Float64Array {
-  return createOscillator(numbers).subarray(0, OSCILLATOR_VALUES);
-}
-
 /** A voice at its operating point. Throws when a cell's network is singular. */
 export function createVoice(numbers: ChainNumbers): Voice {
-  const { oversampling, filters, sampleRateHz } = numbers;
+  const { oversampling, filters, sampleRateHz, noiseSeed } = numbers;
   const stepSec = 1 / (sampleRateHz * oversampling);
-  const cells = numbers.cells.map((cell) => createCell(cell, stepSec));
-  const oscillator = createOscillator(numbers.oscillator);
+  const restV = quietControlV(numbers.control);
   const quietCell = createCell(numbers.cells[0], 1 / sampleRateHz);
-  for (const cell of [...cells, quietCell]) settle(cell, 0, oscillator[MIDDLE_V]);
+  settle(quietCell, 0, restV);
+  const lanes = numbers.cells.map((values, channel): Lane => {
+    const cell = createCell(values, stepSec);
+    settle(cell, 0, restV);
+    const noiseLength = noiseSeed === null ? 0 : LONGEST_BLOCK * oversampling * noiseWidth(cell.stateCount);
+    return {
+      cell,
+      oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK),
+      amplifier: createAmplifierState(),
+      values: moving(Float64Array.from(cell.values)),
+      noise: new Float64Array(noiseLength),
+      gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
+      drainPeakV: 0,
+    };
+  });
+  const control = moving(Float64Array.from(numbers.control.values));
   return {
     numbers,
-    cells,
-    oversamplers: cells.map(() => createOversampler(oversampling, filters, LONGEST_BLOCK)),
-    oscillator,
-    control: new Float64Array(LONGEST_BLOCK * oversampling),
-    gains: moving(Float64Array.of(numbers.fullScaleV, numbers.outputPerV)),
-    controlValues: moving(oscillator.subarray(0, OSCILLATOR_VALUES)),
-    values: numbers.cells.map((cell) => moving(Float64Array.from(cell.values))),
+    lanes,
+    drive: createDrive(numbers.control, control.now, lanes, LONGEST_BLOCK * oversampling),
+    external: numbers.control.kind === 'external' ? createOversampler(oversampling, filters, LONGEST_BLOCK) : null,
+    scale: moving(Float64Array.of(numbers.fullScaleV)),
+    control,
+    amplifier: moving(Float64Array.from(numbers.amplifier)),
     ramp: { done: 0, total: 0, inSlice: 0 },
-    drainPeakV: new Float64Array(cells.length),
     quiet: { cell: quietCell, signal: new Float64Array(LONGEST_BLOCK), control: new Float64Array(LONGEST_BLOCK), feedthroughPeakV: 0 },
   };
 }
 
 /** Starts moving to the values of `numbers`, which have the voice's shape, from wherever they are now. */
 export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
-  retarget(voice.gains, Float64Array.of(numbers.fullScaleV, numbers.outputPerV));
-  retarget(voice.controlValues, oscillatorValues(numbers.oscillator));
+  retarget(voice.scale, Float64Array.of(numbers.fullScaleV));
+  retarget(voice.control, numbers.control.values);
+  retarget(voice.amplifier, numbers.amplifier);
   numbers.cells.forEach((cell, channel) => {
-    retarget(voice.values[channel], cell.values);
+    retarget(voice.lanes[channel].values, cell.values);
   });
   voice.ramp.done = 0;
   voice.ramp.inSlice = 0;
@@ -96,52 +118,52 @@ function follow(values: Moving, fraction: number): void {
   for (let i = 0; i < now.length; i++) now[i] = fraction === 1 ? to[i] : from[i] + fraction * (to[i] - from[i]);
 }
 
-/** Advances by `count` samples, at most LONGEST_BLOCK, from `start` of the inputs. False when a state was lost: the voice is at rest again. */
-export function processVoice(voice: Voice, inputs: readonly Float64Array[], outputs: readonly Float64Array[], count: number): boolean {
-  const { cells, oversamplers, gains, numbers } = voice;
+/**
+ * Advances by `count` samples, at most LONGEST_BLOCK; `external` is the recorded control, used where there is one. False when a state was lost:
+ * the voice is at rest again.
+ */
+export function processVoice(
+  voice: Voice,
+  inputs: readonly Float64Array[],
+  external: Float64Array,
+  outputs: readonly Float64Array[],
+  count: number,
+): boolean {
+  const { lanes, numbers } = voice;
   const upperCount = count * numbers.oversampling;
-  for (let channel = 0; channel < cells.length; channel++) {
-    const first = oversamplers[channel].buffers[0];
-    const fullScaleV = gains.now[FULL_SCALE_V];
+  for (let channel = 0; channel < lanes.length; channel++) {
+    const first = lanes[channel].oversampler.buffers[0];
+    const fullScaleV = voice.scale.now[0];
     for (let i = 0; i < count; i++) first[i] = inputs[channel][i] * fullScaleV;
-    raise(oversamplers[channel], count);
+    raise(lanes[channel].oversampler, count);
+  }
+  if (voice.external) {
+    const first = voice.external.buffers[0];
+    for (let i = 0; i < count; i++) first[i] = external[i];
+    voice.drive.recorded = raise(voice.external, count);
   }
   advanceAll(voice, upperCount);
   advanceQuiet(voice, count);
   let sound = true;
-  for (let channel = 0; channel < cells.length; channel++) {
-    sound = keepPeak(voice, channel, upperCount) && sound;
-    const low = lower(oversamplers[channel], count);
-    const perV = gains.now[OUTPUT_PER_V];
+  for (let channel = 0; channel < lanes.length; channel++) {
+    const lane = lanes[channel];
+    sound = keepPeak(voice, lane, upperCount) && sound;
+    const low = lower(lane.oversampler, count);
+    const perV = (numbers.idealAmplifier ? voice.amplifier.now[GAIN] : 1) / voice.scale.now[0];
     for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * perV;
   }
   return sound;
 }
 
-function advanceQuiet(voice: Voice, count: number): void {
-  const { quiet, control, numbers } = voice;
-  for (let i = 0; i < count; i++) {
-    quiet.signal[i] = 0;
-    quiet.control[i] = control[(i + 1) * numbers.oversampling - 1];
-  }
-  advanceCell(quiet.cell, quiet.signal, quiet.control, 0, count);
-  quiet.feedthroughPeakV = 0;
-  for (let i = 0; i < count; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
-}
-
-/** Control and cells, slice by slice while values move. */
+/** Control, cells and amplifiers, slice by slice while values move. */
 function advanceAll(voice: Voice, upperCount: number): void {
-  const { cells, oversamplers, control, ramp, numbers } = voice;
+  const { lanes, ramp, numbers } = voice;
   let at = 0;
   while (at < upperCount) {
     const isMoving = ramp.done < ramp.total;
     const end = isMoving ? Math.min(upperCount, at + SLICE - ramp.inSlice) : upperCount;
     if (isMoving && ramp.inSlice === 0) takeValues(voice, (ramp.done + 1) / ramp.total);
-    runOscillator(numbers.oscillator.shape, voice.oscillator, control, at, end);
-    for (let channel = 0; channel < cells.length; channel++) {
-      const { buffers } = oversamplers[channel];
-      advanceCell(cells[channel], buffers[buffers.length - 1], control, at, end);
-    }
+    advanceSlice(voice.drive, lanes, numbers, at, end);
     if (isMoving) {
       ramp.inSlice += end - at;
       if (ramp.inSlice === SLICE) {
@@ -154,19 +176,32 @@ function advanceAll(voice: Voice, upperCount: number): void {
 }
 
 function takeValues(voice: Voice, fraction: number): void {
-  follow(voice.gains, fraction);
-  follow(voice.controlValues, fraction);
-  for (let channel = 0; channel < voice.cells.length; channel++) {
-    const values = voice.values[channel];
+  follow(voice.scale, fraction);
+  follow(voice.control, fraction);
+  follow(voice.amplifier, fraction);
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const { cell, values } = voice.lanes[channel];
     follow(values, fraction);
-    loadValues(voice.cells[channel], values.now);
+    loadValues(cell, values.now);
   }
-  loadValues(voice.quiet.cell, voice.values[0].now);
+  loadValues(voice.quiet.cell, voice.lanes[0].values.now);
 }
 
-/** Notes the drain's peak; puts the cell at rest and silences its block when the voltage is not a number or has run away. */
-function keepPeak(voice: Voice, channel: number, upperCount: number): boolean {
-  const { buffers } = voice.oversamplers[channel];
+function advanceQuiet(voice: Voice, count: number): void {
+  const { quiet, drive, numbers } = voice;
+  for (let i = 0; i < count; i++) {
+    quiet.signal[i] = 0;
+    quiet.control[i] = drive.controls[0][(i + 1) * numbers.oversampling - 1];
+  }
+  advanceCell(quiet.cell, quiet.signal, quiet.control, 0, count);
+  quiet.feedthroughPeakV = 0;
+  for (let i = 0; i < count; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
+  if (!(quiet.feedthroughPeakV < RUNAWAY_V)) settle(quiet.cell, 0, quietControlV(numbers.control));
+}
+
+/** Notes the cell's peak and amplifies; puts the cell at rest and silences its block when the voltage is not a number or has run away. */
+function keepPeak(voice: Voice, lane: Lane, upperCount: number): boolean {
+  const { buffers } = lane.oversampler;
   const drain = buffers[buffers.length - 1];
   let peak = 0;
   let lost = false;
@@ -175,14 +210,13 @@ function keepPeak(voice: Voice, channel: number, upperCount: number): boolean {
     if (!(size < RUNAWAY_V)) lost = true;
     if (size > peak) peak = size;
   }
-  if (!lost) {
-    voice.drainPeakV[channel] = peak;
-    return true;
+  lane.drainPeakV = lost ? 0 : peak;
+  if (lost) {
+    drain.fill(0);
+    lane.amplifier.fill(0);
+    lane.cell.state.fill(0);
+    settle(lane.cell, 0, quietControlV(voice.numbers.control));
   }
-  drain.fill(0);
-  voice.drainPeakV[channel] = 0;
-  const cell = voice.cells[channel];
-  cell.state.fill(0);
-  settle(cell, 0, voice.oscillator[MIDDLE_V]);
-  return false;
+  if (!voice.numbers.idealAmplifier) processAmplifier(voice.amplifier.now, lane.amplifier, drain, 0, upperCount);
+  return !lost;
 }

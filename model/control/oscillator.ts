@@ -24,13 +24,11 @@ export interface OscillatorNumbers {
   readonly edgeTurns: number;
 }
 
-/** Slots of a running oscillator: the numbers in force, then the phase. */
+/** Movable values of an oscillator, by place. */
 export const MIDDLE_V = 0;
 export const HALF_V = 1;
 export const TURNS = 2;
 export const EDGE_TURNS = 3;
-export const OSCILLATOR_VALUES = 4;
-export const PHASE = 4;
 
 /** Numbers at `rateHz` samples a second. Throws a RangeError for a control that is not an oscillator or cannot be realised. */
 export function compileOscillator(control: Control, rateHz: number): OscillatorNumbers {
@@ -47,45 +45,52 @@ export function compileOscillator(control: Control, rateHz: number): OscillatorN
   return { shape, middleV: (fromV + toV) / 2, halfV: (toV - fromV) / 2, turnsPerSample: lfoHz / rateHz, edgeTurns };
 }
 
-export function createOscillator(numbers: OscillatorNumbers): Float64Array {
-  return Float64Array.of(numbers.middleV, numbers.halfV, numbers.turnsPerSample, numbers.edgeTurns, 0);
+/** The movable values. */
+export function oscillatorValues(numbers: OscillatorNumbers): Float64Array {
+  return Float64Array.of(numbers.middleV, numbers.halfV, numbers.turnsPerSample, numbers.edgeTurns);
 }
 
-/** Fills `output` from `from` to `to` with volts. */
-export function runOscillator(shape: Shape, oscillator: Float64Array, output: Float64Array, from: number, to: number): void {
-  const middle = oscillator[MIDDLE_V];
-  const half = oscillator[HALF_V];
-  if (shape === 'fixed') {
-    for (let i = from; i < to; i++) output[i] = middle;
-    return;
-  }
-  const turns = oscillator[TURNS];
-  const edgeTurns = oscillator[EDGE_TURNS];
-  let phase = oscillator[PHASE];
+/** Fills `output` from `from` to `to` with volts; `phase[0]` is carried on, 0 to 1. */
+export function runOscillator(shape: Shape, values: Float64Array, phase: Float64Array, output: Float64Array, from: number, to: number): void {
+  const middle = values[MIDDLE_V];
+  if (shape === 'fixed') for (let i = from; i < to; i++) output[i] = middle;
+  else if (shape === 'sine') runSine(values, phase, output, from, to);
+  else runLines(shape, values, phase, output, from, to);
+}
+
+/** Apart from the others so that the sine stays within what engines inline: a number returned from a call costs memory. */
+function runSine(values: Float64Array, phase: Float64Array, output: Float64Array, from: number, to: number): void {
+  const middle = values[MIDDLE_V];
+  const half = values[HALF_V];
+  const turns = values[TURNS];
+  let turn = phase[0];
   for (let i = from; i < to; i++) {
-    output[i] = middle + half * shapeAt(shape, phase, edgeTurns);
-    phase += turns;
-    if (phase >= 1) phase -= 1;
+    output[i] = middle + half * sinTurns(turn);
+    turn += turns;
+    if (turn >= 1) turn -= 1;
   }
-  oscillator[PHASE] = phase;
+  phase[0] = turn;
 }
 
-/** The shape at a phase of 0 to 1, −1 … 1. */
-export function shapeAt(shape: Shape, phase: number, edgeTurns: number): number {
-  switch (shape) {
-    case 'fixed':
-      return 0;
-    case 'sine':
-      return sinTurns(phase);
-    case 'rising':
-      return ramp(phase, edgeTurns);
-    case 'falling':
-      return ramp(1 - phase, edgeTurns);
-    case 'triangle':
-      return triangle(phase);
-    case 'square':
-      return Math.min(1, Math.max(-1, (0.5 / edgeTurns) * triangle(phase)));
+function runLines(shape: Shape, values: Float64Array, phase: Float64Array, output: Float64Array, from: number, to: number): void {
+  const middle = values[MIDDLE_V];
+  const half = values[HALF_V];
+  const turns = values[TURNS];
+  const edgeTurns = values[EDGE_TURNS];
+  let turn = phase[0];
+  for (let i = from; i < to; i++) {
+    output[i] = middle + half * linesAt(shape, turn, edgeTurns);
+    turn += turns;
+    if (turn >= 1) turn -= 1;
   }
+  phase[0] = turn;
+}
+
+/** The shapes made of straight lines, at a phase of 0 to 1, −1 … 1. */
+function linesAt(shape: Shape, phase: number, edgeTurns: number): number {
+  if (shape === 'rising') return ramp(phase, edgeTurns);
+  if (shape === 'falling') return ramp(1 - phase, edgeTurns);
+  return shape === 'triangle' ? triangle(phase) : Math.min(1, Math.max(-1, (0.5 / edgeTurns) * triangle(phase)));
 }
 
 function triangle(phase: number): number {

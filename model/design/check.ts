@@ -3,7 +3,7 @@
  * what was expected; nothing is clamped or dropped.
  */
 import { defaultOf, type Field, type FieldInfo, type Group, keyField, type List, memberIn, type Union } from './kinds.ts';
-import { either, expectedOf, joinPath, nearName, shown } from './wording.ts';
+import { either, expectedOf, inRange, joinPath, nearName, shown } from './wording.ts';
 
 export interface Fault {
   /** `variants[0].cell.seriesOhm`; '' is the whole. */
@@ -55,7 +55,7 @@ function fits(field: FieldInfo, value: unknown): boolean {
   if (value === null) return field.nullable;
   switch (field.kind) {
     case 'number':
-      return typeof value === 'number' && value >= field.min && value <= field.max;
+      return typeof value === 'number' && inRange(field, value);
     case 'text':
       return typeof value === 'string' && value.trim() !== '' && [...value].length <= field.max && !/[\p{Cc}\u2028\u2029]/u.test(value);
     default:

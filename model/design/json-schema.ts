@@ -37,11 +37,12 @@ function fieldSchema(field: Field, defs: Defs): object {
 
 function leafSchema(field: FieldInfo): object {
   const usual = field.kind === 'number' && typeof field.default === 'number' ? plainly(field.default, field.unit) : String(field.default);
+  const type = field.whole ? 'integer' : 'number';
   const notes = { description: `${field.description} ${expectedOf(field)}; default ${usual}.`, default: field.default };
   switch (field.kind) {
     case 'number':
       return {
-        type: field.nullable ? ['number', 'null'] : 'number',
+        type: field.nullable ? [type, 'null'] : type,
         minimum: field.min,
         maximum: field.max,
         'x-unit': field.unit || '1',

@@ -13,6 +13,8 @@ export interface FieldInfo {
   /** Limits: of a number in SI units; of a text in characters; of a choice or flag, its place in `choices`. */
   readonly min: number;
   readonly max: number;
+  /** True for a number that has no fraction. */
+  readonly whole?: true;
   readonly default: Choice | null;
   readonly choices?: readonly Choice[];
   /** True where null is allowed: the part is absent. */
@@ -69,6 +71,11 @@ export function quantity(unit: Unit, min: number, max: number, usual: number, de
   return { kind: 'number', unit, min, max, default: usual, nullable: false, description };
 }
 
+/** A plain number without a fraction. */
+export function count(min: number, max: number, usual: number, description: string): FieldInfo {
+  return { ...quantity('', min, max, usual, description), whole: true };
+}
+
 /** A quantity of a part that may be absent (null, the default). */
 export function absentOr(unit: Unit, min: number, max: number, description: string): FieldInfo {
   return { kind: 'number', unit, min, max, default: null, nullable: true, description };
@@ -94,6 +101,14 @@ export function group<T>(
 ): Group {
   return { kind: 'group', title, description, fields, presence: {}, rules: [], ...extras };
 }
+
+/** A union whose first member is its default. */
+export function union(title: string, description: string, members: Union['members'], key = 'kind'): Union {
+  return { kind: 'union', title, description, key, members, default: Object.keys(members)[0] };
+}
+
+/** A union's member without the field that tells it apart: the type that its group describes. */
+export type Member<U, K extends keyof U, V extends U[K]> = Omit<Extract<U, { [P in K]: V }>, K>;
 
 /** The field that tells a union's members apart, as a choice. */
 export function keyField(union: Union): FieldInfo {

@@ -8,7 +8,7 @@ import { type Field, type FieldInfo, type Group, keyField, memberDefaults, membe
 import { designSchema, variantSchema } from './schema.ts';
 import type { Design, Variant } from './types.ts';
 import { formatQuantity, parseQuantity, QuantityError } from './values.ts';
-import { either, nearName, shown } from './wording.ts';
+import { either, inRange, nearName, rangeOf, shown } from './wording.ts';
 
 export type { FieldInfo } from './kinds.ts';
 
@@ -54,7 +54,8 @@ export function fieldAt(path: string): FieldInfo {
 
 /** `R2 is 100 Ω; it can be 1 kΩ to 100 MΩ.` for a number past its limits, else null. */
 export function rangeFault(field: FieldInfo, value: number, name = 'This'): string | null {
-  if (field.kind !== 'number' || (value >= field.min && value <= field.max)) return null;
+  if (field.kind !== 'number' || inRange(field, value)) return null;
+  if (field.whole) return `${name} is ${value}; it can be ${rangeOf(field)}.`;
   const printed = (number: number) => formatQuantity(number, field.unit, 6, { trimmed: true });
   return `${name} is ${printed(value)}; it can be ${printed(field.min)} to ${printed(field.max)}.`;
 }

@@ -80,7 +80,7 @@ export interface Cell {
   readonly outputCouplingF: number | null;
   readonly loadOhm: number;
   readonly loadF: number;
-  /** Resistance of the control's driver, outside the pair. */
+  /** Resistance of the control's driver, outside the pair: k leaves it out (`feedback.ts`). */
   readonly driverOhm: number;
   readonly smoothing: Smoothing;
   readonly controlOhm: number;
@@ -117,7 +117,7 @@ export type Coupling = { readonly kind: 'none' } | { readonly kind: 'capacitor';
 /** A resistor and a capacitor to 0 V between the control's driver and the pair. */
 export type Smoothing = { readonly kind: 'none' } | { readonly kind: 'rc'; readonly smoothingOhm: number; readonly smoothingF: number };
 
-/** A diode from gate to source pin that keeps the gate from going far into conduction. */
+/** A diode from gate to source pin that keeps the gate from going far into conduction; the other way round for a p-channel part. */
 export type GateClamp = { readonly kind: 'none' } | { readonly kind: 'diode'; readonly reverseA: number; readonly ideality: number };
 
 /** Where the source pin goes: 0 V, or a divided supply. */
@@ -139,7 +139,7 @@ export type Feedback =
   | { readonly kind: 'resistor'; readonly drainOhm: number; readonly blockingF: number | null }
   | { readonly kind: 'buffered'; readonly fraction: number };
 
-/** What moves the gate: the voltage at the driver, before `controlOhm`. */
+/** What moves the gate: the voltage at the driver, before `driverOhm` and `controlOhm`. */
 export type Control =
   | { readonly source: 'fixed'; readonly controlV: number }
   | {
@@ -149,7 +149,7 @@ export type Control =
       /** The two ends of the swing; the LFO starts midway, moving towards `toV`. */
       readonly fromV: number;
       readonly toV: number;
-      /** Duration of each edge of the square shape, and of the flyback of the rising and falling ramps, 0 to 100 % of the height. */
+      /** Duration of each edge of the square shape, and of the flyback of the rising and falling ramps, from one end of the swing to the other. */
       readonly edgeSec: number;
     }
   /** Rectifier, attack resistor, timing capacitor with release resistor across it, amplifier with bias and clamp. */

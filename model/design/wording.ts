@@ -12,8 +12,14 @@ export function plainly(value: number, unit: Unit, digits = 15): string {
   return formatQuantity(value, unit, digits, { trimmed: true }).replace('\u2009', ' ');
 }
 
-/** `1 Ω to 100 MΩ` */
+/** Whether a number field may have this value. */
+export function inRange({ min, max, whole }: FieldInfo, value: number): boolean {
+  return value >= min && value <= max && (!whole || Number.isInteger(value));
+}
+
+/** `1 Ω to 100 MΩ`, `a whole number, 0 to 4294967295` */
 export function rangeOf(field: FieldInfo): string {
+  if (field.whole) return `a whole number, ${field.min} to ${field.max}`;
   return `${plainly(field.min, field.unit)} to ${plainly(field.max, field.unit)}`;
 }
 

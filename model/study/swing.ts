@@ -6,7 +6,7 @@
  */
 import { createCell } from '../cell/cell.ts';
 import { cellNumbers, variantAt } from '../cell/fromDesign.ts';
-import { compileOscillator, createOscillator, runOscillator } from '../control/oscillator.ts';
+import { compileOscillator, oscillatorValues, runOscillator } from '../control/oscillator.ts';
 import type { Design } from '../design/types.ts';
 import { lawConstants } from '../device/law.ts';
 import { periodOf } from './steady.ts';
@@ -32,7 +32,7 @@ export function controlSwing(design: Design, variantIndex: number, points: numbe
   const rateHz = points / (periodSec || FIXED_PERIOD_SEC);
   const numbers = compileOscillator(control, rateHz);
   const controlV = new Float64Array(points);
-  runOscillator(numbers.shape, createOscillator(numbers), controlV, 0, points);
+  runOscillator(numbers.shape, oscillatorValues(numbers), new Float64Array(1), controlV, 0, points);
   const next = Float64Array.from({ length: points }, (_, i) => controlV[(i + 1) % points]);
   const cell = createCell(cellNumbers(design, variantIndex, 0), 1 / rateHz);
   const period = periodOf(cell, new Float64Array(points), next);

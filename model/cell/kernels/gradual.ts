@@ -1,15 +1,16 @@
 /**
  * Kernels of the gradual law, one for each number of states: written from source.ts by `npm run kernels`, where the method is explained. Not to be edited.
  *
- * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table and `s` state as in layout.ts, `audio` and
+ * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty) and `s` state as in layout.ts, `audio` and
  * `control` in V, `output` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
-import { searched } from './channel.ts';
+import { searched, slopeAt } from './channel.ts';
 import { conduct } from './ports.ts';
 
-function gradual0(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -27,12 +28,17 @@ function gradual0(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   const scale = c[30];
   const inverseWidth = c[31];
   const slope = c[32];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = 0, vd = 0;
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * u + a1 * v + a2;
     let b = b0 * u + b1 * v + b2;
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 4 + 3] * Math.sqrt(0.5 * (slopeAt(c, t, 24, vs) + slopeAt(c, t, 24, vd)));
+      a += w[i * 4 + 0] + a3 * J;
+      b += w[i * 4 + 1] + b3 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -68,9 +74,13 @@ function gradual0(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 24, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
+    I += J;
     let y = 0;
+    if (noisy) {
+      y = w[i * 4 + 2];
+    }
     if (S != 0 || D != 0) {
-      y = c[20] * S + c[21] * D;
+      y += c[20] * S + c[21] * D;
     }
     output[i] = y + y0 * u + y1 * v + y2 + y3 * I;
     E0 = I0; I0 = I; S0 = S; D0 = D;
@@ -79,7 +89,8 @@ function gradual0(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function gradual1(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -116,7 +127,7 @@ function gradual1(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   const slope = c[56];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = 0, vd = 0;
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * u + a2 * v + a3 * u0 + a4 * v0 + a5 * I0 + a6;
@@ -125,7 +136,12 @@ function gradual1(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[34] * S0 + c[35] * D0;
       b += c[38] * S0 + c[39] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 5 + 4] * Math.sqrt(0.5 * (slopeAt(c, t, 48, vs) + slopeAt(c, t, 48, vd)));
+      a += w[i * 5 + 0] + a7 * J;
+      b += w[i * 5 + 1] + b7 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -161,15 +177,20 @@ function gradual1(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 48, 7, 15, 32, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * u + n0_2 * v + n0_3 * u0 + n0_4 * v0 + n0_5 * I0 + n0_6 + n0_7 * I;
     if (S0 != 0 || D0 != 0) {
       z0 += c[42] * S0 + c[43] * D0;
     }
     x0 = z0;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 5 + 2];
+      y = w[i * 5 + 3];
+    }
     if (S != 0 || D != 0) {
       x0 += c[40] * S + c[41] * D;
-      y = c[44] * S + c[45] * D;
+      y += c[44] * S + c[45] * D;
     }
     output[i] = y + y0 * x0 + y1 * u + y2 * v + y6 + y7 * I;
     u0 = u; v0 = v;
@@ -181,7 +202,8 @@ function gradual1(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
-function gradual2(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -232,7 +254,7 @@ function gradual2(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = 0, vd = 0;
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * u + a3 * v + a4 * u0 + a5 * v0 + a6 * I0 + a7;
@@ -241,7 +263,12 @@ function gradual2(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[47] * S0 + c[48] * D0;
       b += c[51] * S0 + c[52] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (slopeAt(c, t, 65, vs) + slopeAt(c, t, 65, vd)));
+      a += w[i * 6 + 0] + a8 * J;
+      b += w[i * 6 + 1] + b8 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -277,6 +304,7 @@ function gradual2(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 65, 8, 17, 45, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * u + n0_3 * v + n0_4 * u0 + n0_5 * v0 + n0_6 * I0 + n0_7 + n0_8 * I;
     let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * u + n1_3 * v + n1_4 * u0 + n1_5 * v0 + n1_6 * I0 + n1_7 + n1_8 * I;
     if (S0 != 0 || D0 != 0) {
@@ -286,10 +314,15 @@ function gradual2(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
     x0 = z0;
     x1 = z1;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 6 + 2];
+      x1 += w[i * 6 + 3];
+      y = w[i * 6 + 4];
+    }
     if (S != 0 || D != 0) {
       x0 += c[53] * S + c[54] * D;
       x1 += c[57] * S + c[58] * D;
-      y = c[61] * S + c[62] * D;
+      y += c[61] * S + c[62] * D;
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y7 + y8 * I;
     u0 = u; v0 = v;
@@ -302,7 +335,8 @@ function gradual2(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function gradual3(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -369,7 +403,7 @@ function gradual3(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = 0, vd = 0;
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * u + a4 * v + a5 * u0 + a6 * v0 + a7 * I0 + a8;
@@ -378,7 +412,12 @@ function gradual3(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[62] * S0 + c[63] * D0;
       b += c[66] * S0 + c[67] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (slopeAt(c, t, 84, vs) + slopeAt(c, t, 84, vd)));
+      a += w[i * 7 + 0] + a9 * J;
+      b += w[i * 7 + 1] + b9 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -414,6 +453,7 @@ function gradual3(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 84, 9, 19, 60, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * u + n0_4 * v + n0_5 * u0 + n0_6 * v0 + n0_7 * I0 + n0_8 + n0_9 * I;
     let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * u + n1_4 * v + n1_5 * u0 + n1_6 * v0 + n1_7 * I0 + n1_8 + n1_9 * I;
     let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * u + n2_4 * v + n2_5 * u0 + n2_6 * v0 + n2_7 * I0 + n2_8 + n2_9 * I;
@@ -426,11 +466,17 @@ function gradual3(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
     x1 = z1;
     x2 = z2;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+      x1 += w[i * 7 + 3];
+      x2 += w[i * 7 + 4];
+      y = w[i * 7 + 5];
+    }
     if (S != 0 || D != 0) {
       x0 += c[68] * S + c[69] * D;
       x1 += c[72] * S + c[73] * D;
       x2 += c[76] * S + c[77] * D;
-      y = c[80] * S + c[81] * D;
+      y += c[80] * S + c[81] * D;
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y8 + y9 * I;
     u0 = u; v0 = v;
@@ -444,7 +490,8 @@ function gradual3(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function gradual4(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -529,7 +576,7 @@ function gradual4(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = 0, vd = 0;
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * u + a5 * v + a6 * u0 + a7 * v0 + a8 * I0 + a9;
@@ -538,7 +585,12 @@ function gradual4(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[79] * S0 + c[80] * D0;
       b += c[83] * S0 + c[84] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (slopeAt(c, t, 105, vs) + slopeAt(c, t, 105, vd)));
+      a += w[i * 8 + 0] + a10 * J;
+      b += w[i * 8 + 1] + b10 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -574,6 +626,7 @@ function gradual4(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 105, 10, 21, 77, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * u + n0_5 * v + n0_6 * u0 + n0_7 * v0 + n0_8 * I0 + n0_9 + n0_10 * I;
     let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * u + n1_5 * v + n1_6 * u0 + n1_7 * v0 + n1_8 * I0 + n1_9 + n1_10 * I;
     let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * u + n2_5 * v + n2_6 * u0 + n2_7 * v0 + n2_8 * I0 + n2_9 + n2_10 * I;
@@ -589,12 +642,19 @@ function gradual4(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
     x2 = z2;
     x3 = z3;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 8 + 2];
+      x1 += w[i * 8 + 3];
+      x2 += w[i * 8 + 4];
+      x3 += w[i * 8 + 5];
+      y = w[i * 8 + 6];
+    }
     if (S != 0 || D != 0) {
       x0 += c[85] * S + c[86] * D;
       x1 += c[89] * S + c[90] * D;
       x2 += c[93] * S + c[94] * D;
       x3 += c[97] * S + c[98] * D;
-      y = c[101] * S + c[102] * D;
+      y += c[101] * S + c[102] * D;
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y9 + y10 * I;
     u0 = u; v0 = v;
@@ -609,7 +669,8 @@ function gradual4(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function gradual5(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -714,7 +775,7 @@ function gradual5(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   let x3 = s[3];
   let x4 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = 0, vd = 0;
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * u + a6 * v + a7 * u0 + a8 * v0 + a9 * I0 + a10;
@@ -723,7 +784,12 @@ function gradual5(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[98] * S0 + c[99] * D0;
       b += c[102] * S0 + c[103] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 9 + 8] * Math.sqrt(0.5 * (slopeAt(c, t, 128, vs) + slopeAt(c, t, 128, vd)));
+      a += w[i * 9 + 0] + a11 * J;
+      b += w[i * 9 + 1] + b11 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -759,6 +825,7 @@ function gradual5(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 128, 11, 23, 96, s, 5, a, b, I);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * u + n0_6 * v + n0_7 * u0 + n0_8 * v0 + n0_9 * I0 + n0_10 + n0_11 * I;
     let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * u + n1_6 * v + n1_7 * u0 + n1_8 * v0 + n1_9 * I0 + n1_10 + n1_11 * I;
     let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * u + n2_6 * v + n2_7 * u0 + n2_8 * v0 + n2_9 * I0 + n2_10 + n2_11 * I;
@@ -777,13 +844,21 @@ function gradual5(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
     x3 = z3;
     x4 = z4;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 9 + 2];
+      x1 += w[i * 9 + 3];
+      x2 += w[i * 9 + 4];
+      x3 += w[i * 9 + 5];
+      x4 += w[i * 9 + 6];
+      y = w[i * 9 + 7];
+    }
     if (S != 0 || D != 0) {
       x0 += c[104] * S + c[105] * D;
       x1 += c[108] * S + c[109] * D;
       x2 += c[112] * S + c[113] * D;
       x3 += c[116] * S + c[117] * D;
       x4 += c[120] * S + c[121] * D;
-      y = c[124] * S + c[125] * D;
+      y += c[124] * S + c[125] * D;
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y10 + y11 * I;
     u0 = u; v0 = v;
@@ -799,7 +874,8 @@ function gradual5(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
-function gradual6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual6(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -926,7 +1002,7 @@ function gradual6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   let x4 = s[4];
   let x5 = s[5];
   let u0 = s[6], v0 = s[7];
-  let I0 = s[8], S0 = s[9], D0 = s[10], E0 = s[13], vs = 0, vd = 0;
+  let I0 = s[8], S0 = s[9], D0 = s[10], E0 = s[13], vs = s[11], vd = s[12];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * u + a7 * v + a8 * u0 + a9 * v0 + a10 * I0 + a11;
@@ -935,7 +1011,12 @@ function gradual6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[119] * S0 + c[120] * D0;
       b += c[123] * S0 + c[124] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 10 + 9] * Math.sqrt(0.5 * (slopeAt(c, t, 153, vs) + slopeAt(c, t, 153, vd)));
+      a += w[i * 10 + 0] + a12 * J;
+      b += w[i * 10 + 1] + b12 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -971,6 +1052,7 @@ function gradual6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 153, 12, 25, 117, s, 6, a, b, I);
       I = s[8]; S = s[9]; D = s[10]; vs = s[11]; vd = s[12];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * u + n0_7 * v + n0_8 * u0 + n0_9 * v0 + n0_10 * I0 + n0_11 + n0_12 * I;
     let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * u + n1_7 * v + n1_8 * u0 + n1_9 * v0 + n1_10 * I0 + n1_11 + n1_12 * I;
     let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * u + n2_7 * v + n2_8 * u0 + n2_9 * v0 + n2_10 * I0 + n2_11 + n2_12 * I;
@@ -992,6 +1074,15 @@ function gradual6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
     x4 = z4;
     x5 = z5;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 10 + 2];
+      x1 += w[i * 10 + 3];
+      x2 += w[i * 10 + 4];
+      x3 += w[i * 10 + 5];
+      x4 += w[i * 10 + 6];
+      x5 += w[i * 10 + 7];
+      y = w[i * 10 + 8];
+    }
     if (S != 0 || D != 0) {
       x0 += c[125] * S + c[126] * D;
       x1 += c[129] * S + c[130] * D;
@@ -999,7 +1090,7 @@ function gradual6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       x3 += c[137] * S + c[138] * D;
       x4 += c[141] * S + c[142] * D;
       x5 += c[145] * S + c[146] * D;
-      y = c[149] * S + c[150] * D;
+      y += c[149] * S + c[150] * D;
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * u + y7 * v + y11 + y12 * I;
     u0 = u; v0 = v;
@@ -1016,7 +1107,8 @@ function gradual6(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[11] = vs; s[12] = vd; }
 }
 
-function gradual7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual7(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1167,7 +1259,7 @@ function gradual7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   let x5 = s[5];
   let x6 = s[6];
   let u0 = s[7], v0 = s[8];
-  let I0 = s[9], S0 = s[10], D0 = s[11], E0 = s[14], vs = 0, vd = 0;
+  let I0 = s[9], S0 = s[10], D0 = s[11], E0 = s[14], vs = s[12], vd = s[13];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * x6 + a7 * u + a8 * v + a9 * u0 + a10 * v0 + a11 * I0 + a12;
@@ -1176,7 +1268,12 @@ function gradual7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[142] * S0 + c[143] * D0;
       b += c[146] * S0 + c[147] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 11 + 10] * Math.sqrt(0.5 * (slopeAt(c, t, 180, vs) + slopeAt(c, t, 180, vd)));
+      a += w[i * 11 + 0] + a13 * J;
+      b += w[i * 11 + 1] + b13 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -1212,6 +1309,7 @@ function gradual7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 180, 13, 27, 140, s, 7, a, b, I);
       I = s[9]; S = s[10]; D = s[11]; vs = s[12]; vd = s[13];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * x6 + n0_7 * u + n0_8 * v + n0_9 * u0 + n0_10 * v0 + n0_11 * I0 + n0_12 + n0_13 * I;
     let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * x6 + n1_7 * u + n1_8 * v + n1_9 * u0 + n1_10 * v0 + n1_11 * I0 + n1_12 + n1_13 * I;
     let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * x6 + n2_7 * u + n2_8 * v + n2_9 * u0 + n2_10 * v0 + n2_11 * I0 + n2_12 + n2_13 * I;
@@ -1236,6 +1334,16 @@ function gradual7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
     x5 = z5;
     x6 = z6;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 11 + 2];
+      x1 += w[i * 11 + 3];
+      x2 += w[i * 11 + 4];
+      x3 += w[i * 11 + 5];
+      x4 += w[i * 11 + 6];
+      x5 += w[i * 11 + 7];
+      x6 += w[i * 11 + 8];
+      y = w[i * 11 + 9];
+    }
     if (S != 0 || D != 0) {
       x0 += c[148] * S + c[149] * D;
       x1 += c[152] * S + c[153] * D;
@@ -1244,7 +1352,7 @@ function gradual7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       x4 += c[164] * S + c[165] * D;
       x5 += c[168] * S + c[169] * D;
       x6 += c[172] * S + c[173] * D;
-      y = c[176] * S + c[177] * D;
+      y += c[176] * S + c[177] * D;
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * x6 + y7 * u + y8 * v + y12 + y13 * I;
     u0 = u; v0 = v;
@@ -1262,7 +1370,8 @@ function gradual7(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   if (to > from) { s[12] = vs; s[13] = vd; }
 }
 
-function gradual8(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function gradual8(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1439,7 +1548,7 @@ function gradual8(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
   let x6 = s[6];
   let x7 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = 0, vd = 0;
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * x6 + a7 * x7 + a8 * u + a9 * v + a10 * u0 + a11 * v0 + a12 * I0 + a13;
@@ -1448,7 +1557,12 @@ function gradual8(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       a += c[167] * S0 + c[168] * D0;
       b += c[171] * S0 + c[172] * D0;
     }
-    let I = 0, S = 0, D = 0;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      J = w[i * 12 + 11] * Math.sqrt(0.5 * (slopeAt(c, t, 209, vs) + slopeAt(c, t, 209, vd)));
+      a += w[i * 12 + 0] + a14 * J;
+      b += w[i * 12 + 1] + b14 * J;
+    }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
@@ -1484,6 +1598,7 @@ function gradual8(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       conduct(c, t, 209, 14, 29, 165, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
+    I += J;
     let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * x6 + n0_7 * x7 + n0_8 * u + n0_9 * v + n0_10 * u0 + n0_11 * v0 + n0_12 * I0 + n0_13 + n0_14 * I;
     let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * x6 + n1_7 * x7 + n1_8 * u + n1_9 * v + n1_10 * u0 + n1_11 * v0 + n1_12 * I0 + n1_13 + n1_14 * I;
     let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * x6 + n2_7 * x7 + n2_8 * u + n2_9 * v + n2_10 * u0 + n2_11 * v0 + n2_12 * I0 + n2_13 + n2_14 * I;
@@ -1511,6 +1626,17 @@ function gradual8(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
     x6 = z6;
     x7 = z7;
     let y = 0;
+    if (noisy) {
+      x0 += w[i * 12 + 2];
+      x1 += w[i * 12 + 3];
+      x2 += w[i * 12 + 4];
+      x3 += w[i * 12 + 5];
+      x4 += w[i * 12 + 6];
+      x5 += w[i * 12 + 7];
+      x6 += w[i * 12 + 8];
+      x7 += w[i * 12 + 9];
+      y = w[i * 12 + 10];
+    }
     if (S != 0 || D != 0) {
       x0 += c[173] * S + c[174] * D;
       x1 += c[177] * S + c[178] * D;
@@ -1520,7 +1646,7 @@ function gradual8(c: Float64Array, t: Float64Array, s: Float64Array, audio: Floa
       x5 += c[193] * S + c[194] * D;
       x6 += c[197] * S + c[198] * D;
       x7 += c[201] * S + c[202] * D;
-      y = c[205] * S + c[206] * D;
+      y += c[205] * S + c[206] * D;
     }
     output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * x6 + y7 * x7 + y8 * u + y9 * v + y13 + y14 * I;
     u0 = u; v0 = v;

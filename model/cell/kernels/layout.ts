@@ -14,6 +14,11 @@ export function rowLayout(stateCount: number) {
   return { newU, oldU, oldI, constant, newI: constant + 1, width: constant + 2 };
 }
 
+/** Noise of a sample: one value for each row, then one for the channel, A for a conductance of 1 S. */
+export function noiseWidth(stateCount: number): number {
+  return stateCount + 4;
+}
+
 /** Weights of the junction currents, per row. */
 export const NEW_S = 0;
 export const NEW_D = 1;

@@ -7,7 +7,8 @@
  *          Beyond the knee F of the driving end is multiplied by 1 + λ·(the overdrive by which the other end is past VGS(off))
  * Scheme   square law: a quadratic in each region, roots as 2c/(q + √…), free of cancellation; the root that is consistent is the only one.
  *          Other laws, and λ: Newton from the current extrapolated along a straight line; where that does not settle, bisection.
- *          Junction currents, when one conducts, by the solver in ports.ts
+ *          Junction currents, when one conducts, by the solver in ports.ts. Noise, where there is a row of it for each sample, adds to the rows;
+ *          the channel's own is white with the conductance of the sample before (4kT/r: van der Ziel, Proc. IRE 50 (1962) 1808)
  * Error    Newton stops at a step under 1e-8 V in the overdrives; what is left is its square over the tail's width, under 1e-14 V
  */
 import type { Law } from '../../design/types.ts';
@@ -29,8 +30,8 @@ const typescript: Language = {
   variable: 'let',
   sqrt: 'Math.sqrt',
   open: (name) =>
-    `function ${name}(c: Float64Array, t: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {\n` +
-    '  for (let i = from; i < to; i++) {',
+    `function ${name}(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {\n` +
+    '  const noisy = w.length > 0;\n  for (let i = from; i < to; i++) {',
 };
 
 const c: Language = {
@@ -38,18 +39,18 @@ const c: Language = {
   variable: 'double',
   sqrt: 'sqrt',
   open: (name) =>
-    `void ${name}(const double *restrict c, const double *restrict t, double *restrict s, const double *restrict audio, const double *restrict control, double *restrict output, int from, int to) {\n` +
-    '  for (int i = from; i < to; i++) {',
+    `void ${name}(const double *restrict c, const double *restrict t, const double *restrict w, double *restrict s, const double *restrict audio, const double *restrict control, double *restrict output, int from, int to) {\n` +
+    '  const int noisy = w != 0;\n  for (int i = from; i < to; i++) {',
 };
 
 /** The TypeScript module with all kernels of one law. */
 export function kernelModule(law: Law): string {
   const kernels = STATE_COUNTS.map((n) => kernel(law, n, typescript)).join('\n\n');
-  const helpers = law === 'square' ? 'bent' : law === 'gradual' ? 'searched' : 'searched, termAt, slopeAt';
+  const helpers = law === 'square' ? 'bent, slopeAt' : law === 'gradual' ? 'searched, slopeAt' : 'searched, slopeAt, termAt';
   return `/**
  * Kernels of the ${law} law, one for each number of states: written from source.ts by \`npm run kernels\`, where the method is explained. Not to be edited.
  *
- * Each advances a cell over the samples \`from\` to \`to\`: \`c\` coefficients, \`t\` the law's table and \`s\` state as in layout.ts, \`audio\` and
+ * Each advances a cell over the samples \`from\` to \`to\`: \`c\` coefficients, \`t\` the law's table, \`w\` noise (or empty) and \`s\` state as in layout.ts, \`audio\` and
  * \`control\` in V, \`output\` in V.
  */
 // biome-ignore-all lint: written by a program
@@ -87,8 +88,8 @@ function kernel(law: Law, n: number, language: Language): string {
     return terms.join(' + ');
   };
 
-  const [head, loop] = language.open(`${law}${n}`).split('\n');
-  const lines: string[] = [head];
+  const [head, noisy, loop] = language.open(`${law}${n}`).split('\n');
+  const lines: string[] = [head, noisy];
   for (let r = 0; r < all.rows; r++) {
     for (let k = 0; k < row.width; k++) {
       const unused = r === all.outputRow && n > 0 && k >= row.oldU && k <= row.oldI;
@@ -99,7 +100,7 @@ function kernel(law: Law, n: number, language: Language): string {
   lines.push(...states.map((i) => `  ${variable} x${i} = s[${i}];`));
   if (n > 0) lines.push(`  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`);
   lines.push(
-    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = 0, vd = 0;`,
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
     loop,
   );
 
@@ -119,7 +120,15 @@ function kernel(law: Law, n: number, language: Language): string {
   const aI = `a${row.newI}`;
   const bI = `b${row.newI}`;
   const places = `${all.device}, ${row.newI}, ${row.width + row.newI}`;
-  body.push(`${variable} I = 0, S = 0, D = 0;`);
+  const noise = (k: number) => `w[i * ${all.rows + 1} + ${k}]`;
+  body.push(
+    `${variable} I = 0, S = 0, D = 0, J = 0;`,
+    'if (noisy) {',
+    `  J = ${noise(all.rows)} * ${language.sqrt}(0.5 * (slopeAt(c, t, ${all.device}, vs) + slopeAt(c, t, ${all.device}, vd)));`,
+    `  a += ${noise(0)} + ${aI} * J;`,
+    `  b += ${noise(1)} + ${bI} * J;`,
+    '}',
+  );
   body.push(...(law === 'square' ? squareSolution(aI, bI, places, language) : newtonSolution(law, aI, bI, places, slot, language)));
   body.push(
     'if (vs > on || vd > on) {',
@@ -127,6 +136,7 @@ function kernel(law: Law, n: number, language: Language): string {
     `  I = ${slot(L.CHANNEL_A)}; S = ${slot(L.JUNCTION_S)}; D = ${slot(L.JUNCTION_D)}; vs = ${slot(L.OVERDRIVE_S)}; vd = ${slot(L.OVERDRIVE_D)};`,
     '}',
   );
+  body.push('I += J;');
   states.forEach((i) => {
     body.push(`${variable} z${i} = ${linear(2 + i, false)} + ${rowName(2 + i)}${row.newI} * I;`);
   });
@@ -140,11 +150,16 @@ function kernel(law: Law, n: number, language: Language): string {
   states.forEach((i) => {
     body.push(`x${i} = z${i};`);
   });
-  body.push(`${variable} y = 0;`, 'if (S != 0 || D != 0) {');
+  body.push(`${variable} y = 0;`, 'if (noisy) {');
+  states.forEach((i) => {
+    body.push(`  x${i} += ${noise(2 + i)};`);
+  });
+  body.push(`  y = ${noise(all.outputRow)};`, '}');
+  body.push('if (S != 0 || D != 0) {');
   states.forEach((i) => {
     body.push(`  x${i} += ${weight(2 + i, L.NEW_S)} * S + ${weight(2 + i, L.NEW_D)} * D;`);
   });
-  body.push(`  y = ${weight(all.outputRow, L.NEW_S)} * S + ${weight(all.outputRow, L.NEW_D)} * D;`, '}');
+  body.push(`  y += ${weight(all.outputRow, L.NEW_S)} * S + ${weight(all.outputRow, L.NEW_D)} * D;`, '}');
   body.push(`output[i] = y + ${linear(all.outputRow, true)} + y${row.newI} * I;`);
   if (n > 0) body.push('u0 = u; v0 = v;');
   body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');

@@ -1,9 +1,11 @@
 import { expect, test } from 'vitest';
-import { compileOscillator, createOscillator, runOscillator } from '../../../model/control/oscillator.ts';
+import { compileOscillator, oscillatorValues, runOscillator } from '../../../model/control/oscillator.ts';
 import { controlRangeV, restControlV } from '../../../model/control/range.ts';
 import type { Control } from '../../../model/design/types.ts';
 
-const lfo = (shape: 'sine' | 'triangle' | 'square', edgeSec = 0.01): Control => ({
+type Shape = Extract<Control, { source: 'lfo' }>['shape'];
+
+const lfo = (shape: Shape, edgeSec = 0.01): Control => ({
   source: 'lfo',
   shape,
   rateHz: 5,
@@ -15,7 +17,7 @@ const lfo = (shape: 'sine' | 'triangle' | 'square', edgeSec = 0.01): Control => 
 function run(control: Control, rateHz: number, seconds: number): Float64Array {
   const numbers = compileOscillator(control, rateHz);
   const output = new Float64Array(Math.round(rateHz * seconds));
-  runOscillator(numbers.shape, createOscillator(numbers), output, 0, output.length);
+  runOscillator(numbers.shape, oscillatorValues(numbers), new Float64Array(1), output, 0, output.length);
   return output;
 }
 
@@ -27,7 +29,7 @@ test('the sine is the definition, to the rounding of ten thousand added steps', 
 });
 
 test('each shape starts midway, moves towards toV and stays between its ends', () => {
-  for (const shape of ['sine', 'triangle', 'square'] as const) {
+  for (const shape of ['sine', 'triangle', 'square', 'rising'] as const) {
     const output = run(lfo(shape), 8000, 0.4);
     expect(output[0]).toBe(-1.25);
     expect(output[5]).toBeLessThan(-1.25);
@@ -51,10 +53,11 @@ test('an edge longer than half a period is refused by name', () => {
 test('cutting into blocks of any size changes no bit', () => {
   const numbers = compileOscillator(lfo('triangle'), 8000);
   const whole = new Float64Array(5000);
-  runOscillator(numbers.shape, createOscillator(numbers), whole, 0, 5000);
+  runOscillator(numbers.shape, oscillatorValues(numbers), new Float64Array(1), whole, 0, 5000);
   const cut = new Float64Array(5000);
-  const state = createOscillator(numbers);
-  for (let at = 0; at < 5000; at += 7) runOscillator(numbers.shape, state, cut, at, Math.min(5000, at + 7));
+  const values = oscillatorValues(numbers);
+  const phase = new Float64Array(1);
+  for (let at = 0; at < 5000; at += 7) runOscillator(numbers.shape, values, phase, cut, at, Math.min(5000, at + 7));
   expect(cut).toEqual(whole);
 });
 
@@ -63,4 +66,12 @@ test('range and rest of each control', () => {
   expect(restControlV(lfo('sine'))).toBe(-1.25);
   expect(controlRangeV({ source: 'fixed', controlV: -1 })).toEqual([-1, -1]);
   expect(controlRangeV({ source: 'external', fullScaleV: 2, offsetV: -1 })).toEqual([-3, 1]);
+});
+
+test('a rising ramp returns within edgeSec, and a falling one is its mirror image in time', () => {
+  const rising = run(lfo('rising', 0.02), 100000, 0.2);
+  const falling = run(lfo('falling', 0.02), 100000, 0.2);
+  const returning = rising.filter((v, n) => n > 0 && v > rising[n - 1]).length / 100000;
+  expect(returning).toBeCloseTo(0.02, 3);
+  for (let n = 1; n < 20000; n++) expect(falling[n]).toBeCloseTo(rising[20000 - n], 9);
 });
