@@ -2,7 +2,7 @@
  * Control and cells closed into one loop at every upper-rate sample.
  *
  * Scheme   a control that does not listen to the output runs ahead of the cells, a slice at a time. A follower of the output is predicted along a straight
- *          line, the cells are solved with that, the follower with their output, and the cells once more with the corrected control
+ *          line, the cells are solved with that, the follower with their output, and the cells again with the corrected control until both agree
  * Error    against a continuous solution: test/model/chain/loop.test.ts
  */
 import { advanceCell, type Cell } from '../cell/cell.ts';
@@ -27,6 +27,10 @@ const RECTIFIED = 1;
 const CONTROL_V = 2;
 const EARLIER_V = 3;
 const DETECTOR_SLOTS = 4;
+
+/** Passes through the loop at one sample: the prediction, and corrections until they agree or are as many as this. */
+const MOST_PASSES = 4;
+const AGREED_V = 1e-6;
 
 export interface Drive {
   readonly control: ControlNumbers;
@@ -116,25 +120,49 @@ function followInput(drive: Drive, lanes: readonly Driven[], fullWave: boolean, 
   }
 }
 
+/** Solves sample `i` with the predicted control, then again with the control that the solution asks for, until the two agree. */
 function closeLoop(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
-  const { detectors, values, controls, saved } = drive;
+  const { detectors, controls, saved } = drive;
   for (let d = 0; d < detectors.length; d++) controls[d][i] = 2 * detectors[d][CONTROL_V] - detectors[d][EARLIER_V];
   for (let channel = 0; channel < lanes.length; channel++) {
-    const { cell, noise } = lanes[channel];
-    const signal = top(lanes[channel]);
-    const input = signal[i];
+    const { cell } = lanes[channel];
     saved[channel].set(cell.state);
-    advanceCell(cell, signal, controls[channel], i, i + 1, noise);
-    saved[channel][cell.state.length] = input;
+    saved[channel][cell.state.length] = top(lanes[channel])[i];
   }
-  correct(drive, lanes, fullWave, i);
+  for (let pass = 0; pass < MOST_PASSES; pass++) {
+    if (pass > 0) restore(lanes, saved, i);
+    for (let channel = 0; channel < lanes.length; channel++) {
+      advanceCell(lanes[channel].cell, top(lanes[channel]), controls[channel], i, i + 1, lanes[channel].noise);
+    }
+    if (correct(drive, lanes, fullWave, i) < AGREED_V && pass > 0) break;
+  }
+  takeEnvelopes(drive, lanes, fullWave, i);
+}
+
+function restore(lanes: readonly Driven[], saved: readonly Float64Array[], i: number): void {
   for (let channel = 0; channel < lanes.length; channel++) {
-    const { cell, noise } = lanes[channel];
-    const signal = top(lanes[channel]);
-    for (let k = 0; k < cell.state.length; k++) cell.state[k] = saved[channel][k];
-    signal[i] = saved[channel][cell.state.length];
-    advanceCell(cell, signal, controls[channel], i, i + 1, noise);
+    const { state } = lanes[channel].cell;
+    for (let k = 0; k < state.length; k++) state[k] = saved[channel][k];
+    top(lanes[channel])[i] = saved[channel][state.length];
   }
+}
+
+/** Sets the control that the present output asks for; returns how far it moved, V. */
+function correct(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): number {
+  const { detectors, values, controls } = drive;
+  let moved = 0;
+  for (let d = 0; d < detectors.length; d++) {
+    const slots = detectors[d];
+    const envelope = nextEnvelope(values, slots[ENVELOPE], slots[RECTIFIED], heard(drive, lanes, fullWave, d, i));
+    const controlV = followerControlV(values, envelope);
+    moved = Math.max(moved, Math.abs(controlV - controls[d][i]));
+    controls[d][i] = controlV;
+  }
+  return moved;
+}
+
+function takeEnvelopes(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
+  const { detectors, values } = drive;
   for (let d = 0; d < detectors.length; d++) {
     const slots = detectors[d];
     const rectified = heard(drive, lanes, fullWave, d, i);
@@ -142,15 +170,5 @@ function closeLoop(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i:
     slots[RECTIFIED] = rectified;
     slots[EARLIER_V] = slots[CONTROL_V];
     slots[CONTROL_V] = followerControlV(values, slots[ENVELOPE]);
-  }
-}
-
-/** The control that the predicted output asks for. */
-function correct(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
-  const { detectors, values, controls } = drive;
-  for (let d = 0; d < detectors.length; d++) {
-    const slots = detectors[d];
-    const envelope = nextEnvelope(values, slots[ENVELOPE], slots[RECTIFIED], heard(drive, lanes, fullWave, d, i));
-    controls[d][i] = followerControlV(values, envelope);
   }
 }
