@@ -40,10 +40,10 @@ export const control = union(
         shape: choice(
           ['sine', 'triangle', 'square', 'rising', 'falling'],
           'sine',
-          'Shape of the swing; the rising and falling ramps fly back within edgeSec.',
+          'Shape of the swing; a rising ramp runs from fromV to toV, a falling one the other way, and flies back within edgeSec.',
         ),
         rateHz: quantity('Hz', 0.01, 1000, 4, 'Cycles in a second.'),
-        fromV: volts(-0.6, 'One end of the swing; it starts midway, moving away from here.'),
+        fromV: volts(-0.6, 'One end of the swing; the LFO starts midway, moving away from here, and on a falling ramp towards here.'),
         toV: volts(-1.8, 'The other end of the swing.'),
         edgeSec: quantity(
           's',

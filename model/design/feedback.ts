@@ -53,7 +53,7 @@ export function withFeedbackFraction(variant: Variant, k: number, keep: 'gate' |
   const control = factor === 1 ? variant.control : scaledControl(variant.control, factor, sourcePinV(variant.cell));
   const result = checkVariant({ ...variant, cell, control });
   if ('variant' in result) return result.variant;
-  throw new RangeError(`k = ${plainly(k, '', 3)} cannot be set: ${result.faults.map((fault) => fault.sentence).join('; ')}`);
+  throw new RangeError(`k = ${plainly(k, '', 6)} cannot be set: ${result.faults.map((fault) => fault.sentence).join('; ')}`);
 }
 
 function cellWithFraction(cell: Cell, k: number, moves: Moves): Cell {

@@ -146,7 +146,7 @@ export type Control =
       readonly source: 'lfo';
       readonly shape: 'sine' | 'triangle' | 'square' | 'rising' | 'falling';
       readonly rateHz: number;
-      /** The two ends of the swing; the LFO starts midway, moving towards `toV`. */
+      /** The two ends of the swing; the LFO starts midway, moving towards `toV`, and on a falling ramp towards `fromV`. */
       readonly fromV: number;
       readonly toV: number;
       /** Duration of each edge of the square shape, and of the flyback of the rising and falling ramps, from one end of the swing to the other. */

@@ -58,7 +58,7 @@ const RULES: Readonly<Record<Unit, UnitRule>> = {
     prefixes: `${PREFIX_LETTERS}K`,
     pointLetter: 'R',
     printsFrom: -3,
-    printsTo: 9,
+    printsTo: 12,
   },
   F: rule('a capacitance', '100n, 0.1 u or 100 nF', 'F', -12, -6),
   V: rule('a voltage', '-1.2, 1V2 or 50 mV', 'V', -9, 3),

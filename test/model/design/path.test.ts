@@ -30,6 +30,9 @@ describe('reading and replacing', () => {
     const moved = setAt(withPair, 'cell.feedback.drainOhm', 470e3);
     expect(setAt(moved, 'cell.feedback.kind', 'resistor')).toEqual(moved);
     expect(setAt(moved, 'cell.feedback.kind', 'none').cell.feedback).toEqual({ kind: 'none' });
+    expect(setAt(variant, 'cell.feed.kind', 'stage').cell.feed).toEqual({ kind: 'stage', couplingF: 1e-6, bleedOhm: 1e6 });
+    expect(setAt(variant, 'cell.reference.kind', 'halfSupply').cell.reference).toMatchObject({ kind: 'halfSupply', supplyV: 9 });
+    expect(setAt(defaultDesign(), 'noise.kind', 'thermal').noise).toEqual({ kind: 'thermal', seed: 1 });
     expect(setAt(variant, 'control.source', 'lfo').control).toMatchObject({ source: 'lfo', shape: 'sine', rateHz: 4 });
   });
 
@@ -40,7 +43,7 @@ describe('reading and replacing', () => {
   test.each([
     [
       'cell.seriesOhms',
-      'cell.seriesOhms does not exist; cell has circuit, sourceOhm, seriesOhm, loadOhm, loadF, controlOhm, feedback (seriesOhm, perhaps)',
+      'cell.seriesOhms does not exist; cell has circuit, feed, sourceOhm, pad, buffer, coupling, seriesOhm, drainReturnOhm, outputCouplingF, loadOhm, loadF, driverOhm, smoothing, controlOhm, feedback, clamp, reference, sharedGround, strayF (seriesOhm, perhaps)',
     ],
     ['sell', 'sell does not exist; the top level has name, device, devices, cell, control, output (cell, perhaps)'],
     ['cell.seriesOhm.x', 'cell.seriesOhm.x does not exist: cell.seriesOhm is one value'],
@@ -68,7 +71,16 @@ describe('fields', () => {
   test('a path tells unit, limits, default, choices and description', () => {
     expect(fieldAt('cell.seriesOhm')).toMatchObject({ kind: 'number', unit: 'Ω', min: 1, max: 100e6, default: 10e3, nullable: false });
     expect(fieldAt('variants[3].cell.seriesOhm')).toBe(fieldAt('cell.seriesOhm'));
-    expect(fieldAt('control.shape')).toMatchObject({ kind: 'choice', choices: ['sine', 'triangle', 'square'], default: 'sine' });
+    expect(fieldAt('control.shape')).toMatchObject({
+      kind: 'choice',
+      choices: ['sine', 'triangle', 'square', 'rising', 'falling'],
+      default: 'sine',
+    });
+    expect(fieldAt('cell.feed.inductanceH')).toMatchObject({ unit: 'H', default: 4 });
+    expect(fieldAt('output.slewVPerSec')).toMatchObject({ unit: 'V/s', default: null, nullable: true });
+    expect(fieldAt('cell.sharedGround.drawAPerV').unit).toBe('S');
+    expect(fieldAt('noise.seed')).toMatchObject({ unit: '', min: 0, max: 2 ** 32 - 1, whole: true, default: 1 });
+    expect(fieldAt('cell.seriesOhm')).not.toHaveProperty('whole');
     expect(fieldAt('cell.feedback.kind').choices).toEqual(['none', 'resistor', 'buffered']);
     expect(fieldAt('cell.feedback.blockingF')).toMatchObject({ unit: 'F', default: null, nullable: true });
     expect(fieldAt('control.linked')).toMatchObject({ kind: 'flag', default: true });
@@ -87,7 +99,9 @@ describe('fields', () => {
     const printed = (sentence: string | null) => sentence?.replaceAll('\u2009', ' ');
     expect(printed(rangeFault(fieldAt('cell.seriesOhm'), 0.5, 'R1'))).toBe('R1 is 500 mΩ; it can be 1 Ω to 100 MΩ.');
     expect(printed(rangeFault(fieldAt('output.gainDb'), 61))).toBe('This is 61 dB; it can be −60 dB to 60 dB.');
+    expect(printed(rangeFault(fieldAt('noise.seed'), 1.5, 'The seed'))).toBe('The seed is 1.5; it can be a whole number, 0 to 4294967295.');
     expect(rangeFault(fieldAt('cell.seriesOhm'), 100e6)).toBeNull();
+    expect(rangeFault(fieldAt('noise.seed'), 2 ** 32 - 1)).toBeNull();
   });
 });
 
@@ -112,6 +126,11 @@ describe('setting from text', () => {
     expect(getAt(setFromText(envelope, 'control.linked', 'false'), 'control.linked')).toBe(false);
     expect(setFromText(defaultDesign(), 'oversampling', '16').oversampling).toBe(16);
     expect(setFromText(pair, 'devices', 'null')).toEqual(variant);
+    expect(setFromText(variant, 'output.slewVPerSec', '13M').output.slewVPerSec).toBe(13e6);
+    expect(setFromText(setFromText(defaultDesign(), 'noise.kind', 'thermal'), 'noise.seed', '7').noise).toEqual({
+      kind: 'thermal',
+      seed: 7,
+    });
   });
 
   test.each([
@@ -122,6 +141,8 @@ describe('setting from text', () => {
     ['device.gateOffV', '1.5', 'device.gateOffV is 1.5; expected −20 V to −0.1 V for an n-channel part'],
     ['device', '{"idssA": }', 'device: Line 1, column 11 is not JSON: found "}"; expected a value'],
     ['cell.seriesOhms', '1', 'cell.seriesOhms does not exist'],
+    ['cell.feed.inductanceH', '4', 'cell.feed.inductanceH does not exist while cell.feed.kind is "direct"; set that to pickup first'],
+    ['cell.drainReturnOhm', '0', 'cell.drainReturnOhm is 0; expected 1 Ω to 1 GΩ, or null where there is none'],
   ])('%s = %s is refused with a sentence', (path, text, sentence) => {
     expect(() => setFromText(variant, path, text)).toThrow(sentence);
     expect(() => setFromText(variant, path, text)).toThrow(RangeError);

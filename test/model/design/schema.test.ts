@@ -3,8 +3,9 @@ import { describe, expect, test } from 'vitest';
 import { defaultDesign, defaultVariant } from '../../../model/design/defaults.ts';
 import { setAt } from '../../../model/design/path.ts';
 import { checkDesign } from '../../../model/design/read.ts';
-import { jsonSchema } from '../../../model/design/schema.ts';
-import type { Control, Design, Feedback, Variant } from '../../../model/design/types.ts';
+import type { Field, Group } from '../../../model/design/kinds.ts';
+import { designSchema, jsonSchema } from '../../../model/design/schema.ts';
+import type { Cell, Control, Design, Noise, Variant } from '../../../model/design/types.ts';
 import { edited } from './edited.ts';
 
 type Schema = { readonly [keyword: string]: unknown };
@@ -15,7 +16,8 @@ const defs = schema.$defs as Record<string, Schema>;
 /** Keywords of JSON Schema draft 2020-12 (from memory), as far as ours uses them: `judge(argument, value, schema around it)`. */
 const JUDGES: Record<string, (argument: never, value: never, around: Schema) => boolean> = {
   $ref: (reference: string, value) => accepts(defs[reference.replace('#/$defs/', '')], value),
-  type: (types: string | string[], value) => [types].flat().includes(typeOf(value)),
+  type: (types: string | string[], value) =>
+    [types].flat().some((type) => typeOf(value) === type || (type === 'integer' && Number.isInteger(value))),
   enum: (values: unknown[], value) => values.includes(value),
   const: (constant: unknown, value) => value === constant,
   minimum: (limit: number, value: number) => typeof value !== 'number' || value >= limit,
@@ -49,6 +51,22 @@ function typeOf(value: unknown): string {
   return Array.isArray(value) ? 'array' : value === null ? 'null' : typeof value;
 }
 
+/** Every group of the description, each once. */
+function groupsIn(field: Field, found = new Set<Group>()): Set<Group> {
+  switch (field.kind) {
+    case 'group':
+      found.add(field);
+      for (const inner of Object.values(field.fields)) groupsIn(inner, found);
+      break;
+    case 'union':
+      for (const member of Object.values(field.members)) groupsIn(member, found);
+      break;
+    case 'list':
+      groupsIn(field.item, found);
+  }
+  return found;
+}
+
 /** Every schema that describes one value, with its name. */
 function leaves(node: Schema = schema): [string, Schema][] {
   const inner = Object.values(node.$defs ?? {}).flatMap((group) => leaves(group as Schema));
@@ -61,11 +79,11 @@ function leaves(node: Schema = schema): [string, Schema][] {
 describe('the JSON Schema', () => {
   test('is draft 2020-12 and gives each number a unit, a range, a default and a description', () => {
     expect(schema.$schema).toBe('https://json-schema.org/draft/2020-12/schema');
-    expect(leaves().length).toBeGreaterThan(45);
+    expect(leaves().length).toBeGreaterThan(75);
     for (const [name, field] of leaves()) {
       expect(field.description, name).toMatch(/\. .*; default \S/);
       expect(field, name).toHaveProperty('default');
-      if ([field.type].flat().includes('number')) {
+      if ([field.type].flat().some((type) => type === 'number' || type === 'integer')) {
         expect(field, name).toMatchObject({
           minimum: expect.any(Number),
           maximum: expect.any(Number),
@@ -79,6 +97,9 @@ describe('the JSON Schema', () => {
     const endings: Record<string, string> = {
       PerV: '1/V',
       VPerV: '1',
+      APerV: 'S',
+      VPerSec: 'V/s',
+      H: 'H',
       Ohm: 'Ω',
       F: 'F',
       Hz: 'Hz',
@@ -89,13 +110,23 @@ describe('the JSON Schema', () => {
       A: 'A',
       V: 'V',
     };
+    const ended = new Set<string>();
     for (const [name, field] of leaves()) {
       if (!('x-unit' in field)) continue;
       const ending = Object.keys(endings)
         .sort((a, b) => b.length - a.length)
         .find((end) => name.endsWith(end));
       expect(field['x-unit'], name).toBe(ending ? endings[ending] : '1');
+      ended.add(ending ?? name);
     }
+    // Every ending is in use, and these alone are plain numbers without one.
+    expect([...ended].sort()).toEqual([...Object.keys(endings), 'exponent', 'fraction', 'grading', 'ideality', 'seed'].sort());
+  });
+
+  test('every shape of the document has a title of its own', () => {
+    const titles = [...groupsIn(designSchema)].map(({ title }) => title).sort();
+    expect(Object.keys(defs).sort()).toEqual(titles.filter((title) => title !== designSchema.title));
+    expect(titles).toHaveLength(new Set(titles).size);
   });
 
   test('accepts every default that it documents, each in its place', () => {
@@ -128,21 +159,57 @@ describe('the JSON Schema', () => {
   });
 });
 
-test('the defaults of each shape have the fields of their type', () => {
-  const kinds: Feedback['kind'][] = ['none', 'resistor', 'buffered'];
-  const sources: Control['source'][] = ['fixed', 'lfo', 'envelope', 'external'];
-  for (const design of shapes()) expect(checkDesign(design)).toEqual({ design });
-  expect(shapes()).toHaveLength(kinds.length * sources.length);
+type KindOf<U> = U extends { readonly kind: infer K } ? K : U extends { readonly source: infer S } ? S : never;
+type Unions<T> = { [K in keyof T as KindOf<T[K]> extends never ? never : K]: readonly KindOf<T[K]>[] };
+
+/** What each union of the document can be, its default first. */
+const CELL_SHAPES: Unions<Cell> = {
+  feed: ['direct', 'pickup', 'stage'],
+  pad: ['none', 'divider'],
+  buffer: ['none', 'follower'],
+  coupling: ['none', 'capacitor'],
+  smoothing: ['none', 'rc'],
+  feedback: ['none', 'resistor', 'buffered'],
+  clamp: ['none', 'diode'],
+  reference: ['ground', 'halfSupply'],
+  sharedGround: ['none', 'shared'],
+};
+const SOURCES: readonly Control['source'][] = ['fixed', 'lfo', 'envelope', 'external'];
+const NOISES: readonly Noise['kind'][] = ['none', 'thermal'];
+
+test('the default of each union is the part that is absent', () => {
+  const design = defaultDesign();
+  const { cell, control } = design.variants[0];
+  for (const [name, [first]] of Object.entries(CELL_SHAPES)) expect(cell[name as keyof Cell], name).toEqual({ kind: first });
+  expect(control.source).toBe(SOURCES[0]);
+  expect(design.noise).toEqual({ kind: NOISES[0] });
 });
 
-/** A design for each pair of feedback and control. */
+test('the defaults of each shape are a design, and have the fields of their type', () => {
+  expect(shapes()).toHaveLength(20 + 4 + 2);
+  for (const design of shapes()) {
+    expect(checkDesign(design)).toEqual({ design });
+    expect(accepts(schema, design)).toBe(true);
+  }
+});
+
+/** A design for each member of each union, and one with every part there is. */
 function shapes(): Design[] {
-  const variants = ['none', 'resistor', 'buffered'].flatMap((kind) =>
-    ['fixed', 'lfo', 'envelope', 'external'].map(
-      (source): Variant => setAt(setAt(defaultVariant(), 'cell.feedback.kind', kind), 'control.source', source),
-    ),
+  const cellPaths = Object.entries(CELL_SHAPES).flatMap(([name, kinds]) =>
+    kinds.map((kind): [string, string] => [`cell.${name}.kind`, kind]),
   );
-  return variants.map((variant) => ({ ...defaultDesign(), variants: [{ ...variant, devices: [variant.device, variant.device] }] }));
+  const sourcePaths = SOURCES.map((source): [string, string] => ['control.source', source]);
+  const variants = [...cellPaths, ...sourcePaths].map(([path, key]) => setAt(defaultVariant(), path, key));
+  const whole = Object.entries(CELL_SHAPES).reduce<Variant>(
+    (variant, [name, kinds]) => setAt(variant, `cell.${name}.kind`, kinds[1]),
+    defaultVariant(),
+  );
+  const designs = [...variants, whole].map((variant) => designWith({ ...variant, devices: [variant.device, variant.device] }));
+  return [...designs, setAt(designWith(whole), 'noise.kind', 'thermal')];
+}
+
+function designWith(variant: Variant): Design {
+  return { ...defaultDesign(), variants: [variant] };
 }
 
 /** Paths of everything in those designs, inner and outer, and of some things that are not there. */

@@ -2,7 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { formatQuantity, parseQuantity, QuantityError, splitQuantity, type Unit } from '../../../model/design/values.ts';
 
-const UNITS: Unit[] = ['Ω', 'F', 'V', 'A', 'Hz', 's', 'S', '1/V', '°C', 'dB', ''];
+const UNITS: Unit[] = ['Ω', 'F', 'V', 'A', 'Hz', 's', 'S', 'H', 'V/s', '1/V', '°C', 'dB', ''];
 
 describe('reading', () => {
   test.each([
@@ -64,6 +64,11 @@ describe('reading', () => {
     ['10 ms', 's', 0.01],
     ['5', 's', 5],
     ['1pS', 'S', 1e-12],
+    ['4H5', 'H', 4.5],
+    ['100 mH', 'H', 0.1],
+    ['13M', 'V/s', 13e6],
+    ['0.5 MV/s', 'V/s', 5e5],
+    ['500k', 'V/s', 5e5],
     ['20m/V', '1/V', 0.02],
     ['0.02 1/V', '1/V', 0.02],
     ['25 °C', '°C', 25],
@@ -79,6 +84,8 @@ describe('reading', () => {
     ['100nF', 'Ω', '“100nF” is not a resistance.', 'Write 1M2, 1.2 M or 1200 k.'],
     ['', 'V', 'A voltage is missing.', 'Write -1.2, 1V2 or 50 mV.'],
     ['1,2 k', 'Ω', '“1,2 k” has a comma.', 'Use a point for decimals, and nothing for thousands. Write 1M2, 1.2 M or 1200 k.'],
+    ['13 V/us', 'V/s', '“13 V/us” is not a slew rate.', 'Write 13M, 0.5e6 or 500k.'],
+    ['4 F', 'H', '“4 F” is not an inductance.', 'Write 4, 4H5 or 100 mH.'],
     ['1e999', 'Ω', '“1e999” is beyond what can be computed.', 'Write 1M2, 1.2 M or 1200 k.'],
     ['1e-999', 'Ω', '“1e-999” is beyond what can be computed.', 'Write 1M2, 1.2 M or 1200 k.'],
   ] as [string, Unit, string, string][])('“%s” in %s is refused: %s', (text, unit, fault, advice) => {
@@ -157,6 +164,8 @@ describe('printing', () => {
     [1e6, 'Ω', '1.00 MΩ'],
     [999.6, 'Ω', '1.00 kΩ'],
     [0, 'Ω', '0 Ω'],
+    [1e12, 'Ω', '1.00 TΩ'],
+    [220e9, 'Ω', '220 GΩ'],
     [100e-9, 'F', '100 nF'],
     [0.5e-12, 'F', '0.500 pF'],
     [1e-3, 'F', '1000 μF'],
@@ -169,6 +178,10 @@ describe('printing', () => {
     [0.2, 'Hz', '0.200 Hz'],
     [60e-3, 's', '60.0 ms'],
     [1e-12, 'S', '1.00 pS'],
+    [4.5, 'H', '4.50 H'],
+    [0.1, 'H', '100 mH'],
+    [13e6, 'V/s', '13.0 MV/s'],
+    [500e3, 'V/s', '500 kV/s'],
     [0.02, '1/V', '0.0200 /V'],
     [25, '°C', '25.0 °C'],
     [-18.96, 'dB', '−19.0 dB'],
