@@ -128,7 +128,11 @@ function named(design: Design): Design {
   const [first] = design.variants;
   const cell = { ...first.cell, controlOhm: 910e3, feedback: { kind: 'resistor', drainOhm: 1e6, blockingF: 100e-9 } } as const;
   const control = { source: 'lfo', shape: 'sine', rateHz: 4.2, fromV: -0.6, toV: -1.8, edgeSec: 0.005 } as const;
-  return { ...design, title: 'Harbour tremolo', variants: [{ ...first, name: 'A', cell, control, output: { gainDb: 18 } }] };
+  return {
+    ...design,
+    title: 'Harbour tremolo',
+    variants: [{ ...first, name: 'A', cell, control, output: { ...first.output, gainDb: 18 } }],
+  };
 }
 
 function inventedLevels(muted: boolean): LiveLevels {

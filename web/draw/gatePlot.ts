@@ -62,13 +62,18 @@ export function gatePeriod(control: Control, cell: Cell): GatePeriod | null {
   return { seconds, control: values, gate: gateFrom(values, seconds, cell), steady: false };
 }
 
-/** −1 to 1 over a period that starts midway upwards; `edge` is the share of the period that an edge of the square takes. */
-function waveAt(shape: 'sine' | 'triangle' | 'square', turn: number, edge: number): number {
+/** −1 to 1 over a period that starts midway upwards; `edge` is the share of the period that an edge of the square takes, or a ramp's flyback. */
+function waveAt(shape: Extract<Control, { source: 'lfo' }>['shape'], turn: number, edge: number): number {
   const phase = turn - Math.floor(turn);
   if (shape === 'sine') return Math.sin(2 * Math.PI * phase);
   const triangle = phase < 0.25 ? 4 * phase : phase < 0.75 ? 2 - 4 * phase : 4 * phase - 4;
   if (shape === 'triangle') return triangle;
-  return Math.max(-1, Math.min(1, (triangle * 0.5) / Math.max(edge, 1e-3)));
+  const share = Math.max(edge, 1e-3);
+  if (shape === 'square') return Math.max(-1, Math.min(1, (triangle * 0.5) / share));
+  const turned = phase < 0.5 ? phase : phase - 1;
+  const ramp =
+    (0.5 - Math.abs(turned)) / share < 0.5 ? (Math.sign(turned) * (1 - 2 * Math.abs(turned))) / share : (2 * turned) / (1 - share);
+  return shape === 'rising' ? ramp : -ramp;
 }
 
 function gateFrom(control: Float64Array, seconds: number, cell: Cell): Float64Array {

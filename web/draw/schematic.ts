@@ -5,7 +5,7 @@ import type { Box } from './placeSlip.ts';
 import { type Grid, LEFT, uprightGrid, wideGrid } from './schematicGrid.ts';
 import { AMPLIFIER, across, down, downThrough, GENERATOR_RADIUS, JFET, RESISTOR, run, SUM_RADIUS } from './schematicParts.ts';
 
-export type Wave = 'fixed' | 'sine' | 'triangle' | 'square' | 'other';
+export type Wave = 'fixed' | 'sine' | 'triangle' | 'square' | 'rising' | 'falling' | 'other';
 
 /** What decides the drawing; values do not. */
 export interface Fitted {

@@ -34,7 +34,7 @@ export function ControlValues() {
   );
 }
 
-function Lfo({ shape }: { readonly shape: 'sine' | 'triangle' | 'square' }) {
+function Lfo({ shape }: { readonly shape: Extract<Control, { source: 'lfo' }>['shape'] }) {
   return (
     <>
       <CircuitValue path="control.rateHz" label="Rate of the LFO" short="The rate" />

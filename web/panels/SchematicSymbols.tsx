@@ -73,6 +73,8 @@ const waves = {
   sine: 'M-8 0C-6 -9 -2 -9 0 0S6 9 8 0',
   triangle: 'M-8 0 -4 -6 4 6 8 0',
   square: 'M-8 5.5V-5.5H0V5.5H8V-5.5',
+  rising: 'M-8 5.5 6 -5.5V5.5',
+  falling: 'M-6 5.5V-5.5L8 5.5',
   fixed: `M0 ${-GENERATOR_RADIUS}V${GENERATOR_RADIUS}`,
   other: 'M-8 3C-6 3 -6 -6 -3 -6S0 3 8 3',
 } as const;

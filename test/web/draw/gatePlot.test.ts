@@ -1,13 +1,10 @@
 import { expect, test } from 'vitest';
+import { defaultVariant } from '../../../model/design/defaults.ts';
 import type { Cell } from '../../../model/design/types.ts';
 import { gatePeriod, plotGate, regionAt, turnOf } from '../../../web/draw/gatePlot.ts';
 
 const cell: Cell = {
-  circuit: 'shunt',
-  sourceOhm: 0,
-  seriesOhm: 1e4,
-  loadOhm: 1e6,
-  loadF: 0,
+  ...defaultVariant().cell,
   controlOhm: 1e6,
   feedback: { kind: 'resistor', drainOhm: 1e6, blockingF: 100e-9 },
 };
