@@ -2,6 +2,7 @@
 import { LARGEST_SAMPLE } from '../chain/chain.ts';
 import { renderClip } from '../chain/render.ts';
 import { readWav, type WavClip, type WavFormat, writeWav } from '../chain/wav.ts';
+import type { Variant } from '../design/types.ts';
 import { either, shown } from '../design/wording.ts';
 import { CommandFault, judged } from './fault.ts';
 import { outputPath, readBytes, writeWhole } from './files.ts';
@@ -29,6 +30,7 @@ async function runRender(line: Line): Promise<void> {
   const [designPath, inPath, outPath] = line.words;
   const asked = askedFormat(line);
   const { design, variantIndex } = openSubject(designPath, line);
+  refuseExternal(design.variants[variantIndex]);
   const clip = openClip(inPath);
   const target = outputPath(outPath, [inPath, designPath]);
   const progress = createProgress();
@@ -39,6 +41,14 @@ async function runRender(line: Line): Promise<void> {
   const { bytes, cut } = writeWav(rendered, clip.sampleRateHz, format);
   await writeWhole(target, bytes);
   if (cut > 0) process.stderr.write(`${outPath}: ${cutSentence(cut, rendered.length * rendered[0].length)}\n`);
+}
+
+/** A recorded control cannot be given here, and a gate held at its offset would be another circuit. */
+function refuseExternal({ name, control }: Variant): void {
+  if (control.source !== 'external') return;
+  throw new CommandFault(
+    `control.source of variant ${name} is external, and render takes no recorded control; expected fixed, lfo or envelope`,
+  );
 }
 
 function cutSentence(cut: number, count: number): string {

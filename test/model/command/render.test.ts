@@ -144,12 +144,22 @@ test('an unknown format is refused with those there are', async () => {
   expect({ code, stderr }).toEqual({ code: 2, stderr: '--format is "mp3"; expected pcm16, pcm24, pcm32 or float32\n' });
 });
 
-test('a control that the engine cannot move yet is refused, not held still', async () => {
+test('a recorded control, which cannot be given here, is refused, not held still', async () => {
   const folder = folderWith(wavOf(PLAIN, [0]));
   const { code, stderr } = await folder.fettle('render', 'a.json', 'in.wav', 'out.wav', '--set', 'control.source=external');
   expect(code).toBe(2);
-  expect(stderr).toBe(
-    'in.wav cannot be rendered with variant A: control.source is external; the engine moves the gate by fixed or lfo so far\n',
-  );
+  expect(stderr).toBe('control.source of variant A is external, and render takes no recorded control; expected fixed, lfo or envelope\n');
   expect(existsSync(folder.at('out.wav'))).toBe(false);
+});
+
+// Cell A with the gate at 0 V, where the follower's limit is: 250 Ω under 10 kΩ, −32.26 dB; 0.3 dB for the second harmonic in the peak.
+test('an envelope is moved by the sound that is rendered', async () => {
+  const sound = soundOf(PLAIN, 9600);
+  const folder = folderWith(wavOf(PLAIN, sound));
+  const envelope = JSON.stringify({ source: 'envelope', restV: -9, limitV: 0, gainVPerV: 1000, thresholdV: 0.01 });
+  expect(
+    await folder.fettle('render', 'a.json', 'in.wav', 'out.wav', '--set', `control=${envelope}`, '--set', 'cell.seriesOhm=10k'),
+  ).toEqual(SILENT);
+  const peakDb = 20 * Math.log10(Math.max(...takeApart(folder.read('out.wav')).samples.slice(4800).map(Math.abs)) / 16384);
+  expect(Math.abs(peakDb + 32.26)).toBeLessThan(0.3);
 });
