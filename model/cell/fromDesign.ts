@@ -2,6 +2,7 @@
 import { atTemperature } from '../device/temperature.ts';
 import type { Design, Device, Variant } from '../design/types.ts';
 import { type CellNumbers, compileCell } from './cell.ts';
+import type { Circuit } from './circuit.ts';
 import { shuntCircuit } from './shunt.ts';
 
 /** The device of audio channel `channel` (0 left, 1 right). */
@@ -11,9 +12,14 @@ export function deviceOf(variant: Variant, channel: number): Device {
 
 /** Numbers of the cell of one variant and channel, with `noise` ready for sampled thermal noise. Throws a RangeError that names what cannot be computed. */
 export function cellNumbers(design: Design, variantIndex: number, channel: number, noise = false): CellNumbers {
+  const device = deviceOf(variantAt(design, variantIndex), channel);
+  return compileCell(circuitOf(design, variantIndex, channel), device, design.tempC, noise);
+}
+
+/** The circuit of the cell of one variant and channel, its device at the design's temperature. */
+export function circuitOf(design: Design, variantIndex: number, channel: number): Circuit {
   const variant = variantAt(design, variantIndex);
-  const device = deviceOf(variant, channel);
-  return compileCell(shuntCircuit(variant.cell, atTemperature(device, design.tempC).device), device, design.tempC, noise);
+  return shuntCircuit(variant.cell, atTemperature(deviceOf(variant, channel), design.tempC).device);
 }
 
 /** The variant at an index. Throws a RangeError when there is none. */

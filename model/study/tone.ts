@@ -5,13 +5,14 @@
  * Error    the last doubling moved the fundamental by under 1e-7 and every harmonic above −160 dB by under 1e-4 dB; `converged` is false
  *          where the finest grid did not reach that. Harmonics under −260 dB re the fundamental are the arithmetic's own and reported as zero
  */
-import { type CellNumbers, createCell, gateSourceV, settle, withTrapezoidalRule } from '../cell/cell.ts';
+import { createCell, gateSourceV, settle, withTrapezoidalRule } from '../cell/cell.ts';
 import { cellNumbers, deviceOf, variantAt } from '../cell/fromDesign.ts';
-import { restControlV } from '../control/range.ts';
 import type { Design } from '../design/types.ts';
 import { channelRegion, lawConstants, restingResistanceOhm } from '../device/law.ts';
 import { dbFromRatio, ratioFromDb, turnsOf } from '../device/math.ts';
 import { harmonicsOf } from '../measure/harmonics.ts';
+import { type OperatingOptions, restingControlV } from './operating.ts';
+import { requireRange } from './require.ts';
 import { type SteadyPeriod, steadyPeriod } from './steady.ts';
 
 const HARMONICS = 9;
@@ -21,19 +22,13 @@ const TURN = 6.283185307179586;
 /** −260 dB: below it a double holds rounding only. */
 const NOTHING = 1e-13;
 
-export interface ToneOptions {
+export interface ToneOptions extends OperatingOptions {
   /** Hz; 1000 when left out. */
   readonly toneHz?: number;
   /** Peak, V, at the cell's input; 0.5 when left out. */
   readonly toneV?: number;
-  /** Voltage of the control's driver, V; when left out, where the control rests: an LFO midway between its ends. */
-  readonly controlV?: number;
-  /** Instead of `controlV`: the gate-source voltage at rest, V, to which the driver is set. */
-  readonly gateV?: number;
   /** `output` counts the make-up gain. */
   readonly at?: 'drain' | 'output';
-  /** 0 left, 1 right, where the devices differ. */
-  readonly channel?: number;
 }
 
 export interface Harmonic {
@@ -73,9 +68,7 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
   requireRange('toneHz', toneHz, 0.1, 1e6, 'Hz');
   requireRange('toneV', toneV, 1e-9, 1e3, 'V peak');
   const numbers = withTrapezoidalRule(cellNumbers(design, variantIndex, channel));
-  const controlV =
-    options.gateV === undefined ? (options.controlV ?? restControlV(variant.control)) : controlForGate(numbers, options.gateV);
-  requireRange('controlV', controlV, -1e3, 1e3, 'V');
+  const controlV = restingControlV(design, variantIndex, numbers, options);
   const gain = at === 'output' ? ratioFromDb(variant.output.gainDb) : 1;
   const solveOn = (size: number) => steadyPeriod(createCell(numbers, 1 / (toneHz * size)), toneV, controlV, size);
   let size = COARSEST;
@@ -104,34 +97,6 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
     gridPoints: size,
     converged,
   };
-}
-
-const SECANT_STEPS = 30;
-
-/** The driver's voltage that brings the gate at rest to `gateV`, by the secant method: one step where the gate draws no current. */
-function controlForGate(numbers: CellNumbers, gateV: number): number {
-  requireRange('gateV', gateV, -1e3, 1e3, 'V');
-  const cell = createCell(numbers, 1e-3);
-  const missAt = (controlV: number) => {
-    settle(cell, 0, controlV);
-    return gateSourceV(cell) - gateV;
-  };
-  let before = 0;
-  let missBefore = missAt(before);
-  let now = gateV;
-  for (let step = 0; step < SECANT_STEPS; step++) {
-    const miss = missAt(now);
-    if (Math.abs(miss) < 1e-9) return now;
-    const next = now - (miss * (now - before)) / (miss - missBefore);
-    before = now;
-    missBefore = miss;
-    now = next;
-  }
-  throw new RangeError(`gateV is ${gateV}; expected a voltage that the driver can bring the gate to`);
-}
-
-function requireRange(name: string, value: number, least: number, most: number, unit: string): void {
-  if (!(value >= least && value <= most)) throw new RangeError(`${name} is ${value}; expected ${least} to ${most} ${unit}`);
 }
 
 function amplitudes(set: { real: Float64Array; imaginary: Float64Array }): Float64Array {
