@@ -8,6 +8,7 @@
  */
 import { advanceCell, type Cell, gateConducts, overdriveV, settle } from '../cell/cell.ts';
 import { factor, solve } from '../cell/linear.ts';
+import { channelRegion } from '../device/law.ts';
 import { cosTurns } from '../device/math.ts';
 
 const NEWTON_ROUNDS = 12;
@@ -103,4 +104,24 @@ function recordPeriod(cell: Cell, audio: Float64Array, control: Float64Array): O
     gateOn[at] = gateConducts(cell, CONDUCTS_A) ? 1 : 0;
   }
   return { output, sourceOverdrive, drainOverdrive, gateOn };
+}
+
+/** Shares of the period; the first three add up to one, the last may overlap them. */
+export interface RegionShares {
+  readonly ohmic: number;
+  readonly saturated: number;
+  readonly cutoff: number;
+  readonly gateOn: number;
+}
+
+/** By the overdrives of each sample. */
+export function regionShares(period: SteadyPeriod): RegionShares {
+  const count = { ohmic: 0, saturated: 0, cutoff: 0 };
+  let gateOn = 0;
+  const size = period.output.length;
+  for (let i = 0; i < size; i++) {
+    count[channelRegion(period.sourceOverdrive[i], period.drainOverdrive[i])] += 1;
+    gateOn += period.gateOn[i];
+  }
+  return { ohmic: count.ohmic / size, saturated: count.saturated / size, cutoff: count.cutoff / size, gateOn: gateOn / size };
 }

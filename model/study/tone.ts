@@ -8,12 +8,12 @@
 import { createCell, gateSourceV, settle, withTrapezoidalRule } from '../cell/cell.ts';
 import { cellNumbers, deviceOf, variantAt } from '../cell/fromDesign.ts';
 import type { Design } from '../design/types.ts';
-import { channelRegion, lawConstants, restingResistanceOhm } from '../device/law.ts';
+import { lawConstants, restingResistanceOhm } from '../device/law.ts';
 import { dbFromRatio, ratioFromDb, turnsOf } from '../device/math.ts';
 import { harmonicsOf } from '../measure/harmonics.ts';
 import { type OperatingOptions, restingControlV } from './operating.ts';
 import { requireRange } from './require.ts';
-import { type SteadyPeriod, steadyPeriod } from './steady.ts';
+import { type RegionShares, regionShares, steadyPeriod } from './steady.ts';
 
 const HARMONICS = 9;
 const COARSEST = 256;
@@ -54,8 +54,7 @@ export interface ToneReading {
   readonly rdsOhm: number;
   /** Gate-source voltage at rest, V. */
   readonly vgsV: number;
-  /** Shares of the period; the first three add up to one, the last may overlap them. */
-  readonly regions: { readonly ohmic: number; readonly saturated: number; readonly cutoff: number; readonly gateOn: number };
+  readonly regions: RegionShares;
   /** Samples in the finest period, and whether the reading had stopped changing there. */
   readonly gridPoints: number;
   readonly converged: boolean;
@@ -93,7 +92,7 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
     restDcV,
     rdsOhm: restingResistanceOhm(law, numbers.polarity * vgsV),
     vgsV,
-    regions: shares(period),
+    regions: regionShares(period),
     gridPoints: size,
     converged,
   };
@@ -128,15 +127,4 @@ function describe(set: { real: Float64Array; imaginary: Float64Array }, gain: nu
     thdTotal: Math.sqrt(above / (above + fundamentalV * fundamentalV)),
     harmonics,
   };
-}
-
-function shares(period: SteadyPeriod) {
-  const count = { ohmic: 0, saturated: 0, cutoff: 0 };
-  let gateOn = 0;
-  const size = period.output.length;
-  for (let i = 0; i < size; i++) {
-    count[channelRegion(period.sourceOverdrive[i], period.drainOverdrive[i])] += 1;
-    gateOn += period.gateOn[i];
-  }
-  return { ohmic: count.ohmic / size, saturated: count.saturated / size, cutoff: count.cutoff / size, gateOn: gateOn / size };
 }
