@@ -7,13 +7,15 @@ import { type LawConstants, lawConstants } from '../device/law.ts';
 import { smoothTable, TERMS } from '../device/table.ts';
 import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
 import type { Circuit } from './circuit.ts';
+import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
+import { loopedKernel } from './kernels/looped.ts';
 import { GRADUAL_KERNELS } from './kernels/gradual.ts';
 import { SMOOTH_KERNELS } from './kernels/smooth.ts';
 import { SQUARE_KERNELS } from './kernels/square.ts';
 import { factor, solve } from './linear.ts';
 import { CONSTANT, DRIVES, GATE_DRAIN, GATE_SOURCE, type Plan, planCircuit } from './plan.ts';
-import { createReduction, discretise, type Reduction, respond, stepColumns } from './reduce.ts';
+import { createReduction, discretise, memoryColumns, type Reduction, respond, stepColumns } from './reduce.ts';
 
 /** Boltzmann's constant over the elementary charge, V/K (SI 2019, exact values 1.380649e-23 and 1.602176634e-19). */
 const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
@@ -56,6 +58,9 @@ export interface CellNumbers {
 export interface Cell {
   readonly numbers: CellNumbers;
   readonly stateCount: number;
+  /** Where the slots of `kernels/layout.ts` begin in `state`. */
+  readonly slots: number;
+  readonly kernel: Kernel;
   /** The values in force; changed by `loadValues`. */
   readonly values: Float64Array;
   readonly reduction: Reduction;
@@ -79,9 +84,6 @@ interface RestMemory {
 /** Numbers of a circuit with its device at `tempC`. Throws a RangeError that names what cannot be computed. */
 export function compileCell(circuit: Circuit, device: Device, tempC: number, noise = false): CellNumbers {
   const plan = planCircuit(circuit, noise);
-  if (plan.states.length >= KERNELS.square.length) {
-    throw new RangeError(`the circuit has ${plan.states.length} independent capacitors; expected at most ${KERNELS.square.length - 1}`);
-  }
   const law = lawConstants(device, tempC);
   const { junction } = atTemperature(device, tempC).device;
   const values = new Float64Array(plan.values.length + DEVICE_VALUES);
@@ -112,22 +114,30 @@ function tableOf(law: LawConstants): Float64Array {
   return smoothTable(law.exponent, Math.min(LONGEST_TABLE_Z, (TABLE_BEYOND_V - law.gateOffV) / law.tailV));
 }
 
-/** The same numbers with every capacitor advanced by the trapezoidal rule: second order throughout, for smooth steady signals. */
+/** The same numbers with every state advanced by the trapezoidal rule: second order throughout, for smooth steady signals. */
 export function withTrapezoidalRule(numbers: CellNumbers): CellNumbers {
-  const states = numbers.plan.states.map((state) => ({ ...state, newWeight: 0.5 }));
-  return { ...numbers, plan: { ...numbers.plan, states } };
+  return { ...numbers, plan: { ...numbers.plan, trapezoidal: numbers.plan.states.length } };
+}
+
+/** The kernel written out for a shape, or the one in loops. */
+function kernelOf(law: Law, trapezoidal: number, stiff: number): Kernel {
+  return KERNELS[law][`${trapezoidal} ${stiff}`] ?? loopedKernel(trapezoidal, stiff);
 }
 
 /** A cell advancing by `stepSec`, with its states at zero: call `settle` before the first sample. Throws when the network is singular. */
 export function createCell(numbers: CellNumbers, stepSec: number): Cell {
   const n = numbers.plan.states.length;
+  const { trapezoidal } = numbers.plan;
+  const slots = L.slotStart(trapezoidal, n - trapezoidal);
   const cell: Cell = {
     numbers,
     stateCount: n,
     values: Float64Array.from(numbers.values),
     reduction: createReduction(numbers.plan),
     coefficients: new Float64Array(L.coefficientLayout(n).length),
-    state: new Float64Array(n + L.STATE_SLOTS),
+    state: new Float64Array(slots + L.STATE_SLOTS),
+    slots,
+    kernel: kernelOf(numbers.law, trapezoidal, n - trapezoidal),
     stepSec,
     rest: {
       coefficients: new Float64Array(L.coefficientLayout(0).length),
@@ -167,23 +177,22 @@ export function advanceCell(
   to: number,
   noise: Float64Array = NO_NOISE,
 ): void {
-  const { law, table } = cell.numbers;
-  KERNELS[law][cell.stateCount](cell.coefficients, table, noise, cell.state, signal, control, signal, from, to);
+  cell.kernel(cell.coefficients, cell.numbers.table, noise, cell.state, signal, control, signal, from, to);
 }
 
 /** Gate-source voltage of the last sample, V, with the sign of the part's channel. */
 export function gateSourceV(cell: Cell): number {
-  return cell.numbers.polarity * (cell.state[cell.stateCount + L.OVERDRIVE_S] + deviceValue(cell, GATE_OFF_V));
+  return cell.numbers.polarity * (cell.state[cell.slots + L.OVERDRIVE_S] + deviceValue(cell, GATE_OFF_V));
 }
 
 /** Overdrives of the last sample, gate-source and gate-drain less VGS(off), V, in the n-channel frame. */
 export function overdriveV(cell: Cell, end: 'source' | 'drain'): number {
-  return cell.state[cell.stateCount + (end === 'source' ? L.OVERDRIVE_S : L.OVERDRIVE_D)];
+  return cell.state[cell.slots + (end === 'source' ? L.OVERDRIVE_S : L.OVERDRIVE_D)];
 }
 
 /** Whether a gate junction carried more than `amperes` forward in the last sample. */
 export function gateConducts(cell: Cell, amperes: number): boolean {
-  return cell.state[cell.stateCount + L.JUNCTION_S] > amperes || cell.state[cell.stateCount + L.JUNCTION_D] > amperes;
+  return cell.state[cell.slots + L.JUNCTION_S] > amperes || cell.state[cell.slots + L.JUNCTION_D] > amperes;
 }
 
 function deviceValue(cell: Cell, index: number): number {
@@ -203,43 +212,74 @@ function packStep(cell: Cell): void {
     const to = r * row.width;
     const sign = r < 2 ? polarity : 1;
     for (let k = 0; k < n; k++) c[to + k] = sign * step[from + k];
-    for (let k = 0; k < 2; k++) {
-      c[to + row.newU + k] = sign * step[from + columns.newU + k];
-      if (n > 0) c[to + row.oldU + k] = sign * step[from + columns.oldU + k];
-    }
-    const j = sign * polarity;
-    const newS = j * step[from + columns.newJ];
-    const newD = j * step[from + columns.newJ + 1];
-    const oldS = j * step[from + columns.oldJ];
-    const oldD = j * step[from + columns.oldJ + 1];
-    c[to + row.newI] = newS - newD;
-    if (n > 0) c[to + row.oldI] = oldS - oldD;
-    c[to + row.constant] = sign * step[from + columns.constant] + steadyCurrents(cell, newS + oldS, newD + oldD);
-    if (r < 2) c[to + row.constant] -= deviceValue(cell, GATE_OFF_V);
-    packJunction(c, all.junction + r * L.JUNCTION_WIDTH, newS, newD, oldS, oldD);
+    for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * step[from + columns.newU + k];
+    const byS = sign * polarity * step[from + columns.newJ];
+    const byD = sign * polarity * step[from + columns.newJ + 1];
+    packCurrents(cell, c, to, r, row, all, byS, byD);
+    c[to + row.constant] += sign * step[from + columns.constant] - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
   }
   const from = (n + 2) * plan.width;
   const to = all.outputRow * row.width;
   for (let k = 0; k < n + 2; k++) c[to + k] = response[from + k];
-  const newS = polarity * response[from + n + GATE_SOURCE];
-  const newD = polarity * response[from + n + GATE_DRAIN];
-  c[to + row.newI] = newS - newD;
-  c[to + row.constant] = response[from + n + CONSTANT] + steadyCurrents(cell, newS, newD);
-  packJunction(c, all.junction + all.outputRow * L.JUNCTION_WIDTH, newS, newD, 0, 0);
-  packDevice(cell, c, all.device, c[row.newI], c[row.width + row.newI]);
+  packCurrents(
+    cell,
+    c,
+    to,
+    all.outputRow,
+    row,
+    all,
+    polarity * response[from + n + GATE_SOURCE],
+    polarity * response[from + n + GATE_DRAIN],
+  );
+  c[to + row.constant] += response[from + n + CONSTANT];
+  packMemory(cell);
+  packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
+}
+
+/** A row's weights of the port currents, and as its constant what the steady reverse currents add. */
+function packCurrents(
+  cell: Cell,
+  c: Float64Array,
+  to: number,
+  r: number,
+  row: ReturnType<typeof L.rowLayout>,
+  all: ReturnType<typeof L.coefficientLayout>,
+  byS: number,
+  byD: number,
+): void {
+  c[to + row.current] = byS - byD;
+  c[to + row.constant] = steadyCurrents(cell, byS, byD);
+  c[all.junction + r * L.JUNCTION_WIDTH + L.BY_S] = byS;
+  c[all.junction + r * L.JUNCTION_WIDTH + L.BY_D] = byD;
+}
+
+/** The memory rows; old reverse currents, which are as steady as the new ones, go into the constants of the rows through their memory. */
+function packMemory(cell: Cell): void {
+  const n = cell.stateCount;
+  const { coefficients: c, reduction } = cell;
+  const { polarity } = cell.numbers;
+  const row = L.rowLayout(n);
+  const past = L.memoryLayout(n);
+  const all = L.coefficientLayout(n);
+  const from = memoryColumns(n);
+  for (let i = 0; i < n; i++) {
+    const at = i * from.width;
+    const to = all.memory + i * past.width;
+    for (let k = 0; k < n + 2; k++) c[to + k] = reduction.memory[at + k];
+    const byS = polarity * reduction.memory[at + from.oldJ];
+    const byD = polarity * reduction.memory[at + from.oldJ + 1];
+    c[to + past.oldI] = byS - byD;
+    c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_S] = byS;
+    c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_D] = byD;
+    const steady = steadyCurrents(cell, byS, byD);
+    for (let r = 0; r < n + 2; r++) c[r * row.width + row.constant] += c[r * row.width + i] * steady;
+  }
 }
 
 /** What the reverse currents of the junctions and the clamp, which always flow, add to a row with these weights. */
 function steadyCurrents(cell: Cell, weightS: number, weightD: number): number {
   const reverseA = deviceValue(cell, REVERSE_A);
   return -(reverseA + deviceValue(cell, CLAMP_A)) * weightS - reverseA * weightD;
-}
-
-function packJunction(c: Float64Array, at: number, newS: number, newD: number, oldS: number, oldD: number): void {
-  c[at + L.NEW_S] = newS;
-  c[at + L.NEW_D] = newD;
-  c[at + L.OLD_S] = oldS;
-  c[at + L.OLD_D] = oldD;
 }
 
 function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: number): void {
@@ -289,7 +329,7 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   rest.audio[0] = audioV;
   rest.control[0] = controlV;
   const { law, table } = cell.numbers;
-  KERNELS[law][0](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
+  KERNELS[law]['0 0'](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
   const reverseA = deviceValue(cell, REVERSE_A);
   const channelA = rest.state[L.CHANNEL_A];
   const gateSourceA = polarity * (channelA + rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A));
@@ -299,10 +339,14 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
     state[r] = rest.columns[at] * audioV + rest.columns[at + 1] * controlV + rest.columns[at + CONSTANT];
     state[r] += rest.columns[at + GATE_SOURCE] * gateSourceA + rest.columns[at + GATE_DRAIN] * gateDrainA;
   }
-  for (let slot = 0; slot < L.FALLBACKS; slot++) state[n + slot] = rest.state[slot];
-  state[n + L.OLD_AUDIO] = audioV;
-  state[n + L.OLD_CONTROL] = controlV;
-  state[n + L.EARLIER_A] = channelA;
+  const stiff = n - plan.trapezoidal;
+  for (let k = 0; k < stiff; k++) {
+    for (let past = 0; past < 3; past++) state[n + past * stiff + k] = state[plan.trapezoidal + k];
+  }
+  for (let slot = 0; slot < L.FALLBACKS; slot++) state[cell.slots + slot] = rest.state[slot];
+  state[cell.slots + L.OLD_AUDIO] = audioV;
+  state[cell.slots + L.OLD_CONTROL] = controlV;
+  state[cell.slots + L.EARLIER_A] = channelA;
   return rest.output[0];
 }
 
@@ -319,15 +363,13 @@ function packRest(cell: Cell): void {
     const from = (n + r) * plan.width;
     const to = r * row.width;
     const sign = r < 2 ? polarity : 1;
-    for (let k = 0; k < 2; k++) c[to + row.newU + k] = sign * throughStates(response, rest.columns, from, n, k);
-    const newS = sign * polarity * throughStates(response, rest.columns, from, n, GATE_SOURCE);
-    const newD = sign * polarity * throughStates(response, rest.columns, from, n, GATE_DRAIN);
-    c[to + row.newI] = newS - newD;
-    c[to + row.constant] = sign * throughStates(response, rest.columns, from, n, CONSTANT) + steadyCurrents(cell, newS, newD);
-    if (r < 2) c[to + row.constant] -= deviceValue(cell, GATE_OFF_V);
-    packJunction(c, all.junction + r * L.JUNCTION_WIDTH, newS, newD, 0, 0);
+    for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * throughStates(response, rest.columns, from, n, k);
+    const byS = sign * polarity * throughStates(response, rest.columns, from, n, GATE_SOURCE);
+    const byD = sign * polarity * throughStates(response, rest.columns, from, n, GATE_DRAIN);
+    packCurrents(cell, c, to, r, row, all, byS, byD);
+    c[to + row.constant] += sign * throughStates(response, rest.columns, from, n, CONSTANT) - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
   }
-  packDevice(cell, c, all.device, c[row.newI], c[row.width + row.newI]);
+  packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
 }
 
 function throughStates(response: Float64Array, columns: Float64Array, from: number, n: number, drive: number): number {

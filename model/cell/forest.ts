@@ -14,8 +14,8 @@ export interface Forest {
   /** Elements that are states, coupling capacitors first; and those that close loops. */
   readonly trees: readonly number[];
   readonly links: readonly number[];
-  /** The voltage of a capacitor as a sum of states, and of the audio and the control voltage. */
-  voltageOf(element: number): { fromStates: Float64Array; fromSources: Float64Array };
+  /** The voltage of a capacitor as a sum of those in `trees`, and of the audio and the control voltage. */
+  voltageOf(element: number): { fromTrees: Float64Array; fromSources: Float64Array };
 }
 
 /** Throws a RangeError when a node is driven twice. */
@@ -45,15 +45,15 @@ export function chooseForest(elements: readonly Element[], nodes: readonly strin
     trees,
     links,
     voltageOf(index) {
-      const fromStates = new Float64Array(trees.length);
+      const fromTrees = new Float64Array(trees.length);
       const fromSources = new Float64Array(2);
-      if (elements[index].kind !== 'capacitor') return { fromStates, fromSources };
+      if (elements[index].kind !== 'capacitor') return { fromTrees, fromSources };
       const [from, to] = ends(index);
-      for (const [state, sign] of from.states) fromStates[state] += sign;
-      for (const [state, sign] of to.states) fromStates[state] -= sign;
+      for (const [state, sign] of from.states) fromTrees[state] += sign;
+      for (const [state, sign] of to.states) fromTrees[state] -= sign;
       fromSources[0] = from.sources[0] - to.sources[0];
       fromSources[1] = from.sources[1] - to.sources[1];
-      return { fromStates, fromSources };
+      return { fromTrees, fromSources };
     },
   };
 }

@@ -2,8 +2,9 @@
  * What of a circuit does not change with its values: which voltages and currents are the states, where each element stands in the network's
  * matrix, and the memory in which `reduce.ts` works. Made once when a circuit is compiled.
  *
- * The states are the voltages of the capacitors in a spanning forest (sources first, then coupling, then parasitic capacitors), then the
- * currents of the inductors; the voltage of a capacitor that closes a loop is a sum of states and source voltages.
+ * The states are the voltages of the capacitors in a spanning forest (sources first, then coupling, then parasitic capacitors) and the currents
+ * of the inductors; the voltage of a capacitor that closes a loop is a sum of states and source voltages. Those that are advanced by the
+ * trapezoidal rule (coupling capacitors, inductors) come first, the stiff ones after them.
  */
 import { type Circuit, circuitShape, type Element, elementNodes, elementValue } from './circuit.ts';
 import { chooseForest } from './forest.ts';
@@ -19,8 +20,6 @@ export const DRIVES = 5;
 /** A capacitor or inductor that is a state or closes a loop. */
 export interface StoragePlan {
   readonly element: number;
-  /** Weight of the new derivative: ½ trapezoidal, 1 backward Euler. */
-  readonly newWeight: number;
   /** Of a capacitor that closes a loop: its voltage as a sum of states, and of the audio and the control voltage. */
   readonly fromStates: Float64Array;
   readonly fromSources: Float64Array;
@@ -40,6 +39,8 @@ export interface Plan {
   /** Unknowns of the network: node voltages, then currents of sources, summers and state capacitors. */
   readonly size: number;
   readonly states: readonly StoragePlan[];
+  /** How many of them, the first, are advanced by the trapezoidal rule. */
+  readonly trapezoidal: number;
   readonly links: readonly StoragePlan[];
   /** For each state the unknown that is its derivative's drive, and the one taken from it (−1 for none): a capacitor's current, an inductor's voltage. */
   readonly stateRows: Int32Array;
@@ -79,12 +80,17 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     if (hasCurrent) branchOf.set(index, nodes.length + branchOf.size);
   });
   const places: Places = { row, branchOf, size: nodes.length + branchOf.size };
-  const stateElements = [...forest.trees, ...inductors];
-  const storage = (index: number): StoragePlan => {
+  const isStiff = (index: number) => {
     const element = elements[index];
-    const stiff = element.kind === 'capacitor' && element.role === 'parasitic';
-    const { fromStates, fromSources } = forest.voltageOf(index);
-    return { element: index, newWeight: stiff ? 1 : 0.5, fromStates: padded(fromStates, stateElements.length), fromSources };
+    return element.kind === 'capacitor' && element.role === 'parasitic';
+  };
+  const stiff = forest.trees.filter(isStiff);
+  const smooth = [...forest.trees.filter((index) => !isStiff(index)), ...inductors];
+  const stateElements = [...smooth, ...stiff];
+  const storage = (index: number): StoragePlan => {
+    const { fromTrees, fromSources } = forest.voltageOf(index);
+    const fromStates = Float64Array.from(stateElements, (element) => fromTrees[forest.trees.indexOf(element)] ?? 0);
+    return { element: index, fromStates, fromSources };
   };
   const noisy = Int32Array.from(noise ? elements.flatMap((element, index) => (element.kind === 'conductance' ? [index] : [])) : []);
   const ends = { drain: row(jfet.drain), gate: row(jfet.gate), source: row(jfet.source), output: row(circuit.outputNode) };
@@ -95,6 +101,7 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     values: Float64Array.from(elements, elementValue),
     size: places.size,
     states: stateElements.map(storage),
+    trapezoidal: smooth.length,
     links: forest.links.map(storage),
     stateRows: Int32Array.from(stateElements, (index) => branchOf.get(index) ?? endRow(elements[index], row, 'a')),
     stateRowsLess: Int32Array.from(stateElements, (index) => (branchOf.has(index) ? -1 : endRow(elements[index], row, 'b'))),
@@ -106,12 +113,6 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     ...ends,
   };
 }
-
-const padded = (values: Float64Array, length: number) => {
-  const result = new Float64Array(length);
-  result.set(values);
-  return result;
-};
 
 function endRow(element: Element, row: (name: string) => number, end: 'a' | 'b'): number {
   return element.kind === 'inductor' ? row(element[end]) : -1;

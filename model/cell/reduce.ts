@@ -4,9 +4,10 @@
  * Law      the resistive network with every state capacitor as a voltage source and every inductor as a current source gives the capacitor
  *          currents and inductor voltages f and the FET's port voltages p as linear sums of the states x, the sources u, the constants and the
  *          port currents j;  M·dx/dt + Mu·du/dt = f(x, u, j), M from the capacitances and inductances
- * Scheme   M·(x₁ − x₀)/h + Mu·(u₁ − u₀)/h = Θ·f₁ + (1 − Θ)·f₀, row by row: Θ = ½ (trapezoidal) for coupling capacitors, 1 (backward Euler)
- *          for parasitic ones. The state is voltage only, so values may move between samples
- * Error    global O(h²) from coupling capacitors, O(h) from parasitic ones, times their time constant
+ * Scheme   row by row. Coupling capacitors and inductors by the trapezoidal rule, M·(x₁ − x₀)/h = ½·(f₁ + f₀). Picofarads, which are stiff, by
+ *          backward differences, M·(47/24·x₁ − 7/2·x₀ + 9/4·x₋₁ − 5/6·x₋₂ + 1/8·x₋₃)/h = f₁, the mean of the formulas of third and fourth order,
+ *          which damp what they cannot follow. The state is voltages and currents of the past only, so values may move between samples
+ * Error    global O(h²) from coupling capacitors and inductors, O(h³) from picofarads; O(h) from a picofarad between a source and a node
  * Source   nodal method reduced to state space: Yeh, Abel & Smith, IEEE TASLP 18 (2010) 728; Holters & Zölzer, DAFx 2011 (from memory)
  *
  * `reduce` writes in place and allocates nothing, so that values can be moved on the audio thread.
@@ -20,6 +21,8 @@ export interface Reduction {
   readonly values: Float64Array;
   /** Network responses: rows are what drives the states, ports (2), output (1); columns as in the plan. */
   readonly response: Float64Array;
+  /** What each row remembers: columns states (those of the past where the row is stiff), old u, old j. */
+  readonly memory: Float64Array;
   /** Discrete map: rows port voltages (2), new states; columns in `stepColumns`. */
   readonly step: Float64Array;
   readonly work: {
@@ -32,11 +35,19 @@ export interface Reduction {
   };
 }
 
-/** Columns of `step`: old states, new u, old u, old j, new j, the constants, then one for each noise current. */
+/** Columns of `step`: the rows' memories, new u, new j, the constants, then one for each noise current. */
 export function stepColumns(stateCount: number, noiseCount: number) {
   const n = stateCount;
-  return { newU: n, oldU: n + 2, oldJ: n + 4, newJ: n + 6, constant: n + 8, noise: n + 9, width: n + 9 + noiseCount };
+  return { newU: n, newJ: n + 2, constant: n + 4, noise: n + 5, width: n + 5 + noiseCount };
 }
+
+/** Columns of `memory`. */
+export function memoryColumns(stateCount: number) {
+  return { oldU: stateCount, oldJ: stateCount + 2, width: stateCount + 4 };
+}
+
+/** Weight of the new state in the backward difference; `kernels/source.ts` has the past ones'. */
+const NEWEST = 47 / 24;
 
 export function createReduction(plan: Plan): Reduction {
   const n = plan.states.length;
@@ -45,6 +56,7 @@ export function createReduction(plan: Plan): Reduction {
     plan,
     values: Float64Array.from(plan.values),
     response: new Float64Array((n + 3) * plan.width),
+    memory: new Float64Array(n * memoryColumns(n).width),
     step: new Float64Array((n + 2) * width),
     work: {
       matrix: new Float64Array(plan.size * plan.size),
@@ -93,15 +105,15 @@ function subtractRow(to: Float64Array, toRow: number, from: Float64Array, fromRo
   for (let i = 0; i < width; i++) to[toRow * width + i] -= fromRow < 0 ? 0 : from[fromRow * width + i];
 }
 
-/** Computes `step` from `response` for steps of `stepSec`. False when singular. */
+/** Computes `memory` and `step` from `response` for steps of `stepSec`. False when singular. */
 export function discretise(reduction: Reduction, stepSec: number): boolean {
-  const { plan, response, step, work } = reduction;
+  const { plan, response, step, memory, work } = reduction;
   const n = plan.states.length;
-  const noise = plan.noisy.length;
-  const columns = stepColumns(n, noise);
+  const columns = stepColumns(n, plan.noisy.length);
   const { width } = columns;
   work.left.fill(0);
   work.right.fill(0);
+  memory.fill(0);
   addStorage(reduction, stepSec);
   for (let row = 0; row < n; row++) addDrives(reduction, row);
   if (!factor(work.left, work.statePivots, n)) return false;
@@ -120,53 +132,68 @@ export function discretise(reduction: Reduction, stepSec: number): boolean {
       step[to + columns.newJ + k] += response[p + n + GATE_SOURCE + k];
     }
     step[to + columns.constant] += response[p + n + CONSTANT];
-    for (let k = 0; k < noise; k++) step[to + columns.noise + k] += response[p + n + DRIVES + k];
+    for (let k = 0; k < plan.noisy.length; k++) step[to + columns.noise + k] += response[p + n + DRIVES + k];
   }
   return true;
 }
 
-/** Adds Θ·f₁ to the left and to the new drives, (1 − Θ)·f₀ to the old ones. Constants and noise are steady over a step. */
-function addDrives({ plan, response, work }: Reduction, row: number): void {
+/** Adds f₁, and f₀ where the row is trapezoidal. Constants and noise are steady over a step. */
+function addDrives({ plan, response, memory, work }: Reduction, row: number): void {
   const n = plan.states.length;
   const columns = stepColumns(n, plan.noisy.length);
-  const { newWeight } = plan.states[row];
-  const old = 1 - newWeight;
+  const past = memoryColumns(n);
+  const isTrapezoidal = row < plan.trapezoidal;
+  const weight = isTrapezoidal ? 0.5 : 1;
   const f = row * plan.width;
   const r = row * columns.width;
-  for (let state = 0; state < n; state++) {
-    work.left[row * n + state] -= newWeight * response[f + state];
-    work.right[r + state] += old * response[f + state];
-  }
+  const m = row * past.width;
+  work.right[r + row] = 1;
+  for (let state = 0; state < n; state++) work.left[row * n + state] -= weight * response[f + state];
   for (let k = 0; k < 2; k++) {
-    work.right[r + columns.newU + k] += newWeight * response[f + n + k];
-    work.right[r + columns.oldU + k] += old * response[f + n + k];
-    work.right[r + columns.newJ + k] += newWeight * response[f + n + GATE_SOURCE + k];
-    work.right[r + columns.oldJ + k] += old * response[f + n + GATE_SOURCE + k];
+    work.right[r + columns.newU + k] += weight * response[f + n + k];
+    work.right[r + columns.newJ + k] += weight * response[f + n + GATE_SOURCE + k];
+  }
+  if (isTrapezoidal) {
+    for (let state = 0; state < n; state++) memory[m + state] += 0.5 * response[f + state];
+    for (let k = 0; k < 2; k++) {
+      memory[m + past.oldU + k] += 0.5 * response[f + n + k];
+      memory[m + past.oldJ + k] += 0.5 * response[f + n + GATE_SOURCE + k];
+    }
   }
   work.right[r + columns.constant] += response[f + n + CONSTANT];
   for (let k = 0; k < plan.noisy.length; k++) work.right[r + columns.noise + k] += response[f + n + DRIVES + k];
 }
 
 /** Adds M/h to both sides and Mu/h to the sources' columns. */
-function addStorage({ plan, values, work }: Reduction, stepSec: number): void {
+function addStorage(reduction: Reduction, stepSec: number): void {
+  const { plan, values } = reduction;
   const n = plan.states.length;
-  const { width, newU, oldU } = stepColumns(n, plan.noisy.length);
   for (let row = 0; row < n; row++) {
-    const own = values[plan.states[row].element] / stepSec;
-    work.left[row * n + row] += own;
-    work.right[row * width + row] += own;
+    addDerivative(reduction, row, row, values[plan.states[row].element] / stepSec);
     for (let index = 0; index < plan.links.length; index++) {
       const link = plan.links[index];
       const weight = (link.fromStates[row] * values[link.element]) / stepSec;
       if (weight === 0) continue;
-      for (let column = 0; column < n; column++) {
-        work.left[row * n + column] += weight * link.fromStates[column];
-        work.right[row * width + column] += weight * link.fromStates[column];
-      }
-      for (let k = 0; k < 2; k++) {
-        work.right[row * width + newU + k] -= weight * link.fromSources[k];
-        work.right[row * width + oldU + k] += weight * link.fromSources[k];
-      }
+      for (let column = 0; column < n; column++) addDerivative(reduction, row, column, weight * link.fromStates[column]);
+      addSourceDerivative(reduction, row, link.fromSources, weight);
     }
+  }
+}
+
+/** Adds `weight` times h times the derivative of a state to a row: by backward differences where both are stiff, else by one difference. */
+function addDerivative({ plan, memory, work }: Reduction, row: number, column: number, weight: number): void {
+  const n = plan.states.length;
+  const isStiff = row >= plan.trapezoidal && column >= plan.trapezoidal;
+  work.left[row * n + column] += isStiff ? NEWEST * weight : weight;
+  memory[row * memoryColumns(n).width + column] += weight;
+}
+
+function addSourceDerivative({ plan, memory, work }: Reduction, row: number, fromSources: Float64Array, weight: number): void {
+  const n = plan.states.length;
+  const columns = stepColumns(n, plan.noisy.length);
+  const past = memoryColumns(n);
+  for (let k = 0; k < 2; k++) {
+    work.right[row * columns.width + columns.newU + k] -= weight * fromSources[k];
+    memory[row * past.width + past.oldU + k] += weight * fromSources[k];
   }
 }

@@ -4,7 +4,6 @@
  */
 import { createCell, settle } from '../../model/cell/cell.ts';
 import { compileCell } from '../../model/cell/cell.ts';
-import { SQUARE_KERNELS } from '../../model/cell/kernels/square.ts';
 import { shuntCircuit } from '../../model/cell/shunt.ts';
 import { createChain, processChain, warmChain } from '../../model/chain/chain.ts';
 import { compileChain } from '../../model/chain/compile.ts';
@@ -46,8 +45,14 @@ function kernelRows(): Row[] {
   const audio = Float64Array.from({ length: SAMPLES }, (_, i) => 0.3 * Math.sin((2 * Math.PI * 1000 * i) / UPPER_HZ));
   const control = Float64Array.from({ length: SAMPLES }, (_, i) => -0.9 + 0.3 * Math.sin((2 * Math.PI * i) / SAMPLES));
   const output = new Float64Array(SAMPLES);
-  const kernel = SQUARE_KERNELS[cell.stateCount];
-  const native = buildNative(cell.stateCount, { coefficients: cell.coefficients, state: cell.state, audio, control });
+  const { kernel } = cell;
+  const { trapezoidal } = cell.numbers.plan;
+  const native = buildNative([trapezoidal, cell.stateCount - trapezoidal], {
+    coefficients: cell.coefficients,
+    state: cell.state,
+    audio,
+    control,
+  });
   const silent = new Float64Array(0);
   let typescriptNs = Number.POSITIVE_INFINITY;
   let nativeNs = Number.POSITIVE_INFINITY;

@@ -13,15 +13,15 @@ export interface NativeKernel {
 
 const doubles = (values: Float64Array) => Buffer.from(values.buffer, values.byteOffset, values.byteLength);
 
-/** Builds the kernel of `stateCount` states with its coefficients, state and signals. Throws when there is no gcc. */
+/** Builds the kernel of a shape with its coefficients, state and signals. Throws when there is no gcc. */
 export function buildNative(
-  stateCount: number,
+  shape: readonly [trapezoidal: number, stiff: number],
   data: { coefficients: Float64Array; state: Float64Array; audio: Float64Array; control: Float64Array },
 ): NativeKernel {
   const folder = mkdtempSync(join(tmpdir(), 'fettle-bench-'));
   const { coefficients, state, audio, control } = data;
   writeFileSync(join(folder, 'data'), Buffer.concat([coefficients, state, audio, control].map(doubles)));
-  writeFileSync(join(folder, 'kernel.c'), program(stateCount, coefficients.length, state.length, audio.length));
+  writeFileSync(join(folder, 'kernel.c'), program(shape, coefficients.length, state.length, audio.length));
   const binary = join(folder, 'kernel');
   execFileSync('gcc', ['-O3', '-march=native', '-o', binary, join(folder, 'kernel.c'), '-lm']);
   return {
@@ -30,7 +30,7 @@ export function buildNative(
   };
 }
 
-function program(stateCount: number, coefficientCount: number, slotCount: number, sampleCount: number): string {
+function program(shape: readonly [number, number], coefficientCount: number, slotCount: number, sampleCount: number): string {
   return `#include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
@@ -40,15 +40,14 @@ static void conduct(const double *c, const double *t, int device, int aI, int bI
   fprintf(stderr, "the benchmark's signal must not make a junction conduct\\n");
   exit(1);
 }
-static double slopeAt(const double *c, const double *t, int device, double v) {
-  (void)c; (void)t; (void)device;
-  return v;
+static void evaluate(const double *c, const double *t, int device, double v, double *out, int at) {
+  (void)c; (void)t; (void)device; (void)v; (void)out; (void)at;
 }
-static double bent(const double *c, const double *t, int device, int aI, int bI, double a, double b, double I) {
+static void bent(const double *c, const double *t, int device, int aI, int bI, double a, double b, double I, double *out, int at) {
   (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)a; (void)b;
-  return I;
+  out[at] = I;
 }
-__attribute__((noinline)) ${kernelInC('square', stateCount)}
+__attribute__((noinline)) ${kernelInC('square', shape)}
 static double c[${coefficientCount}], s[${slotCount}], u[${sampleCount}], v[${sampleCount}], y[${sampleCount}];
 int main(int argc, char **argv) {
   FILE *f = fopen(argv[argc - 1], "rb");
@@ -58,7 +57,7 @@ int main(int argc, char **argv) {
   for (int run = 0; run < 60; run++) {
     struct timespec t0, t1;
     clock_gettime(CLOCK_MONOTONIC, &t0);
-    square${stateCount}(c, s, 0, s, u, v, y, 0, ${sampleCount});
+    square${shape.join('_')}(c, s, 0, s, u, v, y, 0, ${sampleCount});
     clock_gettime(CLOCK_MONOTONIC, &t1);
     double ns = ((t1.tv_sec - t0.tv_sec) * 1e9 + (t1.tv_nsec - t0.tv_nsec)) / ${sampleCount};
     if (ns < best) best = ns;

@@ -46,6 +46,41 @@ export function slopeAt(c: Float64Array, t: Float64Array, device: number, v: num
   return slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
 }
 
+/** F and F′ at an overdrive, into `out[at]` and `out[at + 1]`: a number that a call returns may cost memory on the audio thread. */
+export function evaluate(c: Float64Array, t: Float64Array, device: number, v: number, out: Float64Array, at: number): void {
+  const law = c[device + L.LAW];
+  const scale = c[device + L.SCALE];
+  const slope = c[device + L.SLOPE];
+  out[at] = 0;
+  out[at + 1] = 0;
+  if (law === L.LAW_NUMBER.square) {
+    if (v <= 0) return;
+    out[at] = scale * v * v;
+    out[at + 1] = 2 * scale * v;
+    return;
+  }
+  if (law === L.LAW_NUMBER.gradual) {
+    if (v <= 0) return;
+    const q = v * c[device + L.INVERSE_WIDTH];
+    const p = q < 1 ? q / (1 + Math.sqrt(1 - q)) : 1;
+    out[at] = q < 1 ? scale * p * p * (1 + 2 * Math.sqrt(1 - q)) : scale + slope * (v - 1 / c[device + L.INVERSE_WIDTH]);
+    out[at + 1] = slope * p;
+    return;
+  }
+  const z = (v * c[device + L.INVERSE_WIDTH] + 40) * 8;
+  if (!(z > 0)) return;
+  if (z >= c[device + L.PIECES]) {
+    out[at] = termAt(c, t, device, v);
+    out[at + 1] = slopeAt(c, t, device, v);
+    return;
+  }
+  const piece = Math.floor(z);
+  const d = (z - piece - 0.5) * 0.125;
+  const o = piece * 6;
+  out[at] = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+  out[at + 1] = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+}
+
 /** Channel current, A, at the overdrives of both ends, λ included. */
 export function channelA(c: Float64Array, t: Float64Array, device: number, vs: number, vd: number): number {
   const lambda = c[device + L.LAMBDA];
@@ -57,16 +92,30 @@ export function channelA(c: Float64Array, t: Float64Array, device: number, vs: n
 
 const BEND_STEPS = 30;
 
-/** The square law's saturated current with λ, A, by Newton from the current without it; by search where that does not settle. */
-export function bent(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, a: number, b: number, from: number): number {
+/** The square law's saturated current with λ, A, into `out[at]`: by Newton from the current without it, by search where that does not settle. */
+export function bent(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  aI: number,
+  bI: number,
+  a: number,
+  b: number,
+  from: number,
+  out: Float64Array,
+  at: number,
+): void {
   let current = from;
   for (let step = 0; step < BEND_STEPS; step++) {
     const change =
       excess(c, t, device, a + c[aI] * current, b + c[bI] * current, current) / excessSlope(c, t, device, aI, bI, a, b, current);
     current -= change;
-    if (Math.abs((c[bI] - c[aI]) * change) < 1e-8) return current;
+    if (Math.abs((c[bI] - c[aI]) * change) < 1e-8) {
+      out[at] = current;
+      return;
+    }
   }
-  return searched(c, t, device, aI, bI, a, b);
+  searched(c, t, device, aI, bI, a, b, out, at);
 }
 
 function excess(c: Float64Array, t: Float64Array, device: number, vs: number, vd: number, current: number): number {
@@ -94,8 +143,20 @@ function excessSlope(
   return slope;
 }
 
-/** The current that solves I = F(a − αI) − F(b + γI), A, by bisection to the last bit: I and F − F move apart, so there is one. */
-export function searched(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, a: number, b: number): number {
+/**
+ * The current that solves I = F(a − αI) − F(b + γI), A, into `out[at]`, by bisection to the last bit: the two sides move apart, so there is one.
+ */
+export function searched(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  aI: number,
+  bI: number,
+  a: number,
+  b: number,
+  out: Float64Array,
+  at: number,
+): void {
   const free = channelA(c, t, device, a, b);
   let low = Math.min(0, free);
   let high = Math.max(0, free);
@@ -105,5 +166,5 @@ export function searched(c: Float64Array, t: Float64Array, device: number, aI: n
     if (excess(c, t, device, a + c[aI] * middle, b + c[bI] * middle, middle) > 0) low = middle;
     else high = middle;
   }
-  return low;
+  out[at] = low;
 }

@@ -1,17 +1,20 @@
 /**
- * Where a kernel finds its coefficients and its state. Both are flat Float64Arrays; a kernel is written out for its number of states.
+ * Where a kernel finds its coefficients and its state. Both are flat Float64Arrays; a kernel is written out for its number of trapezoidal and of
+ * stiff states.
  *
- * Coefficients: rows of `rowWidth` for the overdrives of the two ends (gate-source, gate-drain), the new states and the output; then for each
- * of these rows the four weights of the junction currents; then the device. State: capacitor voltages, then the slots below.
+ * Coefficients: rows of `rowWidth` for the overdrives of the two ends (gate-source, gate-drain), the new states and the output; for each of these
+ * the weights of the junction currents; the memory rows; for each of these the weights of the old junction currents; then the device.
+ * State: the states; of the stiff ones the values one, two and three samples before; then the slots below.
  */
 
-/** Columns of a row: states, new audio, new control, and (with states) old audio, old control, old channel current; constant; new channel current. */
+/** Columns of a row: the memories (of the output's row the new states), audio, control, constant, channel current. */
 export function rowLayout(stateCount: number) {
-  const newU = stateCount;
-  const oldU = newU + 2;
-  const oldI = oldU + 2;
-  const constant = stateCount > 0 ? oldI + 1 : oldU;
-  return { newU, oldU, oldI, constant, newI: constant + 1, width: constant + 2 };
+  return { u: stateCount, constant: stateCount + 2, current: stateCount + 3, width: stateCount + 4 };
+}
+
+/** Columns of a memory row: states, old audio, old control, old channel current. */
+export function memoryLayout(stateCount: number) {
+  return { oldU: stateCount, oldI: stateCount + 2, width: stateCount + 3 };
 }
 
 /** Noise of a sample: one value for each row, then one for the channel, A for a conductance of 1 S. */
@@ -19,12 +22,10 @@ export function noiseWidth(stateCount: number): number {
   return stateCount + 4;
 }
 
-/** Weights of the junction currents, per row. */
-export const NEW_S = 0;
-export const NEW_D = 1;
-export const OLD_S = 2;
-export const OLD_D = 3;
-export const JUNCTION_WIDTH = 4;
+/** Weights of the junction currents, per row and per memory row. */
+export const BY_S = 0;
+export const BY_D = 1;
+export const JUNCTION_WIDTH = 2;
 
 /** Device constants after the rows: first the law and what is common to all laws. */
 export const LAW = 0;
@@ -60,11 +61,18 @@ export function coefficientLayout(stateCount: number) {
   const { width } = rowLayout(stateCount);
   const rows = stateCount + 3;
   const junction = rows * width;
-  const device = junction + rows * JUNCTION_WIDTH;
-  return { rowWidth: width, rows, outputRow: stateCount + 2, junction, device, length: device + DEVICE_WIDTH };
+  const memory = junction + rows * JUNCTION_WIDTH;
+  const memoryJunction = memory + stateCount * memoryLayout(stateCount).width;
+  const device = memoryJunction + stateCount * JUNCTION_WIDTH;
+  return { rows, outputRow: stateCount + 2, junction, memory, memoryJunction, device, length: device + DEVICE_WIDTH };
 }
 
-/** Slots of the state after the capacitor voltages. */
+/** Where the slots begin: after the states and the past of the stiff ones. */
+export function slotStart(trapezoidal: number, stiff: number): number {
+  return trapezoidal + 4 * stiff;
+}
+
+/** Slots of the state from `slotStart` on. */
 export const OLD_AUDIO = 0;
 export const OLD_CONTROL = 1;
 export const CHANNEL_A = 2;
@@ -78,4 +86,8 @@ export const OVERDRIVE_D = 6;
 export const EARLIER_A = 7;
 /** Samples that Newton's method left to the bisection behind it. */
 export const FALLBACKS = 8;
-export const STATE_SLOTS = 9;
+/** Working memory of ports.ts: F and F′ of both ends, and how far its last step moved. */
+export const TERM_S = 9;
+export const TERM_D = 11;
+export const MOVED_V = 13;
+export const STATE_SLOTS = 14;

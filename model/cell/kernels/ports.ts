@@ -9,13 +9,13 @@
  * Source   damping of the exponential: Nagel, UCB/ERL M520 (1975), from memory
  */
 import { exp } from '../../device/math.ts';
-import { channelA, slopeAt, termAt } from './channel.ts';
+import { channelA, evaluate } from './channel.ts';
 import * as L from './layout.ts';
 
 const NEWTON_STEPS = 40;
 const SETTLED_V = 1e-11;
 
-/** Writes channel current, junction currents and overdrives into the slots of `s` after its `n` states. Allocates nothing. */
+/** Writes channel current, junction currents and overdrives into the slots of `s` from `n` on. Allocates nothing. */
 export function conduct(
   c: Float64Array,
   t: Float64Array,
@@ -35,7 +35,8 @@ export function conduct(
   s[n + L.OVERDRIVE_S] = freeS < knee ? freeS : Math.min(freeS, Math.max(s[n + L.OVERDRIVE_S], knee));
   s[n + L.OVERDRIVE_D] = freeD < knee ? freeD : Math.min(freeD, Math.max(s[n + L.OVERDRIVE_D], knee));
   for (let step = 0; step < NEWTON_STEPS; step++) {
-    if (newtonStep(c, t, device, aI, bI, junction, s, n, a, b) < SETTLED_V) {
+    newtonStep(c, t, device, aI, bI, junction, s, n, a, b);
+    if (s[n + L.MOVED_V] < SETTLED_V) {
       currents(c, t, device, s, n);
       return;
     }
@@ -44,7 +45,7 @@ export function conduct(
   currents(c, t, device, s, n);
 }
 
-/** One damped step of both overdrives; returns the larger change, V (Infinity when it is not a number). */
+/** One damped step of both overdrives; the larger change, V, goes into a slot (Infinity when it is not a number). */
 function newtonStep(
   c: Float64Array,
   t: Float64Array,
@@ -56,25 +57,27 @@ function newtonStep(
   n: number,
   a: number,
   b: number,
-): number {
+): void {
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
   const rate = c[device + L.INVERSE_NVT];
   const lambda = c[device + L.LAMBDA];
   const past = lambda * Math.max(-vd, 0);
   const pastReversed = lambda * Math.max(-vs, 0);
-  const Fs = termAt(c, t, device, vs);
-  const Fd = termAt(c, t, device, vd);
+  evaluate(c, t, device, vs, s, n + L.TERM_S);
+  evaluate(c, t, device, vd, s, n + L.TERM_D);
+  const Fs = s[n + L.TERM_S];
+  const Fd = s[n + L.TERM_D];
   const channel = Fs * (1 + past) - Fd * (1 + pastReversed);
   const clampA = clampCurrent(c, device, vs);
   const S = junctionCurrent(c, device, vs) + clampA;
   const D = junctionCurrent(c, device, vd);
-  const aS = c[junction + L.NEW_S];
-  const aD = c[junction + L.NEW_D];
-  const bS = c[junction + L.JUNCTION_WIDTH + L.NEW_S];
-  const bD = c[junction + L.JUNCTION_WIDTH + L.NEW_D];
-  const fs = slopeAt(c, t, device, vs) * (1 + past) + (pastReversed > 0 ? lambda * Fd : 0);
-  const fd = slopeAt(c, t, device, vd) * (1 + pastReversed) + (past > 0 ? lambda * Fs : 0);
+  const aS = c[junction + L.BY_S];
+  const aD = c[junction + L.BY_D];
+  const bS = c[junction + L.JUNCTION_WIDTH + L.BY_S];
+  const bD = c[junction + L.JUNCTION_WIDTH + L.BY_D];
+  const fs = s[n + L.TERM_S + 1] * (1 + past) + (pastReversed > 0 ? lambda * Fd : 0);
+  const fd = s[n + L.TERM_D + 1] * (1 + pastReversed) + (past > 0 ? lambda * Fs : 0);
   const slopeS = (S - clampA) * rate + clampA * c[device + L.CLAMP_INVERSE_NVT];
   const rs = vs - a - c[aI] * channel - aS * S - aD * D;
   const rd = vd - b - c[bI] * channel - bS * S - bD * D;
@@ -86,10 +89,11 @@ function newtonStep(
   const stepS = shortened((sd * rd - dd * rs) / determinant, vs, c, device);
   const stepD = shortened((ds * rs - ss * rd) / determinant, vd, c, device);
   const change = Math.max(Math.abs(stepS), Math.abs(stepD));
-  if (!(change < Number.POSITIVE_INFINITY)) return Number.POSITIVE_INFINITY;
+  const isNumber = change < Number.POSITIVE_INFINITY;
+  s[n + L.MOVED_V] = isNumber ? change : Number.POSITIVE_INFINITY;
+  if (!isNumber) return;
   s[n + L.OVERDRIVE_S] = vs + stepS;
   s[n + L.OVERDRIVE_D] = vd + stepD;
-  return change;
 }
 
 /** A step up into conduction is cut to its logarithm, so that the exponential cannot run away. */
@@ -116,7 +120,10 @@ function clampCurrent(c: Float64Array, device: number, v: number): number {
 function currents(c: Float64Array, t: Float64Array, device: number, s: Float64Array, n: number): void {
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
-  s[n + L.CHANNEL_A] = channelA(c, t, device, vs, vd);
+  const lambda = c[device + L.LAMBDA];
+  evaluate(c, t, device, vs, s, n + L.TERM_S);
+  evaluate(c, t, device, vd, s, n + L.TERM_D);
+  s[n + L.CHANNEL_A] = s[n + L.TERM_S] * (1 + lambda * Math.max(-vd, 0)) - s[n + L.TERM_D] * (1 + lambda * Math.max(-vs, 0));
   s[n + L.JUNCTION_S] = junctionCurrent(c, device, vs) + clampCurrent(c, device, vs);
   s[n + L.JUNCTION_D] = junctionCurrent(c, device, vd);
 }
@@ -184,13 +191,13 @@ function outerResidual(
   vs: number,
 ): number {
   const vd = innerOverdrive(c, t, device, bI, junction, b, vs);
-  return residual(vs, a, c[aI], c[junction + L.NEW_S], c[junction + L.NEW_D], c, t, device, vs, vd);
+  return residual(vs, a, c[aI], c[junction + L.BY_S], c[junction + L.BY_D], c, t, device, vs, vd);
 }
 
 /** The drain end's overdrive that satisfies its own equation for a given source end. */
 function innerOverdrive(c: Float64Array, t: Float64Array, device: number, bI: number, junction: number, b: number, vs: number): number {
-  const bS = c[junction + L.JUNCTION_WIDTH + L.NEW_S];
-  const bD = c[junction + L.JUNCTION_WIDTH + L.NEW_D];
+  const bS = c[junction + L.JUNCTION_WIDTH + L.BY_S];
+  const bD = c[junction + L.JUNCTION_WIDTH + L.BY_D];
   let low = -1;
   let high = 1;
   while (residual(low, b, c[bI], bS, bD, c, t, device, vs, low) > 0 && low > -1e12) low *= 2;

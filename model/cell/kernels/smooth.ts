@@ -1,15 +1,17 @@
 /**
- * Kernels of the smooth law, one for each number of states: written from source.ts by `npm run kernels`, where the method is explained. Not to be edited.
+ * Kernels of the smooth law by number of trapezoidal and of stiff states: written from source.ts by `npm run kernels`, where the method is
+ * explained. Not to be edited.
  *
- * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty) and `s` state as in layout.ts, `audio` and
- * `control` in V, `output` in V.
+ * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty) and `s` state as in
+ * layout.ts, `audio` and `control` in V, `output` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
-import { searched, slopeAt, termAt } from './channel.ts';
+import { evaluate, searched } from './channel.ts';
+import type { Kernel } from './kernel.ts';
 import { conduct } from './ports.ts';
 
-function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function smooth0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -23,12 +25,12 @@ function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   const y1 = c[9];
   const y2 = c[10];
   const y3 = c[11];
-  const on = c[26];
-  const lambda = c[29];
-  const scale = c[30];
-  const inverseWidth = c[31];
-  const slope = c[32];
-  const pieces = c[36];
+  const on = c[20];
+  const lambda = c[23];
+  const scale = c[24];
+  const inverseWidth = c[25];
+  const slope = c[26];
+  const pieces = c[30];
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
@@ -36,7 +38,8 @@ function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
     let b = b0 * u + b1 * v + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      J = w[i * 4 + 3] * Math.sqrt(0.5 * (slopeAt(c, t, 24, vs) + slopeAt(c, t, 24, vd)));
+      evaluate(c, t, 18, vs, s, 9); evaluate(c, t, 18, vd, s, 11);
+      J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
@@ -51,7 +54,7 @@ function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 24, vs); fs = slopeAt(c, t, 24, vs); }
+        } else { evaluate(c, t, 18, vs, s, 9); Fs = s[9]; fs = s[9 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -59,7 +62,7 @@ function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 24, vd); fd = slopeAt(c, t, 24, vd); }
+        } else { evaluate(c, t, 18, vd, s, 9); Fd = s[9]; fd = s[9 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a3 * fs - b3 * fd - 1;
       if (lambda != 0) {
@@ -71,10 +74,10 @@ function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
       const moved = (b3 - a3) * change;
       if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
     }
-    if (settled == 0) { I = searched(c, t, 24, 3, 7, a, b); s[8] += 1; }
+    if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 24, 3, 7, 12, s, 0, a, b, I);
+      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -83,7 +86,7 @@ function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
       y = w[i * 4 + 2];
     }
     if (S != 0 || D != 0) {
-      y += c[20] * S + c[21] * D;
+      y += c[16] * S + c[17] * D;
     }
     output[i] = y + y0 * u + y1 * v + y2 + y3 * I;
     E0 = I0; I0 = I; S0 = S; D0 = D;
@@ -92,7 +95,813 @@ function smooth0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function smooth1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function smooth0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const b0 = c[5];
+  const b1 = c[6];
+  const b2 = c[7];
+  const b3 = c[8];
+  const b4 = c[9];
+  const n0_0 = c[10];
+  const n0_1 = c[11];
+  const n0_2 = c[12];
+  const n0_3 = c[13];
+  const n0_4 = c[14];
+  const y0 = c[15];
+  const y1 = c[16];
+  const y2 = c[17];
+  const y3 = c[18];
+  const y4 = c[19];
+  const m0_0 = c[28];
+  const m0_1 = c[29];
+  const m0_2 = c[30];
+  const on = c[36];
+  const lambda = c[39];
+  const scale = c[40];
+  const inverseWidth = c[41];
+  const slope = c[42];
+  const pieces = c[46];
+  let x0 = s[0];
+  let e0 = s[1], f0 = s[2], g0 = s[3];
+  let u0 = s[4], v0 = s[5];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
+    let r0 = m0_0 * p0 + m0_1 * u0 + m0_2 * v0;
+    let a = a0 * r0 + a1 * u + a2 * v + a3;
+    let b = b0 * r0 + b1 * u + b2 * v + b3;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 34, vs, s, 13); evaluate(c, t, 34, vd, s, 15);
+      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[14] + s[16]));
+      a += w[i * 5 + 0] + a4 * J;
+      b += w[i * 5 + 1] + b4 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a4 * I; vd = b + b4 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 34, vs, s, 13); Fs = s[13]; fs = s[13 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 34, vd, s, 13); Fd = s[13]; fd = s[13 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a4 * fs - b4 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a4 * fs + b4 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b4 * fd + a4 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b4 - a4) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
+    vs = a + a4 * I; vd = b + b4 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 34, 4, 9, 20, s, 4, a, b, I);
+      I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
+    }
+    I += J;
+    g0 = f0; f0 = e0; e0 = x0;
+    x0 = n0_0 * r0 + n0_1 * u + n0_2 * v + n0_3 + n0_4 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 5 + 2];
+      y = w[i * 5 + 3];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[24] * S + c[25] * D;
+      y += c[26] * S + c[27] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * u + y2 * v + y3 + y4 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = e0; s[2] = f0; s[3] = g0;
+  s[4] = u0; s[5] = v0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  if (to > from) { s[9] = vs; s[10] = vd; }
+}
+
+function smooth0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const b0 = c[6];
+  const b1 = c[7];
+  const b2 = c[8];
+  const b3 = c[9];
+  const b4 = c[10];
+  const b5 = c[11];
+  const n0_0 = c[12];
+  const n0_1 = c[13];
+  const n0_2 = c[14];
+  const n0_3 = c[15];
+  const n0_4 = c[16];
+  const n0_5 = c[17];
+  const n1_0 = c[18];
+  const n1_1 = c[19];
+  const n1_2 = c[20];
+  const n1_3 = c[21];
+  const n1_4 = c[22];
+  const n1_5 = c[23];
+  const y0 = c[24];
+  const y1 = c[25];
+  const y2 = c[26];
+  const y3 = c[27];
+  const y4 = c[28];
+  const y5 = c[29];
+  const m0_0 = c[40];
+  const m0_1 = c[41];
+  const m0_2 = c[42];
+  const m0_3 = c[43];
+  const m1_0 = c[45];
+  const m1_1 = c[46];
+  const m1_2 = c[47];
+  const m1_3 = c[48];
+  const on = c[56];
+  const lambda = c[59];
+  const scale = c[60];
+  const inverseWidth = c[61];
+  const slope = c[62];
+  const pieces = c[66];
+  let x0 = s[0];
+  let x1 = s[1];
+  let e0 = s[2], f0 = s[4], g0 = s[6];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let u0 = s[8], v0 = s[9];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    let r0 = m0_0 * p0 + m0_1 * p1 + m0_2 * u0 + m0_3 * v0;
+    let r1 = m1_0 * p0 + m1_1 * p1 + m1_2 * u0 + m1_3 * v0;
+    let a = a0 * r0 + a1 * r1 + a2 * u + a3 * v + a4;
+    let b = b0 * r0 + b1 * r1 + b2 * u + b3 * v + b4;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
+      a += w[i * 6 + 0] + a5 * J;
+      b += w[i * 6 + 1] + b5 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a5 * I; vd = b + b5 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 54, vs, s, 17); Fs = s[17]; fs = s[17 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 54, vd, s, 17); Fd = s[17]; fd = s[17 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a5 * fs + b5 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b5 * fd + a5 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b5 - a5) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    vs = a + a5 * I; vd = b + b5 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
+    }
+    I += J;
+    g0 = f0; f0 = e0; e0 = x0;
+    g1 = f1; f1 = e1; e1 = x1;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * u + n0_3 * v + n0_4 + n0_5 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * u + n1_3 * v + n1_4 + n1_5 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 6 + 2];
+      x1 += w[i * 6 + 3];
+      y = w[i * 6 + 4];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[34] * S + c[35] * D;
+      x1 += c[36] * S + c[37] * D;
+      y += c[38] * S + c[39] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y4 + y5 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = e0; s[4] = f0; s[6] = g0;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[8] = u0; s[9] = v0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  if (to > from) { s[13] = vs; s[14] = vd; }
+}
+
+function smooth0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const b0 = c[7];
+  const b1 = c[8];
+  const b2 = c[9];
+  const b3 = c[10];
+  const b4 = c[11];
+  const b5 = c[12];
+  const b6 = c[13];
+  const n0_0 = c[14];
+  const n0_1 = c[15];
+  const n0_2 = c[16];
+  const n0_3 = c[17];
+  const n0_4 = c[18];
+  const n0_5 = c[19];
+  const n0_6 = c[20];
+  const n1_0 = c[21];
+  const n1_1 = c[22];
+  const n1_2 = c[23];
+  const n1_3 = c[24];
+  const n1_4 = c[25];
+  const n1_5 = c[26];
+  const n1_6 = c[27];
+  const n2_0 = c[28];
+  const n2_1 = c[29];
+  const n2_2 = c[30];
+  const n2_3 = c[31];
+  const n2_4 = c[32];
+  const n2_5 = c[33];
+  const n2_6 = c[34];
+  const y0 = c[35];
+  const y1 = c[36];
+  const y2 = c[37];
+  const y3 = c[38];
+  const y4 = c[39];
+  const y5 = c[40];
+  const y6 = c[41];
+  const m0_0 = c[54];
+  const m0_1 = c[55];
+  const m0_2 = c[56];
+  const m0_3 = c[57];
+  const m0_4 = c[58];
+  const m1_0 = c[60];
+  const m1_1 = c[61];
+  const m1_2 = c[62];
+  const m1_3 = c[63];
+  const m1_4 = c[64];
+  const m2_0 = c[66];
+  const m2_1 = c[67];
+  const m2_2 = c[68];
+  const m2_3 = c[69];
+  const m2_4 = c[70];
+  const on = c[80];
+  const lambda = c[83];
+  const scale = c[84];
+  const inverseWidth = c[85];
+  const slope = c[86];
+  const pieces = c[90];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let e0 = s[3], f0 = s[6], g0 = s[9];
+  let e1 = s[4], f1 = s[7], g1 = s[10];
+  let e2 = s[5], f2 = s[8], g2 = s[11];
+  let u0 = s[12], v0 = s[13];
+  let I0 = s[14], S0 = s[15], D0 = s[16], E0 = s[19], vs = s[17], vd = s[18];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    let r0 = m0_0 * p0 + m0_1 * p1 + m0_2 * p2 + m0_3 * u0 + m0_4 * v0;
+    let r1 = m1_0 * p0 + m1_1 * p1 + m1_2 * p2 + m1_3 * u0 + m1_4 * v0;
+    let r2 = m2_0 * p0 + m2_1 * p1 + m2_2 * p2 + m2_3 * u0 + m2_4 * v0;
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 78, vs, s, 21); evaluate(c, t, 78, vd, s, 23);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[22] + s[24]));
+      a += w[i * 7 + 0] + a6 * J;
+      b += w[i * 7 + 1] + b6 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a6 * I; vd = b + b6 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vs, s, 21); Fs = s[21]; fs = s[21 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vd, s, 21); Fd = s[21]; fd = s[21 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a6 * fs + b6 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b6 * fd + a6 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b6 - a6) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 21); I = s[21]; s[20] += 1; }
+    vs = a + a6 * I; vd = b + b6 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 78, 6, 13, 42, s, 12, a, b, I);
+      I = s[14]; S = s[15]; D = s[16]; vs = s[17]; vd = s[18];
+    }
+    I += J;
+    g0 = f0; f0 = e0; e0 = x0;
+    g1 = f1; f1 = e1; e1 = x1;
+    g2 = f2; f2 = e2; e2 = x2;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+      x1 += w[i * 7 + 3];
+      x2 += w[i * 7 + 4];
+      y = w[i * 7 + 5];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[46] * S + c[47] * D;
+      x1 += c[48] * S + c[49] * D;
+      x2 += c[50] * S + c[51] * D;
+      y += c[52] * S + c[53] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = e0; s[6] = f0; s[9] = g0;
+  s[4] = e1; s[7] = f1; s[10] = g1;
+  s[5] = e2; s[8] = f2; s[11] = g2;
+  s[12] = u0; s[13] = v0;
+  s[14] = I0; s[15] = S0; s[16] = D0; s[19] = E0;
+  if (to > from) { s[17] = vs; s[18] = vd; }
+}
+
+function smooth1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const b0 = c[5];
+  const b1 = c[6];
+  const b2 = c[7];
+  const b3 = c[8];
+  const b4 = c[9];
+  const n0_0 = c[10];
+  const n0_1 = c[11];
+  const n0_2 = c[12];
+  const n0_3 = c[13];
+  const n0_4 = c[14];
+  const y0 = c[15];
+  const y1 = c[16];
+  const y2 = c[17];
+  const y3 = c[18];
+  const y4 = c[19];
+  const m0_0 = c[28];
+  const m0_1 = c[29];
+  const m0_2 = c[30];
+  const m0_3 = c[31];
+  const on = c[36];
+  const lambda = c[39];
+  const scale = c[40];
+  const inverseWidth = c[41];
+  const slope = c[42];
+  const pieces = c[46];
+  let x0 = s[0];
+  let u0 = s[1], v0 = s[2];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    let r0 = m0_0 * x0 + m0_1 * u0 + m0_2 * v0 + m0_3 * I0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[32] * S0 + c[33] * D0;
+    }
+    let a = a0 * r0 + a1 * u + a2 * v + a3;
+    let b = b0 * r0 + b1 * u + b2 * v + b3;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 34, vs, s, 10); evaluate(c, t, 34, vd, s, 12);
+      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
+      a += w[i * 5 + 0] + a4 * J;
+      b += w[i * 5 + 1] + b4 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a4 * I; vd = b + b4 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 34, vs, s, 10); Fs = s[10]; fs = s[10 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 34, vd, s, 10); Fd = s[10]; fd = s[10 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a4 * fs - b4 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a4 * fs + b4 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b4 * fd + a4 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b4 - a4) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    vs = a + a4 * I; vd = b + b4 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
+    }
+    I += J;
+    x0 = n0_0 * r0 + n0_1 * u + n0_2 * v + n0_3 + n0_4 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 5 + 2];
+      y = w[i * 5 + 3];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[24] * S + c[25] * D;
+      y += c[26] * S + c[27] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * u + y2 * v + y3 + y4 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = u0; s[2] = v0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  if (to > from) { s[6] = vs; s[7] = vd; }
+}
+
+function smooth1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const b0 = c[6];
+  const b1 = c[7];
+  const b2 = c[8];
+  const b3 = c[9];
+  const b4 = c[10];
+  const b5 = c[11];
+  const n0_0 = c[12];
+  const n0_1 = c[13];
+  const n0_2 = c[14];
+  const n0_3 = c[15];
+  const n0_4 = c[16];
+  const n0_5 = c[17];
+  const n1_0 = c[18];
+  const n1_1 = c[19];
+  const n1_2 = c[20];
+  const n1_3 = c[21];
+  const n1_4 = c[22];
+  const n1_5 = c[23];
+  const y0 = c[24];
+  const y1 = c[25];
+  const y2 = c[26];
+  const y3 = c[27];
+  const y4 = c[28];
+  const y5 = c[29];
+  const m0_0 = c[40];
+  const m0_1 = c[41];
+  const m0_2 = c[42];
+  const m0_3 = c[43];
+  const m0_4 = c[44];
+  const m1_0 = c[45];
+  const m1_1 = c[46];
+  const m1_2 = c[47];
+  const m1_3 = c[48];
+  const on = c[56];
+  const lambda = c[59];
+  const scale = c[60];
+  const inverseWidth = c[61];
+  const slope = c[62];
+  const pieces = c[66];
+  let x0 = s[0];
+  let x1 = s[1];
+  let e1 = s[2], f1 = s[3], g1 = s[4];
+  let u0 = s[5], v0 = s[6];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * u0 + m0_3 * v0 + m0_4 * I0;
+    let r1 = m1_0 * x0 + m1_1 * p1 + m1_2 * u0 + m1_3 * v0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[50] * S0 + c[51] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * u + a3 * v + a4;
+    let b = b0 * r0 + b1 * r1 + b2 * u + b3 * v + b4;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 54, vs, s, 14); evaluate(c, t, 54, vd, s, 16);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[15] + s[17]));
+      a += w[i * 6 + 0] + a5 * J;
+      b += w[i * 6 + 1] + b5 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a5 * I; vd = b + b5 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 54, vs, s, 14); Fs = s[14]; fs = s[14 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 54, vd, s, 14); Fd = s[14]; fd = s[14 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a5 * fs + b5 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b5 * fd + a5 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b5 - a5) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
+    vs = a + a5 * I; vd = b + b5 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 54, 5, 11, 30, s, 5, a, b, I);
+      I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
+    }
+    I += J;
+    g1 = f1; f1 = e1; e1 = x1;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * u + n0_3 * v + n0_4 + n0_5 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * u + n1_3 * v + n1_4 + n1_5 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 6 + 2];
+      x1 += w[i * 6 + 3];
+      y = w[i * 6 + 4];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[34] * S + c[35] * D;
+      x1 += c[36] * S + c[37] * D;
+      y += c[38] * S + c[39] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y4 + y5 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = e1; s[3] = f1; s[4] = g1;
+  s[5] = u0; s[6] = v0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  if (to > from) { s[10] = vs; s[11] = vd; }
+}
+
+function smooth1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const b0 = c[7];
+  const b1 = c[8];
+  const b2 = c[9];
+  const b3 = c[10];
+  const b4 = c[11];
+  const b5 = c[12];
+  const b6 = c[13];
+  const n0_0 = c[14];
+  const n0_1 = c[15];
+  const n0_2 = c[16];
+  const n0_3 = c[17];
+  const n0_4 = c[18];
+  const n0_5 = c[19];
+  const n0_6 = c[20];
+  const n1_0 = c[21];
+  const n1_1 = c[22];
+  const n1_2 = c[23];
+  const n1_3 = c[24];
+  const n1_4 = c[25];
+  const n1_5 = c[26];
+  const n1_6 = c[27];
+  const n2_0 = c[28];
+  const n2_1 = c[29];
+  const n2_2 = c[30];
+  const n2_3 = c[31];
+  const n2_4 = c[32];
+  const n2_5 = c[33];
+  const n2_6 = c[34];
+  const y0 = c[35];
+  const y1 = c[36];
+  const y2 = c[37];
+  const y3 = c[38];
+  const y4 = c[39];
+  const y5 = c[40];
+  const y6 = c[41];
+  const m0_0 = c[54];
+  const m0_1 = c[55];
+  const m0_2 = c[56];
+  const m0_3 = c[57];
+  const m0_4 = c[58];
+  const m0_5 = c[59];
+  const m1_0 = c[60];
+  const m1_1 = c[61];
+  const m1_2 = c[62];
+  const m1_3 = c[63];
+  const m1_4 = c[64];
+  const m2_0 = c[66];
+  const m2_1 = c[67];
+  const m2_2 = c[68];
+  const m2_3 = c[69];
+  const m2_4 = c[70];
+  const on = c[80];
+  const lambda = c[83];
+  const scale = c[84];
+  const inverseWidth = c[85];
+  const slope = c[86];
+  const pieces = c[90];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let e2 = s[4], f2 = s[6], g2 = s[8];
+  let u0 = s[9], v0 = s[10];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * u0 + m0_4 * v0 + m0_5 * I0;
+    let r1 = m1_0 * x0 + m1_1 * p1 + m1_2 * p2 + m1_3 * u0 + m1_4 * v0;
+    let r2 = m2_0 * x0 + m2_1 * p1 + m2_2 * p2 + m2_3 * u0 + m2_4 * v0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[72] * S0 + c[73] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      a += w[i * 7 + 0] + a6 * J;
+      b += w[i * 7 + 1] + b6 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a6 * I; vd = b + b6 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vs, s, 18); Fs = s[18]; fs = s[18 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vd, s, 18); Fd = s[18]; fd = s[18 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a6 * fs + b6 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b6 * fd + a6 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b6 - a6) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    vs = a + a6 * I; vd = b + b6 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
+    }
+    I += J;
+    g1 = f1; f1 = e1; e1 = x1;
+    g2 = f2; f2 = e2; e2 = x2;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+      x1 += w[i * 7 + 3];
+      x2 += w[i * 7 + 4];
+      y = w[i * 7 + 5];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[46] * S + c[47] * D;
+      x1 += c[48] * S + c[49] * D;
+      x2 += c[50] * S + c[51] * D;
+      y += c[52] * S + c[53] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[4] = e2; s[6] = f2; s[8] = g2;
+  s[9] = u0; s[10] = v0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  if (to > from) { s[14] = vs; s[15] = vd; }
+}
+
+function smooth1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -118,33 +927,98 @@ function smooth1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   const n0_5 = c[21];
   const n0_6 = c[22];
   const n0_7 = c[23];
-  const y0 = c[24];
-  const y1 = c[25];
-  const y2 = c[26];
-  const y6 = c[30];
-  const y7 = c[31];
-  const on = c[50];
-  const lambda = c[53];
-  const scale = c[54];
-  const inverseWidth = c[55];
-  const slope = c[56];
-  const pieces = c[60];
+  const n1_0 = c[24];
+  const n1_1 = c[25];
+  const n1_2 = c[26];
+  const n1_3 = c[27];
+  const n1_4 = c[28];
+  const n1_5 = c[29];
+  const n1_6 = c[30];
+  const n1_7 = c[31];
+  const n2_0 = c[32];
+  const n2_1 = c[33];
+  const n2_2 = c[34];
+  const n2_3 = c[35];
+  const n2_4 = c[36];
+  const n2_5 = c[37];
+  const n2_6 = c[38];
+  const n2_7 = c[39];
+  const n3_0 = c[40];
+  const n3_1 = c[41];
+  const n3_2 = c[42];
+  const n3_3 = c[43];
+  const n3_4 = c[44];
+  const n3_5 = c[45];
+  const n3_6 = c[46];
+  const n3_7 = c[47];
+  const y0 = c[48];
+  const y1 = c[49];
+  const y2 = c[50];
+  const y3 = c[51];
+  const y4 = c[52];
+  const y5 = c[53];
+  const y6 = c[54];
+  const y7 = c[55];
+  const m0_0 = c[70];
+  const m0_1 = c[71];
+  const m0_2 = c[72];
+  const m0_3 = c[73];
+  const m0_4 = c[74];
+  const m0_5 = c[75];
+  const m0_6 = c[76];
+  const m1_0 = c[77];
+  const m1_1 = c[78];
+  const m1_2 = c[79];
+  const m1_3 = c[80];
+  const m1_4 = c[81];
+  const m1_5 = c[82];
+  const m2_0 = c[84];
+  const m2_1 = c[85];
+  const m2_2 = c[86];
+  const m2_3 = c[87];
+  const m2_4 = c[88];
+  const m2_5 = c[89];
+  const m3_0 = c[91];
+  const m3_1 = c[92];
+  const m3_2 = c[93];
+  const m3_3 = c[94];
+  const m3_4 = c[95];
+  const m3_5 = c[96];
+  const on = c[108];
+  const lambda = c[111];
+  const scale = c[112];
+  const inverseWidth = c[113];
+  const slope = c[114];
+  const pieces = c[118];
   let x0 = s[0];
-  let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let e1 = s[4], f1 = s[7], g1 = s[10];
+  let e2 = s[5], f2 = s[8], g2 = s[11];
+  let e3 = s[6], f3 = s[9], g3 = s[12];
+  let u0 = s[13], v0 = s[14];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * u + a2 * v + a3 * u0 + a4 * v0 + a5 * I0 + a6;
-    let b = b0 * x0 + b1 * u + b2 * v + b3 * u0 + b4 * v0 + b5 * I0 + b6;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
+    let r1 = m1_0 * x0 + m1_1 * p1 + m1_2 * p2 + m1_3 * p3 + m1_4 * u0 + m1_5 * v0;
+    let r2 = m2_0 * x0 + m2_1 * p1 + m2_2 * p2 + m2_3 * p3 + m2_4 * u0 + m2_5 * v0;
+    let r3 = m3_0 * x0 + m3_1 * p1 + m3_2 * p2 + m3_3 * p3 + m3_4 * u0 + m3_5 * v0;
     if (S0 != 0 || D0 != 0) {
-      a += c[34] * S0 + c[35] * D0;
-      b += c[38] * S0 + c[39] * D0;
+      r0 += c[98] * S0 + c[99] * D0;
     }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      J = w[i * 5 + 4] * Math.sqrt(0.5 * (slopeAt(c, t, 48, vs) + slopeAt(c, t, 48, vd)));
-      a += w[i * 5 + 0] + a7 * J;
-      b += w[i * 5 + 1] + b7 * J;
+      evaluate(c, t, 106, vs, s, 22); evaluate(c, t, 106, vd, s, 24);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[23] + s[25]));
+      a += w[i * 8 + 0] + a7 * J;
+      b += w[i * 8 + 1] + b7 * J;
     }
     I = 2 * I0 - E0;
     let settled = 0;
@@ -157,7 +1031,7 @@ function smooth1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 48, vs); fs = slopeAt(c, t, 48, vs); }
+        } else { evaluate(c, t, 106, vs, s, 22); Fs = s[22]; fs = s[22 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -165,7 +1039,7 @@ function smooth1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 48, vd); fd = slopeAt(c, t, 48, vd); }
+        } else { evaluate(c, t, 106, vd, s, 22); Fd = s[22]; fd = s[22 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
       if (lambda != 0) {
@@ -177,38 +1051,536 @@ function smooth1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
       const moved = (b7 - a7) * change;
       if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
     }
-    if (settled == 0) { I = searched(c, t, 48, 7, 15, a, b); s[9] += 1; }
+    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 48, 7, 15, 32, s, 1, a, b, I);
-      I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
+      conduct(c, t, 106, 7, 15, 56, s, 13, a, b, I);
+      I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
     I += J;
-    let z0 = n0_0 * x0 + n0_1 * u + n0_2 * v + n0_3 * u0 + n0_4 * v0 + n0_5 * I0 + n0_6 + n0_7 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[42] * S0 + c[43] * D0;
-    }
-    x0 = z0;
+    g1 = f1; f1 = e1; e1 = x1;
+    g2 = f2; f2 = e2; e2 = x2;
+    g3 = f3; f3 = e3; e3 = x3;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
     let y = 0;
     if (noisy) {
-      x0 += w[i * 5 + 2];
-      y = w[i * 5 + 3];
+      x0 += w[i * 8 + 2];
+      x1 += w[i * 8 + 3];
+      x2 += w[i * 8 + 4];
+      x3 += w[i * 8 + 5];
+      y = w[i * 8 + 6];
     }
     if (S != 0 || D != 0) {
-      x0 += c[40] * S + c[41] * D;
-      y += c[44] * S + c[45] * D;
+      x0 += c[60] * S + c[61] * D;
+      x1 += c[62] * S + c[63] * D;
+      x2 += c[64] * S + c[65] * D;
+      x3 += c[66] * S + c[67] * D;
+      y += c[68] * S + c[69] * D;
     }
-    output[i] = y + y0 * x0 + y1 * u + y2 * v + y6 + y7 * I;
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
-  s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
-  if (to > from) { s[6] = vs; s[7] = vd; }
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = e1; s[7] = f1; s[10] = g1;
+  s[5] = e2; s[8] = f2; s[11] = g2;
+  s[6] = e3; s[9] = f3; s[12] = g3;
+  s[13] = u0; s[14] = v0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
-function smooth2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function smooth2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const b0 = c[6];
+  const b1 = c[7];
+  const b2 = c[8];
+  const b3 = c[9];
+  const b4 = c[10];
+  const b5 = c[11];
+  const n0_0 = c[12];
+  const n0_1 = c[13];
+  const n0_2 = c[14];
+  const n0_3 = c[15];
+  const n0_4 = c[16];
+  const n0_5 = c[17];
+  const n1_0 = c[18];
+  const n1_1 = c[19];
+  const n1_2 = c[20];
+  const n1_3 = c[21];
+  const n1_4 = c[22];
+  const n1_5 = c[23];
+  const y0 = c[24];
+  const y1 = c[25];
+  const y2 = c[26];
+  const y3 = c[27];
+  const y4 = c[28];
+  const y5 = c[29];
+  const m0_0 = c[40];
+  const m0_1 = c[41];
+  const m0_2 = c[42];
+  const m0_3 = c[43];
+  const m0_4 = c[44];
+  const m1_0 = c[45];
+  const m1_1 = c[46];
+  const m1_2 = c[47];
+  const m1_3 = c[48];
+  const m1_4 = c[49];
+  const on = c[56];
+  const lambda = c[59];
+  const scale = c[60];
+  const inverseWidth = c[61];
+  const slope = c[62];
+  const pieces = c[66];
+  let x0 = s[0];
+  let x1 = s[1];
+  let u0 = s[2], v0 = s[3];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * u0 + m0_3 * v0 + m0_4 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * u0 + m1_3 * v0 + m1_4 * I0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[50] * S0 + c[51] * D0;
+      r1 += c[52] * S0 + c[53] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * u + a3 * v + a4;
+    let b = b0 * r0 + b1 * r1 + b2 * u + b3 * v + b4;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 54, vs, s, 11); evaluate(c, t, 54, vd, s, 13);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
+      a += w[i * 6 + 0] + a5 * J;
+      b += w[i * 6 + 1] + b5 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a5 * I; vd = b + b5 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 54, vs, s, 11); Fs = s[11]; fs = s[11 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 54, vd, s, 11); Fd = s[11]; fd = s[11 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a5 * fs + b5 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b5 * fd + a5 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b5 - a5) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    vs = a + a5 * I; vd = b + b5 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
+    }
+    I += J;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * u + n0_3 * v + n0_4 + n0_5 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * u + n1_3 * v + n1_4 + n1_5 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 6 + 2];
+      x1 += w[i * 6 + 3];
+      y = w[i * 6 + 4];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[34] * S + c[35] * D;
+      x1 += c[36] * S + c[37] * D;
+      y += c[38] * S + c[39] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y4 + y5 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = u0; s[3] = v0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  if (to > from) { s[7] = vs; s[8] = vd; }
+}
+
+function smooth2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const b0 = c[7];
+  const b1 = c[8];
+  const b2 = c[9];
+  const b3 = c[10];
+  const b4 = c[11];
+  const b5 = c[12];
+  const b6 = c[13];
+  const n0_0 = c[14];
+  const n0_1 = c[15];
+  const n0_2 = c[16];
+  const n0_3 = c[17];
+  const n0_4 = c[18];
+  const n0_5 = c[19];
+  const n0_6 = c[20];
+  const n1_0 = c[21];
+  const n1_1 = c[22];
+  const n1_2 = c[23];
+  const n1_3 = c[24];
+  const n1_4 = c[25];
+  const n1_5 = c[26];
+  const n1_6 = c[27];
+  const n2_0 = c[28];
+  const n2_1 = c[29];
+  const n2_2 = c[30];
+  const n2_3 = c[31];
+  const n2_4 = c[32];
+  const n2_5 = c[33];
+  const n2_6 = c[34];
+  const y0 = c[35];
+  const y1 = c[36];
+  const y2 = c[37];
+  const y3 = c[38];
+  const y4 = c[39];
+  const y5 = c[40];
+  const y6 = c[41];
+  const m0_0 = c[54];
+  const m0_1 = c[55];
+  const m0_2 = c[56];
+  const m0_3 = c[57];
+  const m0_4 = c[58];
+  const m0_5 = c[59];
+  const m1_0 = c[60];
+  const m1_1 = c[61];
+  const m1_2 = c[62];
+  const m1_3 = c[63];
+  const m1_4 = c[64];
+  const m1_5 = c[65];
+  const m2_0 = c[66];
+  const m2_1 = c[67];
+  const m2_2 = c[68];
+  const m2_3 = c[69];
+  const m2_4 = c[70];
+  const on = c[80];
+  const lambda = c[83];
+  const scale = c[84];
+  const inverseWidth = c[85];
+  const slope = c[86];
+  const pieces = c[90];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let e2 = s[3], f2 = s[4], g2 = s[5];
+  let u0 = s[6], v0 = s[7];
+  let I0 = s[8], S0 = s[9], D0 = s[10], E0 = s[13], vs = s[11], vd = s[12];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * u0 + m0_4 * v0 + m0_5 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * u0 + m1_4 * v0 + m1_5 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * p2 + m2_3 * u0 + m2_4 * v0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[72] * S0 + c[73] * D0;
+      r1 += c[74] * S0 + c[75] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 78, vs, s, 15); evaluate(c, t, 78, vd, s, 17);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[16] + s[18]));
+      a += w[i * 7 + 0] + a6 * J;
+      b += w[i * 7 + 1] + b6 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a6 * I; vd = b + b6 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vs, s, 15); Fs = s[15]; fs = s[15 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vd, s, 15); Fd = s[15]; fd = s[15 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a6 * fs + b6 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b6 * fd + a6 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b6 - a6) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 15); I = s[15]; s[14] += 1; }
+    vs = a + a6 * I; vd = b + b6 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 78, 6, 13, 42, s, 6, a, b, I);
+      I = s[8]; S = s[9]; D = s[10]; vs = s[11]; vd = s[12];
+    }
+    I += J;
+    g2 = f2; f2 = e2; e2 = x2;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+      x1 += w[i * 7 + 3];
+      x2 += w[i * 7 + 4];
+      y = w[i * 7 + 5];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[46] * S + c[47] * D;
+      x1 += c[48] * S + c[49] * D;
+      x2 += c[50] * S + c[51] * D;
+      y += c[52] * S + c[53] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = e2; s[4] = f2; s[5] = g2;
+  s[6] = u0; s[7] = v0;
+  s[8] = I0; s[9] = S0; s[10] = D0; s[13] = E0;
+  if (to > from) { s[11] = vs; s[12] = vd; }
+}
+
+function smooth2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const b0 = c[8];
+  const b1 = c[9];
+  const b2 = c[10];
+  const b3 = c[11];
+  const b4 = c[12];
+  const b5 = c[13];
+  const b6 = c[14];
+  const b7 = c[15];
+  const n0_0 = c[16];
+  const n0_1 = c[17];
+  const n0_2 = c[18];
+  const n0_3 = c[19];
+  const n0_4 = c[20];
+  const n0_5 = c[21];
+  const n0_6 = c[22];
+  const n0_7 = c[23];
+  const n1_0 = c[24];
+  const n1_1 = c[25];
+  const n1_2 = c[26];
+  const n1_3 = c[27];
+  const n1_4 = c[28];
+  const n1_5 = c[29];
+  const n1_6 = c[30];
+  const n1_7 = c[31];
+  const n2_0 = c[32];
+  const n2_1 = c[33];
+  const n2_2 = c[34];
+  const n2_3 = c[35];
+  const n2_4 = c[36];
+  const n2_5 = c[37];
+  const n2_6 = c[38];
+  const n2_7 = c[39];
+  const n3_0 = c[40];
+  const n3_1 = c[41];
+  const n3_2 = c[42];
+  const n3_3 = c[43];
+  const n3_4 = c[44];
+  const n3_5 = c[45];
+  const n3_6 = c[46];
+  const n3_7 = c[47];
+  const y0 = c[48];
+  const y1 = c[49];
+  const y2 = c[50];
+  const y3 = c[51];
+  const y4 = c[52];
+  const y5 = c[53];
+  const y6 = c[54];
+  const y7 = c[55];
+  const m0_0 = c[70];
+  const m0_1 = c[71];
+  const m0_2 = c[72];
+  const m0_3 = c[73];
+  const m0_4 = c[74];
+  const m0_5 = c[75];
+  const m0_6 = c[76];
+  const m1_0 = c[77];
+  const m1_1 = c[78];
+  const m1_2 = c[79];
+  const m1_3 = c[80];
+  const m1_4 = c[81];
+  const m1_5 = c[82];
+  const m1_6 = c[83];
+  const m2_0 = c[84];
+  const m2_1 = c[85];
+  const m2_2 = c[86];
+  const m2_3 = c[87];
+  const m2_4 = c[88];
+  const m2_5 = c[89];
+  const m3_0 = c[91];
+  const m3_1 = c[92];
+  const m3_2 = c[93];
+  const m3_3 = c[94];
+  const m3_4 = c[95];
+  const m3_5 = c[96];
+  const on = c[108];
+  const lambda = c[111];
+  const scale = c[112];
+  const inverseWidth = c[113];
+  const slope = c[114];
+  const pieces = c[118];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let e2 = s[4], f2 = s[6], g2 = s[8];
+  let e3 = s[5], f3 = s[7], g3 = s[9];
+  let u0 = s[10], v0 = s[11];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * u0 + m1_5 * v0 + m1_6 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * p2 + m2_3 * p3 + m2_4 * u0 + m2_5 * v0;
+    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * p2 + m3_3 * p3 + m3_4 * u0 + m3_5 * v0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[98] * S0 + c[99] * D0;
+      r1 += c[100] * S0 + c[101] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 106, vs, s, 19); evaluate(c, t, 106, vd, s, 21);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
+      a += w[i * 8 + 0] + a7 * J;
+      b += w[i * 8 + 1] + b7 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a7 * I; vd = b + b7 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 106, vs, s, 19); Fs = s[19]; fs = s[19 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 106, vd, s, 19); Fd = s[19]; fd = s[19 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a7 * fs + b7 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b7 * fd + a7 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b7 - a7) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    vs = a + a7 * I; vd = b + b7 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
+    }
+    I += J;
+    g2 = f2; f2 = e2; e2 = x2;
+    g3 = f3; f3 = e3; e3 = x3;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 8 + 2];
+      x1 += w[i * 8 + 3];
+      x2 += w[i * 8 + 4];
+      x3 += w[i * 8 + 5];
+      y = w[i * 8 + 6];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[60] * S + c[61] * D;
+      x1 += c[62] * S + c[63] * D;
+      x2 += c[64] * S + c[65] * D;
+      x3 += c[66] * S + c[67] * D;
+      y += c[68] * S + c[69] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = e2; s[6] = f2; s[8] = g2;
+  s[5] = e3; s[7] = f3; s[9] = g3;
+  s[10] = u0; s[11] = v0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  if (to > from) { s[15] = vs; s[16] = vd; }
+}
+
+function smooth2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -246,35 +1618,117 @@ function smooth2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   const n1_6 = c[33];
   const n1_7 = c[34];
   const n1_8 = c[35];
-  const y0 = c[36];
-  const y1 = c[37];
-  const y2 = c[38];
-  const y3 = c[39];
-  const y7 = c[43];
-  const y8 = c[44];
-  const on = c[67];
-  const lambda = c[70];
-  const scale = c[71];
-  const inverseWidth = c[72];
-  const slope = c[73];
-  const pieces = c[77];
+  const n2_0 = c[36];
+  const n2_1 = c[37];
+  const n2_2 = c[38];
+  const n2_3 = c[39];
+  const n2_4 = c[40];
+  const n2_5 = c[41];
+  const n2_6 = c[42];
+  const n2_7 = c[43];
+  const n2_8 = c[44];
+  const n3_0 = c[45];
+  const n3_1 = c[46];
+  const n3_2 = c[47];
+  const n3_3 = c[48];
+  const n3_4 = c[49];
+  const n3_5 = c[50];
+  const n3_6 = c[51];
+  const n3_7 = c[52];
+  const n3_8 = c[53];
+  const n4_0 = c[54];
+  const n4_1 = c[55];
+  const n4_2 = c[56];
+  const n4_3 = c[57];
+  const n4_4 = c[58];
+  const n4_5 = c[59];
+  const n4_6 = c[60];
+  const n4_7 = c[61];
+  const n4_8 = c[62];
+  const y0 = c[63];
+  const y1 = c[64];
+  const y2 = c[65];
+  const y3 = c[66];
+  const y4 = c[67];
+  const y5 = c[68];
+  const y6 = c[69];
+  const y7 = c[70];
+  const y8 = c[71];
+  const m0_0 = c[88];
+  const m0_1 = c[89];
+  const m0_2 = c[90];
+  const m0_3 = c[91];
+  const m0_4 = c[92];
+  const m0_5 = c[93];
+  const m0_6 = c[94];
+  const m0_7 = c[95];
+  const m1_0 = c[96];
+  const m1_1 = c[97];
+  const m1_2 = c[98];
+  const m1_3 = c[99];
+  const m1_4 = c[100];
+  const m1_5 = c[101];
+  const m1_6 = c[102];
+  const m1_7 = c[103];
+  const m2_0 = c[104];
+  const m2_1 = c[105];
+  const m2_2 = c[106];
+  const m2_3 = c[107];
+  const m2_4 = c[108];
+  const m2_5 = c[109];
+  const m2_6 = c[110];
+  const m3_0 = c[112];
+  const m3_1 = c[113];
+  const m3_2 = c[114];
+  const m3_3 = c[115];
+  const m3_4 = c[116];
+  const m3_5 = c[117];
+  const m3_6 = c[118];
+  const m4_0 = c[120];
+  const m4_1 = c[121];
+  const m4_2 = c[122];
+  const m4_3 = c[123];
+  const m4_4 = c[124];
+  const m4_5 = c[125];
+  const m4_6 = c[126];
+  const on = c[140];
+  const lambda = c[143];
+  const scale = c[144];
+  const inverseWidth = c[145];
+  const slope = c[146];
+  const pieces = c[150];
   let x0 = s[0];
   let x1 = s[1];
-  let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let x2 = s[2];
+  let x3 = s[3];
+  let x4 = s[4];
+  let e2 = s[5], f2 = s[8], g2 = s[11];
+  let e3 = s[6], f3 = s[9], g3 = s[12];
+  let e4 = s[7], f4 = s[10], g4 = s[13];
+  let u0 = s[14], v0 = s[15];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * x1 + a2 * u + a3 * v + a4 * u0 + a5 * v0 + a6 * I0 + a7;
-    let b = b0 * x0 + b1 * x1 + b2 * u + b3 * v + b4 * u0 + b5 * v0 + b6 * I0 + b7;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * u0 + m0_6 * v0 + m0_7 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * u0 + m1_6 * v0 + m1_7 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * p2 + m2_3 * p3 + m2_4 * p4 + m2_5 * u0 + m2_6 * v0;
+    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * p2 + m3_3 * p3 + m3_4 * p4 + m3_5 * u0 + m3_6 * v0;
+    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * p2 + m4_3 * p3 + m4_4 * p4 + m4_5 * u0 + m4_6 * v0;
     if (S0 != 0 || D0 != 0) {
-      a += c[47] * S0 + c[48] * D0;
-      b += c[51] * S0 + c[52] * D0;
+      r0 += c[128] * S0 + c[129] * D0;
+      r1 += c[130] * S0 + c[131] * D0;
     }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * u + a6 * v + a7;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * u + b6 * v + b7;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (slopeAt(c, t, 65, vs) + slopeAt(c, t, 65, vd)));
-      a += w[i * 6 + 0] + a8 * J;
-      b += w[i * 6 + 1] + b8 * J;
+      evaluate(c, t, 138, vs, s, 23); evaluate(c, t, 138, vd, s, 25);
+      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[24] + s[26]));
+      a += w[i * 9 + 0] + a8 * J;
+      b += w[i * 9 + 1] + b8 * J;
     }
     I = 2 * I0 - E0;
     let settled = 0;
@@ -287,7 +1741,7 @@ function smooth2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 65, vs); fs = slopeAt(c, t, 65, vs); }
+        } else { evaluate(c, t, 138, vs, s, 23); Fs = s[23]; fs = s[23 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -295,7 +1749,7 @@ function smooth2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 65, vd); fd = slopeAt(c, t, 65, vd); }
+        } else { evaluate(c, t, 138, vd, s, 23); Fd = s[23]; fd = s[23 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a8 * fs - b8 * fd - 1;
       if (lambda != 0) {
@@ -307,44 +1761,633 @@ function smooth2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
       const moved = (b8 - a8) * change;
       if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
     }
-    if (settled == 0) { I = searched(c, t, 65, 8, 17, a, b); s[10] += 1; }
+    if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 65, 8, 17, 45, s, 2, a, b, I);
-      I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
+      conduct(c, t, 138, 8, 17, 72, s, 14, a, b, I);
+      I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
     I += J;
-    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * u + n0_3 * v + n0_4 * u0 + n0_5 * v0 + n0_6 * I0 + n0_7 + n0_8 * I;
-    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * u + n1_3 * v + n1_4 * u0 + n1_5 * v0 + n1_6 * I0 + n1_7 + n1_8 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[55] * S0 + c[56] * D0;
-      z1 += c[59] * S0 + c[60] * D0;
-    }
-    x0 = z0;
-    x1 = z1;
+    g2 = f2; f2 = e2; e2 = x2;
+    g3 = f3; f3 = e3; e3 = x3;
+    g4 = f4; f4 = e4; e4 = x4;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * u + n0_6 * v + n0_7 + n0_8 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * u + n1_6 * v + n1_7 + n1_8 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * u + n2_6 * v + n2_7 + n2_8 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * u + n3_6 * v + n3_7 + n3_8 * I;
+    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * u + n4_6 * v + n4_7 + n4_8 * I;
     let y = 0;
     if (noisy) {
-      x0 += w[i * 6 + 2];
-      x1 += w[i * 6 + 3];
-      y = w[i * 6 + 4];
+      x0 += w[i * 9 + 2];
+      x1 += w[i * 9 + 3];
+      x2 += w[i * 9 + 4];
+      x3 += w[i * 9 + 5];
+      x4 += w[i * 9 + 6];
+      y = w[i * 9 + 7];
     }
     if (S != 0 || D != 0) {
-      x0 += c[53] * S + c[54] * D;
-      x1 += c[57] * S + c[58] * D;
-      y += c[61] * S + c[62] * D;
+      x0 += c[76] * S + c[77] * D;
+      x1 += c[78] * S + c[79] * D;
+      x2 += c[80] * S + c[81] * D;
+      x3 += c[82] * S + c[83] * D;
+      x4 += c[84] * S + c[85] * D;
+      y += c[86] * S + c[87] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y7 + y8 * I;
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y7 + y8 * I;
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
-  s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
-  if (to > from) { s[7] = vs; s[8] = vd; }
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = x4;
+  s[5] = e2; s[8] = f2; s[11] = g2;
+  s[6] = e3; s[9] = f3; s[12] = g3;
+  s[7] = e4; s[10] = f4; s[13] = g4;
+  s[14] = u0; s[15] = v0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
-function smooth3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function smooth3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const b0 = c[7];
+  const b1 = c[8];
+  const b2 = c[9];
+  const b3 = c[10];
+  const b4 = c[11];
+  const b5 = c[12];
+  const b6 = c[13];
+  const n0_0 = c[14];
+  const n0_1 = c[15];
+  const n0_2 = c[16];
+  const n0_3 = c[17];
+  const n0_4 = c[18];
+  const n0_5 = c[19];
+  const n0_6 = c[20];
+  const n1_0 = c[21];
+  const n1_1 = c[22];
+  const n1_2 = c[23];
+  const n1_3 = c[24];
+  const n1_4 = c[25];
+  const n1_5 = c[26];
+  const n1_6 = c[27];
+  const n2_0 = c[28];
+  const n2_1 = c[29];
+  const n2_2 = c[30];
+  const n2_3 = c[31];
+  const n2_4 = c[32];
+  const n2_5 = c[33];
+  const n2_6 = c[34];
+  const y0 = c[35];
+  const y1 = c[36];
+  const y2 = c[37];
+  const y3 = c[38];
+  const y4 = c[39];
+  const y5 = c[40];
+  const y6 = c[41];
+  const m0_0 = c[54];
+  const m0_1 = c[55];
+  const m0_2 = c[56];
+  const m0_3 = c[57];
+  const m0_4 = c[58];
+  const m0_5 = c[59];
+  const m1_0 = c[60];
+  const m1_1 = c[61];
+  const m1_2 = c[62];
+  const m1_3 = c[63];
+  const m1_4 = c[64];
+  const m1_5 = c[65];
+  const m2_0 = c[66];
+  const m2_1 = c[67];
+  const m2_2 = c[68];
+  const m2_3 = c[69];
+  const m2_4 = c[70];
+  const m2_5 = c[71];
+  const on = c[80];
+  const lambda = c[83];
+  const scale = c[84];
+  const inverseWidth = c[85];
+  const slope = c[86];
+  const pieces = c[90];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let u0 = s[3], v0 = s[4];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * u0 + m0_4 * v0 + m0_5 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * u0 + m1_4 * v0 + m1_5 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * u0 + m2_4 * v0 + m2_5 * I0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[72] * S0 + c[73] * D0;
+      r1 += c[74] * S0 + c[75] * D0;
+      r2 += c[76] * S0 + c[77] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 78, vs, s, 12); evaluate(c, t, 78, vd, s, 14);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
+      a += w[i * 7 + 0] + a6 * J;
+      b += w[i * 7 + 1] + b6 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a6 * I; vd = b + b6 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vs, s, 12); Fs = s[12]; fs = s[12 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 78, vd, s, 12); Fd = s[12]; fd = s[12 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a6 * fs + b6 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b6 * fd + a6 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b6 - a6) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    vs = a + a6 * I; vd = b + b6 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
+    }
+    I += J;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+      x1 += w[i * 7 + 3];
+      x2 += w[i * 7 + 4];
+      y = w[i * 7 + 5];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[46] * S + c[47] * D;
+      x1 += c[48] * S + c[49] * D;
+      x2 += c[50] * S + c[51] * D;
+      y += c[52] * S + c[53] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = u0; s[4] = v0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  if (to > from) { s[8] = vs; s[9] = vd; }
+}
+
+function smooth3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const b0 = c[8];
+  const b1 = c[9];
+  const b2 = c[10];
+  const b3 = c[11];
+  const b4 = c[12];
+  const b5 = c[13];
+  const b6 = c[14];
+  const b7 = c[15];
+  const n0_0 = c[16];
+  const n0_1 = c[17];
+  const n0_2 = c[18];
+  const n0_3 = c[19];
+  const n0_4 = c[20];
+  const n0_5 = c[21];
+  const n0_6 = c[22];
+  const n0_7 = c[23];
+  const n1_0 = c[24];
+  const n1_1 = c[25];
+  const n1_2 = c[26];
+  const n1_3 = c[27];
+  const n1_4 = c[28];
+  const n1_5 = c[29];
+  const n1_6 = c[30];
+  const n1_7 = c[31];
+  const n2_0 = c[32];
+  const n2_1 = c[33];
+  const n2_2 = c[34];
+  const n2_3 = c[35];
+  const n2_4 = c[36];
+  const n2_5 = c[37];
+  const n2_6 = c[38];
+  const n2_7 = c[39];
+  const n3_0 = c[40];
+  const n3_1 = c[41];
+  const n3_2 = c[42];
+  const n3_3 = c[43];
+  const n3_4 = c[44];
+  const n3_5 = c[45];
+  const n3_6 = c[46];
+  const n3_7 = c[47];
+  const y0 = c[48];
+  const y1 = c[49];
+  const y2 = c[50];
+  const y3 = c[51];
+  const y4 = c[52];
+  const y5 = c[53];
+  const y6 = c[54];
+  const y7 = c[55];
+  const m0_0 = c[70];
+  const m0_1 = c[71];
+  const m0_2 = c[72];
+  const m0_3 = c[73];
+  const m0_4 = c[74];
+  const m0_5 = c[75];
+  const m0_6 = c[76];
+  const m1_0 = c[77];
+  const m1_1 = c[78];
+  const m1_2 = c[79];
+  const m1_3 = c[80];
+  const m1_4 = c[81];
+  const m1_5 = c[82];
+  const m1_6 = c[83];
+  const m2_0 = c[84];
+  const m2_1 = c[85];
+  const m2_2 = c[86];
+  const m2_3 = c[87];
+  const m2_4 = c[88];
+  const m2_5 = c[89];
+  const m2_6 = c[90];
+  const m3_0 = c[91];
+  const m3_1 = c[92];
+  const m3_2 = c[93];
+  const m3_3 = c[94];
+  const m3_4 = c[95];
+  const m3_5 = c[96];
+  const on = c[108];
+  const lambda = c[111];
+  const scale = c[112];
+  const inverseWidth = c[113];
+  const slope = c[114];
+  const pieces = c[118];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let e3 = s[4], f3 = s[5], g3 = s[6];
+  let u0 = s[7], v0 = s[8];
+  let I0 = s[9], S0 = s[10], D0 = s[11], E0 = s[14], vs = s[12], vd = s[13];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * u0 + m1_5 * v0 + m1_6 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * u0 + m2_5 * v0 + m2_6 * I0;
+    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * p3 + m3_4 * u0 + m3_5 * v0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[98] * S0 + c[99] * D0;
+      r1 += c[100] * S0 + c[101] * D0;
+      r2 += c[102] * S0 + c[103] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 106, vs, s, 16); evaluate(c, t, 106, vd, s, 18);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[17] + s[19]));
+      a += w[i * 8 + 0] + a7 * J;
+      b += w[i * 8 + 1] + b7 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a7 * I; vd = b + b7 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 106, vs, s, 16); Fs = s[16]; fs = s[16 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 106, vd, s, 16); Fd = s[16]; fd = s[16 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a7 * fs + b7 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b7 * fd + a7 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b7 - a7) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 16); I = s[16]; s[15] += 1; }
+    vs = a + a7 * I; vd = b + b7 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 106, 7, 15, 56, s, 7, a, b, I);
+      I = s[9]; S = s[10]; D = s[11]; vs = s[12]; vd = s[13];
+    }
+    I += J;
+    g3 = f3; f3 = e3; e3 = x3;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 8 + 2];
+      x1 += w[i * 8 + 3];
+      x2 += w[i * 8 + 4];
+      x3 += w[i * 8 + 5];
+      y = w[i * 8 + 6];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[60] * S + c[61] * D;
+      x1 += c[62] * S + c[63] * D;
+      x2 += c[64] * S + c[65] * D;
+      x3 += c[66] * S + c[67] * D;
+      y += c[68] * S + c[69] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = e3; s[5] = f3; s[6] = g3;
+  s[7] = u0; s[8] = v0;
+  s[9] = I0; s[10] = S0; s[11] = D0; s[14] = E0;
+  if (to > from) { s[12] = vs; s[13] = vd; }
+}
+
+function smooth3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const a8 = c[8];
+  const b0 = c[9];
+  const b1 = c[10];
+  const b2 = c[11];
+  const b3 = c[12];
+  const b4 = c[13];
+  const b5 = c[14];
+  const b6 = c[15];
+  const b7 = c[16];
+  const b8 = c[17];
+  const n0_0 = c[18];
+  const n0_1 = c[19];
+  const n0_2 = c[20];
+  const n0_3 = c[21];
+  const n0_4 = c[22];
+  const n0_5 = c[23];
+  const n0_6 = c[24];
+  const n0_7 = c[25];
+  const n0_8 = c[26];
+  const n1_0 = c[27];
+  const n1_1 = c[28];
+  const n1_2 = c[29];
+  const n1_3 = c[30];
+  const n1_4 = c[31];
+  const n1_5 = c[32];
+  const n1_6 = c[33];
+  const n1_7 = c[34];
+  const n1_8 = c[35];
+  const n2_0 = c[36];
+  const n2_1 = c[37];
+  const n2_2 = c[38];
+  const n2_3 = c[39];
+  const n2_4 = c[40];
+  const n2_5 = c[41];
+  const n2_6 = c[42];
+  const n2_7 = c[43];
+  const n2_8 = c[44];
+  const n3_0 = c[45];
+  const n3_1 = c[46];
+  const n3_2 = c[47];
+  const n3_3 = c[48];
+  const n3_4 = c[49];
+  const n3_5 = c[50];
+  const n3_6 = c[51];
+  const n3_7 = c[52];
+  const n3_8 = c[53];
+  const n4_0 = c[54];
+  const n4_1 = c[55];
+  const n4_2 = c[56];
+  const n4_3 = c[57];
+  const n4_4 = c[58];
+  const n4_5 = c[59];
+  const n4_6 = c[60];
+  const n4_7 = c[61];
+  const n4_8 = c[62];
+  const y0 = c[63];
+  const y1 = c[64];
+  const y2 = c[65];
+  const y3 = c[66];
+  const y4 = c[67];
+  const y5 = c[68];
+  const y6 = c[69];
+  const y7 = c[70];
+  const y8 = c[71];
+  const m0_0 = c[88];
+  const m0_1 = c[89];
+  const m0_2 = c[90];
+  const m0_3 = c[91];
+  const m0_4 = c[92];
+  const m0_5 = c[93];
+  const m0_6 = c[94];
+  const m0_7 = c[95];
+  const m1_0 = c[96];
+  const m1_1 = c[97];
+  const m1_2 = c[98];
+  const m1_3 = c[99];
+  const m1_4 = c[100];
+  const m1_5 = c[101];
+  const m1_6 = c[102];
+  const m1_7 = c[103];
+  const m2_0 = c[104];
+  const m2_1 = c[105];
+  const m2_2 = c[106];
+  const m2_3 = c[107];
+  const m2_4 = c[108];
+  const m2_5 = c[109];
+  const m2_6 = c[110];
+  const m2_7 = c[111];
+  const m3_0 = c[112];
+  const m3_1 = c[113];
+  const m3_2 = c[114];
+  const m3_3 = c[115];
+  const m3_4 = c[116];
+  const m3_5 = c[117];
+  const m3_6 = c[118];
+  const m4_0 = c[120];
+  const m4_1 = c[121];
+  const m4_2 = c[122];
+  const m4_3 = c[123];
+  const m4_4 = c[124];
+  const m4_5 = c[125];
+  const m4_6 = c[126];
+  const on = c[140];
+  const lambda = c[143];
+  const scale = c[144];
+  const inverseWidth = c[145];
+  const slope = c[146];
+  const pieces = c[150];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let x4 = s[4];
+  let e3 = s[5], f3 = s[7], g3 = s[9];
+  let e4 = s[6], f4 = s[8], g4 = s[10];
+  let u0 = s[11], v0 = s[12];
+  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * u0 + m0_6 * v0 + m0_7 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * u0 + m1_6 * v0 + m1_7 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * x4 + m2_5 * u0 + m2_6 * v0 + m2_7 * I0;
+    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * p3 + m3_4 * p4 + m3_5 * u0 + m3_6 * v0;
+    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * x2 + m4_3 * p3 + m4_4 * p4 + m4_5 * u0 + m4_6 * v0;
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[128] * S0 + c[129] * D0;
+      r1 += c[130] * S0 + c[131] * D0;
+      r2 += c[132] * S0 + c[133] * D0;
+    }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * u + a6 * v + a7;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * u + b6 * v + b7;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      evaluate(c, t, 138, vs, s, 20); evaluate(c, t, 138, vd, s, 22);
+      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[21] + s[23]));
+      a += w[i * 9 + 0] + a8 * J;
+      b += w[i * 9 + 1] + b8 * J;
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 12; step++) {
+      vs = a + a8 * I; vd = b + b8 * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 138, vs, s, 20); Fs = s[20]; fs = s[20 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { evaluate(c, t, 138, vd, s, 20); Fd = s[20]; fd = s[20 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = a8 * fs - b8 * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a8 * fs + b8 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b8 * fd + a8 * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (b8 - a8) * change;
+      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+    }
+    if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
+    vs = a + a8 * I; vd = b + b8 * I;
+    if (vs > on || vd > on) {
+      conduct(c, t, 138, 8, 17, 72, s, 11, a, b, I);
+      I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
+    }
+    I += J;
+    g3 = f3; f3 = e3; e3 = x3;
+    g4 = f4; f4 = e4; e4 = x4;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * u + n0_6 * v + n0_7 + n0_8 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * u + n1_6 * v + n1_7 + n1_8 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * u + n2_6 * v + n2_7 + n2_8 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * u + n3_6 * v + n3_7 + n3_8 * I;
+    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * u + n4_6 * v + n4_7 + n4_8 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 9 + 2];
+      x1 += w[i * 9 + 3];
+      x2 += w[i * 9 + 4];
+      x3 += w[i * 9 + 5];
+      x4 += w[i * 9 + 6];
+      y = w[i * 9 + 7];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[76] * S + c[77] * D;
+      x1 += c[78] * S + c[79] * D;
+      x2 += c[80] * S + c[81] * D;
+      x3 += c[82] * S + c[83] * D;
+      x4 += c[84] * S + c[85] * D;
+      y += c[86] * S + c[87] * D;
+    }
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y7 + y8 * I;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = x4;
+  s[5] = e3; s[7] = f3; s[9] = g3;
+  s[6] = e4; s[8] = f4; s[10] = g4;
+  s[11] = u0; s[12] = v0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  if (to > from) { s[16] = vs; s[17] = vd; }
+}
+
+function smooth3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -396,37 +2439,138 @@ function smooth3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   const n2_7 = c[47];
   const n2_8 = c[48];
   const n2_9 = c[49];
-  const y0 = c[50];
-  const y1 = c[51];
-  const y2 = c[52];
-  const y3 = c[53];
-  const y4 = c[54];
-  const y8 = c[58];
-  const y9 = c[59];
-  const on = c[86];
-  const lambda = c[89];
-  const scale = c[90];
-  const inverseWidth = c[91];
-  const slope = c[92];
-  const pieces = c[96];
+  const n3_0 = c[50];
+  const n3_1 = c[51];
+  const n3_2 = c[52];
+  const n3_3 = c[53];
+  const n3_4 = c[54];
+  const n3_5 = c[55];
+  const n3_6 = c[56];
+  const n3_7 = c[57];
+  const n3_8 = c[58];
+  const n3_9 = c[59];
+  const n4_0 = c[60];
+  const n4_1 = c[61];
+  const n4_2 = c[62];
+  const n4_3 = c[63];
+  const n4_4 = c[64];
+  const n4_5 = c[65];
+  const n4_6 = c[66];
+  const n4_7 = c[67];
+  const n4_8 = c[68];
+  const n4_9 = c[69];
+  const n5_0 = c[70];
+  const n5_1 = c[71];
+  const n5_2 = c[72];
+  const n5_3 = c[73];
+  const n5_4 = c[74];
+  const n5_5 = c[75];
+  const n5_6 = c[76];
+  const n5_7 = c[77];
+  const n5_8 = c[78];
+  const n5_9 = c[79];
+  const y0 = c[80];
+  const y1 = c[81];
+  const y2 = c[82];
+  const y3 = c[83];
+  const y4 = c[84];
+  const y5 = c[85];
+  const y6 = c[86];
+  const y7 = c[87];
+  const y8 = c[88];
+  const y9 = c[89];
+  const m0_0 = c[108];
+  const m0_1 = c[109];
+  const m0_2 = c[110];
+  const m0_3 = c[111];
+  const m0_4 = c[112];
+  const m0_5 = c[113];
+  const m0_6 = c[114];
+  const m0_7 = c[115];
+  const m0_8 = c[116];
+  const m1_0 = c[117];
+  const m1_1 = c[118];
+  const m1_2 = c[119];
+  const m1_3 = c[120];
+  const m1_4 = c[121];
+  const m1_5 = c[122];
+  const m1_6 = c[123];
+  const m1_7 = c[124];
+  const m1_8 = c[125];
+  const m2_0 = c[126];
+  const m2_1 = c[127];
+  const m2_2 = c[128];
+  const m2_3 = c[129];
+  const m2_4 = c[130];
+  const m2_5 = c[131];
+  const m2_6 = c[132];
+  const m2_7 = c[133];
+  const m2_8 = c[134];
+  const m3_0 = c[135];
+  const m3_1 = c[136];
+  const m3_2 = c[137];
+  const m3_3 = c[138];
+  const m3_4 = c[139];
+  const m3_5 = c[140];
+  const m3_6 = c[141];
+  const m3_7 = c[142];
+  const m4_0 = c[144];
+  const m4_1 = c[145];
+  const m4_2 = c[146];
+  const m4_3 = c[147];
+  const m4_4 = c[148];
+  const m4_5 = c[149];
+  const m4_6 = c[150];
+  const m4_7 = c[151];
+  const m5_0 = c[153];
+  const m5_1 = c[154];
+  const m5_2 = c[155];
+  const m5_3 = c[156];
+  const m5_4 = c[157];
+  const m5_5 = c[158];
+  const m5_6 = c[159];
+  const m5_7 = c[160];
+  const on = c[176];
+  const lambda = c[179];
+  const scale = c[180];
+  const inverseWidth = c[181];
+  const slope = c[182];
+  const pieces = c[186];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
-  let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let x3 = s[3];
+  let x4 = s[4];
+  let x5 = s[5];
+  let e3 = s[6], f3 = s[9], g3 = s[12];
+  let e4 = s[7], f4 = s[10], g4 = s[13];
+  let e5 = s[8], f5 = s[11], g5 = s[14];
+  let u0 = s[15], v0 = s[16];
+  let I0 = s[17], S0 = s[18], D0 = s[19], E0 = s[22], vs = s[20], vd = s[21];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * u + a4 * v + a5 * u0 + a6 * v0 + a7 * I0 + a8;
-    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * u + b4 * v + b5 * u0 + b6 * v0 + b7 * I0 + b8;
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
+    const p5 = 3.5 * x5 - 2.25 * e5 + 0.8333333333333334 * f5 - 0.125 * g5;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * x5 + m0_6 * u0 + m0_7 * v0 + m0_8 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * x5 + m1_6 * u0 + m1_7 * v0 + m1_8 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * x4 + m2_5 * x5 + m2_6 * u0 + m2_7 * v0 + m2_8 * I0;
+    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * p3 + m3_4 * p4 + m3_5 * p5 + m3_6 * u0 + m3_7 * v0;
+    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * x2 + m4_3 * p3 + m4_4 * p4 + m4_5 * p5 + m4_6 * u0 + m4_7 * v0;
+    let r5 = m5_0 * x0 + m5_1 * x1 + m5_2 * x2 + m5_3 * p3 + m5_4 * p4 + m5_5 * p5 + m5_6 * u0 + m5_7 * v0;
     if (S0 != 0 || D0 != 0) {
-      a += c[62] * S0 + c[63] * D0;
-      b += c[66] * S0 + c[67] * D0;
+      r0 += c[162] * S0 + c[163] * D0;
+      r1 += c[164] * S0 + c[165] * D0;
+      r2 += c[166] * S0 + c[167] * D0;
     }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * r5 + a6 * u + a7 * v + a8;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * r5 + b6 * u + b7 * v + b8;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (slopeAt(c, t, 84, vs) + slopeAt(c, t, 84, vd)));
-      a += w[i * 7 + 0] + a9 * J;
-      b += w[i * 7 + 1] + b9 * J;
+      evaluate(c, t, 174, vs, s, 24); evaluate(c, t, 174, vd, s, 26);
+      J = w[i * 10 + 9] * Math.sqrt(0.5 * (s[25] + s[27]));
+      a += w[i * 10 + 0] + a9 * J;
+      b += w[i * 10 + 1] + b9 * J;
     }
     I = 2 * I0 - E0;
     let settled = 0;
@@ -439,7 +2583,7 @@ function smooth3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 84, vs); fs = slopeAt(c, t, 84, vs); }
+        } else { evaluate(c, t, 174, vs, s, 24); Fs = s[24]; fs = s[24 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -447,7 +2591,7 @@ function smooth3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 84, vd); fd = slopeAt(c, t, 84, vd); }
+        } else { evaluate(c, t, 174, vd, s, 24); Fd = s[24]; fd = s[24 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a9 * fs - b9 * fd - 1;
       if (lambda != 0) {
@@ -459,50 +2603,60 @@ function smooth3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
       const moved = (b9 - a9) * change;
       if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
     }
-    if (settled == 0) { I = searched(c, t, 84, 9, 19, a, b); s[11] += 1; }
+    if (settled == 0) { searched(c, t, 174, 9, 19, a, b, s, 24); I = s[24]; s[23] += 1; }
     vs = a + a9 * I; vd = b + b9 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 84, 9, 19, 60, s, 3, a, b, I);
-      I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
+      conduct(c, t, 174, 9, 19, 90, s, 15, a, b, I);
+      I = s[17]; S = s[18]; D = s[19]; vs = s[20]; vd = s[21];
     }
     I += J;
-    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * u + n0_4 * v + n0_5 * u0 + n0_6 * v0 + n0_7 * I0 + n0_8 + n0_9 * I;
-    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * u + n1_4 * v + n1_5 * u0 + n1_6 * v0 + n1_7 * I0 + n1_8 + n1_9 * I;
-    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * u + n2_4 * v + n2_5 * u0 + n2_6 * v0 + n2_7 * I0 + n2_8 + n2_9 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[70] * S0 + c[71] * D0;
-      z1 += c[74] * S0 + c[75] * D0;
-      z2 += c[78] * S0 + c[79] * D0;
-    }
-    x0 = z0;
-    x1 = z1;
-    x2 = z2;
+    g3 = f3; f3 = e3; e3 = x3;
+    g4 = f4; f4 = e4; e4 = x4;
+    g5 = f5; f5 = e5; e5 = x5;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * r5 + n0_6 * u + n0_7 * v + n0_8 + n0_9 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * r5 + n1_6 * u + n1_7 * v + n1_8 + n1_9 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * r5 + n2_6 * u + n2_7 * v + n2_8 + n2_9 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * r5 + n3_6 * u + n3_7 * v + n3_8 + n3_9 * I;
+    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * r5 + n4_6 * u + n4_7 * v + n4_8 + n4_9 * I;
+    x5 = n5_0 * r0 + n5_1 * r1 + n5_2 * r2 + n5_3 * r3 + n5_4 * r4 + n5_5 * r5 + n5_6 * u + n5_7 * v + n5_8 + n5_9 * I;
     let y = 0;
     if (noisy) {
-      x0 += w[i * 7 + 2];
-      x1 += w[i * 7 + 3];
-      x2 += w[i * 7 + 4];
-      y = w[i * 7 + 5];
+      x0 += w[i * 10 + 2];
+      x1 += w[i * 10 + 3];
+      x2 += w[i * 10 + 4];
+      x3 += w[i * 10 + 5];
+      x4 += w[i * 10 + 6];
+      x5 += w[i * 10 + 7];
+      y = w[i * 10 + 8];
     }
     if (S != 0 || D != 0) {
-      x0 += c[68] * S + c[69] * D;
-      x1 += c[72] * S + c[73] * D;
-      x2 += c[76] * S + c[77] * D;
-      y += c[80] * S + c[81] * D;
+      x0 += c[94] * S + c[95] * D;
+      x1 += c[96] * S + c[97] * D;
+      x2 += c[98] * S + c[99] * D;
+      x3 += c[100] * S + c[101] * D;
+      x4 += c[102] * S + c[103] * D;
+      x5 += c[104] * S + c[105] * D;
+      y += c[106] * S + c[107] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y8 + y9 * I;
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * u + y7 * v + y8 + y9 * I;
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
-  s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
-  if (to > from) { s[8] = vs; s[9] = vd; }
+  s[3] = x3;
+  s[4] = x4;
+  s[5] = x5;
+  s[6] = e3; s[9] = f3; s[12] = g3;
+  s[7] = e4; s[10] = f4; s[13] = g4;
+  s[8] = e5; s[11] = f5; s[14] = g5;
+  s[15] = u0; s[16] = v0;
+  s[17] = I0; s[18] = S0; s[19] = D0; s[22] = E0;
+  if (to > from) { s[20] = vs; s[21] = vd; }
 }
 
-function smooth4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function smooth4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -512,78 +2666,88 @@ function smooth4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   const a5 = c[5];
   const a6 = c[6];
   const a7 = c[7];
-  const a8 = c[8];
-  const a9 = c[9];
-  const a10 = c[10];
-  const b0 = c[11];
-  const b1 = c[12];
-  const b2 = c[13];
-  const b3 = c[14];
-  const b4 = c[15];
-  const b5 = c[16];
-  const b6 = c[17];
-  const b7 = c[18];
-  const b8 = c[19];
-  const b9 = c[20];
-  const b10 = c[21];
-  const n0_0 = c[22];
-  const n0_1 = c[23];
-  const n0_2 = c[24];
-  const n0_3 = c[25];
-  const n0_4 = c[26];
-  const n0_5 = c[27];
-  const n0_6 = c[28];
-  const n0_7 = c[29];
-  const n0_8 = c[30];
-  const n0_9 = c[31];
-  const n0_10 = c[32];
-  const n1_0 = c[33];
-  const n1_1 = c[34];
-  const n1_2 = c[35];
-  const n1_3 = c[36];
-  const n1_4 = c[37];
-  const n1_5 = c[38];
-  const n1_6 = c[39];
-  const n1_7 = c[40];
-  const n1_8 = c[41];
-  const n1_9 = c[42];
-  const n1_10 = c[43];
-  const n2_0 = c[44];
-  const n2_1 = c[45];
-  const n2_2 = c[46];
-  const n2_3 = c[47];
-  const n2_4 = c[48];
-  const n2_5 = c[49];
-  const n2_6 = c[50];
-  const n2_7 = c[51];
-  const n2_8 = c[52];
-  const n2_9 = c[53];
-  const n2_10 = c[54];
-  const n3_0 = c[55];
-  const n3_1 = c[56];
-  const n3_2 = c[57];
-  const n3_3 = c[58];
-  const n3_4 = c[59];
-  const n3_5 = c[60];
-  const n3_6 = c[61];
-  const n3_7 = c[62];
-  const n3_8 = c[63];
-  const n3_9 = c[64];
-  const n3_10 = c[65];
-  const y0 = c[66];
-  const y1 = c[67];
-  const y2 = c[68];
-  const y3 = c[69];
-  const y4 = c[70];
-  const y5 = c[71];
-  const y9 = c[75];
-  const y10 = c[76];
-  const on = c[107];
-  const lambda = c[110];
-  const scale = c[111];
-  const inverseWidth = c[112];
-  const slope = c[113];
-  const pieces = c[117];
+  const b0 = c[8];
+  const b1 = c[9];
+  const b2 = c[10];
+  const b3 = c[11];
+  const b4 = c[12];
+  const b5 = c[13];
+  const b6 = c[14];
+  const b7 = c[15];
+  const n0_0 = c[16];
+  const n0_1 = c[17];
+  const n0_2 = c[18];
+  const n0_3 = c[19];
+  const n0_4 = c[20];
+  const n0_5 = c[21];
+  const n0_6 = c[22];
+  const n0_7 = c[23];
+  const n1_0 = c[24];
+  const n1_1 = c[25];
+  const n1_2 = c[26];
+  const n1_3 = c[27];
+  const n1_4 = c[28];
+  const n1_5 = c[29];
+  const n1_6 = c[30];
+  const n1_7 = c[31];
+  const n2_0 = c[32];
+  const n2_1 = c[33];
+  const n2_2 = c[34];
+  const n2_3 = c[35];
+  const n2_4 = c[36];
+  const n2_5 = c[37];
+  const n2_6 = c[38];
+  const n2_7 = c[39];
+  const n3_0 = c[40];
+  const n3_1 = c[41];
+  const n3_2 = c[42];
+  const n3_3 = c[43];
+  const n3_4 = c[44];
+  const n3_5 = c[45];
+  const n3_6 = c[46];
+  const n3_7 = c[47];
+  const y0 = c[48];
+  const y1 = c[49];
+  const y2 = c[50];
+  const y3 = c[51];
+  const y4 = c[52];
+  const y5 = c[53];
+  const y6 = c[54];
+  const y7 = c[55];
+  const m0_0 = c[70];
+  const m0_1 = c[71];
+  const m0_2 = c[72];
+  const m0_3 = c[73];
+  const m0_4 = c[74];
+  const m0_5 = c[75];
+  const m0_6 = c[76];
+  const m1_0 = c[77];
+  const m1_1 = c[78];
+  const m1_2 = c[79];
+  const m1_3 = c[80];
+  const m1_4 = c[81];
+  const m1_5 = c[82];
+  const m1_6 = c[83];
+  const m2_0 = c[84];
+  const m2_1 = c[85];
+  const m2_2 = c[86];
+  const m2_3 = c[87];
+  const m2_4 = c[88];
+  const m2_5 = c[89];
+  const m2_6 = c[90];
+  const m3_0 = c[91];
+  const m3_1 = c[92];
+  const m3_2 = c[93];
+  const m3_3 = c[94];
+  const m3_4 = c[95];
+  const m3_5 = c[96];
+  const m3_6 = c[97];
+  const on = c[108];
+  const lambda = c[111];
+  const scale = c[112];
+  const inverseWidth = c[113];
+  const slope = c[114];
+  const pieces = c[118];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -592,22 +2756,29 @@ function smooth4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * u + a5 * v + a6 * u0 + a7 * v0 + a8 * I0 + a9;
-    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * u + b5 * v + b6 * u0 + b7 * v0 + b8 * I0 + b9;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * u0 + m1_5 * v0 + m1_6 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * u0 + m2_5 * v0 + m2_6 * I0;
+    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * x3 + m3_4 * u0 + m3_5 * v0 + m3_6 * I0;
     if (S0 != 0 || D0 != 0) {
-      a += c[79] * S0 + c[80] * D0;
-      b += c[83] * S0 + c[84] * D0;
+      r0 += c[98] * S0 + c[99] * D0;
+      r1 += c[100] * S0 + c[101] * D0;
+      r2 += c[102] * S0 + c[103] * D0;
+      r3 += c[104] * S0 + c[105] * D0;
     }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (slopeAt(c, t, 105, vs) + slopeAt(c, t, 105, vd)));
-      a += w[i * 8 + 0] + a10 * J;
-      b += w[i * 8 + 1] + b10 * J;
+      evaluate(c, t, 106, vs, s, 13); evaluate(c, t, 106, vd, s, 15);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[14] + s[16]));
+      a += w[i * 8 + 0] + a7 * J;
+      b += w[i * 8 + 1] + b7 * J;
     }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
-      vs = a + a10 * I; vd = b + b10 * I;
+      vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
         const z = (vs * inverseWidth + 40) * 8;
@@ -615,7 +2786,7 @@ function smooth4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 105, vs); fs = slopeAt(c, t, 105, vs); }
+        } else { evaluate(c, t, 106, vs, s, 13); Fs = s[13]; fs = s[13 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -623,39 +2794,29 @@ function smooth4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 105, vd); fd = slopeAt(c, t, 105, vd); }
+        } else { evaluate(c, t, 106, vd, s, 13); Fd = s[13]; fd = s[13 + 1]; }
       }
-      let h = Fs - Fd - I, slopes = a10 * fs - b10 * fd - 1;
+      let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
       if (lambda != 0) {
-        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a10 * fs + b10 * Fs); }
-        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b10 * fd + a10 * Fd); }
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a7 * fs + b7 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b7 * fd + a7 * Fd); }
       }
       const change = h / slopes;
       I -= change;
-      const moved = (b10 - a10) * change;
+      const moved = (b7 - a7) * change;
       if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
     }
-    if (settled == 0) { I = searched(c, t, 105, 10, 21, a, b); s[12] += 1; }
-    vs = a + a10 * I; vd = b + b10 * I;
+    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
+    vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 105, 10, 21, 77, s, 4, a, b, I);
+      conduct(c, t, 106, 7, 15, 56, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
-    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * u + n0_5 * v + n0_6 * u0 + n0_7 * v0 + n0_8 * I0 + n0_9 + n0_10 * I;
-    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * u + n1_5 * v + n1_6 * u0 + n1_7 * v0 + n1_8 * I0 + n1_9 + n1_10 * I;
-    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * u + n2_5 * v + n2_6 * u0 + n2_7 * v0 + n2_8 * I0 + n2_9 + n2_10 * I;
-    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * u + n3_5 * v + n3_6 * u0 + n3_7 * v0 + n3_8 * I0 + n3_9 + n3_10 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[87] * S0 + c[88] * D0;
-      z1 += c[91] * S0 + c[92] * D0;
-      z2 += c[95] * S0 + c[96] * D0;
-      z3 += c[99] * S0 + c[100] * D0;
-    }
-    x0 = z0;
-    x1 = z1;
-    x2 = z2;
-    x3 = z3;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 8 + 2];
@@ -665,13 +2826,13 @@ function smooth4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
       y = w[i * 8 + 6];
     }
     if (S != 0 || D != 0) {
-      x0 += c[85] * S + c[86] * D;
-      x1 += c[89] * S + c[90] * D;
-      x2 += c[93] * S + c[94] * D;
-      x3 += c[97] * S + c[98] * D;
-      y += c[101] * S + c[102] * D;
+      x0 += c[60] * S + c[61] * D;
+      x1 += c[62] * S + c[63] * D;
+      x2 += c[64] * S + c[65] * D;
+      x3 += c[66] * S + c[67] * D;
+      y += c[68] * S + c[69] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y9 + y10 * I;
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -684,7 +2845,7 @@ function smooth4(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function smooth5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function smooth5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -695,96 +2856,115 @@ function smooth5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   const a6 = c[6];
   const a7 = c[7];
   const a8 = c[8];
-  const a9 = c[9];
-  const a10 = c[10];
-  const a11 = c[11];
-  const b0 = c[12];
-  const b1 = c[13];
-  const b2 = c[14];
-  const b3 = c[15];
-  const b4 = c[16];
-  const b5 = c[17];
-  const b6 = c[18];
-  const b7 = c[19];
-  const b8 = c[20];
-  const b9 = c[21];
-  const b10 = c[22];
-  const b11 = c[23];
-  const n0_0 = c[24];
-  const n0_1 = c[25];
-  const n0_2 = c[26];
-  const n0_3 = c[27];
-  const n0_4 = c[28];
-  const n0_5 = c[29];
-  const n0_6 = c[30];
-  const n0_7 = c[31];
-  const n0_8 = c[32];
-  const n0_9 = c[33];
-  const n0_10 = c[34];
-  const n0_11 = c[35];
-  const n1_0 = c[36];
-  const n1_1 = c[37];
-  const n1_2 = c[38];
-  const n1_3 = c[39];
-  const n1_4 = c[40];
-  const n1_5 = c[41];
-  const n1_6 = c[42];
-  const n1_7 = c[43];
-  const n1_8 = c[44];
-  const n1_9 = c[45];
-  const n1_10 = c[46];
-  const n1_11 = c[47];
-  const n2_0 = c[48];
-  const n2_1 = c[49];
-  const n2_2 = c[50];
-  const n2_3 = c[51];
-  const n2_4 = c[52];
-  const n2_5 = c[53];
-  const n2_6 = c[54];
-  const n2_7 = c[55];
-  const n2_8 = c[56];
-  const n2_9 = c[57];
-  const n2_10 = c[58];
-  const n2_11 = c[59];
-  const n3_0 = c[60];
-  const n3_1 = c[61];
-  const n3_2 = c[62];
-  const n3_3 = c[63];
-  const n3_4 = c[64];
-  const n3_5 = c[65];
-  const n3_6 = c[66];
-  const n3_7 = c[67];
-  const n3_8 = c[68];
-  const n3_9 = c[69];
-  const n3_10 = c[70];
-  const n3_11 = c[71];
-  const n4_0 = c[72];
-  const n4_1 = c[73];
-  const n4_2 = c[74];
-  const n4_3 = c[75];
-  const n4_4 = c[76];
-  const n4_5 = c[77];
-  const n4_6 = c[78];
-  const n4_7 = c[79];
-  const n4_8 = c[80];
-  const n4_9 = c[81];
-  const n4_10 = c[82];
-  const n4_11 = c[83];
-  const y0 = c[84];
-  const y1 = c[85];
-  const y2 = c[86];
-  const y3 = c[87];
-  const y4 = c[88];
-  const y5 = c[89];
-  const y6 = c[90];
-  const y10 = c[94];
-  const y11 = c[95];
-  const on = c[130];
-  const lambda = c[133];
-  const scale = c[134];
-  const inverseWidth = c[135];
-  const slope = c[136];
-  const pieces = c[140];
+  const b0 = c[9];
+  const b1 = c[10];
+  const b2 = c[11];
+  const b3 = c[12];
+  const b4 = c[13];
+  const b5 = c[14];
+  const b6 = c[15];
+  const b7 = c[16];
+  const b8 = c[17];
+  const n0_0 = c[18];
+  const n0_1 = c[19];
+  const n0_2 = c[20];
+  const n0_3 = c[21];
+  const n0_4 = c[22];
+  const n0_5 = c[23];
+  const n0_6 = c[24];
+  const n0_7 = c[25];
+  const n0_8 = c[26];
+  const n1_0 = c[27];
+  const n1_1 = c[28];
+  const n1_2 = c[29];
+  const n1_3 = c[30];
+  const n1_4 = c[31];
+  const n1_5 = c[32];
+  const n1_6 = c[33];
+  const n1_7 = c[34];
+  const n1_8 = c[35];
+  const n2_0 = c[36];
+  const n2_1 = c[37];
+  const n2_2 = c[38];
+  const n2_3 = c[39];
+  const n2_4 = c[40];
+  const n2_5 = c[41];
+  const n2_6 = c[42];
+  const n2_7 = c[43];
+  const n2_8 = c[44];
+  const n3_0 = c[45];
+  const n3_1 = c[46];
+  const n3_2 = c[47];
+  const n3_3 = c[48];
+  const n3_4 = c[49];
+  const n3_5 = c[50];
+  const n3_6 = c[51];
+  const n3_7 = c[52];
+  const n3_8 = c[53];
+  const n4_0 = c[54];
+  const n4_1 = c[55];
+  const n4_2 = c[56];
+  const n4_3 = c[57];
+  const n4_4 = c[58];
+  const n4_5 = c[59];
+  const n4_6 = c[60];
+  const n4_7 = c[61];
+  const n4_8 = c[62];
+  const y0 = c[63];
+  const y1 = c[64];
+  const y2 = c[65];
+  const y3 = c[66];
+  const y4 = c[67];
+  const y5 = c[68];
+  const y6 = c[69];
+  const y7 = c[70];
+  const y8 = c[71];
+  const m0_0 = c[88];
+  const m0_1 = c[89];
+  const m0_2 = c[90];
+  const m0_3 = c[91];
+  const m0_4 = c[92];
+  const m0_5 = c[93];
+  const m0_6 = c[94];
+  const m0_7 = c[95];
+  const m1_0 = c[96];
+  const m1_1 = c[97];
+  const m1_2 = c[98];
+  const m1_3 = c[99];
+  const m1_4 = c[100];
+  const m1_5 = c[101];
+  const m1_6 = c[102];
+  const m1_7 = c[103];
+  const m2_0 = c[104];
+  const m2_1 = c[105];
+  const m2_2 = c[106];
+  const m2_3 = c[107];
+  const m2_4 = c[108];
+  const m2_5 = c[109];
+  const m2_6 = c[110];
+  const m2_7 = c[111];
+  const m3_0 = c[112];
+  const m3_1 = c[113];
+  const m3_2 = c[114];
+  const m3_3 = c[115];
+  const m3_4 = c[116];
+  const m3_5 = c[117];
+  const m3_6 = c[118];
+  const m3_7 = c[119];
+  const m4_0 = c[120];
+  const m4_1 = c[121];
+  const m4_2 = c[122];
+  const m4_3 = c[123];
+  const m4_4 = c[124];
+  const m4_5 = c[125];
+  const m4_6 = c[126];
+  const m4_7 = c[127];
+  const on = c[140];
+  const lambda = c[143];
+  const scale = c[144];
+  const inverseWidth = c[145];
+  const slope = c[146];
+  const pieces = c[150];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -794,22 +2974,31 @@ function smooth5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * u + a6 * v + a7 * u0 + a8 * v0 + a9 * I0 + a10;
-    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * u + b6 * v + b7 * u0 + b8 * v0 + b9 * I0 + b10;
+    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * u0 + m0_6 * v0 + m0_7 * I0;
+    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * u0 + m1_6 * v0 + m1_7 * I0;
+    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * x4 + m2_5 * u0 + m2_6 * v0 + m2_7 * I0;
+    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * x3 + m3_4 * x4 + m3_5 * u0 + m3_6 * v0 + m3_7 * I0;
+    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * x2 + m4_3 * x3 + m4_4 * x4 + m4_5 * u0 + m4_6 * v0 + m4_7 * I0;
     if (S0 != 0 || D0 != 0) {
-      a += c[98] * S0 + c[99] * D0;
-      b += c[102] * S0 + c[103] * D0;
+      r0 += c[128] * S0 + c[129] * D0;
+      r1 += c[130] * S0 + c[131] * D0;
+      r2 += c[132] * S0 + c[133] * D0;
+      r3 += c[134] * S0 + c[135] * D0;
+      r4 += c[136] * S0 + c[137] * D0;
     }
+    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * u + a6 * v + a7;
+    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * u + b6 * v + b7;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      J = w[i * 9 + 8] * Math.sqrt(0.5 * (slopeAt(c, t, 128, vs) + slopeAt(c, t, 128, vd)));
-      a += w[i * 9 + 0] + a11 * J;
-      b += w[i * 9 + 1] + b11 * J;
+      evaluate(c, t, 138, vs, s, 14); evaluate(c, t, 138, vd, s, 16);
+      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[15] + s[17]));
+      a += w[i * 9 + 0] + a8 * J;
+      b += w[i * 9 + 1] + b8 * J;
     }
     I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 12; step++) {
-      vs = a + a11 * I; vd = b + b11 * I;
+      vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
         const z = (vs * inverseWidth + 40) * 8;
@@ -817,7 +3006,7 @@ function smooth5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 128, vs); fs = slopeAt(c, t, 128, vs); }
+        } else { evaluate(c, t, 138, vs, s, 14); Fs = s[14]; fs = s[14 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -825,42 +3014,30 @@ function smooth5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 128, vd); fd = slopeAt(c, t, 128, vd); }
+        } else { evaluate(c, t, 138, vd, s, 14); Fd = s[14]; fd = s[14 + 1]; }
       }
-      let h = Fs - Fd - I, slopes = a11 * fs - b11 * fd - 1;
+      let h = Fs - Fd - I, slopes = a8 * fs - b8 * fd - 1;
       if (lambda != 0) {
-        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a11 * fs + b11 * Fs); }
-        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b11 * fd + a11 * Fd); }
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a8 * fs + b8 * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b8 * fd + a8 * Fd); }
       }
       const change = h / slopes;
       I -= change;
-      const moved = (b11 - a11) * change;
+      const moved = (b8 - a8) * change;
       if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
     }
-    if (settled == 0) { I = searched(c, t, 128, 11, 23, a, b); s[13] += 1; }
-    vs = a + a11 * I; vd = b + b11 * I;
+    if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 14); I = s[14]; s[13] += 1; }
+    vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 128, 11, 23, 96, s, 5, a, b, I);
+      conduct(c, t, 138, 8, 17, 72, s, 5, a, b, I);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
     I += J;
-    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * u + n0_6 * v + n0_7 * u0 + n0_8 * v0 + n0_9 * I0 + n0_10 + n0_11 * I;
-    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * u + n1_6 * v + n1_7 * u0 + n1_8 * v0 + n1_9 * I0 + n1_10 + n1_11 * I;
-    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * u + n2_6 * v + n2_7 * u0 + n2_8 * v0 + n2_9 * I0 + n2_10 + n2_11 * I;
-    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * u + n3_6 * v + n3_7 * u0 + n3_8 * v0 + n3_9 * I0 + n3_10 + n3_11 * I;
-    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * u + n4_6 * v + n4_7 * u0 + n4_8 * v0 + n4_9 * I0 + n4_10 + n4_11 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[106] * S0 + c[107] * D0;
-      z1 += c[110] * S0 + c[111] * D0;
-      z2 += c[114] * S0 + c[115] * D0;
-      z3 += c[118] * S0 + c[119] * D0;
-      z4 += c[122] * S0 + c[123] * D0;
-    }
-    x0 = z0;
-    x1 = z1;
-    x2 = z2;
-    x3 = z3;
-    x4 = z4;
+    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * u + n0_6 * v + n0_7 + n0_8 * I;
+    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * u + n1_6 * v + n1_7 + n1_8 * I;
+    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * u + n2_6 * v + n2_7 + n2_8 * I;
+    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * u + n3_6 * v + n3_7 + n3_8 * I;
+    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * u + n4_6 * v + n4_7 + n4_8 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 9 + 2];
@@ -871,14 +3048,14 @@ function smooth5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
       y = w[i * 9 + 7];
     }
     if (S != 0 || D != 0) {
-      x0 += c[104] * S + c[105] * D;
-      x1 += c[108] * S + c[109] * D;
-      x2 += c[112] * S + c[113] * D;
-      x3 += c[116] * S + c[117] * D;
-      x4 += c[120] * S + c[121] * D;
-      y += c[124] * S + c[125] * D;
+      x0 += c[76] * S + c[77] * D;
+      x1 += c[78] * S + c[79] * D;
+      x2 += c[80] * S + c[81] * D;
+      x3 += c[82] * S + c[83] * D;
+      x4 += c[84] * S + c[85] * D;
+      y += c[86] * S + c[87] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y10 + y11 * I;
+    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y7 + y8 * I;
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -892,805 +3069,24 @@ function smooth5(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Ar
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
-function smooth6(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const a7 = c[7];
-  const a8 = c[8];
-  const a9 = c[9];
-  const a10 = c[10];
-  const a11 = c[11];
-  const a12 = c[12];
-  const b0 = c[13];
-  const b1 = c[14];
-  const b2 = c[15];
-  const b3 = c[16];
-  const b4 = c[17];
-  const b5 = c[18];
-  const b6 = c[19];
-  const b7 = c[20];
-  const b8 = c[21];
-  const b9 = c[22];
-  const b10 = c[23];
-  const b11 = c[24];
-  const b12 = c[25];
-  const n0_0 = c[26];
-  const n0_1 = c[27];
-  const n0_2 = c[28];
-  const n0_3 = c[29];
-  const n0_4 = c[30];
-  const n0_5 = c[31];
-  const n0_6 = c[32];
-  const n0_7 = c[33];
-  const n0_8 = c[34];
-  const n0_9 = c[35];
-  const n0_10 = c[36];
-  const n0_11 = c[37];
-  const n0_12 = c[38];
-  const n1_0 = c[39];
-  const n1_1 = c[40];
-  const n1_2 = c[41];
-  const n1_3 = c[42];
-  const n1_4 = c[43];
-  const n1_5 = c[44];
-  const n1_6 = c[45];
-  const n1_7 = c[46];
-  const n1_8 = c[47];
-  const n1_9 = c[48];
-  const n1_10 = c[49];
-  const n1_11 = c[50];
-  const n1_12 = c[51];
-  const n2_0 = c[52];
-  const n2_1 = c[53];
-  const n2_2 = c[54];
-  const n2_3 = c[55];
-  const n2_4 = c[56];
-  const n2_5 = c[57];
-  const n2_6 = c[58];
-  const n2_7 = c[59];
-  const n2_8 = c[60];
-  const n2_9 = c[61];
-  const n2_10 = c[62];
-  const n2_11 = c[63];
-  const n2_12 = c[64];
-  const n3_0 = c[65];
-  const n3_1 = c[66];
-  const n3_2 = c[67];
-  const n3_3 = c[68];
-  const n3_4 = c[69];
-  const n3_5 = c[70];
-  const n3_6 = c[71];
-  const n3_7 = c[72];
-  const n3_8 = c[73];
-  const n3_9 = c[74];
-  const n3_10 = c[75];
-  const n3_11 = c[76];
-  const n3_12 = c[77];
-  const n4_0 = c[78];
-  const n4_1 = c[79];
-  const n4_2 = c[80];
-  const n4_3 = c[81];
-  const n4_4 = c[82];
-  const n4_5 = c[83];
-  const n4_6 = c[84];
-  const n4_7 = c[85];
-  const n4_8 = c[86];
-  const n4_9 = c[87];
-  const n4_10 = c[88];
-  const n4_11 = c[89];
-  const n4_12 = c[90];
-  const n5_0 = c[91];
-  const n5_1 = c[92];
-  const n5_2 = c[93];
-  const n5_3 = c[94];
-  const n5_4 = c[95];
-  const n5_5 = c[96];
-  const n5_6 = c[97];
-  const n5_7 = c[98];
-  const n5_8 = c[99];
-  const n5_9 = c[100];
-  const n5_10 = c[101];
-  const n5_11 = c[102];
-  const n5_12 = c[103];
-  const y0 = c[104];
-  const y1 = c[105];
-  const y2 = c[106];
-  const y3 = c[107];
-  const y4 = c[108];
-  const y5 = c[109];
-  const y6 = c[110];
-  const y7 = c[111];
-  const y11 = c[115];
-  const y12 = c[116];
-  const on = c[155];
-  const lambda = c[158];
-  const scale = c[159];
-  const inverseWidth = c[160];
-  const slope = c[161];
-  const pieces = c[165];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let x3 = s[3];
-  let x4 = s[4];
-  let x5 = s[5];
-  let u0 = s[6], v0 = s[7];
-  let I0 = s[8], S0 = s[9], D0 = s[10], E0 = s[13], vs = s[11], vd = s[12];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * u + a7 * v + a8 * u0 + a9 * v0 + a10 * I0 + a11;
-    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * x5 + b6 * u + b7 * v + b8 * u0 + b9 * v0 + b10 * I0 + b11;
-    if (S0 != 0 || D0 != 0) {
-      a += c[119] * S0 + c[120] * D0;
-      b += c[123] * S0 + c[124] * D0;
-    }
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      J = w[i * 10 + 9] * Math.sqrt(0.5 * (slopeAt(c, t, 153, vs) + slopeAt(c, t, 153, vd)));
-      a += w[i * 10 + 0] + a12 * J;
-      b += w[i * 10 + 1] + b12 * J;
-    }
-    I = 2 * I0 - E0;
-    let settled = 0;
-    for (let step = 0; step < 12; step++) {
-      vs = a + a12 * I; vd = b + b12 * I;
-      let Fs = 0, fs = 0, Fd = 0, fd = 0;
-      if (vs * inverseWidth > -40) {
-        const z = (vs * inverseWidth + 40) * 8;
-        if (z < pieces) {
-          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
-          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
-          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 153, vs); fs = slopeAt(c, t, 153, vs); }
-      }
-      if (vd * inverseWidth > -40) {
-        const z = (vd * inverseWidth + 40) * 8;
-        if (z < pieces) {
-          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
-          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
-          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 153, vd); fd = slopeAt(c, t, 153, vd); }
-      }
-      let h = Fs - Fd - I, slopes = a12 * fs - b12 * fd - 1;
-      if (lambda != 0) {
-        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a12 * fs + b12 * Fs); }
-        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b12 * fd + a12 * Fd); }
-      }
-      const change = h / slopes;
-      I -= change;
-      const moved = (b12 - a12) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
-    }
-    if (settled == 0) { I = searched(c, t, 153, 12, 25, a, b); s[14] += 1; }
-    vs = a + a12 * I; vd = b + b12 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 153, 12, 25, 117, s, 6, a, b, I);
-      I = s[8]; S = s[9]; D = s[10]; vs = s[11]; vd = s[12];
-    }
-    I += J;
-    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * u + n0_7 * v + n0_8 * u0 + n0_9 * v0 + n0_10 * I0 + n0_11 + n0_12 * I;
-    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * u + n1_7 * v + n1_8 * u0 + n1_9 * v0 + n1_10 * I0 + n1_11 + n1_12 * I;
-    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * u + n2_7 * v + n2_8 * u0 + n2_9 * v0 + n2_10 * I0 + n2_11 + n2_12 * I;
-    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * x5 + n3_6 * u + n3_7 * v + n3_8 * u0 + n3_9 * v0 + n3_10 * I0 + n3_11 + n3_12 * I;
-    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * x5 + n4_6 * u + n4_7 * v + n4_8 * u0 + n4_9 * v0 + n4_10 * I0 + n4_11 + n4_12 * I;
-    let z5 = n5_0 * x0 + n5_1 * x1 + n5_2 * x2 + n5_3 * x3 + n5_4 * x4 + n5_5 * x5 + n5_6 * u + n5_7 * v + n5_8 * u0 + n5_9 * v0 + n5_10 * I0 + n5_11 + n5_12 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[127] * S0 + c[128] * D0;
-      z1 += c[131] * S0 + c[132] * D0;
-      z2 += c[135] * S0 + c[136] * D0;
-      z3 += c[139] * S0 + c[140] * D0;
-      z4 += c[143] * S0 + c[144] * D0;
-      z5 += c[147] * S0 + c[148] * D0;
-    }
-    x0 = z0;
-    x1 = z1;
-    x2 = z2;
-    x3 = z3;
-    x4 = z4;
-    x5 = z5;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 10 + 2];
-      x1 += w[i * 10 + 3];
-      x2 += w[i * 10 + 4];
-      x3 += w[i * 10 + 5];
-      x4 += w[i * 10 + 6];
-      x5 += w[i * 10 + 7];
-      y = w[i * 10 + 8];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[125] * S + c[126] * D;
-      x1 += c[129] * S + c[130] * D;
-      x2 += c[133] * S + c[134] * D;
-      x3 += c[137] * S + c[138] * D;
-      x4 += c[141] * S + c[142] * D;
-      x5 += c[145] * S + c[146] * D;
-      y += c[149] * S + c[150] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * u + y7 * v + y11 + y12 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = x3;
-  s[4] = x4;
-  s[5] = x5;
-  s[6] = u0; s[7] = v0;
-  s[8] = I0; s[9] = S0; s[10] = D0; s[13] = E0;
-  if (to > from) { s[11] = vs; s[12] = vd; }
-}
-
-function smooth7(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const a7 = c[7];
-  const a8 = c[8];
-  const a9 = c[9];
-  const a10 = c[10];
-  const a11 = c[11];
-  const a12 = c[12];
-  const a13 = c[13];
-  const b0 = c[14];
-  const b1 = c[15];
-  const b2 = c[16];
-  const b3 = c[17];
-  const b4 = c[18];
-  const b5 = c[19];
-  const b6 = c[20];
-  const b7 = c[21];
-  const b8 = c[22];
-  const b9 = c[23];
-  const b10 = c[24];
-  const b11 = c[25];
-  const b12 = c[26];
-  const b13 = c[27];
-  const n0_0 = c[28];
-  const n0_1 = c[29];
-  const n0_2 = c[30];
-  const n0_3 = c[31];
-  const n0_4 = c[32];
-  const n0_5 = c[33];
-  const n0_6 = c[34];
-  const n0_7 = c[35];
-  const n0_8 = c[36];
-  const n0_9 = c[37];
-  const n0_10 = c[38];
-  const n0_11 = c[39];
-  const n0_12 = c[40];
-  const n0_13 = c[41];
-  const n1_0 = c[42];
-  const n1_1 = c[43];
-  const n1_2 = c[44];
-  const n1_3 = c[45];
-  const n1_4 = c[46];
-  const n1_5 = c[47];
-  const n1_6 = c[48];
-  const n1_7 = c[49];
-  const n1_8 = c[50];
-  const n1_9 = c[51];
-  const n1_10 = c[52];
-  const n1_11 = c[53];
-  const n1_12 = c[54];
-  const n1_13 = c[55];
-  const n2_0 = c[56];
-  const n2_1 = c[57];
-  const n2_2 = c[58];
-  const n2_3 = c[59];
-  const n2_4 = c[60];
-  const n2_5 = c[61];
-  const n2_6 = c[62];
-  const n2_7 = c[63];
-  const n2_8 = c[64];
-  const n2_9 = c[65];
-  const n2_10 = c[66];
-  const n2_11 = c[67];
-  const n2_12 = c[68];
-  const n2_13 = c[69];
-  const n3_0 = c[70];
-  const n3_1 = c[71];
-  const n3_2 = c[72];
-  const n3_3 = c[73];
-  const n3_4 = c[74];
-  const n3_5 = c[75];
-  const n3_6 = c[76];
-  const n3_7 = c[77];
-  const n3_8 = c[78];
-  const n3_9 = c[79];
-  const n3_10 = c[80];
-  const n3_11 = c[81];
-  const n3_12 = c[82];
-  const n3_13 = c[83];
-  const n4_0 = c[84];
-  const n4_1 = c[85];
-  const n4_2 = c[86];
-  const n4_3 = c[87];
-  const n4_4 = c[88];
-  const n4_5 = c[89];
-  const n4_6 = c[90];
-  const n4_7 = c[91];
-  const n4_8 = c[92];
-  const n4_9 = c[93];
-  const n4_10 = c[94];
-  const n4_11 = c[95];
-  const n4_12 = c[96];
-  const n4_13 = c[97];
-  const n5_0 = c[98];
-  const n5_1 = c[99];
-  const n5_2 = c[100];
-  const n5_3 = c[101];
-  const n5_4 = c[102];
-  const n5_5 = c[103];
-  const n5_6 = c[104];
-  const n5_7 = c[105];
-  const n5_8 = c[106];
-  const n5_9 = c[107];
-  const n5_10 = c[108];
-  const n5_11 = c[109];
-  const n5_12 = c[110];
-  const n5_13 = c[111];
-  const n6_0 = c[112];
-  const n6_1 = c[113];
-  const n6_2 = c[114];
-  const n6_3 = c[115];
-  const n6_4 = c[116];
-  const n6_5 = c[117];
-  const n6_6 = c[118];
-  const n6_7 = c[119];
-  const n6_8 = c[120];
-  const n6_9 = c[121];
-  const n6_10 = c[122];
-  const n6_11 = c[123];
-  const n6_12 = c[124];
-  const n6_13 = c[125];
-  const y0 = c[126];
-  const y1 = c[127];
-  const y2 = c[128];
-  const y3 = c[129];
-  const y4 = c[130];
-  const y5 = c[131];
-  const y6 = c[132];
-  const y7 = c[133];
-  const y8 = c[134];
-  const y12 = c[138];
-  const y13 = c[139];
-  const on = c[182];
-  const lambda = c[185];
-  const scale = c[186];
-  const inverseWidth = c[187];
-  const slope = c[188];
-  const pieces = c[192];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let x3 = s[3];
-  let x4 = s[4];
-  let x5 = s[5];
-  let x6 = s[6];
-  let u0 = s[7], v0 = s[8];
-  let I0 = s[9], S0 = s[10], D0 = s[11], E0 = s[14], vs = s[12], vd = s[13];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * x6 + a7 * u + a8 * v + a9 * u0 + a10 * v0 + a11 * I0 + a12;
-    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * x5 + b6 * x6 + b7 * u + b8 * v + b9 * u0 + b10 * v0 + b11 * I0 + b12;
-    if (S0 != 0 || D0 != 0) {
-      a += c[142] * S0 + c[143] * D0;
-      b += c[146] * S0 + c[147] * D0;
-    }
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      J = w[i * 11 + 10] * Math.sqrt(0.5 * (slopeAt(c, t, 180, vs) + slopeAt(c, t, 180, vd)));
-      a += w[i * 11 + 0] + a13 * J;
-      b += w[i * 11 + 1] + b13 * J;
-    }
-    I = 2 * I0 - E0;
-    let settled = 0;
-    for (let step = 0; step < 12; step++) {
-      vs = a + a13 * I; vd = b + b13 * I;
-      let Fs = 0, fs = 0, Fd = 0, fd = 0;
-      if (vs * inverseWidth > -40) {
-        const z = (vs * inverseWidth + 40) * 8;
-        if (z < pieces) {
-          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
-          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
-          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 180, vs); fs = slopeAt(c, t, 180, vs); }
-      }
-      if (vd * inverseWidth > -40) {
-        const z = (vd * inverseWidth + 40) * 8;
-        if (z < pieces) {
-          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
-          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
-          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 180, vd); fd = slopeAt(c, t, 180, vd); }
-      }
-      let h = Fs - Fd - I, slopes = a13 * fs - b13 * fd - 1;
-      if (lambda != 0) {
-        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a13 * fs + b13 * Fs); }
-        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b13 * fd + a13 * Fd); }
-      }
-      const change = h / slopes;
-      I -= change;
-      const moved = (b13 - a13) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
-    }
-    if (settled == 0) { I = searched(c, t, 180, 13, 27, a, b); s[15] += 1; }
-    vs = a + a13 * I; vd = b + b13 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 180, 13, 27, 140, s, 7, a, b, I);
-      I = s[9]; S = s[10]; D = s[11]; vs = s[12]; vd = s[13];
-    }
-    I += J;
-    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * x6 + n0_7 * u + n0_8 * v + n0_9 * u0 + n0_10 * v0 + n0_11 * I0 + n0_12 + n0_13 * I;
-    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * x6 + n1_7 * u + n1_8 * v + n1_9 * u0 + n1_10 * v0 + n1_11 * I0 + n1_12 + n1_13 * I;
-    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * x6 + n2_7 * u + n2_8 * v + n2_9 * u0 + n2_10 * v0 + n2_11 * I0 + n2_12 + n2_13 * I;
-    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * x5 + n3_6 * x6 + n3_7 * u + n3_8 * v + n3_9 * u0 + n3_10 * v0 + n3_11 * I0 + n3_12 + n3_13 * I;
-    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * x5 + n4_6 * x6 + n4_7 * u + n4_8 * v + n4_9 * u0 + n4_10 * v0 + n4_11 * I0 + n4_12 + n4_13 * I;
-    let z5 = n5_0 * x0 + n5_1 * x1 + n5_2 * x2 + n5_3 * x3 + n5_4 * x4 + n5_5 * x5 + n5_6 * x6 + n5_7 * u + n5_8 * v + n5_9 * u0 + n5_10 * v0 + n5_11 * I0 + n5_12 + n5_13 * I;
-    let z6 = n6_0 * x0 + n6_1 * x1 + n6_2 * x2 + n6_3 * x3 + n6_4 * x4 + n6_5 * x5 + n6_6 * x6 + n6_7 * u + n6_8 * v + n6_9 * u0 + n6_10 * v0 + n6_11 * I0 + n6_12 + n6_13 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[150] * S0 + c[151] * D0;
-      z1 += c[154] * S0 + c[155] * D0;
-      z2 += c[158] * S0 + c[159] * D0;
-      z3 += c[162] * S0 + c[163] * D0;
-      z4 += c[166] * S0 + c[167] * D0;
-      z5 += c[170] * S0 + c[171] * D0;
-      z6 += c[174] * S0 + c[175] * D0;
-    }
-    x0 = z0;
-    x1 = z1;
-    x2 = z2;
-    x3 = z3;
-    x4 = z4;
-    x5 = z5;
-    x6 = z6;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 11 + 2];
-      x1 += w[i * 11 + 3];
-      x2 += w[i * 11 + 4];
-      x3 += w[i * 11 + 5];
-      x4 += w[i * 11 + 6];
-      x5 += w[i * 11 + 7];
-      x6 += w[i * 11 + 8];
-      y = w[i * 11 + 9];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[148] * S + c[149] * D;
-      x1 += c[152] * S + c[153] * D;
-      x2 += c[156] * S + c[157] * D;
-      x3 += c[160] * S + c[161] * D;
-      x4 += c[164] * S + c[165] * D;
-      x5 += c[168] * S + c[169] * D;
-      x6 += c[172] * S + c[173] * D;
-      y += c[176] * S + c[177] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * x6 + y7 * u + y8 * v + y12 + y13 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = x3;
-  s[4] = x4;
-  s[5] = x5;
-  s[6] = x6;
-  s[7] = u0; s[8] = v0;
-  s[9] = I0; s[10] = S0; s[11] = D0; s[14] = E0;
-  if (to > from) { s[12] = vs; s[13] = vd; }
-}
-
-function smooth8(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const a7 = c[7];
-  const a8 = c[8];
-  const a9 = c[9];
-  const a10 = c[10];
-  const a11 = c[11];
-  const a12 = c[12];
-  const a13 = c[13];
-  const a14 = c[14];
-  const b0 = c[15];
-  const b1 = c[16];
-  const b2 = c[17];
-  const b3 = c[18];
-  const b4 = c[19];
-  const b5 = c[20];
-  const b6 = c[21];
-  const b7 = c[22];
-  const b8 = c[23];
-  const b9 = c[24];
-  const b10 = c[25];
-  const b11 = c[26];
-  const b12 = c[27];
-  const b13 = c[28];
-  const b14 = c[29];
-  const n0_0 = c[30];
-  const n0_1 = c[31];
-  const n0_2 = c[32];
-  const n0_3 = c[33];
-  const n0_4 = c[34];
-  const n0_5 = c[35];
-  const n0_6 = c[36];
-  const n0_7 = c[37];
-  const n0_8 = c[38];
-  const n0_9 = c[39];
-  const n0_10 = c[40];
-  const n0_11 = c[41];
-  const n0_12 = c[42];
-  const n0_13 = c[43];
-  const n0_14 = c[44];
-  const n1_0 = c[45];
-  const n1_1 = c[46];
-  const n1_2 = c[47];
-  const n1_3 = c[48];
-  const n1_4 = c[49];
-  const n1_5 = c[50];
-  const n1_6 = c[51];
-  const n1_7 = c[52];
-  const n1_8 = c[53];
-  const n1_9 = c[54];
-  const n1_10 = c[55];
-  const n1_11 = c[56];
-  const n1_12 = c[57];
-  const n1_13 = c[58];
-  const n1_14 = c[59];
-  const n2_0 = c[60];
-  const n2_1 = c[61];
-  const n2_2 = c[62];
-  const n2_3 = c[63];
-  const n2_4 = c[64];
-  const n2_5 = c[65];
-  const n2_6 = c[66];
-  const n2_7 = c[67];
-  const n2_8 = c[68];
-  const n2_9 = c[69];
-  const n2_10 = c[70];
-  const n2_11 = c[71];
-  const n2_12 = c[72];
-  const n2_13 = c[73];
-  const n2_14 = c[74];
-  const n3_0 = c[75];
-  const n3_1 = c[76];
-  const n3_2 = c[77];
-  const n3_3 = c[78];
-  const n3_4 = c[79];
-  const n3_5 = c[80];
-  const n3_6 = c[81];
-  const n3_7 = c[82];
-  const n3_8 = c[83];
-  const n3_9 = c[84];
-  const n3_10 = c[85];
-  const n3_11 = c[86];
-  const n3_12 = c[87];
-  const n3_13 = c[88];
-  const n3_14 = c[89];
-  const n4_0 = c[90];
-  const n4_1 = c[91];
-  const n4_2 = c[92];
-  const n4_3 = c[93];
-  const n4_4 = c[94];
-  const n4_5 = c[95];
-  const n4_6 = c[96];
-  const n4_7 = c[97];
-  const n4_8 = c[98];
-  const n4_9 = c[99];
-  const n4_10 = c[100];
-  const n4_11 = c[101];
-  const n4_12 = c[102];
-  const n4_13 = c[103];
-  const n4_14 = c[104];
-  const n5_0 = c[105];
-  const n5_1 = c[106];
-  const n5_2 = c[107];
-  const n5_3 = c[108];
-  const n5_4 = c[109];
-  const n5_5 = c[110];
-  const n5_6 = c[111];
-  const n5_7 = c[112];
-  const n5_8 = c[113];
-  const n5_9 = c[114];
-  const n5_10 = c[115];
-  const n5_11 = c[116];
-  const n5_12 = c[117];
-  const n5_13 = c[118];
-  const n5_14 = c[119];
-  const n6_0 = c[120];
-  const n6_1 = c[121];
-  const n6_2 = c[122];
-  const n6_3 = c[123];
-  const n6_4 = c[124];
-  const n6_5 = c[125];
-  const n6_6 = c[126];
-  const n6_7 = c[127];
-  const n6_8 = c[128];
-  const n6_9 = c[129];
-  const n6_10 = c[130];
-  const n6_11 = c[131];
-  const n6_12 = c[132];
-  const n6_13 = c[133];
-  const n6_14 = c[134];
-  const n7_0 = c[135];
-  const n7_1 = c[136];
-  const n7_2 = c[137];
-  const n7_3 = c[138];
-  const n7_4 = c[139];
-  const n7_5 = c[140];
-  const n7_6 = c[141];
-  const n7_7 = c[142];
-  const n7_8 = c[143];
-  const n7_9 = c[144];
-  const n7_10 = c[145];
-  const n7_11 = c[146];
-  const n7_12 = c[147];
-  const n7_13 = c[148];
-  const n7_14 = c[149];
-  const y0 = c[150];
-  const y1 = c[151];
-  const y2 = c[152];
-  const y3 = c[153];
-  const y4 = c[154];
-  const y5 = c[155];
-  const y6 = c[156];
-  const y7 = c[157];
-  const y8 = c[158];
-  const y9 = c[159];
-  const y13 = c[163];
-  const y14 = c[164];
-  const on = c[211];
-  const lambda = c[214];
-  const scale = c[215];
-  const inverseWidth = c[216];
-  const slope = c[217];
-  const pieces = c[221];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let x3 = s[3];
-  let x4 = s[4];
-  let x5 = s[5];
-  let x6 = s[6];
-  let x7 = s[7];
-  let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    let a = a0 * x0 + a1 * x1 + a2 * x2 + a3 * x3 + a4 * x4 + a5 * x5 + a6 * x6 + a7 * x7 + a8 * u + a9 * v + a10 * u0 + a11 * v0 + a12 * I0 + a13;
-    let b = b0 * x0 + b1 * x1 + b2 * x2 + b3 * x3 + b4 * x4 + b5 * x5 + b6 * x6 + b7 * x7 + b8 * u + b9 * v + b10 * u0 + b11 * v0 + b12 * I0 + b13;
-    if (S0 != 0 || D0 != 0) {
-      a += c[167] * S0 + c[168] * D0;
-      b += c[171] * S0 + c[172] * D0;
-    }
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      J = w[i * 12 + 11] * Math.sqrt(0.5 * (slopeAt(c, t, 209, vs) + slopeAt(c, t, 209, vd)));
-      a += w[i * 12 + 0] + a14 * J;
-      b += w[i * 12 + 1] + b14 * J;
-    }
-    I = 2 * I0 - E0;
-    let settled = 0;
-    for (let step = 0; step < 12; step++) {
-      vs = a + a14 * I; vd = b + b14 * I;
-      let Fs = 0, fs = 0, Fd = 0, fd = 0;
-      if (vs * inverseWidth > -40) {
-        const z = (vs * inverseWidth + 40) * 8;
-        if (z < pieces) {
-          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
-          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
-          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fs = termAt(c, t, 209, vs); fs = slopeAt(c, t, 209, vs); }
-      }
-      if (vd * inverseWidth > -40) {
-        const z = (vd * inverseWidth + 40) * 8;
-        if (z < pieces) {
-          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
-          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
-          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { Fd = termAt(c, t, 209, vd); fd = slopeAt(c, t, 209, vd); }
-      }
-      let h = Fs - Fd - I, slopes = a14 * fs - b14 * fd - 1;
-      if (lambda != 0) {
-        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * a14 * fs + b14 * Fs); }
-        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * b14 * fd + a14 * Fd); }
-      }
-      const change = h / slopes;
-      I -= change;
-      const moved = (b14 - a14) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
-    }
-    if (settled == 0) { I = searched(c, t, 209, 14, 29, a, b); s[16] += 1; }
-    vs = a + a14 * I; vd = b + b14 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 209, 14, 29, 165, s, 8, a, b, I);
-      I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
-    }
-    I += J;
-    let z0 = n0_0 * x0 + n0_1 * x1 + n0_2 * x2 + n0_3 * x3 + n0_4 * x4 + n0_5 * x5 + n0_6 * x6 + n0_7 * x7 + n0_8 * u + n0_9 * v + n0_10 * u0 + n0_11 * v0 + n0_12 * I0 + n0_13 + n0_14 * I;
-    let z1 = n1_0 * x0 + n1_1 * x1 + n1_2 * x2 + n1_3 * x3 + n1_4 * x4 + n1_5 * x5 + n1_6 * x6 + n1_7 * x7 + n1_8 * u + n1_9 * v + n1_10 * u0 + n1_11 * v0 + n1_12 * I0 + n1_13 + n1_14 * I;
-    let z2 = n2_0 * x0 + n2_1 * x1 + n2_2 * x2 + n2_3 * x3 + n2_4 * x4 + n2_5 * x5 + n2_6 * x6 + n2_7 * x7 + n2_8 * u + n2_9 * v + n2_10 * u0 + n2_11 * v0 + n2_12 * I0 + n2_13 + n2_14 * I;
-    let z3 = n3_0 * x0 + n3_1 * x1 + n3_2 * x2 + n3_3 * x3 + n3_4 * x4 + n3_5 * x5 + n3_6 * x6 + n3_7 * x7 + n3_8 * u + n3_9 * v + n3_10 * u0 + n3_11 * v0 + n3_12 * I0 + n3_13 + n3_14 * I;
-    let z4 = n4_0 * x0 + n4_1 * x1 + n4_2 * x2 + n4_3 * x3 + n4_4 * x4 + n4_5 * x5 + n4_6 * x6 + n4_7 * x7 + n4_8 * u + n4_9 * v + n4_10 * u0 + n4_11 * v0 + n4_12 * I0 + n4_13 + n4_14 * I;
-    let z5 = n5_0 * x0 + n5_1 * x1 + n5_2 * x2 + n5_3 * x3 + n5_4 * x4 + n5_5 * x5 + n5_6 * x6 + n5_7 * x7 + n5_8 * u + n5_9 * v + n5_10 * u0 + n5_11 * v0 + n5_12 * I0 + n5_13 + n5_14 * I;
-    let z6 = n6_0 * x0 + n6_1 * x1 + n6_2 * x2 + n6_3 * x3 + n6_4 * x4 + n6_5 * x5 + n6_6 * x6 + n6_7 * x7 + n6_8 * u + n6_9 * v + n6_10 * u0 + n6_11 * v0 + n6_12 * I0 + n6_13 + n6_14 * I;
-    let z7 = n7_0 * x0 + n7_1 * x1 + n7_2 * x2 + n7_3 * x3 + n7_4 * x4 + n7_5 * x5 + n7_6 * x6 + n7_7 * x7 + n7_8 * u + n7_9 * v + n7_10 * u0 + n7_11 * v0 + n7_12 * I0 + n7_13 + n7_14 * I;
-    if (S0 != 0 || D0 != 0) {
-      z0 += c[175] * S0 + c[176] * D0;
-      z1 += c[179] * S0 + c[180] * D0;
-      z2 += c[183] * S0 + c[184] * D0;
-      z3 += c[187] * S0 + c[188] * D0;
-      z4 += c[191] * S0 + c[192] * D0;
-      z5 += c[195] * S0 + c[196] * D0;
-      z6 += c[199] * S0 + c[200] * D0;
-      z7 += c[203] * S0 + c[204] * D0;
-    }
-    x0 = z0;
-    x1 = z1;
-    x2 = z2;
-    x3 = z3;
-    x4 = z4;
-    x5 = z5;
-    x6 = z6;
-    x7 = z7;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 12 + 2];
-      x1 += w[i * 12 + 3];
-      x2 += w[i * 12 + 4];
-      x3 += w[i * 12 + 5];
-      x4 += w[i * 12 + 6];
-      x5 += w[i * 12 + 7];
-      x6 += w[i * 12 + 8];
-      x7 += w[i * 12 + 9];
-      y = w[i * 12 + 10];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[173] * S + c[174] * D;
-      x1 += c[177] * S + c[178] * D;
-      x2 += c[181] * S + c[182] * D;
-      x3 += c[185] * S + c[186] * D;
-      x4 += c[189] * S + c[190] * D;
-      x5 += c[193] * S + c[194] * D;
-      x6 += c[197] * S + c[198] * D;
-      x7 += c[201] * S + c[202] * D;
-      y += c[205] * S + c[206] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * x6 + y7 * x7 + y8 * u + y9 * v + y13 + y14 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = x3;
-  s[4] = x4;
-  s[5] = x5;
-  s[6] = x6;
-  s[7] = x7;
-  s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
-  if (to > from) { s[13] = vs; s[14] = vd; }
-}
-
-/** By number of states. */
-export const SMOOTH_KERNELS = [smooth0, smooth1, smooth2, smooth3, smooth4, smooth5, smooth6, smooth7, smooth8];
+/** By numbers of trapezoidal and of stiff states, "2 1". */
+export const SMOOTH_KERNELS: Readonly<Record<string, Kernel>> = {
+  '0 0': smooth0_0,
+  '0 1': smooth0_1,
+  '0 2': smooth0_2,
+  '0 3': smooth0_3,
+  '1 0': smooth1_0,
+  '1 1': smooth1_1,
+  '1 2': smooth1_2,
+  '1 3': smooth1_3,
+  '2 0': smooth2_0,
+  '2 1': smooth2_1,
+  '2 2': smooth2_2,
+  '2 3': smooth2_3,
+  '3 0': smooth3_0,
+  '3 1': smooth3_1,
+  '3 2': smooth3_2,
+  '3 3': smooth3_3,
+  '4 0': smooth4_0,
+  '5 0': smooth5_0,
+};

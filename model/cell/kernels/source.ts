@@ -1,8 +1,9 @@
 /**
- * The text of the kernels: one function for each law and number of states, unrolled, its coefficients in local constants. Written at build time,
+ * The text of the kernels: one function for each law and shape (how many trapezoidal and stiff states), unrolled, its coefficients in local constants. Written at build time,
  * because code made at run time is refused by the page's policy; in TypeScript for the tool and in C for the bench, from the same template.
  *
- * Law      overdrives a, b of the two ends for no channel current are linear in old states, inputs and currents; with the current I they are
+ * Law      each row remembers one sum of the past; overdrives a, b of the two ends for no channel current are linear in these, the inputs and
+ *          the constants; with the current I they are
  *          a − αI and b + γI, and I = F(a − αI) − F(b + γI), which has one solution as its two sides move apart monotonically for α, γ ≥ 0.
  *          Beyond the knee F of the driving end is multiplied by 1 + λ·(the overdrive by which the other end is past VGS(off))
  * Scheme   square law: a quadratic in each region, roots as 2c/(q + √…), free of cancellation; the root that is consistent is the only one.
@@ -14,8 +15,12 @@
 import type { Law } from '../../design/types.ts';
 import * as L from './layout.ts';
 
-/** Kernels are written out for these numbers of states. */
-export const STATE_COUNTS = [0, 1, 2, 3, 4, 5, 6, 7, 8];
+/** Kernels are written out for these numbers of trapezoidal and of stiff states; looped.ts serves the others. */
+export const SHAPES: readonly (readonly [trapezoidal: number, stiff: number])[] = [
+  ...[0, 1, 2, 3].flatMap((trapezoidal) => [0, 1, 2, 3].map((stiff) => [trapezoidal, stiff] as const)),
+  [4, 0],
+  [5, 0],
+];
 const NEWTON_STEPS = 12;
 
 interface Language {
@@ -45,127 +50,137 @@ const c: Language = {
 
 /** The TypeScript module with all kernels of one law. */
 export function kernelModule(law: Law): string {
-  const kernels = STATE_COUNTS.map((n) => kernel(law, n, typescript)).join('\n\n');
-  const helpers = law === 'square' ? 'bent, slopeAt' : law === 'gradual' ? 'searched, slopeAt' : 'searched, slopeAt, termAt';
+  const kernels = SHAPES.map((shape) => kernel(law, shape, typescript)).join('\n\n');
+  const helpers = law === 'square' ? 'bent, evaluate' : 'evaluate, searched';
   return `/**
- * Kernels of the ${law} law, one for each number of states: written from source.ts by \`npm run kernels\`, where the method is explained. Not to be edited.
+ * Kernels of the ${law} law by number of trapezoidal and of stiff states: written from source.ts by \`npm run kernels\`, where the method is
+ * explained. Not to be edited.
  *
- * Each advances a cell over the samples \`from\` to \`to\`: \`c\` coefficients, \`t\` the law's table, \`w\` noise (or empty) and \`s\` state as in layout.ts, \`audio\` and
- * \`control\` in V, \`output\` in V.
+ * Each advances a cell over the samples \`from\` to \`to\`: \`c\` coefficients, \`t\` the law's table, \`w\` noise (or empty) and \`s\` state as in
+ * layout.ts, \`audio\` and \`control\` in V, \`output\` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { ${helpers} } from './channel.ts';
+import type { Kernel } from './kernel.ts';
 import { conduct } from './ports.ts';
 
 ${kernels}
 
-/** By number of states. */
-export const ${law.toUpperCase()}_KERNELS = [${STATE_COUNTS.map((n) => `${law}${n}`).join(', ')}];
+/** By numbers of trapezoidal and of stiff states, "2 1". */
+export const ${law.toUpperCase()}_KERNELS: Readonly<Record<string, Kernel>> = {
+${SHAPES.map((shape) => `  '${shape.join(' ')}': ${kernelName(law, shape)},`).join('\n')}
+};
 `;
 }
 
-/** The same kernel in C, for the bench. */
-export function kernelInC(law: Law, stateCount: number): string {
-  return kernel(law, stateCount, c);
+type Shape = readonly [trapezoidal: number, stiff: number];
+
+function kernelName(law: Law, [trapezoidal, stiff]: Shape): string {
+  return `${law}${trapezoidal}_${stiff}`;
 }
 
-function kernel(law: Law, n: number, language: Language): string {
+/** The same kernel in C, for the bench. */
+export function kernelInC(law: Law, shape: Shape): string {
+  return kernel(law, shape, c);
+}
+
+function kernel(law: Law, shape: Shape, language: Language): string {
+  const [trapezoidal, stiff] = shape;
+  const n = trapezoidal + stiff;
   const row = L.rowLayout(n);
+  const past = L.memoryLayout(n);
   const all = L.coefficientLayout(n);
+  const slots = L.slotStart(trapezoidal, stiff);
   const states = Array.from({ length: n }, (_, i) => i);
+  const stiffStates = states.slice(trapezoidal);
   const { constant, variable } = language;
   const rowName = (r: number) => (r === 0 ? 'a' : r === 1 ? 'b' : r === all.outputRow ? 'y' : `n${r - 2}_`);
   const device = (index: number) => `c[${all.device + index}]`;
   const weight = (r: number, k: number) => `c[${all.junction + r * L.JUNCTION_WIDTH + k}]`;
-  const slot = (index: number) => `s[${n + index}]`;
-  const linear = (r: number, isNew: boolean) => {
+  const oldWeight = (i: number, k: number) => `c[${all.memoryJunction + i * L.JUNCTION_WIDTH + k}]`;
+  const slot = (index: number) => `s[${slots + index}]`;
+  const linear = (r: number, from: string) => {
     const p = rowName(r);
-    const terms = states.map((i) => `${p}${i} * x${i}`);
-    terms.push(`${p}${row.newU} * u`, `${p}${row.newU + 1} * v`);
-    if (n > 0 && !isNew) terms.push(`${p}${row.oldU} * u0`, `${p}${row.oldU + 1} * v0`, `${p}${row.oldI} * I0`);
-    terms.push(`${p}${row.constant}`);
+    return [...states.map((i) => `${p}${i} * ${from}${i}`), `${p}${row.u} * u`, `${p}${row.u + 1} * v`, `${p}${row.constant}`].join(' + ');
+  };
+  /** What a row remembers: a stiff row the past of the stiff states, a trapezoidal one their last value and the old current too. */
+  const memory = (i: number) => {
+    const isStiff = i >= trapezoidal;
+    const terms = states.map((k) => `m${i}_${k} * ${isStiff && k >= trapezoidal ? 'p' : 'x'}${k}`);
+    terms.push(`m${i}_${past.oldU} * u0`, `m${i}_${past.oldU + 1} * v0`);
+    if (!isStiff) terms.push(`m${i}_${past.oldI} * I0`);
     return terms.join(' + ');
   };
 
-  const [head, noisy, loop] = language.open(`${law}${n}`).split('\n');
+  const [head, noisy, loop] = language.open(kernelName(law, shape)).split('\n');
   const lines: string[] = [head, noisy];
   for (let r = 0; r < all.rows; r++) {
-    for (let k = 0; k < row.width; k++) {
-      const unused = r === all.outputRow && n > 0 && k >= row.oldU && k <= row.oldI;
-      if (!unused) lines.push(`  ${constant} ${rowName(r)}${k} = c[${r * row.width + k}];`);
+    for (let k = 0; k < row.width; k++) lines.push(`  ${constant} ${rowName(r)}${k} = c[${r * row.width + k}];`);
+  }
+  for (const i of states) {
+    for (let k = 0; k < past.width - (i >= trapezoidal ? 1 : 0); k++) {
+      lines.push(`  ${constant} m${i}_${k} = c[${all.memory + i * past.width + k}];`);
     }
   }
   lines.push(...deviceConstants(law, device).map(([name, value]) => `  ${constant} ${name} = ${value};`));
   lines.push(...states.map((i) => `  ${variable} x${i} = s[${i}];`));
+  stiffStates.forEach((i, k) => {
+    lines.push(`  ${variable} e${i} = s[${n + k}], f${i} = s[${n + stiff + k}], g${i} = s[${n + 2 * stiff + k}];`);
+  });
   if (n > 0) lines.push(`  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`);
   lines.push(
     `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
     loop,
   );
 
-  const body: string[] = [
-    `${constant} u = audio[i], v = control[i];`,
-    `${variable} a = ${linear(0, false)};`,
-    `${variable} b = ${linear(1, false)};`,
-  ];
-  if (n > 0) {
-    body.push(
-      'if (S0 != 0 || D0 != 0) {',
-      `  a += ${weight(0, L.OLD_S)} * S0 + ${weight(0, L.OLD_D)} * D0;`,
-      `  b += ${weight(1, L.OLD_S)} * S0 + ${weight(1, L.OLD_D)} * D0;`,
-      '}',
-    );
+  const body: string[] = [`${constant} u = audio[i], v = control[i];`];
+  for (const i of stiffStates) body.push(`${constant} p${i} = 3.5 * x${i} - 2.25 * e${i} + ${5 / 6} * f${i} - 0.125 * g${i};`);
+  for (const i of states) body.push(`${variable} r${i} = ${memory(i)};`);
+  if (trapezoidal > 0) {
+    body.push('if (S0 != 0 || D0 != 0) {');
+    for (const i of states.slice(0, trapezoidal)) body.push(`  r${i} += ${oldWeight(i, L.BY_S)} * S0 + ${oldWeight(i, L.BY_D)} * D0;`);
+    body.push('}');
   }
-  const aI = `a${row.newI}`;
-  const bI = `b${row.newI}`;
-  const places = `${all.device}, ${row.newI}, ${row.width + row.newI}`;
+  const aI = `a${row.current}`;
+  const bI = `b${row.current}`;
+  const places = `${all.device}, ${row.current}, ${row.width + row.current}`;
   const noise = (k: number) => `w[i * ${all.rows + 1} + ${k}]`;
   body.push(
+    `${variable} a = ${linear(0, 'r')};`,
+    `${variable} b = ${linear(1, 'r')};`,
     `${variable} I = 0, S = 0, D = 0, J = 0;`,
     'if (noisy) {',
-    `  J = ${noise(all.rows)} * ${language.sqrt}(0.5 * (slopeAt(c, t, ${all.device}, vs) + slopeAt(c, t, ${all.device}, vd)));`,
+    `  evaluate(c, t, ${all.device}, vs, s, ${slots + L.TERM_S}); evaluate(c, t, ${all.device}, vd, s, ${slots + L.TERM_D});`,
+    `  J = ${noise(all.rows)} * ${language.sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
     `  a += ${noise(0)} + ${aI} * J;`,
     `  b += ${noise(1)} + ${bI} * J;`,
     '}',
   );
-  body.push(...(law === 'square' ? squareSolution(aI, bI, places, language) : newtonSolution(law, aI, bI, places, slot, language)));
+  body.push(...(law === 'square' ? squareSolution(aI, bI, places, slot, language) : newtonSolution(law, aI, bI, places, slot, language)));
   body.push(
     'if (vs > on || vd > on) {',
-    `  conduct(c, t, ${places}, ${all.junction}, s, ${n}, a, b, I);`,
+    `  conduct(c, t, ${places}, ${all.junction}, s, ${slots}, a, b, I);`,
     `  I = ${slot(L.CHANNEL_A)}; S = ${slot(L.JUNCTION_S)}; D = ${slot(L.JUNCTION_D)}; vs = ${slot(L.OVERDRIVE_S)}; vd = ${slot(L.OVERDRIVE_D)};`,
     '}',
+    'I += J;',
   );
-  body.push('I += J;');
-  states.forEach((i) => {
-    body.push(`${variable} z${i} = ${linear(2 + i, false)} + ${rowName(2 + i)}${row.newI} * I;`);
-  });
-  if (n > 0) {
-    body.push('if (S0 != 0 || D0 != 0) {');
-    states.forEach((i) => {
-      body.push(`  z${i} += ${weight(2 + i, L.OLD_S)} * S0 + ${weight(2 + i, L.OLD_D)} * D0;`);
-    });
-    body.push('}');
-  }
-  states.forEach((i) => {
-    body.push(`x${i} = z${i};`);
-  });
+  for (const i of stiffStates) body.push(`g${i} = f${i}; f${i} = e${i}; e${i} = x${i};`);
+  for (const i of states) body.push(`x${i} = ${linear(2 + i, 'r')} + ${rowName(2 + i)}${row.current} * I;`);
   body.push(`${variable} y = 0;`, 'if (noisy) {');
-  states.forEach((i) => {
-    body.push(`  x${i} += ${noise(2 + i)};`);
-  });
-  body.push(`  y = ${noise(all.outputRow)};`, '}');
-  body.push('if (S != 0 || D != 0) {');
-  states.forEach((i) => {
-    body.push(`  x${i} += ${weight(2 + i, L.NEW_S)} * S + ${weight(2 + i, L.NEW_D)} * D;`);
-  });
-  body.push(`  y += ${weight(all.outputRow, L.NEW_S)} * S + ${weight(all.outputRow, L.NEW_D)} * D;`, '}');
-  body.push(`output[i] = y + ${linear(all.outputRow, true)} + y${row.newI} * I;`);
+  for (const i of states) body.push(`  x${i} += ${noise(2 + i)};`);
+  body.push(`  y = ${noise(all.outputRow)};`, '}', 'if (S != 0 || D != 0) {');
+  for (const i of states) body.push(`  x${i} += ${weight(2 + i, L.BY_S)} * S + ${weight(2 + i, L.BY_D)} * D;`);
+  body.push(`  y += ${weight(all.outputRow, L.BY_S)} * S + ${weight(all.outputRow, L.BY_D)} * D;`, '}');
+  body.push(`output[i] = y + ${linear(all.outputRow, 'x')} + y${row.current} * I;`);
   if (n > 0) body.push('u0 = u; v0 = v;');
   body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');
   lines.push(...body.map((line) => `    ${line}`), '  }');
 
   lines.push(...states.map((i) => `  s[${i}] = x${i};`));
+  stiffStates.forEach((i, k) => {
+    lines.push(`  s[${n + k}] = e${i}; s[${n + stiff + k}] = f${i}; s[${n + 2 * stiff + k}] = g${i};`);
+  });
   if (n > 0) lines.push(`  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`);
   lines.push(
     `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
@@ -186,7 +201,7 @@ function deviceConstants(law: Law, device: (index: number) => string): [string, 
   return law === 'gradual' ? shaped : [...shaped, ['pieces', device(L.PIECES)]];
 }
 
-function squareSolution(aI: string, bI: string, places: string, { constant, sqrt }: Language): string[] {
+function squareSolution(aI: string, bI: string, places: string, slot: (index: number) => string, { constant, sqrt }: Language): string[] {
   return [
     'if (a > 0 || b > 0) {',
     `  ${constant} q = 1 + fall * a + rise * b;`,
@@ -198,7 +213,7 @@ function squareSolution(aI: string, bI: string, places: string, { constant, sqrt
     '    } else {',
     `      I = -2 * scale * b * b / (1 + rise * b + ${sqrt}(1 + 2 * rise * b));`,
     '    }',
-    `    if (lambda != 0) I = bent(c, t, ${places}, a, b, I);`,
+    `    if (lambda != 0) { bent(c, t, ${places}, a, b, I, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; }`,
     '  }',
     '}',
     `vs = a + ${aI} * I;`,
@@ -226,7 +241,7 @@ function lawText(law: Law, v: string, F: string, f: string, { constant, sqrt }: 
     `    ${constant} piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;`,
     `    ${F} = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));`,
     `    ${f} = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));`,
-    `  } else { ${F} = termAt(c, t, DEVICE, ${v}); ${f} = slopeAt(c, t, DEVICE, ${v}); }`,
+    `  } else { evaluate(c, t, DEVICE, ${v}, s, TERM); ${F} = s[TERM]; ${f} = s[TERM + 1]; }`,
     '}',
   ];
 }
@@ -234,7 +249,8 @@ function lawText(law: Law, v: string, F: string, f: string, { constant, sqrt }: 
 function newtonSolution(law: Law, aI: string, bI: string, places: string, slot: (index: number) => string, language: Language): string[] {
   const { variable } = language;
   const device = places.split(',')[0];
-  const text = (v: string, F: string, f: string) => lawText(law, v, F, f, language).map((line) => `  ${line.replaceAll('DEVICE', device)}`);
+  const text = (v: string, F: string, f: string) =>
+    lawText(law, v, F, f, language).map((line) => `  ${line.replaceAll('DEVICE', device).replaceAll('TERM', slot(L.TERM_S).slice(2, -1))}`);
   return [
     'I = 2 * I0 - E0;',
     `${variable} settled = 0;`,
@@ -253,7 +269,7 @@ function newtonSolution(law: Law, aI: string, bI: string, places: string, slot: 
     `  ${language.constant} moved = (${bI} - ${aI}) * change;`,
     '  if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }',
     '}',
-    `if (settled == 0) { I = searched(c, t, ${places}, a, b); ${slot(L.FALLBACKS)} += 1; }`,
+    `if (settled == 0) { searched(c, t, ${places}, a, b, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; ${slot(L.FALLBACKS)} += 1; }`,
     `vs = a + ${aI} * I; vd = b + ${bI} * I;`,
   ];
 }

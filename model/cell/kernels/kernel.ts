@@ -1,0 +1,12 @@
+/** What every kernel is: see source.ts. `audio` and `output` may be one array. */
+export type Kernel = (
+  c: Float64Array,
+  t: Float64Array,
+  w: Float64Array,
+  s: Float64Array,
+  audio: Float64Array,
+  control: Float64Array,
+  output: Float64Array,
+  from: number,
+  to: number,
+) => void;
