@@ -96,22 +96,17 @@ function Present({ plot, period }: { readonly plot: GatePlot; readonly period: G
   const bench = useBench();
   const playing = usePlaying();
   const point = useRef<SVGCircleElement>(null);
-  const latest = useRef({ plot, period });
-  latest.current = { plot, period };
   useEffect(() => {
     let before = 0;
     return bench.live.subscribe((live) => {
       if (live === null || point.current === null) return;
-      const { x, y, area } = latest.current.plot;
-      const turn = turnOf(latest.current.period, live.controlV, live.controlV < before);
+      const { x, y, area } = plot;
+      const turn = turnOf(period, live.controlV, live.controlV < before);
       before = live.controlV;
       const height = Math.max(area.top, Math.min(area.bottom, toPixel(y, live.gateSourceV)));
-      point.current.setAttribute(
-        'cx',
-        String(latest.current.period.steady ? (area.left + area.right) / 2 : x.start + turn * (x.end - x.start)),
-      );
+      point.current.setAttribute('cx', String(period.steady ? (area.left + area.right) / 2 : x.start + turn * (x.end - x.start)));
       point.current.setAttribute('cy', String(height));
     });
-  }, [bench]);
+  }, [bench, plot, period]);
   return <circle ref={point} class={playing ? 'present' : 'present hollow'} cx={plot.start.x} cy={plot.start.y} r={4.5} />;
 }
