@@ -73,7 +73,7 @@ describe('sound on the built page, after a real click', () => {
       await page.keyboard.press('Enter');
     }
     await page.getByRole('combobox', { name: 'Oversampling' }).selectOption('2');
-    await page.getByRole('combobox', { name: 'Feedback from drain to gate' }).selectOption({ index: 0 });
+    await page.getByRole('combobox', { name: 'Feedback from drain to gate' }).first().selectOption({ index: 0 });
     await page.waitForTimeout(700);
     expect(await page.getByRole('spinbutton', { name: /^R1, in series/ }).textContent()).toContain('6.80');
     expect(await reading()).not.toBe(before);

@@ -53,7 +53,7 @@ export const openSound: OpenSound = async (sampleRateHz, cellFor, events) => {
   context.resume().catch(() => undefined);
   try {
     await context.suspend();
-    const [{ createPlayers }] = await Promise.all([import('./players.ts'), context.audioWorklet.addModule(workletUrl)]);
+    const { createPlayers } = await loadModules(context);
     const node = await openNode(context, cellFor(context.sampleRate), events);
     await resume(context);
     return createSound(context, node, createPlayers(context), events);
@@ -62,6 +62,16 @@ export const openSound: OpenSound = async (sampleRateHz, cellFor, events) => {
     throw error;
   }
 };
+
+function loadModules(context: AudioContext) {
+  const modules = Promise.all([import('./players.ts'), context.audioWorklet.addModule(workletUrl)]);
+  return modules.then(
+    ([players]) => players,
+    () => {
+      throw new Error('Part of this page could not be fetched, so sound cannot start. Reload the page, then press Start.');
+    },
+  );
+}
 
 function openContext(sampleRateHz: number): AudioContext {
   try {
@@ -105,9 +115,15 @@ function createSound(context: AudioContext, first: AudioWorkletNode, players: Pl
     async rebuild(cell) {
       await quieten();
       retireNode(node);
+      const goesOn = wanted;
+      wanted = false;
+      await context.suspend();
       node = await openNode(context, cell, events);
       node.connect(context.destination);
       if (clip !== null) players.loop(clip, node);
+      if (!goesOn) return;
+      wanted = true;
+      await resume(context);
     },
     async suspend() {
       wanted = false;

@@ -38,7 +38,7 @@ type Shared =
 type Level = 'listenDb' | 'setListenDb' | 'ceilingDbfs' | 'setCeilingDbfs';
 
 export interface Listening extends Pick<Bench, Shared | Level> {
-  /** Puts another clip in place of the source; sound that plays goes on. Failures go to the notes. */
+  /** Puts another clip in place of the source; sound that plays goes on. Rejects, and changes nothing, where the clip cannot be played. */
   setSource(clip: Clip, kind: SourceInfo['kind']): Promise<void>;
   /** What takes need of it. */
   readonly forTakes: TakeSource;
@@ -89,6 +89,8 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       takes().cutShort();
       levels.clear();
       if (state.peek() === 'playing') line.send({ type: 'mute', on: muted.peek() });
+      // Stop was pressed while it was made anew.
+      if (state.peek() === 'stopped') suspend();
     },
     broken(givenUp) {
       if (!givenUp) return notes.fault('The audio processor failed and was started again.');
@@ -230,6 +232,11 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       return refused;
     },
     async setSource(next, kind) {
+      try {
+        compile(next.sampleRateHz, next.channels.length);
+      } catch (error) {
+        throw new RangeError(`“${next.title}” cannot be played: ${sentenceOf(error)}.`);
+      }
       clip = next;
       source.value = { title: next.title, seconds: clipSeconds(next), kind };
       if (line.sound() === null) return;

@@ -163,6 +163,9 @@ describe('sources', () => {
     const sound = await startSound();
     await bench.openAudio(new File([new Uint8Array(0)], 'nothing.wav'));
     await bench.choosePhrase('kazoo');
+    await bench.openAudio(fileOf([createNoise(1, 400, 0.5)], 4000, 'phone.wav'));
+    expect(sentences()[2]).toBe('“phone.wav” cannot be played: the sample rate is 4000 Hz; expected 8000 to 384000 Hz.');
+    expect(bench.source.value.title).toBe('Guitar chords');
     expect(sentences()[0]).toBe('“nothing.wav” is empty; expected a sound file.');
     expect(sentences()[1]).toContain('There is no phrase “kazoo”; expected one of guitar');
     expect(sound.loops).toHaveLength(1);
