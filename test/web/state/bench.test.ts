@@ -317,6 +317,10 @@ describe('takes', () => {
     parts.renderWorkers[1].answer({ type: 'fault', sentence: 'cell.seriesOhm is 0' });
     await faulty;
     expect(sentences()).toEqual(['cell.seriesOhm is 0']);
+    const broken = bench.renderClip();
+    parts.renderWorkers[2].fail('The worker failed.');
+    await broken;
+    expect(sentences()).toEqual(['cell.seriesOhm is 0', 'The worker failed.']);
     expect(bench.takes.value).toEqual([]);
     expect(parts.renderWorkers.every((worker) => worker.ended)).toBe(true);
   });
