@@ -159,6 +159,22 @@ describe('sources', () => {
     expect(second.loops.at(-1)?.channels).toEqual([createNoise(1, 4410, 0.5)]);
   });
 
+  test('a value changed while the processor is made anew reaches the new one', async () => {
+    const sound = await startSound();
+    await bench.choosePhrase('band');
+    const { rebuild } = sound;
+    sound.rebuild = async (cell) => {
+      bench.setValue('cell.seriesOhm', 6800);
+      vi.advanceTimersByTime(50);
+      await rebuild.call(sound, cell);
+    };
+    await bench.choosePhrase('guitar');
+    const { numbers } = sound.cells[2];
+    expect(sound.last('move')?.numbers.cells).toHaveLength(1);
+    expect(JSON.stringify(sound.last('move')?.numbers)).not.toBe(JSON.stringify(numbers));
+    expect(sentences()).toEqual([]);
+  });
+
   test('a file that is no sound is named, and what plays goes on', async () => {
     const sound = await startSound();
     await bench.openAudio(new File([new Uint8Array(0)], 'nothing.wav'));
