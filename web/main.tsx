@@ -5,7 +5,10 @@ import './style/tokens.css';
 import './style/type.css';
 import './style/layout.css';
 import './style/components.css';
+import './style/panels.css';
+import './style/tables.css';
 import './style/figures.css';
+import './style/narrow.css';
 
 const place = document.getElementById('sheet');
 if (place === null) throw new Error('The page has no place for the sheet');

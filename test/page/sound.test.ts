@@ -9,8 +9,12 @@ import { installSoundProbe } from './soundProbe.ts';
 
 const asset = (path: string) => readFileSync(new URL(`../../assets/${path}`, import.meta.url));
 
-/** Of sound that plays for a minute; a machine that others share has gaps of its own, which the pass-through counts. */
 const RUN_SEC = 60;
+/**
+ * Gaps beyond the pass-through's that the machine's other work may cause, which hits the busier of two threads first: with a load average of 5 on two
+ * cores 3 were seen, without other work none. A chain that is too slow has several each second.
+ */
+const MOST_MORE_GAPS = 6;
 
 let site: Site;
 let browser: Browser;
@@ -73,7 +77,7 @@ describe('sound on the built page, after a real click', () => {
       await page.keyboard.press('Enter');
     }
     await page.getByRole('combobox', { name: 'Oversampling' }).selectOption('2');
-    await page.getByRole('combobox', { name: 'Feedback from drain to gate' }).selectOption({ index: 0 });
+    await page.getByRole('combobox', { name: 'Feedback from drain to gate' }).first().selectOption({ index: 0 });
     await page.waitForTimeout(700);
     expect(await page.getByRole('spinbutton', { name: /^R1, in series/ }).textContent()).toContain('6.80');
     expect(await reading()).not.toBe(before);
@@ -165,7 +169,7 @@ describe('sound on the built page, after a real click', () => {
     expect(Buffer.compare(bytes, expected)).toBe(0);
   });
 
-  test(`in ${RUN_SEC} s it drops out no more often, but for chance, than a processor that only passes its input on`, async () => {
+  test(`in ${RUN_SEC} s it drops out hardly more often than a processor that only passes its input on`, async () => {
     await startSound();
     await page.evaluate(startPassThrough);
     // The browser brings its counts up to date once a second.
@@ -175,8 +179,7 @@ describe('sound on the built page, after a real click', () => {
     const after = await page.evaluate(() => window.soundProbe.underruns());
     const [cell, pass] = after.map((count, i) => (count ?? Number.NaN) - (before[i] ?? Number.NaN));
     console.log(`gaps in ${RUN_SEC} s: cell ${cell}, pass-through ${pass}`);
-    // Rare events scatter by the root of their count.
-    expect(cell).toBeLessThanOrEqual(pass + 2 * Math.sqrt(pass + 1));
+    expect(cell).toBeLessThanOrEqual(pass + MOST_MORE_GAPS);
   });
 });
 
@@ -202,7 +205,7 @@ function eightBitWav(rateHz: number): Buffer {
 async function startPassThrough(): Promise<void> {
   const worklet = performance.getEntriesByType('resource').find(({ name }) => name.includes('fettle.worklet'));
   if (worklet === undefined) throw new Error('the page has fetched no worklet');
-  const context = new AudioContext({ sampleRate: 48000, latencyHint: 'balanced' });
+  const context = new AudioContext({ sampleRate: 48000, latencyHint: 'playback' });
   await context.audioWorklet.addModule(worklet.name);
   const source = new OscillatorNode(context);
   const pass = new AudioWorkletNode(context, 'fettle-pass');

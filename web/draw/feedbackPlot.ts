@@ -19,6 +19,8 @@ export interface FeedbackPlot {
   readonly xTicks: readonly Tick[];
   readonly yTicks: readonly Tick[];
   readonly thd: string;
+  /** The same as points, ascending in x. */
+  readonly thdPoints: readonly Point[];
   readonly h2: string;
   readonly h3: string;
   readonly least: { readonly k: number; readonly thd: number; readonly x: number; readonly y: number };
@@ -29,6 +31,9 @@ export interface FeedbackPlot {
 
 /** Decades shown at most, from the highest value down: a deeper null runs out of the frame at its foot. */
 const MOST_DECADES = 4;
+/** The frame's ends, fractions, however little distortion there is: 0.01 % and 0.0001 %. */
+const LEAST_TOP = 8e-5;
+const LEAST_BOTTOM = 1e-6;
 const MARGINS = { left: 40, right: 10, top: 8, bottom: 24 };
 
 /** Points drawn for each one measured: between two, harmonics go in straight lines and THD follows from them, so that a null looks like one. */
@@ -55,8 +60,9 @@ export function plotFeedback(measured: readonly CurvePoint[], width: number, hei
   const x = linearScale(curve[0].k, curve[curve.length - 1].k, area.left, area.right);
   const { from, to } = thdRange(curve);
   const y = logScale(from, to, area.bottom, area.top);
-  const path = (pick: (point: CurvePoint) => number) =>
-    linePath(curve.map((point) => ({ x: toPixel(x, point.k), y: Math.min(toPixel(y, Math.abs(pick(point))), area.bottom + 40) })));
+  const points = (pick: (point: CurvePoint) => number): Point[] =>
+    curve.map((point) => ({ x: toPixel(x, point.k), y: Math.min(toPixel(y, Math.abs(pick(point))), area.bottom + 40) }));
+  const thdPoints = points((point) => point.thd);
   const lowest = curve.reduce((best, point) => (point.thd < best.thd ? point : best));
   return {
     area,
@@ -64,9 +70,10 @@ export function plotFeedback(measured: readonly CurvePoint[], width: number, hei
     y,
     xTicks: linearTicks(x.from, x.to, 6).map((k) => ({ at: toPixel(x, k), words: decimals(k, 2) })),
     yTicks: yTicks(y),
-    thd: path((point) => point.thd),
-    h2: path((point) => point.h2Signed),
-    h3: path((point) => point.h3),
+    thd: linePath(thdPoints),
+    thdPoints,
+    h2: linePath(points((point) => point.h2Signed)),
+    h3: linePath(points((point) => point.h3)),
     least: { ...lowest, x: toPixel(x, lowest.k), y: Math.min(toPixel(y, lowest.thd), area.bottom) },
     h2Label: labelOn(curve, (point) => Math.abs(point.h2Signed), x, y, 0.61),
     h3Label: labelOn(curve, (point) => Math.abs(point.h3), x, y, 0.1),
@@ -74,11 +81,11 @@ export function plotFeedback(measured: readonly CurvePoint[], width: number, hei
 }
 
 function thdRange(curve: readonly CurvePoint[]): { from: number; to: number } {
-  const highest = Math.max(...curve.map((point) => point.thd), 1e-6);
+  const highest = Math.max(...curve.map((point) => point.thd), LEAST_TOP);
   const top = roundUp(highest * 1.15);
   const lowest = Math.max(1e-9, Math.min(...curve.map((point) => point.thd)));
   const bottom = 10 ** Math.floor(Math.log10(lowest));
-  return { from: Math.max(bottom, 10 ** (Math.ceil(Math.log10(top)) - MOST_DECADES), 1e-9), to: top };
+  return { from: Math.max(bottom, 10 ** (Math.ceil(Math.log10(top)) - MOST_DECADES), LEAST_BOTTOM), to: top };
 }
 
 /** The next of 1, 3 and 10 times a power of ten. */
@@ -105,7 +112,17 @@ function labelOn(curve: readonly CurvePoint[], pick: (point: CurvePoint) => numb
   return insideScale(y, value) ? { x: toPixel(x, point.k), y: toPixel(y, value) } : null;
 }
 
+/** The side of a point on which its label crosses no curve: towards the null above the curve, away from it below. */
+export function labelSide(plot: FeedbackPlot, { x, y }: Point): 'left' | 'right' {
+  const curve = plot.thdPoints.find((point) => point.x >= x) ?? plot.thdPoints[plot.thdPoints.length - 1];
+  const beforeNull = x < plot.least.x;
+  const free = y > curve.y + 4 ? !beforeNull : beforeNull;
+  const room = free ? plot.area.right - x > 90 : x - plot.area.left > 90;
+  return free === room ? 'right' : 'left';
+}
+
 /** Words for the least distortion that k alone can reach. */
 export function leastWords(least: { k: number; thd: number }): string {
+  if (least.thd < 5e-6) return `under 0.001\u2009% at ${decimals(least.k, 3)}`;
   return `least ${percentText(least.thd)}\u2009% at ${decimals(least.k, 3)}`;
 }

@@ -1,18 +1,8 @@
-/**
- * Fig. 3: the gate over one period of the control, the drain at rest.
- *
- * Law      gate = (1 − k)·vC + k·lowpass(vC, τ), τ = (R2 + R3)·C1, for resistors with a blocking capacitor; without one the gate is the
- *          rest fraction of vC at every rate
- * Valid    while the gate draws no current
- */
-import type { Cell, Control } from '../../model/design/types.ts';
-import { feedbackFraction, restGateFraction } from '../../model/design/feedback.ts';
+/** Fig. 3: the gate over one period of the control, without audio, against VGS(off). */
 import { linePath, type Point } from './line.ts';
 import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
 import { linearScale, linearTicks, type Scale, toPixel } from './scale.ts';
 import { decimals } from './words.ts';
-
-export const PERIOD_STEPS = 240;
 
 /** Forward gate voltage from which this figure calls the gate conducting, V: 0.7 V at 1 mA (data sheets), about 0.5 V at microamperes. */
 const GATE_ON_V = 0.5;
@@ -20,10 +10,13 @@ const GATE_ON_V = 0.5;
 export interface GatePeriod {
   /** One period, s; of a control that does not move, 1 s to draw it over. */
   readonly seconds: number;
-  /** PERIOD_STEPS + 1 values, V, the last equal to the first. */
+  /** V at even times, the last value equal to the first: the period is closed. */
   readonly control: Float64Array;
   readonly gate: Float64Array;
+  readonly drain: Float64Array;
   readonly steady: boolean;
+  /** VGS(off) at the temperature of the circuit, V, negative for an n-channel part. */
+  readonly gateOffV: number;
 }
 
 export type Region = 'ohmic' | 'off' | 'conducting';
@@ -47,46 +40,6 @@ export interface GatePlot {
   readonly deepest: Point & { readonly pastV: number };
 }
 
-/** Null for controls whose period is not known before the sound: an envelope, an external signal. */
-export function gatePeriod(control: Control, cell: Cell): GatePeriod | null {
-  if (control.source === 'fixed') {
-    const values = new Float64Array(PERIOD_STEPS + 1).fill(control.controlV);
-    return { seconds: 1, control: values, gate: values.map((v) => v * restGateFraction(cell)), steady: true };
-  }
-  if (control.source !== 'lfo') return null;
-  const seconds = 1 / control.rateHz;
-  const values = Float64Array.from({ length: PERIOD_STEPS + 1 }, (_, n) => {
-    const half = (control.toV - control.fromV) / 2;
-    return control.fromV + half + half * waveAt(control.shape, n / PERIOD_STEPS, control.edgeSec * control.rateHz);
-  });
-  return { seconds, control: values, gate: gateFrom(values, seconds, cell), steady: false };
-}
-
-/** −1 to 1 over a period that starts midway upwards; `edge` is the share of the period that an edge of the square takes, or a ramp's flyback. */
-function waveAt(shape: Extract<Control, { source: 'lfo' }>['shape'], turn: number, edge: number): number {
-  const phase = turn - Math.floor(turn);
-  if (shape === 'sine') return Math.sin(2 * Math.PI * phase);
-  const triangle = phase < 0.25 ? 4 * phase : phase < 0.75 ? 2 - 4 * phase : 4 * phase - 4;
-  if (shape === 'triangle') return triangle;
-  const share = Math.max(edge, 1e-3);
-  if (shape === 'square') return Math.max(-1, Math.min(1, (triangle * 0.5) / share));
-  const turned = phase < 0.5 ? phase : phase - 1;
-  const ramp =
-    (0.5 - Math.abs(turned)) / share < 0.5 ? (Math.sign(turned) * (1 - 2 * Math.abs(turned))) / share : (2 * turned) / (1 - share);
-  return shape === 'rising' ? ramp : -ramp;
-}
-
-function gateFrom(control: Float64Array, seconds: number, cell: Cell): Float64Array {
-  const { feedback } = cell;
-  if (feedback.kind !== 'resistor' || feedback.blockingF === null) return control.map((v) => v * restGateFraction(cell));
-  const k = feedbackFraction(cell);
-  const keep = Math.exp(-seconds / PERIOD_STEPS / ((feedback.drainOhm + cell.controlOhm) * feedback.blockingF));
-  const low = new Float64Array(control.length);
-  for (let n = 1; n < control.length; n++) low[n] = keep * low[n - 1] + (1 - keep) * 0.5 * (control[n - 1] + control[n]);
-  const start = low[PERIOD_STEPS] / (1 - keep ** PERIOD_STEPS);
-  return control.map((v, n) => (1 - k) * v + k * (low[n] + start * keep ** n));
-}
-
 export function regionAt(gateV: number, gateOffV: number): Region {
   const towardsOn = gateOffV < 0 ? gateV : -gateV;
   if (towardsOn < -Math.abs(gateOffV)) return 'off';
@@ -95,7 +48,9 @@ export function regionAt(gateV: number, gateOffV: number): Region {
 
 const MARGINS = { left: 46, right: 10, top: 8, bottom: 34 };
 
-export function plotGate(period: GatePeriod, gateOffV: number, width: number, height: number): GatePlot {
+export function plotGate(period: GatePeriod, width: number, height: number): GatePlot {
+  const { gateOffV } = period;
+  const steps = period.gate.length - 1;
   const area = plotArea(width, height, MARGINS);
   const values = [...period.gate, gateOffV, 0];
   const pad = 0.22 * (Math.max(...values) - Math.min(...values));
@@ -106,7 +61,7 @@ export function plotGate(period: GatePeriod, gateOffV: number, width: number, he
     area.top,
   );
   const x = linearScale(0, period.seconds, area.left, area.right);
-  const points = Array.from(period.gate, (v, n) => ({ x: toPixel(x, (n / PERIOD_STEPS) * period.seconds), y: toPixel(y, v) }));
+  const points = Array.from(period.gate, (v, n) => ({ x: toPixel(x, (n / steps) * period.seconds), y: toPixel(y, v) }));
   const past = (v: number) => (gateOffV < 0 ? gateOffV - v : v - gateOffV);
   const deepest = period.gate.reduce((best, v, n) => (past(v) > past(period.gate[best]) + 1e-12 ? n : best), 0);
   const offY = toPixel(y, gateOffV);
@@ -146,10 +101,11 @@ function voltTicks(y: Scale): Tick[] {
 }
 
 function regionRuns(gate: Float64Array, gateOffV: number, x: Scale, seconds: number): { region: Region; from: number; to: number }[] {
+  const steps = gate.length - 1;
   const runs: { region: Region; from: number; to: number }[] = [];
-  for (let n = 0; n < PERIOD_STEPS; n++) {
+  for (let n = 0; n < steps; n++) {
     const region = regionAt((gate[n] + gate[n + 1]) / 2, gateOffV);
-    const to = toPixel(x, ((n + 1) / PERIOD_STEPS) * seconds);
+    const to = toPixel(x, ((n + 1) / steps) * seconds);
     const last = runs.at(-1);
     if (last?.region === region) runs[runs.length - 1] = { ...last, to };
     else runs.push({ region, from: last?.to ?? x.start, to });
@@ -159,13 +115,14 @@ function regionRuns(gate: Float64Array, gateOffV: number, x: Scale, seconds: num
 
 /** Share of the period at which the control has this value, moving this way: where the present point stands. */
 export function turnOf(period: GatePeriod, controlV: number, falling: boolean): number {
+  const steps = period.control.length - 1;
   let best = 0;
   let miss = Number.POSITIVE_INFINITY;
-  for (let n = 0; n < PERIOD_STEPS; n++) {
+  for (let n = 0; n < steps; n++) {
     const slope = period.control[n + 1] - period.control[n];
     const wrongWay = falling ? slope > 0 : slope < 0;
     const distance = Math.abs(period.control[n] - controlV) + (wrongWay ? 1e6 : 0);
     if (distance < miss) [best, miss] = [n, distance];
   }
-  return best / PERIOD_STEPS;
+  return best / steps;
 }

@@ -10,15 +10,24 @@ export interface Box {
 export interface Obstacles {
   /** Values, readings and labels: never hidden if there is any other place. */
   readonly values: readonly Box[];
-  /** Wires, symbols, rules: crossed only when nothing better is left. */
+  /** Wires, symbols, rules: crossed only when nothing nearer is free. */
   readonly lines: readonly Box[];
 }
 
+/** Room between the slip and its value, and the search's grid and reach. All in pixels. */
 const GAP = 2;
+const GRID = 6;
+const REACH_ACROSS = 300;
+const REACH_DOWN = 160;
+
+/** What each fault of a place costs, in pixels of distance that would be walked to avoid it. */
+const HIDES = 1000;
+const OUTSIDE = 3000;
+const CROSSES = 14;
 
 /**
- * Tries below, above, right and left of the anchor, slid along it, and further off; takes the first of the cheapest. All boxes in pixels of
- * one coordinate system; the answer is the slip's top left corner, kept inside `bounds` sideways.
+ * Searches the places round the anchor for the cheapest one, nearest first below it. All boxes in pixels of one coordinate system; the answer is
+ * the slip's top left corner.
  */
 export function placeSlip(
   anchor: Box,
@@ -26,46 +35,45 @@ export function placeSlip(
   obstacles: Obstacles,
   bounds: Box,
 ): { left: number; top: number } {
-  let best = { left: anchor.left, top: anchor.top + anchor.height };
+  const { width, height } = slip;
+  const below = anchor.top + anchor.height + GAP;
+  const above = anchor.top - height - GAP;
+  const near = (box: Box) => box.left < anchor.left + REACH_ACROSS + width && box.left + box.width > anchor.left - REACH_ACROSS - width;
+  const values = [...obstacles.values.filter(near), anchor];
+  const lines = obstacles.lines.filter(near);
+  let best = { left: anchor.left, top: below };
   let bestCost = Number.POSITIVE_INFINITY;
-  for (const [left, top, distance] of candidates(anchor, slip)) {
-    const box = {
-      left: Math.max(bounds.left, Math.min(left, bounds.left + bounds.width - slip.width)),
-      top,
-      width: slip.width,
-      height: slip.height,
-    };
-    const cost = costOf(box, anchor, obstacles, bounds) + distance;
-    if (cost < bestCost) {
-      bestCost = cost;
-      best = { left: box.left, top: box.top };
+  for (let across = -REACH_ACROSS; across <= REACH_ACROSS; across += GRID) {
+    for (let down = 0; down <= REACH_DOWN; down += GRID) {
+      for (const top of [below + down, above - down]) {
+        const box = { left: anchor.left + across, top, width, height };
+        const walked = down + 0.5 * gapAcross(box, anchor) + 0.02 * Math.abs(across) + (top < anchor.top ? 1 : 0);
+        if (walked >= bestCost) continue;
+        const cost = walked + faults(box, values, lines, bounds);
+        if (cost < bestCost) [best, bestCost] = [{ left: box.left, top }, cost];
+      }
     }
   }
   return best;
 }
 
-function candidates(anchor: Box, slip: { width: number; height: number }): [left: number, top: number, distance: number][] {
-  const right = anchor.left + anchor.width;
-  const middle = anchor.left + anchor.width / 2 - slip.width / 2;
-  const across = [anchor.left, middle, right - slip.width, anchor.left - slip.width * 0.25, anchor.left - slip.width * 0.75];
-  const found: [number, number, number][] = [];
-  for (const away of [0, 1, 2, 3, 4]) {
-    const shift = away * slip.height * 0.5;
-    across.forEach((left, order) => {
-      found.push([left, anchor.top + anchor.height + GAP + shift, away + order / 100]);
-      found.push([left, anchor.top - slip.height - GAP - shift, away + 0.05 + order / 100]);
-    });
-  }
-  const level = anchor.top + anchor.height / 2 - slip.height / 2;
-  found.push([right + 3 * GAP, level, 0.5], [anchor.left - slip.width - 3 * GAP, level, 0.5]);
-  return found;
+function gapAcross(a: Box, b: Box): number {
+  return Math.max(0, a.left - (b.left + b.width), b.left - (a.left + a.width));
 }
 
-function costOf(box: Box, anchor: Box, obstacles: Obstacles, bounds: Box): number {
-  const hidden = obstacles.values.filter((other) => overlap(box, other)).length;
-  const crossed = obstacles.lines.filter((other) => overlap(box, other)).length;
-  const outside = box.top < bounds.top || box.top + box.height > bounds.top + bounds.height ? 1 : 0;
-  return 10000 * (overlap(box, anchor) ? 1 : 0) + 1000 * hidden + 500 * outside + 10 * crossed;
+function faults(box: Box, values: readonly Box[], lines: readonly Box[], bounds: Box): number {
+  const inside =
+    box.left >= bounds.left &&
+    box.top >= bounds.top &&
+    box.left + box.width <= bounds.left + bounds.width &&
+    box.top + box.height <= bounds.top + bounds.height;
+  return count(box, values) * HIDES + count(box, lines) * CROSSES + (inside ? 0 : OUTSIDE);
+}
+
+function count(box: Box, others: readonly Box[]): number {
+  let overlapping = 0;
+  for (const other of others) if (overlap(box, other)) overlapping++;
+  return overlapping;
 }
 
 export function overlap(a: Box, b: Box): boolean {

@@ -87,7 +87,7 @@ export function uprightGrid(fitted: Fitted, width: number): Grid {
   const [top, gate, bus] = [62, 400, 522];
   const [series, control, feedback, device, load] = [62, 58, 0.275 * width, 0.56 * width, 0.695 * width];
   const capacitor = fitted.loadCapacitor ? 0.77 * width : load;
-  const [blockingY, drainY, bufferY, loadY, generatorY] = [top + 76, top + 190, top + 80, top + 196, gate + 57];
+  const [blockingY, drainY, bufferY, loadY, generatorY] = [top + 86, top + 190, top + 84, top + 196, gate + 57];
   return {
     ...{ width, height: bus + 20, top, gate, bus, feedback, device, load, capacitor, generator: 21, series, control },
     ...{

@@ -19,12 +19,12 @@ const COLUMNS = [
 
 /** Table 1: what the shadow tone finds at this moment, and the ends of the swing where they are known. */
 export function Characteristics() {
-  const { bench, slowLive } = useBenchView();
+  const { bench, slowLive, period } = useBenchView();
   const variant = useVariant();
   const read = bench.reading.value;
   const reading = read !== null && 'regions' in read ? read : null;
   const controlV = bench.sound.value === 'playing' ? (slowLive.value?.controlV ?? null) : null;
-  const groups = characteristicRows(variant, reading, controlV);
+  const groups = characteristicRows(variant, reading, controlV, 'fault' in period.value ? null : period.value);
   return (
     <DataTable number={1} className="characteristics" caption={<ToneCaption />} columns={COLUMNS}>
       {groups.map((rows) => (
@@ -39,7 +39,7 @@ export function Characteristics() {
         <tbody>
           <tr>
             <td colSpan={6} class="unread">
-              no reading{read !== null && 'fault' in read ? `: ${read.fault}` : ' yet'}
+              no reading
             </td>
           </tr>
         </tbody>
@@ -48,7 +48,7 @@ export function Characteristics() {
   );
 }
 
-function CharacteristicRow({ what, short, symbol, min, now, max, unit }: Row) {
+function CharacteristicRow({ what, short, symbol, min, now, max, unit, measured }: Row) {
   return (
     <tr>
       <th scope="row" class="what">
@@ -57,7 +57,7 @@ function CharacteristicRow({ what, short, symbol, min, now, max, unit }: Row) {
       </th>
       <td class="symbol">{symbol && <Sym of={symbol[0]} {...(symbol[1] && { sub: symbol[1] })} />}</td>
       <td class="number min">{min}</td>
-      <td class="number now">{now !== null && <span class="live">{now}</span>}</td>
+      <td class="number now">{now !== null && <span class={measured ? 'live' : undefined}>{now}</span>}</td>
       <td class="number max">{max}</td>
       <td class="unit">{unit}</td>
     </tr>
@@ -76,8 +76,12 @@ function Regions({ ohmic, saturated, cutoff, gateOn }: { ohmic: number; saturate
           <span class="short">Regions</span>
         </th>
         <td colSpan={5}>
-          ohmic {share(ohmic, false)}, saturated {share(saturated, true)}, cut off {share(cutoff, false)}, gate conducting{' '}
-          {share(gateOn, true)} %
+          <span class="share">ohmic {share(ohmic, false)},</span> <span class="share">saturated {share(saturated, true)},</span>{' '}
+          <span class="share">cut off {share(cutoff, false)},</span>{' '}
+          <span class="share">
+            gate on {share(gateOn, true)}
+            {'\u2009%'}
+          </span>
         </td>
       </tr>
     </tbody>

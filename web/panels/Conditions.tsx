@@ -59,6 +59,7 @@ function SourceChoice() {
     <>
       <Choice
         label="Phrase"
+        hint={bench.phrases.value.find(({ title }) => title === source.title)?.listenFor}
         value={current?.value ?? ''}
         options={options}
         onChoose={(name) => name !== '' && void bench.choosePhrase(name)}

@@ -17,48 +17,51 @@ export function Distortion() {
   const limit = useThdLimit();
   const read = bench.reading.value;
   const reading = read !== null && 'thdFundamental' in read ? read : null;
-  const why = read === null ? 'not measured yet' : 'fault' in read ? read.fault : '';
+  const why = read !== null && 'fault' in read ? read.fault : '';
   const h2 = reading === null ? null : signedHarmonic(reading, 2);
   const h3 = reading === null ? null : signedHarmonic(reading, 3);
   return (
-    <dl class="distortion">
-      <LiveReading
-        large
-        label="THD now"
-        value={reading && percentText(reading.thdFundamental)}
-        unit={PERCENT}
-        meaning={reading ? `gate at ${gateVolts(reading.vgsV)}` : why}
-      />
-      <Worst worst={bench.worst.value} limit={limit} />
-      <LiveReading
-        label={
-          <>
-            <Sym of="H" sub="2" />, even
-          </>
-        }
-        value={h2 === null ? null : signedPercentText(h2)}
-        unit={PERCENT}
-        meaning={h2 === null ? '' : <H2Words h2={h2} />}
-      />
-      <LiveReading
-        label={
-          <>
-            <Sym of="H" sub="3" />, odd
-          </>
-        }
-        value={h3 === null ? null : signedPercentText(h3)}
-        unit={PERCENT}
-        meaning={
-          h3 === null ? (
-            ''
-          ) : (
+    <section aria-label="Distortion, by the shadow tone">
+      <dl class="distortion">
+        <LiveReading
+          large
+          label="THD now"
+          value={reading && percentText(reading.thdFundamental)}
+          unit={PERCENT}
+          meaning={reading ? `gate at ${gateVolts(reading.vgsV)}` : ''}
+        />
+        <Worst worst={bench.worst.value} limit={limit} />
+        <LiveReading
+          label={
             <>
-              not cured by <i>k</i>
+              <Sym of="H" sub="2" />, even
             </>
-          )
-        }
-      />
-    </dl>
+          }
+          value={h2 === null ? null : signedPercentText(h2)}
+          unit={PERCENT}
+          meaning={h2 === null ? '' : <H2Words h2={h2} />}
+        />
+        <LiveReading
+          label={
+            <>
+              <Sym of="H" sub="3" />, odd
+            </>
+          }
+          value={h3 === null ? null : signedPercentText(h3)}
+          unit={PERCENT}
+          meaning={
+            h3 === null ? (
+              ''
+            ) : (
+              <>
+                not cured by <i>k</i>
+              </>
+            )
+          }
+        />
+      </dl>
+      {why !== '' && <p class="why fault">No reading: {why}</p>}
+    </section>
   );
 }
 

@@ -1,6 +1,6 @@
 import { restControlV } from '../../model/control/range.ts';
 import { feedbackFraction, restGateFraction } from '../../model/design/feedback.ts';
-import { type FeedbackPlot, leastWords, plotFeedback } from '../draw/feedbackPlot.ts';
+import { type FeedbackPlot, labelSide, leastWords, plotFeedback } from '../draw/feedbackPlot.ts';
 import { toPixel } from '../draw/scale.ts';
 import { gateVolts, percentText } from '../draw/words.ts';
 import { useBench, usePlaying, useVariant } from './BenchContext.ts';
@@ -30,7 +30,9 @@ export function FeedbackFigure() {
       <div class="plot" ref={ref}>
         {plot && <Curves plot={plot} />}
         {plot && <FeedbackPointer plot={plot} />}
-        {!plot && <p class="unread empty-plot">no reading yet</p>}
+        {!plot && (
+          <p class="unread empty-plot">{cell.feedback.kind === 'none' ? 'no feedback is fitted, so k stays 0' : 'no reading yet'}</p>
+        )}
       </div>
     </Figure>
   );
@@ -89,7 +91,7 @@ function Present({ plot }: { readonly plot: FeedbackPlot }) {
   if (read === null || !('thdFundamental' in read) || x < area.left || x > area.right) return null;
   const height = Math.min(area.bottom, Math.max(area.top, toPixel(y, read.thdFundamental)));
   const words = `THD ${percentText(read.thdFundamental)}\u2009%`;
-  const toLeft = x > area.right - 100;
+  const toLeft = labelSide(plot, { x, y: height }) === 'left';
   const labelY = height - 6 < area.top + 10 ? height + 18 : Math.min(height - 6, area.bottom - 24);
   return (
     <g>

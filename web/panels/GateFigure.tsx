@@ -1,26 +1,26 @@
-import { useEffect, useRef } from 'preact/hooks';
-import { type GatePeriod, type GatePlot, gatePeriod, plotGate, turnOf } from '../draw/gatePlot.ts';
+import { useEffect, useMemo, useRef } from 'preact/hooks';
+import { type GatePeriod, type GatePlot, plotGate, turnOf } from '../draw/gatePlot.ts';
 import { toPixel } from '../draw/scale.ts';
 import { valueVolts, voltsText } from '../draw/words.ts';
-import { useBench, usePlaying, useVariant } from './BenchContext.ts';
+import { useBenchView, usePlaying } from './BenchContext.ts';
 import { Figure } from './parts/Figure.tsx';
 import { PlotFrame } from './parts/PlotFrame.tsx';
 import { useSheetSize } from './parts/useSheetSize.ts';
 
 /** Fig. 3: the gate over one period of the control, with its regions in a strip below. */
 export function GateFigure() {
-  const { control, cell, device } = useVariant();
   const { ref, size } = useSheetSize<HTMLDivElement>();
-  const period = gatePeriod(control, cell);
-  const plot = size && period ? plotGate(period, device.gateOffV, size.width, size.height) : null;
+  const found = useBenchView().period.value;
+  const period = 'fault' in found ? null : found;
+  const plot = useMemo(() => (size && period ? plotGate(period, size.width, size.height) : null), [period, size]);
   const caption =
     plot &&
     `${period?.steady ? 'Gate at a fixed control' : 'Gate over a period'}, ${pastWords(plot.deepest.pastV)}. Strip: filled ohmic, empty off, hatched conducting.`;
   return (
     <Figure number={3} className="gate-figure" caption={caption}>
       <div class="plot" ref={ref}>
-        {plot && period && <Drawn plot={plot} period={period} gateOffV={device.gateOffV} />}
-        {!period && <p class="unread empty-plot">this control has no period of its own</p>}
+        {plot && period && <Drawn plot={plot} period={period} />}
+        {'fault' in found && <p class="unread empty-plot">{found.fault}</p>}
       </div>
     </Figure>
   );
@@ -29,10 +29,10 @@ export function GateFigure() {
 interface DrawnProps {
   readonly plot: GatePlot;
   readonly period: GatePeriod;
-  readonly gateOffV: number;
 }
 
-function Drawn({ plot, period, gateOffV }: DrawnProps) {
+function Drawn({ plot, period }: DrawnProps) {
+  const { gateOffV } = period;
   const { area, offY, offArea, deepest } = plot;
   const roomy = deepest.pastV > 0 && Math.abs(deepest.y - offY) >= 12;
   const labelLeft = deepest.x > (area.left + area.right) / 2;
@@ -93,25 +93,21 @@ function Strip({ plot }: { readonly plot: GatePlot }) {
 
 /** The point of this moment: moved at frame rate, outside rendering. */
 function Present({ plot, period }: { readonly plot: GatePlot; readonly period: GatePeriod }) {
-  const bench = useBench();
+  const { bench, slowLive } = useBenchView();
   const playing = usePlaying();
   const point = useRef<SVGCircleElement>(null);
-  const latest = useRef({ plot, period });
-  latest.current = { plot, period };
   useEffect(() => {
     let before = 0;
-    return bench.live.subscribe((live) => {
+    const source = matchMedia('(prefers-reduced-motion: reduce)').matches ? slowLive : bench.live;
+    return source.subscribe((live) => {
       if (live === null || point.current === null) return;
-      const { x, y, area } = latest.current.plot;
-      const turn = turnOf(latest.current.period, live.controlV, live.controlV < before);
+      const { x, y, area } = plot;
+      const turn = turnOf(period, live.controlV, live.controlV < before);
       before = live.controlV;
       const height = Math.max(area.top, Math.min(area.bottom, toPixel(y, live.gateSourceV)));
-      point.current.setAttribute(
-        'cx',
-        String(latest.current.period.steady ? (area.left + area.right) / 2 : x.start + turn * (x.end - x.start)),
-      );
+      point.current.setAttribute('cx', String(period.steady ? (area.left + area.right) / 2 : x.start + turn * (x.end - x.start)));
       point.current.setAttribute('cy', String(height));
     });
-  }, [bench]);
+  }, [bench, slowLive, plot, period]);
   return <circle ref={point} class={playing ? 'present' : 'present hollow'} cx={plot.start.x} cy={plot.start.y} r={4.5} />;
 }

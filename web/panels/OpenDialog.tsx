@@ -29,7 +29,7 @@ export function OpenDialog({ onClose }: { readonly onClose: () => void }) {
         <>
           <h3>Worked examples</h3>
           <ul class="examples">
-            {bench.examples.value.map(({ name, title, scenario }) => (
+            {bench.examples.value.map(({ name, title, scenario, listenFor }) => (
               <li key={name}>
                 <button
                   type="button"
@@ -41,7 +41,9 @@ export function OpenDialog({ onClose }: { readonly onClose: () => void }) {
                 >
                   {title}
                 </button>
-                <p class="aside">{scenario}</p>
+                <p class="aside">
+                  {scenario} {listenFor && <i>{listenFor}</i>}
+                </p>
               </li>
             ))}
           </ul>

@@ -23,7 +23,7 @@ export function Schematic({ form }: { readonly form: Form }) {
     <Figure
       number={1}
       className={`schematic ${form}`}
-      caption="The cell, peak voltages in colour. Change a value where it stands: type 6k8, step with arrow keys, or drag."
+      caption="The cell, peak voltages in colour. Change what is underlined: type 6k8, use the arrow keys, or drag."
     >
       <div class="drawing" ref={ref} style={{ height: rem(drawing?.height ?? 346) }}>
         {drawing && (

@@ -1,4 +1,5 @@
 import { useSignal } from '@preact/signals';
+import { useRef } from 'preact/hooks';
 import { clockText } from '../draw/words.ts';
 import type { TakeFormat } from '../state/bench.ts';
 import { useBench } from './BenchContext.ts';
@@ -107,7 +108,9 @@ function UnderWay() {
 }
 
 function Progress({ fraction }: { readonly fraction: number }) {
+  const startMs = useRef(performance.now());
   const percent = Math.round(100 * fraction);
+  const leftSec = ((performance.now() - startMs.current) / 1000) * (1 / Math.max(fraction, 0.01) - 1);
   return (
     <span class="progress">
       <svg
@@ -121,8 +124,9 @@ function Progress({ fraction }: { readonly fraction: number }) {
       >
         <path class="track" d="M0 2H120" />
         <path class="done" d={`M0 2H${120 * fraction}`} />
-      </svg>{' '}
-      {percent} %
+      </svg>
+      {`${percent}\u2009%`}
+      {fraction > 0.05 && `, ${Math.ceil(leftSec)} s left`}
     </span>
   );
 }

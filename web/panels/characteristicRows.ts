@@ -2,7 +2,7 @@
 import type { Control, Variant } from '../../model/design/types.ts';
 import { splitQuantity } from '../../model/design/values.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
-import { gatePeriod } from '../draw/gatePlot.ts';
+import type { GatePeriod } from '../draw/gatePlot.ts';
 import { decimals, signedDecimals } from '../draw/words.ts';
 
 export interface Row {
@@ -14,11 +14,22 @@ export interface Row {
   readonly now: string | null;
   readonly max: string;
   readonly unit: string;
+  /** False for what follows from the circuit alone: it is never coloured. */
+  readonly measured: boolean;
 }
 
 /** `controlV` is the control of this moment, null while sound is stopped: then it is shown at rest. */
-export function characteristicRows(variant: Variant, reading: ToneReading | null, controlV: number | null): Row[][] {
-  const groups = [reading ? signalRows(reading) : [], reading ? [channelRow(reading)] : [], controlRows(variant, reading, controlV)];
+export function characteristicRows(
+  variant: Variant,
+  reading: ToneReading | null,
+  controlV: number | null,
+  period: GatePeriod | null,
+): Row[][] {
+  const groups = [
+    reading ? signalRows(reading, period) : [],
+    reading ? [channelRow(reading)] : [],
+    controlRows(variant, reading, controlV, period),
+  ];
   return groups.filter((rows) => rows.length > 0);
 }
 
@@ -30,22 +41,33 @@ function row(
   unit: string,
   ends: { min: string; max: string } = { min: '', max: '' },
 ): Row {
-  return { what, short, symbol, now, unit, ...ends };
+  return { what, short, symbol, now, unit, ...ends, measured: true };
 }
 
-function signalRows(reading: ToneReading): Row[] {
-  const dc = smallVolts(reading.dcV - reading.restDcV);
-  const rest = smallVolts(reading.restDcV);
+function signalRows(reading: ToneReading, period: GatePeriod | null): Row[] {
+  const drain = period && !period.steady ? [Math.min(...period.drain), Math.max(...period.drain)] : [];
+  const { unit, print } = smallVolts([reading.restDcV, ...drain]);
+  const added = reading.dcV - reading.restDcV;
+  const tone = smallVolts([added]);
   return [
     row('Gain of the cell, input to drain', 'Gain', ['G'], signedDecimals(reading.gainDb, 1), 'dB'),
-    row('DC at the drain, at rest', 'DC at rest', null, rest.number, rest.unit),
-    row('DC that the tone adds', 'DC added', null, dc.number, dc.unit),
+    row(
+      'DC at the drain, from the control',
+      'DC at drain',
+      ['V', 'DS'],
+      print(reading.restDcV),
+      unit,
+      drain.length > 0 ? { min: print(drain[0]), max: print(drain[1]) } : undefined,
+    ),
+    row('DC that the tone adds', 'DC added', null, tone.print(added), tone.unit),
   ];
 }
 
-/** Under a tenth of a microvolt nobody asks. */
-function smallVolts(volts: number): { number: string; unit: string } {
-  return Math.abs(volts) < 1e-7 ? { number: '0.0', unit: 'μV' } : splitQuantity(volts, 'V', 2, { signed: true });
+/** One unit for voltages of a row, by the largest of them: from a tenth of a microvolt, under which nobody asks. */
+function smallVolts(volts: readonly number[]): { unit: string; print: (volts: number) => string } {
+  const largest = Math.max(...volts.map(Math.abs));
+  const [scale, unit] = largest >= 0.9995 ? [1, 'V'] : largest >= 0.9995e-3 ? [1e3, 'mV'] : [1e6, 'μV'];
+  return { unit, print: (v) => signedDecimals(v * scale, largest * scale >= 99.5 ? 0 : 1) };
 }
 
 function channelRow(reading: ToneReading): Row {
@@ -55,11 +77,9 @@ function channelRow(reading: ToneReading): Row {
   return row('Drain to source, at rest', 'Drain-source', ['r', 'DS'], ohm.number, ohm.unit);
 }
 
-function controlRows(variant: Variant, reading: ToneReading | null, controlV: number | null): Row[] {
-  const { control, cell, device } = variant;
+function controlRows({ control }: Variant, reading: ToneReading | null, controlV: number | null, period: GatePeriod | null): Row[] {
   const volts = (v: number) => decimals(v, 2);
   const swing = controlEnds(control);
-  const period = gatePeriod(control, cell);
   const rows: Row[] = [];
   const now = controlV ?? (control.source === 'fixed' ? control.controlV : null);
   if (now !== null || swing)
@@ -67,8 +87,8 @@ function controlRows(variant: Variant, reading: ToneReading | null, controlV: nu
   const gateEnds = period && !period.steady ? { min: Math.min(...period.gate), max: Math.max(...period.gate) } : null;
   if (reading) rows.push(row('Gate to source, at rest', 'Gate-source', ['V', 'GS'], volts(reading.vgsV), 'V', endsOf(gateEnds, volts)));
   if (period) {
-    const off = device.gateOffV < 0 ? device.gateOffV - Math.min(...period.gate) : Math.max(...period.gate) - device.gateOffV;
-    rows.push(row('Past off, at the gate’s far end', 'Past off', null, signedDecimals(off, 2), 'V'));
+    const off = period.gateOffV < 0 ? period.gateOffV - Math.min(...period.gate) : Math.max(...period.gate) - period.gateOffV;
+    rows.push({ ...row('Past off, at the gate’s far end', 'Past off', null, signedDecimals(off, 2), 'V'), measured: false });
   }
   return rows;
 }

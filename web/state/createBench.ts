@@ -66,7 +66,10 @@ export function assembleBench(parts: Parts): Bench {
     if (sentences.length > MOST_SENTENCES) notes.fault(`“${from}” has ${sentences.length - MOST_SENTENCES} more faults.`);
   };
 
-  noting(loadFirstSource).then(parts.prepareSound).catch(notes.fault);
+  noting(async () => {
+    await loadFirstSource();
+    await parts.prepareSound();
+  });
 
   return {
     ...document,

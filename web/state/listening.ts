@@ -1,5 +1,5 @@
 /** Sound as the user knows it: start and stop, what is heard, how loud, from which source. */
-import { computed, effect, signal } from '@preact/signals';
+import { computed, signal } from '@preact/signals';
 import { compileChain } from '../../model/chain/compile.ts';
 import { MUTE_SEC } from '../../worklet/protocol.ts';
 import type { Clip } from '../audio/clip.ts';
@@ -7,20 +7,17 @@ import { clipSeconds } from '../audio/clip.ts';
 import type { Bench, Hearing, SoundState, SourceInfo } from './bench.ts';
 import type { DocumentState } from './document.ts';
 import type { Levels } from './levels.ts';
+import { createLoudness } from './loudness.ts';
+import { watchMoves } from './moves.ts';
 import type { Notes } from './notes.ts';
 import { sentenceOf } from './notes.ts';
 import type { Parts } from './parts.ts';
 import { createReceiver } from './receiving.ts';
 import { createSoundLine } from './soundLine.ts';
 import type { Takes, TakeSource } from './takes.ts';
-import { setWithin } from './within.ts';
 
-/** Changes go out together, at most once in about a frame. */
-const MOVE_EVERY_MS = 16;
 /** Twice the ramp, since the message takes its time as well; then the context may rest. */
 const MUTED_AFTER_MS = 2000 * MUTE_SEC;
-const FIRST_LISTEN_DB = -12;
-const FIRST_CEILING_DBFS = -6;
 const RATE_BEFORE_START_HZ = 48000;
 
 type Shared =
@@ -38,7 +35,7 @@ type Shared =
 type Level = 'listenDb' | 'setListenDb' | 'ceilingDbfs' | 'setCeilingDbfs';
 
 export interface Listening extends Pick<Bench, Shared | Level> {
-  /** Puts another clip in place of the source; sound that plays goes on. Failures go to the notes. */
+  /** Puts another clip in place of the source; sound that plays goes on. Rejects, and changes nothing, where the clip cannot be played. */
   setSource(clip: Clip, kind: SourceInfo['kind']): Promise<void>;
   /** What takes need of it. */
   readonly forTakes: TakeSource;
@@ -59,14 +56,11 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
   const state = signal<SoundState>('idle');
   const muted = signal(false);
   const hearing = signal<Hearing>('cell');
-  const listenDb = signal(FIRST_LISTEN_DB);
-  const ceilingDbfs = signal(FIRST_CEILING_DBFS);
   const rateHz = signal<number | null>(null);
   const latencySec = signal<number | null>(null);
   const source = signal<SourceInfo>({ title: '', seconds: 0, kind: 'phrase' });
   let clip: Clip | null = null;
   let pausedBySystem = false;
-  let moveDue = false;
 
   const compile = (hz: number, channels: number) =>
     compileChain(document.design.peek(), document.heardVariant.peek(), hz, channels, 'lowLatency');
@@ -74,21 +68,17 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
   const line = createSoundLine(parts.openSound, {
     cellFor(hz, channels) {
       rateHz.value = hz;
-      const gain = toRatio(listenDb.peek());
-      return {
-        numbers: compile(hz, channels),
-        channels,
-        heard: hearing.peek(),
-        gain,
-        ceilingPeak: toRatio(ceilingDbfs.peek()),
-        muted: true,
-      };
+      return { numbers: compile(hz, channels), channels, heard: hearing.peek(), ...loudness.options(), muted: true };
     },
     message: (message) => receive(message),
     renewed() {
+      move();
       takes().cutShort();
+      takes().noteEnded();
       levels.clear();
       if (state.peek() === 'playing') line.send({ type: 'mute', on: muted.peek() });
+      // Stop was pressed while it was made anew.
+      if (state.peek() === 'stopped') suspend();
     },
     broken(givenUp) {
       if (!givenUp) return notes.fault('The audio processor failed and was started again.');
@@ -113,6 +103,8 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     takeEnded: () => endTakeHeard(),
   });
 
+  const loudness = createLoudness((message) => line.send(message));
+
   const fail = (error: unknown) => {
     state.value = 'failed';
     notes.fault(sentenceOf(error));
@@ -133,24 +125,18 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     },
   });
 
-  /** Sends the design's numbers as they are when the frame is over. */
+  /** Sends the design's numbers as they are now. */
   const move = () => {
-    moveDue = false;
     const sound = line.sound();
-    if (sound === null || clip === null) return;
+    const channels = line.channels();
+    if (sound === null || channels === null) return;
     try {
-      line.send({ type: 'move', numbers: compile(sound.sampleRateHz, clip.channels.length) });
+      sound.send({ type: 'move', numbers: compile(sound.sampleRateHz, channels) });
     } catch (error) {
       notes.fault(error);
     }
   };
-
-  effect(() => {
-    const changed = document.design.value !== null && document.heardVariant.value >= 0;
-    if (!changed || moveDue) return;
-    moveDue = true;
-    setTimeout(move, MOVE_EVERY_MS);
-  });
+  watchMoves(document, move);
 
   const adapt = async (next: Clip) => {
     await line.adapt(next);
@@ -195,11 +181,10 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     sound: state,
     muted,
     hearing,
-    listenDb,
-    ceilingDbfs,
     rateHz,
     latencySec,
     source,
+    ...loudness,
     spectrumRateHz: computed(() => rateHz.value ?? RATE_BEFORE_START_HZ),
     start,
     stop() {
@@ -219,17 +204,12 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       hearing.value = which;
       if (takes().playingTake.peek() === null) line.send({ type: 'hear', heard: which });
     },
-    setListenDb(db) {
-      const refused = setWithin(listenDb, db, -60, 0, 'The listening level', 'dB');
-      if (refused === null) line.send({ type: 'gain', gain: toRatio(db) });
-      return refused;
-    },
-    setCeilingDbfs(db) {
-      const refused = setWithin(ceilingDbfs, db, -40, 0, 'The ceiling', 'dBFS');
-      if (refused === null) line.send({ type: 'ceiling', peak: toRatio(db) });
-      return refused;
-    },
     async setSource(next, kind) {
+      try {
+        compile(next.sampleRateHz, next.channels.length);
+      } catch (error) {
+        throw new RangeError(`“${next.title}” cannot be played: ${sentenceOf(error)}.`);
+      }
       clip = next;
       source.value = { title: next.title, seconds: clipSeconds(next), kind };
       if (line.sound() === null) return;
@@ -249,8 +229,4 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       clip: () => clip,
     },
   };
-}
-
-function toRatio(db: number): number {
-  return 10 ** (db / 20);
 }

@@ -4,8 +4,7 @@ import { decodeAudio } from '../audio/decode.ts';
 import { missingFeature } from '../audio/features.ts';
 import type { OpenSound } from '../audio/sound.ts';
 import { openSound, prepareSound } from '../audio/sound.ts';
-import ReadingWorker from './reading.worker.ts?worker';
-import RenderWorker from './render.worker.ts?worker';
+import BenchWorker from './bench.worker.ts?worker';
 import type { FromReading, FromRender, ToReading, ToRender, WorkerPort } from './workers.ts';
 
 export interface Parts {
@@ -28,8 +27,8 @@ export function browserParts(): Parts {
     missingFeature,
     decodeAudio,
     fetchBytes,
-    openReadingWorker: () => portOf(new ReadingWorker()),
-    openRenderWorker: () => portOf(new RenderWorker()),
+    openReadingWorker: () => portOf(new BenchWorker()),
+    openRenderWorker: () => portOf(new BenchWorker()),
     download,
   };
 }
@@ -44,8 +43,9 @@ async function fetchBytes(path: string): Promise<ArrayBuffer> {
 function portOf<Out, In>(worker: Worker): WorkerPort<Out, In> {
   return {
     post: (message, transfer = []) => worker.postMessage(message, transfer),
-    receive(handler) {
+    receive(handler, failed) {
       worker.onmessage = ({ data }: MessageEvent<In>) => handler(data);
+      worker.onerror = ({ message }) => failed(`The page's worker failed: ${message || 'it could not be loaded'}. Reload the page.`);
     },
     end: () => worker.terminate(),
   };

@@ -40,7 +40,7 @@ export function createReadings(worker: WorkerPort<ToReading, FromReading>, sourc
     worker.post({ type: 'moment', id, gateV: sources.playing.peek() ? (sources.live.peek()?.gateSourceV ?? null) : null });
   };
 
-  worker.receive((message) => {
+  const receive = (message: FromReading) => {
     switch (message.type) {
       case 'reading':
         waiting = false;
@@ -55,8 +55,12 @@ export function createReadings(worker: WorkerPort<ToReading, FromReading>, sourc
         return;
       default:
         message satisfies never;
-        throw new TypeError(`The page does not know the reading worker's message ${JSON.stringify(message)}`);
+        throw new TypeError(`The page does not know the worker's reading ${JSON.stringify(message)}`);
     }
+  };
+
+  worker.receive(receive, (sentence) => {
+    reading.value = { fault: sentence };
   });
 
   effect(() => {

@@ -10,7 +10,7 @@ export interface LineEvents {
   /** The options for a processor made now; throws a RangeError with a sentence where the design cannot sound at that rate. */
   cellFor(sampleRateHz: number, channels: number): CellOptions;
   message(message: FromCell): void;
-  /** The processor is new and silent: what it records is lost, and it waits to be unmuted. */
+  /** The processor is new and silent: nothing is recorded or played aside, and it waits for the latest numbers and to be unmuted. */
   renewed(): void;
   /** The processor failed; it is being made anew, or after three times in ten seconds given up and closed. */
   broken(givenUp: boolean): void;
@@ -23,6 +23,8 @@ export interface LineEvents {
 export interface SoundLine {
   /** Null while no sound is open. */
   sound(): Sound | null;
+  /** Channels of the processor that is open. */
+  channels(): number | null;
   /** Opens sound for the clip, or fits what is open to it, and loops it. Rejects with a sentence. */
   adapt(clip: Clip): Promise<void>;
   send(message: ToCell, transfer?: Transferable[]): boolean;
@@ -49,9 +51,10 @@ export function createSoundLine(openSound: OpenSound, events: LineEvents, now: (
     await closing?.close();
   };
 
-  const rebuild = async (channels: number) => {
+  const rebuild = async (rateHz: number, channels: number) => {
     if (sound === null) return;
     await sound.rebuild(events.cellFor(sound.sampleRateHz, channels));
+    fitted = { rateHz, channels };
     events.renewed();
   };
 
@@ -60,24 +63,26 @@ export function createSoundLine(openSound: OpenSound, events: LineEvents, now: (
     rebuilds = [...rebuilds.filter((each) => at - each < REBUILD_WINDOW_MS), at];
     const givenUp = rebuilds.length > MOST_REBUILDS;
     events.broken(givenUp);
-    inTurn(() => (givenUp || fitted === null ? close() : rebuild(fitted.channels))).catch(events.failed);
+    inTurn(() => (givenUp || fitted === null ? close() : rebuild(fitted.rateHz, fitted.channels))).catch(events.failed);
   };
 
   const adapt = async (clip: Clip) => {
+    const rateHz = clip.sampleRateHz;
     const channels = clip.channels.length;
-    if (sound !== null && fitted?.rateHz !== clip.sampleRateHz) await close();
+    if (sound !== null && fitted?.rateHz !== rateHz) await close();
     if (sound === null) {
-      sound = await openSound(clip.sampleRateHz, (rateHz) => events.cellFor(rateHz, channels), { ...events, broken: mend });
+      sound = await openSound(rateHz, (openedHz) => events.cellFor(openedHz, channels), { ...events, broken: mend });
+      fitted = { rateHz, channels };
       events.renewed();
     } else if (fitted?.channels !== channels) {
-      await rebuild(channels);
+      await rebuild(rateHz, channels);
     }
-    fitted = { rateHz: clip.sampleRateHz, channels };
     sound.loop(clip);
   };
 
   return {
     sound: () => sound,
+    channels: () => fitted?.channels ?? null,
     adapt: (clip) => inTurn(() => adapt(clip)),
     send(message, transfer) {
       sound?.send(message, transfer);

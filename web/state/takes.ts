@@ -118,7 +118,7 @@ export function createTakes(parts: Parts, document: DocumentState, source: TakeS
         return endRender();
       default:
         message satisfies never;
-        throw new TypeError(`The page does not know the render worker's message ${JSON.stringify(message)}`);
+        throw new TypeError(`The page does not know the worker's render ${JSON.stringify(message)}`);
     }
   };
 
@@ -156,7 +156,8 @@ export function createTakes(parts: Parts, document: DocumentState, source: TakeS
       rendering.value = { fraction: 0 };
       return new Promise<void>((done) => {
         render = { worker, done };
-        worker.receive((message) => receiveRender(message, clip, about));
+        const receive = (message: FromRender) => receiveRender(message, clip, about);
+        worker.receive(receive, (sentence) => receive({ type: 'fault', sentence }));
         const { channels, sampleRateHz } = clip;
         worker.post({ type: 'render', design: document.design.peek(), variantIndex: document.heardVariant.peek(), channels, sampleRateHz });
       });

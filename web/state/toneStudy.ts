@@ -1,4 +1,4 @@
-/** What the reading worker works out, as a pure plan of small steps: the page's worker runs it, and so can a test in Node. */
+/** What the page's worker reads of the shadow tone, as a pure plan of small steps that a test in Node can run too. */
 import { controlRangeV } from '../../model/control/range.ts';
 import { feedbackFraction, withFeedbackFraction } from '../../model/design/feedback.ts';
 import type { Variant } from '../../model/design/types.ts';

@@ -6,7 +6,8 @@ import type { FeedbackPoint, WorstReading } from './bench.ts';
 /** A worker as the state sees it, so that a test can stand something else in its place. */
 export interface WorkerPort<Out, In> {
   post(message: Out, transfer?: Transferable[]): void;
-  receive(handler: (message: In) => void): void;
+  /** `failed` is told in a sentence when the worker could not be loaded or threw; it may answer no more. */
+  receive(handler: (message: In) => void, failed: (sentence: string) => void): void;
   end(): void;
 }
 

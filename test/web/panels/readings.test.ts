@@ -2,6 +2,7 @@ import { expect, test } from 'vitest';
 import { defaultDesign } from '../../../model/design/defaults.ts';
 import { measureTone } from '../../../model/study/tone.ts';
 import { characteristicRows } from '../../../web/panels/characteristicRows.ts';
+import { gatePeriod } from '../../../web/panels/gatePeriod.ts';
 import { leavesOhmic, signedHarmonic } from '../../../web/panels/readingWords.ts';
 
 const [variant] = defaultDesign().variants;
@@ -26,7 +27,9 @@ test('saturation and a conducting gate are past a limit, being cut off is not', 
 test('the rows of Table 1 have a number each, and their ends follow from an LFO’s swing', () => {
   const control = { source: 'lfo', shape: 'sine', rateHz: 4, fromV: -0.4, toV: -2, edgeSec: 0.005 } as const;
   const cell = { ...variant.cell, feedback: { kind: 'none' } } as const;
-  const rows = characteristicRows({ ...variant, cell, control }, readAt(0.5), -0.9).flat();
+  const period = gatePeriod({ ...defaultDesign(), variants: [{ ...variant, cell, control }] }, 0);
+  if ('fault' in period) throw new Error(period.fault);
+  const rows = characteristicRows({ ...variant, cell, control }, readAt(0.5), -0.9, period).flat();
   expect(rows.every(({ now, min, max }) => now !== null || (min !== '' && max !== ''))).toBe(true);
   const [controlRow] = rows.filter(({ short }) => short === 'Control');
   expect(controlRow).toMatchObject({ min: '−2.00', now: '−0.90', max: '−0.40', unit: 'V' });
@@ -34,7 +37,7 @@ test('the rows of Table 1 have a number each, and their ends follow from an LFO�
 });
 
 test('without a reading only what the circuit itself says is left', () => {
-  const rows = characteristicRows(variant, null, null).flat();
+  const rows = characteristicRows(variant, null, null, null).flat();
   expect(rows.map(({ short }) => short)).not.toContain('Gain');
   expect(rows.length).toBeGreaterThan(0);
 });

@@ -159,10 +159,29 @@ describe('sources', () => {
     expect(second.loops.at(-1)?.channels).toEqual([createNoise(1, 4410, 0.5)]);
   });
 
+  test('a value changed while the processor is made anew reaches the new one', async () => {
+    const sound = await startSound();
+    await bench.choosePhrase('band');
+    const { rebuild } = sound;
+    sound.rebuild = async (cell) => {
+      bench.setValue('cell.seriesOhm', 6800);
+      vi.advanceTimersByTime(50);
+      await rebuild.call(sound, cell);
+    };
+    await bench.choosePhrase('guitar');
+    const { numbers } = sound.cells[2];
+    expect(sound.last('move')?.numbers.cells).toHaveLength(1);
+    expect(JSON.stringify(sound.last('move')?.numbers)).not.toBe(JSON.stringify(numbers));
+    expect(sentences()).toEqual([]);
+  });
+
   test('a file that is no sound is named, and what plays goes on', async () => {
     const sound = await startSound();
     await bench.openAudio(new File([new Uint8Array(0)], 'nothing.wav'));
     await bench.choosePhrase('kazoo');
+    await bench.openAudio(fileOf([createNoise(1, 400, 0.5)], 4000, 'phone.wav'));
+    expect(sentences()[2]).toBe('“phone.wav” cannot be played: the sample rate is 4000 Hz; expected 8000 to 384000 Hz.');
+    expect(bench.source.value.title).toBe('Guitar chords');
     expect(sentences()[0]).toBe('“nothing.wav” is empty; expected a sound file.');
     expect(sentences()[1]).toContain('There is no phrase “kazoo”; expected one of guitar');
     expect(sound.loops).toHaveLength(1);
@@ -314,6 +333,10 @@ describe('takes', () => {
     parts.renderWorkers[1].answer({ type: 'fault', sentence: 'cell.seriesOhm is 0' });
     await faulty;
     expect(sentences()).toEqual(['cell.seriesOhm is 0']);
+    const broken = bench.renderClip();
+    parts.renderWorkers[2].fail('The worker failed.');
+    await broken;
+    expect(sentences()).toEqual(['cell.seriesOhm is 0', 'The worker failed.']);
     expect(bench.takes.value).toEqual([]);
     expect(parts.renderWorkers.every((worker) => worker.ended)).toBe(true);
   });

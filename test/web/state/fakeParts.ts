@@ -68,13 +68,15 @@ export class FakeWorker<Out, In> implements WorkerPort<Out, In> {
   readonly posted: Out[] = [];
   ended = false;
   answer: (message: In) => void = () => {};
+  fail: (sentence: string) => void = () => {};
 
   post(message: Out): void {
     this.posted.push(message);
   }
 
-  receive(handler: (message: In) => void): void {
+  receive(handler: (message: In) => void, failed: (sentence: string) => void): void {
     this.answer = handler;
+    this.fail = failed;
   }
 
   end(): void {
@@ -130,7 +132,7 @@ export function createFakeParts(): FakeParts {
   return parts;
 }
 
-/** Does a render worker's work: progress, then the clip. */
+/** Does a worker's render: progress, then the clip. */
 export function runRender(worker: FakeWorker<ToRender, FromRender>): void {
   const { design, variantIndex, channels, sampleRateHz } = worker.posted[0];
   const rendered = renderClip(design, variantIndex, channels, sampleRateHz, (fraction) => worker.answer({ type: 'progress', fraction }));

@@ -1,4 +1,4 @@
-import { useContext, useEffect, useRef, useState } from 'preact/hooks';
+import { useContext, useLayoutEffect, useRef, useState } from 'preact/hooks';
 import { CaptionContext } from './CaptionContext.ts';
 import { pageValue, type Stepping, stepValue } from './stepping.ts';
 import { TypingBox } from './TypingBox.tsx';
@@ -38,7 +38,7 @@ export function EditableValue(props: EditableValueProps) {
   const set = (next: number) => say(onSet(next));
   const drag = useValueDrag({ value, stepping, set, click: () => setTyping(value === null ? '' : printed) });
 
-  useEffect(() => {
+  useLayoutEffect(() => {
     if (typing !== null || !wantsFocus.current) return;
     wantsFocus.current = false;
     rest.current?.focus();
@@ -65,9 +65,9 @@ export function EditableValue(props: EditableValueProps) {
         tabIndex={typing === null ? 0 : -1}
         class={`value ${className} ${drag.dragging ? 'dragged' : ''}`}
         aria-label={label}
-        aria-valuenow={value ?? undefined}
-        aria-valuemin={min}
-        aria-valuemax={max}
+        aria-valuenow={plainNumber(value)}
+        aria-valuemin={plainNumber(min)}
+        aria-valuemax={plainNumber(max)}
         aria-valuetext={printed}
         onKeyDown={onKeyDown}
         onBlur={() => typing === null && say(null)}
@@ -78,6 +78,14 @@ export function EditableValue(props: EditableValueProps) {
       {typing !== null && <TypingBox {...props} printed={printed} initial={typing} done={done} />}
     </span>
   );
+}
+
+/** For assistive technology, which reads no exponents: 1e-10 as 0.0000000001. */
+function plainNumber(value: number | null | undefined): number | undefined {
+  if (value === null || value === undefined) return undefined;
+  const plain = value.toFixed(15).replace(/\.?0+$/, '');
+  // The attribute takes text; its type is a number's.
+  return plain as unknown as number;
 }
 
 const keyMoves: Readonly<Record<string, (value: number, stepping: Stepping) => number>> = {

@@ -21,7 +21,7 @@ export function LiveReading({ label, value, unit, meaning, large = false, over =
         {value === null ? (
           <span class="unread">no reading</span>
         ) : (
-          <span class={over ? 'number over' : 'number live'}>
+          <span class={`number ${over ? 'over' : 'live'} ${value.length > 4 ? 'long' : ''}`}>
             {value}
             <span class="unit">{unit}</span>
           </span>

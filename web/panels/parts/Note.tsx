@@ -2,7 +2,7 @@ import type { ComponentChildren } from 'preact';
 
 interface NoteProps {
   readonly kind: 'fault' | 'note' | 'caution';
-  /** One sentence, in bold. */
+  /** One sentence; in bold up to its first semicolon. */
   readonly sentence: string;
   /** One plain sentence more. */
   readonly advice?: string | undefined;
@@ -11,11 +11,13 @@ interface NoteProps {
 
 /** A block of paper with what the user must be told, and buttons that name the act. */
 export function Note({ kind, sentence, advice, children }: NoteProps) {
+  const [head, ...rest] = sentence.split('; ');
   return (
     <section class={`note ${kind}`} role={kind === 'fault' ? 'alert' : 'status'}>
       <p>
         {kind === 'caution' && <Caution />}
-        <strong>{sentence}</strong> {advice}
+        <strong>{head}</strong>
+        {rest.length > 0 && `; ${rest.join('; ')}`} {advice}
       </p>
       {children !== undefined && <p class="buttons">{children}</p>}
     </section>

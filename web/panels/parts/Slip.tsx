@@ -3,7 +3,7 @@ import { useLayoutEffect, useRef, useState } from 'preact/hooks';
 import { type Box, placeSlip } from '../../draw/placeSlip.ts';
 
 /** What a slip must not hide, and what it should not cross. */
-const VALUES = '.value, .value-like, .live, .over, .name, .sym, button, h1';
+const VALUES = '.value, .value-like, .live, .over, .name, .sym, button, h1, figcaption, caption, dt, .meaning, .sentence, .caution, text';
 const LINES = '.schematic line, .schematic .symbol';
 
 /** The slip beside a value being edited. It stands inside the value's own element and finds a place where it hides no other value. */
@@ -19,7 +19,7 @@ export function Slip({ refused, children }: { readonly refused: boolean; readonl
     const own = anchor.getBoundingClientRect();
     const others = (selector: string): Box[] =>
       [...sheet.querySelectorAll(selector)]
-        .filter((element) => !anchor.contains(element))
+        .filter((element) => !anchor.contains(element) && !element.contains(anchor))
         .map((element) => element.getBoundingClientRect());
     const input = anchor.querySelector('input')?.getBoundingClientRect() ?? own;
     const page = { left: 4, top: 4, width: document.documentElement.clientWidth - 8, height: window.innerHeight - 8 };

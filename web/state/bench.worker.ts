@@ -1,13 +1,17 @@
-/** Answers questions about the shadow tone, the moment's reading before everything else. */
+/**
+ * The page's work off its own thread. One module, so that the model is fetched once: an instance for readings lives as long as the page, one
+ * for each render until it is done.
+ */
+import { renderClip } from '../../model/chain/render.ts';
 import { sentenceOf } from './notes.ts';
 import { findWorst, readFeedbackCurve, readMoment } from './toneStudy.ts';
-import type { FromReading, ToneQuestion, ToReading } from './workers.ts';
+import type { FromReading, FromRender, ToneQuestion, ToReading, ToRender } from './workers.ts';
 
 let asked: { id: number; question: ToneQuestion } | null = null;
 let work: Generator<void, void> | null = null;
 const pump = new MessageChannel();
 
-self.onmessage = ({ data }: MessageEvent<ToReading>) => {
+self.onmessage = ({ data }: MessageEvent<ToReading | ToRender>) => {
   switch (data.type) {
     case 'question':
       asked = data;
@@ -15,10 +19,14 @@ self.onmessage = ({ data }: MessageEvent<ToReading>) => {
       pump.port2.postMessage(null);
       return;
     case 'moment':
-      return answerMoment(data.id, data.gateV);
+      answerMoment(data.id, data.gateV);
+      return;
+    case 'render':
+      render(data);
+      return;
     default:
       data satisfies never;
-      throw new TypeError(`The reading worker does not know the message ${JSON.stringify(data)}`);
+      throw new TypeError(`The page's worker does not know the message ${JSON.stringify(data)}`);
   }
 };
 
@@ -43,17 +51,25 @@ function* answer(id: number, question: ToneQuestion): Generator<void, void> {
 }
 
 function answerMoment(id: number, gateV: number | null): void {
-  if (asked === null) {
-    tell({ type: 'reading', id, reading: { fault: 'No design has been given yet.' } });
-    return;
-  }
   try {
+    if (asked === null) throw new RangeError('No design has been given yet.');
     tell({ type: 'reading', id, reading: readMoment(asked.question, gateV) });
   } catch (error) {
     tell({ type: 'reading', id, reading: { fault: sentenceOf(error) } });
   }
 }
 
-function tell(message: FromReading): void {
-  self.postMessage(message);
+function render({ design, variantIndex, channels, sampleRateHz }: ToRender): void {
+  try {
+    const onProgress = (fraction: number) => tell({ type: 'progress', fraction });
+    const lines = renderClip(design, variantIndex, channels, sampleRateHz, onProgress) as Float32Array<ArrayBuffer>[];
+    const buffers = lines.map((line) => line.buffer);
+    tell({ type: 'done', channels: lines }, buffers);
+  } catch (error) {
+    tell({ type: 'fault', sentence: sentenceOf(error) });
+  }
+}
+
+function tell(message: FromReading | FromRender, transfer: Transferable[] = []): void {
+  self.postMessage(message, { transfer });
 }

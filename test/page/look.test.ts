@@ -1,0 +1,231 @@
+/** The sheet as it is seen: nothing overlaps or overflows, values are changed where they stand, and nobody is shut out. */
+import type { Browser, Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { findAccessFaults, launchBrowser, openTab, type Site, serveDist } from '../support/browser.ts';
+
+const WIDTHS = [320, 390, 768, 1280, 1600, 1920];
+const FEEDBACK = 'Feedback from drain to gate';
+const CONTROL = 'Control: fixed, or the LFO’s shape';
+
+let browser: Browser;
+let site: Site;
+
+beforeAll(async () => {
+  site = await serveDist();
+  browser = await launchBrowser();
+});
+
+afterAll(async () => {
+  await browser?.close();
+  await site?.close();
+});
+
+async function openSheet(widthPx: number, colourScheme: 'light' | 'dark' = 'light') {
+  const tab = await openTab(browser, site, { widthPx, heightPx: 900, colourScheme });
+  await tab.page.getByRole('slider').waitFor();
+  return tab;
+}
+
+/** The value in Fig. 1 whose accessible name begins with this. */
+const value = (page: Page, name: string) => page.locator(`.drawing [role=spinbutton][aria-label^="${name}"]`);
+
+describe.each(WIDTHS)('at %i px', (widthPx) => {
+  test('no fitting makes values overlap or leave the sheet, and nothing scrolls sideways', async () => {
+    const { page, complaints, close } = await openSheet(widthPx);
+    for (const feedback of ['resistor', 'buffered', 'none']) {
+      await page.locator('.drawing').getByLabel(FEEDBACK).selectOption(feedback);
+      for (const shape of ['square', 'fixed', 'sine']) {
+        await page.getByLabel(CONTROL).selectOption(shape);
+        expect(await page.evaluate(overlapsInDrawing), `${feedback}, ${shape}`).toEqual([]);
+        expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(widthPx);
+      }
+    }
+    expect(complaints).toEqual([]);
+    await close();
+  });
+
+  test('no text is under 11 px', async () => {
+    const { page, close } = await openSheet(widthPx);
+    expect(await page.evaluate(smallTexts)).toEqual([]);
+    await close();
+  });
+});
+
+describe.each(['light', 'dark'] as const)('in the %s scheme', (scheme) => {
+  test.each([390, 768, 1280, 1920])(
+    'axe-core finds no fault at rest, while typing, when refused and in a dialog, at %i px',
+    async (widthPx) => {
+      const { page, close } = await openSheet(widthPx, scheme);
+      expect(await findAccessFaults(page)).toEqual([]);
+      await value(page, 'R1').click();
+      await page.keyboard.type('6k8');
+      expect(await findAccessFaults(page)).toEqual([]);
+      await page.keyboard.type('k');
+      expect(await findAccessFaults(page)).toEqual([]);
+      await page.keyboard.press('Escape');
+      await page.getByRole('button', { name: 'Keys' }).click();
+      expect(await findAccessFaults(page)).toEqual([]);
+      await close();
+    },
+  );
+});
+
+describe('a value where it stands', () => {
+  test('is typed, and Enter sets it; undo brings the old one back', async () => {
+    const { page, close } = await openSheet(1280);
+    const before = await value(page, 'R1').textContent();
+    await value(page, 'R1').click();
+    await page.keyboard.type('6k8');
+    await page.keyboard.press('Enter');
+    expect(await value(page, 'R1').textContent()).toBe('6.80\u2009kΩ');
+    expect(await value(page, 'R1').getAttribute('aria-valuetext')).toBe('6.80\u2009kΩ');
+    await page.getByRole('button', { name: 'Undo' }).click();
+    expect(await value(page, 'R1').textContent()).toBe(before);
+    await close();
+  });
+
+  test('is left as it was by Esc, and keeps the focus', async () => {
+    const { page, close } = await openSheet(1280);
+    const before = await value(page, 'R1').textContent();
+    await value(page, 'R1').focus();
+    await page.keyboard.type('33');
+    await page.keyboard.press('Escape');
+    expect(await value(page, 'R1').textContent()).toBe(before);
+    expect(await page.evaluate(() => document.activeElement?.getAttribute('aria-label'))).toContain('R1');
+    await close();
+  });
+
+  test('is refused with a sentence and advice, and nothing changes', async () => {
+    const { page, close } = await openSheet(1280);
+    const before = await value(page, 'R2').textContent();
+    await value(page, 'R2').click();
+    await page.keyboard.type('1M2k');
+    await page.keyboard.press('Enter');
+    expect(await page.getByRole('alert').textContent()).toBe('“1M2k” is not a resistance.');
+    expect(await page.locator('.schematic figcaption').textContent()).toContain('Write 1M2');
+    await page.keyboard.press('Escape');
+    expect(await value(page, 'R2').textContent()).toBe(before);
+    await close();
+  });
+
+  test('steps through E24 by the arrow keys and by decades with the page keys', async () => {
+    const { page, close } = await openSheet(1280);
+    await value(page, 'R1').click();
+    await page.keyboard.type('10k');
+    await page.keyboard.press('Enter');
+    await page.keyboard.press('ArrowUp');
+    expect(await value(page, 'R1').textContent()).toBe('11.0\u2009kΩ');
+    await page.keyboard.press('PageDown');
+    expect(await value(page, 'R1').textContent()).toBe('1.10\u2009kΩ');
+    await close();
+  });
+
+  test('is dragged through its steps', async () => {
+    const { page, close } = await openSheet(1280);
+    await value(page, 'R1').click();
+    await page.keyboard.type('10k');
+    await page.keyboard.press('Enter');
+    const box = await value(page, 'R1').boundingBox();
+    if (box === null) throw new Error('R1 is not on the page');
+    await page.mouse.move(box.x + 10, box.y + 8);
+    await page.mouse.down();
+    await page.mouse.move(box.x + 10 + 28, box.y + 8, { steps: 4 });
+    await page.mouse.up();
+    expect(await value(page, 'R1').textContent()).toBe('13.0\u2009kΩ');
+    await close();
+  });
+
+  test('takes a part out with «none», and the drawing follows', async () => {
+    const { page, close } = await openSheet(1280);
+    await page.locator('.drawing').getByLabel(FEEDBACK).selectOption('resistor');
+    await value(page, 'C1').click();
+    await page.keyboard.type('100n');
+    await page.keyboard.press('Enter');
+    const plates = () => page.locator('.drawing .symbol .plate').count();
+    const fitted = await plates();
+    await value(page, 'C1').click();
+    await page.keyboard.type('none');
+    await page.keyboard.press('Enter');
+    expect(await value(page, 'C1').textContent()).toBe('none');
+    expect(await plates()).toBe(fitted - 1);
+    await close();
+  });
+
+  test.each([390, 1280])('shows its slip where it hides no other value, at %i px', async (widthPx) => {
+    const { page, close } = await openSheet(widthPx);
+    for (const name of ['R1', 'R3', 'R4', 'VGS(off)', 'IDSS', 'Make-up']) {
+      await value(page, name).click();
+      await page.keyboard.type('1');
+      await page.waitForTimeout(50);
+      expect(await page.evaluate(valuesUnderSlip), name).toEqual([]);
+      await page.keyboard.press('Escape');
+    }
+    await close();
+  });
+});
+
+describe('k', () => {
+  test('is set by the pointer on the axis of Fig. 2, from the keyboard and by dragging', async () => {
+    const { page, close } = await openSheet(1280);
+    await page.locator('.drawing').getByLabel(FEEDBACK).selectOption('buffered');
+    const slider = page.getByRole('slider');
+    await slider.focus();
+    await page.keyboard.press('Home');
+    const low = Number(await slider.getAttribute('aria-valuenow'));
+    await page.keyboard.press('ArrowRight');
+    expect(Number(await slider.getAttribute('aria-valuenow'))).toBeCloseTo(low + 0.001, 6);
+    const track = await page.locator('.k-track').boundingBox();
+    if (track === null) throw new Error('Fig. 2 has no axis');
+    await page.mouse.move(track.x + 10, track.y + 20);
+    await page.mouse.down();
+    await page.mouse.move(track.x + track.width / 2, track.y + 20, { steps: 5 });
+    await page.mouse.up();
+    expect(Number(await slider.getAttribute('aria-valuenow'))).toBeCloseTo(0.5, 1);
+    await close();
+  });
+});
+
+/** Pairs of values and labels in Fig. 1 that lie on each other, and those that leave the sheet. */
+function overlapsInDrawing(): string[] {
+  const sheet = document.documentElement.clientWidth;
+  const things = [...document.querySelectorAll('.drawing .value, .drawing .choice, .drawing .name, .drawing .live')].filter(
+    (element) => !element.querySelector('.name'),
+  );
+  const boxes = things
+    .map((element) => ({ words: element.textContent ?? '', box: element.getBoundingClientRect() }))
+    .filter(({ box }) => box.width > 0);
+  const found = boxes.filter(({ box }) => box.left < 0 || box.right > sheet).map(({ words }) => `${words} leaves the sheet`);
+  boxes.forEach((a, n) => {
+    for (const b of boxes.slice(n + 1)) {
+      const across = Math.min(a.box.right, b.box.right) - Math.max(a.box.left, b.box.left);
+      const down = Math.min(a.box.bottom, b.box.bottom) - Math.max(a.box.top, b.box.top);
+      if (across > 1 && down > 3) found.push(`${a.words} on ${b.words}`);
+    }
+  });
+  return found;
+}
+
+function smallTexts(): string[] {
+  const texts = [...document.querySelectorAll('body *')].filter((element) =>
+    [...element.childNodes].some((node) => node.nodeType === 3 && node.textContent?.trim()),
+  );
+  const plain = texts.filter((element) => !element.closest('sub, .subscript, .offscreen, noscript'));
+  return plain
+    .filter((element) => Number.parseFloat(getComputedStyle(element).fontSize) < 10.99)
+    .map((element) => element.textContent ?? '');
+}
+
+/** Values that the slip lies on. */
+function valuesUnderSlip(): string[] {
+  const slip = document.querySelector('.slip');
+  const own = slip?.closest('.value-box');
+  if (!slip || !own) return ['there is no slip'];
+  const box = slip.getBoundingClientRect();
+  const others = [...document.querySelectorAll('.value, .choice, .live')].filter((element) => !own.contains(element));
+  return others
+    .filter((element) => {
+      const other = element.getBoundingClientRect();
+      return other.width > 0 && box.left < other.right && other.left < box.right && box.top < other.bottom && other.top < box.bottom;
+    })
+    .map((element) => element.textContent ?? '');
+}
