@@ -61,7 +61,7 @@ const RULES: readonly Rule[] = [
   { room: 'worklet/', may: MODEL, packages: [] },
   {
     room: 'web/',
-    may: ['worklet/protocol.ts', ...MODEL],
+    may: ['worklet/protocol.ts', ...MODEL, 'assets/designs/'],
     packages: ['preact', '@preact/signals', 'tone', 'standardized-audio-context', 'uplot'],
   },
 ];

@@ -5,12 +5,8 @@ import { type GatePeriod, plotGate, regionAt, turnOf } from '../../../web/draw/g
 import { gatePeriod } from '../../../web/panels/gatePeriod.ts';
 
 const cell: Cell = {
-  circuit: 'shunt',
-  sourceOhm: 0,
-  seriesOhm: 1e4,
-  loadOhm: 1e6,
+  ...defaultDesign().variants[0].cell,
   loadF: 0,
-  controlOhm: 1e6,
   feedback: { kind: 'resistor', drainOhm: 1e6, blockingF: 100e-9 },
 };
 const lfo = (rateHz: number) => ({ source: 'lfo', shape: 'sine', rateHz, fromV: -0.6, toV: -1.8, edgeSec: 0.005 }) as const;
