@@ -9,7 +9,7 @@
  *          harmonic over the fundamental, where sidebands of one run into the other. A moment is found to 1/1024 of the cycle
  * Valid    make-up gain only, without the amplifier's limits
  */
-import { createCell, withTrapezoidalRule } from '../cell/cell.ts';
+import { createCell, forReadings } from '../cell/cell.ts';
 import { cellNumbers, variantAt } from '../cell/fromDesign.ts';
 import type { Design } from '../design/types.ts';
 import { cosTurns, dbFromRatio, ratioFromDb } from '../device/math.ts';
@@ -85,7 +85,7 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
   requireRange('toneV', toneV, 1e-9, 1e3, 'V peak');
   const periods = wholePeriods(options.toneHz ?? 1000, control.rateHz);
   const gain = at === 'output' ? ratioFromDb(output.gainDb) : 1;
-  const numbers = withTrapezoidalRule(cellNumbers(design, variantIndex, channel));
+  const numbers = forReadings(cellNumbers(design, variantIndex, channel));
   const cycle = refined(powerOfTwoFrom(POINTS_A_PERIOD * periods), FINEST, (points) => {
     const audio = Float64Array.from({ length: points }, (_, i) => toneV * cosTurns((((i + 1) * periods) % points) / points));
     const period = periodOf(createCell(numbers, 1 / (control.rateHz * points)), audio, controlOver(control, points).ends);

@@ -5,7 +5,7 @@
  * Error    the last doubling moved the fundamental by under 1e-7 and every harmonic above −160 dB by under 1e-4 dB; `converged` is false
  *          where the finest grid did not reach that. Harmonics under −260 dB re the fundamental are the arithmetic's own and reported as zero
  */
-import { createCell, gateSourceV, settle, withTrapezoidalRule } from '../cell/cell.ts';
+import { createCell, gateSourceV, settle, forReadings } from '../cell/cell.ts';
 import { cellNumbers, deviceOf, variantAt } from '../cell/fromDesign.ts';
 import type { Design } from '../design/types.ts';
 import { lawConstants, restingResistanceOhm } from '../device/law.ts';
@@ -66,7 +66,7 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
   const variant = variantAt(design, variantIndex);
   requireRange('toneHz', toneHz, 0.1, 1e6, 'Hz');
   requireRange('toneV', toneV, 1e-9, 1e3, 'V peak');
-  const numbers = withTrapezoidalRule(cellNumbers(design, variantIndex, channel));
+  const numbers = forReadings(cellNumbers(design, variantIndex, channel));
   const controlV = restingControlV(design, variantIndex, numbers, options);
   const gain = at === 'output' ? ratioFromDb(variant.output.gainDb) : 1;
   const solveOn = (size: number) => steadyPeriod(createCell(numbers, 1 / (toneHz * size)), toneV, controlV, size);

@@ -30,6 +30,7 @@ function gradual0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[24];
   const inverseWidth = c[25];
   const slope = c[26];
+  const enough = c[36];
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
@@ -69,7 +70,7 @@ function gradual0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b3 - a3) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
@@ -122,6 +123,7 @@ function gradual0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[40];
   const inverseWidth = c[41];
   const slope = c[42];
+  const enough = c[52];
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
@@ -166,7 +168,7 @@ function gradual0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b4 - a4) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
@@ -242,6 +244,7 @@ function gradual0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[60];
   const inverseWidth = c[61];
   const slope = c[62];
+  const enough = c[72];
   let x0 = s[0];
   let x1 = s[1];
   let e0 = s[2], f0 = s[4], g0 = s[6];
@@ -290,7 +293,7 @@ function gradual0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b5 - a5) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
@@ -391,6 +394,7 @@ function gradual0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -443,7 +447,7 @@ function gradual0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 21); I = s[21]; s[20] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -517,6 +521,7 @@ function gradual1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[40];
   const inverseWidth = c[41];
   const slope = c[42];
+  const enough = c[52];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
   let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
@@ -562,7 +567,7 @@ function gradual1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b4 - a4) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
@@ -637,6 +642,7 @@ function gradual1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[60];
   const inverseWidth = c[61];
   const slope = c[62];
+  const enough = c[72];
   let x0 = s[0];
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
@@ -686,7 +692,7 @@ function gradual1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b5 - a5) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
@@ -786,6 +792,7 @@ function gradual1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -839,7 +846,7 @@ function gradual1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -968,6 +975,7 @@ function gradual1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1025,7 +1033,7 @@ function gradual1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -1119,6 +1127,7 @@ function gradual2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[60];
   const inverseWidth = c[61];
   const slope = c[62];
+  const enough = c[72];
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
@@ -1167,7 +1176,7 @@ function gradual2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b5 - a5) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
@@ -1266,6 +1275,7 @@ function gradual2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1318,7 +1328,7 @@ function gradual2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 15); I = s[15]; s[14] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -1446,6 +1456,7 @@ function gradual2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1502,7 +1513,7 @@ function gradual2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -1663,6 +1674,7 @@ function gradual2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[144];
   const inverseWidth = c[145];
   const slope = c[146];
+  const enough = c[156];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1723,7 +1735,7 @@ function gradual2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b8 - a8) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
@@ -1841,6 +1853,7 @@ function gradual3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1892,7 +1905,7 @@ function gradual3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -2019,6 +2032,7 @@ function gradual3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2074,7 +2088,7 @@ function gradual3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 16); I = s[16]; s[15] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -2234,6 +2248,7 @@ function gradual3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[144];
   const inverseWidth = c[145];
   const slope = c[146];
+  const enough = c[156];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2293,7 +2308,7 @@ function gradual3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b8 - a8) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
@@ -2490,6 +2505,7 @@ function gradual3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[180];
   const inverseWidth = c[181];
   const slope = c[182];
+  const enough = c[192];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2553,7 +2569,7 @@ function gradual3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b9 - a9) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 174, 9, 19, a, b, s, 24); I = s[24]; s[23] += 1; }
     vs = a + a9 * I; vd = b + b9 * I;
@@ -2699,6 +2715,7 @@ function gradual4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2753,7 +2770,7 @@ function gradual4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -2913,6 +2930,7 @@ function gradual5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   const scale = c[144];
   const inverseWidth = c[145];
   const slope = c[146];
+  const enough = c[156];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2970,7 +2988,7 @@ function gradual5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       const change = h / slopes;
       I -= change;
       const moved = (b8 - a8) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 14); I = s[14]; s[13] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;

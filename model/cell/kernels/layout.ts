@@ -53,7 +53,9 @@ export const JUNCTION_ON_V = 14;
 export const CLAMP_ON_V = 15;
 export const CLAMP_A = 16;
 export const CLAMP_INVERSE_NVT = 17;
-export const DEVICE_WIDTH = 18;
+/** Step at which Newton's method stops, V. */
+export const ENOUGH_V = 18;
+export const DEVICE_WIDTH = 19;
 
 export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 

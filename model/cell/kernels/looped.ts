@@ -119,7 +119,7 @@ function solveChannel(
     const miss = termAt(c, t, device, vs) - termAt(c, t, device, vd) - current;
     const change = miss / (c[aI] * slopeAt(c, t, device, vs) - c[bI] * slopeAt(c, t, device, vd) - 1);
     current -= change;
-    if (Math.abs((c[bI] - c[aI]) * change) < 1e-8) {
+    if (Math.abs((c[bI] - c[aI]) * change) < c[device + L.ENOUGH_V]) {
       out[at] = current;
       return;
     }

@@ -30,6 +30,7 @@ function smooth0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[24];
   const inverseWidth = c[25];
   const slope = c[26];
+  const enough = c[36];
   const pieces = c[30];
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
@@ -72,7 +73,7 @@ function smooth0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b3 - a3) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
@@ -125,6 +126,7 @@ function smooth0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[40];
   const inverseWidth = c[41];
   const slope = c[42];
+  const enough = c[52];
   const pieces = c[46];
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
@@ -172,7 +174,7 @@ function smooth0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b4 - a4) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
@@ -248,6 +250,7 @@ function smooth0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[60];
   const inverseWidth = c[61];
   const slope = c[62];
+  const enough = c[72];
   const pieces = c[66];
   let x0 = s[0];
   let x1 = s[1];
@@ -299,7 +302,7 @@ function smooth0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b5 - a5) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
@@ -400,6 +403,7 @@ function smooth0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   const pieces = c[90];
   let x0 = s[0];
   let x1 = s[1];
@@ -455,7 +459,7 @@ function smooth0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 21); I = s[21]; s[20] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -529,6 +533,7 @@ function smooth1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[40];
   const inverseWidth = c[41];
   const slope = c[42];
+  const enough = c[52];
   const pieces = c[46];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
@@ -577,7 +582,7 @@ function smooth1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b4 - a4) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
@@ -652,6 +657,7 @@ function smooth1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[60];
   const inverseWidth = c[61];
   const slope = c[62];
+  const enough = c[72];
   const pieces = c[66];
   let x0 = s[0];
   let x1 = s[1];
@@ -704,7 +710,7 @@ function smooth1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b5 - a5) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
@@ -804,6 +810,7 @@ function smooth1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   const pieces = c[90];
   let x0 = s[0];
   let x1 = s[1];
@@ -860,7 +867,7 @@ function smooth1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -989,6 +996,7 @@ function smooth1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   const pieces = c[118];
   let x0 = s[0];
   let x1 = s[1];
@@ -1049,7 +1057,7 @@ function smooth1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -1143,6 +1151,7 @@ function smooth2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[60];
   const inverseWidth = c[61];
   const slope = c[62];
+  const enough = c[72];
   const pieces = c[66];
   let x0 = s[0];
   let x1 = s[1];
@@ -1194,7 +1203,7 @@ function smooth2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b5 - a5) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
@@ -1293,6 +1302,7 @@ function smooth2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   const pieces = c[90];
   let x0 = s[0];
   let x1 = s[1];
@@ -1348,7 +1358,7 @@ function smooth2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 15); I = s[15]; s[14] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -1476,6 +1486,7 @@ function smooth2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   const pieces = c[118];
   let x0 = s[0];
   let x1 = s[1];
@@ -1535,7 +1546,7 @@ function smooth2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -1696,6 +1707,7 @@ function smooth2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[144];
   const inverseWidth = c[145];
   const slope = c[146];
+  const enough = c[156];
   const pieces = c[150];
   let x0 = s[0];
   let x1 = s[1];
@@ -1759,7 +1771,7 @@ function smooth2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b8 - a8) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
@@ -1877,6 +1889,7 @@ function smooth3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[84];
   const inverseWidth = c[85];
   const slope = c[86];
+  const enough = c[96];
   const pieces = c[90];
   let x0 = s[0];
   let x1 = s[1];
@@ -1931,7 +1944,7 @@ function smooth3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b6 - a6) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
@@ -2058,6 +2071,7 @@ function smooth3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   const pieces = c[118];
   let x0 = s[0];
   let x1 = s[1];
@@ -2116,7 +2130,7 @@ function smooth3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 16); I = s[16]; s[15] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -2276,6 +2290,7 @@ function smooth3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[144];
   const inverseWidth = c[145];
   const slope = c[146];
+  const enough = c[156];
   const pieces = c[150];
   let x0 = s[0];
   let x1 = s[1];
@@ -2338,7 +2353,7 @@ function smooth3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b8 - a8) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
@@ -2535,6 +2550,7 @@ function smooth3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[180];
   const inverseWidth = c[181];
   const slope = c[182];
+  const enough = c[192];
   const pieces = c[186];
   let x0 = s[0];
   let x1 = s[1];
@@ -2601,7 +2617,7 @@ function smooth3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b9 - a9) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 174, 9, 19, a, b, s, 24); I = s[24]; s[23] += 1; }
     vs = a + a9 * I; vd = b + b9 * I;
@@ -2747,6 +2763,7 @@ function smooth4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[112];
   const inverseWidth = c[113];
   const slope = c[114];
+  const enough = c[124];
   const pieces = c[118];
   let x0 = s[0];
   let x1 = s[1];
@@ -2804,7 +2821,7 @@ function smooth4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b7 - a7) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
@@ -2964,6 +2981,7 @@ function smooth5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const scale = c[144];
   const inverseWidth = c[145];
   const slope = c[146];
+  const enough = c[156];
   const pieces = c[150];
   let x0 = s[0];
   let x1 = s[1];
@@ -3024,7 +3042,7 @@ function smooth5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       const change = h / slopes;
       I -= change;
       const moved = (b8 - a8) * change;
-      if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }
+      if (moved < enough && moved > -enough) { settled = 1; break; }
     }
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 14); I = s[14]; s[13] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;

@@ -10,7 +10,7 @@
  *          Other laws, and λ: Newton from the current extrapolated along a straight line; where that does not settle, bisection.
  *          Junction currents, when one conducts, by the solver in ports.ts. Noise, where there is a row of it for each sample, adds to the rows;
  *          the channel's own is white with the conductance of the sample before (4kT/r: van der Ziel, Proc. IRE 50 (1962) 1808)
- * Error    Newton stops at a step under 1e-8 V in the overdrives; what is left is its square over the tail's width, under 1e-14 V
+ * Error    Newton stops at a step under `ENOUGH_V` in the overdrives; what is left is about its square over twice the overdrive
  */
 import type { Law } from '../../design/types.ts';
 import * as L from './layout.ts';
@@ -197,7 +197,12 @@ function deviceConstants(law: Law, device: (index: number) => string): [string, 
     ['scale', device(L.SCALE)],
   ];
   if (law === 'square') return [...common, ['bent_', device(L.BENT)], ['fall', device(L.FALL)], ['rise', device(L.RISE)]];
-  const shaped: [string, string][] = [...common, ['inverseWidth', device(L.INVERSE_WIDTH)], ['slope', device(L.SLOPE)]];
+  const shaped: [string, string][] = [
+    ...common,
+    ['inverseWidth', device(L.INVERSE_WIDTH)],
+    ['slope', device(L.SLOPE)],
+    ['enough', device(L.ENOUGH_V)],
+  ];
   return law === 'gradual' ? shaped : [...shaped, ['pieces', device(L.PIECES)]];
 }
 
@@ -267,7 +272,7 @@ function newtonSolution(law: Law, aI: string, bI: string, places: string, slot: 
     `  ${language.constant} change = h / slopes;`,
     '  I -= change;',
     `  ${language.constant} moved = (${bI} - ${aI}) * change;`,
-    '  if (moved < 1e-8 && moved > -1e-8) { settled = 1; break; }',
+    '  if (moved < enough && moved > -enough) { settled = 1; break; }',
     '}',
     `if (settled == 0) { searched(c, t, ${places}, a, b, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; ${slot(L.FALLBACKS)} += 1; }`,
     `vs = a + ${aI} * I; vd = b + ${bI} * I;`,
