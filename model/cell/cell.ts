@@ -70,7 +70,10 @@ export interface Cell {
   /** The values in force; changed by `loadValues`. */
   readonly values: Float64Array;
   readonly reduction: Reduction;
+  /** In force; then those aimed at, and one step of the way there. */
   readonly coefficients: Float64Array;
+  readonly target: Float64Array;
+  readonly increment: Float64Array;
   readonly state: Float64Array;
   readonly stepSec: number;
   readonly rest: RestMemory;
@@ -145,6 +148,8 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
     values: Float64Array.from(numbers.values),
     reduction: createReduction(numbers.plan),
     coefficients: new Float64Array(L.coefficientLayout(n).length),
+    target: new Float64Array(L.coefficientLayout(n).length),
+    increment: new Float64Array(L.coefficientLayout(n).length),
     state: new Float64Array(slots + L.STATE_SLOTS),
     slots,
     kernel: kernelOf(numbers.law, trapezoidal, n - trapezoidal),
@@ -167,12 +172,40 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
 
 /** Puts new values in force; the state stays as it is. False, with the old coefficients kept, when the network would be singular. */
 export function loadValues(cell: Cell, values: Float64Array): boolean {
-  const { reduction, stepSec } = cell;
-  for (let i = 0; i < reduction.values.length; i++) reduction.values[i] = values[i];
-  if (!respond(reduction) || !discretise(reduction, stepSec)) return false;
+  if (!aimAt(cell, values, 1)) return false;
+  arrive(cell);
+  return true;
+}
+
+/**
+ * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients at both ends are exact, between them they follow a
+ * straight line. False, and nothing changes, when the network would be singular.
+ */
+export function aimAt(cell: Cell, values: Float64Array, samples: number): boolean {
+  const { reduction, stepSec, coefficients, target, increment } = cell;
+  const { values: moved } = reduction;
+  for (let i = 0; i < moved.length; i++) moved[i] = values[i];
+  if (!respond(reduction) || !discretise(reduction, stepSec)) {
+    for (let i = 0; i < moved.length; i++) moved[i] = cell.values[i];
+    respond(reduction);
+    discretise(reduction, stepSec);
+    return false;
+  }
   for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
   packStep(cell);
+  for (let i = 0; i < target.length; i++) increment[i] = target[i] === coefficients[i] ? 0 : (target[i] - coefficients[i]) / samples;
   return true;
+}
+
+/** One step towards the values aimed at. */
+export function approach(cell: Cell): void {
+  const { coefficients, increment } = cell;
+  for (let i = 0; i < coefficients.length; i++) coefficients[i] += increment[i];
+}
+
+/** The values aimed at, exactly. */
+export function arrive(cell: Cell): void {
+  cell.coefficients.set(cell.target);
 }
 
 /**
@@ -211,7 +244,7 @@ function deviceValue(cell: Cell, index: number): number {
 
 function packStep(cell: Cell): void {
   const n = cell.stateCount;
-  const { coefficients: c, reduction } = cell;
+  const { target: c, reduction } = cell;
   const { polarity, plan } = cell.numbers;
   const row = L.rowLayout(n);
   const all = L.coefficientLayout(n);
@@ -266,7 +299,7 @@ function packCurrents(
 /** The memory rows; old reverse currents, which are as steady as the new ones, go into the constants of the rows through their memory. */
 function packMemory(cell: Cell): void {
   const n = cell.stateCount;
-  const { coefficients: c, reduction } = cell;
+  const { target: c, reduction } = cell;
   const { polarity } = cell.numbers;
   const row = L.rowLayout(n);
   const past = L.memoryLayout(n);

@@ -1,8 +1,9 @@
 /**
  * One complete path of a chain, for one shape of circuit: oversamplers, cells, control and amplifier with their state. Values move along straight
- * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `SLICE` upper-rate samples while they do.
+ * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
+ * its coefficients go straight from one exact set to the next, a step at each sample.
  */
-import { advanceCell, type Cell, createCell, loadValues, settle } from '../cell/cell.ts';
+import { advanceCell, aimAt, approach, arrive, type Cell, createCell, loadValues, settle } from '../cell/cell.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
@@ -13,8 +14,6 @@ import { createOversampler, lower, type Oversampler, raise } from './oversample.
 
 /** Lower-rate samples that a voice takes at a time. */
 export const LONGEST_BLOCK = 128;
-/** Upper-rate samples between two makings of the cell's matrices. */
-const SLICE = 32;
 const RAMP_SEC = 0.02;
 /** A voltage that no cell of this kind reaches: beyond it the state is taken to be lost. */
 const RUNAWAY_V = 1e6;
@@ -23,6 +22,29 @@ interface Moving {
   readonly now: Float64Array;
   readonly from: Float64Array;
   readonly to: Float64Array;
+  /** Where the present slice ends, and one sample's part of the way. */
+  readonly aim: Float64Array;
+  readonly increment: Float64Array;
+}
+
+interface Levels {
+  readonly from: Float64Array;
+  readonly to: Float64Array;
+  done: number;
+  total: number;
+}
+
+const FULL_SCALE_V = 0;
+const PER_V = 1;
+
+function levelsOf(numbers: ChainNumbers): Float64Array {
+  return Float64Array.of(numbers.fullScaleV, (numbers.idealAmplifier ? numbers.amplifier[GAIN] : 1) / numbers.fullScaleV);
+}
+
+/** A level at sample `i` of the block. */
+function levelAt({ from, to, done, total }: Levels, index: number, i: number): number {
+  const at = done + i + 1;
+  return at >= total ? to[index] : from[index] + (at / total) * (to[index] - from[index]);
 }
 
 /** One audio channel of a voice. */
@@ -33,8 +55,9 @@ export interface Lane {
   readonly values: Moving;
   readonly noise: Float64Array;
   readonly gaussian: GaussianSource;
-  /** Of the last block. */
-  drainPeakV: number;
+  /** Of the last block; `lost` where a voltage in it was no number or ran away. */
+  outputPeakV: number;
+  lost: boolean;
 }
 
 export interface Voice {
@@ -43,8 +66,8 @@ export interface Voice {
   readonly drive: Drive;
   /** Raises a recorded control; null for other controls. */
   readonly external: Oversampler | null;
-  /** Full scale, V. */
-  readonly scale: Moving;
+  /** Full scale, V, and samples for a volt: they move at the lower rate. */
+  readonly levels: Levels;
   readonly control: Moving;
   readonly amplifier: Moving;
   /** Slices done and to do of the ramp; upper-rate samples done of the slice. */
@@ -57,7 +80,8 @@ export interface Voice {
 }
 
 function moving(values: Float64Array): Moving {
-  return { now: values, from: Float64Array.from(values), to: Float64Array.from(values) };
+  const copy = () => Float64Array.from(values);
+  return { now: values, from: copy(), to: copy(), aim: copy(), increment: new Float64Array(values.length) };
 }
 
 /** A voice at its operating point. Throws when a cell's network is singular. */
@@ -78,7 +102,8 @@ export function createVoice(numbers: ChainNumbers): Voice {
       values: moving(Float64Array.from(cell.values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
-      drainPeakV: 0,
+      outputPeakV: 0,
+      lost: false,
     };
   });
   const control = moving(Float64Array.from(numbers.control.values));
@@ -87,7 +112,7 @@ export function createVoice(numbers: ChainNumbers): Voice {
     lanes,
     drive: createDrive(numbers.control, control.now, lanes, LONGEST_BLOCK * oversampling),
     external: numbers.control.kind === 'external' ? createOversampler(oversampling, filters, LONGEST_BLOCK) : null,
-    scale: moving(Float64Array.of(numbers.fullScaleV)),
+    levels: { from: levelsOf(numbers), to: levelsOf(numbers), done: 0, total: 0 },
     control,
     amplifier: moving(Float64Array.from(numbers.amplifier)),
     ramp: { done: 0, total: 0, inSlice: 0 },
@@ -97,7 +122,11 @@ export function createVoice(numbers: ChainNumbers): Voice {
 
 /** Starts moving to the values of `numbers`, which have the voice's shape, from wherever they are now. */
 export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
-  retarget(voice.scale, Float64Array.of(numbers.fullScaleV));
+  const { levels } = voice;
+  for (let index = 0; index < levels.from.length; index++) levels.from[index] = levelAt(levels, index, -1);
+  levels.to.set(levelsOf(numbers));
+  levels.done = 0;
+  levels.total = Math.round(RAMP_SEC * numbers.sampleRateHz);
   retarget(voice.control, numbers.control.values);
   retarget(voice.amplifier, numbers.amplifier);
   numbers.cells.forEach((cell, channel) => {
@@ -105,7 +134,7 @@ export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
   });
   voice.ramp.done = 0;
   voice.ramp.inSlice = 0;
-  voice.ramp.total = Math.max(1, Math.round((RAMP_SEC * numbers.sampleRateHz * numbers.oversampling) / SLICE));
+  voice.ramp.total = Math.max(1, Math.round((RAMP_SEC * numbers.sampleRateHz * numbers.oversampling) / voice.numbers.updateEvery));
 }
 
 function retarget(values: Moving, to: Float64Array): void {
@@ -113,9 +142,16 @@ function retarget(values: Moving, to: Float64Array): void {
   values.to.set(to);
 }
 
-function follow(values: Moving, fraction: number): void {
-  const { now, from, to } = values;
-  for (let i = 0; i < now.length; i++) now[i] = fraction === 1 ? to[i] : from[i] + fraction * (to[i] - from[i]);
+/** Aims at a fraction of the whole way, `samples` steps from here. */
+function aim({ now, from, to, aim: end, increment }: Moving, fraction: number, samples: number): void {
+  for (let i = 0; i < now.length; i++) {
+    end[i] = fraction === 1 ? to[i] : from[i] + fraction * (to[i] - from[i]);
+    increment[i] = (end[i] - now[i]) / samples;
+  }
+}
+
+function step({ now, increment }: Moving): void {
+  for (let i = 0; i < now.length; i++) now[i] += increment[i];
 }
 
 /**
@@ -129,12 +165,11 @@ export function processVoice(
   outputs: readonly Float64Array[],
   count: number,
 ): boolean {
-  const { lanes, numbers } = voice;
+  const { lanes, numbers, levels } = voice;
   const upperCount = count * numbers.oversampling;
   for (let channel = 0; channel < lanes.length; channel++) {
     const first = lanes[channel].oversampler.buffers[0];
-    const fullScaleV = voice.scale.now[0];
-    for (let i = 0; i < count; i++) first[i] = inputs[channel][i] * fullScaleV;
+    for (let i = 0; i < count; i++) first[i] = inputs[channel][i] * levelAt(levels, FULL_SCALE_V, i);
     raise(lanes[channel].oversampler, count);
   }
   if (voice.external) {
@@ -142,49 +177,95 @@ export function processVoice(
     for (let i = 0; i < count; i++) first[i] = external[i];
     voice.drive.recorded = raise(voice.external, count);
   }
+  for (let channel = 0; channel < lanes.length; channel++) {
+    lanes[channel].outputPeakV = 0;
+    lanes[channel].lost = false;
+  }
   advanceAll(voice, upperCount);
   advanceQuiet(voice, count);
   let sound = true;
   for (let channel = 0; channel < lanes.length; channel++) {
-    const lane = lanes[channel];
-    sound = keepPeak(voice, lane, upperCount) && sound;
-    const low = lower(lane.oversampler, count);
-    const perV = (numbers.idealAmplifier ? voice.amplifier.now[GAIN] : 1) / voice.scale.now[0];
-    for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * perV;
+    if (lanes[channel].lost) {
+      putAtRest(voice, lanes[channel]);
+      sound = false;
+    }
+    const low = lower(lanes[channel].oversampler, count);
+    for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * levelAt(levels, PER_V, i);
   }
+  levels.done = Math.min(levels.done + count, levels.total);
   return sound;
 }
 
-/** Control, cells and amplifiers, slice by slice while values move. */
+/** Control, cells and amplifiers; sample by sample while values move. */
 function advanceAll(voice: Voice, upperCount: number): void {
   const { lanes, ramp, numbers } = voice;
   let at = 0;
-  while (at < upperCount) {
-    const isMoving = ramp.done < ramp.total;
-    const end = isMoving ? Math.min(upperCount, at + SLICE - ramp.inSlice) : upperCount;
-    if (isMoving && ramp.inSlice === 0) takeValues(voice, (ramp.done + 1) / ramp.total);
-    advanceSlice(voice.drive, lanes, numbers, at, end);
-    if (isMoving) {
-      ramp.inSlice += end - at;
-      if (ramp.inSlice === SLICE) {
-        ramp.inSlice = 0;
-        ramp.done += 1;
-      }
+  while (at < upperCount && ramp.done < ramp.total) {
+    if (ramp.inSlice === 0) beginSlice(voice, (ramp.done + 1) / ramp.total);
+    stepSlice(voice);
+    ramp.inSlice += 1;
+    if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
+    advanceSlice(voice.drive, lanes, numbers, at, at + 1);
+    finish(voice, at, at + 1);
+    at += 1;
+  }
+  if (at === upperCount) return;
+  advanceSlice(voice.drive, lanes, numbers, at, upperCount);
+  finish(voice, at, upperCount);
+}
+
+function beginSlice(voice: Voice, fraction: number): void {
+  const { updateEvery } = voice.numbers;
+  aim(voice.control, fraction, updateEvery);
+  aim(voice.amplifier, fraction, updateEvery);
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const { cell, values } = voice.lanes[channel];
+    aim(values, fraction, updateEvery);
+    aimAt(cell, values.aim, updateEvery);
+  }
+  loadValues(voice.quiet.cell, voice.lanes[0].values.aim);
+}
+
+function stepSlice(voice: Voice): void {
+  step(voice.control);
+  step(voice.amplifier);
+  for (let channel = 0; channel < voice.lanes.length; channel++) approach(voice.lanes[channel].cell);
+}
+
+function endSlice(voice: Voice): void {
+  voice.control.now.set(voice.control.aim);
+  voice.amplifier.now.set(voice.amplifier.aim);
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const { cell, values } = voice.lanes[channel];
+    values.now.set(values.aim);
+    arrive(cell);
+  }
+  voice.ramp.inSlice = 0;
+  voice.ramp.done += 1;
+}
+
+/** Notes the cells' peaks, and amplifies: a real amplifier works at the upper rate, an ideal one is a gain, applied at the lower. */
+function finish(voice: Voice, from: number, to: number): void {
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const lane = voice.lanes[channel];
+    const { buffers } = lane.oversampler;
+    const signal = buffers[buffers.length - 1];
+    for (let i = from; i < to; i++) {
+      const size = Math.abs(signal[i]);
+      if (!(size < RUNAWAY_V)) lane.lost = true;
+      if (size > lane.outputPeakV) lane.outputPeakV = size;
     }
-    at = end;
+    if (!voice.numbers.idealAmplifier) processAmplifier(voice.amplifier.now, lane.amplifier, signal, from, to);
   }
 }
 
-function takeValues(voice: Voice, fraction: number): void {
-  follow(voice.scale, fraction);
-  follow(voice.control, fraction);
-  follow(voice.amplifier, fraction);
-  for (let channel = 0; channel < voice.lanes.length; channel++) {
-    const { cell, values } = voice.lanes[channel];
-    follow(values, fraction);
-    loadValues(cell, values.now);
-  }
-  loadValues(voice.quiet.cell, voice.lanes[0].values.now);
+/** The cell at its operating point, the block silent. */
+function putAtRest(voice: Voice, lane: Lane): void {
+  lane.oversampler.buffers[lane.oversampler.buffers.length - 1].fill(0);
+  lane.outputPeakV = 0;
+  lane.amplifier.fill(0);
+  lane.cell.state.fill(0);
+  settle(lane.cell, 0, quietControlV(voice.numbers.control));
 }
 
 function advanceQuiet(voice: Voice, count: number): void {
@@ -197,26 +278,4 @@ function advanceQuiet(voice: Voice, count: number): void {
   quiet.feedthroughPeakV = 0;
   for (let i = 0; i < count; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
   if (!(quiet.feedthroughPeakV < RUNAWAY_V)) settle(quiet.cell, 0, quietControlV(numbers.control));
-}
-
-/** Notes the cell's peak and amplifies; puts the cell at rest and silences its block when the voltage is not a number or has run away. */
-function keepPeak(voice: Voice, lane: Lane, upperCount: number): boolean {
-  const { buffers } = lane.oversampler;
-  const drain = buffers[buffers.length - 1];
-  let peak = 0;
-  let lost = false;
-  for (let i = 0; i < upperCount; i++) {
-    const size = Math.abs(drain[i]);
-    if (!(size < RUNAWAY_V)) lost = true;
-    if (size > peak) peak = size;
-  }
-  lane.drainPeakV = lost ? 0 : peak;
-  if (lost) {
-    drain.fill(0);
-    lane.amplifier.fill(0);
-    lane.cell.state.fill(0);
-    settle(lane.cell, 0, quietControlV(voice.numbers.control));
-  }
-  if (!voice.numbers.idealAmplifier) processAmplifier(voice.amplifier.now, lane.amplifier, drain, 0, upperCount);
-  return !lost;
 }
