@@ -17,16 +17,18 @@ import { envelopeOf, groupAmplitude, lineAmplitude, type Lines, linesOf } from '
 import { controlOver, type Feedthrough, feedthroughOf, type Lfo } from './feedthrough.ts';
 import { refined } from './refine.ts';
 import { requireRange } from './require.ts';
-import { periodOf, type RegionShares, regionShares } from './steady.ts';
+import { periodOf, type RegionShares, regionShares, type SteadyStart } from './steady.ts';
 
 const HARMONICS = 9;
 const SIDEBANDS = 16;
 const MOMENTS = 1024;
 const POINTS_A_PERIOD = 32;
-const FINEST = 2097152;
+/** Grid points in a cycle: usually enough, and what the longest cycle may take. */
+const FINEST = 262144;
+const LONGEST = 1048576;
 /** With fewer periods in a cycle the sidebands of one harmonic run into the next. */
 const FEWEST_PERIODS = 8;
-const MOST_PERIODS = FINEST / (2 * POINTS_A_PERIOD);
+const MOST_PERIODS = LONGEST / (2 * POINTS_A_PERIOD);
 
 export interface CycleOptions {
   /** Hz, rounded to a whole multiple of the LFO's rate; 1000 when left out. */
@@ -86,9 +88,12 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
   const periods = wholePeriods(options.toneHz ?? 1000, control.rateHz);
   const gain = at === 'output' ? ratioFromDb(output.gainDb) : 1;
   const numbers = withTrapezoidalRule(cellNumbers(design, variantIndex, channel));
-  const cycle = refined(powerOfTwoFrom(POINTS_A_PERIOD * periods), FINEST, (points) => {
+  const coarsest = powerOfTwoFrom(POINTS_A_PERIOD * periods);
+  let start: SteadyStart | null = null;
+  const cycle = refined(coarsest, Math.max(FINEST, 2 * coarsest), (points) => {
     const audio = Float64Array.from({ length: points }, (_, i) => toneV * cosTurns((((i + 1) * periods) % points) / points));
-    const period = periodOf(createCell(numbers, 1 / (control.rateHz * points)), audio, controlOver(control, points).ends);
+    const period = periodOf(createCell(numbers, 1 / (control.rateHz * points)), audio, controlOver(control, points).ends, start);
+    start = period.start;
     const lines = linesOf(period.output);
     return { value: { lines, regions: regionShares(period) }, watched: watchedIn(lines, periods), settled: period.settled };
   });
