@@ -6,6 +6,7 @@ import type { Device, Law } from '../design/types.ts';
 import { type LawConstants, lawConstants } from '../device/law.ts';
 import { smoothTable, TERMS } from '../device/table.ts';
 import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
+import { log } from '../device/math.ts';
 import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
@@ -14,13 +15,14 @@ import { GRADUAL_KERNELS } from './kernels/gradual.ts';
 import { SMOOTH_KERNELS } from './kernels/smooth.ts';
 import { SQUARE_KERNELS } from './kernels/square.ts';
 import { factor, solve } from './linear.ts';
-import { CONSTANT, DRIVES, GATE_DRAIN, GATE_SOURCE, type Plan, planCircuit } from './plan.ts';
+import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
 import { createReduction, discretise, memoryColumns, type Reduction, respond, stepColumns } from './reduce.ts';
 
 /** Boltzmann's constant over the elementary charge, V/K (SI 2019, exact values 1.380649e-23 and 1.602176634e-19). */
 const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
-/** Below this many nVT a junction carries its reverse current and no more: e^−10 of it is left out, under 1 aA for 10 fA. */
+/** Below this many nVT, and where less than this flows above it, a junction carries its reverse current and no more. */
 const OFF_BELOW = -10;
+const LEFT_OUT_A = 1e-15;
 
 const KERNELS = { square: SQUARE_KERNELS, gradual: GRADUAL_KERNELS, smooth: SMOOTH_KERNELS };
 
@@ -256,24 +258,14 @@ function packStep(cell: Cell): void {
     const sign = r < 2 ? polarity : 1;
     for (let k = 0; k < n; k++) c[to + k] = sign * step[from + k];
     for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * step[from + columns.newU + k];
-    const byS = sign * polarity * step[from + columns.newJ];
-    const byD = sign * polarity * step[from + columns.newJ + 1];
-    packCurrents(cell, c, to, r, row, all, byS, byD);
+    const j = from + columns.newJ;
+    packCurrents(cell, c, to, r, row, all, sign * polarity * step[j], sign * polarity * step[j + 1]);
     c[to + row.constant] += sign * step[from + columns.constant] - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
   }
   const from = (n + 2) * plan.width;
   const to = all.outputRow * row.width;
   for (let k = 0; k < n + 2; k++) c[to + k] = response[from + k];
-  packCurrents(
-    cell,
-    c,
-    to,
-    all.outputRow,
-    row,
-    all,
-    polarity * response[from + n + GATE_SOURCE],
-    polarity * response[from + n + GATE_DRAIN],
-  );
+  packCurrents(cell, c, to, all.outputRow, row, all, polarity * response[from + n + CHANNEL], polarity * response[from + n + GATE_DRAIN]);
   c[to + row.constant] += response[from + n + CONSTANT];
   packMemory(cell);
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
@@ -287,10 +279,11 @@ function packCurrents(
   r: number,
   row: ReturnType<typeof L.rowLayout>,
   all: ReturnType<typeof L.coefficientLayout>,
-  byS: number,
+  byChannel: number,
   byD: number,
 ): void {
-  c[to + row.current] = byS - byD;
+  const byS = byChannel + byD;
+  c[to + row.current] = byChannel;
   c[to + row.constant] = steadyCurrents(cell, byS, byD);
   c[all.junction + r * L.JUNCTION_WIDTH + L.BY_S] = byS;
   c[all.junction + r * L.JUNCTION_WIDTH + L.BY_D] = byD;
@@ -309,9 +302,10 @@ function packMemory(cell: Cell): void {
     const at = i * from.width;
     const to = all.memory + i * past.width;
     for (let k = 0; k < n + 2; k++) c[to + k] = reduction.memory[at + k];
-    const byS = polarity * reduction.memory[at + from.oldJ];
+    const byChannel = polarity * reduction.memory[at + from.oldJ];
     const byD = polarity * reduction.memory[at + from.oldJ + 1];
-    c[to + past.oldI] = byS - byD;
+    const byS = byChannel + byD;
+    c[to + past.oldI] = byChannel;
     c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_S] = byS;
     c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_D] = byD;
     const steady = steadyCurrents(cell, byS, byD);
@@ -336,8 +330,8 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   const offV = deviceValue(cell, GATE_OFF_V);
   c[at + L.LAW] = L.LAW_NUMBER[law];
   c[at + L.GATE_OFF_V] = offV;
-  c[at + L.JUNCTION_ON_V] = reverseA > 0 ? OFF_BELOW * nVt - offV : Number.POSITIVE_INFINITY;
-  c[at + L.CLAMP_ON_V] = clampA > 0 ? OFF_BELOW * clampNVt - offV : Number.POSITIVE_INFINITY;
+  c[at + L.JUNCTION_ON_V] = conductsFrom(reverseA, nVt) - offV;
+  c[at + L.CLAMP_ON_V] = conductsFrom(clampA, clampNVt) - offV;
   c[at + L.ON_V] = Math.min(c[at + L.JUNCTION_ON_V], c[at + L.CLAMP_ON_V]);
   c[at + L.REVERSE_A] = reverseA;
   c[at + L.INVERSE_NVT] = 1 / nVt;
@@ -353,6 +347,11 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   c[at + L.PIECES] = table.length / TERMS;
   c[at + L.EXPONENT] = exponent;
   c[at + L.ENOUGH_V] = cell.numbers.enoughV;
+}
+
+/** The voltage below which a junction's current above its reverse current is left out, V. */
+function conductsFrom(reverseA: number, nVtV: number): number {
+  return reverseA > 0 ? Math.min(OFF_BELOW, log(LEFT_OUT_A / reverseA)) * nVtV : Number.POSITIVE_INFINITY;
 }
 
 /**
@@ -376,12 +375,13 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   KERNELS[law]['0 0'](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
   const reverseA = deviceValue(cell, REVERSE_A);
   const channelA = rest.state[L.CHANNEL_A];
-  const gateSourceA = polarity * (channelA + rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A));
-  const gateDrainA = polarity * (rest.state[L.JUNCTION_D] - channelA - reverseA);
+  const sourceA = rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A);
+  const alongA = polarity * (channelA + sourceA);
+  const gateA = polarity * (sourceA + rest.state[L.JUNCTION_D] - reverseA);
   for (let r = 0; r < n; r++) {
     const at = r * DRIVES;
     state[r] = rest.columns[at] * audioV + rest.columns[at + 1] * controlV + rest.columns[at + CONSTANT];
-    state[r] += rest.columns[at + GATE_SOURCE] * gateSourceA + rest.columns[at + GATE_DRAIN] * gateDrainA;
+    state[r] += rest.columns[at + CHANNEL] * alongA + rest.columns[at + GATE_DRAIN] * gateA;
   }
   const stiff = n - plan.trapezoidal;
   for (let k = 0; k < stiff; k++) {
@@ -408,9 +408,9 @@ function packRest(cell: Cell): void {
     const to = r * row.width;
     const sign = r < 2 ? polarity : 1;
     for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * throughStates(response, rest.columns, from, n, k);
-    const byS = sign * polarity * throughStates(response, rest.columns, from, n, GATE_SOURCE);
+    const byChannel = sign * polarity * throughStates(response, rest.columns, from, n, CHANNEL);
     const byD = sign * polarity * throughStates(response, rest.columns, from, n, GATE_DRAIN);
-    packCurrents(cell, c, to, r, row, all, byS, byD);
+    packCurrents(cell, c, to, r, row, all, byChannel, byD);
     c[to + row.constant] += sign * throughStates(response, rest.columns, from, n, CONSTANT) - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
   }
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);

@@ -9,11 +9,14 @@
 import { type Circuit, circuitShape, type Element, elementNodes, elementValue } from './circuit.ts';
 import { chooseForest } from './forest.ts';
 
-/** Columns that drive the network besides the states: two sources, the constants, the two port currents of the FET. */
+/**
+ * Columns that drive the network besides the states: two sources, the constants, a current along the channel from drain to source and one from gate
+ * to drain. A current from gate to source is both: as a column of its own, its difference to the other would lose what the gate's impedance adds to each.
+ */
 export const AUDIO = 0;
 export const CONTROL = 1;
 export const CONSTANT = 2;
-export const GATE_SOURCE = 3;
+export const CHANNEL = 3;
 export const GATE_DRAIN = 4;
 export const DRIVES = 5;
 
@@ -208,7 +211,7 @@ function fixedColumns(
     if (element.kind === 'inductor') current(row(element.a), row(element.b), state);
     else add(branchOf.get(index) as number, state, 1);
   });
-  current(ends.gate, ends.source, n + GATE_SOURCE);
+  current(ends.drain, ends.source, n + CHANNEL);
   current(ends.gate, ends.drain, n + GATE_DRAIN);
   noisy.forEach((index, k) => {
     const element = elements[index];

@@ -13,7 +13,7 @@
  * `reduce` writes in place and allocates nothing, so that values can be moved on the audio thread.
  */
 import { factor, solve } from './linear.ts';
-import { CONSTANT, DRIVES, GATE_SOURCE, type Plan } from './plan.ts';
+import { CHANNEL, CONSTANT, DRIVES, type Plan } from './plan.ts';
 
 /** Working memory and result of a reduction. Row-major; widths in `layout`. */
 export interface Reduction {
@@ -129,7 +129,7 @@ export function discretise(reduction: Reduction, stepSec: number): boolean {
     }
     for (let k = 0; k < 2; k++) {
       step[to + columns.newU + k] += response[p + n + k];
-      step[to + columns.newJ + k] += response[p + n + GATE_SOURCE + k];
+      step[to + columns.newJ + k] += response[p + n + CHANNEL + k];
     }
     step[to + columns.constant] += response[p + n + CONSTANT];
     for (let k = 0; k < plan.noisy.length; k++) step[to + columns.noise + k] += response[p + n + DRIVES + k];
@@ -151,13 +151,13 @@ function addDrives({ plan, response, memory, work }: Reduction, row: number): vo
   for (let state = 0; state < n; state++) work.left[row * n + state] -= weight * response[f + state];
   for (let k = 0; k < 2; k++) {
     work.right[r + columns.newU + k] += weight * response[f + n + k];
-    work.right[r + columns.newJ + k] += weight * response[f + n + GATE_SOURCE + k];
+    work.right[r + columns.newJ + k] += weight * response[f + n + CHANNEL + k];
   }
   if (isTrapezoidal) {
     for (let state = 0; state < n; state++) memory[m + state] += 0.5 * response[f + state];
     for (let k = 0; k < 2; k++) {
       memory[m + past.oldU + k] += 0.5 * response[f + n + k];
-      memory[m + past.oldJ + k] += 0.5 * response[f + n + GATE_SOURCE + k];
+      memory[m + past.oldJ + k] += 0.5 * response[f + n + CHANNEL + k];
     }
   }
   work.right[r + columns.constant] += response[f + n + CONSTANT];
