@@ -45,7 +45,7 @@ function gradual0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -143,7 +143,7 @@ function gradual0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -268,7 +268,7 @@ function gradual0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -422,7 +422,7 @@ function gradual0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -542,7 +542,7 @@ function gradual1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -667,7 +667,7 @@ function gradual1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -821,7 +821,7 @@ function gradual1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1008,7 +1008,7 @@ function gradual1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1151,7 +1151,7 @@ function gradual2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1303,7 +1303,7 @@ function gradual2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1488,7 +1488,7 @@ function gradual2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1710,7 +1710,7 @@ function gradual2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1880,7 +1880,7 @@ function gradual3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2063,7 +2063,7 @@ function gradual3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2283,7 +2283,7 @@ function gradual3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2544,7 +2544,7 @@ function gradual3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a9 * I; vd = b + b9 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2745,7 +2745,7 @@ function gradual4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2963,7 +2963,7 @@ function gradual5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {

@@ -7,7 +7,7 @@ import type { Kernel } from './kernel.ts';
 import * as L from './layout.ts';
 import { conduct } from './ports.ts';
 
-const NEWTON_STEPS = 12;
+const NEWTON_STEPS = 40;
 
 /** A kernel for a shape. Allocates its scratch memory now. */
 export function loopedKernel(trapezoidal: number, stiff: number): Kernel {
@@ -125,4 +125,5 @@ function solveChannel(
     }
   }
   searched(c, t, device, aI, bI, a, b, out, at);
+  out[at - L.TERM_S + L.FALLBACKS] += 1;
 }

@@ -14,8 +14,13 @@ import * as L from './layout.ts';
 
 const NEWTON_STEPS = 40;
 const SETTLED_V = 1e-11;
+/** Of the voltages that would stand there without junctions, what sums of them cannot tell from nothing. */
+const ROUNDING = 1e-15;
 
-/** Writes channel current, junction currents and overdrives into the slots of `s` from `n` on. Allocates nothing. */
+/**
+ * Writes channel current, junction currents and overdrives into the slots of `s` from `n` on, beginning where an end last conducted, or just into
+ * conduction. Allocates nothing.
+ */
 export function conduct(
   c: Float64Array,
   t: Float64Array,
@@ -31,9 +36,11 @@ export function conduct(
 ): void {
   const freeS = a + c[aI] * freeA;
   const freeD = b + c[bI] * freeA;
-  const knee = c[device + L.ON_V] + 20 / c[device + L.INVERSE_NVT];
-  s[n + L.OVERDRIVE_S] = freeS < knee ? freeS : Math.min(freeS, Math.max(s[n + L.OVERDRIVE_S], knee));
-  s[n + L.OVERDRIVE_D] = freeD < knee ? freeD : Math.min(freeD, Math.max(s[n + L.OVERDRIVE_D], knee));
+  const clampFirst = c[device + L.CLAMP_ON_V] < c[device + L.JUNCTION_ON_V];
+  const kneeS = clampFirst ? kneeV(c, device, L.CLAMP_ON_V, L.CLAMP_INVERSE_NVT) : kneeV(c, device, L.JUNCTION_ON_V, L.INVERSE_NVT);
+  const kneeD = kneeV(c, device, L.JUNCTION_ON_V, L.INVERSE_NVT);
+  s[n + L.OVERDRIVE_S] = Math.min(freeS, s[n + L.OVERDRIVE_S] > c[device + L.ON_V] ? s[n + L.OVERDRIVE_S] : kneeS);
+  s[n + L.OVERDRIVE_D] = Math.min(freeD, s[n + L.OVERDRIVE_D] > c[device + L.ON_V] ? s[n + L.OVERDRIVE_D] : kneeD);
   for (let step = 0; step < NEWTON_STEPS; step++) {
     newtonStep(c, t, device, aI, bI, junction, s, n, a, b);
     if (s[n + L.MOVED_V] < SETTLED_V) {
@@ -45,7 +52,7 @@ export function conduct(
   currents(c, t, device, s, n);
 }
 
-/** One damped step of both overdrives; the larger change, V, goes into a slot (Infinity when it is not a number). */
+/** One damped step of both overdrives; the larger change, less rounding, V, goes into a slot (Infinity when it is not a number). */
 function newtonStep(
   c: Float64Array,
   t: Float64Array,
@@ -86,22 +93,30 @@ function newtonStep(
   const ds = -c[bI] * fs - bS * slopeS;
   const dd = 1 + c[bI] * fd - bD * D * rate;
   const determinant = ss * dd - sd * ds;
-  const stepS = shortened((sd * rd - dd * rs) / determinant, vs, c, device);
-  const stepD = shortened((ds * rs - ss * rd) / determinant, vd, c, device);
+  const clampFirst = c[device + L.CLAMP_ON_V] < c[device + L.JUNCTION_ON_V];
+  const onD = c[device + L.JUNCTION_ON_V];
+  const kneeD = kneeV(c, device, L.JUNCTION_ON_V, L.INVERSE_NVT);
+  const rateS = clampFirst ? c[device + L.CLAMP_INVERSE_NVT] : rate;
+  const kneeS = clampFirst ? kneeV(c, device, L.CLAMP_ON_V, L.CLAMP_INVERSE_NVT) : kneeD;
+  const stepS = shortened((sd * rd - dd * rs) / determinant, vs, kneeS, c[device + L.ON_V], rateS);
+  const stepD = shortened((ds * rs - ss * rd) / determinant, vd, kneeD, onD, rate);
   const change = Math.max(Math.abs(stepS), Math.abs(stepD));
   const isNumber = change < Number.POSITIVE_INFINITY;
-  s[n + L.MOVED_V] = isNumber ? change : Number.POSITIVE_INFINITY;
+  s[n + L.MOVED_V] = isNumber ? change - ROUNDING * (Math.abs(a) + Math.abs(b)) : Number.POSITIVE_INFINITY;
   if (!isNumber) return;
   s[n + L.OVERDRIVE_S] = vs + stepS;
   s[n + L.OVERDRIVE_D] = vd + stepD;
 }
 
+/** The overdrive at which a junction or the clamp carries 0.5 μA, or 2e4 times its reverse current where that is more, V: no step goes past it at once. */
+function kneeV(c: Float64Array, device: number, on: number, rate: number): number {
+  return c[device + on] + 20 / c[device + rate];
+}
+
 /** A step up into conduction is cut to its logarithm, so that the exponential cannot run away. */
-function shortened(step: number, v: number, c: Float64Array, device: number): number {
-  const rate = c[device + L.INVERSE_NVT];
+function shortened(step: number, v: number, knee: number, on: number, rate: number): number {
   const x = step * rate;
-  if (x <= 2 || v < c[device + L.ON_V])
-    return x > 2 && v + step > c[device + L.ON_V] + 20 / rate ? c[device + L.ON_V] + 20 / rate - v : step;
+  if (x <= 2 || v < on) return x > 2 && v + step > knee ? knee - v : step;
   return (2 + x / (1 + 0.1 * x)) / rate;
 }
 

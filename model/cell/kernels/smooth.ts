@@ -46,7 +46,7 @@ function smooth0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -147,7 +147,7 @@ function smooth0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -275,7 +275,7 @@ function smooth0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -432,7 +432,7 @@ function smooth0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -555,7 +555,7 @@ function smooth1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -683,7 +683,7 @@ function smooth1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -840,7 +840,7 @@ function smooth1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1030,7 +1030,7 @@ function smooth1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1176,7 +1176,7 @@ function smooth2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1331,7 +1331,7 @@ function smooth2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1519,7 +1519,7 @@ function smooth2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1744,7 +1744,7 @@ function smooth2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1917,7 +1917,7 @@ function smooth3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2103,7 +2103,7 @@ function smooth3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2326,7 +2326,7 @@ function smooth3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2590,7 +2590,7 @@ function smooth3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a9 * I; vd = b + b9 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2794,7 +2794,7 @@ function smooth4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -3015,7 +3015,7 @@ function smooth5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {

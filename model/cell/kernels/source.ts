@@ -7,6 +7,7 @@
  *          a − αI and b + γI, and I = F(a − αI) − F(b + γI), which has one solution as its two sides move apart monotonically for α, γ ≥ 0.
  *          Beyond the knee F of the driving end is multiplied by 1 + λ·(the overdrive by which the other end is past VGS(off))
  * Scheme   square law: a quadratic in each region, roots as 2c/(q + √…), free of cancellation; the root that is consistent is the only one.
+ *          Where γ < 0 bends the curve back (more than the drain's voltage fed back), the search of channel.ts.
  *          Other laws, and λ: Newton from the current extrapolated along a straight line; where that does not settle, bisection.
  *          Junction currents, when one conducts, by the solver in ports.ts. Noise, where there is a row of it for each sample, adds to the rows;
  *          the channel's own is white with the conductance of the sample before (4kT/r: van der Ziel, Proc. IRE 50 (1962) 1808)
@@ -21,7 +22,7 @@ export const SHAPES: readonly (readonly [trapezoidal: number, stiff: number])[] 
   [4, 0],
   [5, 0],
 ];
-const NEWTON_STEPS = 12;
+const NEWTON_STEPS = 40;
 
 interface Language {
   readonly constant: string;
@@ -51,7 +52,7 @@ const c: Language = {
 /** The TypeScript module with all kernels of one law. */
 export function kernelModule(law: Law): string {
   const kernels = SHAPES.map((shape) => kernel(law, shape, typescript)).join('\n\n');
-  const helpers = law === 'square' ? 'bent, evaluate' : 'evaluate, searched';
+  const helpers = law === 'square' ? 'bent, evaluate, searched' : 'evaluate, searched';
   return `/**
  * Kernels of the ${law} law by number of trapezoidal and of stiff states: written from source.ts by \`npm run kernels\`, where the method is
  * explained. Not to be edited.
@@ -208,7 +209,8 @@ function deviceConstants(law: Law, device: (index: number) => string): [string, 
 
 function squareSolution(aI: string, bI: string, places: string, slot: (index: number) => string, { constant, sqrt }: Language): string[] {
   return [
-    'if (a > 0 || b > 0) {',
+    `if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, ${places}, a, b, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; ${slot(L.FALLBACKS)} += 1; }`,
+    'else if (a > 0 || b > 0) {',
     `  ${constant} q = 1 + fall * a + rise * b;`,
     `  ${constant} w = scale * (a - b) * (a + b);`,
     `  I = 2 * w / (q + ${sqrt}(q * q - 4 * bent_ * w));`,

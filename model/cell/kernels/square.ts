@@ -7,7 +7,7 @@
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
-import { bent, evaluate } from './channel.ts';
+import { bent, evaluate, searched } from './channel.ts';
 import type { Kernel } from './kernel.ts';
 import { conduct } from './ports.ts';
 
@@ -43,7 +43,8 @@ function square0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -125,7 +126,8 @@ function square0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -234,7 +236,8 @@ function square0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -372,7 +375,8 @@ function square0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 21); I = s[21]; s[20] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -476,7 +480,8 @@ function square1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -585,7 +590,8 @@ function square1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -723,7 +729,8 @@ function square1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -894,7 +901,8 @@ function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1021,7 +1029,8 @@ function square2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1157,7 +1166,8 @@ function square2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 15); I = s[15]; s[14] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1326,7 +1336,8 @@ function square2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1532,7 +1543,8 @@ function square2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1686,7 +1698,8 @@ function square3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1853,7 +1866,8 @@ function square3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 16); I = s[16]; s[15] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2057,7 +2071,8 @@ function square3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2302,7 +2317,8 @@ function square3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 10 + 0] + a9 * J;
       b += w[i * 10 + 1] + b9 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 174, 9, 19, a, b, s, 24); I = s[24]; s[23] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2487,7 +2503,8 @@ function square4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2689,7 +2706,8 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 14); I = s[14]; s[13] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
