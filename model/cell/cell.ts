@@ -11,6 +11,7 @@ import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
 import { loopedKernel } from './kernels/looped.ts';
+import { restCharge } from './kernels/graded.ts';
 import { GRADUAL_KERNELS } from './kernels/gradual.ts';
 import { SMOOTH_KERNELS } from './kernels/smooth.ts';
 import { SQUARE_KERNELS } from './kernels/square.ts';
@@ -41,7 +42,8 @@ const WIDTH_V = 5;
 /** Reverse current of the gate clamp, 0 where there is none, and its nVT. */
 const CLAMP_A = 6;
 const CLAMP_NVT_V = 7;
-export const DEVICE_VALUES = 8;
+const BARRIER_V = 8;
+export const DEVICE_VALUES = 9;
 const NO_NOISE = new Float64Array(0);
 
 /** Newton's last step, V. While playing it leaves under 1e-10 V, 0.1 pA in 1 kΩ; in readings rounding only. */
@@ -56,6 +58,11 @@ export interface CellNumbers {
   readonly polarity: 1 | -1;
   readonly law: Law;
   readonly exponent: number;
+  /** Exponent of the capacitances' fall; 0 where they are constant. */
+  readonly grading: number;
+  /** Places of the gate's capacitances in `values`, −1 where there is none. */
+  readonly gateSourceAt: number;
+  readonly gateDrainAt: number;
   /** Of the smooth law; empty for the others. */
   readonly table: Float64Array;
   /** Step at which Newton's method stops, V. */
@@ -105,16 +112,20 @@ export function compileCell(circuit: Circuit, device: Device, tempC: number, noi
   const thermalV = VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
   values[plan.values.length + NVT_V] = junction.ideality * thermalV;
   values[plan.values.length + LAMBDA] = device.lambdaPerV;
+  values[plan.values.length + BARRIER_V] = device.barrierV;
   const clamp = circuit.jfet.clamp ?? { reverseA: 0, ideality: 1 };
   values[plan.values.length + CLAMP_A] = clamp.reverseA;
   values[plan.values.length + CLAMP_NVT_V] = clamp.ideality * thermalV;
   values[plan.values.length + WIDTH_V] = law.law === 'smooth' ? law.tailV : law.depletionV;
   return {
-    shape: [device.channel, law.law, law.law === 'smooth' ? law.exponent : '', plan.shape].join(' '),
+    shape: [device.channel, law.law, law.law === 'smooth' ? law.exponent : '', device.grading, plan.shape].join(' '),
     plan,
     polarity: device.channel === 'n' ? 1 : -1,
     law: law.law,
     exponent: law.exponent,
+    grading: device.grading,
+    gateSourceAt: circuit.elements.findIndex((element) => element.name === 'gateSourceF'),
+    gateDrainAt: circuit.elements.findIndex((element) => element.name === 'gateDrainF'),
     table: tableOf(law),
     enoughV: PLAYING_ENOUGH_V,
     values,
@@ -195,7 +206,11 @@ export function aimAt(cell: Cell, values: Float64Array, samples: number): boolea
   }
   for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
   packStep(cell);
-  for (let i = 0; i < target.length; i++) increment[i] = target[i] === coefficients[i] ? 0 : (target[i] - coefficients[i]) / samples;
+  for (let i = 0; i < target.length; i++) {
+    // A threshold that was or becomes infinite has no way between: it changes on arrival.
+    const way = target[i] - coefficients[i];
+    increment[i] = Number.isFinite(way) ? way / samples : 0;
+  }
   return true;
 }
 
@@ -269,6 +284,18 @@ function packStep(cell: Cell): void {
   c[to + row.constant] += response[from + n + CONSTANT];
   packMemory(cell);
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
+  packGrading(cell, c, all.device);
+}
+
+/** The gate's capacitances where they fall with reverse voltage: then every sample is solved by the ports. */
+function packGrading(cell: Cell, c: Float64Array, at: number): void {
+  const { grading, gateSourceAt, gateDrainAt } = cell.numbers;
+  const farads = (index: number) => (index < 0 ? 0 : cell.values[index]);
+  c[at + L.GRADING] = grading;
+  c[at + L.BARRIER_V] = deviceValue(cell, BARRIER_V);
+  c[at + L.STEP_S] = farads(gateSourceAt) / cell.stepSec;
+  c[at + L.STEP_D] = farads(gateDrainAt) / cell.stepSec;
+  if (grading > 0) c[at + L.ON_V] = Number.NEGATIVE_INFINITY;
 }
 
 /** A row's weights of the port currents, and as its constant what the steady reverse currents add. */
@@ -391,6 +418,11 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   state[cell.slots + L.OLD_AUDIO] = audioV;
   state[cell.slots + L.OLD_CONTROL] = controlV;
   state[cell.slots + L.EARLIER_A] = channelA;
+  if (cell.numbers.grading > 0) {
+    const { device } = L.coefficientLayout(n);
+    restCharge(cell.target, device, overdriveV(cell, 'source'), state, cell.slots + L.CHARGES_S);
+    restCharge(cell.target, device, overdriveV(cell, 'drain'), state, cell.slots + L.CHARGES_D);
+  }
   return rest.output[0];
 }
 

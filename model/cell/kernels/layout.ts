@@ -55,7 +55,12 @@ export const CLAMP_A = 16;
 export const CLAMP_INVERSE_NVT = 17;
 /** Step at which Newton's method stops, V. */
 export const ENOUGH_V = 18;
-export const DEVICE_WIDTH = 19;
+/** Capacitances that fall with reverse voltage: exponent m (0: constant), barrier, C0 over a step of gate-source and gate-drain, S. */
+export const GRADING = 19;
+export const BARRIER_V = 20;
+export const STEP_S = 21;
+export const STEP_D = 22;
+export const DEVICE_WIDTH = 23;
 
 export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 
@@ -92,4 +97,10 @@ export const FALLBACKS = 8;
 export const TERM_S = 9;
 export const TERM_D = 11;
 export const MOVED_V = 13;
-export const STATE_SLOTS = 14;
+/** Current and slope of both gate ports. */
+export const PORT_S = 14;
+export const PORT_D = 16;
+/** Of each junction: four past charges above C0·v, over C0, then working memory. */
+export const CHARGES_S = 18;
+export const CHARGES_D = 24;
+export const STATE_SLOTS = 30;

@@ -10,6 +10,7 @@
  */
 import { exp } from '../../device/math.ts';
 import { channelA, evaluate } from './channel.ts';
+import { addGraded, keepCharge } from './graded.ts';
 import * as L from './layout.ts';
 
 const NEWTON_STEPS = 40;
@@ -60,7 +61,6 @@ function newtonStep(
 ): void {
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
-  const rate = c[device + L.INVERSE_NVT];
   const lambda = c[device + L.LAMBDA];
   const past = lambda * Math.max(-vd, 0);
   const pastReversed = lambda * Math.max(-vs, 0);
@@ -69,22 +69,23 @@ function newtonStep(
   const Fs = s[n + L.TERM_S];
   const Fd = s[n + L.TERM_D];
   const channel = Fs * (1 + past) - Fd * (1 + pastReversed);
-  const clampA = clampCurrent(c, device, vs);
-  const S = junctionCurrent(c, device, vs) + clampA;
-  const D = junctionCurrent(c, device, vd);
+  gatePorts(c, device, s, n, vs, vd);
+  const S = s[n + L.PORT_S];
+  const D = s[n + L.PORT_D];
+  const slopeS = s[n + L.PORT_S + 1];
+  const slopeD = s[n + L.PORT_D + 1];
   const aS = c[junction + L.BY_S];
   const aD = c[junction + L.BY_D];
   const bS = c[junction + L.JUNCTION_WIDTH + L.BY_S];
   const bD = c[junction + L.JUNCTION_WIDTH + L.BY_D];
   const fs = s[n + L.TERM_S + 1] * (1 + past) + (pastReversed > 0 ? lambda * Fd : 0);
   const fd = s[n + L.TERM_D + 1] * (1 + pastReversed) + (past > 0 ? lambda * Fs : 0);
-  const slopeS = (S - clampA) * rate + clampA * c[device + L.CLAMP_INVERSE_NVT];
   const rs = vs - a - c[aI] * channel - aS * S - aD * D;
   const rd = vd - b - c[bI] * channel - bS * S - bD * D;
   const ss = 1 - c[aI] * fs - aS * slopeS;
-  const sd = c[aI] * fd - aD * D * rate;
+  const sd = c[aI] * fd - aD * slopeD;
   const ds = -c[bI] * fs - bS * slopeS;
-  const dd = 1 + c[bI] * fd - bD * D * rate;
+  const dd = 1 + c[bI] * fd - bD * slopeD;
   const determinant = ss * dd - sd * ds;
   const stepS = shortened((sd * rd - dd * rs) / determinant, vs, c, device);
   const stepD = shortened((ds * rs - ss * rd) / determinant, vd, c, device);
@@ -105,16 +106,21 @@ function shortened(step: number, v: number, c: Float64Array, device: number): nu
   return (2 + x / (1 + 0.1 * x)) / rate;
 }
 
-/** Current of a junction above its reverse current, A, at the overdrive `v`; nothing below the threshold at which it is under 5e-5 of that. */
-function junctionCurrent(c: Float64Array, device: number, v: number): number {
-  if (!(v > c[device + L.JUNCTION_ON_V])) return 0;
-  return c[device + L.REVERSE_A] * exp((v + c[device + L.GATE_OFF_V]) * c[device + L.INVERSE_NVT]);
-}
-
-/** The same of the clamp. */
-function clampCurrent(c: Float64Array, device: number, v: number): number {
-  if (!(v > c[device + L.CLAMP_ON_V])) return 0;
-  return c[device + L.CLAMP_A] * exp((v + c[device + L.GATE_OFF_V]) * c[device + L.CLAMP_INVERSE_NVT]);
+/** Currents of the gate's ports above the reverse currents, A, and their slopes, S, into slots: junction, clamp, graded capacitance. */
+function gatePorts(c: Float64Array, device: number, s: Float64Array, n: number, vs: number, vd: number): void {
+  const offV = c[device + L.GATE_OFF_V];
+  const rate = c[device + L.INVERSE_NVT];
+  const S = vs > c[device + L.JUNCTION_ON_V] ? c[device + L.REVERSE_A] * exp((vs + offV) * rate) : 0;
+  const D = vd > c[device + L.JUNCTION_ON_V] ? c[device + L.REVERSE_A] * exp((vd + offV) * rate) : 0;
+  const clampRate = c[device + L.CLAMP_INVERSE_NVT];
+  const clampA = vs > c[device + L.CLAMP_ON_V] ? c[device + L.CLAMP_A] * exp((vs + offV) * clampRate) : 0;
+  s[n + L.PORT_S] = S + clampA;
+  s[n + L.PORT_S + 1] = S * rate + clampA * clampRate;
+  s[n + L.PORT_D] = D;
+  s[n + L.PORT_D + 1] = D * rate;
+  if (c[device + L.GRADING] === 0) return;
+  addGraded(c, device, vs, c[device + L.STEP_S], s, n + L.CHARGES_S, n + L.PORT_S);
+  addGraded(c, device, vd, c[device + L.STEP_D], s, n + L.CHARGES_D, n + L.PORT_D);
 }
 
 function currents(c: Float64Array, t: Float64Array, device: number, s: Float64Array, n: number): void {
@@ -124,8 +130,12 @@ function currents(c: Float64Array, t: Float64Array, device: number, s: Float64Ar
   evaluate(c, t, device, vs, s, n + L.TERM_S);
   evaluate(c, t, device, vd, s, n + L.TERM_D);
   s[n + L.CHANNEL_A] = s[n + L.TERM_S] * (1 + lambda * Math.max(-vd, 0)) - s[n + L.TERM_D] * (1 + lambda * Math.max(-vs, 0));
-  s[n + L.JUNCTION_S] = junctionCurrent(c, device, vs) + clampCurrent(c, device, vs);
-  s[n + L.JUNCTION_D] = junctionCurrent(c, device, vd);
+  gatePorts(c, device, s, n, vs, vd);
+  s[n + L.JUNCTION_S] = s[n + L.PORT_S];
+  s[n + L.JUNCTION_D] = s[n + L.PORT_D];
+  if (c[device + L.GRADING] === 0) return;
+  keepCharge(c, device, vs, s, n + L.CHARGES_S);
+  keepCharge(c, device, vd, s, n + L.CHARGES_D);
 }
 
 function residual(
@@ -137,17 +147,13 @@ function residual(
   c: Float64Array,
   t: Float64Array,
   device: number,
+  s: Float64Array,
+  n: number,
   vs: number,
   vd: number,
 ): number {
-  const channel = channelA(c, t, device, vs, vd);
-  return (
-    own -
-    free -
-    perA * channel -
-    perS * (junctionCurrent(c, device, vs) + clampCurrent(c, device, vs)) -
-    perD * junctionCurrent(c, device, vd)
-  );
+  gatePorts(c, device, s, n, vs, vd);
+  return own - free - perA * channelA(c, t, device, vs, vd) - perS * s[n + L.PORT_S] - perD * s[n + L.PORT_D];
 }
 
 /** Nested bisection between brackets that are widened until they hold the solution. */
@@ -165,16 +171,16 @@ function bisect(
 ): void {
   let low = -1;
   let high = 1;
-  while (outerResidual(c, t, device, aI, bI, junction, a, b, low) > 0 && low > -1e12) low *= 2;
-  while (outerResidual(c, t, device, aI, bI, junction, a, b, high) < 0 && high < 1e12) high *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, s, n, a, b, low) > 0 && low > -1e12) low *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, s, n, a, b, high) < 0 && high < 1e12) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
-    if (outerResidual(c, t, device, aI, bI, junction, a, b, middle) > 0) high = middle;
+    if (outerResidual(c, t, device, aI, bI, junction, s, n, a, b, middle) > 0) high = middle;
     else low = middle;
   }
   s[n + L.OVERDRIVE_S] = (low + high) / 2;
-  s[n + L.OVERDRIVE_D] = innerOverdrive(c, t, device, bI, junction, b, (low + high) / 2);
+  s[n + L.OVERDRIVE_D] = innerOverdrive(c, t, device, bI, junction, s, n, b, (low + high) / 2);
   s[n + L.FALLBACKS] += 1;
 }
 
@@ -186,26 +192,38 @@ function outerResidual(
   aI: number,
   bI: number,
   junction: number,
+  s: Float64Array,
+  n: number,
   a: number,
   b: number,
   vs: number,
 ): number {
-  const vd = innerOverdrive(c, t, device, bI, junction, b, vs);
-  return residual(vs, a, c[aI], c[junction + L.BY_S], c[junction + L.BY_D], c, t, device, vs, vd);
+  const vd = innerOverdrive(c, t, device, bI, junction, s, n, b, vs);
+  return residual(vs, a, c[aI], c[junction + L.BY_S], c[junction + L.BY_D], c, t, device, s, n, vs, vd);
 }
 
 /** The drain end's overdrive that satisfies its own equation for a given source end. */
-function innerOverdrive(c: Float64Array, t: Float64Array, device: number, bI: number, junction: number, b: number, vs: number): number {
+function innerOverdrive(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  bI: number,
+  junction: number,
+  s: Float64Array,
+  n: number,
+  b: number,
+  vs: number,
+): number {
   const bS = c[junction + L.JUNCTION_WIDTH + L.BY_S];
   const bD = c[junction + L.JUNCTION_WIDTH + L.BY_D];
   let low = -1;
   let high = 1;
-  while (residual(low, b, c[bI], bS, bD, c, t, device, vs, low) > 0 && low > -1e12) low *= 2;
-  while (residual(high, b, c[bI], bS, bD, c, t, device, vs, high) < 0 && high < 1e12) high *= 2;
+  while (residual(low, b, c[bI], bS, bD, c, t, device, s, n, vs, low) > 0 && low > -1e12) low *= 2;
+  while (residual(high, b, c[bI], bS, bD, c, t, device, s, n, vs, high) < 0 && high < 1e12) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
-    if (residual(middle, b, c[bI], bS, bD, c, t, device, vs, middle) > 0) high = middle;
+    if (residual(middle, b, c[bI], bS, bD, c, t, device, s, n, vs, middle) > 0) high = middle;
     else low = middle;
   }
   return (low + high) / 2;
