@@ -145,9 +145,13 @@ export function forReadings(numbers: CellNumbers): CellNumbers {
   return { ...numbers, enoughV: READING_ENOUGH_V, plan: { ...numbers.plan, trapezoidal: numbers.plan.states.length } };
 }
 
-/** The kernel written out for a shape, or the one in loops. */
-function kernelOf(law: Law, trapezoidal: number, stiff: number): Kernel {
-  return KERNELS[law][`${trapezoidal} ${stiff}`] ?? loopedKernel(trapezoidal, stiff);
+/** The kernel written out for the plan's shape, or for its numbers of states, or the one in loops. */
+function kernelOf(law: Law, plan: Plan): Kernel {
+  const { trapezoidal, voltages } = plan;
+  const stiff = voltages.states.slice(trapezoidal);
+  const kernels = KERNELS[law];
+  const exact = kernels[`${trapezoidal} ${stiff} ${voltages.output}`];
+  return exact ?? kernels[`${trapezoidal} ${'x'.repeat(stiff.length)} x`] ?? loopedKernel(trapezoidal, stiff.length);
 }
 
 /** A cell advancing by `stepSec`, with its states at zero: call `settle` before the first sample. Throws when the network is singular. */
@@ -165,7 +169,7 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
     increment: new Float64Array(L.coefficientLayout(n).length),
     state: new Float64Array(slots + L.STATE_SLOTS),
     slots,
-    kernel: kernelOf(numbers.law, trapezoidal, n - trapezoidal),
+    kernel: kernelOf(numbers.law, numbers.plan),
     stepSec,
     rest: {
       coefficients: new Float64Array(L.coefficientLayout(0).length),
@@ -356,6 +360,7 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   const widthV = deviceValue(cell, WIDTH_V);
   const offV = deviceValue(cell, GATE_OFF_V);
   c[at + L.LAW] = L.LAW_NUMBER[law];
+  c[at + L.POLARITY] = cell.numbers.polarity;
   c[at + L.GATE_OFF_V] = offV;
   c[at + L.JUNCTION_ON_V] = conductsFrom(reverseA, nVt) - offV;
   c[at + L.CLAMP_ON_V] = conductsFrom(clampA, clampNVt) - offV;
@@ -399,7 +404,7 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   rest.audio[0] = audioV;
   rest.control[0] = controlV;
   const { law, table } = cell.numbers;
-  KERNELS[law]['0 0'](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
+  KERNELS[law]['0  x'](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
   const reverseA = deviceValue(cell, REVERSE_A);
   const channelA = rest.state[L.CHANNEL_A];
   const sourceA = rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A);

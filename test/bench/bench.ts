@@ -46,13 +46,15 @@ function kernelRows(): Row[] {
   const control = Float64Array.from({ length: SAMPLES }, (_, i) => -0.9 + 0.3 * Math.sin((2 * Math.PI * i) / SAMPLES));
   const output = new Float64Array(SAMPLES);
   const { kernel } = cell;
-  const { trapezoidal } = cell.numbers.plan;
-  const native = buildNative([trapezoidal, cell.stateCount - trapezoidal], {
-    coefficients: cell.coefficients,
-    state: cell.state,
-    audio,
-    control,
-  });
+  const native = buildNative(
+    { trapezoidal: 1, stiff: 'dg', output: 'd' },
+    {
+      coefficients: cell.coefficients,
+      state: cell.state,
+      audio,
+      control,
+    },
+  );
   const silent = new Float64Array(0);
   let typescriptNs = Number.POSITIVE_INFINITY;
   let nativeNs = Number.POSITIVE_INFINITY;

@@ -3,7 +3,7 @@ import { execFileSync } from 'node:child_process';
 import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { kernelInC } from '../../model/cell/kernels/source.ts';
+import { kernelInC, kernelName, type Shape } from '../../model/cell/kernels/source.ts';
 
 export interface NativeKernel {
   /** Nanoseconds a sample, the best of its runs. */
@@ -15,7 +15,7 @@ const doubles = (values: Float64Array) => Buffer.from(values.buffer, values.byte
 
 /** Builds the kernel of a shape with its coefficients, state and signals. Throws when there is no gcc. */
 export function buildNative(
-  shape: readonly [trapezoidal: number, stiff: number],
+  shape: Shape,
   data: { coefficients: Float64Array; state: Float64Array; audio: Float64Array; control: Float64Array },
 ): NativeKernel {
   const folder = mkdtempSync(join(tmpdir(), 'fettle-bench-'));
@@ -30,7 +30,7 @@ export function buildNative(
   };
 }
 
-function program(shape: readonly [number, number], coefficientCount: number, slotCount: number, sampleCount: number): string {
+function program(shape: Shape, coefficientCount: number, slotCount: number, sampleCount: number): string {
   return `#include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
@@ -57,7 +57,7 @@ int main(int argc, char **argv) {
   for (int run = 0; run < 60; run++) {
     struct timespec t0, t1;
     clock_gettime(CLOCK_MONOTONIC, &t0);
-    square${shape.join('_')}(c, s, 0, s, u, v, y, 0, ${sampleCount});
+    ${kernelName('square', shape)}(c, s, 0, s, u, v, y, 0, ${sampleCount});
     clock_gettime(CLOCK_MONOTONIC, &t1);
     double ns = ((t1.tv_sec - t0.tv_sec) * 1e9 + (t1.tv_nsec - t0.tv_nsec)) / ${sampleCount};
     if (ns < best) best = ns;

@@ -60,7 +60,9 @@ export const GRADING = 19;
 export const BARRIER_V = 20;
 export const STEP_S = 21;
 export const STEP_D = 22;
-export const DEVICE_WIDTH = 23;
+/** 1 for an n-channel part, −1 for a p-channel one. */
+export const POLARITY = 23;
+export const DEVICE_WIDTH = 24;
 
 export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 

@@ -15,12 +15,36 @@
 import type { Law } from '../../design/types.ts';
 import * as L from './layout.ts';
 
-/** Kernels are written out for these numbers of trapezoidal and of stiff states; looped.ts serves the others. */
-export const SHAPES: readonly (readonly [trapezoidal: number, stiff: number])[] = [
-  ...[0, 1, 2, 3].flatMap((trapezoidal) => [0, 1, 2, 3].map((stiff) => [trapezoidal, stiff] as const)),
-  [4, 0],
-  [5, 0],
+/**
+ * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of, and the same for the output:
+ * `g` gate to source, `m` gate to drain, `d` drain to source, which follow from the overdrives, or `x` anything else, which takes a row of its own.
+ */
+export interface Shape {
+  readonly trapezoidal: number;
+  readonly stiff: string;
+  readonly output: 'd' | 'x';
+}
+
+/** `x` serves for every letter, and looped.ts for every other shape. */
+export const SHAPES: readonly Shape[] = [
+  ...written([0, 1, 2, 3, 4], '', 'd'),
+  ...written([0, 1], 'd', 'd'),
+  ...written([0, 1, 2], 'dg', 'd'),
+  ...written([0, 1], 'gm', 'd'),
+  ...written([0, 1, 2, 3], '', 'x'),
+  ...written([0, 1, 2, 3], 'xx', 'x'),
+  ...written([1, 2], 'xxx', 'x'),
 ];
+
+function written(counts: readonly number[], stiff: string, output: 'd' | 'x'): Shape[] {
+  return counts.map((trapezoidal) => ({ trapezoidal, stiff, output }));
+}
+
+/** By which a kernel is found. */
+export function shapeKey({ trapezoidal, stiff, output }: Shape): string {
+  return `${trapezoidal} ${stiff} ${output}`;
+}
+
 const NEWTON_STEPS = 12;
 
 interface Language {
@@ -67,17 +91,15 @@ import { conduct } from './ports.ts';
 
 ${kernels}
 
-/** By numbers of trapezoidal and of stiff states, "2 1". */
+/** By the key of a shape. */
 export const ${law.toUpperCase()}_KERNELS: Readonly<Record<string, Kernel>> = {
-${SHAPES.map((shape) => `  '${shape.join(' ')}': ${kernelName(law, shape)},`).join('\n')}
+${SHAPES.map((shape) => `  '${shapeKey(shape)}': ${kernelName(law, shape)},`).join('\n')}
 };
 `;
 }
 
-type Shape = readonly [trapezoidal: number, stiff: number];
-
-function kernelName(law: Law, [trapezoidal, stiff]: Shape): string {
-  return `${law}${trapezoidal}_${stiff}`;
+export function kernelName(law: Law, { trapezoidal, stiff, output }: Shape): string {
+  return `${law}${trapezoidal}_${stiff}_${output}`;
 }
 
 /** The same kernel in C, for the bench. */
@@ -86,7 +108,8 @@ export function kernelInC(law: Law, shape: Shape): string {
 }
 
 function kernel(law: Law, shape: Shape, language: Language): string {
-  const [trapezoidal, stiff] = shape;
+  const { trapezoidal } = shape;
+  const stiff = shape.stiff.length;
   const n = trapezoidal + stiff;
   const row = L.rowLayout(n);
   const past = L.memoryLayout(n);
@@ -94,6 +117,11 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   const slots = L.slotStart(trapezoidal, stiff);
   const states = Array.from({ length: n }, (_, i) => i);
   const stiffStates = states.slice(trapezoidal);
+  /** What a state or the output follows from, or null where it has a row. */
+  const shortcut = (letter: string): string | null =>
+    letter === 'g' ? 'sign * (vs + off)' : letter === 'm' ? 'sign * (vd + off)' : letter === 'd' ? 'sign * (vs - vd)' : null;
+  const stateShortcut = (i: number) => (i < trapezoidal ? null : shortcut(shape.stiff[i - trapezoidal]));
+  const hasRow = (r: number) => (r === all.outputRow ? shape.output === 'x' : r < 2 || stateShortcut(r - 2) === null);
   const { constant, variable } = language;
   const rowName = (r: number) => (r === 0 ? 'a' : r === 1 ? 'b' : r === all.outputRow ? 'y' : `n${r - 2}_`);
   const device = (index: number) => `c[${all.device + index}]`;
@@ -102,7 +130,7 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   const slot = (index: number) => `s[${slots + index}]`;
   const linear = (r: number, from: string) => {
     const p = rowName(r);
-    return [...states.map((i) => `${p}${i} * ${from}${i}`), `${p}${row.u} * u`, `${p}${row.u + 1} * v`, `${p}${row.constant}`].join(' + ');
+    return sum([...states.map((i) => `${p}${i} * ${from}${i}`), `${p}${row.u} * u`, `${p}${row.u + 1} * v`, `${p}${row.constant}`]);
   };
   /** What a row remembers: a stiff row the past of the stiff states, a trapezoidal one their last value and the old current too. */
   const memory = (i: number) => {
@@ -110,12 +138,13 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     const terms = states.map((k) => `m${i}_${k} * ${isStiff && k >= trapezoidal ? 'p' : 'x'}${k}`);
     terms.push(`m${i}_${past.oldU} * u0`, `m${i}_${past.oldU + 1} * v0`);
     if (!isStiff) terms.push(`m${i}_${past.oldI} * I0`);
-    return terms.join(' + ');
+    return sum(terms);
   };
 
   const [head, noisy, loop] = language.open(kernelName(law, shape)).split('\n');
   const lines: string[] = [head, noisy];
   for (let r = 0; r < all.rows; r++) {
+    if (!hasRow(r)) continue;
     for (let k = 0; k < row.width; k++) lines.push(`  ${constant} ${rowName(r)}${k} = c[${r * row.width + k}];`);
   }
   for (const i of states) {
@@ -123,6 +152,7 @@ function kernel(law: Law, shape: Shape, language: Language): string {
       lines.push(`  ${constant} m${i}_${k} = c[${all.memory + i * past.width + k}];`);
     }
   }
+  lines.push(`  ${constant} sign = ${device(L.POLARITY)}, off = ${device(L.GATE_OFF_V)};`);
   lines.push(...deviceConstants(law, device).map(([name, value]) => `  ${constant} ${name} = ${value};`));
   lines.push(...states.map((i) => `  ${variable} x${i} = s[${i}];`));
   stiffStates.forEach((i, k) => {
@@ -166,13 +196,19 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     'I += J;',
   );
   for (const i of stiffStates) body.push(`g${i} = f${i}; f${i} = e${i}; e${i} = x${i};`);
-  for (const i of states) body.push(`x${i} = ${linear(2 + i, 'r')} + ${rowName(2 + i)}${row.current} * I;`);
-  body.push(`${variable} y = 0;`, 'if (noisy) {');
-  for (const i of states) body.push(`  x${i} += ${noise(2 + i)};`);
-  body.push(`  y = ${noise(all.outputRow)};`, '}', 'if (S != 0 || D != 0) {');
-  for (const i of states) body.push(`  x${i} += ${weight(2 + i, L.BY_S)} * S + ${weight(2 + i, L.BY_D)} * D;`);
-  body.push(`  y += ${weight(all.outputRow, L.BY_S)} * S + ${weight(all.outputRow, L.BY_D)} * D;`, '}');
-  body.push(`output[i] = y + ${linear(all.outputRow, 'x')} + y${row.current} * I;`);
+  for (const i of states) body.push(`x${i} = ${stateShortcut(i) ?? `${linear(2 + i, 'r')} + ${rowName(2 + i)}${row.current} * I`};`);
+  const rows = states.filter((i) => hasRow(2 + i));
+  const hasOutput = hasRow(all.outputRow);
+  if (hasOutput) body.push(`${variable} y = 0;`);
+  if (rows.length > 0 || hasOutput) {
+    body.push('if (noisy) {', ...rows.map((i) => `  x${i} += ${noise(2 + i)};`));
+    if (hasOutput) body.push(`  y = ${noise(all.outputRow)};`);
+    body.push('}', 'if (S != 0 || D != 0) {');
+    for (const i of rows) body.push(`  x${i} += ${weight(2 + i, L.BY_S)} * S + ${weight(2 + i, L.BY_D)} * D;`);
+    if (hasOutput) body.push(`  y += ${weight(all.outputRow, L.BY_S)} * S + ${weight(all.outputRow, L.BY_D)} * D;`);
+    body.push('}');
+  }
+  body.push(`output[i] = ${hasOutput ? `y + ${linear(all.outputRow, 'x')} + y${row.current} * I` : shortcut(shape.output)};`);
   if (n > 0) body.push('u0 = u; v0 = v;');
   body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');
   lines.push(...body.map((line) => `    ${line}`), '  }');
@@ -188,6 +224,14 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     '}',
   );
   return lines.join('\n');
+}
+
+/** Added in pairs, so that no addition waits for a long row of others. */
+function sum(terms: readonly string[]): string {
+  if (terms.length <= 2) return terms.join(' + ');
+  const half = Math.ceil(terms.length / 2);
+  const part = (some: readonly string[]) => (some.length > 1 ? `(${sum(some)})` : sum(some));
+  return `${part(terms.slice(0, half))} + ${part(terms.slice(half))}`;
 }
 
 function deviceConstants(law: Law, device: (index: number) => string): [string, string][] {
