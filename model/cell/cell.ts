@@ -12,9 +12,9 @@ import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
 import { loopedKernel } from './kernels/looped.ts';
 import { restCharge } from './kernels/graded.ts';
-import { GRADUAL_KERNELS } from './kernels/gradual.ts';
-import { SMOOTH_KERNELS } from './kernels/smooth.ts';
-import { SQUARE_KERNELS } from './kernels/square.ts';
+import { GRADUAL_CONDUCTOR, GRADUAL_KERNELS } from './kernels/gradual.ts';
+import { SMOOTH_CONDUCTOR, SMOOTH_KERNELS } from './kernels/smooth.ts';
+import { SQUARE_CONDUCTOR, SQUARE_KERNELS } from './kernels/square.ts';
 import { factor, solve } from './linear.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
 import { createReduction, discretise, memoryColumns, type Reduction, respond, stepColumns } from './reduce.ts';
@@ -26,6 +26,7 @@ const OFF_BELOW = -10;
 const LEFT_OUT_A = 1e-15;
 
 const KERNELS = { square: SQUARE_KERNELS, gradual: GRADUAL_KERNELS, smooth: SMOOTH_KERNELS };
+const CONDUCTORS = { square: SQUARE_CONDUCTOR, gradual: GRADUAL_CONDUCTOR, smooth: SMOOTH_CONDUCTOR };
 
 /** The smooth law's table reaches this far past VGS = 0; beyond it, and beyond the longest table, the law is evaluated directly. */
 const TABLE_BEYOND_V = 1.5;
@@ -151,7 +152,7 @@ function kernelOf(law: Law, plan: Plan): Kernel {
   const stiff = voltages.states.slice(trapezoidal);
   const kernels = KERNELS[law];
   const exact = kernels[`${trapezoidal} ${stiff} ${voltages.output}`];
-  return exact ?? kernels[`${trapezoidal} ${'x'.repeat(stiff.length)} x`] ?? loopedKernel(trapezoidal, stiff.length);
+  return exact ?? kernels[`${trapezoidal} ${'x'.repeat(stiff.length)} x`] ?? loopedKernel(trapezoidal, stiff.length, CONDUCTORS[law]);
 }
 
 /** A cell advancing by `stepSec`, with its states at zero: call `settle` before the first sample. Throws when the network is singular. */

@@ -3,7 +3,6 @@ import { execFileSync } from 'node:child_process';
 import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import * as L from '../../model/cell/kernels/layout.ts';
 import { kernelInC, kernelName, type Shape } from '../../model/cell/kernels/source.ts';
 
 export interface NativeKernel {
@@ -32,39 +31,26 @@ export function buildNative(
 }
 
 function program(shape: Shape, coefficientCount: number, slotCount: number, sampleCount: number): string {
+  const text = kernelInC('square', shape);
   return `#include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <time.h>
-static double fmx(double a, double b) { return a > b ? a : b; }
-static void conduct(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n, double a, double b, double I) {
-  (void)t;
-  const double rate = c[device + ${L.INVERSE_NVT}], off = c[device + ${L.GATE_OFF_V}], reverse = c[device + ${L.REVERSE_A}];
-  const double on = c[device + ${L.ON_V}], scale = c[device + ${L.SCALE}], knee = on + 20 / rate;
-  const double aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
-  const double freeS = a + c[aI] * I, freeD = b + c[bI] * I;
-  double vs = freeS < knee ? freeS : fmin(freeS, fmx(s[n + ${L.OVERDRIVE_S}], knee));
-  double vd = freeD < knee ? freeD : fmin(freeD, fmx(s[n + ${L.OVERDRIVE_D}], knee));
-  double S = 0, D = 0, channel = 0;
-  for (int step = 0; step < 40; step++) {
-    const double ps = fmx(vs, 0), pd = fmx(vd, 0);
-    S = vs > on ? reverse * exp((vs + off) * rate) : 0;
-    D = vd > on ? reverse * exp((vd + off) * rate) : 0;
-    channel = scale * (ps - pd) * (ps + pd);
-    const double rs = vs - a - c[aI] * channel - aS * S - aD * D, rd = vd - b - c[bI] * channel - bS * S - bD * D;
-    const double ss = 1 - 2 * scale * ps * c[aI] - aS * S * rate, sd = 2 * scale * pd * c[aI] - aD * D * rate;
-    const double ds = -2 * scale * ps * c[bI] - bS * S * rate, dd = 1 + 2 * scale * pd * c[bI] - bD * D * rate;
-    const double determinant = ss * dd - sd * ds, stepS = (sd * rd - dd * rs) / determinant, stepD = (ds * rs - ss * rd) / determinant;
-    vs += stepS * rate > 2 ? (2 + stepS * rate / (1 + 0.1 * stepS * rate)) / rate : stepS;
-    vd += stepD * rate > 2 ? (2 + stepD * rate / (1 + 0.1 * stepD * rate)) / rate : stepD;
-    if (fabs(stepS) < 1e-11 && fabs(stepD) < 1e-11) break;
-  }
-  const double ps = fmx(vs, 0), pd = fmx(vd, 0);
-  s[n + ${L.CHANNEL_A}] = scale * (ps - pd) * (ps + pd);
-  s[n + ${L.JUNCTION_S}] = vs > on ? reverse * exp((vs + off) * rate) : 0;
-  s[n + ${L.JUNCTION_D}] = vd > on ? reverse * exp((vd + off) * rate) : 0;
-  s[n + ${L.OVERDRIVE_S}] = vs;
-  s[n + ${L.OVERDRIVE_D}] = vd;
+static void addGraded(const double *c, int device, double v, double perStep, double *s, int charges, int at) {
+  (void)c; (void)device; (void)v; (void)perStep; (void)charges;
+  s[at] = 0;
+}
+static void keepCharges(const double *c, int device, double *s, int n) {
+  (void)c; (void)device; (void)s; (void)n;
+}
+static void searchPorts(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n, double a, double b) {
+  (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)junction; (void)s; (void)n; (void)a; (void)b;
+  fprintf(stderr, "the benchmark's signal must not need the search\\n");
+  exit(1);
+}
+static void searched(const double *c, const double *t, int device, int aI, int bI, double a, double b, double *out, int at) {
+  (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)a; (void)b;
+  out[at] = 0;
 }
 static void evaluate(const double *c, const double *t, int device, double v, double *out, int at) {
   (void)c; (void)t; (void)device; (void)v; (void)out; (void)at;
@@ -73,7 +59,8 @@ static void bent(const double *c, const double *t, int device, int aI, int bI, d
   (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)a; (void)b;
   out[at] = I;
 }
-__attribute__((noinline)) ${kernelInC('square', shape)}
+${text.conductor}
+__attribute__((noinline)) ${text.kernel}
 static double c[${coefficientCount}], s[${slotCount}], u[${sampleCount}], v[${sampleCount}], y[${sampleCount}];
 int main(int argc, char **argv) {
   FILE *f = fopen(argv[argc - 1], "rb");

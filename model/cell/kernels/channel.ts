@@ -144,7 +144,9 @@ function excessSlope(
 }
 
 /**
- * The current that solves I = F(a − αI) − F(b + γI), A, into `out[at]`, by bisection to the last bit: the two sides move apart, so there is one.
+ * A current that solves I = F(a − αI) − F(b + γI), A, into `out[at]`, by bisection to the last bit. For α, γ ≥ 0 the two sides move apart, and it lies
+ * between none and what flows with none; where a buffer and a capacitance together feed more than the drain's voltage back, γ is negative and the
+ * search begins wider.
  */
 export function searched(
   c: Float64Array,
@@ -160,6 +162,8 @@ export function searched(
   const free = channelA(c, t, device, a, b);
   let low = Math.min(0, free);
   let high = Math.max(0, free);
+  for (let wider = Math.abs(free); excess(c, t, device, a + c[aI] * low, b + c[bI] * low, low) < 0; wider *= 2) low -= wider;
+  for (let wider = Math.abs(free); excess(c, t, device, a + c[aI] * high, b + c[bI] * high, high) > 0; wider *= 2) high += wider;
   for (let step = 0; step < 2100; step++) {
     const middle = low + (high - low) / 2;
     if (middle === low || middle === high) break;

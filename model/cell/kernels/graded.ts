@@ -27,7 +27,7 @@ export function deviation(m: number, barrierV: number, v: number, out: Float64Ar
   out[at + 1] = kneeC - 1 + rise * past;
 }
 
-/** Adds the current and slope of one junction to `out[at]`, `out[at + 1]`; `charges` is where its four past q/C0 stand in `s`. */
+/** Current and slope of one junction into `s[at]`, `s[at + 1]`; `charges` is where its four past q/C0 stand in `s`. */
 export function addGraded(
   c: Float64Array,
   device: number,
@@ -40,12 +40,17 @@ export function addGraded(
   const scratch = charges + 4;
   deviation(c[device + L.GRADING], c[device + L.BARRIER_V], overV + c[device + L.GATE_OFF_V], s, scratch);
   const past = PAST_1 * s[charges] + PAST_2 * s[charges + 1] + PAST_3 * s[charges + 2] + PAST_4 * s[charges + 3];
-  s[at] += perStepS * (NEWEST * s[scratch] - past);
-  s[at + 1] += perStepS * NEWEST * s[scratch + 1];
+  s[at] = perStepS * (NEWEST * s[scratch] - past);
+  s[at + 1] = perStepS * NEWEST * s[scratch + 1];
 }
 
-/** The junction's charge at the sample's solution becomes the newest of the past ones. */
-export function keepCharge(c: Float64Array, device: number, overV: number, s: Float64Array, charges: number): void {
+/** The charges of both junctions at the sample's solution become the newest of the past ones. */
+export function keepCharges(c: Float64Array, device: number, s: Float64Array, n: number): void {
+  keepCharge(c, device, s[n + L.OVERDRIVE_S], s, n + L.CHARGES_S);
+  keepCharge(c, device, s[n + L.OVERDRIVE_D], s, n + L.CHARGES_D);
+}
+
+function keepCharge(c: Float64Array, device: number, overV: number, s: Float64Array, charges: number): void {
   deviation(c[device + L.GRADING], c[device + L.BARRIER_V], overV + c[device + L.GATE_OFF_V], s, charges + 4);
   for (let k = 3; k > 0; k--) s[charges + k] = s[charges + k - 1];
   s[charges] = s[charges + 4];

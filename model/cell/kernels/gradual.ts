@@ -8,8 +8,69 @@
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { evaluate, searched } from './channel.ts';
-import type { Kernel } from './kernel.ts';
-import { conduct } from './ports.ts';
+import type { Conductor, Kernel } from './kernel.ts';
+import { addGraded, keepCharges } from './graded.ts';
+import { searchPorts } from './ports.ts';
+import { exp } from '../../device/math.ts';
+
+function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {
+  const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
+  const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
+  const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
+  const rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;
+  const enough = 0.1 * c[device + 18] + 1e-15 * (Math.abs(a) + Math.abs(b));
+  const lambda = c[device + 5];
+  const scale = c[device + 6];
+  const inverseWidth = c[device + 7];
+  const slope = c[device + 8];
+  let vs = Math.min(a + perAs * freeA, s[n + 5] > onS ? s[n + 5] : kneeS);
+  let vd = Math.min(b + perAd * freeA, s[n + 6] > onD ? s[n + 6] : kneeD);
+  for (let step = 0; step < 40; step++) {
+    let Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;
+    if (vs > 0) {
+      const q = vs * inverseWidth;
+      if (q < 1) {
+        const r = Math.sqrt(1 - q), p = q / (1 + r);
+        Fs = scale * p * p * (1 + 2 * r); fs = slope * p;
+      } else { Fs = scale + slope * (vs - 1 / inverseWidth); fs = slope; }
+    }
+    if (vd > 0) {
+      const q = vd * inverseWidth;
+      if (q < 1) {
+        const r = Math.sqrt(1 - q), p = q / (1 + r);
+        Fd = scale * p * p * (1 + 2 * r); fd = slope * p;
+      } else { Fd = scale + slope * (vd - 1 / inverseWidth); fd = slope; }
+    }
+    if (lambda != 0) {
+      const past = lambda * Math.max(-vd, 0), reversed = lambda * Math.max(-vs, 0), term = Fs;
+      fs = fs * (1 + past) + (reversed > 0 ? lambda * Fd : 0);
+      fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);
+      Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);
+    }
+    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }
+    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }
+    if (vs > clampOn) { const Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }
+    if (grading != 0) {
+      addGraded(c, device, vs, c[device + 21], s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
+      addGraded(c, device, vd, c[device + 22], s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+    }
+    const channel = Fs - Fd;
+    const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
+    const ss = 1 - perAs * fs - aS * slopeS, sd = perAs * fd - aD * slopeD, ds = -perAd * fs - bS * slopeS, dd = 1 + perAd * fd - bD * slopeD;
+    const over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;
+    const stepS = wholeS * rateS <= 2 ? wholeS : vs < onS ? Math.min(wholeS, kneeS - vs) : (2 + wholeS * rateS / (1 + 0.1 * wholeS * rateS)) / rateS;
+    const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
+    vs += stepS; vd += stepD;
+    if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
+      s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 2] = channel + fs * stepS - fd * stepD;
+      s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
+      if (grading != 0) keepCharges(c, device, s, n);
+      return;
+    }
+  }
+  searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
+}
 
 function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
@@ -42,7 +103,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -72,7 +133,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      conduct_gradual(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -131,7 +192,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -161,7 +222,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      conduct_gradual(c, t, 34, 4, 9, 20, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -248,7 +309,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -278,7 +339,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -391,7 +452,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -421,7 +482,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -564,7 +625,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -594,7 +655,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 4, a, b, I);
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -668,7 +729,7 @@ function gradual0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -698,7 +759,7 @@ function gradual0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 4, a, b, I);
+      conduct_gradual(c, t, 34, 4, 9, 20, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -775,7 +836,7 @@ function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -805,7 +866,7 @@ function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 5, a, b, I);
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 5, a, b, I);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
     I += J;
@@ -882,7 +943,7 @@ function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -912,7 +973,7 @@ function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1007,7 +1068,7 @@ function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1037,7 +1098,7 @@ function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1164,7 +1225,7 @@ function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1194,7 +1255,7 @@ function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 10, a, b, I);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -1279,7 +1340,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1309,7 +1370,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1404,7 +1465,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1434,7 +1495,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1498,7 +1559,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1528,7 +1589,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      conduct_gradual(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -1599,7 +1660,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1629,7 +1690,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      conduct_gradual(c, t, 34, 4, 9, 20, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -1725,7 +1786,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1755,7 +1816,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -1878,7 +1939,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -1908,7 +1969,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -2010,7 +2071,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2040,7 +2101,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -2167,7 +2228,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2197,7 +2258,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -2355,7 +2416,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2385,7 +2446,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 10, a, b, I);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -2578,7 +2639,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2608,7 +2669,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 11, a, b, I);
+      conduct_gradual(c, t, 138, 8, 17, 72, s, 11, a, b, I);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
     I += J;
@@ -2774,7 +2835,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -2804,7 +2865,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 13, a, b, I);
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 13, a, b, I);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
     I += J;
@@ -2999,7 +3060,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs > 0) {
@@ -3029,7 +3090,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 14, a, b, I);
+      conduct_gradual(c, t, 138, 8, 17, 72, s, 14, a, b, I);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
     I += J;
@@ -3074,6 +3135,8 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
   s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
+
+export const GRADUAL_CONDUCTOR: Conductor = conduct_gradual;
 
 /** By the key of a shape. */
 export const GRADUAL_KERNELS: Readonly<Record<string, Kernel>> = {

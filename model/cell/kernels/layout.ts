@@ -95,14 +95,13 @@ export const OVERDRIVE_D = 6;
 export const EARLIER_A = 7;
 /** Samples that Newton's method left to the bisection behind it. */
 export const FALLBACKS = 8;
-/** Working memory of ports.ts: F and F′ of both ends, and how far its last step moved. */
+/** Working memory of ports.ts: F and F′ of both ends. */
 export const TERM_S = 9;
 export const TERM_D = 11;
-export const MOVED_V = 13;
 /** Current and slope of both gate ports. */
-export const PORT_S = 14;
-export const PORT_D = 16;
+export const PORT_S = 13;
+export const PORT_D = 15;
 /** Of each junction: four past charges above C0·v, over C0, then working memory. */
-export const CHARGES_S = 18;
-export const CHARGES_D = 24;
-export const STATE_SLOTS = 30;
+export const CHARGES_S = 17;
+export const CHARGES_D = 23;
+export const STATE_SLOTS = 29;

@@ -8,8 +8,72 @@
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { evaluate, searched } from './channel.ts';
-import type { Kernel } from './kernel.ts';
-import { conduct } from './ports.ts';
+import type { Conductor, Kernel } from './kernel.ts';
+import { addGraded, keepCharges } from './graded.ts';
+import { searchPorts } from './ports.ts';
+import { exp } from '../../device/math.ts';
+
+function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {
+  const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
+  const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
+  const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
+  const rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;
+  const enough = 0.1 * c[device + 18] + 1e-15 * (Math.abs(a) + Math.abs(b));
+  const lambda = c[device + 5];
+  const scale = c[device + 6];
+  const inverseWidth = c[device + 7];
+  const slope = c[device + 8];
+  const pieces = c[device + 12];
+  let vs = Math.min(a + perAs * freeA, s[n + 5] > onS ? s[n + 5] : kneeS);
+  let vd = Math.min(b + perAd * freeA, s[n + 6] > onD ? s[n + 6] : kneeD);
+  for (let step = 0; step < 40; step++) {
+    let Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;
+    if (vs * inverseWidth > -40) {
+      const z = (vs * inverseWidth + 40) * 8;
+      if (z < pieces) {
+        const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+        Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+        fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+      } else { evaluate(c, t, device, vs, s, n + 9); Fs = s[n + 9]; fs = s[n + 9 + 1]; }
+    }
+    if (vd * inverseWidth > -40) {
+      const z = (vd * inverseWidth + 40) * 8;
+      if (z < pieces) {
+        const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+        Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+        fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+      } else { evaluate(c, t, device, vd, s, n + 9); Fd = s[n + 9]; fd = s[n + 9 + 1]; }
+    }
+    if (lambda != 0) {
+      const past = lambda * Math.max(-vd, 0), reversed = lambda * Math.max(-vs, 0), term = Fs;
+      fs = fs * (1 + past) + (reversed > 0 ? lambda * Fd : 0);
+      fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);
+      Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);
+    }
+    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }
+    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }
+    if (vs > clampOn) { const Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }
+    if (grading != 0) {
+      addGraded(c, device, vs, c[device + 21], s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
+      addGraded(c, device, vd, c[device + 22], s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+    }
+    const channel = Fs - Fd;
+    const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
+    const ss = 1 - perAs * fs - aS * slopeS, sd = perAs * fd - aD * slopeD, ds = -perAd * fs - bS * slopeS, dd = 1 + perAd * fd - bD * slopeD;
+    const over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;
+    const stepS = wholeS * rateS <= 2 ? wholeS : vs < onS ? Math.min(wholeS, kneeS - vs) : (2 + wholeS * rateS / (1 + 0.1 * wholeS * rateS)) / rateS;
+    const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
+    vs += stepS; vd += stepD;
+    if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
+      s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 2] = channel + fs * stepS - fd * stepD;
+      s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
+      if (grading != 0) keepCharges(c, device, s, n);
+      return;
+    }
+  }
+  searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
+}
 
 function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
@@ -43,7 +107,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -75,7 +139,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      conduct_smooth(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -135,7 +199,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -167,7 +231,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      conduct_smooth(c, t, 34, 4, 9, 20, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -255,7 +319,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -287,7 +351,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      conduct_smooth(c, t, 54, 5, 11, 30, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -401,7 +465,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -433,7 +497,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      conduct_smooth(c, t, 78, 6, 13, 42, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -577,7 +641,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -609,7 +673,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 4, a, b, I);
+      conduct_smooth(c, t, 106, 7, 15, 56, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -684,7 +748,7 @@ function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -716,7 +780,7 @@ function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 4, a, b, I);
+      conduct_smooth(c, t, 34, 4, 9, 20, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -794,7 +858,7 @@ function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -826,7 +890,7 @@ function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 5, a, b, I);
+      conduct_smooth(c, t, 54, 5, 11, 30, s, 5, a, b, I);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
     I += J;
@@ -904,7 +968,7 @@ function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -936,7 +1000,7 @@ function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_smooth(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1032,7 +1096,7 @@ function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1064,7 +1128,7 @@ function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_smooth(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1192,7 +1256,7 @@ function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1224,7 +1288,7 @@ function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      conduct_smooth(c, t, 106, 7, 15, 56, s, 10, a, b, I);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -1310,7 +1374,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1342,7 +1406,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_smooth(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1438,7 +1502,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1470,7 +1534,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_smooth(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1535,7 +1599,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1567,7 +1631,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      conduct_smooth(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -1639,7 +1703,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1671,7 +1735,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      conduct_smooth(c, t, 34, 4, 9, 20, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -1768,7 +1832,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1800,7 +1864,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      conduct_smooth(c, t, 54, 5, 11, 30, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -1924,7 +1988,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -1956,7 +2020,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      conduct_smooth(c, t, 78, 6, 13, 42, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -2059,7 +2123,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2091,7 +2155,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_smooth(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -2219,7 +2283,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2251,7 +2315,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_smooth(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -2410,7 +2474,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2442,7 +2506,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      conduct_smooth(c, t, 106, 7, 15, 56, s, 10, a, b, I);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -2636,7 +2700,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2668,7 +2732,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 11, a, b, I);
+      conduct_smooth(c, t, 138, 8, 17, 72, s, 11, a, b, I);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
     I += J;
@@ -2835,7 +2899,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -2867,7 +2931,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 13, a, b, I);
+      conduct_smooth(c, t, 106, 7, 15, 56, s, 13, a, b, I);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
     I += J;
@@ -3063,7 +3127,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     }
     I = 2 * I0 - E0;
     let settled = 0;
-    for (let step = 0; step < 12; step++) {
+    for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
       let Fs = 0, fs = 0, Fd = 0, fd = 0;
       if (vs * inverseWidth > -40) {
@@ -3095,7 +3159,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 14, a, b, I);
+      conduct_smooth(c, t, 138, 8, 17, 72, s, 14, a, b, I);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
     I += J;
@@ -3140,6 +3204,8 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
+
+export const SMOOTH_CONDUCTOR: Conductor = conduct_smooth;
 
 /** By the key of a shape. */
 export const SMOOTH_KERNELS: Readonly<Record<string, Kernel>> = {

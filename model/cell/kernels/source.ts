@@ -7,6 +7,7 @@
  *          a − αI and b + γI, and I = F(a − αI) − F(b + γI), which has one solution as its two sides move apart monotonically for α, γ ≥ 0.
  *          Beyond the knee F of the driving end is multiplied by 1 + λ·(the overdrive by which the other end is past VGS(off))
  * Scheme   square law: a quadratic in each region, roots as 2c/(q + √…), free of cancellation; the root that is consistent is the only one.
+ *          Where γ < 0 bends the curve back (more than the drain's voltage fed back), the search of channel.ts.
  *          Other laws, and λ: Newton from the current extrapolated along a straight line; where that does not settle, bisection.
  *          Junction currents, when one conducts, by the solver in ports.ts. Noise, where there is a row of it for each sample, adds to the rows;
  *          the channel's own is white with the conductance of the sample before (4kT/r: van der Ziel, Proc. IRE 50 (1962) 1808)
@@ -45,9 +46,14 @@ export function shapeKey({ trapezoidal, stiff, output }: Shape): string {
   return `${trapezoidal} ${stiff} ${output}`;
 }
 
-const NEWTON_STEPS = 12;
+const NEWTON_STEPS = 40;
 
 interface Language {
+  /** The head of the solver for a conducting gate. */
+  readonly conduct: (name: string) => string;
+  readonly absolute: string;
+  readonly least: string;
+  readonly most: string;
   readonly constant: string;
   readonly variable: string;
   readonly sqrt: string;
@@ -55,6 +61,11 @@ interface Language {
 }
 
 const typescript: Language = {
+  conduct: (name) =>
+    `function ${name}(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {`,
+  absolute: 'Math.abs',
+  least: 'Math.min',
+  most: 'Math.max',
   constant: 'const',
   variable: 'let',
   sqrt: 'Math.sqrt',
@@ -64,6 +75,11 @@ const typescript: Language = {
 };
 
 const c: Language = {
+  conduct: (name) =>
+    `static void ${name}(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n, double a, double b, double freeA) {`,
+  absolute: 'fabs',
+  least: 'fmin',
+  most: 'fmax',
   constant: 'const double',
   variable: 'double',
   sqrt: 'sqrt',
@@ -75,7 +91,7 @@ const c: Language = {
 /** The TypeScript module with all kernels of one law. */
 export function kernelModule(law: Law): string {
   const kernels = SHAPES.map((shape) => kernel(law, shape, typescript)).join('\n\n');
-  const helpers = law === 'square' ? 'bent, evaluate' : 'evaluate, searched';
+  const helpers = law === 'square' ? 'bent, evaluate, searched' : 'evaluate, searched';
   return `/**
  * Kernels of the ${law} law by number of trapezoidal and of stiff states: written from source.ts by \`npm run kernels\`, where the method is
  * explained. Not to be edited.
@@ -86,10 +102,16 @@ export function kernelModule(law: Law): string {
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { ${helpers} } from './channel.ts';
-import type { Kernel } from './kernel.ts';
-import { conduct } from './ports.ts';
+import type { Conductor, Kernel } from './kernel.ts';
+import { addGraded, keepCharges } from './graded.ts';
+import { searchPorts } from './ports.ts';
+import { exp } from '../../device/math.ts';
+
+${conductor(law, typescript)}
 
 ${kernels}
+
+export const ${law.toUpperCase()}_CONDUCTOR: Conductor = ${conductorName(law)};
 
 /** By the key of a shape. */
 export const ${law.toUpperCase()}_KERNELS: Readonly<Record<string, Kernel>> = {
@@ -102,9 +124,76 @@ export function kernelName(law: Law, { trapezoidal, stiff, output }: Shape): str
   return `${law}${trapezoidal}_${stiff}_${output}`;
 }
 
-/** The same kernel in C, for the bench. */
-export function kernelInC(law: Law, shape: Shape): string {
-  return kernel(law, shape, c);
+/** The same kernel in C, for the bench, with its solver for a conducting gate. */
+export function kernelInC(law: Law, shape: Shape): { conductor: string; kernel: string } {
+  return { conductor: conductor(law, c), kernel: kernel(law, shape, c) };
+}
+
+function conductorName(law: Law): string {
+  return `conduct_${law}`;
+}
+
+/** Newton on both overdrives while a junction, the clamp or a graded capacitance carries current: ports.ts explains. */
+function conductor(law: Law, language: Language): string {
+  const { constant, variable, absolute, least, most } = language;
+  const device = (index: number) => `c[device + ${index}]`;
+  const slot = (index: number) => `s[n + ${index}]`;
+  const counter = variable === 'let' ? 'let' : 'int';
+  const text = (v: string, F: string, f: string) =>
+    (law === 'square' ? [`if (${v} > 0) { ${F} = scale * ${v} * ${v}; ${f} = 2 * scale * ${v}; }`] : lawText(law, v, F, f, language)).map(
+      (line) => `    ${line.replaceAll('DEVICE', 'device').replaceAll('TERM', `n + ${L.TERM_S}`)}`,
+    );
+  const start = (end: 'S' | 'D', free: string, over: number) =>
+    `  ${variable} v${end === 'S' ? 's' : 'd'} = ${least}(${free}, ${slot(over)} > on${end} ? ${slot(over)} : knee${end});`;
+  const cut = (end: 'S' | 'D', v: string) =>
+    `    ${constant} step${end} = whole${end} * rate${end} <= 2 ? whole${end} : ${v} < on${end} ? ${least}(whole${end}, knee${end} - ${v}) : (2 + whole${end} * rate${end} / (1 + 0.1 * whole${end} * rate${end})) / rate${end};`;
+  return [
+    language.conduct(conductorName(law)),
+    `  ${constant} perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];`,
+    `  ${constant} off = ${device(L.GATE_OFF_V)}, reverse = ${device(L.REVERSE_A)}, rateD = ${device(L.INVERSE_NVT)}, onD = ${device(L.JUNCTION_ON_V)};`,
+    `  ${constant} clampA = ${device(L.CLAMP_A)}, clampRate = ${device(L.CLAMP_INVERSE_NVT)}, clampOn = ${device(L.CLAMP_ON_V)}, grading = ${device(L.GRADING)};`,
+    `  ${constant} rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;`,
+    `  ${constant} enough = 0.1 * ${device(L.ENOUGH_V)} + 1e-15 * (${absolute}(a) + ${absolute}(b));`,
+    ...deviceConstants(law, device)
+      .filter(([name]) => !['on', 'bent_', 'fall', 'rise', 'enough'].includes(name))
+      .map(([name, value]) => `  ${constant} ${name} = ${value};`),
+    start('S', 'a + perAs * freeA', L.OVERDRIVE_S),
+    start('D', 'b + perAd * freeA', L.OVERDRIVE_D),
+    `  for (${counter} step = 0; step < ${NEWTON_STEPS}; step++) {`,
+    `    ${variable} Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;`,
+    ...text('vs', 'Fs', 'fs'),
+    ...text('vd', 'Fd', 'fd'),
+    '    if (lambda != 0) {',
+    `      ${constant} past = lambda * ${most}(-vd, 0), reversed = lambda * ${most}(-vs, 0), term = Fs;`,
+    '      fs = fs * (1 + past) + (reversed > 0 ? lambda * Fd : 0);',
+    '      fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);',
+    '      Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);',
+    '    }',
+    '    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }',
+    '    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }',
+    `    if (vs > clampOn) { ${constant} Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }`,
+    '    if (grading != 0) {',
+    `      addGraded(c, device, vs, ${device(L.STEP_S)}, s, n + ${L.CHARGES_S}, n + ${L.PORT_S}); S += ${slot(L.PORT_S)}; slopeS += ${slot(L.PORT_S + 1)};`,
+    `      addGraded(c, device, vd, ${device(L.STEP_D)}, s, n + ${L.CHARGES_D}, n + ${L.PORT_D}); D += ${slot(L.PORT_D)}; slopeD += ${slot(L.PORT_D + 1)};`,
+    '    }',
+    `    ${constant} channel = Fs - Fd;`,
+    `    ${constant} rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;`,
+    `    ${constant} ss = 1 - perAs * fs - aS * slopeS, sd = perAs * fd - aD * slopeD, ds = -perAd * fs - bS * slopeS, dd = 1 + perAd * fd - bD * slopeD;`,
+    `    ${constant} over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;`,
+    cut('S', 'vs'),
+    cut('D', 'vd'),
+    '    vs += stepS; vd += stepD;',
+    `    if (${absolute}(stepS) < enough && ${absolute}(stepD) < enough) {`,
+    `      ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    `      ${slot(L.CHANNEL_A)} = channel + fs * stepS - fd * stepD;`,
+    `      ${slot(L.JUNCTION_S)} = S + slopeS * stepS; ${slot(L.JUNCTION_D)} = D + slopeD * stepD;`,
+    '      if (grading != 0) keepCharges(c, device, s, n);',
+    '      return;',
+    '    }',
+    '  }',
+    '  searchPorts(c, t, device, aI, bI, junction, s, n, a, b);',
+    '}',
+  ].join('\n');
 }
 
 function kernel(law: Law, shape: Shape, language: Language): string {
@@ -190,7 +279,7 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   body.push(...(law === 'square' ? squareSolution(aI, bI, places, slot, language) : newtonSolution(law, aI, bI, places, slot, language)));
   body.push(
     'if (vs > on || vd > on) {',
-    `  conduct(c, t, ${places}, ${all.junction}, s, ${slots}, a, b, I);`,
+    `  ${conductorName(law)}(c, t, ${places}, ${all.junction}, s, ${slots}, a, b, I);`,
     `  I = ${slot(L.CHANNEL_A)}; S = ${slot(L.JUNCTION_S)}; D = ${slot(L.JUNCTION_D)}; vs = ${slot(L.OVERDRIVE_S)}; vd = ${slot(L.OVERDRIVE_D)};`,
     '}',
     'I += J;',
@@ -252,7 +341,8 @@ function deviceConstants(law: Law, device: (index: number) => string): [string, 
 
 function squareSolution(aI: string, bI: string, places: string, slot: (index: number) => string, { constant, sqrt }: Language): string[] {
   return [
-    'if (a > 0 || b > 0) {',
+    `if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, ${places}, a, b, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; ${slot(L.FALLBACKS)} += 1; }`,
+    'else if (a > 0 || b > 0) {',
     `  ${constant} q = 1 + fall * a + rise * b;`,
     `  ${constant} w = scale * (a - b) * (a + b);`,
     `  I = 2 * w / (q + ${sqrt}(q * q - 4 * bent_ * w));`,

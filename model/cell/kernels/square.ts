@@ -7,9 +7,56 @@
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
-import { bent, evaluate } from './channel.ts';
-import type { Kernel } from './kernel.ts';
-import { conduct } from './ports.ts';
+import { bent, evaluate, searched } from './channel.ts';
+import type { Conductor, Kernel } from './kernel.ts';
+import { addGraded, keepCharges } from './graded.ts';
+import { searchPorts } from './ports.ts';
+import { exp } from '../../device/math.ts';
+
+function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {
+  const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
+  const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
+  const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
+  const rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;
+  const enough = 0.1 * c[device + 18] + 1e-15 * (Math.abs(a) + Math.abs(b));
+  const lambda = c[device + 5];
+  const scale = c[device + 6];
+  let vs = Math.min(a + perAs * freeA, s[n + 5] > onS ? s[n + 5] : kneeS);
+  let vd = Math.min(b + perAd * freeA, s[n + 6] > onD ? s[n + 6] : kneeD);
+  for (let step = 0; step < 40; step++) {
+    let Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;
+    if (vs > 0) { Fs = scale * vs * vs; fs = 2 * scale * vs; }
+    if (vd > 0) { Fd = scale * vd * vd; fd = 2 * scale * vd; }
+    if (lambda != 0) {
+      const past = lambda * Math.max(-vd, 0), reversed = lambda * Math.max(-vs, 0), term = Fs;
+      fs = fs * (1 + past) + (reversed > 0 ? lambda * Fd : 0);
+      fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);
+      Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);
+    }
+    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }
+    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }
+    if (vs > clampOn) { const Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }
+    if (grading != 0) {
+      addGraded(c, device, vs, c[device + 21], s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
+      addGraded(c, device, vd, c[device + 22], s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+    }
+    const channel = Fs - Fd;
+    const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
+    const ss = 1 - perAs * fs - aS * slopeS, sd = perAs * fd - aD * slopeD, ds = -perAd * fs - bS * slopeS, dd = 1 + perAd * fd - bD * slopeD;
+    const over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;
+    const stepS = wholeS * rateS <= 2 ? wholeS : vs < onS ? Math.min(wholeS, kneeS - vs) : (2 + wholeS * rateS / (1 + 0.1 * wholeS * rateS)) / rateS;
+    const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
+    vs += stepS; vd += stepD;
+    if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
+      s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 2] = channel + fs * stepS - fd * stepD;
+      s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
+      if (grading != 0) keepCharges(c, device, s, n);
+      return;
+    }
+  }
+  searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
+}
 
 function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0;
@@ -40,7 +87,8 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -56,7 +104,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      conduct_square(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -113,7 +161,8 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -129,7 +178,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      conduct_square(c, t, 34, 4, 9, 20, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -214,7 +263,8 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -230,7 +280,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      conduct_square(c, t, 54, 5, 11, 30, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -341,7 +391,8 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -357,7 +408,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      conduct_square(c, t, 78, 6, 13, 42, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -498,7 +549,8 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -514,7 +566,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 4, a, b, I);
+      conduct_square(c, t, 106, 7, 15, 56, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -586,7 +638,8 @@ function square0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -602,7 +655,7 @@ function square0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 4, a, b, I);
+      conduct_square(c, t, 34, 4, 9, 20, s, 4, a, b, I);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -677,7 +730,8 @@ function square1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -693,7 +747,7 @@ function square1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 5, a, b, I);
+      conduct_square(c, t, 54, 5, 11, 30, s, 5, a, b, I);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
     I += J;
@@ -768,7 +822,8 @@ function square0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -784,7 +839,7 @@ function square0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_square(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -877,7 +932,8 @@ function square1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -893,7 +949,7 @@ function square1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_square(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1018,7 +1074,8 @@ function square2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1034,7 +1091,7 @@ function square2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      conduct_square(c, t, 106, 7, 15, 56, s, 10, a, b, I);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -1117,7 +1174,8 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1133,7 +1191,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_square(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1226,7 +1284,8 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1242,7 +1301,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_square(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1304,7 +1363,8 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1320,7 +1380,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      conduct_square(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -1389,7 +1449,8 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1405,7 +1466,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      conduct_square(c, t, 34, 4, 9, 20, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -1499,7 +1560,8 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1515,7 +1577,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      conduct_square(c, t, 54, 5, 11, 30, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -1636,7 +1698,8 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1652,7 +1715,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      conduct_square(c, t, 78, 6, 13, 42, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -1752,7 +1815,8 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1768,7 +1832,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      conduct_square(c, t, 54, 5, 11, 30, s, 8, a, b, I);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1893,7 +1957,8 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1909,7 +1974,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      conduct_square(c, t, 78, 6, 13, 42, s, 9, a, b, I);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -2065,7 +2130,8 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2081,7 +2147,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      conduct_square(c, t, 106, 7, 15, 56, s, 10, a, b, I);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -2272,7 +2338,8 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2288,7 +2355,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 11, a, b, I);
+      conduct_square(c, t, 138, 8, 17, 72, s, 11, a, b, I);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
     I += J;
@@ -2452,7 +2519,8 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2468,7 +2536,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 13, a, b, I);
+      conduct_square(c, t, 106, 7, 15, 56, s, 13, a, b, I);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
     I += J;
@@ -2661,7 +2729,8 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2677,7 +2746,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 14, a, b, I);
+      conduct_square(c, t, 138, 8, 17, 72, s, 14, a, b, I);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
     I += J;
@@ -2722,6 +2791,8 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
+
+export const SQUARE_CONDUCTOR: Conductor = conduct_square;
 
 /** By the key of a shape. */
 export const SQUARE_KERNELS: Readonly<Record<string, Kernel>> = {
