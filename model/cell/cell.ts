@@ -11,9 +11,10 @@ import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
 import { loopedKernel } from './kernels/looped.ts';
-import { GRADUAL_KERNELS } from './kernels/gradual.ts';
-import { SMOOTH_KERNELS } from './kernels/smooth.ts';
-import { SQUARE_KERNELS } from './kernels/square.ts';
+import { restCharge } from './kernels/graded.ts';
+import { GRADUAL_CONDUCTOR, GRADUAL_KERNELS } from './kernels/gradual.ts';
+import { SMOOTH_CONDUCTOR, SMOOTH_KERNELS } from './kernels/smooth.ts';
+import { SQUARE_CONDUCTOR, SQUARE_KERNELS } from './kernels/square.ts';
 import { factor, solve } from './linear.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
 import { createReduction, discretise, memoryColumns, type Reduction, respond, stepColumns } from './reduce.ts';
@@ -25,6 +26,7 @@ const OFF_BELOW = -10;
 const LEFT_OUT_A = 1e-15;
 
 const KERNELS = { square: SQUARE_KERNELS, gradual: GRADUAL_KERNELS, smooth: SMOOTH_KERNELS };
+const CONDUCTORS = { square: SQUARE_CONDUCTOR, gradual: GRADUAL_CONDUCTOR, smooth: SMOOTH_CONDUCTOR };
 
 /** The smooth law's table reaches this far past VGS = 0; beyond it, and beyond the longest table, the law is evaluated directly. */
 const TABLE_BEYOND_V = 1.5;
@@ -41,7 +43,8 @@ const WIDTH_V = 5;
 /** Reverse current of the gate clamp, 0 where there is none, and its nVT. */
 const CLAMP_A = 6;
 const CLAMP_NVT_V = 7;
-export const DEVICE_VALUES = 8;
+const BARRIER_V = 8;
+export const DEVICE_VALUES = 9;
 const NO_NOISE = new Float64Array(0);
 
 /** Newton's last step, V. While playing it leaves under 1e-10 V, 0.1 pA in 1 kΩ; in readings rounding only. */
@@ -56,6 +59,11 @@ export interface CellNumbers {
   readonly polarity: 1 | -1;
   readonly law: Law;
   readonly exponent: number;
+  /** Exponent of the capacitances' fall; 0 where they are constant. */
+  readonly grading: number;
+  /** Places of the gate's capacitances in `values`, −1 where there is none. */
+  readonly gateSourceAt: number;
+  readonly gateDrainAt: number;
   /** Of the smooth law; empty for the others. */
   readonly table: Float64Array;
   /** Step at which Newton's method stops, V. */
@@ -105,16 +113,20 @@ export function compileCell(circuit: Circuit, device: Device, tempC: number, noi
   const thermalV = VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
   values[plan.values.length + NVT_V] = junction.ideality * thermalV;
   values[plan.values.length + LAMBDA] = device.lambdaPerV;
+  values[plan.values.length + BARRIER_V] = device.barrierV;
   const clamp = circuit.jfet.clamp ?? { reverseA: 0, ideality: 1 };
   values[plan.values.length + CLAMP_A] = clamp.reverseA;
   values[plan.values.length + CLAMP_NVT_V] = clamp.ideality * thermalV;
   values[plan.values.length + WIDTH_V] = law.law === 'smooth' ? law.tailV : law.depletionV;
   return {
-    shape: [device.channel, law.law, law.law === 'smooth' ? law.exponent : '', plan.shape].join(' '),
+    shape: [device.channel, law.law, law.law === 'smooth' ? law.exponent : '', device.grading, plan.shape].join(' '),
     plan,
     polarity: device.channel === 'n' ? 1 : -1,
     law: law.law,
     exponent: law.exponent,
+    grading: device.grading,
+    gateSourceAt: circuit.elements.findIndex((element) => element.name === 'gateSourceF'),
+    gateDrainAt: circuit.elements.findIndex((element) => element.name === 'gateDrainF'),
     table: tableOf(law),
     enoughV: PLAYING_ENOUGH_V,
     values,
@@ -134,9 +146,13 @@ export function forReadings(numbers: CellNumbers): CellNumbers {
   return { ...numbers, enoughV: READING_ENOUGH_V, plan: { ...numbers.plan, trapezoidal: numbers.plan.states.length } };
 }
 
-/** The kernel written out for a shape, or the one in loops. */
-function kernelOf(law: Law, trapezoidal: number, stiff: number): Kernel {
-  return KERNELS[law][`${trapezoidal} ${stiff}`] ?? loopedKernel(trapezoidal, stiff);
+/** The kernel written out for the plan's shape, or for its numbers of states, or the one in loops. */
+function kernelOf(law: Law, plan: Plan): Kernel {
+  const { trapezoidal, voltages } = plan;
+  const stiff = voltages.states.slice(trapezoidal);
+  const kernels = KERNELS[law];
+  const exact = kernels[`${trapezoidal} ${stiff} ${voltages.output}`];
+  return exact ?? kernels[`${trapezoidal} ${'x'.repeat(stiff.length)} x`] ?? loopedKernel(trapezoidal, stiff.length, CONDUCTORS[law]);
 }
 
 /** A cell advancing by `stepSec`, with its states at zero: call `settle` before the first sample. Throws when the network is singular. */
@@ -154,7 +170,7 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
     increment: new Float64Array(L.coefficientLayout(n).length),
     state: new Float64Array(slots + L.STATE_SLOTS),
     slots,
-    kernel: kernelOf(numbers.law, trapezoidal, n - trapezoidal),
+    kernel: kernelOf(numbers.law, numbers.plan),
     stepSec,
     rest: {
       coefficients: new Float64Array(L.coefficientLayout(0).length),
@@ -195,7 +211,11 @@ export function aimAt(cell: Cell, values: Float64Array, samples: number): boolea
   }
   for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
   packStep(cell);
-  for (let i = 0; i < target.length; i++) increment[i] = target[i] === coefficients[i] ? 0 : (target[i] - coefficients[i]) / samples;
+  for (let i = 0; i < target.length; i++) {
+    // A threshold that was or becomes infinite has no way between: it changes on arrival.
+    const way = target[i] - coefficients[i];
+    increment[i] = Number.isFinite(way) ? way / samples : 0;
+  }
   return true;
 }
 
@@ -269,6 +289,18 @@ function packStep(cell: Cell): void {
   c[to + row.constant] += response[from + n + CONSTANT];
   packMemory(cell);
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
+  packGrading(cell, c, all.device);
+}
+
+/** The gate's capacitances where they fall with reverse voltage: then every sample is solved by the ports. */
+function packGrading(cell: Cell, c: Float64Array, at: number): void {
+  const { grading, gateSourceAt, gateDrainAt } = cell.numbers;
+  const farads = (index: number) => (index < 0 ? 0 : cell.values[index]);
+  c[at + L.GRADING] = grading;
+  c[at + L.BARRIER_V] = deviceValue(cell, BARRIER_V);
+  c[at + L.STEP_S] = farads(gateSourceAt) / cell.stepSec;
+  c[at + L.STEP_D] = farads(gateDrainAt) / cell.stepSec;
+  if (grading > 0) c[at + L.ON_V] = Number.NEGATIVE_INFINITY;
 }
 
 /** A row's weights of the port currents, and as its constant what the steady reverse currents add. */
@@ -329,6 +361,7 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   const widthV = deviceValue(cell, WIDTH_V);
   const offV = deviceValue(cell, GATE_OFF_V);
   c[at + L.LAW] = L.LAW_NUMBER[law];
+  c[at + L.POLARITY] = cell.numbers.polarity;
   c[at + L.GATE_OFF_V] = offV;
   c[at + L.JUNCTION_ON_V] = conductsFrom(reverseA, nVt) - offV;
   c[at + L.CLAMP_ON_V] = conductsFrom(clampA, clampNVt) - offV;
@@ -372,7 +405,7 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   rest.audio[0] = audioV;
   rest.control[0] = controlV;
   const { law, table } = cell.numbers;
-  KERNELS[law]['0 0'](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
+  KERNELS[law]['0  x'](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
   const reverseA = deviceValue(cell, REVERSE_A);
   const channelA = rest.state[L.CHANNEL_A];
   const sourceA = rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A);
@@ -391,6 +424,11 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   state[cell.slots + L.OLD_AUDIO] = audioV;
   state[cell.slots + L.OLD_CONTROL] = controlV;
   state[cell.slots + L.EARLIER_A] = channelA;
+  if (cell.numbers.grading > 0) {
+    const { device } = L.coefficientLayout(n);
+    restCharge(cell.target, device, overdriveV(cell, 'source'), state, cell.slots + L.CHARGES_S);
+    restCharge(cell.target, device, overdriveV(cell, 'drain'), state, cell.slots + L.CHARGES_D);
+  }
   return rest.output[0];
 }
 

@@ -6,7 +6,7 @@
  * of the inductors; the voltage of a capacitor that closes a loop is a sum of states and source voltages. Those that are advanced by the
  * trapezoidal rule (coupling capacitors, inductors) come first, the stiff ones after them.
  */
-import { type Circuit, circuitShape, type Element, elementNodes, elementValue } from './circuit.ts';
+import { type Circuit, circuitShape, type Element, elementNodes, elementValue, GROUND, type Jfet } from './circuit.ts';
 import { chooseForest } from './forest.ts';
 
 /**
@@ -42,6 +42,8 @@ export interface Plan {
   /** Unknowns of the network: node voltages, then currents of sources, summers and state capacitors. */
   readonly size: number;
   readonly states: readonly StoragePlan[];
+  /** What each state and the output are the voltage of, in the letters of kernels/source.ts. */
+  readonly voltages: { readonly states: string; readonly output: 'd' | 'x' };
   /** How many of them, the first, are advanced by the trapezoidal rule. */
   readonly trapezoidal: number;
   readonly links: readonly StoragePlan[];
@@ -105,6 +107,10 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     size: places.size,
     states: stateElements.map(storage),
     trapezoidal: smooth.length,
+    voltages: {
+      states: stateElements.map((index) => letterOf(elements[index], jfet)).join(''),
+      output: circuit.outputNode === jfet.drain && jfet.source === GROUND ? 'd' : 'x',
+    },
     links: forest.links.map(storage),
     stateRows: Int32Array.from(stateElements, (index) => branchOf.get(index) ?? endRow(elements[index], row, 'a')),
     stateRowsLess: Int32Array.from(stateElements, (index) => (branchOf.has(index) ? -1 : endRow(elements[index], row, 'b'))),
@@ -115,6 +121,14 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     noisy,
     ...ends,
   };
+}
+
+/** `g` gate to source, `m` gate to drain, `d` drain to source, `x` anything else. */
+function letterOf(element: Element, { drain, gate, source }: Jfet): string {
+  if (element.kind !== 'capacitor') return 'x';
+  const { a, b } = element;
+  if (a === gate) return b === source ? 'g' : b === drain ? 'm' : 'x';
+  return a === drain && b === source ? 'd' : 'x';
 }
 
 function endRow(element: Element, row: (name: string) => number, end: 'a' | 'b'): number {

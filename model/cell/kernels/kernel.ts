@@ -10,3 +10,18 @@ export type Kernel = (
   from: number,
   to: number,
 ) => void;
+
+/** Solves both ports while a gate junction conducts: see ports.ts. */
+export type Conductor = (
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  aI: number,
+  bI: number,
+  junction: number,
+  s: Float64Array,
+  n: number,
+  a: number,
+  b: number,
+  freeA: number,
+) => void;

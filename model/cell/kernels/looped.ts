@@ -3,14 +3,13 @@
  * five times slower than those, and the same in the bits that matter (test/model/cell/kernels.test.ts).
  */
 import { bent, searched, slopeAt, termAt } from './channel.ts';
-import type { Kernel } from './kernel.ts';
+import type { Conductor, Kernel } from './kernel.ts';
 import * as L from './layout.ts';
-import { conduct } from './ports.ts';
 
 const NEWTON_STEPS = 40;
 
-/** A kernel for a shape. Allocates its scratch memory now. */
-export function loopedKernel(trapezoidal: number, stiff: number): Kernel {
+/** A kernel for a shape, with the law's solver for a conducting gate. Allocates its scratch memory now. */
+export function loopedKernel(trapezoidal: number, stiff: number, conductor: Conductor): Kernel {
   const n = trapezoidal + stiff;
   const row = L.rowLayout(n);
   const past = L.memoryLayout(n);
@@ -64,7 +63,7 @@ export function loopedKernel(trapezoidal: number, stiff: number): Kernel {
       const vs = a + c[aI] * free;
       const vd = b + c[bI] * free;
       if (vs > c[all.device + L.ON_V] || vd > c[all.device + L.ON_V]) {
-        conduct(c, t, all.device, aI, bI, all.junction, s, slots, a, b, free);
+        conductor(c, t, all.device, aI, bI, all.junction, s, slots, a, b, free);
       } else {
         s[slots + L.CHANNEL_A] = free;
         s[slots + L.JUNCTION_S] = 0;

@@ -16,15 +16,44 @@
 import type { Law } from '../../design/types.ts';
 import * as L from './layout.ts';
 
-/** Kernels are written out for these numbers of trapezoidal and of stiff states; looped.ts serves the others. */
-export const SHAPES: readonly (readonly [trapezoidal: number, stiff: number])[] = [
-  ...[0, 1, 2, 3].flatMap((trapezoidal) => [0, 1, 2, 3].map((stiff) => [trapezoidal, stiff] as const)),
-  [4, 0],
-  [5, 0],
+/**
+ * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of, and the same for the output:
+ * `g` gate to source, `m` gate to drain, `d` drain to source, which follow from the overdrives, or `x` anything else, which takes a row of its own.
+ */
+export interface Shape {
+  readonly trapezoidal: number;
+  readonly stiff: string;
+  readonly output: 'd' | 'x';
+}
+
+/** `x` serves for every letter, and looped.ts for every other shape. */
+export const SHAPES: readonly Shape[] = [
+  ...written([0, 1, 2, 3, 4], '', 'd'),
+  ...written([0, 1], 'd', 'd'),
+  ...written([0, 1, 2], 'dg', 'd'),
+  ...written([0, 1], 'gm', 'd'),
+  ...written([0, 1, 2, 3], '', 'x'),
+  ...written([0, 1, 2, 3], 'xx', 'x'),
+  ...written([1, 2], 'xxx', 'x'),
 ];
+
+function written(counts: readonly number[], stiff: string, output: 'd' | 'x'): Shape[] {
+  return counts.map((trapezoidal) => ({ trapezoidal, stiff, output }));
+}
+
+/** By which a kernel is found. */
+export function shapeKey({ trapezoidal, stiff, output }: Shape): string {
+  return `${trapezoidal} ${stiff} ${output}`;
+}
+
 const NEWTON_STEPS = 40;
 
 interface Language {
+  /** The head of the solver for a conducting gate. */
+  readonly conduct: (name: string) => string;
+  readonly absolute: string;
+  readonly least: string;
+  readonly most: string;
   readonly constant: string;
   readonly variable: string;
   readonly sqrt: string;
@@ -32,6 +61,11 @@ interface Language {
 }
 
 const typescript: Language = {
+  conduct: (name) =>
+    `function ${name}(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {`,
+  absolute: 'Math.abs',
+  least: 'Math.min',
+  most: 'Math.max',
   constant: 'const',
   variable: 'let',
   sqrt: 'Math.sqrt',
@@ -41,6 +75,11 @@ const typescript: Language = {
 };
 
 const c: Language = {
+  conduct: (name) =>
+    `static void ${name}(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n, double a, double b, double freeA) {`,
+  absolute: 'fabs',
+  least: 'fmin',
+  most: 'fmax',
   constant: 'const double',
   variable: 'double',
   sqrt: 'sqrt',
@@ -63,31 +102,103 @@ export function kernelModule(law: Law): string {
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { ${helpers} } from './channel.ts';
-import type { Kernel } from './kernel.ts';
-import { conduct } from './ports.ts';
+import type { Conductor, Kernel } from './kernel.ts';
+import { addGraded, keepCharges } from './graded.ts';
+import { searchPorts } from './ports.ts';
+import { exp } from '../../device/math.ts';
+
+${conductor(law, typescript)}
 
 ${kernels}
 
-/** By numbers of trapezoidal and of stiff states, "2 1". */
+export const ${law.toUpperCase()}_CONDUCTOR: Conductor = ${conductorName(law)};
+
+/** By the key of a shape. */
 export const ${law.toUpperCase()}_KERNELS: Readonly<Record<string, Kernel>> = {
-${SHAPES.map((shape) => `  '${shape.join(' ')}': ${kernelName(law, shape)},`).join('\n')}
+${SHAPES.map((shape) => `  '${shapeKey(shape)}': ${kernelName(law, shape)},`).join('\n')}
 };
 `;
 }
 
-type Shape = readonly [trapezoidal: number, stiff: number];
-
-function kernelName(law: Law, [trapezoidal, stiff]: Shape): string {
-  return `${law}${trapezoidal}_${stiff}`;
+export function kernelName(law: Law, { trapezoidal, stiff, output }: Shape): string {
+  return `${law}${trapezoidal}_${stiff}_${output}`;
 }
 
-/** The same kernel in C, for the bench. */
-export function kernelInC(law: Law, shape: Shape): string {
-  return kernel(law, shape, c);
+/** The same kernel in C, for the bench, with its solver for a conducting gate. */
+export function kernelInC(law: Law, shape: Shape): { conductor: string; kernel: string } {
+  return { conductor: conductor(law, c), kernel: kernel(law, shape, c) };
+}
+
+function conductorName(law: Law): string {
+  return `conduct_${law}`;
+}
+
+/** Newton on both overdrives while a junction, the clamp or a graded capacitance carries current: ports.ts explains. */
+function conductor(law: Law, language: Language): string {
+  const { constant, variable, absolute, least, most } = language;
+  const device = (index: number) => `c[device + ${index}]`;
+  const slot = (index: number) => `s[n + ${index}]`;
+  const counter = variable === 'let' ? 'let' : 'int';
+  const text = (v: string, F: string, f: string) =>
+    (law === 'square' ? [`if (${v} > 0) { ${F} = scale * ${v} * ${v}; ${f} = 2 * scale * ${v}; }`] : lawText(law, v, F, f, language)).map(
+      (line) => `    ${line.replaceAll('DEVICE', 'device').replaceAll('TERM', `n + ${L.TERM_S}`)}`,
+    );
+  const start = (end: 'S' | 'D', free: string, over: number) =>
+    `  ${variable} v${end === 'S' ? 's' : 'd'} = ${least}(${free}, ${slot(over)} > on${end} ? ${slot(over)} : knee${end});`;
+  const cut = (end: 'S' | 'D', v: string) =>
+    `    ${constant} step${end} = whole${end} * rate${end} <= 2 ? whole${end} : ${v} < on${end} ? ${least}(whole${end}, knee${end} - ${v}) : (2 + whole${end} * rate${end} / (1 + 0.1 * whole${end} * rate${end})) / rate${end};`;
+  return [
+    language.conduct(conductorName(law)),
+    `  ${constant} perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];`,
+    `  ${constant} off = ${device(L.GATE_OFF_V)}, reverse = ${device(L.REVERSE_A)}, rateD = ${device(L.INVERSE_NVT)}, onD = ${device(L.JUNCTION_ON_V)};`,
+    `  ${constant} clampA = ${device(L.CLAMP_A)}, clampRate = ${device(L.CLAMP_INVERSE_NVT)}, clampOn = ${device(L.CLAMP_ON_V)}, grading = ${device(L.GRADING)};`,
+    `  ${constant} rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;`,
+    `  ${constant} enough = 0.1 * ${device(L.ENOUGH_V)} + 1e-15 * (${absolute}(a) + ${absolute}(b));`,
+    ...deviceConstants(law, device)
+      .filter(([name]) => !['on', 'bent_', 'fall', 'rise', 'enough'].includes(name))
+      .map(([name, value]) => `  ${constant} ${name} = ${value};`),
+    start('S', 'a + perAs * freeA', L.OVERDRIVE_S),
+    start('D', 'b + perAd * freeA', L.OVERDRIVE_D),
+    `  for (${counter} step = 0; step < ${NEWTON_STEPS}; step++) {`,
+    `    ${variable} Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;`,
+    ...text('vs', 'Fs', 'fs'),
+    ...text('vd', 'Fd', 'fd'),
+    '    if (lambda != 0) {',
+    `      ${constant} past = lambda * ${most}(-vd, 0), reversed = lambda * ${most}(-vs, 0), term = Fs;`,
+    '      fs = fs * (1 + past) + (reversed > 0 ? lambda * Fd : 0);',
+    '      fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);',
+    '      Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);',
+    '    }',
+    '    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }',
+    '    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }',
+    `    if (vs > clampOn) { ${constant} Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }`,
+    '    if (grading != 0) {',
+    `      addGraded(c, device, vs, ${device(L.STEP_S)}, s, n + ${L.CHARGES_S}, n + ${L.PORT_S}); S += ${slot(L.PORT_S)}; slopeS += ${slot(L.PORT_S + 1)};`,
+    `      addGraded(c, device, vd, ${device(L.STEP_D)}, s, n + ${L.CHARGES_D}, n + ${L.PORT_D}); D += ${slot(L.PORT_D)}; slopeD += ${slot(L.PORT_D + 1)};`,
+    '    }',
+    `    ${constant} channel = Fs - Fd;`,
+    `    ${constant} rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;`,
+    `    ${constant} ss = 1 - perAs * fs - aS * slopeS, sd = perAs * fd - aD * slopeD, ds = -perAd * fs - bS * slopeS, dd = 1 + perAd * fd - bD * slopeD;`,
+    `    ${constant} over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;`,
+    cut('S', 'vs'),
+    cut('D', 'vd'),
+    '    vs += stepS; vd += stepD;',
+    `    if (${absolute}(stepS) < enough && ${absolute}(stepD) < enough) {`,
+    `      ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    `      ${slot(L.CHANNEL_A)} = channel + fs * stepS - fd * stepD;`,
+    `      ${slot(L.JUNCTION_S)} = S + slopeS * stepS; ${slot(L.JUNCTION_D)} = D + slopeD * stepD;`,
+    '      if (grading != 0) keepCharges(c, device, s, n);',
+    '      return;',
+    '    }',
+    '  }',
+    '  searchPorts(c, t, device, aI, bI, junction, s, n, a, b);',
+    '}',
+  ].join('\n');
 }
 
 function kernel(law: Law, shape: Shape, language: Language): string {
-  const [trapezoidal, stiff] = shape;
+  const { trapezoidal } = shape;
+  const stiff = shape.stiff.length;
   const n = trapezoidal + stiff;
   const row = L.rowLayout(n);
   const past = L.memoryLayout(n);
@@ -95,6 +206,11 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   const slots = L.slotStart(trapezoidal, stiff);
   const states = Array.from({ length: n }, (_, i) => i);
   const stiffStates = states.slice(trapezoidal);
+  /** What a state or the output follows from, or null where it has a row. */
+  const shortcut = (letter: string): string | null =>
+    letter === 'g' ? 'sign * (vs + off)' : letter === 'm' ? 'sign * (vd + off)' : letter === 'd' ? 'sign * (vs - vd)' : null;
+  const stateShortcut = (i: number) => (i < trapezoidal ? null : shortcut(shape.stiff[i - trapezoidal]));
+  const hasRow = (r: number) => (r === all.outputRow ? shape.output === 'x' : r < 2 || stateShortcut(r - 2) === null);
   const { constant, variable } = language;
   const rowName = (r: number) => (r === 0 ? 'a' : r === 1 ? 'b' : r === all.outputRow ? 'y' : `n${r - 2}_`);
   const device = (index: number) => `c[${all.device + index}]`;
@@ -103,7 +219,7 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   const slot = (index: number) => `s[${slots + index}]`;
   const linear = (r: number, from: string) => {
     const p = rowName(r);
-    return [...states.map((i) => `${p}${i} * ${from}${i}`), `${p}${row.u} * u`, `${p}${row.u + 1} * v`, `${p}${row.constant}`].join(' + ');
+    return sum([...states.map((i) => `${p}${i} * ${from}${i}`), `${p}${row.u} * u`, `${p}${row.u + 1} * v`, `${p}${row.constant}`]);
   };
   /** What a row remembers: a stiff row the past of the stiff states, a trapezoidal one their last value and the old current too. */
   const memory = (i: number) => {
@@ -111,12 +227,13 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     const terms = states.map((k) => `m${i}_${k} * ${isStiff && k >= trapezoidal ? 'p' : 'x'}${k}`);
     terms.push(`m${i}_${past.oldU} * u0`, `m${i}_${past.oldU + 1} * v0`);
     if (!isStiff) terms.push(`m${i}_${past.oldI} * I0`);
-    return terms.join(' + ');
+    return sum(terms);
   };
 
   const [head, noisy, loop] = language.open(kernelName(law, shape)).split('\n');
   const lines: string[] = [head, noisy];
   for (let r = 0; r < all.rows; r++) {
+    if (!hasRow(r)) continue;
     for (let k = 0; k < row.width; k++) lines.push(`  ${constant} ${rowName(r)}${k} = c[${r * row.width + k}];`);
   }
   for (const i of states) {
@@ -124,6 +241,7 @@ function kernel(law: Law, shape: Shape, language: Language): string {
       lines.push(`  ${constant} m${i}_${k} = c[${all.memory + i * past.width + k}];`);
     }
   }
+  lines.push(`  ${constant} sign = ${device(L.POLARITY)}, off = ${device(L.GATE_OFF_V)};`);
   lines.push(...deviceConstants(law, device).map(([name, value]) => `  ${constant} ${name} = ${value};`));
   lines.push(...states.map((i) => `  ${variable} x${i} = s[${i}];`));
   stiffStates.forEach((i, k) => {
@@ -161,19 +279,25 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   body.push(...(law === 'square' ? squareSolution(aI, bI, places, slot, language) : newtonSolution(law, aI, bI, places, slot, language)));
   body.push(
     'if (vs > on || vd > on) {',
-    `  conduct(c, t, ${places}, ${all.junction}, s, ${slots}, a, b, I);`,
+    `  ${conductorName(law)}(c, t, ${places}, ${all.junction}, s, ${slots}, a, b, I);`,
     `  I = ${slot(L.CHANNEL_A)}; S = ${slot(L.JUNCTION_S)}; D = ${slot(L.JUNCTION_D)}; vs = ${slot(L.OVERDRIVE_S)}; vd = ${slot(L.OVERDRIVE_D)};`,
     '}',
     'I += J;',
   );
   for (const i of stiffStates) body.push(`g${i} = f${i}; f${i} = e${i}; e${i} = x${i};`);
-  for (const i of states) body.push(`x${i} = ${linear(2 + i, 'r')} + ${rowName(2 + i)}${row.current} * I;`);
-  body.push(`${variable} y = 0;`, 'if (noisy) {');
-  for (const i of states) body.push(`  x${i} += ${noise(2 + i)};`);
-  body.push(`  y = ${noise(all.outputRow)};`, '}', 'if (S != 0 || D != 0) {');
-  for (const i of states) body.push(`  x${i} += ${weight(2 + i, L.BY_S)} * S + ${weight(2 + i, L.BY_D)} * D;`);
-  body.push(`  y += ${weight(all.outputRow, L.BY_S)} * S + ${weight(all.outputRow, L.BY_D)} * D;`, '}');
-  body.push(`output[i] = y + ${linear(all.outputRow, 'x')} + y${row.current} * I;`);
+  for (const i of states) body.push(`x${i} = ${stateShortcut(i) ?? `${linear(2 + i, 'r')} + ${rowName(2 + i)}${row.current} * I`};`);
+  const rows = states.filter((i) => hasRow(2 + i));
+  const hasOutput = hasRow(all.outputRow);
+  if (hasOutput) body.push(`${variable} y = 0;`);
+  if (rows.length > 0 || hasOutput) {
+    body.push('if (noisy) {', ...rows.map((i) => `  x${i} += ${noise(2 + i)};`));
+    if (hasOutput) body.push(`  y = ${noise(all.outputRow)};`);
+    body.push('}', 'if (S != 0 || D != 0) {');
+    for (const i of rows) body.push(`  x${i} += ${weight(2 + i, L.BY_S)} * S + ${weight(2 + i, L.BY_D)} * D;`);
+    if (hasOutput) body.push(`  y += ${weight(all.outputRow, L.BY_S)} * S + ${weight(all.outputRow, L.BY_D)} * D;`);
+    body.push('}');
+  }
+  body.push(`output[i] = ${hasOutput ? `y + ${linear(all.outputRow, 'x')} + y${row.current} * I` : shortcut(shape.output)};`);
   if (n > 0) body.push('u0 = u; v0 = v;');
   body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');
   lines.push(...body.map((line) => `    ${line}`), '  }');
@@ -189,6 +313,14 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     '}',
   );
   return lines.join('\n');
+}
+
+/** Added in pairs, so that no addition waits for a long row of others. */
+function sum(terms: readonly string[]): string {
+  if (terms.length <= 2) return terms.join(' + ');
+  const half = Math.ceil(terms.length / 2);
+  const part = (some: readonly string[]) => (some.length > 1 ? `(${sum(some)})` : sum(some));
+  return `${part(terms.slice(0, half))} + ${part(terms.slice(half))}`;
 }
 
 function deviceConstants(law: Law, device: (index: number) => string): [string, string][] {
