@@ -5,6 +5,7 @@ import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import type { Bench, FeedbackPoint, LiveLevels, Note, SoundState, Take } from '../../web/state/bench.ts';
+import { gatePeriod } from '../../web/state/gatePeriod.ts';
 import { createDocument } from '../../web/state/document.ts';
 
 export interface FakeOptions {
@@ -77,6 +78,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     reading: computed(() =>
       options.unread ? { fault: 'The cell cannot be solved here' } : inventedReading(k.value, options.saturated ?? 0),
     ),
+    period: computed(() => gatePeriod(document.design.value, document.heardVariant.value)),
     worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, gateV: -1.55 })),
     feedbackCurve: computed(() => inventedCurve()),
     toneV,

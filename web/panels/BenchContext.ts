@@ -2,15 +2,12 @@ import type { ReadonlySignal } from '@preact/signals';
 import { createContext } from 'preact';
 import { useContext } from 'preact/hooks';
 import type { Variant } from '../../model/design/types.ts';
-import type { GatePeriod } from '../draw/gatePlot.ts';
 import type { Bench, LiveLevels } from '../state/bench.ts';
 
 export interface BenchView {
   readonly bench: Bench;
   /** `bench.live`, slowed so that its numbers can be read. */
   readonly slowLive: ReadonlySignal<LiveLevels | null>;
-  /** What the control does to the heard variant by itself. */
-  readonly period: ReadonlySignal<GatePeriod | { readonly fault: string }>;
 }
 
 export const BenchContext = createContext<BenchView | null>(null);

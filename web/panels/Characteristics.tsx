@@ -19,12 +19,14 @@ const COLUMNS = [
 
 /** Table 1: what the shadow tone finds at this moment, and the ends of the swing where they are known. */
 export function Characteristics() {
-  const { bench, slowLive, period } = useBenchView();
+  const { bench, slowLive } = useBenchView();
   const variant = useVariant();
   const read = bench.reading.value;
   const reading = read !== null && 'regions' in read ? read : null;
+  const found = bench.period.value;
+  const period = found === null || 'fault' in found ? null : found;
   const controlV = bench.sound.value === 'playing' ? (slowLive.value?.controlV ?? null) : null;
-  const groups = characteristicRows(variant, reading, controlV, 'fault' in period.value ? null : period.value);
+  const groups = characteristicRows(variant, reading, controlV, period);
   return (
     <DataTable number={1} className="characteristics" caption={<ToneCaption />} columns={COLUMNS}>
       {groups.map((rows) => (

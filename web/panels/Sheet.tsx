@@ -1,11 +1,10 @@
-import { computed, useSignal } from '@preact/signals';
+import { useSignal } from '@preact/signals';
 import { useEffect, useMemo } from 'preact/hooks';
 import type { Bench } from '../state/bench.ts';
 import { BenchContext } from './BenchContext.ts';
 import { Blocks } from './Blocks.tsx';
 import { Conditions } from './Conditions.tsx';
 import { Foot } from './Foot.tsx';
-import { gatePeriod } from './gatePeriod.ts';
 import { Heading } from './Heading.tsx';
 import { Heard } from './Heard.tsx';
 import { KeysDialog } from './KeysDialog.tsx';
@@ -41,10 +40,7 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
     return () => window.removeEventListener('keydown', onKeyDown);
   }, [bench, dialog]);
 
-  const view = useMemo(
-    () => ({ bench, slowLive: slow.copy, period: computed(() => gatePeriod(bench.design.value, bench.heardVariant.value)) }),
-    [bench, slow],
-  );
+  const view = useMemo(() => ({ bench, slowLive: slow.copy }), [bench, slow]);
   const close = () => {
     dialog.value = null;
   };

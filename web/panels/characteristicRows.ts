@@ -2,7 +2,7 @@
 import type { Control, Variant } from '../../model/design/types.ts';
 import { splitQuantity } from '../../model/design/values.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
-import type { GatePeriod } from '../draw/gatePlot.ts';
+import type { GatePeriod } from '../state/bench.ts';
 import { decimals, signedDecimals } from '../draw/words.ts';
 
 export interface Row {

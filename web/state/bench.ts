@@ -65,6 +65,8 @@ export interface Bench {
   readonly reading: ReadonlySignal<ToneReading | { readonly fault: string } | null>;
   /** The highest THD over the control's whole swing. */
   readonly worst: ReadonlySignal<WorstReading | null>;
+  /** What the control does to the heard variant by itself, or why it has no period; null until the first answer. */
+  readonly period: ReadonlySignal<GatePeriod | { readonly fault: string } | null>;
   /** THD against k at this resting gate voltage, ascending in k. */
   readonly feedbackCurve: ReadonlySignal<readonly FeedbackPoint[] | null>;
   /** The shadow tone at the cell's input, V peak. */
@@ -143,6 +145,19 @@ export interface LiveLevels {
   readonly faults: number;
   /** Since the start: gaps in the sound because the machine was late. */
   readonly underruns: number;
+}
+
+/** One period of the control without audio. */
+export interface GatePeriod {
+  /** One period, s; of a control that does not move, 1 s to draw it over. */
+  readonly seconds: number;
+  /** V at even times, the last value equal to the first: the period is closed. */
+  readonly control: Float64Array;
+  readonly gate: Float64Array;
+  readonly drain: Float64Array;
+  readonly steady: boolean;
+  /** VGS(off) at the temperature of the circuit, V, negative for an n-channel part. */
+  readonly gateOffV: number;
 }
 
 export interface WorstReading {

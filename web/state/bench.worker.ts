@@ -3,6 +3,7 @@
  * for each render until it is done.
  */
 import { renderClip } from '../../model/chain/render.ts';
+import { gatePeriod } from './gatePeriod.ts';
 import { sentenceOf } from './notes.ts';
 import { findWorst, readFeedbackCurve, readMoment } from './toneStudy.ts';
 import type { FromReading, FromRender, ToneQuestion, ToReading, ToRender } from './workers.ts';
@@ -40,6 +41,8 @@ pump.port1.onmessage = () => {
 function* answer(id: number, question: ToneQuestion): Generator<void, void> {
   yield;
   try {
+    tell({ type: 'period', id, period: gatePeriod(question.design, question.variantIndex) });
+    yield;
     tell({ type: 'worst', id, worst: yield* findWorst(question) });
     tell({ type: 'curve', id, points: yield* readFeedbackCurve(question) });
   } catch (error) {

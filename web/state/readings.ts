@@ -3,7 +3,7 @@ import type { ReadonlySignal } from '@preact/signals';
 import { effect, signal } from '@preact/signals';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
-import type { Bench, FeedbackPoint, LiveLevels, WorstReading } from './bench.ts';
+import type { Bench, FeedbackPoint, GatePeriod, LiveLevels, WorstReading } from './bench.ts';
 import { setWithin } from './within.ts';
 import type { FromReading, ToReading, WorkerPort } from './workers.ts';
 
@@ -11,7 +11,7 @@ const EVERY_MS = 100;
 const FIRST_TONE_V = 0.5;
 const FIRST_TONE_HZ = 1000;
 
-type Readings = Pick<Bench, 'reading' | 'worst' | 'feedbackCurve' | 'toneV' | 'setToneV' | 'toneHz' | 'setToneHz'>;
+type Readings = Pick<Bench, 'reading' | 'period' | 'worst' | 'feedbackCurve' | 'toneV' | 'setToneV' | 'toneHz' | 'setToneHz'>;
 
 export interface ReadingSources {
   readonly design: ReadonlySignal<Design>;
@@ -22,6 +22,7 @@ export interface ReadingSources {
 
 export function createReadings(worker: WorkerPort<ToReading, FromReading>, sources: ReadingSources): Readings {
   const reading = signal<ToneReading | { readonly fault: string } | null>(null);
+  const period = signal<GatePeriod | { readonly fault: string } | null>(null);
   const worst = signal<WorstReading | null>(null);
   const feedbackCurve = signal<readonly FeedbackPoint[] | null>(null);
   const toneV = signal(FIRST_TONE_V);
@@ -46,6 +47,9 @@ export function createReadings(worker: WorkerPort<ToReading, FromReading>, sourc
         waiting = false;
         if (message.id === id) reading.value = message.reading;
         if (askAgain) askMoment();
+        return;
+      case 'period':
+        if (message.id === id) period.value = message.period;
         return;
       case 'worst':
         if (message.id === id) worst.value = message.worst;
@@ -81,6 +85,7 @@ export function createReadings(worker: WorkerPort<ToReading, FromReading>, sourc
 
   return {
     reading,
+    period,
     worst,
     feedbackCurve,
     toneV,

@@ -2,7 +2,7 @@ import { expect, test } from 'vitest';
 import { defaultDesign } from '../../../model/design/defaults.ts';
 import { measureTone } from '../../../model/study/tone.ts';
 import { characteristicRows } from '../../../web/panels/characteristicRows.ts';
-import { gatePeriod } from '../../../web/panels/gatePeriod.ts';
+import { gatePeriod } from '../../../web/state/gatePeriod.ts';
 import { leavesOhmic, signedHarmonic } from '../../../web/panels/readingWords.ts';
 
 const [variant] = defaultDesign().variants;
