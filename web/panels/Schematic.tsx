@@ -1,6 +1,6 @@
 import type { ComponentChildren } from 'preact';
 import { drawSchematic, fittedIn, type Form, type Place, type Slot } from '../draw/schematic.ts';
-import { useBench, useVariant } from './BenchContext.ts';
+import { useReading, useVariant } from './BenchContext.ts';
 import { Figure } from './parts/Figure.tsx';
 import { rem, useSheetSize } from './parts/useSheetSize.ts';
 import { leavesOhmic } from './readingWords.ts';
@@ -10,13 +10,12 @@ import { schematicValues } from './SchematicValues.tsx';
 
 /** Fig. 1: the cell as it is fitted, with every value changed where it stands. */
 export function Schematic({ form }: { readonly form: Form }) {
-  const bench = useBench();
   const variant = useVariant();
   const { ref, size } = useSheetSize<HTMLDivElement>();
   const fitted = fittedIn(variant);
   const drawing = size && drawSchematic(fitted, size.width, form);
-  const read = bench.reading.value;
-  const leaving = useHeldLimit(read !== null && 'regions' in read ? leavesOhmic(read.regions) : null, performance.now());
+  const reading = useReading();
+  const leaving = useHeldLimit(reading && leavesOhmic(reading.regions), performance.now());
   const limitWords = leaving && `${leaving.words} up to\n${Math.max(1, Math.round(100 * leaving.share))}\u2009% of the tone`;
   const values = schematicValues(fitted, form, limitWords);
   return (

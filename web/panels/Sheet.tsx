@@ -1,4 +1,4 @@
-import { useSignal } from '@preact/signals';
+import { computed, useSignal } from '@preact/signals';
 import { useEffect, useMemo } from 'preact/hooks';
 import type { Bench } from '../state/bench.ts';
 import { BenchContext } from './BenchContext.ts';
@@ -18,7 +18,6 @@ import { FIRST_THD_LIMIT, ThdLimitContext } from './thdLimit.ts';
 import { useFileDrop } from './useFileDrop.ts';
 import { useLayout } from './useLayout.ts';
 
-const READ_EVERY_MS = 100;
 const CALM_EVERY_MS = 250;
 
 /** The page «Listen»: one design, heard and measured. */
@@ -27,10 +26,7 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
   const limit = useSignal(FIRST_THD_LIMIT);
   const dialog = useSignal<'open' | 'keys' | null>(null);
   const dropping = useFileDrop(bench);
-  const slow = useMemo(
-    () => sampled(bench.live, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : READ_EVERY_MS),
-    [bench],
-  );
+  const slow = useMemo(() => sampled(bench.moment, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : 0), [bench]);
   useEffect(() => slow.end, [slow]);
   useEffect(() => {
     const onKeyDown = (event: KeyboardEvent) => {
@@ -40,7 +36,7 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
     return () => window.removeEventListener('keydown', onKeyDown);
   }, [bench, dialog]);
 
-  const view = useMemo(() => ({ bench, slowLive: slow.copy }), [bench, slow]);
+  const view = useMemo(() => ({ bench, moment: slow.copy, slowLive: computed(() => slow.copy.value?.levels ?? null) }), [bench, slow]);
   const close = () => {
     dialog.value = null;
   };
