@@ -7,7 +7,7 @@ import { EditableValue } from './parts/EditableValue.tsx';
 import { LiveReading } from './parts/LiveReading.tsx';
 import { Sym } from './parts/Symbol.tsx';
 import { signedHarmonic } from './readingWords.ts';
-import { overLimit, useThdLimit } from './thdLimit.ts';
+import { overLimit, useThdLimit } from './sheetLimits.ts';
 
 const PERCENT = '\u2009%';
 

@@ -14,7 +14,7 @@ import { sampled } from './parts/sampled.ts';
 import { Ruler } from './Ruler.tsx';
 import { SoundButtons } from './SoundButtons.tsx';
 import { runShortcut } from './shortcuts.ts';
-import { FIRST_THD_LIMIT, ThdLimitContext } from './thdLimit.ts';
+import { createSheetLimits, LimitsContext } from './sheetLimits.ts';
 import { useFileDrop } from './useFileDrop.ts';
 import { useLayout } from './useLayout.ts';
 
@@ -23,7 +23,7 @@ const CALM_EVERY_MS = 250;
 /** The page «Listen»: one design, heard and measured. */
 export function Sheet({ bench }: { readonly bench: Bench }) {
   const layout = useLayout();
-  const limit = useSignal(FIRST_THD_LIMIT);
+  const limits = useMemo(createSheetLimits, []);
   const dialog = useSignal<'open' | 'keys' | null>(null);
   const dropping = useFileDrop(bench);
   const slow = useMemo(() => sampled(bench.moment, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : 0), [bench]);
@@ -42,7 +42,7 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
   };
   return (
     <BenchContext.Provider value={view}>
-      <ThdLimitContext.Provider value={limit}>
+      <LimitsContext.Provider value={limits}>
         <div class={`sheet ${layout} ${bench.sound.value === 'playing' ? 'is-live' : ''} ${dropping ? 'dropping' : ''}`}>
           <Heading onOpen={() => (dialog.value = 'open')} onKeys={() => (dialog.value = 'keys')} />
           <main>
@@ -62,7 +62,7 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
           {dialog.value === 'keys' && <KeysDialog onClose={close} />}
           {dropping && <p class="drop-word">Drop a recording to hear it through the cell, or a design to open it.</p>}
         </div>
-      </ThdLimitContext.Provider>
+      </LimitsContext.Provider>
     </BenchContext.Provider>
   );
 }

@@ -1,7 +1,7 @@
 import { percentText } from '../draw/words.ts';
 import { useBench, usePlaying, useReading } from './BenchContext.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
-import { overLimit, useThdLimit } from './thdLimit.ts';
+import { overLimit, useThdLimit } from './sheetLimits.ts';
 
 /** Start or Stop, and Mute: a row on a wide sheet, a bar under the thumb on a phone, there with the readings that matter most. */
 export function SoundButtons() {

@@ -4,7 +4,7 @@ import { measureTone } from '../../../model/study/tone.ts';
 import { characteristicRows, noiseAt } from '../../../web/panels/characteristicRows.ts';
 import { gatePeriod } from '../../../web/state/gatePeriod.ts';
 import type { LiveLevels } from '../../../web/state/bench.ts';
-import { leavesOhmic, signedHarmonic } from '../../../web/panels/readingWords.ts';
+import { signedHarmonic } from '../../../web/panels/readingWords.ts';
 
 const [variant] = defaultDesign().variants;
 
@@ -17,12 +17,6 @@ test('H2 is plus below the balance of k, where k should be raised, and minus abo
   expect(signedHarmonic(readAt(0.4), 2)).toBeGreaterThan(0);
   expect(signedHarmonic(readAt(0.6), 2)).toBeLessThan(0);
   expect(signedHarmonic(readAt(0.4), 99)).toBeNull();
-});
-
-test('saturation and a conducting gate are past a limit, being cut off is not', () => {
-  expect(leavesOhmic({ ohmic: 0.94, saturated: 0.06, cutoff: 0, gateOn: 0 })).toEqual({ words: 'saturates for', share: 0.06 });
-  expect(leavesOhmic({ ohmic: 0, saturated: 0, cutoff: 1, gateOn: 0 })).toBeNull();
-  expect(leavesOhmic({ ohmic: 1, saturated: 0, cutoff: 0, gateOn: 0.2 })?.words).toContain('gate conducts');
 });
 
 test('the rows of Table 1 have a number each, and their ends follow from an LFO’s swing', () => {
