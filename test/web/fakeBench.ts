@@ -5,6 +5,7 @@ import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import type { Bench, FeedbackPoint, LiveLevels, Note, SoundState, Take } from '../../web/state/bench.ts';
+import { gatePeriod } from '../../web/state/gatePeriod.ts';
 import { createDocument } from '../../web/state/document.ts';
 
 export interface FakeOptions {
@@ -74,11 +75,22 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     rateHz: signal(48000),
     latencySec: signal(0.002),
     live: signal(options.sound === 'idle' ? null : inventedLevels(muted.value)),
-    reading: computed(() =>
-      options.unread ? { fault: 'The cell cannot be solved here' } : inventedReading(k.value, options.saturated ?? 0),
-    ),
+    moment: computed(() => ({
+      levels: sound.value === 'playing' ? inventedLevels(muted.value) : null,
+      reading: options.unread ? { fault: 'The cell cannot be solved here' } : inventedReading(k.value, options.saturated ?? 0),
+      thdBand: [0.0037, 0.0057] as const,
+    })),
+    swing: signal([
+      { gateV: -1.8, gainDb: -0.1, rdsOhm: Number.POSITIVE_INFINITY },
+      { gateV: -0.6, gainDb: -27.9, rdsOhm: 420 },
+    ]),
+    noise: signal([
+      { gateV: -1.8, drainV: 1.8e-6 },
+      { gateV: -0.6, drainV: 0.36e-6 },
+    ]),
+    period: computed(() => gatePeriod(document.design.value, document.heardVariant.value)),
     worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, gateV: -1.55 })),
-    feedbackCurve: computed(() => inventedCurve()),
+    feedbackCurve: signal({ gateV: -1.38, points: inventedCurve() }),
     toneV,
     setToneV: put(toneV),
     toneHz,

@@ -2,6 +2,7 @@
 import { linePath, type Point } from './line.ts';
 import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
 import { decadeTicks, insideScale, linearScale, linearTicks, logScale, type Scale, toPixel } from './scale.ts';
+import { between, fractionsWithin, thdWithin } from './tolerance.ts';
 import { decimals, percentText } from './words.ts';
 
 export interface CurvePoint {
@@ -21,6 +22,8 @@ export interface FeedbackPlot {
   readonly thd: string;
   /** The same as points, ascending in x. */
   readonly thdPoints: readonly Point[];
+  /** A closed shape: what parts of 1 % make of each k. */
+  readonly band: string;
   readonly h2: string;
   readonly h3: string;
   readonly least: { readonly k: number; readonly thd: number; readonly x: number; readonly y: number };
@@ -40,28 +43,49 @@ const MARGINS = { left: 40, right: 10, top: 8, bottom: 24 };
 const REFINE = 6;
 
 function refined(curve: readonly CurvePoint[]): CurvePoint[] {
-  const others = curve.map(({ thd, h2Signed }) => Math.max(0, thd * thd - h2Signed * h2Signed));
   return curve.flatMap((point, n) => {
     const next = curve[n + 1];
     if (next === undefined) return [point];
-    return Array.from({ length: REFINE }, (_, step) => {
-      const mix = (a: number, b: number) => a + ((b - a) * step) / REFINE;
-      const h2Signed = mix(point.h2Signed, next.h2Signed);
-      const thd = Math.sqrt(h2Signed * h2Signed + mix(others[n], others[n + 1]));
-      return { k: mix(point.k, next.k), thd, h2Signed, h3: mix(point.h3, next.h3) };
-    });
+    return Array.from({ length: REFINE }, (_, step) => mixed(point, next, step / REFINE));
+  });
+}
+
+function mixed(a: CurvePoint, b: CurvePoint, share: number): CurvePoint {
+  return { k: a.k + share * (b.k - a.k), h3: a.h3 + share * (b.h3 - a.h3), ...between(a, b, share) };
+}
+
+/** The curve at a k on it; null beyond its ends. */
+export function curveAt(curve: readonly CurvePoint[], k: number): CurvePoint | null {
+  const n = curve.findIndex((point) => point.k >= k);
+  if (n < 0 || (n === 0 && curve[0].k > k)) return null;
+  return n === 0 ? curve[0] : mixed(curve[n - 1], curve[n], (k - curve[n - 1].k) / (curve[n].k - curve[n - 1].k));
+}
+
+/** What parts of 1 % make of each k: where all that they can give lies on the curve. */
+function bandOf(curve: readonly CurvePoint[]): { readonly k: number; readonly low: number; readonly high: number }[] {
+  return curve.flatMap(({ k }) => {
+    const [from, to] = fractionsWithin(k);
+    const [first, last] = [curveAt(curve, from), curveAt(curve, to)];
+    if (first === null || last === null) return [];
+    const [low, high] = thdWithin([first, ...curve.filter((point) => point.k > from && point.k < to), last]);
+    return [{ k, low, high }];
   });
 }
 
 /** `measured` ascends in k and has at least two points. */
-export function plotFeedback(measured: readonly CurvePoint[], width: number, height: number): FeedbackPlot {
+export function plotFeedback(
+  measured: readonly CurvePoint[],
+  width: number,
+  height: number,
+  range: ThdRange = thdRangeOf(measured),
+): FeedbackPlot {
   const curve = refined(measured);
   const area = plotArea(width, height, MARGINS);
   const x = linearScale(curve[0].k, curve[curve.length - 1].k, area.left, area.right);
-  const { from, to } = thdRange(curve);
-  const y = logScale(from, to, area.bottom, area.top);
+  const y = logScale(range.from, range.to, area.bottom, area.top);
+  const floor = area.bottom + 40;
   const points = (pick: (point: CurvePoint) => number): Point[] =>
-    curve.map((point) => ({ x: toPixel(x, point.k), y: Math.min(toPixel(y, Math.abs(pick(point))), area.bottom + 40) }));
+    curve.map((point) => ({ x: toPixel(x, point.k), y: Math.min(toPixel(y, Math.abs(pick(point))), floor) }));
   const thdPoints = points((point) => point.thd);
   const lowest = curve.reduce((best, point) => (point.thd < best.thd ? point : best));
   return {
@@ -72,6 +96,9 @@ export function plotFeedback(measured: readonly CurvePoint[], width: number, hei
     yTicks: yTicks(y),
     thd: linePath(thdPoints),
     thdPoints,
+    band: bandPath(
+      bandOf(curve).map(({ k, low, high }) => ({ x: toPixel(x, k), low: Math.min(toPixel(y, low), floor), high: toPixel(y, high) })),
+    ),
     h2: linePath(points((point) => point.h2Signed)),
     h3: linePath(points((point) => point.h3)),
     least: { ...lowest, x: toPixel(x, lowest.k), y: Math.min(toPixel(y, lowest.thd), area.bottom) },
@@ -80,12 +107,34 @@ export function plotFeedback(measured: readonly CurvePoint[], width: number, hei
   };
 }
 
-function thdRange(curve: readonly CurvePoint[]): { from: number; to: number } {
+export interface ThdRange {
+  readonly from: number;
+  readonly to: number;
+}
+
+/** Ends of the axis for a curve as measured: its nulls between two points count. */
+export function thdRangeOf(measured: readonly CurvePoint[]): ThdRange {
+  const curve = refined(measured);
   const highest = Math.max(...curve.map((point) => point.thd), LEAST_TOP);
   const top = roundUp(highest * 1.15);
   const lowest = Math.max(1e-9, Math.min(...curve.map((point) => point.thd)));
-  const bottom = 10 ** Math.floor(Math.log10(lowest));
-  return { from: Math.max(bottom, 10 ** (Math.ceil(Math.log10(top)) - MOST_DECADES), LEAST_BOTTOM), to: top };
+  return withinDecades(10 ** Math.floor(Math.log10(lowest)), top);
+}
+
+function withinDecades(from: number, to: number): ThdRange {
+  return { from: Math.max(from, 10 ** (Math.ceil(Math.log10(to)) - MOST_DECADES), LEAST_BOTTOM), to };
+}
+
+/** One axis for all curves of the last while, so that it does not jump as an LFO turns. */
+export function sharedRange(ranges: readonly ThdRange[]): ThdRange {
+  return withinDecades(Math.min(...ranges.map(({ from }) => from)), Math.max(...ranges.map(({ to }) => to)));
+}
+
+function bandPath(points: readonly { readonly x: number; readonly low: number; readonly high: number }[]): string {
+  if (points.length < 2) return '';
+  const upper = points.map(({ x, high }) => ({ x, y: high }));
+  const lower = points.map(({ x, low }) => ({ x, y: low })).reverse();
+  return `${linePath([...upper, ...lower])}Z`;
 }
 
 /** The next of 1, 3 and 10 times a power of ten. */

@@ -1,4 +1,5 @@
 /** Fig. 3: the gate over one period of the control, without audio, against VGS(off). */
+import type { GatePeriod } from '../state/bench.ts';
 import { linePath, type Point } from './line.ts';
 import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
 import { linearScale, linearTicks, type Scale, toPixel } from './scale.ts';
@@ -6,18 +7,6 @@ import { decimals } from './words.ts';
 
 /** Forward gate voltage from which this figure calls the gate conducting, V: 0.7 V at 1 mA (data sheets), about 0.5 V at microamperes. */
 const GATE_ON_V = 0.5;
-
-export interface GatePeriod {
-  /** One period, s; of a control that does not move, 1 s to draw it over. */
-  readonly seconds: number;
-  /** V at even times, the last value equal to the first: the period is closed. */
-  readonly control: Float64Array;
-  readonly gate: Float64Array;
-  readonly drain: Float64Array;
-  readonly steady: boolean;
-  /** VGS(off) at the temperature of the circuit, V, negative for an n-channel part. */
-  readonly gateOffV: number;
-}
 
 export type Region = 'ohmic' | 'off' | 'conducting';
 

@@ -50,6 +50,7 @@ export type Slot =
   | 'gateLive'
   | 'drainLive'
   | 'limit'
+  | 'rail'
   | 'device'
   | 'load'
   | 'makeUp'
@@ -66,6 +67,8 @@ export interface Drawing {
   readonly ground: Point;
   /** Corner marks round the JFET when it leaves a limit. */
   readonly deviceBox: Box;
+  /** The same round the amplifier. */
+  readonly amplifierBox: Box;
   readonly places: Readonly<Partial<Record<Slot, Place>>>;
 }
 
@@ -102,6 +105,12 @@ export function drawSchematic(fitted: Fitted, width: number, form: Form): Drawin
     symbols: [...throughParts(grid), ...branchParts(fitted, grid), ...loadParts(fitted, grid)],
     ground: { x: grid.ground, y: grid.bus },
     deviceBox: { left: device - JFET.left - 22, top: gate - JFET.above - 8, width: JFET.left + 34, height: JFET.above + JFET.below + 16 },
+    amplifierBox: {
+      left: grid.amplifier - AMPLIFIER.long / 2 - 8,
+      top: grid.top - AMPLIFIER.high / 2 - 7,
+      width: AMPLIFIER.long + 14,
+      height: AMPLIFIER.high + 14,
+    },
     places,
   };
 }

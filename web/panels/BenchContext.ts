@@ -2,15 +2,15 @@ import type { ReadonlySignal } from '@preact/signals';
 import { createContext } from 'preact';
 import { useContext } from 'preact/hooks';
 import type { Variant } from '../../model/design/types.ts';
-import type { GatePeriod } from '../draw/gatePlot.ts';
-import type { Bench, LiveLevels } from '../state/bench.ts';
+import type { ToneReading } from '../../model/study/tone.ts';
+import type { Bench, LiveLevels, Moment } from '../state/bench.ts';
 
 export interface BenchView {
   readonly bench: Bench;
-  /** `bench.live`, slowed so that its numbers can be read. */
+  /** `bench.moment`, slowed for those who ask for less motion. */
+  readonly moment: ReadonlySignal<Moment | null>;
+  /** Its levels; null while sound is stopped. */
   readonly slowLive: ReadonlySignal<LiveLevels | null>;
-  /** What the control does to the heard variant by itself. */
-  readonly period: ReadonlySignal<GatePeriod | { readonly fault: string }>;
 }
 
 export const BenchContext = createContext<BenchView | null>(null);
@@ -29,6 +29,12 @@ export function useBench(): Bench {
 export function useVariant(): Variant {
   const bench = useBench();
   return bench.design.value.variants[bench.heardVariant.value];
+}
+
+/** What the shadow tone reads, or null where it cannot. */
+export function useReading(): ToneReading | null {
+  const read = useBenchView().moment.value?.reading ?? null;
+  return read !== null && 'thdFundamental' in read ? read : null;
 }
 
 /** True while sound plays: only then are readings coloured. */

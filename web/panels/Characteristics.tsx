@@ -2,7 +2,7 @@ import type { ComponentChildren } from 'preact';
 import { formatQuantity, parseQuantity } from '../../model/design/values.ts';
 import { decimals, valueVolts } from '../draw/words.ts';
 import { type Row, characteristicRows } from './characteristicRows.ts';
-import { useBench, useBenchView, useVariant } from './BenchContext.ts';
+import { useBench, useBenchView, useReading, useVariant } from './BenchContext.ts';
 import { DataTable } from './parts/DataTable.tsx';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { E24 } from './parts/stepping.ts';
@@ -19,12 +19,13 @@ const COLUMNS = [
 
 /** Table 1: what the shadow tone finds at this moment, and the ends of the swing where they are known. */
 export function Characteristics() {
-  const { bench, slowLive, period } = useBenchView();
+  const { bench, slowLive } = useBenchView();
+  const measured = { levels: slowLive.value, swing: bench.swing.value, noise: bench.noise.value };
   const variant = useVariant();
-  const read = bench.reading.value;
-  const reading = read !== null && 'regions' in read ? read : null;
-  const controlV = bench.sound.value === 'playing' ? (slowLive.value?.controlV ?? null) : null;
-  const groups = characteristicRows(variant, reading, controlV, 'fault' in period.value ? null : period.value);
+  const reading = useReading();
+  const found = bench.period.value;
+  const period = found === null || 'fault' in found ? null : found;
+  const groups = characteristicRows(variant, { ...measured, reading, period });
   return (
     <DataTable number={1} className="characteristics" caption={<ToneCaption />} columns={COLUMNS}>
       {groups.map((rows) => (

@@ -1,13 +1,13 @@
 import type { Signal } from '@preact/signals';
 import { parseQuantity } from '../../model/design/values.ts';
-import { decimals, gateVolts, percentText, signedPercentText } from '../draw/words.ts';
+import { decimals, gateVolts, percentText, signedDecimals, signedPercentText } from '../draw/words.ts';
 import type { Bench } from '../state/bench.ts';
-import { useBench } from './BenchContext.ts';
+import { useBench, useBenchView, useReading } from './BenchContext.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { LiveReading } from './parts/LiveReading.tsx';
 import { Sym } from './parts/Symbol.tsx';
 import { signedHarmonic } from './readingWords.ts';
-import { overLimit, useThdLimit } from './thdLimit.ts';
+import { overLimit, useThdLimit } from './sheetLimits.ts';
 
 const PERCENT = '\u2009%';
 
@@ -15,8 +15,9 @@ const PERCENT = '\u2009%';
 export function Distortion() {
   const bench = useBench();
   const limit = useThdLimit();
-  const read = bench.reading.value;
-  const reading = read !== null && 'thdFundamental' in read ? read : null;
+  const moment = useBenchView().moment.value;
+  const read = moment?.reading ?? null;
+  const reading = useReading();
   const why = read !== null && 'fault' in read ? read.fault : '';
   const h2 = reading === null ? null : signedHarmonic(reading, 2);
   const h3 = reading === null ? null : signedHarmonic(reading, 3);
@@ -28,7 +29,7 @@ export function Distortion() {
           label="THD now"
           value={reading && percentText(reading.thdFundamental)}
           unit={PERCENT}
-          meaning={reading ? `gate at ${gateVolts(reading.vgsV)}` : ''}
+          meaning={reading ? <BandWords band={moment?.thdBand ?? null} gateV={reading.vgsV} /> : ''}
         />
         <Worst worst={bench.worst.value} limit={limit} />
         <LiveReading
@@ -62,6 +63,16 @@ export function Distortion() {
       </dl>
       {why !== '' && <p class="why fault">No reading: {why}</p>}
     </section>
+  );
+}
+
+/** What parts of 1 % make of it, and the gate that it is read at. */
+function BandWords({ band, gateV }: { readonly band: readonly [number, number] | null; readonly gateV: number }) {
+  if (band === null) return <>gate at {gateVolts(gateV)}</>;
+  return (
+    <>
+      {percentText(band[0])} to {percentText(band[1])}, 1{PERCENT} parts
+    </>
   );
 }
 
@@ -104,7 +115,8 @@ function Worst({ worst, limit }: { readonly worst: Bench['worst']['value']; read
           'not measured yet'
         ) : (
           <>
-            {over ? <span class="fault">over the limit of</span> : 'within the limit of'} {editable}
+            {over ? <span class="fault">over</span> : 'within'} {editable}, at {signedDecimals(worst.gainDb, 1)}
+            {'\u2009'}dB
           </>
         )
       }

@@ -1,8 +1,9 @@
 import { useEffect, useMemo, useRef } from 'preact/hooks';
-import { type GatePeriod, type GatePlot, plotGate, turnOf } from '../draw/gatePlot.ts';
+import type { GatePeriod } from '../state/bench.ts';
+import { type GatePlot, plotGate, turnOf } from '../draw/gatePlot.ts';
 import { toPixel } from '../draw/scale.ts';
 import { valueVolts, voltsText } from '../draw/words.ts';
-import { useBenchView, usePlaying } from './BenchContext.ts';
+import { useBench, useBenchView, usePlaying } from './BenchContext.ts';
 import { Figure } from './parts/Figure.tsx';
 import { PlotFrame } from './parts/PlotFrame.tsx';
 import { useSheetSize } from './parts/useSheetSize.ts';
@@ -10,8 +11,8 @@ import { useSheetSize } from './parts/useSheetSize.ts';
 /** Fig. 3: the gate over one period of the control, with its regions in a strip below. */
 export function GateFigure() {
   const { ref, size } = useSheetSize<HTMLDivElement>();
-  const found = useBenchView().period.value;
-  const period = 'fault' in found ? null : found;
+  const found = useBench().period.value;
+  const period = found === null || 'fault' in found ? null : found;
   const plot = useMemo(() => (size && period ? plotGate(period, size.width, size.height) : null), [period, size]);
   const caption =
     plot &&
@@ -20,7 +21,7 @@ export function GateFigure() {
     <Figure number={3} className="gate-figure" caption={caption}>
       <div class="plot" ref={ref}>
         {plot && period && <Drawn plot={plot} period={period} />}
-        {'fault' in found && <p class="unread empty-plot">{found.fault}</p>}
+        {found !== null && 'fault' in found && <p class="unread empty-plot">{found.fault}</p>}
       </div>
     </Figure>
   );

@@ -1,24 +1,20 @@
 import type { ComponentChildren } from 'preact';
 import { drawSchematic, fittedIn, type Form, type Place, type Slot } from '../draw/schematic.ts';
-import { useBench, useVariant } from './BenchContext.ts';
+import { useVariant } from './BenchContext.ts';
 import { Figure } from './parts/Figure.tsx';
 import { rem, useSheetSize } from './parts/useSheetSize.ts';
-import { leavesOhmic } from './readingWords.ts';
-import { useHeldLimit } from './useHeldLimit.ts';
 import { SchematicSymbols } from './SchematicSymbols.tsx';
 import { schematicValues } from './SchematicValues.tsx';
+import { useLimits } from './useLimits.ts';
 
 /** Fig. 1: the cell as it is fitted, with every value changed where it stands. */
 export function Schematic({ form }: { readonly form: Form }) {
-  const bench = useBench();
   const variant = useVariant();
   const { ref, size } = useSheetSize<HTMLDivElement>();
   const fitted = fittedIn(variant);
   const drawing = size && drawSchematic(fitted, size.width, form);
-  const read = bench.reading.value;
-  const leaving = useHeldLimit(read !== null && 'regions' in read ? leavesOhmic(read.regions) : null, performance.now());
-  const limitWords = leaving && `${leaving.words} up to\n${Math.max(1, Math.round(100 * leaving.share))}\u2009% of the tone`;
-  const values = schematicValues(fitted, form, limitWords);
+  const limits = useLimits();
+  const values = schematicValues(fitted, form, limits);
   return (
     <Figure
       number={1}
@@ -29,7 +25,11 @@ export function Schematic({ form }: { readonly form: Form }) {
         {drawing && (
           <>
             <svg viewBox={`0 0 ${drawing.width} ${drawing.height}`} role="img" aria-label={spoken(fitted.feedback)}>
-              <SchematicSymbols drawing={drawing} fitted={fitted} pastLimit={leaving !== null} />
+              <SchematicSymbols
+                drawing={drawing}
+                fitted={fitted}
+                past={{ device: limits.device !== null, amplifier: limits.amplifier !== null }}
+              />
             </svg>
             {(Object.keys(values) as Slot[]).map((slot) => {
               const place = drawing.places[slot];
@@ -44,7 +44,8 @@ export function Schematic({ form }: { readonly form: Form }) {
           </>
         )}
       </div>
-      {form === 'upright' && limitWords && <p class="fault limit-words">J1 {limitWords}.</p>}
+      {form === 'upright' && limits.device && <p class="fault limit-words">J1: {limits.device}.</p>}
+      {form === 'upright' && limits.amplifier && <p class="fault limit-words">The amplifier {limits.amplifier}.</p>}
     </Figure>
   );
 }

@@ -6,13 +6,13 @@ import { AMPLIFIER, BUFFER, GENERATOR_RADIUS, JFET, PLATES, RESISTOR, SUM_RADIUS
 export function SchematicSymbols({
   drawing,
   fitted,
-  pastLimit,
+  past,
 }: {
   readonly drawing: Drawing;
   readonly fitted: Fitted;
-  readonly pastLimit: boolean;
+  readonly past: { readonly device: boolean; readonly amplifier: boolean };
 }) {
-  const { ground, deviceBox } = drawing;
+  const { ground, deviceBox, amplifierBox } = drawing;
   return (
     <>
       {drawing.wires.map(({ x1, y1, x2, y2 }) => (
@@ -31,7 +31,8 @@ export function SchematicSymbols({
           {shapeOf(symbol.kind, fitted)}
         </g>
       ))}
-      {pastLimit && <Corners {...deviceBox} />}
+      {past.device && <Corners {...deviceBox} />}
+      {past.amplifier && <Corners {...amplifierBox} />}
     </>
   );
 }

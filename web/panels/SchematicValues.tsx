@@ -6,8 +6,13 @@ import { DeviceValues } from './DeviceValues.tsx';
 import { FeedbackChoice } from './FeedbackChoice.tsx';
 import { LiveVolts } from './LiveVolts.tsx';
 
+interface Limits {
+  readonly device: string | null;
+  readonly amplifier: string | null;
+}
+
 /** What stands at each place of the drawing, for the parts that are fitted. */
-export function schematicValues(fitted: Fitted, form: Form, limitWords: string | null): Partial<Record<Slot, ComponentChildren>> {
+export function schematicValues(fitted: Fitted, form: Form, limits: Limits): Partial<Record<Slot, ComponentChildren>> {
   const resistors = fitted.feedback === 'resistor';
   return {
     in: <LiveVolts name="in" which="inputPeakV" />,
@@ -53,7 +58,8 @@ export function schematicValues(fitted: Fitted, form: Form, limitWords: string |
     generator: <ControlValues />,
     gateLive: <LiveVolts symbol={form === 'wide' ? 'GS' : null} which="gateSourceV" />,
     drainLive: <LiveVolts symbol="DS" which="drainPeakV" />,
-    ...(limitWords && { limit: <p class="fault limit-words">{limitWords}</p> }),
+    ...(limits.device && { limit: <p class="fault limit-words">{limits.device}</p> }),
+    ...(limits.amplifier && { rail: <p class="fault limit-words">{limits.amplifier}</p> }),
     device: <DeviceValues form={form} />,
     load: (
       <div class="stack">

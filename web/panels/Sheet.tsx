@@ -5,7 +5,6 @@ import { BenchContext } from './BenchContext.ts';
 import { Blocks } from './Blocks.tsx';
 import { Conditions } from './Conditions.tsx';
 import { Foot } from './Foot.tsx';
-import { gatePeriod } from './gatePeriod.ts';
 import { Heading } from './Heading.tsx';
 import { Heard } from './Heard.tsx';
 import { KeysDialog } from './KeysDialog.tsx';
@@ -15,23 +14,19 @@ import { sampled } from './parts/sampled.ts';
 import { Ruler } from './Ruler.tsx';
 import { SoundButtons } from './SoundButtons.tsx';
 import { runShortcut } from './shortcuts.ts';
-import { FIRST_THD_LIMIT, ThdLimitContext } from './thdLimit.ts';
+import { createSheetLimits, LimitsContext } from './sheetLimits.ts';
 import { useFileDrop } from './useFileDrop.ts';
 import { useLayout } from './useLayout.ts';
 
-const READ_EVERY_MS = 100;
 const CALM_EVERY_MS = 250;
 
 /** The page «Listen»: one design, heard and measured. */
 export function Sheet({ bench }: { readonly bench: Bench }) {
   const layout = useLayout();
-  const limit = useSignal(FIRST_THD_LIMIT);
+  const limits = useMemo(createSheetLimits, []);
   const dialog = useSignal<'open' | 'keys' | null>(null);
   const dropping = useFileDrop(bench);
-  const slow = useMemo(
-    () => sampled(bench.live, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : READ_EVERY_MS),
-    [bench],
-  );
+  const slow = useMemo(() => sampled(bench.moment, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : 0), [bench]);
   useEffect(() => slow.end, [slow]);
   useEffect(() => {
     const onKeyDown = (event: KeyboardEvent) => {
@@ -41,16 +36,13 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
     return () => window.removeEventListener('keydown', onKeyDown);
   }, [bench, dialog]);
 
-  const view = useMemo(
-    () => ({ bench, slowLive: slow.copy, period: computed(() => gatePeriod(bench.design.value, bench.heardVariant.value)) }),
-    [bench, slow],
-  );
+  const view = useMemo(() => ({ bench, moment: slow.copy, slowLive: computed(() => slow.copy.value?.levels ?? null) }), [bench, slow]);
   const close = () => {
     dialog.value = null;
   };
   return (
     <BenchContext.Provider value={view}>
-      <ThdLimitContext.Provider value={limit}>
+      <LimitsContext.Provider value={limits}>
         <div class={`sheet ${layout} ${bench.sound.value === 'playing' ? 'is-live' : ''} ${dropping ? 'dropping' : ''}`}>
           <Heading onOpen={() => (dialog.value = 'open')} onKeys={() => (dialog.value = 'keys')} />
           <main>
@@ -70,7 +62,7 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
           {dialog.value === 'keys' && <KeysDialog onClose={close} />}
           {dropping && <p class="drop-word">Drop a recording to hear it through the cell, or a design to open it.</p>}
         </div>
-      </ThdLimitContext.Provider>
+      </LimitsContext.Provider>
     </BenchContext.Provider>
   );
 }

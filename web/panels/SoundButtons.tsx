@@ -1,7 +1,7 @@
 import { percentText } from '../draw/words.ts';
-import { useBench, usePlaying } from './BenchContext.ts';
+import { useBench, usePlaying, useReading } from './BenchContext.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
-import { overLimit, useThdLimit } from './thdLimit.ts';
+import { overLimit, useThdLimit } from './sheetLimits.ts';
 
 /** Start or Stop, and Mute: a row on a wide sheet, a bar under the thumb on a phone, there with the readings that matter most. */
 export function SoundButtons() {
@@ -33,7 +33,7 @@ const startWords = { idle: 'Start', starting: 'Starting', playing: 'Stop', stopp
 function BarReadings() {
   const bench = useBench();
   const limit = useThdLimit();
-  const reading = bench.reading.value;
+  const reading = useReading();
   const worst = bench.worst.value;
   const variant = bench.design.value.variants[bench.heardVariant.value];
   if (!usePlaying()) return <p class="bar-readings">Start low. Loudness at your ears: unknown.</p>;
@@ -42,7 +42,7 @@ function BarReadings() {
       <span>
         <i>k</i> <b>{feedbackFraction(variant.cell).toFixed(3)}</b>
       </span>
-      {reading !== null && 'thdFundamental' in reading && <span class="live">THD {percentText(reading.thdFundamental)} %</span>}
+      {reading !== null && <span class="live">THD {percentText(reading.thdFundamental)} %</span>}
       {worst !== null && (
         <span>
           worst <span class={overLimit(worst.thdFundamental, limit.value) ? 'over' : 'live'}>{percentText(worst.thdFundamental)} %</span>

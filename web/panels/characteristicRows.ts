@@ -1,9 +1,9 @@
 /** The rows of Table 1 as words, grouped by meaning: the signal, the channel, the control. Only rows with a real number in them. */
 import type { Control, Variant } from '../../model/design/types.ts';
-import { splitQuantity } from '../../model/design/values.ts';
+import { formatQuantity, splitQuantity } from '../../model/design/values.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
-import type { GatePeriod } from '../draw/gatePlot.ts';
 import { decimals, signedDecimals } from '../draw/words.ts';
+import type { GatePeriod, LiveLevels, NoisePoint, SwingPoint } from '../state/bench.ts';
 
 export interface Row {
   readonly what: string;
@@ -18,74 +18,126 @@ export interface Row {
   readonly measured: boolean;
 }
 
-/** `controlV` is the control of this moment, null while sound is stopped: then it is shown at rest. */
-export function characteristicRows(
-  variant: Variant,
-  reading: ToneReading | null,
-  controlV: number | null,
-  period: GatePeriod | null,
-): Row[][] {
+/** What was measured, each null where it could not be. */
+export interface Measured {
+  readonly reading: ToneReading | null;
+  /** Of the reading's moment; null while sound is stopped: the control is then shown at rest. */
+  readonly levels: LiveLevels | null;
+  readonly period: GatePeriod | null;
+  readonly swing: readonly SwingPoint[] | null;
+  readonly noise: readonly NoisePoint[] | null;
+}
+
+export function characteristicRows(variant: Variant, measured: Measured): Row[][] {
+  const { reading } = measured;
   const groups = [
-    reading ? signalRows(reading, period) : [],
-    reading ? [channelRow(reading)] : [],
-    controlRows(variant, reading, controlV, period),
+    reading ? signalRows(reading, measured) : [],
+    reading ? [channelRow(reading, measured.swing)] : [],
+    controlRows(variant, measured),
   ];
   return groups.filter((rows) => rows.length > 0);
 }
 
-function row(
-  what: string,
-  short: string,
-  symbol: Row['symbol'],
-  now: string | null,
-  unit: string,
-  ends: { min: string; max: string } = { min: '', max: '' },
-): Row {
+interface Ends {
+  readonly min: string;
+  readonly max: string;
+}
+
+const NO_ENDS: Ends = { min: '', max: '' };
+
+function row(what: string, short: string, symbol: Row['symbol'], now: string | null, unit: string, ends: Ends = NO_ENDS): Row {
   return { what, short, symbol, now, unit, ...ends, measured: true };
 }
 
-function signalRows(reading: ToneReading, period: GatePeriod | null): Row[] {
-  const drain = period && !period.steady ? [Math.min(...period.drain), Math.max(...period.drain)] : [];
-  const { unit, print } = smallVolts([reading.restDcV, ...drain]);
+/** The least and the highest of a swing, printed; nothing where nothing swings. */
+function endsOf(values: readonly number[] | Float64Array | null, print: (value: number) => string): Ends {
+  if (values === null || values.length < 2) return NO_ENDS;
+  return { min: print(Math.min(...values)), max: print(Math.max(...values)) };
+}
+
+function signalRows(reading: ToneReading, { levels, period, swing, noise }: Measured): Row[] {
+  const gain = (db: number) => signedDecimals(db, 1);
+  const through = levels?.feedthroughPeakV ?? Math.abs(reading.restDcV);
+  const overPeriod = period && !period.steady ? period.drain.map(Math.abs) : null;
+  const drain = unsignedVolts(overPeriod ? [through, ...overPeriod] : [through]);
   const added = reading.dcV - reading.restDcV;
   const tone = smallVolts([added]);
+  const hiss = noise === null ? null : noiseAt(noise, reading.vgsV);
+  const hissVolts = noise?.map(({ drainV }) => drainV) ?? null;
+  const hissUnit = unsignedVolts(hissVolts ?? []);
+  const range = swing?.map(({ gainDb }) => gainDb) ?? null;
   return [
-    row('Gain of the cell, input to drain', 'Gain', ['G'], signedDecimals(reading.gainDb, 1), 'dB'),
+    row('Gain of the cell, input to drain', 'Gain', ['G'], gain(reading.gainDb), 'dB', endsOf(range, gain)),
     row(
-      'DC at the drain, from the control',
-      'DC at drain',
-      ['V', 'DS'],
-      print(reading.restDcV),
-      unit,
-      drain.length > 0 ? { min: print(drain[0]), max: print(drain[1]) } : undefined,
+      'Control feedthrough at the drain, peak',
+      'Feedthrough',
+      ['V', 'FT'],
+      drain.print(through),
+      drain.unit,
+      endsOf(overPeriod, drain.print),
     ),
-    row('DC that the tone adds', 'DC added', null, tone.print(added), tone.unit),
+    row(
+      'Noise at the drain, 20\u2009Hz to 20\u2009kHz',
+      'Noise',
+      ['V', 'N'],
+      hiss === null ? null : hissUnit.print(hiss),
+      hissUnit.unit,
+      endsOf(hissVolts, hissUnit.print),
+    ),
+    row('DC that the tone adds at the drain', 'DC added', null, tone.print(added), tone.unit),
   ];
 }
 
-/** One unit for voltages of a row, by the largest of them: from a tenth of a microvolt, under which nobody asks. */
+/** Between the two nearest of the swing; null beyond its ends. */
+export function noiseAt(points: readonly NoisePoint[], gateV: number): number | null {
+  const apart = (point: NoisePoint) => point.gateV - gateV;
+  const near = points.find((point) => Math.abs(apart(point)) < 1e-6);
+  if (near) return near.drainV;
+  const n = points.findIndex((point) => apart(point) > 0);
+  if (n <= 0) return null;
+  const [a, b] = [points[n - 1], points[n]];
+  return a.drainV + ((gateV - a.gateV) / (b.gateV - a.gateV)) * (b.drainV - a.drainV);
+}
+
+/** One unit for the voltages of a row, by the largest of them: from a tenth of a microvolt, under which nobody asks. */
 function smallVolts(volts: readonly number[]): { unit: string; print: (volts: number) => string } {
-  const largest = Math.max(...volts.map(Math.abs));
+  const largest = volts.reduce((most, v) => Math.max(most, Math.abs(v)), 0);
   const [scale, unit] = largest >= 0.9995 ? [1, 'V'] : largest >= 0.9995e-3 ? [1e3, 'mV'] : [1e6, 'μV'];
   return { unit, print: (v) => signedDecimals(v * scale, largest * scale >= 99.5 ? 0 : 1) };
 }
 
-function channelRow(reading: ToneReading): Row {
-  if (!Number.isFinite(reading.rdsOhm) || reading.rdsOhm > 1e9)
-    return row('Drain to source, at rest', 'Drain-source', ['r', 'DS'], 'off', '');
-  const ohm = splitQuantity(reading.rdsOhm, 'Ω');
-  return row('Drain to source, at rest', 'Drain-source', ['r', 'DS'], ohm.number, ohm.unit);
+function unsignedVolts(volts: readonly number[]): { unit: string; print: (volts: number) => string } {
+  const { unit, print } = smallVolts(volts);
+  const most = volts.reduce((highest, v) => Math.max(highest, v), 0);
+  const digits = unit === 'μV' && most < 9.95e-6 ? 2 : 1;
+  return unit === 'μV' && digits === 2 ? { unit, print: (v) => decimals(v * 1e6, 2) } : { unit, print: (v) => print(v).replace('+', '') };
 }
 
-function controlRows({ control }: Variant, reading: ToneReading | null, controlV: number | null, period: GatePeriod | null): Row[] {
+/** Every number of the row in the unit of its least, so that they can be compared. */
+function channelRow(reading: ToneReading, swing: readonly SwingPoint[] | null): Row {
+  const cutOff = (ohm: number) => !Number.isFinite(ohm) || ohm > 1e9;
+  const ohms = [reading.rdsOhm, ...(swing?.map(({ rdsOhm }) => rdsOhm) ?? [])];
+  const least = Math.min(...ohms);
+  if (cutOff(least)) return row('Drain to source, at rest', 'Drain-source', ['r', 'DS'], 'off', '');
+  const { unit } = splitQuantity(least, 'Ω');
+  const scale = unit === 'kΩ' ? 1e-3 : unit === 'MΩ' ? 1e-6 : 1;
+  const print = (ohm: number) => {
+    if (cutOff(ohm)) return 'off';
+    const scaled = ohm * scale;
+    return scaled < 1e4 ? decimals(scaled, scaled < 9.995 ? 2 : scaled < 99.95 ? 1 : 0) : formatQuantity(ohm, 'Ω').replace('\u2009', '');
+  };
+  return row('Drain to source, at rest', 'Drain-source', ['r', 'DS'], print(reading.rdsOhm), unit, endsOf(swing && ohms.slice(1), print));
+}
+
+function controlRows({ control }: Variant, { reading, levels, period }: Measured): Row[] {
   const volts = (v: number) => decimals(v, 2);
+  const now = levels?.controlV ?? (control.source === 'fixed' ? control.controlV : null);
   const swing = controlEnds(control);
   const rows: Row[] = [];
-  const now = controlV ?? (control.source === 'fixed' ? control.controlV : null);
   if (now !== null || swing)
     rows.push(row('Control to be delivered', 'Control', ['V', 'C'], now === null ? null : volts(now), 'V', endsOf(swing, volts)));
-  const gateEnds = period && !period.steady ? { min: Math.min(...period.gate), max: Math.max(...period.gate) } : null;
-  if (reading) rows.push(row('Gate to source, at rest', 'Gate-source', ['V', 'GS'], volts(reading.vgsV), 'V', endsOf(gateEnds, volts)));
+  const gate = period && !period.steady ? period.gate : null;
+  if (reading) rows.push(row('Gate to source, at rest', 'Gate-source', ['V', 'GS'], volts(reading.vgsV), 'V', endsOf(gate, volts)));
   if (period) {
     const off = period.gateOffV < 0 ? period.gateOffV - Math.min(...period.gate) : Math.max(...period.gate) - period.gateOffV;
     rows.push({ ...row('Past off, at the gate’s far end', 'Past off', null, signedDecimals(off, 2), 'V'), measured: false });
@@ -93,10 +145,7 @@ function controlRows({ control }: Variant, reading: ToneReading | null, controlV
   return rows;
 }
 
-function controlEnds(control: Control): { min: number; max: number } | null {
-  return control.source === 'lfo' ? { min: Math.min(control.fromV, control.toV), max: Math.max(control.fromV, control.toV) } : null;
-}
-
-function endsOf(ends: { min: number; max: number } | null, print: (v: number) => string): { min: string; max: string } {
-  return ends ? { min: print(ends.min), max: print(ends.max) } : { min: '', max: '' };
+function controlEnds(control: Control): readonly number[] | null {
+  if (control.source === 'lfo') return [control.fromV, control.toV];
+  return control.source === 'envelope' ? [control.restV, control.limitV] : null;
 }

@@ -1,18 +1,13 @@
 import { useRef } from 'preact/hooks';
+import type { Passed } from '../draw/limits.ts';
 
 const HOLD_MS = 1500;
 
-interface Leaving {
-  readonly words: string;
-  readonly share: number;
-}
-
 /** The worst of the last second and a half, so that a limit passed in each turn of an LFO is a sentence and not a flicker. */
-export function useHeldLimit(leaving: Leaving | null, nowMs: number): Leaving | null {
-  const held = useRef<{ readonly leaving: Leaving; readonly atMs: number } | null>(null);
+export function useHeldLimit(passed: Passed | null, nowMs: number): Passed | null {
+  const held = useRef<{ readonly passed: Passed; readonly atMs: number } | null>(null);
   const old = held.current !== null && nowMs - held.current.atMs > HOLD_MS;
-  if (leaving !== null && (held.current === null || old || leaving.share >= held.current.leaving.share))
-    held.current = { leaving, atMs: nowMs };
+  if (passed !== null && (held.current === null || old || passed.size >= held.current.passed.size)) held.current = { passed, atMs: nowMs };
   else if (old) held.current = null;
-  return held.current?.leaving ?? null;
+  return held.current?.passed ?? null;
 }

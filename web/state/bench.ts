@@ -60,13 +60,20 @@ export interface Bench {
   readonly latencySec: ReadonlySignal<number | null>;
 
   // Measured now
+  /** At the rate of the processor's reports. */
   readonly live: ReadonlySignal<LiveLevels | null>;
-  /** The shadow tone at the gate voltage of this moment (at rest while sound is stopped), about ten times a second. */
-  readonly reading: ReadonlySignal<ToneReading | { readonly fault: string } | null>;
+  /** What belongs to one moment, 10 to 15 times a second while sound plays: a report, and the shadow tone at that report's gate voltage. */
+  readonly moment: ReadonlySignal<Moment | null>;
   /** The highest THD over the control's whole swing. */
   readonly worst: ReadonlySignal<WorstReading | null>;
-  /** THD against k at this resting gate voltage, ascending in k. */
-  readonly feedbackCurve: ReadonlySignal<readonly FeedbackPoint[] | null>;
+  /** The shadow tone over the swing, ascending in the gate's voltage. */
+  readonly swing: ReadonlySignal<readonly SwingPoint[] | null>;
+  /** Noise over the swing, ascending in the gate's voltage; null while it is being computed. */
+  readonly noise: ReadonlySignal<readonly NoisePoint[] | null>;
+  /** What the control does to the heard variant by itself, or why it has no period; null until the first answer. */
+  readonly period: ReadonlySignal<GatePeriod | { readonly fault: string } | null>;
+  /** THD against k at the gate voltage of a moment just past (at rest while sound is stopped), as often as can be computed. */
+  readonly feedbackCurve: ReadonlySignal<FeedbackCurve | null>;
   /** The shadow tone at the cell's input, V peak. */
   readonly toneV: ReadonlySignal<number>;
   setToneV(volts: number): string | null;
@@ -145,10 +152,51 @@ export interface LiveLevels {
   readonly underruns: number;
 }
 
+export interface Moment {
+  /** Null while sound is stopped: the reading is then at the control's rest. */
+  readonly levels: LiveLevels | null;
+  readonly reading: ToneReading | { readonly fault: string };
+  /** The least and the highest THD that parts of 1 % make of this k, fractions; null without feedback. */
+  readonly thdBand: readonly [number, number] | null;
+}
+
+/** One period of the control without audio. */
+export interface GatePeriod {
+  /** One period, s; of a control that does not move, 1 s to draw it over. */
+  readonly seconds: number;
+  /** V at even times, the last value equal to the first: the period is closed. */
+  readonly control: Float64Array;
+  readonly gate: Float64Array;
+  readonly drain: Float64Array;
+  readonly steady: boolean;
+  /** VGS(off) at the temperature of the circuit, V, negative for an n-channel part. */
+  readonly gateOffV: number;
+}
+
 export interface WorstReading {
   readonly thdFundamental: number;
   readonly gainDb: number;
   readonly gateV: number;
+}
+
+/** The shadow tone at one gate voltage of the swing. */
+export interface SwingPoint {
+  readonly gateV: number;
+  readonly gainDb: number;
+  /** Infinity when cut off. */
+  readonly rdsOhm: number;
+}
+
+/** Noise where the cell ends, 20 Hz to 20 kHz, V rms. */
+export interface NoisePoint {
+  readonly gateV: number;
+  readonly drainV: number;
+}
+
+/** Ascending in k. */
+export interface FeedbackCurve {
+  readonly gateV: number;
+  readonly points: readonly FeedbackPoint[];
 }
 
 export interface FeedbackPoint {

@@ -3,23 +3,30 @@
  * for each render until it is done.
  */
 import { renderClip } from '../../model/chain/render.ts';
+import { gatePeriod } from './gatePeriod.ts';
 import { sentenceOf } from './notes.ts';
-import { findWorst, readFeedbackCurve, readMoment } from './toneStudy.ts';
+import { readFeedbackCurve, readMoment, readNoise, readSwing } from './toneStudy.ts';
 import type { FromReading, FromRender, ToneQuestion, ToReading, ToRender } from './workers.ts';
 
 let asked: { id: number; question: ToneQuestion } | null = null;
-let work: Generator<void, void> | null = null;
+/** Work in small steps, taken in turn. */
+const work = new Map<'curve' | 'swing', Generator<void, void>>();
+let pumping = false;
 const pump = new MessageChannel();
 
 self.onmessage = ({ data }: MessageEvent<ToReading | ToRender>) => {
   switch (data.type) {
     case 'question':
       asked = data;
-      work = answer(data.id, data.question);
-      pump.port2.postMessage(null);
       return;
     case 'moment':
       answerMoment(data.id, data.gateV);
+      return;
+    case 'curve':
+      begin('curve', answerCurve(data.id, questionNow(), data.gateV));
+      return;
+    case 'swing':
+      begin('swing', answerSwing(data.id, questionNow()));
       return;
     case 'render':
       render(data);
@@ -30,32 +37,56 @@ self.onmessage = ({ data }: MessageEvent<ToReading | ToRender>) => {
   }
 };
 
-/** One step of the work, then back to the queue, so that a moment or a newer question never waits for more than one reading. */
+function questionNow(): ToneQuestion {
+  if (asked === null) throw new Error('No design has been given yet.');
+  return asked.question;
+}
+
+function begin(name: 'curve' | 'swing', steps: Generator<void, void>): void {
+  work.set(name, steps);
+  if (pumping) return;
+  pumping = true;
+  pump.port2.postMessage(null);
+}
+
+/** One step of the work, then back to the queue, so that a moment never waits for more than one reading. */
 pump.port1.onmessage = () => {
-  if (work === null) return;
-  if (work.next().done) work = null;
-  else pump.port2.postMessage(null);
+  const [first] = work;
+  if (first !== undefined) {
+    const [name, steps] = first;
+    work.delete(name);
+    if (!steps.next().done) work.set(name, steps);
+  }
+  pumping = work.size > 0;
+  if (pumping) pump.port2.postMessage(null);
 };
 
-function* answer(id: number, question: ToneQuestion): Generator<void, void> {
-  yield;
+/** The moment's reading carries the sentence of what cannot be read; a curve or a swing only says that there is nothing to draw. */
+function* orNull<T>(steps: Generator<void, T>): Generator<void, T | null> {
   try {
-    tell({ type: 'worst', id, worst: yield* findWorst(question) });
-    tell({ type: 'curve', id, points: yield* readFeedbackCurve(question) });
+    return yield* steps;
   } catch (error) {
-    // The moment's reading carries the sentence; here it only says that there is nothing to draw.
-    if (!(error instanceof RangeError)) throw error;
-    tell({ type: 'worst', id, worst: null });
-    tell({ type: 'curve', id, points: null });
+    if (error instanceof RangeError) return null;
+    throw error;
   }
+}
+
+function* answerCurve(id: number, question: ToneQuestion, gateV: number | null): Generator<void, void> {
+  tell({ type: 'curve', id, curve: yield* orNull(readFeedbackCurve(question, gateV)) });
+}
+
+function* answerSwing(id: number, question: ToneQuestion): Generator<void, void> {
+  tell({ type: 'period', id, period: gatePeriod(question.design, question.variantIndex) });
+  yield;
+  tell({ type: 'worst', id, swing: yield* orNull(readSwing(question)) });
+  tell({ type: 'noise', id, points: yield* orNull(readNoise(question)) });
 }
 
 function answerMoment(id: number, gateV: number | null): void {
   try {
-    if (asked === null) throw new RangeError('No design has been given yet.');
-    tell({ type: 'reading', id, reading: readMoment(asked.question, gateV) });
+    tell({ type: 'reading', id, ...readMoment(questionNow(), gateV) });
   } catch (error) {
-    tell({ type: 'reading', id, reading: { fault: sentenceOf(error) } });
+    tell({ type: 'reading', id, reading: { fault: sentenceOf(error) }, thdBand: null });
   }
 }
 

@@ -1,17 +1,20 @@
-/** The shadow tone's readings, from a worker: asked for when something changed, and ten times a second while sound moves the gate. */
+/** The shadow tone's readings, from a worker: asked for when something changed, and at the gate of the moment while sound moves it. */
 import type { ReadonlySignal } from '@preact/signals';
 import { effect, signal } from '@preact/signals';
 import type { Design } from '../../model/design/types.ts';
-import type { ToneReading } from '../../model/study/tone.ts';
-import type { Bench, FeedbackPoint, LiveLevels, WorstReading } from './bench.ts';
+import type { Bench, FeedbackCurve, GatePeriod, LiveLevels, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
 import { setWithin } from './within.ts';
 import type { FromReading, ToReading, WorkerPort } from './workers.ts';
 
-const EVERY_MS = 100;
+/** Reports come about 33 ms apart: every second one is read. */
+const MOMENT_MS = 60;
+/** Between a curve and the next, so that the worker is free half of the time. */
+const CURVE_REST_MS = 60;
 const FIRST_TONE_V = 0.5;
 const FIRST_TONE_HZ = 1000;
 
-type Readings = Pick<Bench, 'reading' | 'worst' | 'feedbackCurve' | 'toneV' | 'setToneV' | 'toneHz' | 'setToneHz'>;
+type Measured = 'moment' | 'period' | 'worst' | 'swing' | 'noise' | 'feedbackCurve';
+type Readings = Pick<Bench, Measured | 'toneV' | 'setToneV' | 'toneHz' | 'setToneHz'>;
 
 export interface ReadingSources {
   readonly design: ReadonlySignal<Design>;
@@ -20,38 +23,59 @@ export interface ReadingSources {
   readonly playing: ReadonlySignal<boolean>;
 }
 
-export function createReadings(worker: WorkerPort<ToReading, FromReading>, sources: ReadingSources): Readings {
-  const reading = signal<ToneReading | { readonly fault: string } | null>(null);
+export function createReadings(
+  worker: WorkerPort<ToReading, FromReading>,
+  sources: ReadingSources,
+  now: () => number = () => performance.now(),
+): Readings {
+  const moment = signal<Moment | null>(null);
+  const period = signal<GatePeriod | { readonly fault: string } | null>(null);
   const worst = signal<WorstReading | null>(null);
-  const feedbackCurve = signal<readonly FeedbackPoint[] | null>(null);
+  const swing = signal<readonly SwingPoint[] | null>(null);
+  const noise = signal<readonly NoisePoint[] | null>(null);
+  const feedbackCurve = signal<FeedbackCurve | null>(null);
   const toneV = signal(FIRST_TONE_V);
   const toneHz = signal(FIRST_TONE_HZ);
   let id = 0;
-  let waiting = false;
-  let askAgain = false;
+  let failed: string | null = null;
+  let asked: LiveLevels | null = null;
+  let curveEndMs = Number.NEGATIVE_INFINITY;
 
-  const askMoment = () => {
-    if (waiting) {
-      askAgain = true;
-      return;
-    }
-    waiting = true;
-    askAgain = false;
-    worker.post({ type: 'moment', id, gateV: sources.playing.peek() ? (sources.live.peek()?.gateSourceV ?? null) : null });
+  const momentTurn = createTurn(() => {
+    asked = sources.playing.peek() ? sources.live.peek() : null;
+    if (failed === null) worker.post({ type: 'moment', id, gateV: asked?.gateSourceV ?? null });
+    else publish({ fault: failed }, null);
+  }, now);
+  const curveTurn = createTurn(() => {
+    const levels = sources.playing.peek() ? moment.peek()?.levels : null;
+    worker.post({ type: 'curve', id, gateV: levels?.gateSourceV ?? null });
+  }, now);
+  const swingTurn = createTurn(() => worker.post({ type: 'swing', id }), now);
+
+  const publish = (reading: Moment['reading'], thdBand: Moment['thdBand']) => {
+    moment.value = { levels: asked, reading, thdBand };
+    momentTurn.done();
+    if (asked !== null && !curveTurn.taken() && now() - curveEndMs >= CURVE_REST_MS) curveTurn.ask();
   };
 
   const receive = (message: FromReading) => {
     switch (message.type) {
       case 'reading':
-        waiting = false;
-        if (message.id === id) reading.value = message.reading;
-        if (askAgain) askMoment();
+        if (message.id === id) return publish(message.reading, message.thdBand);
+        return momentTurn.done(true);
+      case 'curve':
+        feedbackCurve.value = message.curve;
+        curveEndMs = now();
+        return curveTurn.done();
+      case 'period':
+        period.value = message.period;
         return;
       case 'worst':
-        if (message.id === id) worst.value = message.worst;
-        return;
-      case 'curve':
-        if (message.id === id) feedbackCurve.value = message.points;
+        worst.value = message.swing?.worst ?? null;
+        swing.value = message.swing?.points ?? null;
+        return swingTurn.done();
+      case 'noise':
+        if (message.id === id) noise.value = message.points;
         return;
       default:
         message satisfies never;
@@ -60,32 +84,65 @@ export function createReadings(worker: WorkerPort<ToReading, FromReading>, sourc
   };
 
   worker.receive(receive, (sentence) => {
-    reading.value = { fault: sentence };
+    failed = sentence;
+    publish({ fault: sentence }, null);
   });
 
   effect(() => {
     const question = { design: sources.design.value, variantIndex: sources.heardVariant.value, toneHz: toneHz.value, toneV: toneV.value };
     id++;
+    noise.value = null;
     worker.post({ type: 'question', id, question });
-    askMoment();
+    momentTurn.ask();
+    curveTurn.ask();
+    swingTurn.ask();
   });
 
   effect(() => {
-    if (!sources.playing.value) {
-      askMoment();
-      return undefined;
-    }
-    const timer = setInterval(askMoment, EVERY_MS);
-    return () => clearInterval(timer);
+    if (sources.playing.value) return;
+    momentTurn.ask();
+    curveTurn.ask();
+  });
+  sources.live.subscribe((live) => {
+    if (live !== null && sources.playing.peek() && !momentTurn.taken() && now() - momentTurn.askedMs() >= MOMENT_MS) momentTurn.ask();
   });
 
   return {
-    reading,
+    moment,
+    period,
     worst,
+    swing,
+    noise,
     feedbackCurve,
     toneV,
     toneHz,
     setToneV: (volts) => setWithin(toneV, volts, 0.0001, 100, 'The shadow tone', 'V peak'),
     setToneHz: (hz) => setWithin(toneHz, hz, 1, 20000, 'The shadow tone', 'Hz'),
+  };
+}
+
+/** One request at a time: what is asked for meanwhile is asked once more when the answer has come. */
+function createTurn(post: () => void, now: () => number) {
+  let waiting = false;
+  let again = false;
+  let askedMs = Number.NEGATIVE_INFINITY;
+  const ask = () => {
+    again = waiting;
+    if (waiting) return;
+    waiting = true;
+    askedMs = now();
+    post();
+  };
+  return {
+    ask,
+    taken: () => waiting,
+    askedMs: () => askedMs,
+    /** The answer is here; `anew` asks again at once. */
+    done(anew = false) {
+      waiting = false;
+      if (!again && !anew) return;
+      again = false;
+      ask();
+    },
   };
 }

@@ -2,10 +2,12 @@
 import { controlRangeV } from '../../model/control/range.ts';
 import { feedbackFraction, withFeedbackFraction } from '../../model/design/feedback.ts';
 import type { Variant } from '../../model/design/types.ts';
+import { noiseReading } from '../../model/study/noiseDensity.ts';
 import { controlSwing } from '../../model/study/swing.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import { measureTone } from '../../model/study/tone.ts';
-import type { FeedbackPoint, WorstReading } from './bench.ts';
+import { fractionsWithin, thdWithin } from '../draw/tolerance.ts';
+import type { FeedbackCurve, FeedbackPoint, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
 import type { ToneQuestion } from './workers.ts';
 
 const SWING_STEPS = 24;
@@ -16,26 +18,43 @@ const CURVE_TO = 0.6;
 const CURVE_STEPS = 40;
 
 /** The shadow tone at a gate voltage; null is the gate with the control at rest. Throws a RangeError where the cell cannot be read. */
-export function readMoment(question: ToneQuestion, gateV: number | null): ToneReading {
+export function readTone(question: ToneQuestion, gateV: number | null): ToneReading {
   const { design, variantIndex, toneHz, toneV } = question;
   return measureTone(design, variantIndex, { toneHz, toneV, ...(gateV === null ? {} : { gateV }) });
 }
 
-/** The highest THD over the gate's swing: 25 gate voltages, then the gap around the highest halved four times. Yields between readings. */
-export function* findWorst(question: ToneQuestion): Generator<void, WorstReading> {
+/** The same, with what parts of 1 % make of it at that gate voltage. */
+export function readMoment(question: ToneQuestion, gateV: number | null): Pick<Moment, 'thdBand'> & { readonly reading: ToneReading } {
+  const reading = readTone(question, gateV);
+  const variant = question.design.variants[question.variantIndex];
+  if (variant.cell.feedback.kind === 'none') return { reading, thdBand: null };
+  const k = feedbackFraction(variant.cell);
+  const [low, high] = fractionsWithin(k).map((end) => {
+    const moved = questionAt(question, end);
+    return moved === null ? [] : [feedbackPoint(end, readTone(moved, reading.vgsV))];
+  });
+  return { reading, thdBand: thdWithin([...low, feedbackPoint(k, reading), ...high]) };
+}
+
+/**
+ * The shadow tone over the gate's swing: 25 gate voltages, and the highest THD, for which the gap around it is halved four times. Yields between
+ * readings.
+ */
+export function* readSwing(question: ToneQuestion): Generator<void, { worst: WorstReading; points: readonly SwingPoint[] }> {
   const [from, to] = gateRangeV(question);
+  const points: SwingPoint[] = [];
   const measure = (gateV: number): WorstReading => {
-    const { thdFundamental, gainDb } = readMoment(question, gateV);
+    const { thdFundamental, gainDb, rdsOhm } = readTone(question, gateV);
+    points.push({ gateV, gainDb, rdsOhm });
     return { thdFundamental, gainDb, gateV };
   };
   let worst = measure(from);
-  if (from === to) return worst;
   let stepV = (to - from) / SWING_STEPS;
-  for (let i = 1; i <= SWING_STEPS; i++) {
+  for (let i = 1; i <= SWING_STEPS && stepV > 0; i++) {
     yield;
     worst = higher(worst, measure(from + i * stepV));
   }
-  for (let halving = 0; halving < 4; halving++) {
+  for (let halving = 0; halving < 4 && stepV > 0; halving++) {
     stepV /= 2;
     const { gateV } = worst;
     for (const nearV of [gateV - stepV, gateV + stepV]) {
@@ -43,7 +62,21 @@ export function* findWorst(question: ToneQuestion): Generator<void, WorstReading
       if (nearV >= from && nearV <= to) worst = higher(worst, measure(nearV));
     }
   }
-  return worst;
+  return { worst, points: points.sort((a, b) => a.gateV - b.gateV) };
+}
+
+/** The noise at the drain over the gate's swing, at 25 gate voltages. Yields between readings. */
+export function* readNoise(question: ToneQuestion): Generator<void, readonly NoisePoint[]> {
+  const { design, variantIndex } = question;
+  const [from, to] = gateRangeV(question);
+  const steps = from === to ? 0 : SWING_STEPS;
+  const points: NoisePoint[] = [];
+  for (let i = 0; i <= steps; i++) {
+    yield;
+    const gateV = steps === 0 ? from : from + ((to - from) * i) / steps;
+    points.push({ gateV, drainV: noiseReading(design, variantIndex, { gateV, frequenciesHz: [] }).drain.flatV });
+  }
+  return points;
 }
 
 /** The ends of the gate's swing, V: an LFO's with what a blocking capacitor makes of its rate, any other control's one by one. */
@@ -57,23 +90,28 @@ function gateRangeV({ design, variantIndex }: ToneQuestion): readonly [number, n
 }
 
 /**
- * THD against k, the gate's voltage kept where the control at rest puts it now. 41 values from 0.40 to 0.60, widened so that the present k
+ * THD against k at a gate voltage; null is where the control at rest puts it now. 41 values from 0.40 to 0.60, widened so that the present k
  * lies inside; a k that parts within their limits cannot give is left out. A cell without feedback has no such curve: null.
  */
-export function* readFeedbackCurve(question: ToneQuestion): Generator<void, readonly FeedbackPoint[] | null> {
-  const { design, variantIndex } = question;
-  const variant = design.variants[variantIndex];
-  if (variant.cell.feedback.kind === 'none') return null;
-  const { vgsV } = readMoment(question, null);
+export function* readFeedbackCurve(question: ToneQuestion, gateV: number | null): Generator<void, FeedbackCurve | null> {
+  const { cell } = question.design.variants[question.variantIndex];
+  if (cell.feedback.kind === 'none') return null;
+  const keptV = gateV ?? readTone(question, null).vgsV;
   const points: FeedbackPoint[] = [];
-  for (const k of curveFractions(feedbackFraction(variant.cell))) {
+  for (const k of curveFractions(feedbackFraction(cell))) {
     yield;
-    const moved = variantAtFraction(variant, k);
-    if (moved === null) continue;
-    const variants = design.variants.map((other, i) => (i === variantIndex ? moved : other));
-    points.push(feedbackPoint(k, readMoment({ ...question, design: { ...design, variants } }, vgsV)));
+    const moved = questionAt(question, k);
+    if (moved !== null) points.push(feedbackPoint(k, readTone(moved, keptV)));
   }
-  return points;
+  return { gateV: keptV, points };
+}
+
+/** The same question of a cell with another k; null where parts within their limits cannot give it. */
+function questionAt(question: ToneQuestion, k: number): ToneQuestion | null {
+  const { design, variantIndex } = question;
+  const moved = variantAtFraction(design.variants[variantIndex], k);
+  if (moved === null) return null;
+  return { ...question, design: { ...design, variants: design.variants.map((other, i) => (i === variantIndex ? moved : other)) } };
 }
 
 function variantAtFraction(variant: Variant, k: number): Variant | null {

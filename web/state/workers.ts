@@ -1,7 +1,6 @@
 /** The wire between the page and its two workers. Each union goes one way; receivers end in `message satisfies never`. */
 import type { Design } from '../../model/design/types.ts';
-import type { ToneReading } from '../../model/study/tone.ts';
-import type { FeedbackPoint, WorstReading } from './bench.ts';
+import type { FeedbackCurve, GatePeriod, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
 
 /** A worker as the state sees it, so that a test can stand something else in its place. */
 export interface WorkerPort<Out, In> {
@@ -18,17 +17,27 @@ export interface ToneQuestion {
   readonly toneV: number;
 }
 
-/** `id` counts up with each question; an answer carries the id of the question that it belongs to. */
+/** `id` counts up with each question; what is asked for, and its answer, carry the id of the question that they are about. */
 export type ToReading =
-  /** Asks for the worst over the swing and the curve against k; drops what was being computed. */
+  /** What everything after it is about. */
   | { readonly type: 'question'; readonly id: number; readonly question: ToneQuestion }
-  /** Asks for the reading at a gate voltage; null is the gate with the control at rest. */
-  | { readonly type: 'moment'; readonly id: number; readonly gateV: number | null };
+  /** Asks for the reading at a gate voltage; null is the gate with the control at rest. Comes before all other work. */
+  | { readonly type: 'moment'; readonly id: number; readonly gateV: number | null }
+  /** Asks for the curve against k; replaces one that is being computed. */
+  | { readonly type: 'curve'; readonly id: number; readonly gateV: number | null }
+  /** Asks for the period, the worst over the swing, then the noise over it, in this order; replaces one that is being computed. */
+  | { readonly type: 'swing'; readonly id: number };
 
 export type FromReading =
-  | { readonly type: 'reading'; readonly id: number; readonly reading: ToneReading | { readonly fault: string } }
-  | { readonly type: 'worst'; readonly id: number; readonly worst: WorstReading | null }
-  | { readonly type: 'curve'; readonly id: number; readonly points: readonly FeedbackPoint[] | null };
+  | { readonly type: 'reading'; readonly id: number; readonly reading: Moment['reading']; readonly thdBand: Moment['thdBand'] }
+  | { readonly type: 'curve'; readonly id: number; readonly curve: FeedbackCurve | null }
+  | { readonly type: 'period'; readonly id: number; readonly period: GatePeriod | { readonly fault: string } }
+  | {
+      readonly type: 'worst';
+      readonly id: number;
+      readonly swing: { readonly worst: WorstReading; readonly points: readonly SwingPoint[] } | null;
+    }
+  | { readonly type: 'noise'; readonly id: number; readonly points: readonly NoisePoint[] | null };
 
 export type ToRender = {
   readonly type: 'render';

@@ -1,8 +1,9 @@
 import { expect, test } from 'vitest';
 import { defaultDesign } from '../../../model/design/defaults.ts';
 import type { Cell, Control, Design } from '../../../model/design/types.ts';
-import { type GatePeriod, plotGate, regionAt, turnOf } from '../../../web/draw/gatePlot.ts';
-import { gatePeriod } from '../../../web/panels/gatePeriod.ts';
+import { plotGate, regionAt, turnOf } from '../../../web/draw/gatePlot.ts';
+import type { GatePeriod } from '../../../web/state/bench.ts';
+import { gatePeriod } from '../../../web/state/gatePeriod.ts';
 
 const cell: Cell = {
   ...defaultDesign().variants[0].cell,

@@ -239,38 +239,59 @@ describe('readings', () => {
     bench.setValue('cell.seriesOhm', 6800);
     const latest = readingWorker.posted.findLast((message) => message.type === 'question');
     expect(latest?.question.design).toBe(bench.design.value);
-    readingWorker.answer({ type: 'worst', id: first.id, worst: { thdFundamental: 1, gainDb: 0, gateV: 0 } });
-    expect(bench.worst.value).toBeNull();
+    const reading = { fault: 'none yet' };
+    readingWorker.answer({ type: 'reading', id: first.id, reading, thdBand: null });
+    expect(bench.moment.value).toBeNull();
+    readingWorker.answer({ type: 'reading', id: latest?.id ?? 0, reading, thdBand: null });
+    expect(bench.moment.value).toEqual({ levels: null, reading, thdBand: null });
     const worst = { thdFundamental: 0.02, gainDb: -6, gateV: -1 };
-    readingWorker.answer({ type: 'worst', id: latest?.id ?? 0, worst });
+    const asked = () => readingWorker.posted.filter(({ type }) => type === 'swing').length;
+    expect(asked()).toBe(1);
+    readingWorker.answer({ type: 'worst', id: first.id, swing: { worst, points: [] } });
     expect(bench.worst.value).toEqual(worst);
+    expect(asked()).toBe(2);
     expect(bench.setToneV(-1)).toBe('The shadow tone is -1 V peak; expected 0.0001 to 100 V peak.');
     expect(bench.setToneHz(440)).toBeNull();
     expect(readingWorker.posted.findLast((message) => message.type === 'question')?.question.toneHz).toBe(440);
   });
 
-  test('while sound plays the reading follows the gate voltage of the moment, ten times a second, one question at a time', async () => {
+  test('while sound plays a report and the reading at its gate voltage come out together, 10 to 15 times a second', async () => {
     const { readingWorker } = parts;
     const sound = await startSound();
-    const report: Report = {
+    const report = (gateSourceV: number): Report => ({
       ...{ type: 'report', slot: 0, frame: 0, input: new Float32Array(100), output: new Float32Array(100) },
       ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, inputPeakV: 0, drainPeakV: 0, feedthroughPeakV: 0 },
-      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: -3.5, gateSourceV: -1.75 },
+      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: 2 * gateSourceV, gateSourceV },
+    });
+    const asked = () => readingWorker.posted.filter((message) => message.type === 'moment');
+    const answer = () => {
+      const { id = 0, gateV } = asked().at(-1) ?? {};
+      readingWorker.answer({ type: 'reading', id, reading: { fault: `at ${gateV}` }, thdBand: null });
     };
-    sound.events.message(report);
-    expect(sound.last('return report')).toMatchObject({ slot: 0 });
-    const moments = () => readingWorker.posted.filter((message) => message.type === 'moment');
-    const asked = moments().length;
-    vi.advanceTimersByTime(1000);
-    expect(moments()).toHaveLength(asked);
-    for (let i = 0; i < 10; i++) {
-      readingWorker.answer({ type: 'reading', id: moments().at(-1)?.id ?? 0, reading: { fault: 'none yet' } });
-      vi.advanceTimersByTime(100);
+    answer();
+    answer();
+    const before = asked().length;
+    for (let i = 1; i <= 30; i++) {
+      sound.events.message(report(-i / 10));
+      vi.advanceTimersByTime(10);
+      if (asked().length > before) answer();
+      const moment = bench.moment.value;
+      if (moment?.levels) expect(moment.reading).toEqual({ fault: `at ${moment.levels.gateSourceV}` });
+      vi.advanceTimersByTime(23);
     }
-    expect(moments().length - asked).toBeGreaterThanOrEqual(9);
-    expect(moments().length - asked).toBeLessThanOrEqual(12);
-    expect(moments().at(-1)?.gateV).toBe(-1.75);
-    expect(bench.reading.value).toEqual({ fault: 'none yet' });
+    expect(sound.last('return report')).toMatchObject({ slot: 0 });
+    expect(asked().length - before).toBeGreaterThanOrEqual(10);
+    expect(asked().length - before).toBeLessThanOrEqual(16);
+    const curve = readingWorker.posted.findLast((message) => message.type === 'curve');
+    expect(curve?.gateV).toBeNull();
+    readingWorker.answer({ type: 'curve', id: 1, curve: null });
+    const again = readingWorker.posted.findLast((message) => message.type === 'curve');
+    expect(again?.gateV).toBe(bench.moment.value?.levels?.gateSourceV);
+  });
+
+  test('when the worker fails the levels go on, with a sentence for the reading', async () => {
+    parts.readingWorker.fail('The page’s worker failed.');
+    expect(bench.moment.value?.reading).toEqual({ fault: 'The page’s worker failed.' });
   });
 });
 

@@ -3,7 +3,7 @@ import { defaultVariant } from '../../../model/design/defaults.ts';
 import { withFeedbackFraction } from '../../../model/design/feedback.ts';
 import { checkDesign } from '../../../model/design/read.ts';
 import type { Control, Design, Feedback } from '../../../model/design/types.ts';
-import { curveFractions, findWorst, readFeedbackCurve, readMoment } from '../../../web/state/toneStudy.ts';
+import { curveFractions, readFeedbackCurve, readMoment, readNoise, readSwing, readTone } from '../../../web/state/toneStudy.ts';
 import type { ToneQuestion } from '../../../web/state/workers.ts';
 
 /**
@@ -43,7 +43,7 @@ describe('the worst over the swing', () => {
     [0.5, 0.3, 0.0732, -2.59],
   ])('at k = %d and %d V peak is a THD of %d at %d dB', (k, toneV, thd, gainDb) => {
     const feedback: Feedback = k === 0 ? { kind: 'none' } : { kind: 'buffered', fraction: k };
-    const worst = finish(findWorst(question(cellA(feedback, sweep(-1.8, -1)), toneV)));
+    const { worst } = finish(readSwing(question(cellA(feedback, sweep(-1.8, -1)), toneV)));
     // The figures have three digits; the maximum is flat, so its place, hence the gain, is found less sharply.
     expect(Math.abs(worst.thdFundamental / thd - 1)).toBeLessThan(0.005);
     expect(Math.abs(worst.gainDb - gainDb)).toBeLessThan(0.15);
@@ -51,8 +51,8 @@ describe('the worst over the swing', () => {
 
   test('of a fixed control is its one reading', () => {
     const asked = question(cellA({ kind: 'none' }, { source: 'fixed', controlV: -0.75 }), 1);
-    const { thdFundamental, gainDb } = readMoment(asked, null);
-    const worst = finish(findWorst(asked));
+    const { thdFundamental, gainDb } = readTone(asked, null);
+    const { worst } = finish(readSwing(asked));
     expect(worst.gateV).toBeCloseTo(-0.75, 9);
     expect(worst.thdFundamental).toBeCloseTo(thdFundamental, 9);
     expect(worst.gainDb).toBeCloseTo(gainDb, 9);
@@ -78,18 +78,66 @@ describe('the curve against k', () => {
   });
 
   test('its second harmonic is plus below one half, where k is to be raised, and minus above', () => {
-    const points = finish(readFeedbackCurve(question(design, 1))) ?? [];
+    const points = finish(readFeedbackCurve(question(design, 1), null))?.points ?? [];
     for (const { k, h2Signed } of points) if (Math.abs(k - 0.5) > 1e-6) expect(Math.sign(h2Signed)).toBe(k < 0.5 ? 1 : -1);
   });
 
   test('the second harmonic off balance is the one without feedback times 1 − 2k', () => {
     // First order in 1 − 2k: computed independently; at k = 0.505 and VGS −0.75 V the exact figure is −76.4 dB, against −36.38 dB at k = 0.
-    const points = finish(readFeedbackCurve(question(design, 1))) ?? [];
+    const points = finish(readFeedbackCurve(question(design, 1), null))?.points ?? [];
     const near = points.find(({ k }) => Math.abs(k - 0.505) < 1e-9);
     expect(Math.abs(dbOf(Math.abs(near?.h2Signed ?? 0)) - -76.4)).toBeLessThan(0.1);
   });
 
+  test('passes through the reading of the same gate voltage, wherever that is', () => {
+    const asked = question(design, 0.5);
+    for (const gateV of [-0.4, -1.1]) {
+      const curve = finish(readFeedbackCurve(asked, gateV));
+      const { reading } = readMoment(asked, gateV);
+      expect(curve?.gateV).toBe(gateV);
+      expect(curve?.points.find(({ k }) => Math.abs(k - 0.45) < 1e-6)?.thd).toBeCloseTo(reading.thdFundamental, 12);
+    }
+  });
+
   test('a cell without feedback has none', () => {
-    expect(finish(readFeedbackCurve(question(cellA({ kind: 'none' }, { source: 'fixed', controlV: -1 }), 1)))).toBeNull();
+    expect(finish(readFeedbackCurve(question(cellA({ kind: 'none' }, { source: 'fixed', controlV: -1 }), 1), null))).toBeNull();
+  });
+});
+
+describe('parts of 1 %', () => {
+  test('make a band around the reading that holds the THD of either pair of ends', () => {
+    const pair = (drainOhm: number, controlOhm: number) => {
+      const design = cellA({ kind: 'resistor', drainOhm, blockingF: null }, { source: 'fixed', controlV: -1.5 });
+      const [variant] = design.variants;
+      return { ...design, variants: [{ ...variant, cell: { ...variant.cell, controlOhm } }] };
+    };
+    const { reading, thdBand } = readMoment(question(pair(1e6, 910e3), 0.5), -0.75);
+    const [low, high] = thdBand ?? [0, 0];
+    const ends = [pair(1.01e6, 0.99 * 910e3), pair(0.99e6, 1.01 * 910e3)].map(
+      (design) => readTone(question(design, 0.5), -0.75).thdFundamental,
+    );
+    expect(low).toBeLessThan(reading.thdFundamental);
+    expect(Math.abs(low / Math.min(...ends) - 1)).toBeLessThan(1e-3);
+    expect(Math.abs(high / Math.max(...ends) - 1)).toBeLessThan(1e-3);
+  });
+});
+
+describe('over the swing', () => {
+  const asked = question(cellA({ kind: 'none' }, sweep(-1.8, 0)), 0.05);
+
+  test('the gain ends at that of the channel at VGS = 0 and, cut off, at that of the load alone', () => {
+    // Voltage divider: rDS(on) = |VGS(off)|/(2·IDSS) = 250 Ω under 10 kΩ is −32.26 dB; a load of 1 GΩ takes nothing.
+    const { points } = finish(readSwing(asked));
+    expect(points[0].gainDb).toBeCloseTo(0, 3);
+    expect(points.at(-1)?.gainDb).toBeCloseTo(-32.26, 1);
+    expect(points.at(-1)?.rdsOhm).toBeCloseTo(250, 3);
+    expect(points.map(({ gateV }) => gateV)).toEqual(points.map(({ gateV }) => gateV).sort((a, b) => a - b));
+  });
+
+  test('the noise at the drain is that of 10 kΩ where the cell is cut off', () => {
+    // Johnson: √(4kTRB) of 10 kΩ at 25 °C over 19.98 kHz is 1.814 μV.
+    const points = finish(readNoise(asked));
+    expect(points[0].drainV * 1e6).toBeCloseTo(1.814, 2);
+    expect(points).toHaveLength(25);
   });
 });

@@ -1,7 +1,7 @@
 import type { Design } from '../../model/design/types.ts';
 import { lawConstants } from '../../model/device/law.ts';
 import { controlSwing } from '../../model/study/swing.ts';
-import type { GatePeriod } from '../draw/gatePlot.ts';
+import type { GatePeriod } from './bench.ts';
 
 const STEPS = 240;
 
