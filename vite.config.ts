@@ -110,6 +110,7 @@ export default defineConfig({
           exclude: ['test/page/**'],
           testTimeout: 30_000,
           execArgv: ['--expose-gc'],
+          server: { deps: { inline: ['ebur128-wasm'] } },
         },
       },
       {
