@@ -111,6 +111,7 @@ export default defineConfig({
           exclude: ['test/page/**'],
           testTimeout: 30_000,
           execArgv: ['--expose-gc'],
+          server: { deps: { inline: ['ebur128-wasm'] } },
         },
       },
       {
