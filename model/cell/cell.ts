@@ -45,7 +45,7 @@ const CLAMP_A = 6;
 const CLAMP_NVT_V = 7;
 const BARRIER_V = 8;
 export const DEVICE_VALUES = 9;
-const NO_NOISE = new Float64Array(0);
+const NOTHING = new Float64Array(0);
 
 /** Newton's last step, V. While playing it leaves under 1e-10 V, 0.1 pA in 1 kΩ; in readings rounding only. */
 const PLAYING_ENOUGH_V = 1e-6;
@@ -232,7 +232,7 @@ export function arrive(cell: Cell): void {
 
 /**
  * Advances over the samples `from` to `to` of `signal`, V at the step rate: the audio in, the output node in its place. `control` in V;
- * `noise` as `noise.ts` fills it, or left out.
+ * `noise` as `noise.ts` fills it, `kinks` as kernels/kinks.ts marks them, or left out.
  */
 export function advanceCell(
   cell: Cell,
@@ -240,9 +240,10 @@ export function advanceCell(
   control: Float64Array,
   from: number,
   to: number,
-  noise: Float64Array = NO_NOISE,
+  noise: Float64Array = NOTHING,
+  kinks: Float64Array = NOTHING,
 ): void {
-  cell.kernel(cell.coefficients, cell.numbers.table, noise, cell.state, signal, control, signal, from, to);
+  cell.kernel(cell.coefficients, cell.numbers.table, noise, kinks, cell.state, signal, control, signal, from, to);
 }
 
 /** Gate-source voltage of the last sample, V, with the sign of the part's channel. */
@@ -405,7 +406,7 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   rest.audio[0] = audioV;
   rest.control[0] = controlV;
   const { law, table } = cell.numbers;
-  KERNELS[law]['0  x'](rest.coefficients, table, NO_NOISE, rest.state, rest.audio, rest.control, rest.output, 0, 1);
+  KERNELS[law]['0  x'](rest.coefficients, table, NOTHING, NOTHING, rest.state, rest.audio, rest.control, rest.output, 0, 1);
   const reverseA = deviceValue(cell, REVERSE_A);
   const channelA = rest.state[L.CHANNEL_A];
   const sourceA = rest.state[L.JUNCTION_S] - reverseA - deviceValue(cell, CLAMP_A);

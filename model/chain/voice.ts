@@ -8,8 +8,10 @@ import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
 import { createAmplifierState, GAIN, processAmplifier } from './amplifier.ts';
+import { createKinks } from '../cell/kernels/kinks.ts';
 import type { ChainNumbers } from './compile.ts';
 import { advanceSlice, createDrive, type Drive } from './drive.ts';
+import { createSoftener, type Softener, soften } from './kinks.ts';
 import { createOversampler, lower, type Oversampler, raise } from './oversample.ts';
 
 /** Lower-rate samples that a voice takes at a time. */
@@ -41,6 +43,18 @@ function levelsOf(numbers: ChainNumbers): Float64Array {
   return Float64Array.of(numbers.fullScaleV, (numbers.idealAmplifier ? numbers.amplifier[GAIN] : 1) / numbers.fullScaleV);
 }
 
+function standing(values: Float64Array): Levels {
+  return { from: Float64Array.from(values), to: Float64Array.from(values), done: 0, total: 0 };
+}
+
+/** Sets out from where the levels are now, to arrive after `total` samples. */
+function setOut(levels: Levels, to: Float64Array, total: number): void {
+  for (let index = 0; index < to.length; index++) levels.from[index] = levelAt(levels, index, -1);
+  levels.to.set(to);
+  levels.done = 0;
+  levels.total = total;
+}
+
 /** A level at sample `i` of the block. */
 function levelAt({ from, to, done, total }: Levels, index: number, i: number): number {
   const at = done + i + 1;
@@ -52,6 +66,9 @@ export interface Lane {
   readonly cell: Cell;
   readonly oversampler: Oversampler;
   readonly amplifier: Float64Array;
+  /** Where the output bends, and what softens that; nothing without oversampling. */
+  readonly kinks: Float64Array;
+  readonly softener: Softener;
   readonly values: Moving;
   readonly noise: Float64Array;
   readonly gaussian: GaussianSource;
@@ -69,7 +86,9 @@ export interface Voice {
   /** Full scale, V, and samples for a volt: they move at the lower rate. */
   readonly levels: Levels;
   readonly control: Moving;
-  readonly amplifier: Moving;
+  /** The amplifier's values, which move at the upper rate. */
+  readonly amplifier: Levels;
+  readonly amplifierNow: Float64Array;
   /** Slices done and to do of the ramp; upper-rate samples done of the slice. */
   readonly ramp: { done: number; total: number; inSlice: number };
   /**
@@ -99,6 +118,8 @@ export function createVoice(numbers: ChainNumbers): Voice {
       cell,
       oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK),
       amplifier: createAmplifierState(),
+      kinks: oversampling > 1 ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
+      softener: createSoftener(),
       values: moving(Float64Array.from(cell.values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
@@ -112,9 +133,10 @@ export function createVoice(numbers: ChainNumbers): Voice {
     lanes,
     drive: createDrive(numbers.control, control.now, lanes, LONGEST_BLOCK * oversampling),
     external: numbers.control.kind === 'external' ? createOversampler(oversampling, filters, LONGEST_BLOCK) : null,
-    levels: { from: levelsOf(numbers), to: levelsOf(numbers), done: 0, total: 0 },
+    levels: standing(levelsOf(numbers)),
     control,
-    amplifier: moving(Float64Array.from(numbers.amplifier)),
+    amplifier: standing(numbers.amplifier),
+    amplifierNow: Float64Array.from(numbers.amplifier),
     ramp: { done: 0, total: 0, inSlice: 0 },
     quiet: { cell: quietCell, signal: new Float64Array(LONGEST_BLOCK), control: new Float64Array(LONGEST_BLOCK), feedthroughPeakV: 0 },
   };
@@ -122,13 +144,9 @@ export function createVoice(numbers: ChainNumbers): Voice {
 
 /** Starts moving to the values of `numbers`, which have the voice's shape, from wherever they are now. */
 export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
-  const { levels } = voice;
-  for (let index = 0; index < levels.from.length; index++) levels.from[index] = levelAt(levels, index, -1);
-  levels.to.set(levelsOf(numbers));
-  levels.done = 0;
-  levels.total = Math.round(RAMP_SEC * numbers.sampleRateHz);
+  setOut(voice.levels, levelsOf(numbers), Math.round(RAMP_SEC * numbers.sampleRateHz));
+  setOut(voice.amplifier, numbers.amplifier, Math.round(RAMP_SEC * numbers.sampleRateHz * numbers.oversampling));
   retarget(voice.control, numbers.control.values);
-  retarget(voice.amplifier, numbers.amplifier);
   numbers.cells.forEach((cell, channel) => {
     retarget(voice.lanes[channel].values, cell.values);
   });
@@ -189,6 +207,10 @@ export function processVoice(
       putAtRest(voice, lanes[channel]);
       sound = false;
     }
+    if (numbers.oversampling > 1) soften(lanes[channel].softener, top(lanes[channel]), lanes[channel].kinks, upperCount);
+  }
+  amplify(voice, upperCount);
+  for (let channel = 0; channel < lanes.length; channel++) {
     const low = lower(lanes[channel].oversampler, count);
     for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * levelAt(levels, PER_V, i);
   }
@@ -196,7 +218,12 @@ export function processVoice(
   return sound;
 }
 
-/** Control, cells and amplifiers; sample by sample while values move. */
+function top(lane: Lane): Float64Array {
+  const { buffers } = lane.oversampler;
+  return buffers[buffers.length - 1];
+}
+
+/** Control and cells; sample by sample while values move. */
 function advanceAll(voice: Voice, upperCount: number): void {
   const { lanes, ramp, numbers } = voice;
   let at = 0;
@@ -217,7 +244,6 @@ function advanceAll(voice: Voice, upperCount: number): void {
 function beginSlice(voice: Voice, fraction: number): void {
   const { updateEvery } = voice.numbers;
   aim(voice.control, fraction, updateEvery);
-  aim(voice.amplifier, fraction, updateEvery);
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const { cell, values } = voice.lanes[channel];
     aim(values, fraction, updateEvery);
@@ -228,13 +254,11 @@ function beginSlice(voice: Voice, fraction: number): void {
 
 function stepSlice(voice: Voice): void {
   step(voice.control);
-  step(voice.amplifier);
   for (let channel = 0; channel < voice.lanes.length; channel++) approach(voice.lanes[channel].cell);
 }
 
 function endSlice(voice: Voice): void {
   voice.control.now.set(voice.control.aim);
-  voice.amplifier.now.set(voice.amplifier.aim);
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const { cell, values } = voice.lanes[channel];
     values.now.set(values.aim);
@@ -244,7 +268,7 @@ function endSlice(voice: Voice): void {
   voice.ramp.done += 1;
 }
 
-/** Notes the cells' peaks, and amplifies: a real amplifier works at the upper rate, an ideal one is a gain, applied at the lower. */
+/** Notes the cells' peaks. */
 function finish(voice: Voice, from: number, to: number): void {
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const lane = voice.lanes[channel];
@@ -255,13 +279,29 @@ function finish(voice: Voice, from: number, to: number): void {
       if (!(size < RUNAWAY_V)) lane.lost = true;
       if (size > lane.outputPeakV) lane.outputPeakV = size;
     }
-    if (!voice.numbers.idealAmplifier) processAmplifier(voice.amplifier.now, lane.amplifier, signal, from, to);
   }
+}
+
+/** A real amplifier works at the upper rate; an ideal one is a gain, applied at the lower. */
+function amplify({ numbers, lanes, amplifier, amplifierNow }: Voice, upperCount: number): void {
+  if (numbers.idealAmplifier) return;
+  const moving = Math.max(0, Math.min(upperCount, amplifier.total - amplifier.done));
+  for (let channel = 0; channel < lanes.length; channel++) {
+    const lane = lanes[channel];
+    const signal = lane.oversampler.buffers[lane.oversampler.buffers.length - 1];
+    for (let i = 0; i < moving; i++) {
+      for (let index = 0; index < amplifierNow.length; index++) amplifierNow[index] = levelAt(amplifier, index, i);
+      processAmplifier(amplifierNow, lane.amplifier, signal, i, i + 1);
+    }
+    processAmplifier(amplifier.to, lane.amplifier, signal, moving, upperCount);
+  }
+  amplifier.done = Math.min(amplifier.done + upperCount, amplifier.total);
 }
 
 /** The cell at its operating point, the block silent. */
 function putAtRest(voice: Voice, lane: Lane): void {
-  lane.oversampler.buffers[lane.oversampler.buffers.length - 1].fill(0);
+  top(lane).fill(0);
+  if (lane.kinks.length > 0) lane.kinks[0] = 0;
   lane.outputPeakV = 0;
   lane.amplifier.fill(0);
   lane.cell.state.fill(0);

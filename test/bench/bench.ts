@@ -55,7 +55,7 @@ function kernelRows(state: 'ohmic' | 'conducting', bars: { native: number; byHan
   const handState = cell.state.slice();
   const ns = { native: Number.POSITIVE_INFINITY, any: Number.POSITIVE_INFINITY, byHand: Number.POSITIVE_INFINITY };
   for (let turn = 0; turn < 8; turn++) {
-    const any = best(100, () => kernel(coefficients, cell.numbers.table, silent, cell.state, audio, control, output, 0, SAMPLES));
+    const any = best(100, () => kernel(coefficients, cell.numbers.table, silent, silent, cell.state, audio, control, output, 0, SAMPLES));
     const byHand = best(100, () => shuntByHand(coefficients, handState, audio, control, output, SAMPLES));
     ns.any = Math.min(ns.any, (any * 1e6) / SAMPLES);
     ns.byHand = Math.min(ns.byHand, (byHand * 1e6) / SAMPLES);

@@ -48,12 +48,15 @@ static void searchPorts(const double *c, const double *t, int device, int aI, in
   fprintf(stderr, "the benchmark's signal must not need the search\\n");
   exit(1);
 }
+static void markKink(const double *c, const double *t, int device, int aI, int bI, double *e, int i, double *s, int n) {
+  (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)e; (void)i; (void)s; (void)n;
+}
 static void searched(const double *c, const double *t, int device, int aI, int bI, double a, double b, double *out, int at) {
   (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)a; (void)b;
   out[at] = 0;
 }
-static void evaluate(const double *c, const double *t, int device, double v, double *out, int at) {
-  (void)c; (void)t; (void)device; (void)v; (void)out; (void)at;
+static void evaluate(const double *c, const double *t, int device, double *s, int from, int at) {
+  (void)c; (void)t; (void)device; (void)s; (void)from; (void)at;
 }
 static void bent(const double *c, const double *t, int device, int aI, int bI, double a, double b, double I, double *out, int at) {
   (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)a; (void)b;
@@ -70,7 +73,7 @@ int main(int argc, char **argv) {
   for (int run = 0; run < 60; run++) {
     struct timespec t0, t1;
     clock_gettime(CLOCK_MONOTONIC, &t0);
-    ${kernelName('square', shape)}(c, s, 0, s, u, v, y, 0, ${sampleCount});
+    ${kernelName('square', shape)}(c, s, 0, 0, s, u, v, y, 0, ${sampleCount});
     clock_gettime(CLOCK_MONOTONIC, &t1);
     double ns = ((t1.tv_sec - t0.tv_sec) * 1e9 + (t1.tv_nsec - t0.tv_nsec)) / ${sampleCount};
     if (ns < best) best = ns;

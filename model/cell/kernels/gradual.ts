@@ -2,14 +2,15 @@
  * Kernels of the gradual law by number of trapezoidal and of stiff states: written from source.ts by `npm run kernels`, where the method is
  * explained. Not to be edited.
  *
- * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty) and `s` state as in
- * layout.ts, `audio` and `control` in V, `output` in V.
+ * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty), `e` kinks (or empty) and
+ * `s` state as in layout.ts, `audio` and `control` in V, `output` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { evaluate, searched } from './channel.ts';
 import type { Conductor, Kernel } from './kernel.ts';
 import { addGraded, keepCharges } from './graded.ts';
+import { markKink } from './kinks.ts';
 import { searchPorts } from './ports.ts';
 import { exp } from '../../device/math.ts';
 
@@ -72,8 +73,8 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
   searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
 }
 
-function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -92,11 +93,13 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let a = (a0 * u + a1 * v) + a2;
     let b = (b0 * u + b1 * v) + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 18, vs, s, 9); evaluate(c, t, 18, vd, s, 11);
+      s[5] = vs; s[6] = vd;
+      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
       J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
@@ -138,14 +141,18 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     }
     I += J;
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = sign * (a3 - b3);
+      markKink(c, t, 18, 3, 7, e, i, s, 0);
+    }
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -177,6 +184,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[32] * S0 + c[33] * D0;
@@ -185,7 +193,8 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 34, vs, s, 10); evaluate(c, t, 34, vd, s, 12);
+      s[6] = vs; s[7] = vd;
+      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
       J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
@@ -234,6 +243,10 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       x0 += c[24] * S + c[25] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = sign * (a4 - b4);
+      markKink(c, t, 34, 4, 9, e, i, s, 1);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -243,8 +256,8 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
-function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -292,6 +305,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
     let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * u0) + (m1_3 * v0 + m1_4 * I0);
     if (S0 != 0 || D0 != 0) {
@@ -302,7 +316,8 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 11); evaluate(c, t, 54, vd, s, 13);
+      s[7] = vs; s[8] = vd;
+      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -354,6 +369,10 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       x1 += c[36] * S + c[37] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 2);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -364,8 +383,8 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -433,6 +452,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
     let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * x2) + ((m1_3 * u0 + m1_4 * v0) + m1_5 * I0);
     let r2 = ((m2_0 * x0 + m2_1 * x1) + m2_2 * x2) + ((m2_3 * u0 + m2_4 * v0) + m2_5 * I0);
@@ -445,7 +465,8 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 12); evaluate(c, t, 78, vd, s, 14);
+      s[8] = vs; s[9] = vd;
+      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -500,6 +521,10 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       x2 += c[50] * S + c[51] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = sign * (a6 - b6);
+      markKink(c, t, 78, 6, 13, e, i, s, 3);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -511,8 +536,8 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -604,6 +629,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
     let r1 = ((m1_0 * x0 + m1_1 * x1) + (m1_2 * x2 + m1_3 * x3)) + ((m1_4 * u0 + m1_5 * v0) + m1_6 * I0);
     let r2 = ((m2_0 * x0 + m2_1 * x1) + (m2_2 * x2 + m2_3 * x3)) + ((m2_4 * u0 + m2_5 * v0) + m2_6 * I0);
@@ -618,7 +644,8 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 13); evaluate(c, t, 106, vd, s, 15);
+      s[9] = vs; s[10] = vd;
+      evaluate(c, t, 106, s, 9, 13); evaluate(c, t, 106, s, 10, 15);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[14] + s[16]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -676,6 +703,10 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       x3 += c[66] * S + c[67] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a7 - b7);
+      markKink(c, t, 106, 7, 15, e, i, s, 4);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -688,8 +719,8 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function gradual0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -716,13 +747,15 @@ function gradual0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
     let r0 = (m0_0 * p0 + m0_1 * u0) + m0_2 * v0;
     let a = (a0 * r0 + a1 * u) + (a2 * v + a3);
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 34, vs, s, 13); evaluate(c, t, 34, vd, s, 15);
+      s[9] = vs; s[10] = vd;
+      evaluate(c, t, 34, s, 9, 13); evaluate(c, t, 34, s, 10, 15);
       J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[14] + s[16]));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
@@ -766,6 +799,10 @@ function gradual0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     g0 = f0; f0 = e0; e0 = x0;
     x0 = sign * (vs - vd);
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a4 - b4);
+      markKink(c, t, 34, 4, 9, e, i, s, 4);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -776,8 +813,8 @@ function gradual0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -819,6 +856,7 @@ function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
     let r1 = (m1_0 * x0 + m1_1 * p1) + (m1_2 * u0 + m1_3 * v0);
@@ -829,7 +867,8 @@ function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 14); evaluate(c, t, 54, vd, s, 16);
+      s[10] = vs; s[11] = vd;
+      evaluate(c, t, 54, s, 10, 14); evaluate(c, t, 54, s, 11, 16);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[15] + s[17]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -880,6 +919,10 @@ function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
       x0 += c[34] * S + c[35] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[34] = qs; s[35] = qd; s[10] = vs; s[11] = vd; s[36] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 5);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -891,8 +934,8 @@ function gradual1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
-function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -928,6 +971,7 @@ function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     let r0 = (m0_0 * p0 + m0_1 * p1) + (m0_2 * u0 + m0_3 * v0);
@@ -936,7 +980,8 @@ function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -982,6 +1027,10 @@ function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     x0 = sign * (vs - vd);
     x1 = sign * (vs + off);
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 8);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -994,8 +1043,8 @@ function gradual0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
-function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1049,6 +1098,7 @@ function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
@@ -1061,7 +1111,8 @@ function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -1114,6 +1165,10 @@ function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       x0 += c[46] * S + c[47] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      markKink(c, t, 78, 6, 13, e, i, s, 9);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1127,8 +1182,8 @@ function gradual1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
-function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1204,6 +1259,7 @@ function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
@@ -1218,7 +1274,8 @@ function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 19); evaluate(c, t, 106, vd, s, 21);
+      s[15] = vs; s[16] = vd;
+      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -1274,6 +1331,10 @@ function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       x1 += c[62] * S + c[63] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = sign * (a7 - b7);
+      markKink(c, t, 106, 7, 15, e, i, s, 10);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1288,8 +1349,8 @@ function gradual2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
-function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1325,6 +1386,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     let r0 = (m0_0 * p0 + m0_1 * p1) + (m0_2 * u0 + m0_3 * v0);
@@ -1333,7 +1395,8 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -1379,6 +1442,10 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     x0 = sign * (vs + off);
     x1 = sign * (vd + off);
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 8);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1391,8 +1458,8 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
-function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1446,6 +1513,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
@@ -1458,7 +1526,8 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -1511,6 +1580,10 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       x0 += c[46] * S + c[47] * D;
     }
     output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      markKink(c, t, 78, 6, 13, e, i, s, 9);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1524,8 +1597,8 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
-function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1548,11 +1621,13 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let a = (a0 * u + a1 * v) + a2;
     let b = (b0 * u + b1 * v) + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 18, vs, s, 9); evaluate(c, t, 18, vd, s, 11);
+      s[5] = vs; s[6] = vd;
+      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
       J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
@@ -1601,14 +1676,18 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       y += c[16] * S + c[17] * D;
     }
     output[i] = y + (y0 * u + y1 * v) + y2 + y3 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = y3;
+      markKink(c, t, 18, 3, 7, e, i, s, 0);
+    }
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1645,6 +1724,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[32] * S0 + c[33] * D0;
@@ -1653,7 +1733,8 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 34, vs, s, 10); evaluate(c, t, 34, vd, s, 12);
+      s[6] = vs; s[7] = vd;
+      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
       J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
@@ -1705,6 +1786,10 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       y += c[26] * S + c[27] * D;
     }
     output[i] = y + (y0 * x0 + y1 * u) + (y2 * v + y3) + y4 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = y4;
+      markKink(c, t, 34, 4, 9, e, i, s, 1);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1714,8 +1799,8 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
-function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1769,6 +1854,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
     let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * u0) + (m1_3 * v0 + m1_4 * I0);
     if (S0 != 0 || D0 != 0) {
@@ -1779,7 +1865,8 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 11); evaluate(c, t, 54, vd, s, 13);
+      s[7] = vs; s[8] = vd;
+      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -1834,6 +1921,10 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       y += c[38] * S + c[39] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = y5;
+      markKink(c, t, 54, 5, 11, e, i, s, 2);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1844,8 +1935,8 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1920,6 +2011,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
     let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * x2) + ((m1_3 * u0 + m1_4 * v0) + m1_5 * I0);
     let r2 = ((m2_0 * x0 + m2_1 * x1) + m2_2 * x2) + ((m2_3 * u0 + m2_4 * v0) + m2_5 * I0);
@@ -1932,7 +2024,8 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 12); evaluate(c, t, 78, vd, s, 14);
+      s[8] = vs; s[9] = vd;
+      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -1990,6 +2083,10 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
       y += c[52] * S + c[53] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = y6;
+      markKink(c, t, 78, 6, 13, e, i, s, 3);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2001,8 +2098,8 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2056,6 +2153,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     let r0 = (m0_0 * p0 + m0_1 * p1) + (m0_2 * u0 + m0_3 * v0);
@@ -2064,7 +2162,8 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -2121,6 +2220,10 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       y += c[38] * S + c[39] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = y5;
+      markKink(c, t, 54, 5, 11, e, i, s, 8);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2133,8 +2236,8 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
-function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2209,6 +2312,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
@@ -2221,7 +2325,8 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -2281,6 +2386,10 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       y += c[52] * S + c[53] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = y6;
+      markKink(c, t, 78, 6, 13, e, i, s, 9);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2294,8 +2403,8 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
-function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2395,6 +2504,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
@@ -2409,7 +2519,8 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 19); evaluate(c, t, 106, vd, s, 21);
+      s[15] = vs; s[16] = vd;
+      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -2472,6 +2583,10 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       y += c[68] * S + c[69] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = y7;
+      markKink(c, t, 106, 7, 15, e, i, s, 10);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2486,8 +2601,8 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
-function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2616,6 +2731,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
     const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
     let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * x4 + m0_5 * u0) + (m0_6 * v0 + m0_7 * I0));
@@ -2632,7 +2748,8 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 138, vs, s, 20); evaluate(c, t, 138, vd, s, 22);
+      s[16] = vs; s[17] = vd;
+      evaluate(c, t, 138, s, 16, 20); evaluate(c, t, 138, s, 17, 22);
       J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[21] + s[23]));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
@@ -2698,6 +2815,10 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
       y += c[86] * S + c[87] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[40] = qs; s[41] = qd; s[16] = vs; s[17] = vd; s[42] = y8;
+      markKink(c, t, 138, 8, 17, e, i, s, 11);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2713,8 +2834,8 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
-function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2814,6 +2935,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
   let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
@@ -2828,7 +2950,8 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 22); evaluate(c, t, 106, vd, s, 24);
+      s[18] = vs; s[19] = vd;
+      evaluate(c, t, 106, s, 18, 22); evaluate(c, t, 106, s, 19, 24);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[23] + s[25]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -2892,6 +3015,10 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
       y += c[68] * S + c[69] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[42] = qs; s[43] = qd; s[18] = vs; s[19] = vd; s[44] = y7;
+      markKink(c, t, 106, 7, 15, e, i, s, 13);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2907,8 +3034,8 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
-function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -3037,6 +3164,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
   let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
     const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
@@ -3053,7 +3181,8 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 138, vs, s, 23); evaluate(c, t, 138, vd, s, 25);
+      s[19] = vs; s[20] = vd;
+      evaluate(c, t, 138, s, 19, 23); evaluate(c, t, 138, s, 20, 25);
       J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[24] + s[26]));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
@@ -3120,6 +3249,10 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Fl
       y += c[86] * S + c[87] * D;
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[43] = qs; s[44] = qd; s[19] = vs; s[20] = vd; s[45] = y8;
+      markKink(c, t, 138, 8, 17, e, i, s, 14);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }

@@ -3,6 +3,7 @@ export type Kernel = (
   c: Float64Array,
   t: Float64Array,
   w: Float64Array,
+  e: Float64Array,
   s: Float64Array,
   audio: Float64Array,
   control: Float64Array,

@@ -104,4 +104,8 @@ export const PORT_D = 15;
 /** Of each junction: four past charges above C0·v, over C0, then working memory. */
 export const CHARGES_S = 17;
 export const CHARGES_D = 23;
-export const STATE_SLOTS = 29;
+/** Overdrives of the sample before, and the output's weight of the channel current, for kinks.ts. */
+export const BEFORE_S = 29;
+export const BEFORE_D = 30;
+export const PER_A = 31;
+export const STATE_SLOTS = 32;

@@ -37,8 +37,8 @@ function currents(c: Float64Array, t: Float64Array, device: number, s: Float64Ar
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
   const lambda = c[device + L.LAMBDA];
-  evaluate(c, t, device, vs, s, n + L.TERM_S);
-  evaluate(c, t, device, vd, s, n + L.TERM_D);
+  evaluate(c, t, device, s, n + L.OVERDRIVE_S, n + L.TERM_S);
+  evaluate(c, t, device, s, n + L.OVERDRIVE_D, n + L.TERM_D);
   s[n + L.CHANNEL_A] = s[n + L.TERM_S] * (1 + lambda * Math.max(-vd, 0)) - s[n + L.TERM_D] * (1 + lambda * Math.max(-vs, 0));
   gatePorts(c, device, s, n, vs, vd);
   s[n + L.JUNCTION_S] = s[n + L.PORT_S];

@@ -2,8 +2,8 @@
  * Kernels of the smooth law by number of trapezoidal and of stiff states: written from source.ts by `npm run kernels`, where the method is
  * explained. Not to be edited.
  *
- * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty) and `s` state as in
- * layout.ts, `audio` and `control` in V, `output` in V.
+ * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty), `e` kinks (or empty) and
+ * `s` state as in layout.ts, `audio` and `control` in V, `output` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
@@ -34,7 +34,7 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
         const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
         Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
         fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-      } else { evaluate(c, t, device, vs, s, n + 9); Fs = s[n + 9]; fs = s[n + 9 + 1]; }
+      } else { s[n + 9] = vs; evaluate(c, t, device, s, n + 9, n + 9); Fs = s[n + 9]; fs = s[n + 9 + 1]; }
     }
     if (vd * inverseWidth > -40) {
       const z = (vd * inverseWidth + 40) * 8;
@@ -42,7 +42,7 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
         const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
         Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
         fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-      } else { evaluate(c, t, device, vd, s, n + 9); Fd = s[n + 9]; fd = s[n + 9 + 1]; }
+      } else { s[n + 9] = vd; evaluate(c, t, device, s, n + 9, n + 9); Fd = s[n + 9]; fd = s[n + 9 + 1]; }
     }
     if (lambda != 0) {
       const past = lambda * Math.max(-vd, 0), reversed = lambda * Math.max(-vs, 0), term = Fs;
@@ -75,8 +75,8 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
   searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
 }
 
-function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -100,7 +100,8 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = (b0 * u + b1 * v) + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 18, vs, s, 9); evaluate(c, t, 18, vd, s, 11);
+      s[5] = vs; s[6] = vd;
+      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
       J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
@@ -116,7 +117,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 18, vs, s, 9); Fs = s[9]; fs = s[9 + 1]; }
+        } else { s[9] = vs; evaluate(c, t, 18, s, 9, 9); Fs = s[9]; fs = s[9 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -124,7 +125,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 18, vd, s, 9); Fd = s[9]; fd = s[9 + 1]; }
+        } else { s[9] = vd; evaluate(c, t, 18, s, 9, 9); Fd = s[9]; fd = s[9 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a3 * fs - b3 * fd - 1;
       if (lambda != 0) {
@@ -150,8 +151,8 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -192,7 +193,8 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 34, vs, s, 10); evaluate(c, t, 34, vd, s, 12);
+      s[6] = vs; s[7] = vd;
+      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
       J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
@@ -208,7 +210,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 34, vs, s, 10); Fs = s[10]; fs = s[10 + 1]; }
+        } else { s[10] = vs; evaluate(c, t, 34, s, 10, 10); Fs = s[10]; fs = s[10 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -216,7 +218,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 34, vd, s, 10); Fd = s[10]; fd = s[10 + 1]; }
+        } else { s[10] = vd; evaluate(c, t, 34, s, 10, 10); Fd = s[10]; fd = s[10 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a4 * fs - b4 * fd - 1;
       if (lambda != 0) {
@@ -252,8 +254,8 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
-function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -312,7 +314,8 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 11); evaluate(c, t, 54, vd, s, 13);
+      s[7] = vs; s[8] = vd;
+      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -328,7 +331,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vs, s, 11); Fs = s[11]; fs = s[11 + 1]; }
+        } else { s[11] = vs; evaluate(c, t, 54, s, 11, 11); Fs = s[11]; fs = s[11 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -336,7 +339,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vd, s, 11); Fd = s[11]; fd = s[11 + 1]; }
+        } else { s[11] = vd; evaluate(c, t, 54, s, 11, 11); Fd = s[11]; fd = s[11 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
       if (lambda != 0) {
@@ -376,8 +379,8 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -458,7 +461,8 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 12); evaluate(c, t, 78, vd, s, 14);
+      s[8] = vs; s[9] = vd;
+      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -474,7 +478,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vs, s, 12); Fs = s[12]; fs = s[12 + 1]; }
+        } else { s[12] = vs; evaluate(c, t, 78, s, 12, 12); Fs = s[12]; fs = s[12 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -482,7 +486,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vd, s, 12); Fd = s[12]; fd = s[12 + 1]; }
+        } else { s[12] = vd; evaluate(c, t, 78, s, 12, 12); Fd = s[12]; fd = s[12 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
       if (lambda != 0) {
@@ -526,8 +530,8 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -634,7 +638,8 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 13); evaluate(c, t, 106, vd, s, 15);
+      s[9] = vs; s[10] = vd;
+      evaluate(c, t, 106, s, 9, 13); evaluate(c, t, 106, s, 10, 15);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[14] + s[16]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -650,7 +655,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vs, s, 13); Fs = s[13]; fs = s[13 + 1]; }
+        } else { s[13] = vs; evaluate(c, t, 106, s, 13, 13); Fs = s[13]; fs = s[13 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -658,7 +663,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vd, s, 13); Fd = s[13]; fd = s[13 + 1]; }
+        } else { s[13] = vd; evaluate(c, t, 106, s, 13, 13); Fd = s[13]; fd = s[13 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
       if (lambda != 0) {
@@ -706,8 +711,8 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -741,7 +746,8 @@ function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 34, vs, s, 13); evaluate(c, t, 34, vd, s, 15);
+      s[9] = vs; s[10] = vd;
+      evaluate(c, t, 34, s, 9, 13); evaluate(c, t, 34, s, 10, 15);
       J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[14] + s[16]));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
@@ -757,7 +763,7 @@ function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 34, vs, s, 13); Fs = s[13]; fs = s[13 + 1]; }
+        } else { s[13] = vs; evaluate(c, t, 34, s, 13, 13); Fs = s[13]; fs = s[13 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -765,7 +771,7 @@ function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 34, vd, s, 13); Fd = s[13]; fd = s[13 + 1]; }
+        } else { s[13] = vd; evaluate(c, t, 34, s, 13, 13); Fd = s[13]; fd = s[13 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a4 * fs - b4 * fd - 1;
       if (lambda != 0) {
@@ -797,8 +803,8 @@ function smooth0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -851,7 +857,8 @@ function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 14); evaluate(c, t, 54, vd, s, 16);
+      s[10] = vs; s[11] = vd;
+      evaluate(c, t, 54, s, 10, 14); evaluate(c, t, 54, s, 11, 16);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[15] + s[17]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -867,7 +874,7 @@ function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vs, s, 14); Fs = s[14]; fs = s[14 + 1]; }
+        } else { s[14] = vs; evaluate(c, t, 54, s, 14, 14); Fs = s[14]; fs = s[14 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -875,7 +882,7 @@ function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vd, s, 14); Fd = s[14]; fd = s[14 + 1]; }
+        } else { s[14] = vd; evaluate(c, t, 54, s, 14, 14); Fd = s[14]; fd = s[14 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
       if (lambda != 0) {
@@ -915,8 +922,8 @@ function smooth1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
-function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -961,7 +968,8 @@ function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -977,7 +985,7 @@ function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vs, s, 17); Fs = s[17]; fs = s[17 + 1]; }
+        } else { s[17] = vs; evaluate(c, t, 54, s, 17, 17); Fs = s[17]; fs = s[17 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -985,7 +993,7 @@ function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vd, s, 17); Fd = s[17]; fd = s[17 + 1]; }
+        } else { s[17] = vd; evaluate(c, t, 54, s, 17, 17); Fd = s[17]; fd = s[17 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
       if (lambda != 0) {
@@ -1021,8 +1029,8 @@ function smooth0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
-function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1089,7 +1097,8 @@ function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -1105,7 +1114,7 @@ function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vs, s, 18); Fs = s[18]; fs = s[18 + 1]; }
+        } else { s[18] = vs; evaluate(c, t, 78, s, 18, 18); Fs = s[18]; fs = s[18 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -1113,7 +1122,7 @@ function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vd, s, 18); Fd = s[18]; fd = s[18 + 1]; }
+        } else { s[18] = vd; evaluate(c, t, 78, s, 18, 18); Fd = s[18]; fd = s[18 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
       if (lambda != 0) {
@@ -1157,8 +1166,8 @@ function smooth1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
-function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1249,7 +1258,8 @@ function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 19); evaluate(c, t, 106, vd, s, 21);
+      s[15] = vs; s[16] = vd;
+      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -1265,7 +1275,7 @@ function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vs, s, 19); Fs = s[19]; fs = s[19 + 1]; }
+        } else { s[19] = vs; evaluate(c, t, 106, s, 19, 19); Fs = s[19]; fs = s[19 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -1273,7 +1283,7 @@ function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vd, s, 19); Fd = s[19]; fd = s[19 + 1]; }
+        } else { s[19] = vd; evaluate(c, t, 106, s, 19, 19); Fd = s[19]; fd = s[19 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
       if (lambda != 0) {
@@ -1321,8 +1331,8 @@ function smooth2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
-function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1367,7 +1377,8 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -1383,7 +1394,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vs, s, 17); Fs = s[17]; fs = s[17 + 1]; }
+        } else { s[17] = vs; evaluate(c, t, 54, s, 17, 17); Fs = s[17]; fs = s[17 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -1391,7 +1402,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vd, s, 17); Fd = s[17]; fd = s[17 + 1]; }
+        } else { s[17] = vd; evaluate(c, t, 54, s, 17, 17); Fd = s[17]; fd = s[17 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
       if (lambda != 0) {
@@ -1427,8 +1438,8 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
-function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1495,7 +1506,8 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -1511,7 +1523,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vs, s, 18); Fs = s[18]; fs = s[18 + 1]; }
+        } else { s[18] = vs; evaluate(c, t, 78, s, 18, 18); Fs = s[18]; fs = s[18 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -1519,7 +1531,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vd, s, 18); Fd = s[18]; fd = s[18 + 1]; }
+        } else { s[18] = vd; evaluate(c, t, 78, s, 18, 18); Fd = s[18]; fd = s[18 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
       if (lambda != 0) {
@@ -1563,8 +1575,8 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
-function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1592,7 +1604,8 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = (b0 * u + b1 * v) + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 18, vs, s, 9); evaluate(c, t, 18, vd, s, 11);
+      s[5] = vs; s[6] = vd;
+      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
       J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
@@ -1608,7 +1621,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 18, vs, s, 9); Fs = s[9]; fs = s[9 + 1]; }
+        } else { s[9] = vs; evaluate(c, t, 18, s, 9, 9); Fs = s[9]; fs = s[9 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -1616,7 +1629,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 18, vd, s, 9); Fd = s[9]; fd = s[9 + 1]; }
+        } else { s[9] = vd; evaluate(c, t, 18, s, 9, 9); Fd = s[9]; fd = s[9 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a3 * fs - b3 * fd - 1;
       if (lambda != 0) {
@@ -1649,8 +1662,8 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1696,7 +1709,8 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 34, vs, s, 10); evaluate(c, t, 34, vd, s, 12);
+      s[6] = vs; s[7] = vd;
+      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
       J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
@@ -1712,7 +1726,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 34, vs, s, 10); Fs = s[10]; fs = s[10 + 1]; }
+        } else { s[10] = vs; evaluate(c, t, 34, s, 10, 10); Fs = s[10]; fs = s[10 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -1720,7 +1734,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 34, vd, s, 10); Fd = s[10]; fd = s[10 + 1]; }
+        } else { s[10] = vd; evaluate(c, t, 34, s, 10, 10); Fd = s[10]; fd = s[10 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a4 * fs - b4 * fd - 1;
       if (lambda != 0) {
@@ -1759,8 +1773,8 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
-function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1825,7 +1839,8 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 11); evaluate(c, t, 54, vd, s, 13);
+      s[7] = vs; s[8] = vd;
+      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -1841,7 +1856,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vs, s, 11); Fs = s[11]; fs = s[11 + 1]; }
+        } else { s[11] = vs; evaluate(c, t, 54, s, 11, 11); Fs = s[11]; fs = s[11 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -1849,7 +1864,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vd, s, 11); Fd = s[11]; fd = s[11 + 1]; }
+        } else { s[11] = vd; evaluate(c, t, 54, s, 11, 11); Fd = s[11]; fd = s[11 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
       if (lambda != 0) {
@@ -1892,8 +1907,8 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1981,7 +1996,8 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 12); evaluate(c, t, 78, vd, s, 14);
+      s[8] = vs; s[9] = vd;
+      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -1997,7 +2013,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vs, s, 12); Fs = s[12]; fs = s[12 + 1]; }
+        } else { s[12] = vs; evaluate(c, t, 78, s, 12, 12); Fs = s[12]; fs = s[12 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -2005,7 +2021,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vd, s, 12); Fd = s[12]; fd = s[12 + 1]; }
+        } else { s[12] = vd; evaluate(c, t, 78, s, 12, 12); Fd = s[12]; fd = s[12 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
       if (lambda != 0) {
@@ -2052,8 +2068,8 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float6
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2116,7 +2132,8 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
@@ -2132,7 +2149,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vs, s, 17); Fs = s[17]; fs = s[17 + 1]; }
+        } else { s[17] = vs; evaluate(c, t, 54, s, 17, 17); Fs = s[17]; fs = s[17 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -2140,7 +2157,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 54, vd, s, 17); Fd = s[17]; fd = s[17 + 1]; }
+        } else { s[17] = vd; evaluate(c, t, 54, s, 17, 17); Fd = s[17]; fd = s[17 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a5 * fs - b5 * fd - 1;
       if (lambda != 0) {
@@ -2187,8 +2204,8 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
-function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2276,7 +2293,8 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
@@ -2292,7 +2310,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vs, s, 18); Fs = s[18]; fs = s[18 + 1]; }
+        } else { s[18] = vs; evaluate(c, t, 78, s, 18, 18); Fs = s[18]; fs = s[18 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -2300,7 +2318,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 78, vd, s, 18); Fd = s[18]; fd = s[18 + 1]; }
+        } else { s[18] = vd; evaluate(c, t, 78, s, 18, 18); Fd = s[18]; fd = s[18 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a6 * fs - b6 * fd - 1;
       if (lambda != 0) {
@@ -2351,8 +2369,8 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
-function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2467,7 +2485,8 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 19); evaluate(c, t, 106, vd, s, 21);
+      s[15] = vs; s[16] = vd;
+      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -2483,7 +2502,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vs, s, 19); Fs = s[19]; fs = s[19 + 1]; }
+        } else { s[19] = vs; evaluate(c, t, 106, s, 19, 19); Fs = s[19]; fs = s[19 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -2491,7 +2510,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vd, s, 19); Fd = s[19]; fd = s[19 + 1]; }
+        } else { s[19] = vd; evaluate(c, t, 106, s, 19, 19); Fd = s[19]; fd = s[19 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
       if (lambda != 0) {
@@ -2546,8 +2565,8 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
-function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2693,7 +2712,8 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 138, vs, s, 20); evaluate(c, t, 138, vd, s, 22);
+      s[16] = vs; s[17] = vd;
+      evaluate(c, t, 138, s, 16, 20); evaluate(c, t, 138, s, 17, 22);
       J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[21] + s[23]));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
@@ -2709,7 +2729,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 138, vs, s, 20); Fs = s[20]; fs = s[20 + 1]; }
+        } else { s[20] = vs; evaluate(c, t, 138, s, 20, 20); Fs = s[20]; fs = s[20 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -2717,7 +2737,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 138, vd, s, 20); Fd = s[20]; fd = s[20 + 1]; }
+        } else { s[20] = vd; evaluate(c, t, 138, s, 20, 20); Fd = s[20]; fd = s[20 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a8 * fs - b8 * fd - 1;
       if (lambda != 0) {
@@ -2776,8 +2796,8 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Floa
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
-function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2892,7 +2912,8 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 22); evaluate(c, t, 106, vd, s, 24);
+      s[18] = vs; s[19] = vd;
+      evaluate(c, t, 106, s, 18, 22); evaluate(c, t, 106, s, 19, 24);
       J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[23] + s[25]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
@@ -2908,7 +2929,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vs, s, 22); Fs = s[22]; fs = s[22 + 1]; }
+        } else { s[22] = vs; evaluate(c, t, 106, s, 22, 22); Fs = s[22]; fs = s[22 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -2916,7 +2937,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 106, vd, s, 22); Fd = s[22]; fd = s[22 + 1]; }
+        } else { s[22] = vd; evaluate(c, t, 106, s, 22, 22); Fd = s[22]; fd = s[22 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a7 * fs - b7 * fd - 1;
       if (lambda != 0) {
@@ -2973,8 +2994,8 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
-function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -3120,7 +3141,8 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 138, vs, s, 23); evaluate(c, t, 138, vd, s, 25);
+      s[19] = vs; s[20] = vd;
+      evaluate(c, t, 138, s, 19, 23); evaluate(c, t, 138, s, 20, 25);
       J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[24] + s[26]));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
@@ -3136,7 +3158,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 138, vs, s, 23); Fs = s[23]; fs = s[23 + 1]; }
+        } else { s[23] = vs; evaluate(c, t, 138, s, 23, 23); Fs = s[23]; fs = s[23 + 1]; }
       }
       if (vd * inverseWidth > -40) {
         const z = (vd * inverseWidth + 40) * 8;
@@ -3144,7 +3166,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, s: Flo
           const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
           Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
           fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
-        } else { evaluate(c, t, 138, vd, s, 23); Fd = s[23]; fd = s[23 + 1]; }
+        } else { s[23] = vd; evaluate(c, t, 138, s, 23, 23); Fd = s[23]; fd = s[23 + 1]; }
       }
       let h = Fs - Fd - I, slopes = a8 * fs - b8 * fd - 1;
       if (lambda != 0) {

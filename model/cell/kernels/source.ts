@@ -11,6 +11,7 @@
  *          Other laws, and λ: Newton from the current extrapolated along a straight line; where that does not settle, bisection.
  *          Junction currents, when one conducts, by the solver in ports.ts. Noise, where there is a row of it for each sample, adds to the rows;
  *          the channel's own is white with the conductance of the sample before (4kT/r: van der Ziel, Proc. IRE 50 (1962) 1808)
+ *          Where an end passes VGS(off) the output's curvature jumps: such kinks are marked for chain/kinks.ts to soften
  * Error    Newton stops at a step under `ENOUGH_V` in the overdrives; what is left is about its square over twice the overdrive
  */
 import type { Law } from '../../design/types.ts';
@@ -70,8 +71,8 @@ const typescript: Language = {
   variable: 'let',
   sqrt: 'Math.sqrt',
   open: (name) =>
-    `function ${name}(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {\n` +
-    '  const noisy = w.length > 0;\n  for (let i = from; i < to; i++) {',
+    `function ${name}(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {\n` +
+    '  const noisy = w.length > 0, marking = e.length > 0;\n  for (let i = from; i < to; i++) {',
 };
 
 const c: Language = {
@@ -84,8 +85,8 @@ const c: Language = {
   variable: 'double',
   sqrt: 'sqrt',
   open: (name) =>
-    `void ${name}(const double *restrict c, const double *restrict t, const double *restrict w, double *restrict s, const double *restrict audio, const double *restrict control, double *restrict output, int from, int to) {\n` +
-    '  const int noisy = w != 0;\n  for (int i = from; i < to; i++) {',
+    `void ${name}(const double *restrict c, const double *restrict t, const double *restrict w, double *restrict e, double *restrict s, const double *restrict audio, const double *restrict control, double *restrict output, int from, int to) {\n` +
+    '  const int noisy = w != 0, marking = e != 0;\n  for (int i = from; i < to; i++) {',
 };
 
 /** The TypeScript module with all kernels of one law. */
@@ -96,15 +97,15 @@ export function kernelModule(law: Law): string {
  * Kernels of the ${law} law by number of trapezoidal and of stiff states: written from source.ts by \`npm run kernels\`, where the method is
  * explained. Not to be edited.
  *
- * Each advances a cell over the samples \`from\` to \`to\`: \`c\` coefficients, \`t\` the law's table, \`w\` noise (or empty) and \`s\` state as in
- * layout.ts, \`audio\` and \`control\` in V, \`output\` in V.
+ * Each advances a cell over the samples \`from\` to \`to\`: \`c\` coefficients, \`t\` the law's table, \`w\` noise (or empty), \`e\` kinks (or empty) and
+ * \`s\` state as in layout.ts, \`audio\` and \`control\` in V, \`output\` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { ${helpers} } from './channel.ts';
 import type { Conductor, Kernel } from './kernel.ts';
 import { addGraded, keepCharges } from './graded.ts';
-import { searchPorts } from './ports.ts';
+${law === 'smooth' ? '' : "import { markKink } from './kinks.ts';\n"}import { searchPorts } from './ports.ts';
 import { exp } from '../../device/math.ts';
 
 ${conductor(law, typescript)}
@@ -253,7 +254,9 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     loop,
   );
 
+  const bends = law !== 'smooth';
   const body: string[] = [`${constant} u = audio[i], v = control[i];`];
+  if (bends) body.push(`${constant} qs = vs, qd = vd;`);
   for (const i of stiffStates) body.push(`${constant} p${i} = 3.5 * x${i} - 2.25 * e${i} + ${5 / 6} * f${i} - 0.125 * g${i};`);
   for (const i of states) body.push(`${variable} r${i} = ${memory(i)};`);
   if (trapezoidal > 0) {
@@ -270,7 +273,8 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     `${variable} b = ${linear(1, 'r')};`,
     `${variable} I = 0, S = 0, D = 0, J = 0;`,
     'if (noisy) {',
-    `  evaluate(c, t, ${all.device}, vs, s, ${slots + L.TERM_S}); evaluate(c, t, ${all.device}, vd, s, ${slots + L.TERM_D});`,
+    `  ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    `  evaluate(c, t, ${all.device}, s, ${slots + L.OVERDRIVE_S}, ${slots + L.TERM_S}); evaluate(c, t, ${all.device}, s, ${slots + L.OVERDRIVE_D}, ${slots + L.TERM_D});`,
     `  J = ${noise(all.rows)} * ${language.sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
     `  a += ${noise(0)} + ${aI} * J;`,
     `  b += ${noise(1)} + ${bI} * J;`,
@@ -298,6 +302,15 @@ function kernel(law: Law, shape: Shape, language: Language): string {
     body.push('}');
   }
   body.push(`output[i] = ${hasOutput ? `y + ${linear(all.outputRow, 'x')} + y${row.current} * I` : shortcut(shape.output)};`);
+  if (bends) {
+    const perA = hasOutput ? `y${row.current}` : `sign * (${aI} - ${bI})`;
+    body.push(
+      'if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {',
+      `  ${slot(L.BEFORE_S)} = qs; ${slot(L.BEFORE_D)} = qd; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; ${slot(L.PER_A)} = ${perA};`,
+      `  markKink(c, t, ${places}, e, i, s, ${slots});`,
+      '}',
+    );
+  }
   if (n > 0) body.push('u0 = u; v0 = v;');
   body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');
   lines.push(...body.map((line) => `    ${line}`), '  }');
@@ -380,7 +393,7 @@ function lawText(law: Law, v: string, F: string, f: string, { constant, sqrt }: 
     `    ${constant} piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;`,
     `    ${F} = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));`,
     `    ${f} = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));`,
-    `  } else { evaluate(c, t, DEVICE, ${v}, s, TERM); ${F} = s[TERM]; ${f} = s[TERM + 1]; }`,
+    `  } else { s[TERM] = ${v}; evaluate(c, t, DEVICE, s, TERM, TERM); ${F} = s[TERM]; ${f} = s[TERM + 1]; }`,
     '}',
   ];
 }
