@@ -44,9 +44,10 @@ const CLAMP_NVT_V = 7;
 export const DEVICE_VALUES = 8;
 const NO_NOISE = new Float64Array(0);
 
-/** Newton's last step, V. While playing it leaves under 1e-10 V, 0.1 pA in 1 kΩ; in readings rounding only. */
+/** Newton's last step, V, and the current that it may leave, A, half the channel's curvature times its square. In readings rounding only. */
 const PLAYING_ENOUGH_V = 1e-6;
 const READING_ENOUGH_V = 1e-9;
+const ENOUGH_A = 1e-13;
 
 /** Plain numbers, structured-cloneable. `values` are the elements' movable values, then the device's. */
 export interface CellNumbers {
@@ -346,7 +347,14 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   c[at + L.RISE] = 2 * scale * bI;
   c[at + L.PIECES] = table.length / TERMS;
   c[at + L.EXPONENT] = exponent;
-  c[at + L.ENOUGH_V] = cell.numbers.enoughV;
+  c[at + L.ENOUGH_V] = Math.min(cell.numbers.enoughV, Math.sqrt((2 * ENOUGH_A) / mostCurvature(law, scale, widthV, offV, exponent)));
+}
+
+/** A bound on F″, A/V², but where the gradual channel's slope ends. */
+function mostCurvature(law: Law, scale: number, widthV: number, offV: number, exponent: number): number {
+  if (law === 'square') return 2 * scale;
+  if (law === 'gradual') return (2 * scale) / widthV;
+  return ((exponent * scale) / (widthV * widthV)) * (exponent > 2 ? Math.max(1, -offV / widthV) : 1);
 }
 
 /** The voltage below which a junction's current above its reverse current is left out, V. */
