@@ -15,9 +15,8 @@ import { restCharge } from './kernels/graded.ts';
 import { GRADUAL_CONDUCTOR, GRADUAL_KERNELS } from './kernels/gradual.ts';
 import { SMOOTH_CONDUCTOR, SMOOTH_KERNELS } from './kernels/smooth.ts';
 import { SQUARE_CONDUCTOR, SQUARE_KERNELS } from './kernels/square.ts';
-import { factor, solve } from './linear.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
-import { createReduction, discretise, memoryColumns, type Reduction, respond, stepColumns } from './reduce.ts';
+import { createReduction, discretise, memoryColumns, type Reduction, respond, respondAtRest, stepColumns } from './reduce.ts';
 
 /** Boltzmann's constant over the elementary charge, V/K (SI 2019, exact values 1.380649e-23 and 1.602176634e-19). */
 const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
@@ -47,9 +46,10 @@ const BARRIER_V = 8;
 export const DEVICE_VALUES = 9;
 const NOTHING = new Float64Array(0);
 
-/** Newton's last step, V. While playing it leaves under 1e-10 V, 0.1 pA in 1 kΩ; in readings rounding only. */
+/** Newton's last step, V, and the current that it may leave, A, half the channel's curvature times its square. In readings rounding only. */
 const PLAYING_ENOUGH_V = 1e-6;
 const READING_ENOUGH_V = 1e-9;
+const ENOUGH_A = 1e-13;
 
 /** Plain numbers, structured-cloneable. `values` are the elements' movable values, then the device's. */
 export interface CellNumbers {
@@ -92,9 +92,6 @@ export interface Cell {
 interface RestMemory {
   readonly coefficients: Float64Array;
   readonly state: Float64Array;
-  readonly matrix: Float64Array;
-  readonly pivots: Int32Array;
-  readonly columns: Float64Array;
   readonly audio: Float64Array;
   readonly control: Float64Array;
   readonly output: Float64Array;
@@ -175,9 +172,6 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
     rest: {
       coefficients: new Float64Array(L.coefficientLayout(0).length),
       state: new Float64Array(L.STATE_SLOTS),
-      matrix: new Float64Array(n * n),
-      pivots: new Int32Array(n),
-      columns: new Float64Array(n * DRIVES),
       audio: new Float64Array(1),
       control: new Float64Array(1),
       output: new Float64Array(1),
@@ -380,7 +374,14 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   c[at + L.RISE] = 2 * scale * bI;
   c[at + L.PIECES] = table.length / TERMS;
   c[at + L.EXPONENT] = exponent;
-  c[at + L.ENOUGH_V] = cell.numbers.enoughV;
+  c[at + L.ENOUGH_V] = Math.min(cell.numbers.enoughV, Math.sqrt((2 * ENOUGH_A) / mostCurvature(law, scale, widthV, offV, exponent)));
+}
+
+/** A bound on F″, A/V², but where the gradual channel's slope ends. */
+function mostCurvature(law: Law, scale: number, widthV: number, offV: number, exponent: number): number {
+  if (law === 'square') return 2 * scale;
+  if (law === 'gradual') return (2 * scale) / widthV;
+  return ((exponent * scale) / (widthV * widthV)) * (exponent > 2 ? Math.max(1, -offV / widthV) : 1);
 }
 
 /** The voltage below which a junction's current above its reverse current is left out, V. */
@@ -396,12 +397,7 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   const { rest, reduction, state } = cell;
   const { polarity, plan } = cell.numbers;
   const n = cell.stateCount;
-  for (let r = 0; r < n; r++) {
-    for (let k = 0; k < n; k++) rest.matrix[r * n + k] = -reduction.response[r * plan.width + k];
-    for (let k = 0; k < DRIVES; k++) rest.columns[r * DRIVES + k] = reduction.response[r * plan.width + n + k];
-  }
-  if (!factor(rest.matrix, rest.pivots, n)) return Number.NaN;
-  solve(rest.matrix, rest.pivots, n, rest.columns, DRIVES);
+  if (!respondAtRest(reduction)) return Number.NaN;
   packRest(cell);
   rest.audio[0] = audioV;
   rest.control[0] = controlV;
@@ -414,8 +410,9 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   const gateA = polarity * (sourceA + rest.state[L.JUNCTION_D] - reverseA);
   for (let r = 0; r < n; r++) {
     const at = r * DRIVES;
-    state[r] = rest.columns[at] * audioV + rest.columns[at + 1] * controlV + rest.columns[at + CONSTANT];
-    state[r] += rest.columns[at + CHANNEL] * alongA + rest.columns[at + GATE_DRAIN] * gateA;
+    const { rest: weights } = reduction;
+    state[r] = weights[at] * audioV + weights[at + 1] * controlV + weights[at + CONSTANT];
+    state[r] += weights[at + CHANNEL] * alongA + weights[at + GATE_DRAIN] * gateA;
   }
   const stiff = n - plan.trapezoidal;
   for (let k = 0; k < stiff; k++) {
@@ -435,28 +432,28 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
 
 /** The direct-current network as the coefficients of a cell without states. */
 function packRest(cell: Cell): void {
-  const { rest, reduction } = cell;
-  const { polarity, plan } = cell.numbers;
-  const n = cell.stateCount;
+  const { rest, reduction, stateCount: n } = cell;
+  const { polarity } = cell.numbers;
   const row = L.rowLayout(0);
   const all = L.coefficientLayout(0);
   const c = rest.coefficients;
-  const { response } = reduction;
   for (let r = 0; r < 3; r++) {
-    const from = (n + r) * plan.width;
+    const from = (n + r) * DRIVES;
     const to = r * row.width;
     const sign = r < 2 ? polarity : 1;
-    for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * throughStates(response, rest.columns, from, n, k);
-    const byChannel = sign * polarity * throughStates(response, rest.columns, from, n, CHANNEL);
-    const byD = sign * polarity * throughStates(response, rest.columns, from, n, GATE_DRAIN);
-    packCurrents(cell, c, to, r, row, all, byChannel, byD);
-    c[to + row.constant] += sign * throughStates(response, rest.columns, from, n, CONSTANT) - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
+    for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * reduction.rest[from + k];
+    packCurrents(
+      cell,
+      c,
+      to,
+      r,
+      row,
+      all,
+      sign * polarity * reduction.rest[from + CHANNEL],
+      sign * polarity * reduction.rest[from + GATE_DRAIN],
+    );
+    c[to + row.constant] += sign * reduction.rest[from + CONSTANT] - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
   }
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
-}
-
-function throughStates(response: Float64Array, columns: Float64Array, from: number, n: number, drive: number): number {
-  let sum = response[from + n + drive];
-  for (let state = 0; state < n; state++) sum += response[from + state] * columns[state * DRIVES + drive];
-  return sum;
+  c[all.device + L.ENOUGH_V] = READING_ENOUGH_V;
 }

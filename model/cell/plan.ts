@@ -57,11 +57,23 @@ export interface Plan {
   /** Columns: states, drives, then one noise current for each element of `noisy`. */
   readonly width: number;
   readonly noisy: Int32Array;
+  /** The network at rest, where capacitors are open and inductors are wires; its columns are the drives. */
+  readonly rest: RestPlan;
   /** Rows of the nodes; −1 is ground. */
   readonly drain: number;
   readonly gate: number;
   readonly source: number;
   readonly output: number;
+}
+
+export interface RestPlan {
+  readonly size: number;
+  readonly matrix: Stamps;
+  readonly columns: Float64Array;
+  readonly constants: Stamps;
+  /** For each state the unknown that it is, and the one taken from it (−1 for none): a capacitor's ends, an inductor's current. */
+  readonly stateRows: Int32Array;
+  readonly stateRowsLess: Int32Array;
 }
 
 interface Places {
@@ -119,6 +131,7 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     constants: stampsOf(constantStamps(elements, places)),
     width,
     noisy,
+    rest: planRest(elements, nodes, stateElements, ends),
     ...ends,
   };
 }
@@ -129,6 +142,33 @@ function letterOf(element: Element, { drain, gate, source }: Jfet): string {
   const { a, b } = element;
   if (a === gate) return b === source ? 'g' : b === drain ? 'm' : 'x';
   return a === drain && b === source ? 'd' : 'x';
+}
+
+function planRest(
+  elements: readonly Element[],
+  nodes: readonly string[],
+  stateElements: readonly number[],
+  ends: { drain: number; gate: number; source: number },
+): RestPlan {
+  const row = (name: string) => nodes.indexOf(name);
+  const branchOf = new Map<number, number>();
+  elements.forEach(({ kind }, index) => {
+    const hasCurrent = kind === 'source' || kind === 'supply' || kind === 'summer' || kind === 'inductor';
+    if (hasCurrent) branchOf.set(index, nodes.length + branchOf.size);
+  });
+  const places: Places = { row, branchOf, size: nodes.length + branchOf.size };
+  const end = (index: number, which: 'a' | 'b') => {
+    const element = elements[index];
+    return element.kind === 'capacitor' ? row(element[which]) : -1;
+  };
+  return {
+    size: places.size,
+    matrix: stampsOf(matrixStamps(elements, places)),
+    columns: fixedColumns(elements, places, [], new Int32Array(0), ends, DRIVES),
+    constants: stampsOf(constantStamps(elements, places)),
+    stateRows: Int32Array.from(stateElements, (index) => branchOf.get(index) ?? end(index, 'a')),
+    stateRowsLess: Int32Array.from(stateElements, (index) => end(index, 'b')),
+  };
 }
 
 function endRow(element: Element, row: (name: string) => number, end: 'a' | 'b'): number {
@@ -177,12 +217,12 @@ function matrixStamps(elements: readonly Element[], { row, branchOf, size }: Pla
         }
         return;
       case 'capacitor':
+      case 'inductor':
         for (const [node, sign] of [[element.a, 1] as const, [element.b, -1] as const]) {
           add(row(node), branch, -1, sign);
           add(branch, row(node), -1, sign);
         }
         return;
-      case 'inductor':
       case 'draw':
         return;
     }
