@@ -5,7 +5,7 @@ import { findAccessFaults, launchBrowser, openTab, type Site, serveDist } from '
 
 const WIDTHS = [320, 390, 768, 1280, 1600, 1920];
 const FEEDBACK = 'Feedback from drain to gate';
-const CONTROL = 'Control: fixed, or the LFO’s shape';
+const CONTROL = 'Control: what moves the gate';
 
 let browser: Browser;
 let site: Site;
@@ -34,7 +34,7 @@ describe.each(WIDTHS)('at %i px', (widthPx) => {
     const { page, complaints, close } = await openSheet(widthPx);
     for (const feedback of ['resistor', 'buffered', 'none']) {
       await page.locator('.drawing').getByLabel(FEEDBACK).selectOption(feedback);
-      for (const shape of ['square', 'fixed', 'sine']) {
+      for (const shape of ['square', 'envelope', 'external', 'fixed', 'falling', 'sine']) {
         await page.getByLabel(CONTROL).selectOption(shape);
         expect(await page.evaluate(overlapsInDrawing), `${feedback}, ${shape}`).toEqual([]);
         expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(widthPx);

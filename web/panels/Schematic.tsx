@@ -4,6 +4,7 @@ import { useVariant } from './BenchContext.ts';
 import { Figure } from './parts/Figure.tsx';
 import { rem, useSheetSize } from './parts/useSheetSize.ts';
 import { SchematicSymbols } from './SchematicSymbols.tsx';
+import { ControlSentence } from './ControlSentence.tsx';
 import { schematicValues } from './SchematicValues.tsx';
 import { useLimits } from './useLimits.ts';
 
@@ -44,6 +45,7 @@ export function Schematic({ form }: { readonly form: Form }) {
           </>
         )}
       </div>
+      <ControlSentence />
       {form === 'upright' && limits.device && <p class="fault limit-words">J1: {limits.device}.</p>}
       {form === 'upright' && limits.amplifier && <p class="fault limit-words">The amplifier {limits.amplifier}.</p>}
     </Figure>

@@ -70,8 +70,8 @@ export interface Bench {
   readonly swing: ReadonlySignal<readonly SwingPoint[] | null>;
   /** Noise over the swing, ascending in the gate's voltage; null while it is being computed. */
   readonly noise: ReadonlySignal<readonly NoisePoint[] | null>;
-  /** What the control does to the heard variant by itself, or why it has no period; null until the first answer. */
-  readonly period: ReadonlySignal<GatePeriod | { readonly fault: string } | null>;
+  /** What the control does to the heard variant, by itself over a period or with a tone at its input, or why that cannot be said; null until the first answer. */
+  readonly period: ReadonlySignal<ControlPicture | { readonly fault: string } | null>;
   /** THD against k at the gate voltage of a moment just past (at rest while sound is stopped), as often as can be computed. */
   readonly feedbackCurve: ReadonlySignal<FeedbackCurve | null>;
   /** The shadow tone at the cell's input, V peak. */
@@ -172,6 +172,16 @@ export interface GatePeriod {
   /** VGS(off) at the temperature of the circuit, V, negative for an n-channel part. */
   readonly gateOffV: number;
 }
+
+/** What a follower makes of a steady tone at the input: V peak, ascending where its control moves one way. */
+export interface FollowerCurve {
+  readonly levelV: Float64Array;
+  readonly control: Float64Array;
+  readonly gate: Float64Array;
+  readonly gateOffV: number;
+}
+
+export type ControlPicture = GatePeriod | FollowerCurve;
 
 export interface WorstReading {
   readonly thdFundamental: number;

@@ -3,7 +3,7 @@
  * for each render until it is done.
  */
 import { renderClip } from '../../model/chain/render.ts';
-import { gatePeriod } from './gatePeriod.ts';
+import { controlPicture } from './controlPicture.ts';
 import { sentenceOf } from './notes.ts';
 import { readFeedbackCurve, readMoment, readNoise, readSwing } from './toneStudy.ts';
 import type { FromReading, FromRender, ToneQuestion, ToReading, ToRender } from './workers.ts';
@@ -76,7 +76,7 @@ function* answerCurve(id: number, question: ToneQuestion, gateV: number | null):
 }
 
 function* answerSwing(id: number, question: ToneQuestion): Generator<void, void> {
-  tell({ type: 'period', id, period: gatePeriod(question.design, question.variantIndex) });
+  tell({ type: 'period', id, period: controlPicture(question.design, question.variantIndex, question.toneHz) });
   yield;
   tell({ type: 'worst', id, swing: yield* orNull(readSwing(question)) });
   tell({ type: 'noise', id, points: yield* orNull(readNoise(question)) });

@@ -2,7 +2,7 @@
 import type { ReadonlySignal } from '@preact/signals';
 import { effect, signal } from '@preact/signals';
 import type { Design } from '../../model/design/types.ts';
-import type { Bench, FeedbackCurve, GatePeriod, LiveLevels, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import type { Bench, ControlPicture, FeedbackCurve, LiveLevels, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
 import { setWithin } from './within.ts';
 import type { FromReading, ToReading, WorkerPort } from './workers.ts';
 
@@ -29,7 +29,7 @@ export function createReadings(
   now: () => number = () => performance.now(),
 ): Readings {
   const moment = signal<Moment | null>(null);
-  const period = signal<GatePeriod | { readonly fault: string } | null>(null);
+  const period = signal<ControlPicture | { readonly fault: string } | null>(null);
   const worst = signal<WorstReading | null>(null);
   const swing = signal<readonly SwingPoint[] | null>(null);
   const noise = signal<readonly NoisePoint[] | null>(null);

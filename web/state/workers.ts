@@ -1,6 +1,6 @@
 /** The wire between the page and its two workers. Each union goes one way; receivers end in `message satisfies never`. */
 import type { Design } from '../../model/design/types.ts';
-import type { FeedbackCurve, GatePeriod, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import type { ControlPicture, FeedbackCurve, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
 
 /** A worker as the state sees it, so that a test can stand something else in its place. */
 export interface WorkerPort<Out, In> {
@@ -31,7 +31,7 @@ export type ToReading =
 export type FromReading =
   | { readonly type: 'reading'; readonly id: number; readonly reading: Moment['reading']; readonly thdBand: Moment['thdBand'] }
   | { readonly type: 'curve'; readonly id: number; readonly curve: FeedbackCurve | null }
-  | { readonly type: 'period'; readonly id: number; readonly period: GatePeriod | { readonly fault: string } }
+  | { readonly type: 'period'; readonly id: number; readonly period: ControlPicture | { readonly fault: string } }
   | {
       readonly type: 'worst';
       readonly id: number;
