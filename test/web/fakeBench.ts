@@ -90,6 +90,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     ]),
     period: computed(() => controlPicture(document.design.value, document.heardVariant.value, 997)),
     worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, gateV: -1.55 })),
+    summaries: computed(() => document.design.value.variants.map((_, n) => ({ restThd: 0.0047 + n / 100, worstThd: 0.04 }))),
     feedbackCurve: signal({ gateV: -1.38, points: inventedCurve() }),
     toneV,
     setToneV: put(toneV),
