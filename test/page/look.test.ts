@@ -3,9 +3,16 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { findAccessFaults, launchBrowser, openTab, type Site, serveDist } from '../support/browser.ts';
 
-const WIDTHS = [320, 390, 768, 1280, 1600, 1920];
+const WIDTHS = [320, 390, 768, 1280, 1600, 1920, 2560];
 const FEEDBACK = 'Feedback from drain to gate';
-const CONTROL = 'Control: fixed, or the LFO’s shape';
+const CONTROL = 'Control: what moves the gate';
+
+const ADD = 'Add a part to the board';
+/** All that one board can have; the pickup takes the place of a previous stage. */
+const BOARD = [
+  ...['pickup', 'pad', 'follower', 'coupling', 'drain return', 'output coupling', 'driver resistance', 'smoothing'],
+  ...['gate clamp', 'half supply', 'shared ground', 'stray capacitance'],
+];
 
 let browser: Browser;
 let site: Site;
@@ -34,12 +41,27 @@ describe.each(WIDTHS)('at %i px', (widthPx) => {
     const { page, complaints, close } = await openSheet(widthPx);
     for (const feedback of ['resistor', 'buffered', 'none']) {
       await page.locator('.drawing').getByLabel(FEEDBACK).selectOption(feedback);
-      for (const shape of ['square', 'fixed', 'sine']) {
+      for (const shape of ['square', 'envelope', 'external', 'fixed', 'falling', 'sine']) {
         await page.getByLabel(CONTROL).selectOption(shape);
         expect(await page.evaluate(overlapsInDrawing), `${feedback}, ${shape}`).toEqual([]);
         expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(widthPx);
       }
     }
+    expect(complaints).toEqual([]);
+    await close();
+  });
+
+  test('a full board makes no values overlap or leave the sheet, and nothing scrolls sideways', async () => {
+    const { page, complaints, close } = await openSheet(widthPx);
+    for (const part of ['previous stage', ...BOARD]) await page.getByLabel(ADD).selectOption(part);
+    for (const shape of ['square', 'envelope']) {
+      await page.getByLabel(CONTROL).selectOption(shape);
+      expect(await page.evaluate(overlapsInDrawing), shape).toEqual([]);
+      expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(widthPx);
+    }
+    expect(await page.evaluate(smallTexts)).toEqual([]);
+    for (const part of BOARD) await page.getByRole('button', { name: `Take out: ${part}`, exact: true }).click();
+    expect(await page.locator('.board .drawing').count()).toBe(0);
     expect(complaints).toEqual([]);
     await close();
   });
@@ -63,6 +85,10 @@ describe.each(['light', 'dark'] as const)('in the %s scheme', (scheme) => {
       await page.keyboard.type('k');
       expect(await findAccessFaults(page)).toEqual([]);
       await page.keyboard.press('Escape');
+      await page.getByLabel(ADD).selectOption('half supply');
+      await page.getByLabel(ADD).selectOption('coupling');
+      await page.getByLabel(CONTROL).selectOption('envelope');
+      expect(await findAccessFaults(page)).toEqual([]);
       await page.getByRole('button', { name: 'Keys' }).click();
       expect(await findAccessFaults(page)).toEqual([]);
       await close();

@@ -5,7 +5,7 @@ import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import type { Bench, FeedbackPoint, LiveLevels, Note, SoundState, Take } from '../../web/state/bench.ts';
-import { gatePeriod } from '../../web/state/gatePeriod.ts';
+import { controlPicture } from '../../web/state/controlPicture.ts';
 import { createDocument } from '../../web/state/document.ts';
 
 export interface FakeOptions {
@@ -88,8 +88,9 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
       { gateV: -1.8, drainV: 1.8e-6 },
       { gateV: -0.6, drainV: 0.36e-6 },
     ]),
-    period: computed(() => gatePeriod(document.design.value, document.heardVariant.value)),
+    period: computed(() => controlPicture(document.design.value, document.heardVariant.value, 997)),
     worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, gateV: -1.55 })),
+    summaries: computed(() => document.design.value.variants.map((_, n) => ({ restThd: 0.0047 + n / 100, worstThd: 0.04 }))),
     feedbackCurve: signal({ gateV: -1.38, points: inventedCurve() }),
     toneV,
     setToneV: put(toneV),

@@ -1,9 +1,9 @@
-/** Fig. 3: the gate over one period of the control, without audio, against VGS(off). */
-import type { GatePeriod } from '../state/bench.ts';
+/** Fig. 3: the gate against VGS(off), over one period of the control without audio, or over the level of a tone that a follower hears. */
+import type { ControlPicture, FollowerCurve, GatePeriod } from '../state/bench.ts';
 import { linePath, type Point } from './line.ts';
 import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
-import { linearScale, linearTicks, type Scale, toPixel } from './scale.ts';
-import { decimals } from './words.ts';
+import { linearScale, linearTicks, logScale, type Scale, toPixel } from './scale.ts';
+import { dbuFromPeak, decimals, peakFromDbu } from './words.ts';
 
 /** Forward gate voltage from which this figure calls the gate conducting, V: 0.7 V at 1 mA (data sheets), about 0.5 V at microamperes. */
 const GATE_ON_V = 0.5;
@@ -17,7 +17,7 @@ export interface GatePlot {
   readonly xTicks: readonly Tick[];
   readonly yTicks: readonly Tick[];
   readonly gate: string;
-  /** Where the period starts. */
+  /** Where the period starts, or a tone is silent. */
   readonly start: Point;
   readonly offY: number;
   /** Its label stands above the line of VGS(off), else below: on the side of the off region only when the gate is in the way. */
@@ -37,11 +37,14 @@ export function regionAt(gateV: number, gateOffV: number): Region {
 
 const MARGINS = { left: 46, right: 10, top: 8, bottom: 34 };
 
-export function plotGate(period: GatePeriod, width: number, height: number): GatePlot {
-  const { gateOffV } = period;
-  const steps = period.gate.length - 1;
+export function isFollower(picture: ControlPicture): picture is FollowerCurve {
+  return 'levelV' in picture;
+}
+
+export function plotGate(picture: ControlPicture, width: number, height: number): GatePlot {
+  const { gate, gateOffV } = picture;
   const area = plotArea(width, height, MARGINS);
-  const values = [...period.gate, gateOffV, 0];
+  const values = [...gate, gateOffV, 0];
   const pad = 0.22 * (Math.max(...values) - Math.min(...values));
   const y = linearScale(
     Math.min(...values) - (gateOffV < 0 ? pad : 0),
@@ -49,25 +52,41 @@ export function plotGate(period: GatePeriod, width: number, height: number): Gat
     area.bottom,
     area.top,
   );
-  const x = linearScale(0, period.seconds, area.left, area.right);
-  const points = Array.from(period.gate, (v, n) => ({ x: toPixel(x, (n / steps) * period.seconds), y: toPixel(y, v) }));
+  const x = acrossScale(picture, area);
+  const across = Array.from(gate, (_, n) =>
+    toPixel(x, isFollower(picture) ? picture.levelV[n] : (n / (gate.length - 1)) * picture.seconds),
+  );
+  const points = Array.from(gate, (v, n) => ({ x: across[n], y: toPixel(y, v) }));
   const past = (v: number) => (gateOffV < 0 ? gateOffV - v : v - gateOffV);
-  const deepest = period.gate.reduce((best, v, n) => (past(v) > past(period.gate[best]) + 1e-12 ? n : best), 0);
+  const deepest = gate.reduce((best, v, n) => (past(v) > past(gate[best]) + 1e-12 ? n : best), 0);
   const offY = toPixel(y, gateOffV);
   return {
     area,
     x,
     y,
-    xTicks: timeTicks(x, period),
+    xTicks: isFollower(picture) ? levelTicks(x) : timeTicks(x, picture),
     yTicks: voltTicks(y),
     gate: linePath(points),
-    start: period.steady ? { x: (area.left + area.right) / 2, y: points[0].y } : points[0],
+    start: !isFollower(picture) && picture.steady ? { x: (area.left + area.right) / 2, y: points[0].y } : points[0],
     labelAbove: gateOffV < 0 !== Math.abs(points[0].y - (gateOffV < 0 ? offY - 11 : offY + 11)) < 14,
     offY,
     offArea: gateOffV < 0 ? { top: offY, height: area.bottom - offY } : { top: area.top, height: offY - area.top },
-    regions: regionRuns(period.gate, gateOffV, x, period.seconds),
-    deepest: { ...points[deepest], pastV: past(period.gate[deepest]) },
+    regions: regionRuns(gate, gateOffV, across),
+    deepest: { ...points[deepest], pastV: past(gate[deepest]) },
   };
+}
+
+function acrossScale(picture: ControlPicture, area: PlotArea): Scale {
+  if (!isFollower(picture)) return linearScale(0, picture.seconds, area.left, area.right);
+  return logScale(Math.min(...picture.levelV), Math.max(...picture.levelV), area.left, area.right);
+}
+
+function levelTicks(x: Scale): Tick[] {
+  const ticks = linearTicks(dbuFromPeak(x.from), dbuFromPeak(x.to), 5);
+  return ticks.map((dbu, n) => ({
+    at: toPixel(x, peakFromDbu(dbu)),
+    words: n === ticks.length - 1 ? `${decimals(dbu, 0)}\u2009dBu` : decimals(dbu, 0),
+  }));
 }
 
 function timeTicks(x: Scale, { seconds, steady }: GatePeriod): Tick[] {
@@ -89,15 +108,15 @@ function voltTicks(y: Scale): Tick[] {
   }));
 }
 
-function regionRuns(gate: Float64Array, gateOffV: number, x: Scale, seconds: number): { region: Region; from: number; to: number }[] {
+function regionRuns(gate: Float64Array, gateOffV: number, across: readonly number[]): { region: Region; from: number; to: number }[] {
   const steps = gate.length - 1;
   const runs: { region: Region; from: number; to: number }[] = [];
   for (let n = 0; n < steps; n++) {
     const region = regionAt((gate[n] + gate[n + 1]) / 2, gateOffV);
-    const to = toPixel(x, ((n + 1) / steps) * seconds);
+    const to = across[n + 1];
     const last = runs.at(-1);
     if (last?.region === region) runs[runs.length - 1] = { ...last, to };
-    else runs.push({ region, from: last?.to ?? x.start, to });
+    else runs.push({ region, from: last?.to ?? across[0], to });
   }
   return runs;
 }

@@ -1,5 +1,6 @@
 /** The drawing of the cell for the parts that are fitted, as numbers: wires, symbols, and where each value stands. Sheet pixels (1/16 rem). */
 import type { Variant } from '../../model/design/types.ts';
+import { type BoardRows, boardRows } from './board.ts';
 import type { Point } from './line.ts';
 import type { Box } from './placeSlip.ts';
 import { type Grid, LEFT, uprightGrid, wideGrid } from './schematicGrid.ts';
@@ -14,6 +15,8 @@ export interface Fitted {
   readonly loadCapacitor: boolean;
   readonly wave: Wave;
   readonly channel: 'n' | 'p';
+  /** What goes on in a row of the board instead of being drawn here. */
+  readonly rows: BoardRows;
 }
 
 export interface Segment {
@@ -25,7 +28,18 @@ export interface Segment {
 
 /** `x`, `y` is the centre; for the JFET, where the line of drain and source meets the level of the gate. */
 export interface PartSymbol {
-  readonly kind: 'resistor' | 'resistorUpright' | 'capacitor' | 'amplifier' | 'buffer' | 'sum' | 'generator' | 'jfet';
+  readonly kind:
+    | 'resistor'
+    | 'resistorUpright'
+    | 'capacitor'
+    | 'capacitorAcross'
+    | 'inductor'
+    | 'diode'
+    | 'amplifier'
+    | 'buffer'
+    | 'sum'
+    | 'generator'
+    | 'jfet';
   readonly x: number;
   readonly y: number;
 }
@@ -55,7 +69,10 @@ export type Slot =
   | 'load'
   | 'makeUp'
   | 'out'
-  | 'ground';
+  | 'ground'
+  | 'toOutput'
+  | 'fromDriver'
+  | 'sourcePin';
 
 export interface Drawing {
   readonly width: number;
@@ -86,6 +103,7 @@ export function fittedIn(variant: Variant): Fitted {
     loadCapacitor: loadF > 0,
     wave,
     channel: variant.device.channel,
+    rows: boardRows(variant),
   };
 }
 
@@ -101,8 +119,10 @@ export function drawSchematic(fitted: Fitted, width: number, form: Form): Drawin
       { x: LEFT, y: grid.top },
       { x: LEFT, y: grid.bus },
       { x: grid.outTerminal, y: grid.top },
+      ...(fitted.rows.control ? [{ x: LEFT, y: gate }] : []),
+      ...(fitted.rows.source ? [{ x: device, y: grid.bus - PIN_ABOVE }] : []),
     ],
-    symbols: [...throughParts(grid), ...branchParts(fitted, grid), ...loadParts(fitted, grid)],
+    symbols: [...throughParts(fitted, grid), ...branchParts(fitted, grid), ...loadParts(fitted, grid)],
     ground: { x: grid.ground, y: grid.bus },
     deviceBox: { left: device - JFET.left - 22, top: gate - JFET.above - 8, width: JFET.left + 34, height: JFET.above + JFET.below + 16 },
     amplifierBox: {
@@ -115,14 +135,18 @@ export function drawSchematic(fitted: Fitted, width: number, form: Form): Drawin
   };
 }
 
-function throughParts({ series, control, generator, device, amplifier, top, gate, generatorY }: Grid): PartSymbol[] {
-  return [
+/** Room between the terminal of a source pin that stands on the board and the line of 0 V. */
+const PIN_ABOVE = 26;
+
+function throughParts({ rows }: Fitted, { series, control, generator, device, amplifier, top, gate, generatorY }: Grid): PartSymbol[] {
+  const parts: PartSymbol[] = [
     { kind: 'resistor', x: series, y: top },
     { kind: 'resistor', x: control, y: gate },
-    { kind: 'generator', x: generator, y: generatorY },
     { kind: 'jfet', x: device, y: gate },
-    { kind: 'amplifier', x: amplifier, y: top },
   ];
+  if (!rows.control) parts.push({ kind: 'generator', x: generator, y: generatorY });
+  if (!rows.output) parts.push({ kind: 'amplifier', x: amplifier, y: top });
+  return parts;
 }
 
 function branchParts(fitted: Fitted, { feedback, blockingY, drainY, bufferY, gate }: Grid): PartSymbol[] {
@@ -138,36 +162,52 @@ function branchParts(fitted: Fitted, { feedback, blockingY, drainY, bufferY, gat
 }
 
 function loadParts(fitted: Fitted, { load, capacitor, loadY }: Grid): PartSymbol[] {
+  if (fitted.rows.output) return [];
   const resistor: PartSymbol = { kind: 'resistorUpright', x: load, y: loadY };
   return fitted.loadCapacitor ? [resistor, { kind: 'capacitor', x: capacitor, y: loadY }] : [resistor];
 }
 
 function wires(fitted: Fitted, grid: Grid): Segment[] {
-  const { series, control, feedback, device, generator, amplifier, top, gate, bus, generatorY } = grid;
+  const { series, control, feedback, device, amplifier, top, gate, bus } = grid;
   const half = RESISTOR.long / 2;
   const amp = AMPLIFIER.long / 2;
   const sum = fitted.feedback === 'buffered' ? SUM_RADIUS : 0;
   const branch = branchParts(fitted, grid).filter((part) => part.kind !== 'sum');
+  const { rows } = fitted;
+  const output = rows.output ? [] : [amplifier - amp, amplifier + amp];
+  const source = rows.source ? [gate, bus - PIN_ABOVE - 4] : [gate, bus];
   return [
-    ...across(top, LEFT + 4, series - half, series + half, amplifier - amp, amplifier + amp, grid.outTerminal - 4),
+    ...across(top, LEFT + 4, series - half, series + half, ...output, grid.outTerminal - 4),
     ...across(gate, control + half, feedback - sum, feedback + sum, device - JFET.left),
-    ...run({ x: control - half, y: gate }, { x: generator, y: gate }, { x: generator, y: generatorY - GENERATOR_RADIUS }),
-    ...down(generator, generatorY + GENERATOR_RADIUS, bus),
+    ...(rows.control ? across(gate, LEFT + 4, control - half) : generatorWires(grid)),
     ...(branch.length > 0 ? downThrough(feedback, top, gate - sum, branch) : []),
-    ...down(device, top, gate - JFET.drainAbove, gate, bus),
+    ...down(device, top, gate - JFET.drainAbove, ...source),
     ...loadParts(fitted, grid).flatMap((part) => downThrough(part.x, top, bus, [part])),
-    ...across(bus, LEFT + 4, grid.capacitor),
+    ...across(bus, LEFT + 4, busEnd(fitted, grid)),
   ];
 }
 
-function dots(fitted: Fitted, { feedback, device, load, capacitor, generator, top, gate, bus }: Grid): Point[] {
-  const joins = [
-    { x: device, y: top },
-    { x: load, y: top },
-    { x: generator, y: bus },
-    { x: device, y: bus },
+function generatorWires({ control, generator, gate, bus, generatorY }: Grid): Segment[] {
+  return [
+    ...run({ x: control - RESISTOR.long / 2, y: gate }, { x: generator, y: gate }, { x: generator, y: generatorY - GENERATOR_RADIUS }),
+    ...down(generator, generatorY + GENERATOR_RADIUS, bus),
   ];
-  if (fitted.loadCapacitor) joins.push({ x: capacitor, y: top }, { x: load, y: bus });
+}
+
+/** The line of 0 V reaches as far as something stands on it. */
+function busEnd({ rows }: Fitted, { capacitor, device, ground }: Grid): number {
+  if (!rows.output) return capacitor;
+  return rows.source ? ground + 11 : Math.max(device, ground);
+}
+
+function dots(fitted: Fitted, { feedback, device, load, capacitor, generator, top, gate, bus }: Grid): Point[] {
+  const { rows } = fitted;
+  const joins: Point[] = [];
+  if (!rows.output) joins.push({ x: load, y: top });
+  joins.push({ x: device, y: top });
+  if (!rows.control) joins.push({ x: generator, y: bus });
+  if (!rows.source && !rows.output) joins.push({ x: device, y: bus });
+  if (fitted.loadCapacitor && !rows.output) joins.push({ x: capacitor, y: top }, { x: load, y: bus });
   if (fitted.feedback !== 'none') joins.push({ x: feedback, y: top });
   if (fitted.feedback === 'resistor') joins.push({ x: feedback, y: gate });
   return joins;

@@ -79,6 +79,9 @@ export function wideGrid(fitted: Fitted, width: number): Grid {
       makeUp: end(width, top + 53),
       out: end(width, top - 37),
       ground: start(feedback + 80, bus + 9),
+      toOutput: end(width, top - 19),
+      fromDriver: start(0, gate - 19),
+      sourcePin: start(device + 12, bus - 26),
     },
   };
 }
@@ -118,6 +121,9 @@ export function uprightGrid(fitted: Fitted, width: number): Grid {
       makeUp: end(width, top + 48),
       out: end(width, top - 36),
       ground: start(feedback + 58, bus + 9),
+      toOutput: end(width, top - 19),
+      fromDriver: start(0, gate + 22),
+      sourcePin: middle(device, bus - 10),
     },
   };
 }

@@ -4,6 +4,9 @@ import type { PartSymbol, Segment } from './schematic.ts';
 
 export const RESISTOR = { long: 54, across: 19 };
 export const PLATES = { wide: 28, apart: 6 };
+/** Half circles side by side. */
+export const INDUCTOR = { turns: 4, radius: 7 };
+export const DIODE = { long: 16, wide: 18 };
 export const GENERATOR_RADIUS = 15;
 export const SUM_RADIUS = 9;
 export const AMPLIFIER = { long: 38, high: 44 };
@@ -37,7 +40,12 @@ export function halfLength(kind: PartSymbol['kind']): number {
     case 'resistor':
     case 'resistorUpright':
       return RESISTOR.long / 2;
+    case 'inductor':
+      return INDUCTOR.turns * INDUCTOR.radius;
+    case 'diode':
+      return DIODE.long / 2;
     case 'capacitor':
+    case 'capacitorAcross':
       return PLATES.apart / 2;
     case 'generator':
       return GENERATOR_RADIUS;

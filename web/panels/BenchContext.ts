@@ -11,6 +11,8 @@ export interface BenchView {
   readonly moment: ReadonlySignal<Moment | null>;
   /** Its levels; null while sound is stopped. */
   readonly slowLive: ReadonlySignal<LiveLevels | null>;
+  /** Notes a tap of the LFO's rate; from the second on it is set. Returns the sentence that refuses it, or null. */
+  tapRate(atMs: number): string | null;
 }
 
 export const BenchContext = createContext<BenchView | null>(null);

@@ -1,4 +1,5 @@
 import { Characteristics } from './Characteristics.tsx';
+import { DeviceTable } from './DeviceTable.tsx';
 import { Distortion } from './Distortion.tsx';
 import { Equation } from './Equation.tsx';
 import { FeedbackFigure } from './FeedbackFigure.tsx';
@@ -7,6 +8,7 @@ import { Schematic } from './Schematic.tsx';
 import { SpectrumFigure } from './SpectrumFigure.tsx';
 import { Takes } from './Takes.tsx';
 import type { Layout } from './useLayout.ts';
+import { VariantTable } from './VariantTable.tsx';
 
 /** Equation, figures and tables, in the order in which each width is read. */
 export function Blocks({ layout }: { readonly layout: Layout }) {
@@ -14,6 +16,12 @@ export function Blocks({ layout }: { readonly layout: Layout }) {
     <div class="small-figures">
       <GateFigure />
       <SpectrumFigure />
+    </div>
+  );
+  const lower = (
+    <div class="lower-tables">
+      <VariantTable />
+      <DeviceTable />
     </div>
   );
   if (layout === 'wide') {
@@ -30,6 +38,7 @@ export function Blocks({ layout }: { readonly layout: Layout }) {
           <Takes />
         </div>
         {small}
+        {lower}
       </div>
     );
   }
@@ -44,6 +53,7 @@ export function Blocks({ layout }: { readonly layout: Layout }) {
       <Characteristics />
       <Takes />
       {small}
+      {lower}
     </div>
   );
 }

@@ -24,8 +24,8 @@ export function Characteristics() {
   const variant = useVariant();
   const reading = useReading();
   const found = bench.period.value;
-  const period = found === null || 'fault' in found ? null : found;
-  const groups = characteristicRows(variant, { ...measured, reading, period });
+  const picture = found === null || 'fault' in found ? null : found;
+  const groups = characteristicRows(variant, { ...measured, reading, picture });
   return (
     <DataTable number={1} className="characteristics" caption={<ToneCaption />} columns={COLUMNS}>
       {groups.map((rows) => (

@@ -1,35 +1,37 @@
+import type { ComponentChildren } from 'preact';
+import { useContext } from 'preact/hooks';
 import type { Control } from '../../model/design/types.ts';
-import { useBench, useVariant } from './BenchContext.ts';
+import { useBench, useBenchView, useVariant } from './BenchContext.ts';
 import { CircuitValue } from './CircuitValue.tsx';
+import { CONTROL_KINDS, controlOf, kindOf } from './controlOf.ts';
+import { CaptionContext } from './parts/CaptionContext.ts';
 import { Choice } from './parts/Choice.tsx';
 import { Sym } from './parts/Symbol.tsx';
 
-type Shape = 'fixed' | 'sine' | 'triangle' | 'square';
-const SHAPES: readonly { value: Shape; words: string }[] = [
-  { value: 'fixed', words: 'fixed' },
-  { value: 'sine', words: 'sine' },
-  { value: 'triangle', words: 'triangle' },
-  { value: 'square', words: 'square' },
-];
-
-/** What moves the gate: a steady voltage, or an LFO's shape, rate and the two ends of its swing. */
+/** What moves the gate, and between which voltages: a steady one, an LFO, a follower (the rest of which stands under the figure), a recording. */
 export function ControlValues() {
   const bench = useBench();
-  const { control } = useVariant();
-  const choose = (shape: string) => {
-    if (shape === 'fixed' || shape === 'sine' || shape === 'triangle' || shape === 'square')
-      bench.setValue('control', controlOf(shape, control));
-  };
-  const present = control.source === 'lfo' ? control.shape : control.source;
-  const options = SHAPES.some(({ value }) => value === present) ? SHAPES : [{ value: present, words: present }, ...SHAPES];
+  const caption = useContext(CaptionContext);
+  const variant = useVariant();
+  const { control } = variant;
   return (
     <div class="control-values">
       <span class="name">
         <Sym of="V" sub="C" />
       </span>
-      <Choice<string> label="Control: fixed, or the LFO’s shape" value={present} options={options} onChoose={choose} />
+      <Choice
+        label="Control: what moves the gate"
+        value={kindOf(control)}
+        options={CONTROL_KINDS}
+        onChoose={(kind) => {
+          const refused = bench.setValue('control', controlOf(kind, variant));
+          caption.value = refused === null ? null : { words: refused, refused: true };
+        }}
+      />
       {control.source === 'fixed' && <CircuitValue path="control.controlV" label="Control voltage" short="VC" />}
       {control.source === 'lfo' && <Lfo shape={control.shape} />}
+      {control.source === 'envelope' && <Swing from="restV" to="limitV" names={['rest', 'limit']} />}
+      {control.source === 'external' && <CircuitValue path="control.offsetV" label="Control voltage for a sample of 0" short="VC" />}
     </div>
   );
 }
@@ -37,33 +39,66 @@ export function ControlValues() {
 function Lfo({ shape }: { readonly shape: Extract<Control, { source: 'lfo' }>['shape'] }) {
   return (
     <>
-      <CircuitValue path="control.rateHz" label="Rate of the LFO" short="The rate" />
-      {shape === 'square' && (
-        <span>
-          <span class="name">edge</span> <CircuitValue path="control.edgeSec" label="Edge of the square, 0 to 100 %" short="The edge" />
-        </span>
-      )}
-      <span class="swing">
-        <span>
-          <span class="name from">from</span>{' '}
-          <CircuitValue path="control.fromV" label="Control voltage at one end of the swing" short="From" />
-        </span>
-        <span>
-          <span class="name">to</span> <CircuitValue path="control.toV" label="Control voltage at the other end of the swing" short="To" />
-        </span>
+      <span class="rate">
+        <CircuitValue path="control.rateHz" label="Rate of the LFO" short="The rate" /> <TapButton />
       </span>
+      <Swing from="fromV" to="toV" names={['from', 'to']}>
+        {shape !== 'sine' && shape !== 'triangle' && (
+          <span>
+            <span class="name">edge</span>{' '}
+            <CircuitValue
+              path="control.edgeSec"
+              label="Time of an edge of the square or of a ramp’s flyback, 0 to 100 %"
+              short="The edge"
+            />
+          </span>
+        )}
+      </Swing>
     </>
   );
 }
 
-/** The control in another shape: an LFO keeps its rate and swing; a swing grows out of a fixed voltage and shrinks to its middle. */
-function controlOf(shape: Shape, control: Control): unknown {
-  if (control.source === 'lfo')
-    return shape === 'fixed' ? { source: 'fixed', controlV: middle(control.fromV, control.toV) } : { ...control, shape };
-  if (shape === 'fixed') return { source: 'fixed' };
-  return control.source === 'fixed'
-    ? { source: 'lfo', shape, fromV: control.controlV / 2, toV: control.controlV * 1.5 }
-    : { source: 'lfo', shape };
+/** Taps count at the press, where a hand is most even; a key counts as a press too. */
+function TapButton() {
+  const { tapRate } = useBenchView();
+  const caption = useContext(CaptionContext);
+  const tap = (event: Event) => {
+    const refused = tapRate(event.timeStamp);
+    caption.value = refused === null ? null : { words: refused, refused: true };
+  };
+  return (
+    <button
+      type="button"
+      class="word tap"
+      aria-label="Tap the rate of the LFO"
+      title="Press in time, twice or more; Alt T anywhere"
+      onPointerDown={tap}
+      onClick={(event) => event.detail === 0 && tap(event)}
+    >
+      tap
+    </button>
+  );
 }
 
-const middle = (a: number, b: number) => Number(((a + b) / 2).toPrecision(4));
+interface SwingProps {
+  readonly from: string;
+  readonly to: string;
+  readonly names: readonly [string, string];
+  readonly children?: ComponentChildren;
+}
+
+function Swing({ from, to, names, children }: SwingProps) {
+  return (
+    <span class="swing">
+      <span>
+        <span class="name from">{names[0]}</span>{' '}
+        <CircuitValue path={`control.${from}`} label={`Control voltage, ${names[0]}`} short={`VC ${names[0]}`} />
+      </span>
+      <span>
+        <span class="name">{names[1]}</span>{' '}
+        <CircuitValue path={`control.${to}`} label={`Control voltage, ${names[1]}`} short={`VC ${names[1]}`} />
+      </span>
+      {children}
+    </span>
+  );
+}

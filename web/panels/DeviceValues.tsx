@@ -22,8 +22,10 @@ export function DeviceValues({ form }: { readonly form: Form }) {
   const { channel, law } = variant.device;
   const chooseChannel = (next: Channel) => {
     if (next === channel) return;
-    bench.setValue('control', mirrored(variant.control));
-    bench.setValue('device', { ...variant.device, channel: next, gateOffV: -variant.device.gateOffV });
+    bench.setValues([
+      ['control', mirrored(variant.control)],
+      ['device', { ...variant.device, channel: next, gateOffV: -variant.device.gateOffV }],
+    ]);
   };
   const short = form === 'upright';
   return (

@@ -1,4 +1,4 @@
-import { feedbackFraction } from '../../model/design/feedback.ts';
+import { feedbackFraction, type Moves } from '../../model/design/feedback.ts';
 import { formatQuantity, parseQuantity } from '../../model/design/values.ts';
 import type { Keep } from '../state/bench.ts';
 import { useBench, useVariant } from './BenchContext.ts';
@@ -11,6 +11,13 @@ import { Sym } from './parts/Symbol.tsx';
 const KEEPS: readonly { value: Keep; words: string }[] = [
   { value: 'gate', words: 'gate bias and swing' },
   { value: 'control', words: 'the control voltage' },
+];
+
+const MOVES: readonly { value: Moves; words: string }[] = [
+  { value: 'drainOhm', words: 'R2' },
+  { value: 'controlOhm', words: 'R3' },
+  { value: 'bothKeepSum', words: 'both, sum kept' },
+  { value: 'bothKeepParallel', words: 'both, parallel kept' },
 ];
 
 /** Eq. (1): the feedback fraction and what makes it, each changed where it stands. */
@@ -34,8 +41,13 @@ export function Equation() {
           </>
         ) : (
           <>
-            Setting <i>k</i> moves {kind === 'resistor' ? 'R2' : 'the buffer’s share'} and keeps{' '}
-            <Choice label="What setting k keeps" value={bench.keep.value} options={KEEPS} onChoose={bench.setKeep} />.
+            Setting <i>k</i> moves{' '}
+            {kind === 'resistor' ? (
+              <Choice label="What setting k moves" value={bench.moves.value} options={MOVES} onChoose={bench.setMoves} />
+            ) : (
+              'the buffer’s share'
+            )}{' '}
+            and keeps <Choice label="What setting k keeps" value={bench.keep.value} options={KEEPS} onChoose={bench.setKeep} />.
           </>
         )}
       </p>

@@ -1,6 +1,6 @@
 import { useEffect, useMemo, useRef } from 'preact/hooks';
-import type { GatePeriod } from '../state/bench.ts';
-import { type GatePlot, plotGate, turnOf } from '../draw/gatePlot.ts';
+import type { ControlPicture, LiveLevels } from '../state/bench.ts';
+import { type GatePlot, isFollower, plotGate, turnOf } from '../draw/gatePlot.ts';
 import { toPixel } from '../draw/scale.ts';
 import { valueVolts, voltsText } from '../draw/words.ts';
 import { useBench, useBenchView, usePlaying } from './BenchContext.ts';
@@ -15,8 +15,7 @@ export function GateFigure() {
   const period = found === null || 'fault' in found ? null : found;
   const plot = useMemo(() => (size && period ? plotGate(period, size.width, size.height) : null), [period, size]);
   const caption =
-    plot &&
-    `${period?.steady ? 'Gate at a fixed control' : 'Gate over a period'}, ${pastWords(plot.deepest.pastV)}. Strip: filled ohmic, empty off, hatched conducting.`;
+    plot && period && `${subject(period)}, ${pastWords(plot.deepest.pastV)}. Strip: filled ohmic, empty off, hatched conducting.`;
   return (
     <Figure number={3} className="gate-figure" caption={caption}>
       <div class="plot" ref={ref}>
@@ -29,7 +28,12 @@ export function GateFigure() {
 
 interface DrawnProps {
   readonly plot: GatePlot;
-  readonly period: GatePeriod;
+  readonly period: ControlPicture;
+}
+
+function subject(period: ControlPicture): string {
+  if (isFollower(period)) return 'Gate against the level of a steady tone';
+  return period.steady ? 'Gate at a fixed control' : 'Gate over a period';
 }
 
 function Drawn({ plot, period }: DrawnProps) {
@@ -41,7 +45,7 @@ function Drawn({ plot, period }: DrawnProps) {
     <svg
       viewBox={`0 0 ${area.width} ${area.height}`}
       role="img"
-      aria-label={`Gate voltage over a period, against VGS(off) ${valueVolts(gateOffV)}`}
+      aria-label={`${subject(period)}, against VGS(off) ${valueVolts(gateOffV)}`}
     >
       <defs>
         <pattern id="off-hatch" width="6" height="6" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
@@ -93,7 +97,7 @@ function Strip({ plot }: { readonly plot: GatePlot }) {
 }
 
 /** The point of this moment: moved at frame rate, outside rendering. */
-function Present({ plot, period }: { readonly plot: GatePlot; readonly period: GatePeriod }) {
+function Present({ plot, period }: DrawnProps) {
   const { bench, slowLive } = useBenchView();
   const playing = usePlaying();
   const point = useRef<SVGCircleElement>(null);
@@ -102,13 +106,19 @@ function Present({ plot, period }: { readonly plot: GatePlot; readonly period: G
     const source = matchMedia('(prefers-reduced-motion: reduce)').matches ? slowLive : bench.live;
     return source.subscribe((live) => {
       if (live === null || point.current === null) return;
-      const { x, y, area } = plot;
-      const turn = turnOf(period, live.controlV, live.controlV < before);
+      const { y, area } = plot;
+      const across = placeAcross(plot, period, live, live.controlV < before);
       before = live.controlV;
       const height = Math.max(area.top, Math.min(area.bottom, toPixel(y, live.gateSourceV)));
-      point.current.setAttribute('cx', String(period.steady ? (area.left + area.right) / 2 : x.start + turn * (x.end - x.start)));
+      point.current.setAttribute('cx', String(across));
       point.current.setAttribute('cy', String(height));
     });
   }, [bench, slowLive, plot, period]);
   return <circle ref={point} class={playing ? 'present' : 'present hollow'} cx={plot.start.x} cy={plot.start.y} r={4.5} />;
+}
+
+function placeAcross({ area, x }: GatePlot, period: ControlPicture, live: LiveLevels, falling: boolean): number {
+  if (isFollower(period)) return Math.max(area.left, Math.min(area.right, toPixel(x, live.inputPeakV)));
+  if (period.steady) return (area.left + area.right) / 2;
+  return x.start + turnOf(period, live.controlV, falling) * (x.end - x.start);
 }

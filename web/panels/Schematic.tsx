@@ -1,9 +1,12 @@
-import type { ComponentChildren } from 'preact';
-import { drawSchematic, fittedIn, type Form, type Place, type Slot } from '../draw/schematic.ts';
+import { drawSchematic, fittedIn, type Form, type Slot } from '../draw/schematic.ts';
 import { useVariant } from './BenchContext.ts';
+import { Board } from './Board.tsx';
+import { Fittings } from './Fittings.tsx';
+import { At } from './parts/At.tsx';
 import { Figure } from './parts/Figure.tsx';
 import { rem, useSheetSize } from './parts/useSheetSize.ts';
 import { SchematicSymbols } from './SchematicSymbols.tsx';
+import { ControlSentence } from './ControlSentence.tsx';
 import { schematicValues } from './SchematicValues.tsx';
 import { useLimits } from './useLimits.ts';
 
@@ -14,6 +17,10 @@ export function Schematic({ form }: { readonly form: Form }) {
   const fitted = fittedIn(variant);
   const drawing = size && drawSchematic(fitted, size.width, form);
   const limits = useLimits();
+  const marked = [
+    ...(drawing && limits.device ? [drawing.deviceBox] : []),
+    ...(drawing && limits.amplifier && !fitted.rows.output ? [drawing.amplifierBox] : []),
+  ];
   const values = schematicValues(fitted, form, limits);
   return (
     <Figure
@@ -25,11 +32,7 @@ export function Schematic({ form }: { readonly form: Form }) {
         {drawing && (
           <>
             <svg viewBox={`0 0 ${drawing.width} ${drawing.height}`} role="img" aria-label={spoken(fitted.feedback)}>
-              <SchematicSymbols
-                drawing={drawing}
-                fitted={fitted}
-                past={{ device: limits.device !== null, amplifier: limits.amplifier !== null }}
-              />
+              <SchematicSymbols drawing={{ ...drawing, grounds: [drawing.ground] }} fitted={fitted} marked={marked} />
             </svg>
             {(Object.keys(values) as Slot[]).map((slot) => {
               const place = drawing.places[slot];
@@ -44,17 +47,12 @@ export function Schematic({ form }: { readonly form: Form }) {
           </>
         )}
       </div>
+      {drawing && <Board width={drawing.width} form={form} amplifierPast={limits.amplifier !== null} />}
+      <ControlSentence />
+      <Fittings />
       {form === 'upright' && limits.device && <p class="fault limit-words">J1: {limits.device}.</p>}
-      {form === 'upright' && limits.amplifier && <p class="fault limit-words">The amplifier {limits.amplifier}.</p>}
+      {(form === 'upright' || fitted.rows.output) && limits.amplifier && <p class="fault limit-words">The amplifier {limits.amplifier}.</p>}
     </Figure>
-  );
-}
-
-function At({ place, children }: { readonly place: Place; readonly children: ComponentChildren }) {
-  return (
-    <div class={`at ${place.align}`} style={{ left: rem(place.x), top: rem(place.y) }}>
-      {children}
-    </div>
   );
 }
 

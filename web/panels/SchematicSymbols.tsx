@@ -1,18 +1,24 @@
 import type { ComponentChildren } from 'preact';
-import type { Drawing, Fitted, PartSymbol } from '../draw/schematic.ts';
-import { AMPLIFIER, BUFFER, GENERATOR_RADIUS, JFET, PLATES, RESISTOR, SUM_RADIUS } from '../draw/schematicParts.ts';
+import type { Point } from '../draw/line.ts';
+import type { Box } from '../draw/placeSlip.ts';
+import type { Fitted, PartSymbol, Segment } from '../draw/schematic.ts';
+import { AMPLIFIER, BUFFER, DIODE, GENERATOR_RADIUS, INDUCTOR, JFET, PLATES, RESISTOR, SUM_RADIUS } from '../draw/schematicParts.ts';
 
-/** Wires and symbols of the drawing, in the standard shapes (IEC 60617). */
-export function SchematicSymbols({
-  drawing,
-  fitted,
-  past,
-}: {
-  readonly drawing: Drawing;
-  readonly fitted: Fitted;
-  readonly past: { readonly device: boolean; readonly amplifier: boolean };
-}) {
-  const { ground, deviceBox, amplifierBox } = drawing;
+interface SymbolsProps {
+  readonly drawing: {
+    readonly wires: readonly Segment[];
+    readonly dots: readonly Point[];
+    readonly terminals: readonly Point[];
+    readonly grounds: readonly Point[];
+    readonly symbols: readonly PartSymbol[];
+  };
+  readonly fitted: Pick<Fitted, 'wave' | 'channel'>;
+  /** Round the parts that are past a limit. */
+  readonly marked: readonly Box[];
+}
+
+/** Wires and symbols of a drawing, in the standard shapes (IEC 60617). */
+export function SchematicSymbols({ drawing, fitted, marked }: SymbolsProps) {
   return (
     <>
       {drawing.wires.map(({ x1, y1, x2, y2 }) => (
@@ -24,20 +30,25 @@ export function SchematicSymbols({
       {drawing.terminals.map(({ x, y }) => (
         <circle key={`${x} ${y}`} class="terminal" cx={x} cy={y} r={4} />
       ))}
-      <path d={`M${ground.x} ${ground.y}v9`} />
-      <path class="plate" d={`M${ground.x - 11} ${ground.y + 9}h22`} />
+      {drawing.grounds.map(({ x, y }) => (
+        <g key={`${x} ${y}`}>
+          <path d={`M${x} ${y}v9`} />
+          <path class="plate" d={`M${x - 11} ${y + 9}h22`} />
+        </g>
+      ))}
       {drawing.symbols.map((symbol) => (
         <g key={`${symbol.kind} ${symbol.x} ${symbol.y}`} class="symbol" transform={`translate(${symbol.x} ${symbol.y})`}>
           {shapeOf(symbol.kind, fitted)}
         </g>
       ))}
-      {past.device && <Corners {...deviceBox} />}
-      {past.amplifier && <Corners {...amplifierBox} />}
+      {marked.map((box) => (
+        <Corners key={`${box.left} ${box.top}`} {...box} />
+      ))}
     </>
   );
 }
 
-function shapeOf(kind: PartSymbol['kind'], fitted: Fitted): ComponentChildren {
+function shapeOf(kind: PartSymbol['kind'], fitted: SymbolsProps['fitted']): ComponentChildren {
   const { long, across } = RESISTOR;
   switch (kind) {
     case 'resistor':
@@ -46,6 +57,12 @@ function shapeOf(kind: PartSymbol['kind'], fitted: Fitted): ComponentChildren {
       return <rect x={-across / 2} y={-long / 2} width={across} height={long} />;
     case 'capacitor':
       return <path class="plate" d={`M${-PLATES.wide / 2} ${-PLATES.apart / 2}h${PLATES.wide}m0 ${PLATES.apart}h${-PLATES.wide}`} />;
+    case 'capacitorAcross':
+      return <path class="plate" d={`M${-PLATES.apart / 2} ${-PLATES.wide / 2}v${PLATES.wide}m${PLATES.apart} 0v${-PLATES.wide}`} />;
+    case 'inductor':
+      return <path d={`M${-INDUCTOR.turns * INDUCTOR.radius} 0${'a7 7 0 0 1 14 0'.repeat(INDUCTOR.turns)}`} />;
+    case 'diode':
+      return <Diode channel={fitted.channel} />;
     case 'amplifier':
       return <path d={`M${-AMPLIFIER.long / 2} ${-AMPLIFIER.high / 2}v${AMPLIFIER.high}l${AMPLIFIER.long} ${-AMPLIFIER.high / 2}Z`} />;
     case 'buffer':
@@ -93,8 +110,15 @@ function Jfet({ channel }: { readonly channel: 'n' | 'p' }) {
   );
 }
 
+/** From the gate above to the source pin below; the other way round for a p-channel part. */
+function Diode({ channel }: { readonly channel: 'n' | 'p' }) {
+  const [half, wide] = [DIODE.long / 2, DIODE.wide / 2];
+  const [base, tip] = channel === 'n' ? [-half, half] : [half, -half];
+  return <path d={`M${-wide} ${base}h${2 * wide}L0 ${tip}ZM${-wide} ${tip}h${2 * wide}`} />;
+}
+
 /** Four corner marks round a part that is past its limit. */
-function Corners({ left, top, width, height }: Drawing['deviceBox']) {
+function Corners({ left, top, width, height }: Box) {
   const [right, bottom, arm] = [left + width, top + height, 10];
   return (
     <path

@@ -5,6 +5,7 @@ import { ControlValues } from './ControlValues.tsx';
 import { DeviceValues } from './DeviceValues.tsx';
 import { FeedbackChoice } from './FeedbackChoice.tsx';
 import { LiveVolts } from './LiveVolts.tsx';
+import { Named } from './parts/Named.tsx';
 
 interface Limits {
   readonly device: string | null;
@@ -12,15 +13,10 @@ interface Limits {
 }
 
 /** What stands at each place of the drawing, for the parts that are fitted. */
-export function schematicValues(fitted: Fitted, form: Form, limits: Limits): Partial<Record<Slot, ComponentChildren>> {
+export function schematicValues(fitted: Fitted, form: Form, limits: Limits): Values {
   const resistors = fitted.feedback === 'resistor';
   return {
-    in: <LiveVolts name="in" which="inputPeakV" />,
-    source: (
-      <>
-        <span class="name">from</span> <CircuitValue path="cell.sourceOhm" label="Resistance of the signal source" short="The source" />
-      </>
-    ),
+    ...inputValues(fitted),
     series: (
       <Named name="R1" over>
         <CircuitValue path="cell.seriesOhm" label="R1, in series with the signal" short="R1" />
@@ -55,12 +51,33 @@ export function schematicValues(fitted: Fitted, form: Form, limits: Limits): Par
         <CircuitValue path="cell.controlOhm" label="R3, control to gate" short="R3" />
       </Named>
     ),
-    generator: <ControlValues />,
+    ...(fitted.rows.control ? { fromDriver: <span class="name">driver</span> } : { generator: <ControlValues /> }),
+    ...(fitted.rows.source && { sourcePin: <span class="name">J1, source</span> }),
     gateLive: <LiveVolts symbol={form === 'wide' ? 'GS' : null} which="gateSourceV" />,
     drainLive: <LiveVolts symbol="DS" which="drainPeakV" />,
     ...(limits.device && { limit: <p class="fault limit-words">{limits.device}</p> }),
-    ...(limits.amplifier && { rail: <p class="fault limit-words">{limits.amplifier}</p> }),
     device: <DeviceValues form={form} />,
+    ...(fitted.rows.output ? { toOutput: <span class="name">drain</span> } : outputValues(form, limits)),
+    ground: <span class="name">0 V</span>,
+  };
+}
+
+type Values = Partial<Record<Slot, ComponentChildren>>;
+
+function inputValues({ rows }: Fitted): Values {
+  if (rows.input) return { in: <span class="name">board</span> };
+  return {
+    in: <LiveVolts name="in" which="inputPeakV" />,
+    source: (
+      <>
+        <span class="name">from</span> <CircuitValue path="cell.sourceOhm" label="Resistance of the signal source" short="The source" />
+      </>
+    ),
+  };
+}
+
+function outputValues(form: Form, limits: Limits): Values {
+  return {
     load: (
       <div class="stack">
         <Named name="R4" over={form === 'upright'}>
@@ -78,14 +95,6 @@ export function schematicValues(fitted: Fitted, form: Form, limits: Limits): Par
       </div>
     ),
     out: <LiveVolts which="output" />,
-    ground: <span class="name">0 V</span>,
+    ...(limits.amplifier && { rail: <p class="fault limit-words">{limits.amplifier}</p> }),
   };
-}
-
-function Named({ name, over = false, children }: { readonly name: string; readonly over?: boolean; readonly children: ComponentChildren }) {
-  return (
-    <span class={over ? 'named over-value' : 'named'}>
-      <span class="name">{name}</span> {children}
-    </span>
-  );
 }

@@ -14,6 +14,7 @@ import { sampled } from './parts/sampled.ts';
 import { Ruler } from './Ruler.tsx';
 import { SoundButtons } from './SoundButtons.tsx';
 import { runShortcut } from './shortcuts.ts';
+import { createRateTap } from './tap.ts';
 import { createSheetLimits, LimitsContext } from './sheetLimits.ts';
 import { useFileDrop } from './useFileDrop.ts';
 import { useLayout } from './useLayout.ts';
@@ -28,15 +29,23 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
   const dropping = useFileDrop(bench);
   const slow = useMemo(() => sampled(bench.moment, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : 0), [bench]);
   useEffect(() => slow.end, [slow]);
+  const view = useMemo(
+    () => ({
+      bench,
+      moment: slow.copy,
+      slowLive: computed(() => slow.copy.value?.levels ?? null),
+      tapRate: createRateTap(bench),
+    }),
+    [bench, slow],
+  );
   useEffect(() => {
     const onKeyDown = (event: KeyboardEvent) => {
-      if (runShortcut(event, bench, () => (dialog.value = 'open'))) event.preventDefault();
+      if (runShortcut(event, { bench, open: () => (dialog.value = 'open'), tapRate: view.tapRate })) event.preventDefault();
     };
     window.addEventListener('keydown', onKeyDown);
     return () => window.removeEventListener('keydown', onKeyDown);
-  }, [bench, dialog]);
+  }, [bench, dialog, view]);
 
-  const view = useMemo(() => ({ bench, moment: slow.copy, slowLive: computed(() => slow.copy.value?.levels ?? null) }), [bench, slow]);
   const close = () => {
     dialog.value = null;
   };

@@ -3,7 +3,7 @@ import type { Control, Variant } from '../../model/design/types.ts';
 import { formatQuantity, splitQuantity } from '../../model/design/values.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import { decimals, signedDecimals } from '../draw/words.ts';
-import type { GatePeriod, LiveLevels, NoisePoint, SwingPoint } from '../state/bench.ts';
+import type { ControlPicture, LiveLevels, NoisePoint, SwingPoint } from '../state/bench.ts';
 
 export interface Row {
   readonly what: string;
@@ -23,7 +23,7 @@ export interface Measured {
   readonly reading: ToneReading | null;
   /** Of the reading's moment; null while sound is stopped: the control is then shown at rest. */
   readonly levels: LiveLevels | null;
-  readonly period: GatePeriod | null;
+  readonly picture: ControlPicture | null;
   readonly swing: readonly SwingPoint[] | null;
   readonly noise: readonly NoisePoint[] | null;
 }
@@ -55,10 +55,10 @@ function endsOf(values: readonly number[] | Float64Array | null, print: (value: 
   return { min: print(Math.min(...values)), max: print(Math.max(...values)) };
 }
 
-function signalRows(reading: ToneReading, { levels, period, swing, noise }: Measured): Row[] {
+function signalRows(reading: ToneReading, { levels, picture, swing, noise }: Measured): Row[] {
   const gain = (db: number) => signedDecimals(db, 1);
   const through = levels?.feedthroughPeakV ?? Math.abs(reading.restDcV);
-  const overPeriod = period && !period.steady ? period.drain.map(Math.abs) : null;
+  const overPeriod = picture && 'drain' in picture && !picture.steady ? picture.drain.map(Math.abs) : null;
   const drain = unsignedVolts(overPeriod ? [through, ...overPeriod] : [through]);
   const added = reading.dcV - reading.restDcV;
   const tone = smallVolts([added]);
@@ -129,17 +129,19 @@ function channelRow(reading: ToneReading, swing: readonly SwingPoint[] | null): 
   return row('Drain to source, at rest', 'Drain-source', ['r', 'DS'], print(reading.rdsOhm), unit, endsOf(swing && ohms.slice(1), print));
 }
 
-function controlRows({ control }: Variant, { reading, levels, period }: Measured): Row[] {
+function controlRows({ control }: Variant, { reading, levels, picture }: Measured): Row[] {
   const volts = (v: number) => decimals(v, 2);
   const now = levels?.controlV ?? (control.source === 'fixed' ? control.controlV : null);
   const swing = controlEnds(control);
   const rows: Row[] = [];
   if (now !== null || swing)
     rows.push(row('Control to be delivered', 'Control', ['V', 'C'], now === null ? null : volts(now), 'V', endsOf(swing, volts)));
-  const gate = period && !period.steady ? period.gate : null;
+  const still = picture === null || ('steady' in picture && picture.steady);
+  const gate = still ? null : picture.gate;
   if (reading) rows.push(row('Gate to source, at rest', 'Gate-source', ['V', 'GS'], volts(reading.vgsV), 'V', endsOf(gate, volts)));
-  if (period) {
-    const off = period.gateOffV < 0 ? period.gateOffV - Math.min(...period.gate) : Math.max(...period.gate) - period.gateOffV;
+  if (picture) {
+    const { gateOffV } = picture;
+    const off = gateOffV < 0 ? gateOffV - Math.min(...picture.gate) : Math.max(...picture.gate) - gateOffV;
     rows.push({ ...row('Past off, at the gate’s far end', 'Past off', null, signedDecimals(off, 2), 'V'), measured: false });
   }
   return rows;

@@ -6,6 +6,7 @@
  * Signals of numbers that are measured now are null until sound has run.
  */
 import type { ReadonlySignal } from '@preact/signals';
+import type { Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 
@@ -19,8 +20,13 @@ export interface Bench {
   /** What setting k leaves alone: the gate's bias and swing, or the control voltage. */
   readonly keep: ReadonlySignal<Keep>;
   setKeep(keep: Keep): void;
+  /** Which resistors of the pair setting k moves. */
+  readonly moves: ReadonlySignal<Moves>;
+  setMoves(moves: Moves): void;
   /** `path` is relative to the heard variant: `cell.seriesOhm`. Changes of one path in quick succession (a drag) undo as one. */
   setValue(path: string, value: unknown): string | null;
+  /** Several values together, in order, as one change. */
+  setValues(changes: readonly (readonly [path: string, value: unknown])[]): string | null;
   setDesignValue(path: DesignPath, value: unknown): string | null;
   setFeedbackFraction(k: number): string | null;
   undo(): void;
@@ -68,10 +74,12 @@ export interface Bench {
   readonly worst: ReadonlySignal<WorstReading | null>;
   /** The shadow tone over the swing, ascending in the gate's voltage. */
   readonly swing: ReadonlySignal<readonly SwingPoint[] | null>;
+  /** For each variant, null where it is not known yet or cannot be read. */
+  readonly summaries: ReadonlySignal<readonly (VariantSummary | null)[]>;
   /** Noise over the swing, ascending in the gate's voltage; null while it is being computed. */
   readonly noise: ReadonlySignal<readonly NoisePoint[] | null>;
-  /** What the control does to the heard variant by itself, or why it has no period; null until the first answer. */
-  readonly period: ReadonlySignal<GatePeriod | { readonly fault: string } | null>;
+  /** What the control does to the heard variant, by itself over a period or with a tone at its input, or why that cannot be said; null until the first answer. */
+  readonly period: ReadonlySignal<ControlPicture | { readonly fault: string } | null>;
   /** THD against k at the gate voltage of a moment just past (at rest while sound is stopped), as often as can be computed. */
   readonly feedbackCurve: ReadonlySignal<FeedbackCurve | null>;
   /** The shadow tone at the cell's input, V peak. */
@@ -173,10 +181,26 @@ export interface GatePeriod {
   readonly gateOffV: number;
 }
 
+/** What a follower makes of a steady tone at the input: V peak, ascending where its control moves one way. */
+export interface FollowerCurve {
+  readonly levelV: Float64Array;
+  readonly control: Float64Array;
+  readonly gate: Float64Array;
+  readonly gateOffV: number;
+}
+
+export type ControlPicture = GatePeriod | FollowerCurve;
+
 export interface WorstReading {
   readonly thdFundamental: number;
   readonly gainDb: number;
   readonly gateV: number;
+}
+
+/** A variant by the shadow tone, fractions: with its control at rest, and the highest over its swing. */
+export interface VariantSummary {
+  readonly restThd: number;
+  readonly worstThd: number;
 }
 
 /** The shadow tone at one gate voltage of the swing. */

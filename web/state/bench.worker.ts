@@ -3,14 +3,17 @@
  * for each render until it is done.
  */
 import { renderClip } from '../../model/chain/render.ts';
-import { gatePeriod } from './gatePeriod.ts';
+import { controlPicture } from './controlPicture.ts';
 import { sentenceOf } from './notes.ts';
-import { readFeedbackCurve, readMoment, readNoise, readSwing } from './toneStudy.ts';
+import { readFeedbackCurve, readMoment, readNoise, readSummary, readSwing } from './toneStudy.ts';
 import type { FromReading, FromRender, ToneQuestion, ToReading, ToRender } from './workers.ts';
 
 let asked: { id: number; question: ToneQuestion } | null = null;
-/** Work in small steps, taken in turn. */
-const work = new Map<'curve' | 'swing', Generator<void, void>>();
+type Work = 'curve' | 'swing' | 'noise' | 'variant';
+/** What is looked at while values move; the rest is done when none of it is left. */
+const SOON: readonly Work[] = ['curve', 'swing'];
+/** In small steps, taken in turn. */
+const work = new Map<Work, Generator<void, void>>();
 let pumping = false;
 const pump = new MessageChannel();
 
@@ -26,7 +29,11 @@ self.onmessage = ({ data }: MessageEvent<ToReading | ToRender>) => {
       begin('curve', answerCurve(data.id, questionNow(), data.gateV));
       return;
     case 'swing':
+      work.delete('noise');
       begin('swing', answerSwing(data.id, questionNow()));
+      return;
+    case 'variant':
+      begin('variant', answerVariant(data.id, { ...questionNow(), variantIndex: data.index }));
       return;
     case 'render':
       render(data);
@@ -42,7 +49,7 @@ function questionNow(): ToneQuestion {
   return asked.question;
 }
 
-function begin(name: 'curve' | 'swing', steps: Generator<void, void>): void {
+function begin(name: Work, steps: Generator<void, void>): void {
   work.set(name, steps);
   if (pumping) return;
   pumping = true;
@@ -51,7 +58,7 @@ function begin(name: 'curve' | 'swing', steps: Generator<void, void>): void {
 
 /** One step of the work, then back to the queue, so that a moment never waits for more than one reading. */
 pump.port1.onmessage = () => {
-  const [first] = work;
+  const first = [...work].find(([name]) => SOON.includes(name)) ?? [...work][0];
   if (first !== undefined) {
     const [name, steps] = first;
     work.delete(name);
@@ -76,10 +83,18 @@ function* answerCurve(id: number, question: ToneQuestion, gateV: number | null):
 }
 
 function* answerSwing(id: number, question: ToneQuestion): Generator<void, void> {
-  tell({ type: 'period', id, period: gatePeriod(question.design, question.variantIndex) });
+  tell({ type: 'period', id, period: controlPicture(question.design, question.variantIndex, question.toneHz) });
   yield;
   tell({ type: 'worst', id, swing: yield* orNull(readSwing(question)) });
+  begin('noise', answerNoise(id, question));
+}
+
+function* answerNoise(id: number, question: ToneQuestion): Generator<void, void> {
   tell({ type: 'noise', id, points: yield* orNull(readNoise(question)) });
+}
+
+function* answerVariant(id: number, question: ToneQuestion): Generator<void, void> {
+  tell({ type: 'variant', id, index: question.variantIndex, summary: yield* orNull(readSummary(question)) });
 }
 
 function answerMoment(id: number, gateV: number | null): void {

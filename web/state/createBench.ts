@@ -44,6 +44,7 @@ export function assembleBench(parts: Parts): Bench {
   const readings = createReadings(parts.openReadingWorker(), {
     design: document.design,
     heardVariant: document.heardVariant,
+    moves: document.moves,
     live: levels.live,
     playing: computed(() => listening.sound.value === 'playing'),
   });

@@ -1,7 +1,7 @@
 /** The design being edited: every change is checked, then kept for undo. */
 import type { ReadonlySignal } from '@preact/signals';
 import { computed, signal } from '@preact/signals';
-import { withFeedbackFraction } from '../../model/design/feedback.ts';
+import { type Moves, withFeedbackFraction } from '../../model/design/feedback.ts';
 import { setAt } from '../../model/design/path.ts';
 import { checkDesign } from '../../model/design/read.ts';
 import type { Design, Variant } from '../../model/design/types.ts';
@@ -19,12 +19,15 @@ export interface DocumentState {
   readonly heardVariant: ReadonlySignal<number>;
   readonly variant: ReadonlySignal<Variant>;
   readonly keep: ReadonlySignal<Keep>;
+  readonly moves: ReadonlySignal<Moves>;
   readonly canUndo: ReadonlySignal<boolean>;
   readonly canRedo: ReadonlySignal<boolean>;
   hearVariant(index: number): void;
   addVariant(): string | null;
   setKeep(keep: Keep): void;
+  setMoves(moves: Moves): void;
   setValue(path: string, value: unknown): string | null;
+  setValues(changes: readonly (readonly [path: string, value: unknown])[]): string | null;
   setDesignValue(path: DesignPath, value: unknown): string | null;
   setFeedbackFraction(k: number): string | null;
   undo(): void;
@@ -38,6 +41,7 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
   const design = signal(first);
   const heard = signal(0);
   const keep = signal<Keep>('gate');
+  const moves = signal<Moves>('drainOhm');
   const past = signal<readonly Design[]>([]);
   const future = signal<readonly Design[]>([]);
   let lastKey = '';
@@ -77,6 +81,11 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
     variants: design.value.variants.map((variant, i) => (i === heard.value ? make(variant) : variant)),
   });
 
+  const setValues: DocumentState['setValues'] = (changes) => {
+    const key = [heard.value, ...changes.map(([path]) => path)].join(' ');
+    return change(key, () => withVariant((variant) => changes.reduce((so, [path, value]) => setAt(so, path, value), variant)));
+  };
+
   const step = (from: typeof past, to: typeof past) => {
     const next = from.value.at(-1);
     if (next === undefined) return;
@@ -92,6 +101,7 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
     heardVariant: heard,
     variant: computed(() => design.value.variants[heard.value]),
     keep,
+    moves,
     canUndo: computed(() => past.value.length > 0),
     canRedo: computed(() => future.value.length > 0),
     hearVariant(index) {
@@ -109,9 +119,14 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
     setKeep(value) {
       keep.value = value;
     },
-    setValue: (path, value) => change(`${heard.value} ${path}`, () => withVariant((variant) => setAt(variant, path, value))),
+    setMoves(value) {
+      moves.value = value;
+    },
+    setValue: (path, value) => setValues([[path, value]]),
+    setValues,
     setDesignValue: (path, value) => change(path, () => setAt(design.value, path, value)),
-    setFeedbackFraction: (k) => change(`${heard.value} k`, () => withVariant((variant) => withFeedbackFraction(variant, k, keep.value))),
+    setFeedbackFraction: (k) =>
+      change(`${heard.value} k`, () => withVariant((variant) => withFeedbackFraction(variant, k, keep.value, moves.value))),
     undo: () => step(past, future),
     redo: () => step(future, past),
     replace: (next) => put(next, '', 0),

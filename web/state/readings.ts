@@ -1,8 +1,10 @@
 /** The shadow tone's readings, from a worker: asked for when something changed, and at the gate of the moment while sound moves it. */
 import type { ReadonlySignal } from '@preact/signals';
 import { effect, signal } from '@preact/signals';
+import type { Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
-import type { Bench, FeedbackCurve, GatePeriod, LiveLevels, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import type { Bench, ControlPicture, FeedbackCurve, LiveLevels, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import { createSummaries } from './summaries.ts';
 import { setWithin } from './within.ts';
 import type { FromReading, ToReading, WorkerPort } from './workers.ts';
 
@@ -13,12 +15,13 @@ const CURVE_REST_MS = 60;
 const FIRST_TONE_V = 0.5;
 const FIRST_TONE_HZ = 1000;
 
-type Measured = 'moment' | 'period' | 'worst' | 'swing' | 'noise' | 'feedbackCurve';
+type Measured = 'moment' | 'period' | 'worst' | 'swing' | 'noise' | 'summaries' | 'feedbackCurve';
 type Readings = Pick<Bench, Measured | 'toneV' | 'setToneV' | 'toneHz' | 'setToneHz'>;
 
 export interface ReadingSources {
   readonly design: ReadonlySignal<Design>;
   readonly heardVariant: ReadonlySignal<number>;
+  readonly moves: ReadonlySignal<Moves>;
   readonly live: ReadonlySignal<LiveLevels | null>;
   readonly playing: ReadonlySignal<boolean>;
 }
@@ -29,7 +32,7 @@ export function createReadings(
   now: () => number = () => performance.now(),
 ): Readings {
   const moment = signal<Moment | null>(null);
-  const period = signal<GatePeriod | { readonly fault: string } | null>(null);
+  const period = signal<ControlPicture | { readonly fault: string } | null>(null);
   const worst = signal<WorstReading | null>(null);
   const swing = signal<readonly SwingPoint[] | null>(null);
   const noise = signal<readonly NoisePoint[] | null>(null);
@@ -50,6 +53,7 @@ export function createReadings(
     const levels = sources.playing.peek() ? moment.peek()?.levels : null;
     worker.post({ type: 'curve', id, gateV: levels?.gateSourceV ?? null });
   }, now);
+  const summaries = createSummaries((index) => worker.post({ type: 'variant', id, index }));
   const swingTurn = createTurn(() => worker.post({ type: 'swing', id }), now);
 
   const publish = (reading: Moment['reading'], thdBand: Moment['thdBand']) => {
@@ -74,6 +78,8 @@ export function createReadings(
         worst.value = message.swing?.worst ?? null;
         swing.value = message.swing?.points ?? null;
         return swingTurn.done();
+      case 'variant':
+        return summaries.note(message.index, message.summary);
       case 'noise':
         if (message.id === id) noise.value = message.points;
         return;
@@ -89,13 +95,20 @@ export function createReadings(
   });
 
   effect(() => {
-    const question = { design: sources.design.value, variantIndex: sources.heardVariant.value, toneHz: toneHz.value, toneV: toneV.value };
+    const question = {
+      design: sources.design.value,
+      variantIndex: sources.heardVariant.value,
+      moves: sources.moves.value,
+      toneHz: toneHz.value,
+      toneV: toneV.value,
+    };
     id++;
     noise.value = null;
     worker.post({ type: 'question', id, question });
     momentTurn.ask();
     curveTurn.ask();
     swingTurn.ask();
+    summaries.ask(question);
   });
 
   effect(() => {
@@ -113,6 +126,7 @@ export function createReadings(
     worst,
     swing,
     noise,
+    summaries: summaries.all,
     feedbackCurve,
     toneV,
     toneHz,

@@ -1,13 +1,13 @@
 /** What the page's worker reads of the shadow tone, as a pure plan of small steps that a test in Node can run too. */
 import { controlRangeV } from '../../model/control/range.ts';
-import { feedbackFraction, withFeedbackFraction } from '../../model/design/feedback.ts';
+import { feedbackFraction, type Moves, withFeedbackFraction } from '../../model/design/feedback.ts';
 import type { Variant } from '../../model/design/types.ts';
 import { noiseReading } from '../../model/study/noiseDensity.ts';
 import { controlSwing } from '../../model/study/swing.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import { measureTone } from '../../model/study/tone.ts';
 import { fractionsWithin, thdWithin } from '../draw/tolerance.ts';
-import type { FeedbackCurve, FeedbackPoint, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import type { FeedbackCurve, FeedbackPoint, Moment, NoisePoint, SwingPoint, VariantSummary, WorstReading } from './bench.ts';
 import type { ToneQuestion } from './workers.ts';
 
 const SWING_STEPS = 24;
@@ -65,6 +65,14 @@ export function* readSwing(question: ToneQuestion): Generator<void, { worst: Wor
   return { worst, points: points.sort((a, b) => a.gateV - b.gateV) };
 }
 
+/** The shadow tone at rest, and the worst over the swing. Yields between readings. */
+export function* readSummary(question: ToneQuestion): Generator<void, VariantSummary> {
+  const restThd = readTone(question, null).thdFundamental;
+  yield;
+  const { worst } = yield* readSwing(question);
+  return { restThd, worstThd: worst.thdFundamental };
+}
+
 /** The noise at the drain over the gate's swing, at 25 gate voltages. Yields between readings. */
 export function* readNoise(question: ToneQuestion): Generator<void, readonly NoisePoint[]> {
   const { design, variantIndex } = question;
@@ -108,15 +116,15 @@ export function* readFeedbackCurve(question: ToneQuestion, gateV: number | null)
 
 /** The same question of a cell with another k; null where parts within their limits cannot give it. */
 function questionAt(question: ToneQuestion, k: number): ToneQuestion | null {
-  const { design, variantIndex } = question;
-  const moved = variantAtFraction(design.variants[variantIndex], k);
+  const { design, variantIndex, moves } = question;
+  const moved = variantAtFraction(design.variants[variantIndex], k, moves);
   if (moved === null) return null;
   return { ...question, design: { ...design, variants: design.variants.map((other, i) => (i === variantIndex ? moved : other)) } };
 }
 
-function variantAtFraction(variant: Variant, k: number): Variant | null {
+function variantAtFraction(variant: Variant, k: number, moves: Moves): Variant | null {
   try {
-    return withFeedbackFraction(variant, k, 'control');
+    return withFeedbackFraction(variant, k, 'control', moves);
   } catch (error) {
     if (error instanceof RangeError) return null;
     throw error;

@@ -1,6 +1,7 @@
 /** The wire between the page and its two workers. Each union goes one way; receivers end in `message satisfies never`. */
+import type { Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
-import type { FeedbackCurve, GatePeriod, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import type { ControlPicture, FeedbackCurve, Moment, NoisePoint, SwingPoint, VariantSummary, WorstReading } from './bench.ts';
 
 /** A worker as the state sees it, so that a test can stand something else in its place. */
 export interface WorkerPort<Out, In> {
@@ -15,6 +16,8 @@ export interface ToneQuestion {
   readonly variantIndex: number;
   readonly toneHz: number;
   readonly toneV: number;
+  /** Which resistors make another k. */
+  readonly moves: Moves;
 }
 
 /** `id` counts up with each question; what is asked for, and its answer, carry the id of the question that they are about. */
@@ -26,17 +29,20 @@ export type ToReading =
   /** Asks for the curve against k; replaces one that is being computed. */
   | { readonly type: 'curve'; readonly id: number; readonly gateV: number | null }
   /** Asks for the period, the worst over the swing, then the noise over it, in this order; replaces one that is being computed. */
-  | { readonly type: 'swing'; readonly id: number };
+  | { readonly type: 'swing'; readonly id: number }
+  /** Asks for the summary of one variant. */
+  | { readonly type: 'variant'; readonly id: number; readonly index: number };
 
 export type FromReading =
   | { readonly type: 'reading'; readonly id: number; readonly reading: Moment['reading']; readonly thdBand: Moment['thdBand'] }
   | { readonly type: 'curve'; readonly id: number; readonly curve: FeedbackCurve | null }
-  | { readonly type: 'period'; readonly id: number; readonly period: GatePeriod | { readonly fault: string } }
+  | { readonly type: 'period'; readonly id: number; readonly period: ControlPicture | { readonly fault: string } }
   | {
       readonly type: 'worst';
       readonly id: number;
       readonly swing: { readonly worst: WorstReading; readonly points: readonly SwingPoint[] } | null;
     }
+  | { readonly type: 'variant'; readonly id: number; readonly index: number; readonly summary: VariantSummary | null }
   | { readonly type: 'noise'; readonly id: number; readonly points: readonly NoisePoint[] | null };
 
 export type ToRender = {

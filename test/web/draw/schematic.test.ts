@@ -2,10 +2,16 @@ import { describe, expect, test } from 'vitest';
 import { drawSchematic, type Drawing, type Fitted, type Form, type Segment } from '../../../web/draw/schematic.ts';
 import { halfLength } from '../../../web/draw/schematicParts.ts';
 
-const fittings: Fitted[] = (['none', 'resistor', 'buffered'] as const).flatMap((feedback) =>
-  [true, false].flatMap((blocking) =>
-    [true, false].map(
-      (loadCapacitor) => ({ feedback, blocking: blocking && feedback === 'resistor', loadCapacitor, wave: 'sine', channel: 'n' }) as const,
+const NO_ROWS = { input: false, output: false, control: false, source: false };
+const ALL_ROWS = { input: true, output: true, control: true, source: true };
+
+const fittings: Fitted[] = [NO_ROWS, ALL_ROWS, { ...NO_ROWS, source: true }, { ...NO_ROWS, output: true }].flatMap((rows) =>
+  (['none', 'resistor', 'buffered'] as const).flatMap((feedback) =>
+    [true, false].flatMap((blocking) =>
+      [true, false].map(
+        (loadCapacitor) =>
+          ({ feedback, blocking: blocking && feedback === 'resistor', loadCapacitor, wave: 'sine', channel: 'n', rows }) as const,
+      ),
     ),
   ),
 );
@@ -24,9 +30,11 @@ describe.each(cases)('drawn $form at $width for $fitted', ({ fitted, form, width
     expect(kinds(drawing).includes('buffer')).toBe(fitted.feedback === 'buffered');
     expect(kinds(drawing).includes('sum')).toBe(fitted.feedback === 'buffered');
     const upright = kinds(drawing).filter((kind) => kind === 'resistorUpright').length;
-    expect(upright).toBe(fitted.feedback === 'resistor' ? 2 : 1);
+    expect(upright).toBe(Number(fitted.feedback === 'resistor') + Number(!fitted.rows.output));
     const capacitors = kinds(drawing).filter((kind) => kind === 'capacitor').length;
-    expect(capacitors).toBe(Number(fitted.blocking) + Number(fitted.loadCapacitor));
+    expect(capacitors).toBe(Number(fitted.blocking) + Number(fitted.loadCapacitor && !fitted.rows.output));
+    expect(kinds(drawing).includes('generator')).toBe(!fitted.rows.control);
+    expect(kinds(drawing).includes('amplifier')).toBe(!fitted.rows.output);
   });
 
   test('runs every wire straight, inside the drawing, and from left to right or top to bottom or back without length zero', () => {
@@ -54,7 +62,11 @@ describe.each(cases)('drawn $form at $width for $fitted', ({ fitted, form, width
 });
 
 test('a load without capacitance is one branch, with nothing dangling beyond it', () => {
-  const drawing = drawSchematic({ feedback: 'none', blocking: false, loadCapacitor: false, wave: 'fixed', channel: 'p' }, 678, 'wide');
+  const drawing = drawSchematic(
+    { feedback: 'none', blocking: false, loadCapacitor: false, wave: 'fixed', channel: 'p', rows: NO_ROWS },
+    678,
+    'wide',
+  );
   const load = drawing.symbols.find(({ kind }) => kind === 'resistorUpright');
   const busEnd = Math.max(...drawing.wires.filter((wire) => wire.y1 === wire.y2 && wire.y1 === drawing.ground.y).map((wire) => wire.x2));
   expect(busEnd).toBe(load?.x);

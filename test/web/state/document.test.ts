@@ -104,6 +104,39 @@ describe('the document', () => {
     expect(document.setFeedbackFraction(1.5)).toContain('1.5');
   });
 
+  test('k moves the resistors that were asked to be moved', () => {
+    const document = open();
+    document.setValue('cell.feedback', { kind: 'resistor', drainOhm: 1e6, blockingF: null });
+    document.setValue('cell.controlOhm', 1e6);
+    document.setMoves('bothKeepSum');
+    document.setFeedbackFraction(0.4);
+    expect(document.variant.value.cell).toMatchObject({ controlOhm: 0.8e6, feedback: { drainOhm: 1.2e6 } });
+    document.setMoves('controlOhm');
+    document.setFeedbackFraction(0.5);
+    expect(document.variant.value.cell).toMatchObject({ controlOhm: 1.2e6, feedback: { drainOhm: 1.2e6 } });
+  });
+
+  test('several values are one change, and a refused one among them leaves all as they were', () => {
+    const document = open();
+    const before = document.design.value;
+    expect(
+      document.setValues([
+        ['cell.pad.kind', 'divider'],
+        ['cell.pad.upperOhm', -1],
+      ]),
+    ).toContain('upperOhm');
+    expect(document.design.value).toBe(before);
+    expect(
+      document.setValues([
+        ['cell.pad.kind', 'divider'],
+        ['cell.pad.upperOhm', 47e3],
+      ]),
+    ).toBeNull();
+    expect(document.variant.value.cell.pad).toMatchObject({ kind: 'divider', upperOhm: 47e3 });
+    document.undo();
+    expect(document.design.value).toEqual(before);
+  });
+
   test('a variant is copied under the next letter, up to four; undo never leaves one heard that is gone', () => {
     const document = open();
     for (let i = 0; i < 3; i++) expect(document.addVariant()).toBeNull();

@@ -20,7 +20,7 @@ function cellA(feedback: Feedback, control: Control): Design {
   return result.design;
 }
 
-const question = (design: Design, toneV: number): ToneQuestion => ({ design, variantIndex: 0, toneHz: 1000, toneV });
+const question = (design: Design, toneV: number): ToneQuestion => ({ design, variantIndex: 0, toneHz: 1000, toneV, moves: 'drainOhm' });
 
 function finish<T>(work: Generator<void, T>): T {
   for (;;) {

@@ -1,0 +1,118 @@
+import { parseQuantity } from '../../model/design/values.ts';
+import { decimals, valueVolts } from '../draw/words.ts';
+import { useBench, useVariant } from './BenchContext.ts';
+import { CircuitValue } from './CircuitValue.tsx';
+import { DataTable } from './parts/DataTable.tsx';
+import { EditableValue } from './parts/EditableValue.tsx';
+import { useReverseLimit } from './sheetLimits.ts';
+
+interface Entry {
+  readonly path: string;
+  readonly what: string;
+  readonly short: string;
+  readonly zeroIsAbsent?: boolean;
+}
+
+const CHANNEL: readonly Entry[] = [
+  { path: 'device.lambdaPerV', what: 'Channel-length modulation, beyond the knee', short: 'λ' },
+  { path: 'device.readAtC', what: 'Values read at', short: 'The temperature of reading' },
+];
+const LAWS = {
+  square: [],
+  gradual: [{ path: 'device.barrierV', what: 'Barrier of the gate junction', short: 'The barrier' }],
+  smooth: [
+    { path: 'device.exponent', what: 'Exponent of the smooth law', short: 'The exponent' },
+    { path: 'device.tailV', what: 'Width of its tail below VGS(off)', short: 'The tail' },
+  ],
+} as const;
+const GATE: readonly Entry[] = [
+  { path: 'device.junction.reverseA', what: 'Saturation current of each gate junction', short: 'The saturation current' },
+  { path: 'device.junction.ideality', what: 'Ideality of the junctions', short: 'The ideality' },
+  { path: 'device.junction.leakageS', what: 'Leakage across each', short: 'The leakage' },
+  { path: 'device.gateSourceF', what: 'Capacitance, gate to source', short: 'Cgs', zeroIsAbsent: true },
+  { path: 'device.gateDrainF', what: 'Capacitance, gate to drain', short: 'Cgd', zeroIsAbsent: true },
+  { path: 'device.grading', what: 'Grading of the capacitances, 0 for constant ones', short: 'The grading' },
+];
+const AMPLIFIER: readonly Entry[] = [
+  { path: 'output.gainBandwidthHz', what: 'Gain-bandwidth of the amplifier', short: 'The gain-bandwidth' },
+  { path: 'output.slewVPerSec', what: 'Slew rate', short: 'The slew rate' },
+  { path: 'output.swingV', what: 'Swing, either side of 0\u2009V', short: 'The swing' },
+];
+
+const COLUMNS = [
+  { key: 'what', head: 'Value' },
+  { key: 'number', head: 'Fitted' },
+];
+
+/** Table 4: what of the FET and the amplifier has no place in the drawing. */
+export function DeviceTable() {
+  const bench = useBench();
+  const { device } = useVariant();
+  const barrierToo = device.law !== 'gradual' && device.grading > 0;
+  const channel = [...LAWS[device.law], ...(barrierToo ? LAWS.gradual : []), ...CHANNEL];
+  return (
+    <DataTable
+      number={4}
+      className="device-table"
+      caption={
+        <>J1 and the amplifier, in variant {bench.design.value.variants[bench.heardVariant.value].name}. «none» is ideal, or absent.</>
+      }
+      columns={COLUMNS}
+    >
+      {[channel, GATE].map((entries) => (
+        <tbody key={entries[0].path}>
+          {entries.map((entry) => (
+            <EntryRow key={entry.path} {...entry} />
+          ))}
+          {entries === GATE && <ReverseRow />}
+        </tbody>
+      ))}
+      <tbody>
+        {AMPLIFIER.map((entry) => (
+          <EntryRow key={entry.path} {...entry} />
+        ))}
+      </tbody>
+    </DataTable>
+  );
+}
+
+function EntryRow({ path, what, short, zeroIsAbsent = false }: Entry) {
+  return (
+    <tr>
+      <th scope="row" class="what">
+        {what}
+      </th>
+      <td class="number">
+        <CircuitValue path={path} label={what} short={short} zeroIsAbsent={zeroIsAbsent} />
+      </td>
+    </tr>
+  );
+}
+
+/** A limit of the sheet, not a value of the circuit. */
+function ReverseRow() {
+  const limit = useReverseLimit();
+  return (
+    <tr>
+      <th scope="row" class="what">
+        Limit of the gate’s reverse voltage, by its sheet
+      </th>
+      <td class="number">
+        <EditableValue
+          label="Limit of the gate’s reverse voltage"
+          short="The limit"
+          value={limit.value}
+          stepping={{ kind: 'linear', step: 5 }}
+          format={valueVolts}
+          read={(text) => parseQuantity(text, 'V')}
+          onSet={(volts) => {
+            if (volts === null || !(volts > 0 && volts <= 1000))
+              return `The limit is ${decimals(volts ?? 0, 1)} V; expected more than 0 and at most 1000 V.`;
+            limit.value = volts;
+            return null;
+          }}
+        />
+      </td>
+    </tr>
+  );
+}

@@ -1,0 +1,109 @@
+import { feedbackFraction } from '../../model/design/feedback.ts';
+import { percentText } from '../draw/words.ts';
+import { differences } from '../draw/differences.ts';
+import { useBench } from './BenchContext.ts';
+import { DataTable } from './parts/DataTable.tsx';
+import { EditableText } from './parts/EditableText.tsx';
+import { WordActions } from './parts/WordActions.tsx';
+import { overLimit, useThdLimit } from './sheetLimits.ts';
+
+const LETTERS = ['A', 'B', 'C', 'D'];
+/** Differences told of; the rest is counted. */
+const MOST_TOLD = 3;
+const COLUMNS = [
+  { key: 'letter', head: 'Variant' },
+  { key: 'what', head: 'What it tries' },
+  { key: 'number k', head: <i>k</i> },
+  { key: 'number', head: 'THD, rest' },
+  { key: 'number', head: 'Worst' },
+];
+
+/** Table 3: the variants side by side. */
+export function VariantTable() {
+  const { variants } = useBench().design.value;
+  return (
+    <DataTable
+      number={3}
+      className="variant-table"
+      caption="Variants by the shadow tone: THD with the control at rest, and the worst over its swing."
+      columns={COLUMNS}
+    >
+      <tbody>
+        {variants.map((variant, index) => (
+          <VariantRow key={variant.name} index={index} />
+        ))}
+        {variants.length < LETTERS.length && <EmptyRow letter={LETTERS[variants.length]} />}
+      </tbody>
+    </DataTable>
+  );
+}
+
+function VariantRow({ index }: { readonly index: number }) {
+  const bench = useBench();
+  const limit = useThdLimit();
+  const { variants } = bench.design.value;
+  const variant = variants[index];
+  const heard = bench.heardVariant.value === index;
+  const summary = bench.summaries.value[index] ?? null;
+  const over = summary !== null && overLimit(summary.worstThd, limit.value);
+  return (
+    <tr class={heard ? 'heard' : undefined}>
+      <th scope="row" class="letter-cell">
+        {LETTERS[index]}
+        {heard && ', heard'}
+      </th>
+      <td class="what">
+        {heard ? <VariantName name={variant.name} letter={LETTERS[index]} /> : variant.name !== LETTERS[index] && `${variant.name}: `}
+        <span class="tries">{index === 0 ? 'the first' : told(differences(variants[0], variant))}</span>
+      </td>
+      <td class="number k">{feedbackFraction(variant.cell).toFixed(3)}</td>
+      <td class="number">
+        {summary && (
+          <span class="live">
+            {percentText(summary.restThd)}
+            {'\u2009'}%
+          </span>
+        )}
+      </td>
+      <td class="number">
+        {summary && (
+          <span class={over ? 'over' : 'live'}>
+            {percentText(summary.worstThd)}
+            {'\u2009'}%
+          </span>
+        )}
+      </td>
+    </tr>
+  );
+}
+
+/** The heard one's name is changed where it stands. */
+function VariantName({ name, letter }: { readonly name: string; readonly letter: string }) {
+  const bench = useBench();
+  return (
+    <>
+      <EditableText label={`Name of variant ${letter}`} value={name} onSet={(text) => bench.setValue('name', text)} />{' '}
+    </>
+  );
+}
+
+function EmptyRow({ letter }: { readonly letter: string }) {
+  const bench = useBench();
+  return (
+    <tr>
+      <th scope="row" class="letter-cell aside">
+        {letter}
+      </th>
+      <td colSpan={4} class="aside">
+        empty{' '}
+        <WordActions actions={[{ words: 'Copy here', label: `Copy the heard variant to ${letter}`, run: () => bench.addVariant() }]} />
+      </td>
+    </tr>
+  );
+}
+
+function told(words: readonly string[]): string {
+  if (words.length === 0) return 'the same as A';
+  const rest = words.length - MOST_TOLD;
+  return [...words.slice(0, MOST_TOLD), ...(rest > 0 ? [`and ${rest} more`] : [])].join(', ');
+}
