@@ -46,7 +46,8 @@ const reloadWithModel: Plugin = {
 const assetsWithoutScripts: Plugin = {
   name: 'fettle-assets',
   apply: 'build',
-  writeBundle: () => cpSync(here('assets'), here('dist'), { recursive: true, filter: (path) => !/\.(mjs|js|ts|py|sh)$/.test(path) }),
+  writeBundle: () =>
+    cpSync(here('assets'), here('dist'), { recursive: true, filter: (path) => !/\.(mjs|js|ts|py|sh)$|screenshots/.test(path) }),
 };
 
 /** Fails the build when the entry, its static imports and the workers and worklets they name weigh too much. */
@@ -110,6 +111,7 @@ export default defineConfig({
           exclude: ['test/page/**'],
           testTimeout: 30_000,
           execArgv: ['--expose-gc'],
+          server: { deps: { inline: ['ebur128-wasm'] } },
         },
       },
       {

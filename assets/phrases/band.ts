@@ -1,9 +1,9 @@
+import { type BassNote, bassStrings, playStrings } from './bass.ts';
 import { createHat, renderBrushes, renderKick, renderSnare } from './drum.ts';
-import { addAt, BEAT_SEC, BEATS_PER_BAR, bell, createLoop, filterLoop, highpass, lowpass, midiToHz, SAMPLE_RATE_HZ } from './loop.ts';
+import { addAt, BEAT_SEC, BEATS_PER_BAR, bell, createLoop, filterLoop, highpass, lowpass, SAMPLE_RATE_HZ } from './loop.ts';
 import { playKeys, type Strike } from './piano.ts';
 import { createRandom, type Random } from './random.ts';
 import { renderRoom } from './room.ts';
-import { type Pluck, renderString, type StringSpec } from './string.ts';
 
 /** A small band in one room, in D dorian: bass, drums with sticks and a brush, electric piano. Not squeezed: the drums stand well above the rest. */
 
@@ -74,8 +74,7 @@ const HATS: Hit[] = [
   [3.5, 0.42],
 ];
 
-/** Bass notes: beat, string (0 low E, 1 A), fret, velocity, length in beats. */
-const BASS: [number, number, number, number, number][][] = [
+const BASS: BassNote[][] = [
   [
     [0, 1, 5, 0.85, 0.9],
     [1.5, 1, 5, 0.45, 0.3],
@@ -104,14 +103,6 @@ const BASS: [number, number, number, number, number][][] = [
     [3.5, 1, 4, 0.62, 0.45],
   ],
 ];
-const BASS_STRINGS: StringSpec[] = [28, 33].map((note) => ({
-  openHz: midiToHz(note),
-  inharmonicity: 1.6e-4,
-  sustainSec: 7,
-  trebleSustainSec: 1.1,
-  pickupFraction: 0.17,
-}));
-
 const D_MINOR_9 = [53, 57, 60, 64];
 const G_13 = [53, 57, 59, 64];
 const B_FLAT_MAJOR_9 = [57, 60, 62, 65];
@@ -208,23 +199,6 @@ function playHat(random: Random): Float64Array {
 }
 
 function playBass(random: Random): Float64Array {
-  const perString: Pluck[][] = BASS_STRINGS.map(() => []);
-  BASS.forEach((notes, bar) => {
-    for (const [beat, string, fret, velocity, beats] of notes) {
-      perString[string].push({
-        atSec: timeOf(bar, beat, random),
-        fret,
-        velocity: velocity * (1 + 0.06 * random.bipolar()),
-        pluckFraction: 0.2 + 0.02 * random.bipolar(),
-        releaseSec: 0.0007,
-        holdSec: beats * BEAT_SEC,
-      });
-    }
-  });
-  const sum = createLoop();
-  perString.forEach((plucks, index) => {
-    const { pickup } = renderString(BASS_STRINGS[index], plucks, random);
-    for (let n = 0; n < sum.length; n++) sum[n] += pickup[n];
-  });
+  const sum = playStrings(bassStrings([28, 33]), BASS, timeOf, random);
   return filterLoop(sum, highpass(38, 0.7), bell(90, 0.8, 2), bell(800, 0.8, 3), lowpass(3200, 0.7));
 }

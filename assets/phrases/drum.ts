@@ -81,6 +81,27 @@ export function renderSnare(velocity: number, random: Random): Float64Array {
   ]);
 }
 
+/** A tom: a head of `hz` that falls a little in pitch after the blow, tuned for a long note, and the stick. */
+export function renderTom(velocity: number, hz: number, random: Random): Float64Array {
+  const modes = HEAD_MODES.slice(0, 5).map(([ratio, gain]) => ({
+    turns: hz * ratio * (1 + 0.006 * random.bipolar()),
+    gain: gain / ratio ** (2.2 - velocity),
+    decay: 0.26 / (ratio * Math.sqrt(hz / 130)),
+  }));
+  const head = sound(1.1, (sec) => {
+    const glided = sec + 0.12 * velocity * 0.05 * (1 - Math.exp(-sec / 0.05));
+    const rise = 1 - Math.exp(-sec / 0.0008);
+    return rise * modes.reduce((sum, { turns, gain, decay }) => sum + gain * Math.sin(TURN * turns * glided) * Math.exp(-sec / decay), 0);
+  });
+  const stick = filter(noise(0.02, random), bandpass(2200, 0.6), lowpass(6500, 0.7)).map(
+    (value, n) => value * Math.exp(-n / SAMPLE_RATE_HZ / 0.0025),
+  );
+  return mix(head.length, [
+    [head, velocity],
+    [stick, 1.1 * velocity * velocity],
+  ]);
+}
+
 /** A pair of hi-hat cymbals: many dense modes that a blow of a wooden stick starts; closed they die at once. */
 export function createHat(random: Random): (velocity: number, decaySec: number) => Float64Array {
   const partials = Array.from({ length: 90 }, () => {

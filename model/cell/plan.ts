@@ -6,14 +6,17 @@
  * of the inductors; the voltage of a capacitor that closes a loop is a sum of states and source voltages. Those that are advanced by the
  * trapezoidal rule (coupling capacitors, inductors) come first, the stiff ones after them.
  */
-import { type Circuit, circuitShape, type Element, elementNodes, elementValue } from './circuit.ts';
+import { type Circuit, circuitShape, type Element, elementNodes, elementValue, GROUND, type Jfet } from './circuit.ts';
 import { chooseForest } from './forest.ts';
 
-/** Columns that drive the network besides the states: two sources, the constants, the two port currents of the FET. */
+/**
+ * Columns that drive the network besides the states: two sources, the constants, a current along the channel from drain to source and one from gate
+ * to drain. A current from gate to source is both: as a column of its own, its difference to the other would lose what the gate's impedance adds to each.
+ */
 export const AUDIO = 0;
 export const CONTROL = 1;
 export const CONSTANT = 2;
-export const GATE_SOURCE = 3;
+export const CHANNEL = 3;
 export const GATE_DRAIN = 4;
 export const DRIVES = 5;
 
@@ -39,6 +42,8 @@ export interface Plan {
   /** Unknowns of the network: node voltages, then currents of sources, summers and state capacitors. */
   readonly size: number;
   readonly states: readonly StoragePlan[];
+  /** What each state and the output are the voltage of, in the letters of kernels/source.ts. */
+  readonly voltages: { readonly states: string; readonly output: 'd' | 'x' };
   /** How many of them, the first, are advanced by the trapezoidal rule. */
   readonly trapezoidal: number;
   readonly links: readonly StoragePlan[];
@@ -52,11 +57,23 @@ export interface Plan {
   /** Columns: states, drives, then one noise current for each element of `noisy`. */
   readonly width: number;
   readonly noisy: Int32Array;
+  /** The network at rest, where capacitors are open and inductors are wires; its columns are the drives. */
+  readonly rest: RestPlan;
   /** Rows of the nodes; −1 is ground. */
   readonly drain: number;
   readonly gate: number;
   readonly source: number;
   readonly output: number;
+}
+
+export interface RestPlan {
+  readonly size: number;
+  readonly matrix: Stamps;
+  readonly columns: Float64Array;
+  readonly constants: Stamps;
+  /** For each state the unknown that it is, and the one taken from it (−1 for none): a capacitor's ends, an inductor's current. */
+  readonly stateRows: Int32Array;
+  readonly stateRowsLess: Int32Array;
 }
 
 interface Places {
@@ -102,6 +119,10 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     size: places.size,
     states: stateElements.map(storage),
     trapezoidal: smooth.length,
+    voltages: {
+      states: stateElements.map((index) => letterOf(elements[index], jfet)).join(''),
+      output: circuit.outputNode === jfet.drain && jfet.source === GROUND ? 'd' : 'x',
+    },
     links: forest.links.map(storage),
     stateRows: Int32Array.from(stateElements, (index) => branchOf.get(index) ?? endRow(elements[index], row, 'a')),
     stateRowsLess: Int32Array.from(stateElements, (index) => (branchOf.has(index) ? -1 : endRow(elements[index], row, 'b'))),
@@ -110,7 +131,43 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     constants: stampsOf(constantStamps(elements, places)),
     width,
     noisy,
+    rest: planRest(elements, nodes, stateElements, ends),
     ...ends,
+  };
+}
+
+/** `g` gate to source, `m` gate to drain, `d` drain to source, `x` anything else. */
+function letterOf(element: Element, { drain, gate, source }: Jfet): string {
+  if (element.kind !== 'capacitor') return 'x';
+  const { a, b } = element;
+  if (a === gate) return b === source ? 'g' : b === drain ? 'm' : 'x';
+  return a === drain && b === source ? 'd' : 'x';
+}
+
+function planRest(
+  elements: readonly Element[],
+  nodes: readonly string[],
+  stateElements: readonly number[],
+  ends: { drain: number; gate: number; source: number },
+): RestPlan {
+  const row = (name: string) => nodes.indexOf(name);
+  const branchOf = new Map<number, number>();
+  elements.forEach(({ kind }, index) => {
+    const hasCurrent = kind === 'source' || kind === 'supply' || kind === 'summer' || kind === 'inductor';
+    if (hasCurrent) branchOf.set(index, nodes.length + branchOf.size);
+  });
+  const places: Places = { row, branchOf, size: nodes.length + branchOf.size };
+  const end = (index: number, which: 'a' | 'b') => {
+    const element = elements[index];
+    return element.kind === 'capacitor' ? row(element[which]) : -1;
+  };
+  return {
+    size: places.size,
+    matrix: stampsOf(matrixStamps(elements, places)),
+    columns: fixedColumns(elements, places, [], new Int32Array(0), ends, DRIVES),
+    constants: stampsOf(constantStamps(elements, places)),
+    stateRows: Int32Array.from(stateElements, (index) => branchOf.get(index) ?? end(index, 'a')),
+    stateRowsLess: Int32Array.from(stateElements, (index) => end(index, 'b')),
   };
 }
 
@@ -160,12 +217,12 @@ function matrixStamps(elements: readonly Element[], { row, branchOf, size }: Pla
         }
         return;
       case 'capacitor':
+      case 'inductor':
         for (const [node, sign] of [[element.a, 1] as const, [element.b, -1] as const]) {
           add(row(node), branch, -1, sign);
           add(branch, row(node), -1, sign);
         }
         return;
-      case 'inductor':
       case 'draw':
         return;
     }
@@ -208,7 +265,7 @@ function fixedColumns(
     if (element.kind === 'inductor') current(row(element.a), row(element.b), state);
     else add(branchOf.get(index) as number, state, 1);
   });
-  current(ends.gate, ends.source, n + GATE_SOURCE);
+  current(ends.drain, ends.source, n + CHANNEL);
   current(ends.gate, ends.drain, n + GATE_DRAIN);
   noisy.forEach((index, k) => {
     const element = elements[index];

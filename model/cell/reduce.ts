@@ -13,7 +13,7 @@
  * `reduce` writes in place and allocates nothing, so that values can be moved on the audio thread.
  */
 import { factor, solve } from './linear.ts';
-import { CONSTANT, DRIVES, GATE_SOURCE, type Plan } from './plan.ts';
+import { CHANNEL, CONSTANT, DRIVES, type Plan, type RestPlan } from './plan.ts';
 
 /** Working memory and result of a reduction. Row-major; widths in `layout`. */
 export interface Reduction {
@@ -21,6 +21,8 @@ export interface Reduction {
   readonly values: Float64Array;
   /** Network responses: rows are what drives the states, ports (2), output (1); columns as in the plan. */
   readonly response: Float64Array;
+  /** The same at rest: rows are states, ports (2), output (1); columns are the drives. Filled by `respondAtRest`. */
+  readonly rest: Float64Array;
   /** What each row remembers: columns states (those of the past where the row is stiff), old u, old j. */
   readonly memory: Float64Array;
   /** Discrete map: rows port voltages (2), new states; columns in `stepColumns`. */
@@ -52,16 +54,18 @@ const NEWEST = 47 / 24;
 export function createReduction(plan: Plan): Reduction {
   const n = plan.states.length;
   const { width } = stepColumns(n, plan.noisy.length);
+  const largest = Math.max(plan.size, plan.rest.size);
   return {
     plan,
     values: Float64Array.from(plan.values),
     response: new Float64Array((n + 3) * plan.width),
+    rest: new Float64Array((n + 3) * DRIVES),
     memory: new Float64Array(n * memoryColumns(n).width),
     step: new Float64Array((n + 2) * width),
     work: {
-      matrix: new Float64Array(plan.size * plan.size),
-      pivots: new Int32Array(plan.size),
-      columns: new Float64Array(plan.size * plan.width),
+      matrix: new Float64Array(largest * largest),
+      pivots: new Int32Array(largest),
+      columns: new Float64Array(largest * plan.width),
       left: new Float64Array(n * n),
       right: new Float64Array(n * width),
       statePivots: new Int32Array(n),
@@ -71,29 +75,45 @@ export function createReduction(plan: Plan): Reduction {
 
 /** Computes `response` from `values`. False when the network is singular (a node without a path). */
 export function respond(reduction: Reduction): boolean {
-  const { plan, values, response, work } = reduction;
-  const { size, width } = plan;
+  const { plan, response } = reduction;
+  return solveNetwork(reduction, plan, plan.width, plan.states.length, response);
+}
+
+/** Computes `rest` from `values`. False when the network is singular (a node that only capacitors reach). */
+export function respondAtRest(reduction: Reduction): boolean {
+  return solveNetwork(reduction, reduction.plan.rest, DRIVES, 0, reduction.rest);
+}
+
+/** Solves a network for all its columns, of which `stateColumns` come before the drives, and takes out the rows that matter. */
+function solveNetwork(
+  { plan, values, work }: Reduction,
+  network: RestPlan,
+  width: number,
+  stateColumns: number,
+  rows: Float64Array,
+): boolean {
+  const { size, matrix, constants } = network;
   const n = plan.states.length;
   work.matrix.fill(0);
-  for (let i = 0; i < plan.matrix.target.length; i++) {
-    const element = plan.matrix.element[i];
-    work.matrix[plan.matrix.target[i]] += plan.matrix.sign[i] * (element < 0 ? 1 : values[element]);
+  for (let i = 0; i < matrix.target.length; i++) {
+    const element = matrix.element[i];
+    work.matrix[matrix.target[i]] += matrix.sign[i] * (element < 0 ? 1 : values[element]);
   }
   if (!factor(work.matrix, work.pivots, size)) return false;
-  work.columns.set(plan.columns);
-  for (let i = 0; i < plan.constants.target.length; i++) {
-    work.columns[plan.constants.target[i] * width + n + CONSTANT] += plan.constants.sign[i] * values[plan.constants.element[i]];
+  work.columns.set(network.columns);
+  for (let i = 0; i < constants.target.length; i++) {
+    work.columns[constants.target[i] * width + stateColumns + CONSTANT] += constants.sign[i] * values[constants.element[i]];
   }
   solve(work.matrix, work.pivots, size, work.columns, width);
   for (let state = 0; state < n; state++) {
-    copyRow(response, state, work.columns, plan.stateRows[state], width);
-    subtractRow(response, state, work.columns, plan.stateRowsLess[state], width);
+    copyRow(rows, state, work.columns, network.stateRows[state], width);
+    subtractRow(rows, state, work.columns, network.stateRowsLess[state], width);
   }
-  copyRow(response, n, work.columns, plan.gate, width);
-  subtractRow(response, n, work.columns, plan.source, width);
-  copyRow(response, n + 1, work.columns, plan.gate, width);
-  subtractRow(response, n + 1, work.columns, plan.drain, width);
-  copyRow(response, n + 2, work.columns, plan.output, width);
+  copyRow(rows, n, work.columns, plan.gate, width);
+  subtractRow(rows, n, work.columns, plan.source, width);
+  copyRow(rows, n + 1, work.columns, plan.gate, width);
+  subtractRow(rows, n + 1, work.columns, plan.drain, width);
+  copyRow(rows, n + 2, work.columns, plan.output, width);
   return true;
 }
 
@@ -129,7 +149,7 @@ export function discretise(reduction: Reduction, stepSec: number): boolean {
     }
     for (let k = 0; k < 2; k++) {
       step[to + columns.newU + k] += response[p + n + k];
-      step[to + columns.newJ + k] += response[p + n + GATE_SOURCE + k];
+      step[to + columns.newJ + k] += response[p + n + CHANNEL + k];
     }
     step[to + columns.constant] += response[p + n + CONSTANT];
     for (let k = 0; k < plan.noisy.length; k++) step[to + columns.noise + k] += response[p + n + DRIVES + k];
@@ -151,13 +171,13 @@ function addDrives({ plan, response, memory, work }: Reduction, row: number): vo
   for (let state = 0; state < n; state++) work.left[row * n + state] -= weight * response[f + state];
   for (let k = 0; k < 2; k++) {
     work.right[r + columns.newU + k] += weight * response[f + n + k];
-    work.right[r + columns.newJ + k] += weight * response[f + n + GATE_SOURCE + k];
+    work.right[r + columns.newJ + k] += weight * response[f + n + CHANNEL + k];
   }
   if (isTrapezoidal) {
     for (let state = 0; state < n; state++) memory[m + state] += 0.5 * response[f + state];
     for (let k = 0; k < 2; k++) {
       memory[m + past.oldU + k] += 0.5 * response[f + n + k];
-      memory[m + past.oldJ + k] += 0.5 * response[f + n + GATE_SOURCE + k];
+      memory[m + past.oldJ + k] += 0.5 * response[f + n + CHANNEL + k];
     }
   }
   work.right[r + columns.constant] += response[f + n + CONSTANT];

@@ -153,8 +153,8 @@ function loadElements({ outputCouplingF, loadOhm, loadF }: Cell): Element[] {
 function gateElements({ gateSourceF, gateDrainF, junction }: Device, source: string): Element[] {
   const { leakageS } = junction;
   return [
-    ...capacitor('gateSource', 'gate', source, gateSourceF, 'parasitic'),
-    ...capacitor('gateDrain', 'gate', 'drain', gateDrainF, 'parasitic'),
+    ...capacitor('gateSourceF', 'gate', source, gateSourceF, 'parasitic'),
+    ...capacitor('gateDrainF', 'gate', 'drain', gateDrainF, 'parasitic'),
     ...conductance('gateSourceLeak', 'gate', source, leakageS),
     ...conductance('gateDrainLeak', 'gate', 'drain', leakageS),
   ];

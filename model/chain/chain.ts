@@ -137,7 +137,7 @@ function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: re
     }
   }
   for (let channel = 0; channel < voice.lanes.length; channel++) {
-    readings.drainPeakV = Math.max(readings.drainPeakV, voice.lanes[channel].drainPeakV);
+    readings.drainPeakV = Math.max(readings.drainPeakV, voice.lanes[channel].outputPeakV);
   }
   readings.feedthroughPeakV = Math.max(readings.feedthroughPeakV, voice.quiet.feedthroughPeakV);
   readings.controlV = voice.drive.controls[0][count * voice.numbers.oversampling - 1];
@@ -154,7 +154,7 @@ function takeExternal(chain: Chain, external: Float32Array | null, start: number
 /** Copies the block's input to Float64; false when a sample was not a usable number. */
 function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number, count: number): boolean {
   const { readings } = chain;
-  const fullScaleV = chain.voice.scale.now[0];
+  const fullScaleV = chain.numbers.fullScaleV;
   let sound = true;
   for (let channel = 0; channel < chain.inputs.length; channel++) {
     const to = chain.inputs[channel];

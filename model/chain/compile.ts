@@ -24,9 +24,12 @@ export interface ChainNumbers {
   readonly idealAmplifier: boolean;
   /** Seed of the sampled thermal noise; null for none. */
   readonly noiseSeed: number | null;
+  /** Upper-rate samples between two makings of the cell's matrices while values move. */
+  readonly updateEvery: number;
   readonly tempC: number;
 }
 
+const UPDATE_EVERY = 32;
 const LOWEST_RATE_HZ = 8000;
 const HIGHEST_RATE_HZ = 384000;
 
@@ -59,5 +62,18 @@ export function compileChain(
     ...cells.map((cell) => cell.shape),
   ].join(' | ');
   const amplifier = amplifierValues(variant.output, upperHz);
-  return { shape, sampleRateHz, oversampling, filters, fullScaleV, control, cells, amplifier, idealAmplifier, noiseSeed, tempC };
+  return {
+    shape,
+    sampleRateHz,
+    oversampling,
+    filters,
+    fullScaleV,
+    control,
+    cells,
+    amplifier,
+    idealAmplifier,
+    noiseSeed,
+    updateEvery: UPDATE_EVERY,
+    tempC,
+  };
 }

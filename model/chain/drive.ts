@@ -8,7 +8,7 @@
 import { advanceCell, type Cell } from '../cell/cell.ts';
 import { fillNoise } from '../cell/noise.ts';
 import type { ControlNumbers } from '../control/control.ts';
-import { followerControlV, nextEnvelope } from '../control/follower.ts';
+import { FOLLOWER_SLOTS, follow, HEARD, keepStep, NEXT_CONTROL_V } from '../control/follower.ts';
 import { runOscillator } from '../control/oscillator.ts';
 import type { GaussianSource } from '../device/random.ts';
 import type { ChainNumbers } from './compile.ts';
@@ -18,15 +18,15 @@ interface Driven {
   readonly cell: Cell;
   readonly oversampler: Oversampler;
   readonly noise: Float64Array;
+  readonly kinks: Float64Array;
   readonly gaussian: GaussianSource;
 }
 
-/** Envelope and rectified voltage of the sample before, V; the control voltages of the two before. */
-const ENVELOPE = 0;
-const RECTIFIED = 1;
-const CONTROL_V = 2;
-const EARLIER_V = 3;
-const DETECTOR_SLOTS = 4;
+/** After a follower's own memory: the control voltages of the two samples before, and how far a correction moved it, V. */
+const CONTROL_V = FOLLOWER_SLOTS;
+const EARLIER_V = FOLLOWER_SLOTS + 1;
+const MOVED_V = FOLLOWER_SLOTS + 2;
+const DETECTOR_SLOTS = FOLLOWER_SLOTS + 3;
 
 /** Passes through the loop at one sample: the prediction, and corrections until they agree or are as many as this. */
 const MOST_PASSES = 4;
@@ -41,7 +41,7 @@ export interface Drive {
   readonly controls: readonly Float64Array[];
   /** One for each control. */
   readonly detectors: readonly Float64Array[];
-  /** States of the cells before a sample, then its input, to solve it again. */
+  /** States of the cells before a sample, then its input and the number of kinks, to solve it again. */
   readonly saved: readonly Float64Array[];
   /** The recorded control at the upper rate, in samples. */
   recorded: Float64Array;
@@ -63,7 +63,7 @@ export function createDrive(control: ControlNumbers, values: Float64Array, lanes
       slots[EARLIER_V] = restV;
       return slots;
     }),
-    saved: lanes.map((lane) => new Float64Array(lane.cell.state.length + 1)),
+    saved: lanes.map((lane) => new Float64Array(lane.cell.state.length + 2)),
     recorded: first,
   };
 }
@@ -85,7 +85,7 @@ export function advanceSlice(drive: Drive, lanes: readonly Driven[], numbers: Ch
   else if (control.kind === 'external') followRecording(drive, from, to);
   else for (let i = from; i < to; i++) followInput(drive, lanes, control.fullWave, i);
   for (let channel = 0; channel < lanes.length; channel++) {
-    advanceCell(lanes[channel].cell, top(lanes[channel]), drive.controls[channel], from, to, lanes[channel].noise);
+    advanceCell(lanes[channel].cell, top(lanes[channel]), drive.controls[channel], from, to, lanes[channel].noise, lanes[channel].kinks);
   }
 }
 
@@ -99,24 +99,28 @@ function followRecording(drive: Drive, from: number, to: number): void {
   for (let i = from; i < to; i++) controls[0][i] = values[1] + values[0] * recorded[i];
 }
 
-function rectify(v: number, fullWave: boolean): number {
-  return fullWave ? Math.abs(v) : Math.max(v, 0);
-}
-
-/** The rectified voltage that a detector hears at sample `i`: its own channel's, or the larger of both when they are linked. */
-function heard(drive: Drive, lanes: readonly Driven[], fullWave: boolean, detector: number, i: number): number {
-  if (drive.detectors.length > 1 || lanes.length === 1) return rectify(top(lanes[detector])[i], fullWave);
-  return Math.max(rectify(top(lanes[0])[i], fullWave), rectify(top(lanes[1])[i], fullWave));
+/**
+ * What each detector hears at sample `i`, rectified: its own channel's voltage, or the larger of both when they are linked. Results of these
+ * functions stand in arrays: a number that a call returns may cost memory.
+ */
+function hear(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
+  const { detectors } = drive;
+  for (let d = 0; d < detectors.length; d++) detectors[d][HEARD] = 0;
+  for (let channel = 0; channel < lanes.length; channel++) {
+    const { buffers } = lanes[channel].oversampler;
+    const v = buffers[buffers.length - 1][i];
+    const slots = detectors[Math.min(channel, detectors.length - 1)];
+    slots[HEARD] = Math.max(slots[HEARD], fullWave ? Math.abs(v) : v);
+  }
 }
 
 function followInput(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
   const { detectors, values, controls } = drive;
+  hear(drive, lanes, fullWave, i);
   for (let d = 0; d < detectors.length; d++) {
-    const slots = detectors[d];
-    const rectified = heard(drive, lanes, fullWave, d, i);
-    slots[ENVELOPE] = nextEnvelope(values, slots[ENVELOPE], slots[RECTIFIED], rectified);
-    slots[RECTIFIED] = rectified;
-    controls[d][i] = followerControlV(values, slots[ENVELOPE]);
+    follow(values, detectors[d]);
+    keepStep(detectors[d]);
+    controls[d][i] = detectors[d][NEXT_CONTROL_V];
   }
 }
 
@@ -128,15 +132,18 @@ function closeLoop(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i:
     const { cell } = lanes[channel];
     saved[channel].set(cell.state);
     saved[channel][cell.state.length] = top(lanes[channel])[i];
+    saved[channel][cell.state.length + 1] = lanes[channel].kinks.length > 0 ? lanes[channel].kinks[0] : 0;
   }
   for (let pass = 0; pass < MOST_PASSES; pass++) {
     if (pass > 0) restore(lanes, saved, i);
     for (let channel = 0; channel < lanes.length; channel++) {
-      advanceCell(lanes[channel].cell, top(lanes[channel]), controls[channel], i, i + 1, lanes[channel].noise);
+      advanceCell(lanes[channel].cell, top(lanes[channel]), controls[channel], i, i + 1, lanes[channel].noise, lanes[channel].kinks);
     }
-    if (correct(drive, lanes, fullWave, i) < AGREED_V && pass > 0) break;
+    correct(drive, lanes, fullWave, i);
+    if (pass > 0 && detectors[0][MOVED_V] < AGREED_V) break;
   }
-  takeEnvelopes(drive, lanes, fullWave, i);
+  hear(drive, lanes, fullWave, i);
+  for (let d = 0; d < detectors.length; d++) takeStep(drive.values, detectors[d]);
 }
 
 function restore(lanes: readonly Driven[], saved: readonly Float64Array[], i: number): void {
@@ -144,31 +151,26 @@ function restore(lanes: readonly Driven[], saved: readonly Float64Array[], i: nu
     const { state } = lanes[channel].cell;
     for (let k = 0; k < state.length; k++) state[k] = saved[channel][k];
     top(lanes[channel])[i] = saved[channel][state.length];
+    if (lanes[channel].kinks.length > 0) lanes[channel].kinks[0] = saved[channel][state.length + 1];
   }
 }
 
-/** Sets the control that the present output asks for; returns how far it moved, V. */
-function correct(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): number {
+/** Sets the control that the present output asks for; how far it moved, V, stands with the first detector. */
+function correct(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
   const { detectors, values, controls } = drive;
-  let moved = 0;
+  hear(drive, lanes, fullWave, i);
+  detectors[0][MOVED_V] = 0;
   for (let d = 0; d < detectors.length; d++) {
     const slots = detectors[d];
-    const envelope = nextEnvelope(values, slots[ENVELOPE], slots[RECTIFIED], heard(drive, lanes, fullWave, d, i));
-    const controlV = followerControlV(values, envelope);
-    moved = Math.max(moved, Math.abs(controlV - controls[d][i]));
-    controls[d][i] = controlV;
+    follow(values, slots);
+    detectors[0][MOVED_V] = Math.max(detectors[0][MOVED_V], Math.abs(slots[NEXT_CONTROL_V] - controls[d][i]));
+    controls[d][i] = slots[NEXT_CONTROL_V];
   }
-  return moved;
 }
 
-function takeEnvelopes(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
-  const { detectors, values } = drive;
-  for (let d = 0; d < detectors.length; d++) {
-    const slots = detectors[d];
-    const rectified = heard(drive, lanes, fullWave, d, i);
-    slots[ENVELOPE] = nextEnvelope(values, slots[ENVELOPE], slots[RECTIFIED], rectified);
-    slots[RECTIFIED] = rectified;
-    slots[EARLIER_V] = slots[CONTROL_V];
-    slots[CONTROL_V] = followerControlV(values, slots[ENVELOPE]);
-  }
+function takeStep(values: Float64Array, slots: Float64Array): void {
+  follow(values, slots);
+  keepStep(slots);
+  slots[EARLIER_V] = slots[CONTROL_V];
+  slots[CONTROL_V] = slots[NEXT_CONTROL_V];
 }

@@ -14,7 +14,7 @@ export type FilterSet = 'lowLatency' | 'linearPhase';
 export interface Half {
   readonly filters: FilterSet;
   readonly stage: number;
-  /** Low latency: poles, the straight branch first. Linear phase: the taps at odd distances, twice over (mirrored). */
+  /** Low latency: poles, the straight branch first. Linear phase: the taps at odd distances on one side, the nearest first. */
   readonly weights: Float64Array;
   readonly straightCount: number;
   readonly state: Float64Array;
@@ -35,11 +35,10 @@ export function createHalf(filters: FilterSet, stage: number): Half {
     return { filters, stage, weights, straightCount: straight.length, state, history: new Float64Array(0) };
   }
   const side = LINEAR_PHASE[stage];
-  const weights = Float64Array.from([...[...side].reverse(), ...side]);
   return {
     filters,
     stage,
-    weights,
+    weights: Float64Array.from(side),
     straightCount: 0,
     state: new Float64Array(side.length),
     history: new Float64Array(4 * side.length + 2 * LONGEST_RUN),
@@ -58,15 +57,24 @@ export function doubleRate(half: Half, input: Float64Array, output: Float64Array
     return;
   }
   const { weights, history } = half;
-  const length = weights.length;
-  for (let i = 0; i < count; i++) history[length - 1 + i] = input[i];
+  const side = weights.length;
+  const kept = 2 * side - 1;
+  const paired = side - (side % 2);
+  for (let i = 0; i < count; i++) history[kept + i] = input[i];
   for (let i = 0; i < count; i++) {
-    let sum = 0;
-    for (let k = 0; k < length; k++) sum += weights[k] * history[i + k];
+    let even = 0;
+    let odd = 0;
+    const below = i + side - 1;
+    for (let k = 0; k < paired; k += 2) {
+      even += weights[k] * (history[below - k] + history[below + 1 + k]);
+      odd += weights[k + 1] * (history[below - k - 1] + history[below + 2 + k]);
+    }
+    if (paired < side) even += weights[paired] * (history[below - paired] + history[below + 1 + paired]);
+    const sum = even + odd;
     output[2 * i] = 2 * sum;
-    output[2 * i + 1] = history[i + length / 2];
+    output[2 * i + 1] = history[below + 1];
   }
-  for (let k = 0; k < length - 1; k++) history[k] = history[count + k];
+  for (let k = 0; k < kept; k++) history[k] = history[count + k];
 }
 
 /** Halves the rate: 2·`count` samples of `input` become `count` of `output`. */
@@ -81,17 +89,24 @@ export function halveRate(half: Half, input: Float64Array, output: Float64Array,
     return;
   }
   const { weights, history, state } = half;
-  const length = weights.length;
-  const centre = length / 2;
-  for (let i = 0; i < count; i++) history[length - 1 + i] = input[2 * i];
+  const side = weights.length;
+  const kept = 2 * side - 1;
+  const paired = side - (side % 2);
+  for (let i = 0; i < count; i++) history[kept + i] = input[2 * i];
   for (let i = 0; i < count; i++) {
-    let sum = 0;
-    for (let k = 0; k < length; k++) sum += weights[k] * history[i + k];
-    const odd = i >= centre ? input[2 * (i - centre) + 1] : state[i];
-    output[i] = sum + 0.5 * odd;
+    let even = 0;
+    let odd = 0;
+    const below = i + side - 1;
+    for (let k = 0; k < paired; k += 2) {
+      even += weights[k] * (history[below - k] + history[below + 1 + k]);
+      odd += weights[k + 1] * (history[below - k - 1] + history[below + 2 + k]);
+    }
+    if (paired < side) even += weights[paired] * (history[below - paired] + history[below + 1 + paired]);
+    const sum = even + odd;
+    output[i] = sum + 0.5 * (i >= side ? input[2 * (i - side) + 1] : state[i]);
   }
-  for (let k = 0; k < length - 1; k++) history[k] = history[count + k];
-  keepOdd(state, input, count, centre);
+  for (let k = 0; k < kept; k++) history[k] = history[count + k];
+  keepOdd(state, input, count, side);
 }
 
 /** The last `centre` odd samples stay for the next run. */

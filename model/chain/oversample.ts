@@ -1,5 +1,6 @@
 /** Up to the rate at which the cell is solved, and back: half-band stages in a row, the signal as Float64 from edge to edge. */
 import { createHalf, doubleRate, type FilterSet, type Half, halveRate, roundTripSamples } from './halfband.ts';
+import { KINK_DELAY } from './kinks.ts';
 
 export interface Oversampler {
   readonly factor: number;
@@ -19,8 +20,9 @@ function paddingSamples(factor: number, filters: FilterSet): number {
   return (factor - (upper % factor)) % factor;
 }
 
+/** Of the filters, and of what softens kinks at the upper rate. */
 function filterDelay(factor: number, filters: FilterSet): number {
-  let sum = 0;
+  let sum = factor > 1 ? KINK_DELAY / factor : 0;
   for (let stage = 0, rate = 1; rate < factor; stage++, rate *= 2) sum += roundTripSamples(filters, stage) / rate;
   return sum;
 }

@@ -1,20 +1,21 @@
 /**
  * One complete path of a chain, for one shape of circuit: oversamplers, cells, control and amplifier with their state. Values move along straight
- * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `SLICE` upper-rate samples while they do.
+ * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
+ * its coefficients go straight from one exact set to the next, a step at each sample.
  */
-import { advanceCell, type Cell, createCell, loadValues, settle } from '../cell/cell.ts';
+import { advanceCell, aimAt, approach, arrive, type Cell, createCell, loadValues, settle } from '../cell/cell.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
 import { createAmplifierState, GAIN, processAmplifier } from './amplifier.ts';
+import { createKinks } from '../cell/kernels/kinks.ts';
 import type { ChainNumbers } from './compile.ts';
 import { advanceSlice, createDrive, type Drive } from './drive.ts';
+import { createSoftener, type Softener, soften } from './kinks.ts';
 import { createOversampler, lower, type Oversampler, raise } from './oversample.ts';
 
 /** Lower-rate samples that a voice takes at a time. */
 export const LONGEST_BLOCK = 128;
-/** Upper-rate samples between two makings of the cell's matrices. */
-const SLICE = 32;
 const RAMP_SEC = 0.02;
 /** A voltage that no cell of this kind reaches: beyond it the state is taken to be lost. */
 const RUNAWAY_V = 1e6;
@@ -23,6 +24,41 @@ interface Moving {
   readonly now: Float64Array;
   readonly from: Float64Array;
   readonly to: Float64Array;
+  /** Where the present slice ends, and one sample's part of the way. */
+  readonly aim: Float64Array;
+  readonly increment: Float64Array;
+}
+
+interface Levels {
+  readonly from: Float64Array;
+  readonly to: Float64Array;
+  done: number;
+  total: number;
+}
+
+const FULL_SCALE_V = 0;
+const PER_V = 1;
+
+function levelsOf(numbers: ChainNumbers): Float64Array {
+  return Float64Array.of(numbers.fullScaleV, (numbers.idealAmplifier ? numbers.amplifier[GAIN] : 1) / numbers.fullScaleV);
+}
+
+function standing(values: Float64Array): Levels {
+  return { from: Float64Array.from(values), to: Float64Array.from(values), done: 0, total: 0 };
+}
+
+/** Sets out from where the levels are now, to arrive after `total` samples. */
+function setOut(levels: Levels, to: Float64Array, total: number): void {
+  for (let index = 0; index < to.length; index++) levels.from[index] = levelAt(levels, index, -1);
+  levels.to.set(to);
+  levels.done = 0;
+  levels.total = total;
+}
+
+/** A level at sample `i` of the block. */
+function levelAt({ from, to, done, total }: Levels, index: number, i: number): number {
+  const at = done + i + 1;
+  return at >= total ? to[index] : from[index] + (at / total) * (to[index] - from[index]);
 }
 
 /** One audio channel of a voice. */
@@ -30,11 +66,15 @@ export interface Lane {
   readonly cell: Cell;
   readonly oversampler: Oversampler;
   readonly amplifier: Float64Array;
+  /** Where the output bends, and what softens that; nothing without oversampling. */
+  readonly kinks: Float64Array;
+  readonly softener: Softener;
   readonly values: Moving;
   readonly noise: Float64Array;
   readonly gaussian: GaussianSource;
-  /** Of the last block. */
-  drainPeakV: number;
+  /** Of the last block; `lost` where a voltage in it was no number or ran away. */
+  outputPeakV: number;
+  lost: boolean;
 }
 
 export interface Voice {
@@ -43,10 +83,12 @@ export interface Voice {
   readonly drive: Drive;
   /** Raises a recorded control; null for other controls. */
   readonly external: Oversampler | null;
-  /** Full scale, V. */
-  readonly scale: Moving;
+  /** Full scale, V, and samples for a volt: they move at the lower rate. */
+  readonly levels: Levels;
   readonly control: Moving;
-  readonly amplifier: Moving;
+  /** The amplifier's values, which move at the upper rate. */
+  readonly amplifier: Levels;
+  readonly amplifierNow: Float64Array;
   /** Slices done and to do of the ramp; upper-rate samples done of the slice. */
   readonly ramp: { done: number; total: number; inSlice: number };
   /**
@@ -57,7 +99,8 @@ export interface Voice {
 }
 
 function moving(values: Float64Array): Moving {
-  return { now: values, from: Float64Array.from(values), to: Float64Array.from(values) };
+  const copy = () => Float64Array.from(values);
+  return { now: values, from: copy(), to: copy(), aim: copy(), increment: new Float64Array(values.length) };
 }
 
 /** A voice at its operating point. Throws when a cell's network is singular. */
@@ -75,10 +118,13 @@ export function createVoice(numbers: ChainNumbers): Voice {
       cell,
       oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK),
       amplifier: createAmplifierState(),
+      kinks: oversampling > 1 ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
+      softener: createSoftener(),
       values: moving(Float64Array.from(cell.values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
-      drainPeakV: 0,
+      outputPeakV: 0,
+      lost: false,
     };
   });
   const control = moving(Float64Array.from(numbers.control.values));
@@ -87,9 +133,10 @@ export function createVoice(numbers: ChainNumbers): Voice {
     lanes,
     drive: createDrive(numbers.control, control.now, lanes, LONGEST_BLOCK * oversampling),
     external: numbers.control.kind === 'external' ? createOversampler(oversampling, filters, LONGEST_BLOCK) : null,
-    scale: moving(Float64Array.of(numbers.fullScaleV)),
+    levels: standing(levelsOf(numbers)),
     control,
-    amplifier: moving(Float64Array.from(numbers.amplifier)),
+    amplifier: standing(numbers.amplifier),
+    amplifierNow: Float64Array.from(numbers.amplifier),
     ramp: { done: 0, total: 0, inSlice: 0 },
     quiet: { cell: quietCell, signal: new Float64Array(LONGEST_BLOCK), control: new Float64Array(LONGEST_BLOCK), feedthroughPeakV: 0 },
   };
@@ -97,15 +144,15 @@ export function createVoice(numbers: ChainNumbers): Voice {
 
 /** Starts moving to the values of `numbers`, which have the voice's shape, from wherever they are now. */
 export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
-  retarget(voice.scale, Float64Array.of(numbers.fullScaleV));
+  setOut(voice.levels, levelsOf(numbers), Math.round(RAMP_SEC * numbers.sampleRateHz));
+  setOut(voice.amplifier, numbers.amplifier, Math.round(RAMP_SEC * numbers.sampleRateHz * numbers.oversampling));
   retarget(voice.control, numbers.control.values);
-  retarget(voice.amplifier, numbers.amplifier);
   numbers.cells.forEach((cell, channel) => {
     retarget(voice.lanes[channel].values, cell.values);
   });
   voice.ramp.done = 0;
   voice.ramp.inSlice = 0;
-  voice.ramp.total = Math.max(1, Math.round((RAMP_SEC * numbers.sampleRateHz * numbers.oversampling) / SLICE));
+  voice.ramp.total = Math.max(1, Math.round((RAMP_SEC * numbers.sampleRateHz * numbers.oversampling) / voice.numbers.updateEvery));
 }
 
 function retarget(values: Moving, to: Float64Array): void {
@@ -113,9 +160,16 @@ function retarget(values: Moving, to: Float64Array): void {
   values.to.set(to);
 }
 
-function follow(values: Moving, fraction: number): void {
-  const { now, from, to } = values;
-  for (let i = 0; i < now.length; i++) now[i] = fraction === 1 ? to[i] : from[i] + fraction * (to[i] - from[i]);
+/** Aims at a fraction of the whole way, `samples` steps from here. */
+function aim({ now, from, to, aim: end, increment }: Moving, fraction: number, samples: number): void {
+  for (let i = 0; i < now.length; i++) {
+    end[i] = fraction === 1 ? to[i] : from[i] + fraction * (to[i] - from[i]);
+    increment[i] = (end[i] - now[i]) / samples;
+  }
+}
+
+function step({ now, increment }: Moving): void {
+  for (let i = 0; i < now.length; i++) now[i] += increment[i];
 }
 
 /**
@@ -129,12 +183,11 @@ export function processVoice(
   outputs: readonly Float64Array[],
   count: number,
 ): boolean {
-  const { lanes, numbers } = voice;
+  const { lanes, numbers, levels } = voice;
   const upperCount = count * numbers.oversampling;
   for (let channel = 0; channel < lanes.length; channel++) {
     const first = lanes[channel].oversampler.buffers[0];
-    const fullScaleV = voice.scale.now[0];
-    for (let i = 0; i < count; i++) first[i] = inputs[channel][i] * fullScaleV;
+    for (let i = 0; i < count; i++) first[i] = inputs[channel][i] * levelAt(levels, FULL_SCALE_V, i);
     raise(lanes[channel].oversampler, count);
   }
   if (voice.external) {
@@ -142,49 +195,117 @@ export function processVoice(
     for (let i = 0; i < count; i++) first[i] = external[i];
     voice.drive.recorded = raise(voice.external, count);
   }
+  for (let channel = 0; channel < lanes.length; channel++) {
+    lanes[channel].outputPeakV = 0;
+    lanes[channel].lost = false;
+  }
   advanceAll(voice, upperCount);
   advanceQuiet(voice, count);
   let sound = true;
   for (let channel = 0; channel < lanes.length; channel++) {
-    const lane = lanes[channel];
-    sound = keepPeak(voice, lane, upperCount) && sound;
-    const low = lower(lane.oversampler, count);
-    const perV = (numbers.idealAmplifier ? voice.amplifier.now[GAIN] : 1) / voice.scale.now[0];
-    for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * perV;
+    if (lanes[channel].lost) {
+      putAtRest(voice, lanes[channel]);
+      sound = false;
+    }
+    if (numbers.oversampling > 1) soften(lanes[channel].softener, top(lanes[channel]), lanes[channel].kinks, upperCount);
   }
+  amplify(voice, upperCount);
+  for (let channel = 0; channel < lanes.length; channel++) {
+    const low = lower(lanes[channel].oversampler, count);
+    for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * levelAt(levels, PER_V, i);
+  }
+  levels.done = Math.min(levels.done + count, levels.total);
   return sound;
 }
 
-/** Control, cells and amplifiers, slice by slice while values move. */
+function top(lane: Lane): Float64Array {
+  const { buffers } = lane.oversampler;
+  return buffers[buffers.length - 1];
+}
+
+/** Control and cells; sample by sample while values move. */
 function advanceAll(voice: Voice, upperCount: number): void {
   const { lanes, ramp, numbers } = voice;
   let at = 0;
-  while (at < upperCount) {
-    const isMoving = ramp.done < ramp.total;
-    const end = isMoving ? Math.min(upperCount, at + SLICE - ramp.inSlice) : upperCount;
-    if (isMoving && ramp.inSlice === 0) takeValues(voice, (ramp.done + 1) / ramp.total);
-    advanceSlice(voice.drive, lanes, numbers, at, end);
-    if (isMoving) {
-      ramp.inSlice += end - at;
-      if (ramp.inSlice === SLICE) {
-        ramp.inSlice = 0;
-        ramp.done += 1;
-      }
+  while (at < upperCount && ramp.done < ramp.total) {
+    if (ramp.inSlice === 0) beginSlice(voice, (ramp.done + 1) / ramp.total);
+    stepSlice(voice);
+    ramp.inSlice += 1;
+    if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
+    advanceSlice(voice.drive, lanes, numbers, at, at + 1);
+    finish(voice, at, at + 1);
+    at += 1;
+  }
+  if (at === upperCount) return;
+  advanceSlice(voice.drive, lanes, numbers, at, upperCount);
+  finish(voice, at, upperCount);
+}
+
+function beginSlice(voice: Voice, fraction: number): void {
+  const { updateEvery } = voice.numbers;
+  aim(voice.control, fraction, updateEvery);
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const { cell, values } = voice.lanes[channel];
+    aim(values, fraction, updateEvery);
+    aimAt(cell, values.aim, updateEvery);
+  }
+  loadValues(voice.quiet.cell, voice.lanes[0].values.aim);
+}
+
+function stepSlice(voice: Voice): void {
+  step(voice.control);
+  for (let channel = 0; channel < voice.lanes.length; channel++) approach(voice.lanes[channel].cell);
+}
+
+function endSlice(voice: Voice): void {
+  voice.control.now.set(voice.control.aim);
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const { cell, values } = voice.lanes[channel];
+    values.now.set(values.aim);
+    arrive(cell);
+  }
+  voice.ramp.inSlice = 0;
+  voice.ramp.done += 1;
+}
+
+/** Notes the cells' peaks. */
+function finish(voice: Voice, from: number, to: number): void {
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const lane = voice.lanes[channel];
+    const { buffers } = lane.oversampler;
+    const signal = buffers[buffers.length - 1];
+    for (let i = from; i < to; i++) {
+      const size = Math.abs(signal[i]);
+      if (!(size < RUNAWAY_V)) lane.lost = true;
+      if (size > lane.outputPeakV) lane.outputPeakV = size;
     }
-    at = end;
   }
 }
 
-function takeValues(voice: Voice, fraction: number): void {
-  follow(voice.scale, fraction);
-  follow(voice.control, fraction);
-  follow(voice.amplifier, fraction);
-  for (let channel = 0; channel < voice.lanes.length; channel++) {
-    const { cell, values } = voice.lanes[channel];
-    follow(values, fraction);
-    loadValues(cell, values.now);
+/** A real amplifier works at the upper rate; an ideal one is a gain, applied at the lower. */
+function amplify({ numbers, lanes, amplifier, amplifierNow }: Voice, upperCount: number): void {
+  if (numbers.idealAmplifier) return;
+  const moving = Math.max(0, Math.min(upperCount, amplifier.total - amplifier.done));
+  for (let channel = 0; channel < lanes.length; channel++) {
+    const lane = lanes[channel];
+    const signal = lane.oversampler.buffers[lane.oversampler.buffers.length - 1];
+    for (let i = 0; i < moving; i++) {
+      for (let index = 0; index < amplifierNow.length; index++) amplifierNow[index] = levelAt(amplifier, index, i);
+      processAmplifier(amplifierNow, lane.amplifier, signal, i, i + 1);
+    }
+    processAmplifier(amplifier.to, lane.amplifier, signal, moving, upperCount);
   }
-  loadValues(voice.quiet.cell, voice.lanes[0].values.now);
+  amplifier.done = Math.min(amplifier.done + upperCount, amplifier.total);
+}
+
+/** The cell at its operating point, the block silent. */
+function putAtRest(voice: Voice, lane: Lane): void {
+  top(lane).fill(0);
+  if (lane.kinks.length > 0) lane.kinks[0] = 0;
+  lane.outputPeakV = 0;
+  lane.amplifier.fill(0);
+  lane.cell.state.fill(0);
+  settle(lane.cell, 0, quietControlV(voice.numbers.control));
 }
 
 function advanceQuiet(voice: Voice, count: number): void {
@@ -197,26 +318,4 @@ function advanceQuiet(voice: Voice, count: number): void {
   quiet.feedthroughPeakV = 0;
   for (let i = 0; i < count; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
   if (!(quiet.feedthroughPeakV < RUNAWAY_V)) settle(quiet.cell, 0, quietControlV(numbers.control));
-}
-
-/** Notes the cell's peak and amplifies; puts the cell at rest and silences its block when the voltage is not a number or has run away. */
-function keepPeak(voice: Voice, lane: Lane, upperCount: number): boolean {
-  const { buffers } = lane.oversampler;
-  const drain = buffers[buffers.length - 1];
-  let peak = 0;
-  let lost = false;
-  for (let i = 0; i < upperCount; i++) {
-    const size = Math.abs(drain[i]);
-    if (!(size < RUNAWAY_V)) lost = true;
-    if (size > peak) peak = size;
-  }
-  lane.drainPeakV = lost ? 0 : peak;
-  if (lost) {
-    drain.fill(0);
-    lane.amplifier.fill(0);
-    lane.cell.state.fill(0);
-    settle(lane.cell, 0, quietControlV(voice.numbers.control));
-  }
-  if (!voice.numbers.idealAmplifier) processAmplifier(voice.amplifier.now, lane.amplifier, drain, 0, upperCount);
-  return !lost;
 }

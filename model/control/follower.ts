@@ -25,21 +25,34 @@ export function followerValues(control: Envelope, rateHz: number): Float64Array 
   return Float64Array.of(restV, limitV, thresholdV, gainVPerV, half / (attackOhm * timingF), half / (releaseOhm * timingF));
 }
 
-/** The envelope after one step, V, from the envelope and the rectified voltage before it and the rectified voltage after it. */
-export function nextEnvelope(values: Float64Array, envelope: number, before: number, after: number): number {
+/** Memory of a follower, by place: envelope and rectified voltage of the last sample, V; what is heard now; the envelope and control that it gives. */
+export const ENVELOPE = 0;
+export const RECTIFIED = 1;
+export const HEARD = 2;
+export const NEXT_ENVELOPE = 3;
+export const NEXT_CONTROL_V = 4;
+export const FOLLOWER_SLOTS = 5;
+
+/** Envelope and control voltage that the sample in HEARD gives, into the slots after it. A step is only taken by `keepStep`. */
+export function follow(values: Float64Array, slots: Float64Array): void {
   const attack = values[ATTACK];
   const release = values[RELEASE];
-  const explicit = envelope * (1 - release) + attack * Math.max(before - envelope, 0);
-  const charged = (explicit + attack * after) / (1 + attack + release);
-  return charged < after ? charged : explicit / (1 + release);
-}
-
-/** The control voltage at an envelope, V. */
-export function followerControlV(values: Float64Array, envelope: number): number {
+  const envelope = slots[ENVELOPE];
+  const heard = slots[HEARD];
+  const explicit = envelope * (1 - release) + attack * Math.max(slots[RECTIFIED] - envelope, 0);
+  const charged = (explicit + attack * heard) / (1 + attack + release);
+  const next = charged < heard ? charged : explicit / (1 + release);
   const rest = values[REST_V];
   const limit = values[LIMIT_V];
-  const moved = rest + values[GAIN] * Math.max(envelope - values[THRESHOLD_V], 0);
-  return limit > rest ? Math.min(moved, limit) : Math.max(moved, limit);
+  const moved = rest + values[GAIN] * Math.max(next - values[THRESHOLD_V], 0);
+  slots[NEXT_ENVELOPE] = next;
+  slots[NEXT_CONTROL_V] = limit > rest ? Math.min(moved, limit) : Math.max(moved, limit);
+}
+
+/** Takes the step that `follow` has worked out. */
+export function keepStep(slots: Float64Array): void {
+  slots[ENVELOPE] = slots[NEXT_ENVELOPE];
+  slots[RECTIFIED] = slots[HEARD];
 }
 
 /** Time constants of attack and release, s. */

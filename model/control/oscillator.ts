@@ -33,7 +33,7 @@ export const EDGE_TURNS = 3;
 export function compileOscillator(control: Control, rateHz: number): OscillatorNumbers {
   if (control.source === 'fixed') return { shape: 'fixed', middleV: control.controlV, halfV: 0, turnsPerSample: 0, edgeTurns: 1 };
   if (control.source !== 'lfo')
-    throw new RangeError(`control.source is ${control.source}; the engine moves the gate by fixed or lfo so far`);
+    throw new RangeError(`control.source is ${control.source}; expected fixed or lfo: the others have no period of their own`);
   const { shape, fromV, toV, rateHz: lfoHz, edgeSec } = control;
   const longest = 0.5 / lfoHz;
   const hasEdges = shape === 'square' || shape === 'rising' || shape === 'falling';

@@ -92,13 +92,17 @@ function checkGroup(
 function checkPresence(group: Group, name: string, value: Fields, path: string, report: Report): unknown {
   const field = group.fields[name];
   const given = Object.hasOwn(value, name) ? value[name] : undefined;
-  switch (group.presence[name]) {
+  const presence = group.presence[name];
+  const list = presence?.startsWith('first of ') ? value[presence.slice('first of '.length)] : undefined;
+  // Faults of the list's first item are reported where it stands.
+  if (given === undefined && Array.isArray(list)) return checkField(field, list[0], path, () => undefined);
+  switch (presence) {
     case 'optional':
       return given === undefined || given === null ? undefined : checkField(field, given, path, report);
-    case 'required':
-      return given === undefined ? missing(path, field, report) : checkField(field, given, path, report);
-    default:
+    case undefined:
       return given === undefined ? defaultOf(field) : checkField(field, given, path, report);
+    default:
+      return given === undefined ? missing(path, field, report) : checkField(field, given, path, report);
   }
 }
 

@@ -73,7 +73,10 @@ function groupSchema(group: Group, extra: Record<string, object>, defs: Defs): o
     properties[name] = group.presence[name] === 'optional' ? { anyOf: [inner, { type: 'null' }] } : inner;
   }
   const required = Object.keys(properties).filter((name) => name in extra || group.presence[name] === 'required');
-  const rules = group.rules.flatMap((rule) => rule.jsonSchema ?? []);
+  const eitherOr = Object.entries(group.presence).flatMap(([name, presence]) =>
+    presence.startsWith('first of ') ? [{ anyOf: [{ required: [name] }, { required: [presence.slice('first of '.length)] }] }] : [],
+  );
+  const rules = [...group.rules.flatMap((rule) => rule.jsonSchema ?? []), ...eitherOr];
   return {
     title: group.title,
     description: group.description,

@@ -22,6 +22,8 @@ export interface FieldInfo {
   readonly description: string;
 }
 
+export type Presence = 'required' | 'optional' | `first of ${string}`;
+
 /** An object with named fields. A field may be left out, and then takes its default, unless `presence` says otherwise. */
 export interface Group {
   readonly kind: 'group';
@@ -29,8 +31,8 @@ export interface Group {
   readonly title: string;
   readonly description: string;
   readonly fields: Readonly<Record<string, Field>>;
-  /** required: must be there. optional: stays absent when left out or null. */
-  readonly presence: Readonly<Record<string, 'required' | 'optional'>>;
+  /** required: must be there. optional: stays absent when left out or null. first of NAME: the first of that list where it is left out. */
+  readonly presence: Readonly<Record<string, Presence>>;
   readonly rules: readonly Rule[];
 }
 

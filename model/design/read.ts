@@ -30,7 +30,7 @@ export function readDesign(text: string): ReadResult {
 /** Checks a value that should be a design: the same faults as `readDesign`, from a parsed file or a script. */
 export function checkDesign(value: unknown): ReadResult {
   const version = typeof value === 'object' && value !== null && 'fettle' in value ? value.fettle : undefined;
-  if (typeof version === 'number' && version > VERSION) {
+  if (typeof version === 'number' && Number.isInteger(version) && version > VERSION) {
     const sentence = `This file is a fettle ${version} design; this Fettle reads version ${VERSION}. A newer Fettle will open it.`;
     return whole(version, `version ${VERSION}`, sentence, 'fettle');
   }

@@ -52,7 +52,7 @@ export const variantSchema: Group = group<Variant>(
     control,
     output,
   },
-  { presence: { name: 'required', device: 'required', devices: 'optional', cell: 'required' } },
+  { presence: { name: 'required', device: 'first of devices', devices: 'optional', cell: 'required' } },
 );
 
 export const designSchema: Group = group<Design>(

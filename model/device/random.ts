@@ -1,8 +1,8 @@
 /**
- * Gaussian numbers from a seed, the same in every engine.
+ * Gaussian and triangular numbers from a seed, the same in every engine.
  *
  * Law      xorshift128 on four 32-bit words (Marsaglia, J. Stat. Soft. 8 (2003) 14), seeded by a multiplicative hash; pairs of uniform numbers to
- *          Gaussian ones by the polar method (Marsaglia & Bray, SIAM Rev. 6 (1964) 260); from memory
+ *          Gaussian ones by the polar method (Marsaglia & Bray, SIAM Rev. 6 (1964) 260), or added to triangular ones; from memory
  */
 import { log } from './math.ts';
 
@@ -55,4 +55,9 @@ export function nextGaussian({ words, kept }: GaussianSource): number {
   kept[0] = y * scale;
   kept[1] = 1;
   return x * scale;
+}
+
+/** The next number of triangular density, −1 … 1, mean 0 and variance 1/6. Allocates nothing. */
+export function nextTriangular({ words }: GaussianSource): number {
+  return (uniform(words) + uniform(words)) / 2;
 }

@@ -1,32 +1,35 @@
 /**
  * What a cell does to a tone while its LFO runs: over one whole cycle, in the steady state.
  *
- * Law      the tone is a whole multiple m of the LFO's rate, so that the cycle repeats. Lines within ½m of n·m are harmonic n with its sidebands (whole
- *          to ¼m, then tapered); each such group's envelope is that harmonic at every moment of the cycle
+ * Law      the tone is a whole multiple m of the LFO's rate, so that the cycle repeats. Lines within ½m of n·m are harmonic n with its
+ *          sidebands; the envelope about n·m (`measure/lines.ts`) is that harmonic at every moment of the cycle
  * Scheme   the cycle is solved on its own grid (`steady.ts`), doubled until its lines stop changing (`refine.ts`); moments by quadrature
  *          demodulation. Feedthrough is a run of its own, without the tone (`feedthrough.ts`)
  * Error    `changed`, with `converged` false where the finest grid still changed. `thdError`: the lines halfway between fundamental and second
- *          harmonic over the fundamental, where sidebands of one run into the other. A moment is found to 1/1024 of the cycle
+ *          harmonic over the fundamental, where sidebands of one run into the other. A moment is found to 1/1024 of the
+ *          cycle and is a mean over four periods of the tone: its distortion is less sure nearer than two to a corner of the control
  * Valid    make-up gain only, without the amplifier's limits
  */
-import { createCell, withTrapezoidalRule } from '../cell/cell.ts';
+import { createCell, forReadings } from '../cell/cell.ts';
 import { cellNumbers, variantAt } from '../cell/fromDesign.ts';
 import type { Design } from '../design/types.ts';
 import { cosTurns, dbFromRatio, ratioFromDb } from '../device/math.ts';
-import { envelopeOf, groupAmplitude, lineAmplitude, type Lines, linesOf } from '../measure/lines.ts';
+import { bandAmplitude, envelopeOf, lineAmplitude, type Lines, linesOf } from '../measure/lines.ts';
 import { controlOver, type Feedthrough, feedthroughOf, type Lfo } from './feedthrough.ts';
 import { refined } from './refine.ts';
 import { requireRange } from './require.ts';
-import { periodOf, type RegionShares, regionShares } from './steady.ts';
+import { periodOf, type RegionShares, regionShares, type SteadyStart } from './steady.ts';
 
 const HARMONICS = 9;
 const SIDEBANDS = 16;
 const MOMENTS = 1024;
 const POINTS_A_PERIOD = 32;
-const FINEST = 2097152;
+/** Grid points in a cycle: usually enough, and what the longest cycle may take. */
+const FINEST = 262144;
+const LONGEST = 1048576;
 /** With fewer periods in a cycle the sidebands of one harmonic run into the next. */
 const FEWEST_PERIODS = 8;
-const MOST_PERIODS = FINEST / (2 * POINTS_A_PERIOD);
+const MOST_PERIODS = LONGEST / (2 * POINTS_A_PERIOD);
 
 export interface CycleOptions {
   /** Hz, rounded to a whole multiple of the LFO's rate; 1000 when left out. */
@@ -85,10 +88,13 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
   requireRange('toneV', toneV, 1e-9, 1e3, 'V peak');
   const periods = wholePeriods(options.toneHz ?? 1000, control.rateHz);
   const gain = at === 'output' ? ratioFromDb(output.gainDb) : 1;
-  const numbers = withTrapezoidalRule(cellNumbers(design, variantIndex, channel));
-  const cycle = refined(powerOfTwoFrom(POINTS_A_PERIOD * periods), FINEST, (points) => {
+  const numbers = forReadings(cellNumbers(design, variantIndex, channel));
+  const coarsest = powerOfTwoFrom(POINTS_A_PERIOD * periods);
+  let start: SteadyStart | null = null;
+  const cycle = refined(coarsest, Math.max(FINEST, 2 * coarsest), (points) => {
     const audio = Float64Array.from({ length: points }, (_, i) => toneV * cosTurns((((i + 1) * periods) % points) / points));
-    const period = periodOf(createCell(numbers, 1 / (control.rateHz * points)), audio, controlOver(control, points).ends);
+    const period = periodOf(createCell(numbers, 1 / (control.rateHz * points)), audio, controlOver(control, points).ends, start);
+    start = period.start;
     const lines = linesOf(period.output);
     return { value: { lines, regions: regionShares(period) }, watched: watchedIn(lines, periods), settled: period.settled };
   });
@@ -105,7 +111,7 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
     leastDistorted: least(moments, ({ thd }) => thd),
     mostDistorted: least(moments, ({ thd }) => -thd),
     thd: rootOfSquares(Array.from({ length: HARMONICS - 1 }, (_, i) => harmonicAmplitude(lines, periods, i + 2))) / fundamental,
-    thdError: groupAmplitude(lines, 1.5 * periods, 0.1 * periods) / fundamental,
+    thdError: bandAmplitude(lines, Math.floor(1.4 * periods), Math.ceil(1.6 * periods)) / fundamental,
     feedthrough: feedthroughOf(design, variantIndex, channel, control, gain),
     regions,
     gridPoints: cycle.gridPoints,
@@ -143,15 +149,15 @@ function rootOfSquares(values: readonly number[]): number {
 }
 
 function harmonicAmplitude(lines: Lines, periods: number, n: number): number {
-  return groupAmplitude(lines, n * periods, periods / 2);
+  return bandAmplitude(lines, Math.ceil((n - 0.5) * periods), Math.ceil((n + 0.5) * periods) - 1);
 }
 
 function momentsOf(lines: Lines, periods: number, control: Lfo, unityV: number): Moment[] {
   const controlV = controlOver(control, MOMENTS).starts;
-  const fundamental = envelopeOf(lines, periods, periods / 2, MOMENTS);
+  const fundamental = envelopeOf(lines, periods, periods, MOMENTS);
   const above = new Float64Array(MOMENTS);
   for (let n = 2; n <= HARMONICS; n++) {
-    envelopeOf(lines, n * periods, periods / 2, MOMENTS).forEach((value, k) => {
+    envelopeOf(lines, n * periods, periods, MOMENTS).forEach((value, k) => {
       above[k] += value * value;
     });
   }

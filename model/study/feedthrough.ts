@@ -1,8 +1,8 @@
 /**
  * What the LFO alone brings to a cell's output over one cycle.
  *
- * Scheme   the cell's periodic state without audio (`steady.ts`), backward Euler on the picofarads, which does not ring where the control has
- *          corners; the grid doubled until the lines stop changing (`refine.ts`)
+ * Scheme   the cell's periodic state without audio (`steady.ts`), the picofarads by the cell's own damped rule, which does not ring where the
+ *          control has corners; the grid doubled until the lines stop changing by 1e-4 dB (`refine.ts`)
  * Error    `changed`, with `converged` false where the finest grid still changed
  * Valid    make-up gain only, without the amplifier's limits
  */
@@ -11,12 +11,12 @@ import { cellNumbers } from '../cell/fromDesign.ts';
 import { compileOscillator, oscillatorValues, runOscillator } from '../control/oscillator.ts';
 import type { Control, Design } from '../design/types.ts';
 import { lineAmplitude, type Lines, linesOf } from '../measure/lines.ts';
-import { type OnGrid, refined } from './refine.ts';
+import { type OnGrid, refined, STOPPED } from './refine.ts';
 import { periodOf } from './steady.ts';
 
 const LFO_HARMONICS = 16;
 const COARSEST = 2048;
-const FINEST = 131072;
+const FINEST = 65536;
 
 export type Lfo = Extract<Control, { source: 'lfo' }>;
 
@@ -44,7 +44,7 @@ export function feedthroughOf(design: Design, variantIndex: number, channel: num
       settled,
     };
   };
-  const { value, ...how } = refined(COARSEST, FINEST, readOn);
+  const { value, ...how } = refined(COARSEST, FINEST, readOn, STOPPED);
   const { lines, output } = value;
   const top = output.reduce((most, v) => Math.max(most, v), Number.NEGATIVE_INFINITY);
   const bottom = output.reduce((most, v) => Math.min(most, v), Number.POSITIVE_INFINITY);

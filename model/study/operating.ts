@@ -13,6 +13,7 @@ import type { Design, Device } from '../design/types.ts';
 import { channelRegion, channelSlope, channelTerm, type LawConstants, lawConstants } from '../device/law.ts';
 import { exp } from '../device/math.ts';
 import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
+import { deviation } from '../cell/kernels/graded.ts';
 import { createNetwork, type Network, NO_SLOPES, type Slopes, steadyVoltages } from './network.ts';
 import { requireRange } from './require.ts';
 
@@ -117,7 +118,20 @@ export function linearise(design: Design, variantIndex: number, options: Operati
     gateSourceA: ends.sourceJunction.shotA + leakageS * Math.abs(ends.vgs),
     gateDrainA: ends.drainJunction.shotA + leakageS * Math.abs(ends.vgd),
   };
-  return { point, network: createNetwork(circuit, ends.slopes), shot };
+  return { point, network: createNetwork(atBias(circuit, device, ends.vgs, ends.vgd), ends.slopes), shot };
+}
+
+/** The circuit with the gate's capacitances at their values for these voltages, n-channel frame. */
+function atBias(circuit: Circuit, { grading, barrierV }: Device, vgs: number, vgd: number): Circuit {
+  if (grading === 0) return circuit;
+  const above = new Float64Array(2);
+  const elements = circuit.elements.map((element) => {
+    const isSource = element.name === 'gateSourceF';
+    if (element.kind !== 'capacitor' || !(isSource || element.name === 'gateDrainF')) return element;
+    deviation(grading, barrierV, isSource ? vgs : vgd, above, 0);
+    return { ...element, valueF: element.valueF * (1 + above[1]) };
+  });
+  return { ...circuit, elements };
 }
 
 interface Junction {

@@ -9,7 +9,7 @@
 const SMALL = 1e-8;
 const SMALL_V = 1e-12;
 /** 1e-4 dB. */
-const STOPPED = 1.15e-5;
+export const STOPPED = 1.15e-5;
 /** For the largest amplitude. */
 const STOPPED_LARGEST = 1e-7;
 
@@ -24,12 +24,17 @@ export interface Refined<T> {
   readonly value: T;
   readonly gridPoints: number;
   readonly changed: number;
-  /** The largest amplitude changed by under 1e-7, every other by under 1e-4 dB, and the state repeats. */
+  /** The largest amplitude changed by under 1e-7 unless said, every other by under 1e-4 dB, and the state repeats. */
   readonly converged: boolean;
 }
 
-/** From `coarsest` points, doubled up to `finest`. */
-export function refined<T>(coarsest: number, finest: number, readOn: (points: number) => OnGrid<T>): Refined<T> {
+/** From `coarsest` points, doubled up to `finest`; `stoppedLargest` is what the largest amplitude may still change by. */
+export function refined<T>(
+  coarsest: number,
+  finest: number,
+  readOn: (points: number) => OnGrid<T>,
+  stoppedLargest = STOPPED_LARGEST,
+): Refined<T> {
   let points = coarsest;
   let { value, watched } = readOn(points);
   let changed = Number.POSITIVE_INFINITY;
@@ -38,7 +43,7 @@ export function refined<T>(coarsest: number, finest: number, readOn: (points: nu
     points *= 2;
     const finer = readOn(points);
     const change = changeOf(watched, finer.watched);
-    converged = finer.settled && change.ofLargest < STOPPED_LARGEST && change.ofAny < STOPPED;
+    converged = finer.settled && change.ofLargest < stoppedLargest && change.ofAny < STOPPED;
     changed = change.ofAny;
     value = finer.value;
     watched = finer.watched;

@@ -11,8 +11,9 @@ import { factor, solve } from '../cell/linear.ts';
 import { channelRegion } from '../device/law.ts';
 import { cosTurns } from '../device/math.ts';
 
-const NEWTON_ROUNDS = 12;
+const NEWTON_ROUNDS = 20;
 const SETTLING_PERIODS = 4000;
+const SETTLING_SAMPLES = 16777216;
 const REPEATS = 1e-12;
 
 /** Forward current above which a gate junction is said to conduct, A. */
@@ -25,6 +26,19 @@ export interface SteadyPeriod {
   readonly drainOverdrive: Float64Array;
   readonly gateOn: Uint8Array;
   readonly settled: boolean;
+  readonly start: SteadyStart;
+}
+
+/** Where a search ended: the states at sample 0, and the slope that it went by. */
+export interface SteadyStart {
+  readonly state: Float64Array;
+  readonly slope: Slope | null;
+}
+
+/** Factored. */
+interface Slope {
+  readonly matrix: Float64Array;
+  readonly pivots: Int32Array;
 }
 
 /** The period of `size` samples of `toneV`·cos; the cell's step must be the period divided by `size`. */
@@ -33,40 +47,42 @@ export function steadyPeriod(cell: Cell, toneV: number, controlV: number, size: 
   return periodOf(cell, audio, new Float64Array(size).fill(controlV));
 }
 
-/** The period that repeats under one period of audio and control, V, each given at the end of its step. Sample i is the one before step i. */
-export function periodOf(cell: Cell, audio: Float64Array, control: Float64Array): SteadyPeriod {
+/**
+ * The period that repeats under one period of audio and control, V, each given at the end of its step. Sample i is the one before step i.
+ * `start` is the `start` of the same cell on a coarser grid: the search begins there.
+ */
+export function periodOf(cell: Cell, audio: Float64Array, control: Float64Array, start: SteadyStart | null = null): SteadyPeriod {
   const scratch = new Float64Array(audio.length);
   settle(cell, 0, control[control.length - 1]);
+  if (start !== null) cell.state.set(start.state);
   const run = () => {
     scratch.set(audio);
     advanceCell(cell, scratch, control, 0, audio.length);
   };
   run();
-  const settled = shoot(cell, run) || runUntilSettled(cell, run);
-  return { ...recordPeriod(cell, audio, control), settled };
+  const search = { slope: start?.slope ?? null };
+  const settled = shoot(cell, run, search) || runUntilSettled(cell, run, audio.length);
+  const state = cell.state.slice(0, cell.stateCount);
+  return { ...recordPeriod(cell, audio, control), settled, start: { state, slope: search.slope } };
 }
 
-function shoot(cell: Cell, run: () => void): boolean {
+/** Newton's method; the slope is renewed only where it no longer takes nine tenths of what is missing. */
+function shoot(cell: Cell, run: () => void, search: { slope: Slope | null }): boolean {
   const n = cell.stateCount;
   if (n === 0) return true;
   const start = cell.state.slice();
+  let before = Number.POSITIVE_INFINITY;
   for (let round = 0; round < NEWTON_ROUNDS; round++) {
     const from = cell.state.slice();
     run();
     const miss = Float64Array.from({ length: n }, (_, i) => cell.state[i] - from[i]);
     if (miss.every((value, i) => Math.abs(value) <= REPEATS * (Math.abs(from[i]) + 1e-6))) return true;
     const end = cell.state.slice();
-    const matrix = new Float64Array(n * n);
-    for (let column = 0; column < n; column++) {
-      const nudge = 1e-6 * (1 + Math.abs(from[column]));
-      cell.state.set(from);
-      cell.state[column] += nudge;
-      run();
-      for (let row = 0; row < n; row++) matrix[row * n + column] = (row === column ? 1 : 0) - (cell.state[row] - end[row]) / nudge;
-    }
-    const pivots = new Int32Array(n);
-    if (!factor(matrix, pivots, n)) break;
-    solve(matrix, pivots, n, miss, 1);
+    const size = miss.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+    if (search.slope === null || size > 0.1 * before) search.slope = slopeAt(cell, run, from, end);
+    if (search.slope === null) break;
+    before = size;
+    solve(search.slope.matrix, search.slope.pivots, n, miss, 1);
     cell.state.set(end);
     for (let i = 0; i < n; i++) cell.state[i] = from[i] + miss[i];
     if (!cell.state.every(Number.isFinite)) break;
@@ -75,9 +91,24 @@ function shoot(cell: Cell, run: () => void): boolean {
   return false;
 }
 
-function runUntilSettled(cell: Cell, run: () => void): boolean {
+/** One less the slope of the period's map, factored, by differences; null where it is singular. */
+function slopeAt(cell: Cell, run: () => void, from: Float64Array, end: Float64Array): Slope | null {
   const n = cell.stateCount;
-  for (let period = 0; period < SETTLING_PERIODS; period++) {
+  const matrix = new Float64Array(n * n);
+  for (let column = 0; column < n; column++) {
+    const nudge = 1e-6 * (1 + Math.abs(from[column]));
+    cell.state.set(from);
+    cell.state[column] += nudge;
+    run();
+    for (let row = 0; row < n; row++) matrix[row * n + column] = (row === column ? 1 : 0) - (cell.state[row] - end[row]) / nudge;
+  }
+  const pivots = new Int32Array(n);
+  return factor(matrix, pivots, n) ? { matrix, pivots } : null;
+}
+
+function runUntilSettled(cell: Cell, run: () => void, size: number): boolean {
+  const n = cell.stateCount;
+  for (let period = 0; period < SETTLING_PERIODS && period * size < SETTLING_SAMPLES; period++) {
     const before = cell.state.slice(0, n);
     run();
     if (before.every((value, i) => Math.abs(cell.state[i] - value) <= REPEATS * (Math.abs(value) + 1e-6))) return true;
@@ -85,7 +116,7 @@ function runUntilSettled(cell: Cell, run: () => void): boolean {
   return false;
 }
 
-function recordPeriod(cell: Cell, audio: Float64Array, control: Float64Array): Omit<SteadyPeriod, 'settled'> {
+function recordPeriod(cell: Cell, audio: Float64Array, control: Float64Array): Omit<SteadyPeriod, 'settled' | 'start'> {
   const size = audio.length;
   const output = new Float64Array(size);
   const sourceOverdrive = new Float64Array(size);

@@ -5,7 +5,7 @@
  * Error    second order in the grid where a coupling capacitor shapes the gate
  */
 import { createCell } from '../cell/cell.ts';
-import { cellNumbers, variantAt } from '../cell/fromDesign.ts';
+import { cellNumbers, deviceOf, variantAt } from '../cell/fromDesign.ts';
 import { compileOscillator, oscillatorValues, runOscillator } from '../control/oscillator.ts';
 import type { Design } from '../design/types.ts';
 import { lawConstants } from '../device/law.ts';
@@ -27,7 +27,9 @@ const FIXED_PERIOD_SEC = 1;
  * The oscillator is at the start of its period at index 0.
  */
 export function controlSwing(design: Design, variantIndex: number, points: number): ControlSwing {
-  const { control, device } = variantAt(design, variantIndex);
+  const variant = variantAt(design, variantIndex);
+  const { control } = variant;
+  const device = deviceOf(variant, 0);
   const periodSec = control.source === 'lfo' ? 1 / control.rateHz : 0;
   const rateHz = points / (periodSec || FIXED_PERIOD_SEC);
   const numbers = compileOscillator(control, rateHz);

@@ -5,15 +5,16 @@
  * Error    the last doubling moved the fundamental by under 1e-7 and every harmonic above −160 dB by under 1e-4 dB; `converged` is false
  *          where the finest grid did not reach that. Harmonics under −260 dB re the fundamental are the arithmetic's own and reported as zero
  */
-import { createCell, gateSourceV, settle, withTrapezoidalRule } from '../cell/cell.ts';
+import { createCell, gateSourceV, settle, forReadings } from '../cell/cell.ts';
 import { cellNumbers, deviceOf, variantAt } from '../cell/fromDesign.ts';
 import type { Design } from '../design/types.ts';
 import { lawConstants, restingResistanceOhm } from '../device/law.ts';
-import { dbFromRatio, ratioFromDb, turnsOf } from '../device/math.ts';
+import { dbFromRatio, turnsOf } from '../device/math.ts';
+import { amplifiedDcV, amplifiedPeriod } from './amplified.ts';
 import { harmonicsOf } from '../measure/harmonics.ts';
 import { type OperatingOptions, restingControlV } from './operating.ts';
 import { requireRange } from './require.ts';
-import { type RegionShares, regionShares, steadyPeriod } from './steady.ts';
+import { type RegionShares, regionShares, type SteadyPeriod, steadyPeriod } from './steady.ts';
 
 const HARMONICS = 9;
 const COARSEST = 256;
@@ -27,7 +28,7 @@ export interface ToneOptions extends OperatingOptions {
   readonly toneHz?: number;
   /** Peak, V, at the cell's input; 0.5 when left out. */
   readonly toneV?: number;
-  /** `output` counts the make-up gain. */
+  /** `output` is after the make-up amplifier, with its gain, pole, slew rate and swing. */
   readonly at?: 'drain' | 'output';
 }
 
@@ -66,10 +67,14 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
   const variant = variantAt(design, variantIndex);
   requireRange('toneHz', toneHz, 0.1, 1e6, 'Hz');
   requireRange('toneV', toneV, 1e-9, 1e3, 'V peak');
-  const numbers = withTrapezoidalRule(cellNumbers(design, variantIndex, channel));
+  const numbers = forReadings(cellNumbers(design, variantIndex, channel));
   const controlV = restingControlV(design, variantIndex, numbers, options);
-  const gain = at === 'output' ? ratioFromDb(variant.output.gainDb) : 1;
-  const solveOn = (size: number) => steadyPeriod(createCell(numbers, 1 / (toneHz * size)), toneV, controlV, size);
+  const solveOn = (size: number): SteadyPeriod => {
+    const period = steadyPeriod(createCell(numbers, 1 / (toneHz * size)), toneV, controlV, size);
+    if (at === 'drain') return period;
+    const amplified = amplifiedPeriod(variant.output, period.output, toneHz * size);
+    return { ...period, output: amplified.period, settled: period.settled && amplified.settled };
+  };
   let size = COARSEST;
   let period = solveOn(size);
   let spectrum = harmonicsOf(period.output, HARMONICS);
@@ -83,12 +88,13 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
     spectrum = finerSpectrum;
   }
   const rest = createCell(numbers, 1 / (toneHz * size));
-  const restDcV = settle(rest, 0, controlV) * gain;
+  const drainRestV = settle(rest, 0, controlV);
+  const restDcV = at === 'drain' ? drainRestV : amplifiedDcV(variant.output, drainRestV);
   const law = lawConstants(deviceOf(variant, channel), design.tempC);
   const vgsV = gateSourceV(rest);
   return {
-    ...describe(spectrum, gain, toneV),
-    dcV: spectrum.mean * gain,
+    ...describe(spectrum, toneV),
+    dcV: spectrum.mean,
     restDcV,
     rdsOhm: restingResistanceOhm(law, numbers.polarity * vgsV),
     vgsV,
@@ -107,19 +113,17 @@ function hasStopped(before: Float64Array, after: Float64Array): boolean {
   return after.every((value, i) => value < 1e-8 * after[0] || Math.abs(value - before[i]) < 1.15e-5 * value);
 }
 
-function describe(set: { real: Float64Array; imaginary: Float64Array }, gain: number, toneV: number) {
+function describe(set: { real: Float64Array; imaginary: Float64Array }, toneV: number) {
   const amplitude = amplitudes(set);
   const harmonics = Array.from(amplitude, (value, i): Harmonic => {
     const ratio = value / amplitude[0];
     const zero = !(ratio > NOTHING);
     const phaseRad = turnsOf(set.imaginary[i], set.real[i]) * TURN;
-    return zero
-      ? { n: i + 1, amplitudeV: 0, db: null, phaseRad: 0 }
-      : { n: i + 1, amplitudeV: value * gain, db: dbFromRatio(ratio), phaseRad };
+    return zero ? { n: i + 1, amplitudeV: 0, db: null, phaseRad: 0 } : { n: i + 1, amplitudeV: value, db: dbFromRatio(ratio), phaseRad };
   });
   let above = 0;
   for (const { n, amplitudeV } of harmonics) if (n > 1) above += amplitudeV * amplitudeV;
-  const fundamentalV = amplitude[0] * gain;
+  const fundamentalV = amplitude[0];
   return {
     gainDb: dbFromRatio(fundamentalV / toneV),
     fundamentalV,

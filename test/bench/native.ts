@@ -3,7 +3,7 @@ import { execFileSync } from 'node:child_process';
 import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { kernelInC } from '../../model/cell/kernels/source.ts';
+import { kernelInC, kernelName, type Shape } from '../../model/cell/kernels/source.ts';
 
 export interface NativeKernel {
   /** Nanoseconds a sample, the best of its runs. */
@@ -15,7 +15,7 @@ const doubles = (values: Float64Array) => Buffer.from(values.buffer, values.byte
 
 /** Builds the kernel of a shape with its coefficients, state and signals. Throws when there is no gcc. */
 export function buildNative(
-  shape: readonly [trapezoidal: number, stiff: number],
+  shape: Shape,
   data: { coefficients: Float64Array; state: Float64Array; audio: Float64Array; control: Float64Array },
 ): NativeKernel {
   const folder = mkdtempSync(join(tmpdir(), 'fettle-bench-'));
@@ -30,24 +30,40 @@ export function buildNative(
   };
 }
 
-function program(shape: readonly [number, number], coefficientCount: number, slotCount: number, sampleCount: number): string {
+function program(shape: Shape, coefficientCount: number, slotCount: number, sampleCount: number): string {
+  const text = kernelInC('square', shape);
   return `#include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <time.h>
-static void conduct(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n, double a, double b, double I) {
-  (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)junction; (void)s; (void)n; (void)a; (void)b; (void)I;
-  fprintf(stderr, "the benchmark's signal must not make a junction conduct\\n");
+static void addGraded(const double *c, int device, double v, double perStep, double *s, int charges, int at) {
+  (void)c; (void)device; (void)v; (void)perStep; (void)charges;
+  s[at] = 0;
+}
+static void keepCharges(const double *c, int device, double *s, int n) {
+  (void)c; (void)device; (void)s; (void)n;
+}
+static void searchPorts(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n, double a, double b) {
+  (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)junction; (void)s; (void)n; (void)a; (void)b;
+  fprintf(stderr, "the benchmark's signal must not need the search\\n");
   exit(1);
 }
-static void evaluate(const double *c, const double *t, int device, double v, double *out, int at) {
-  (void)c; (void)t; (void)device; (void)v; (void)out; (void)at;
+static void markKink(const double *c, const double *t, int device, int aI, int bI, double *e, int i, double *s, int n) {
+  (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)e; (void)i; (void)s; (void)n;
+}
+static void searched(const double *c, const double *t, int device, int aI, int bI, double a, double b, double *out, int at) {
+  (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)a; (void)b;
+  out[at] = 0;
+}
+static void evaluate(const double *c, const double *t, int device, double *s, int from, int at) {
+  (void)c; (void)t; (void)device; (void)s; (void)from; (void)at;
 }
 static void bent(const double *c, const double *t, int device, int aI, int bI, double a, double b, double I, double *out, int at) {
   (void)c; (void)t; (void)device; (void)aI; (void)bI; (void)a; (void)b;
   out[at] = I;
 }
-__attribute__((noinline)) ${kernelInC('square', shape)}
+${text.conductor}
+__attribute__((noinline)) ${text.kernel}
 static double c[${coefficientCount}], s[${slotCount}], u[${sampleCount}], v[${sampleCount}], y[${sampleCount}];
 int main(int argc, char **argv) {
   FILE *f = fopen(argv[argc - 1], "rb");
@@ -57,7 +73,7 @@ int main(int argc, char **argv) {
   for (int run = 0; run < 60; run++) {
     struct timespec t0, t1;
     clock_gettime(CLOCK_MONOTONIC, &t0);
-    square${shape.join('_')}(c, s, 0, s, u, v, y, 0, ${sampleCount});
+    ${kernelName('square', shape)}(c, s, 0, 0, s, u, v, y, 0, ${sampleCount});
     clock_gettime(CLOCK_MONOTONIC, &t1);
     double ns = ((t1.tv_sec - t0.tv_sec) * 1e9 + (t1.tv_nsec - t0.tv_nsec)) / ${sampleCount};
     if (ns < best) best = ns;

@@ -8,6 +8,7 @@ import { readDesign } from '../../model/design/read.ts';
 import type { Design } from '../../model/design/types.ts';
 import { launchBrowser, openTab, type Site, type Tab } from '../support/browser.ts';
 import { createNoise } from '../support/noise.ts';
+import { RENDER_NAMES } from '../support/sameRenders.ts';
 import { serveHarness } from './serveHarness.ts';
 
 let site: Site;
@@ -67,3 +68,12 @@ for (const rateHz of [44100, 48000, 96000]) {
     expect(tab.complaints).toEqual([]);
   });
 }
+
+const COMMITTED: Record<string, string> = JSON.parse(readFileSync(new URL('../reference/renders.json', import.meta.url), 'utf8'));
+
+test.each(RENDER_NAMES)('%s: the file’s SHA-256 is the committed one on the page and in a worker', async (name) => {
+  for (const where of ['page', 'worker'] as const) {
+    const hash = await tab.page.evaluate(([sent, place]) => window.hashOf(sent, place), [name, where] as const);
+    expect(hash).toBe(COMMITTED[name]);
+  }
+});

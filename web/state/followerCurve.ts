@@ -6,8 +6,9 @@
  * Valid    a steady tone, long after attack and release; one that follows the output hears a small tone's gain
  */
 import { cosTurns } from '../../model/device/math.ts';
-import { followerValues, nextEnvelope } from '../../model/control/follower.ts';
+import { ENVELOPE, FOLLOWER_SLOTS, follow, followerValues, HEARD, keepStep, RECTIFIED } from '../../model/control/follower.ts';
 import type { Control, Design } from '../../model/design/types.ts';
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import { lawConstants } from '../../model/device/law.ts';
 import { measureTone } from '../../model/study/tone.ts';
 import type { FollowerCurve } from './bench.ts';
@@ -22,7 +23,7 @@ const BEYOND = 4;
 
 /** Throws a RangeError where the cell cannot be computed. */
 export function followerCurve(design: Design, variantIndex: number, control: Envelope, toneHz: number): FollowerCurve {
-  const { device } = design.variants[variantIndex];
+  const device = deviceOf(design.variants[variantIndex], 0);
   const { restV, limitV, thresholdV, gainVPerV, senses } = control;
   const perVolt = steadyEnvelope(control, toneHz);
   const moves = gainVPerV !== 0 && limitV !== restV;
@@ -56,13 +57,17 @@ export function steadyEnvelope(control: Envelope, toneHz: number): number {
     return control.rectifier === 'full' ? Math.abs(v) : Math.max(v, 0);
   };
   const over = (startV: number) => {
-    let envelope = startV;
+    const slots = new Float64Array(FOLLOWER_SLOTS);
+    slots[ENVELOPE] = startV;
+    slots[RECTIFIED] = rectified(0);
     let sum = 0;
     for (let n = 0; n < POINTS; n++) {
-      envelope = nextEnvelope(values, envelope, rectified(n), rectified(n + 1));
-      sum += envelope;
+      slots[HEARD] = rectified(n + 1);
+      follow(values, slots);
+      keepStep(slots);
+      sum += slots[ENVELOPE];
     }
-    return { endV: envelope, meanV: sum / POINTS };
+    return { endV: slots[ENVELOPE], meanV: sum / POINTS };
   };
   // The end of a period rises with its start, by less than the start does: halving finds where both are the same.
   let [low, high] = [0, 1];

@@ -46,39 +46,43 @@ export function slopeAt(c: Float64Array, t: Float64Array, device: number, v: num
   return slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
 }
 
-/** F and F′ at an overdrive, into `out[at]` and `out[at + 1]`: a number that a call returns may cost memory on the audio thread. */
-export function evaluate(c: Float64Array, t: Float64Array, device: number, v: number, out: Float64Array, at: number): void {
+/**
+ * F and F′ at the overdrive in `s[from]`, into `s[at]` and `s[at + 1]`: a fraction that goes to a call or comes from it may cost memory on the audio
+ * thread.
+ */
+export function evaluate(c: Float64Array, t: Float64Array, device: number, s: Float64Array, from: number, at: number): void {
+  const v = s[from];
   const law = c[device + L.LAW];
   const scale = c[device + L.SCALE];
   const slope = c[device + L.SLOPE];
-  out[at] = 0;
-  out[at + 1] = 0;
+  s[at] = 0;
+  s[at + 1] = 0;
   if (law === L.LAW_NUMBER.square) {
     if (v <= 0) return;
-    out[at] = scale * v * v;
-    out[at + 1] = 2 * scale * v;
+    s[at] = scale * v * v;
+    s[at + 1] = 2 * scale * v;
     return;
   }
   if (law === L.LAW_NUMBER.gradual) {
     if (v <= 0) return;
     const q = v * c[device + L.INVERSE_WIDTH];
     const p = q < 1 ? q / (1 + Math.sqrt(1 - q)) : 1;
-    out[at] = q < 1 ? scale * p * p * (1 + 2 * Math.sqrt(1 - q)) : scale + slope * (v - 1 / c[device + L.INVERSE_WIDTH]);
-    out[at + 1] = slope * p;
+    s[at] = q < 1 ? scale * p * p * (1 + 2 * Math.sqrt(1 - q)) : scale + slope * (v - 1 / c[device + L.INVERSE_WIDTH]);
+    s[at + 1] = slope * p;
     return;
   }
   const z = (v * c[device + L.INVERSE_WIDTH] + 40) * 8;
   if (!(z > 0)) return;
   if (z >= c[device + L.PIECES]) {
-    out[at] = termAt(c, t, device, v);
-    out[at + 1] = slopeAt(c, t, device, v);
+    s[at] = termAt(c, t, device, v);
+    s[at + 1] = slopeAt(c, t, device, v);
     return;
   }
   const piece = Math.floor(z);
   const d = (z - piece - 0.5) * 0.125;
   const o = piece * 6;
-  out[at] = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
-  out[at + 1] = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+  s[at] = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+  s[at + 1] = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
 }
 
 /** Channel current, A, at the overdrives of both ends, λ included. */
@@ -144,7 +148,9 @@ function excessSlope(
 }
 
 /**
- * The current that solves I = F(a − αI) − F(b + γI), A, into `out[at]`, by bisection to the last bit: the two sides move apart, so there is one.
+ * A current that solves I = F(a − αI) − F(b + γI), A, into `out[at]`, by bisection to the last bit. For α, γ ≥ 0 the two sides move apart, and it lies
+ * between none and what flows with none; where a buffer and a capacitance together feed more than the drain's voltage back, γ is negative and the
+ * search begins wider.
  */
 export function searched(
   c: Float64Array,
@@ -160,6 +166,8 @@ export function searched(
   const free = channelA(c, t, device, a, b);
   let low = Math.min(0, free);
   let high = Math.max(0, free);
+  for (let wider = Math.abs(free); excess(c, t, device, a + c[aI] * low, b + c[bI] * low, low) < 0; wider *= 2) low -= wider;
+  for (let wider = Math.abs(free); excess(c, t, device, a + c[aI] * high, b + c[bI] * high, high) > 0; wider *= 2) high += wider;
   for (let step = 0; step < 2100; step++) {
     const middle = low + (high - low) / 2;
     if (middle === low || middle === high) break;

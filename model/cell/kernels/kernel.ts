@@ -3,10 +3,26 @@ export type Kernel = (
   c: Float64Array,
   t: Float64Array,
   w: Float64Array,
+  e: Float64Array,
   s: Float64Array,
   audio: Float64Array,
   control: Float64Array,
   output: Float64Array,
   from: number,
   to: number,
+) => void;
+
+/** Solves both ports while a gate junction conducts: see ports.ts. */
+export type Conductor = (
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  aI: number,
+  bI: number,
+  junction: number,
+  s: Float64Array,
+  n: number,
+  a: number,
+  b: number,
+  freeA: number,
 ) => void;

@@ -53,7 +53,16 @@ export const JUNCTION_ON_V = 14;
 export const CLAMP_ON_V = 15;
 export const CLAMP_A = 16;
 export const CLAMP_INVERSE_NVT = 17;
-export const DEVICE_WIDTH = 18;
+/** Step at which Newton's method stops, V. */
+export const ENOUGH_V = 18;
+/** Capacitances that fall with reverse voltage: exponent m (0: constant), barrier, C0 over a step of gate-source and gate-drain, S. */
+export const GRADING = 19;
+export const BARRIER_V = 20;
+export const STEP_S = 21;
+export const STEP_D = 22;
+/** 1 for an n-channel part, −1 for a p-channel one. */
+export const POLARITY = 23;
+export const DEVICE_WIDTH = 24;
 
 export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 
@@ -86,8 +95,17 @@ export const OVERDRIVE_D = 6;
 export const EARLIER_A = 7;
 /** Samples that Newton's method left to the bisection behind it. */
 export const FALLBACKS = 8;
-/** Working memory of ports.ts: F and F′ of both ends, and how far its last step moved. */
+/** Working memory of ports.ts: F and F′ of both ends. */
 export const TERM_S = 9;
 export const TERM_D = 11;
-export const MOVED_V = 13;
-export const STATE_SLOTS = 14;
+/** Current and slope of both gate ports. */
+export const PORT_S = 13;
+export const PORT_D = 15;
+/** Of each junction: four past charges above C0·v, over C0, then working memory. */
+export const CHARGES_S = 17;
+export const CHARGES_D = 23;
+/** Overdrives of the sample before, and the output's weight of the channel current, for kinks.ts. */
+export const BEFORE_S = 29;
+export const BEFORE_D = 30;
+export const PER_A = 31;
+export const STATE_SLOTS = 32;

@@ -3,14 +3,14 @@
  * five times slower than those, and the same in the bits that matter (test/model/cell/kernels.test.ts).
  */
 import { bent, searched, slopeAt, termAt } from './channel.ts';
-import type { Kernel } from './kernel.ts';
+import type { Conductor, Kernel } from './kernel.ts';
+import { markKink } from './kinks.ts';
 import * as L from './layout.ts';
-import { conduct } from './ports.ts';
 
-const NEWTON_STEPS = 12;
+const NEWTON_STEPS = 40;
 
-/** A kernel for a shape. Allocates its scratch memory now. */
-export function loopedKernel(trapezoidal: number, stiff: number): Kernel {
+/** A kernel for a shape, with the law's solver for a conducting gate. Allocates its scratch memory now. */
+export function loopedKernel(trapezoidal: number, stiff: number, conductor: Conductor): Kernel {
   const n = trapezoidal + stiff;
   const row = L.rowLayout(n);
   const past = L.memoryLayout(n);
@@ -43,7 +43,7 @@ export function loopedKernel(trapezoidal: number, stiff: number): Kernel {
     }
   };
 
-  return (c, t, w, s, audio, control, output, from, to) => {
+  return (c, t, w, e, s, audio, control, output, from, to) => {
     for (let i = from; i < to; i++) {
       const u = audio[i];
       const v = control[i];
@@ -61,10 +61,12 @@ export function loopedKernel(trapezoidal: number, stiff: number): Kernel {
       solveChannel(c, t, all.device, aI, bI, a, b, 2 * s[slots + L.CHANNEL_A] - s[slots + L.EARLIER_A], s, slots + L.TERM_S);
       const free = s[slots + L.TERM_S];
       s[slots + L.EARLIER_A] = s[slots + L.CHANNEL_A];
+      const qs = s[slots + L.OVERDRIVE_S];
+      const qd = s[slots + L.OVERDRIVE_D];
       const vs = a + c[aI] * free;
       const vd = b + c[bI] * free;
       if (vs > c[all.device + L.ON_V] || vd > c[all.device + L.ON_V]) {
-        conduct(c, t, all.device, aI, bI, all.junction, s, slots, a, b, free);
+        conductor(c, t, all.device, aI, bI, all.junction, s, slots, a, b, free);
       } else {
         s[slots + L.CHANNEL_A] = free;
         s[slots + L.JUNCTION_S] = 0;
@@ -84,10 +86,35 @@ export function loopedKernel(trapezoidal: number, stiff: number): Kernel {
       const added = (r: number) => c[r * row.width + row.current] * current + c[all.junction + 2 * r] * S + c[all.junction + 2 * r + 1] * D;
       for (let k = 0; k < n; k++) s[k] = sum(c, 2 + k, memories, u, v) + added(2 + k) + (w.length > 0 ? w[noise + 2 + k] : 0);
       output[i] = sum(c, all.outputRow, s, u, v) + added(all.outputRow) + (w.length > 0 ? w[noise + all.outputRow] : 0);
+      if (e.length > 0) {
+        s[slots + L.BEFORE_S] = qs;
+        s[slots + L.BEFORE_D] = qd;
+        s[slots + L.PER_A] = c[all.outputRow * row.width + row.current];
+        markCrossing(c, t, all.device, aI, bI, e, i, s, slots);
+      }
       s[slots + L.OLD_AUDIO] = u;
       s[slots + L.OLD_CONTROL] = v;
     }
   };
+}
+
+function markCrossing(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  aI: number,
+  bI: number,
+  e: Float64Array,
+  i: number,
+  s: Float64Array,
+  slots: number,
+): void {
+  const qs = s[slots + L.BEFORE_S];
+  const qd = s[slots + L.BEFORE_D];
+  const vs = s[slots + L.OVERDRIVE_S];
+  const vd = s[slots + L.OVERDRIVE_D];
+  if (c[device + L.LAW] === L.LAW_NUMBER.smooth || (vs > 0 === qs > 0 && vd > 0 === qd > 0)) return;
+  markKink(c, t, device, aI, bI, e, i, s, slots);
 }
 
 /** The past of stiff state `k` as its backward difference weighs it. */
@@ -119,10 +146,11 @@ function solveChannel(
     const miss = termAt(c, t, device, vs) - termAt(c, t, device, vd) - current;
     const change = miss / (c[aI] * slopeAt(c, t, device, vs) - c[bI] * slopeAt(c, t, device, vd) - 1);
     current -= change;
-    if (Math.abs((c[bI] - c[aI]) * change) < 1e-8) {
+    if (Math.abs((c[bI] - c[aI]) * change) < c[device + L.ENOUGH_V]) {
       out[at] = current;
       return;
     }
   }
   searched(c, t, device, aI, bI, a, b, out, at);
+  out[at - L.TERM_S + L.FALLBACKS] += 1;
 }

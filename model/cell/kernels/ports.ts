@@ -5,127 +5,44 @@
  *          s = a + aI·I + aS·S + aD·D  and  d = b + bI·I + bS·S + bD·D
  * Scheme   Newton on (s, d) with exact derivatives and steps into a junction shortened to its logarithm; if that has not settled in 40 steps,
  *          nested bisection, which always does: for one FET and 0 ≤ k ≤ 1 the equations are monotonic
- * Error    Newton stops at a step under 1e-11 V, where the next would be under 1e-20 V
+ * Error    Newton stops at a step under a tenth of ENOUGH_V; the currents are carried along that step, so the linear equations hold to rounding
+ *          and the junctions' law to half the step's square over (nVT)²: 1e-11 of the current while playing, 1e-17 in readings
  * Source   damping of the exponential: Nagel, UCB/ERL M520 (1975), from memory
  */
 import { exp } from '../../device/math.ts';
 import { channelA, evaluate } from './channel.ts';
+import { addGraded, keepCharges } from './graded.ts';
 import * as L from './layout.ts';
 
-const NEWTON_STEPS = 40;
-const SETTLED_V = 1e-11;
-
-/** Writes channel current, junction currents and overdrives into the slots of `s` from `n` on. Allocates nothing. */
-export function conduct(
-  c: Float64Array,
-  t: Float64Array,
-  device: number,
-  aI: number,
-  bI: number,
-  junction: number,
-  s: Float64Array,
-  n: number,
-  a: number,
-  b: number,
-  freeA: number,
-): void {
-  const freeS = a + c[aI] * freeA;
-  const freeD = b + c[bI] * freeA;
-  const knee = c[device + L.ON_V] + 20 / c[device + L.INVERSE_NVT];
-  s[n + L.OVERDRIVE_S] = freeS < knee ? freeS : Math.min(freeS, Math.max(s[n + L.OVERDRIVE_S], knee));
-  s[n + L.OVERDRIVE_D] = freeD < knee ? freeD : Math.min(freeD, Math.max(s[n + L.OVERDRIVE_D], knee));
-  for (let step = 0; step < NEWTON_STEPS; step++) {
-    newtonStep(c, t, device, aI, bI, junction, s, n, a, b);
-    if (s[n + L.MOVED_V] < SETTLED_V) {
-      currents(c, t, device, s, n);
-      return;
-    }
-  }
-  bisect(c, t, device, aI, bI, junction, s, n, a, b);
-  currents(c, t, device, s, n);
-}
-
-/** One damped step of both overdrives; the larger change, V, goes into a slot (Infinity when it is not a number). */
-function newtonStep(
-  c: Float64Array,
-  t: Float64Array,
-  device: number,
-  aI: number,
-  bI: number,
-  junction: number,
-  s: Float64Array,
-  n: number,
-  a: number,
-  b: number,
-): void {
-  const vs = s[n + L.OVERDRIVE_S];
-  const vd = s[n + L.OVERDRIVE_D];
+/** Currents of the gate's ports above the reverse currents, A, into slots: junction, clamp, graded capacitance. */
+function gatePorts(c: Float64Array, device: number, s: Float64Array, n: number, vs: number, vd: number): void {
+  const offV = c[device + L.GATE_OFF_V];
   const rate = c[device + L.INVERSE_NVT];
-  const lambda = c[device + L.LAMBDA];
-  const past = lambda * Math.max(-vd, 0);
-  const pastReversed = lambda * Math.max(-vs, 0);
-  evaluate(c, t, device, vs, s, n + L.TERM_S);
-  evaluate(c, t, device, vd, s, n + L.TERM_D);
-  const Fs = s[n + L.TERM_S];
-  const Fd = s[n + L.TERM_D];
-  const channel = Fs * (1 + past) - Fd * (1 + pastReversed);
-  const clampA = clampCurrent(c, device, vs);
-  const S = junctionCurrent(c, device, vs) + clampA;
-  const D = junctionCurrent(c, device, vd);
-  const aS = c[junction + L.BY_S];
-  const aD = c[junction + L.BY_D];
-  const bS = c[junction + L.JUNCTION_WIDTH + L.BY_S];
-  const bD = c[junction + L.JUNCTION_WIDTH + L.BY_D];
-  const fs = s[n + L.TERM_S + 1] * (1 + past) + (pastReversed > 0 ? lambda * Fd : 0);
-  const fd = s[n + L.TERM_D + 1] * (1 + pastReversed) + (past > 0 ? lambda * Fs : 0);
-  const slopeS = (S - clampA) * rate + clampA * c[device + L.CLAMP_INVERSE_NVT];
-  const rs = vs - a - c[aI] * channel - aS * S - aD * D;
-  const rd = vd - b - c[bI] * channel - bS * S - bD * D;
-  const ss = 1 - c[aI] * fs - aS * slopeS;
-  const sd = c[aI] * fd - aD * D * rate;
-  const ds = -c[bI] * fs - bS * slopeS;
-  const dd = 1 + c[bI] * fd - bD * D * rate;
-  const determinant = ss * dd - sd * ds;
-  const stepS = shortened((sd * rd - dd * rs) / determinant, vs, c, device);
-  const stepD = shortened((ds * rs - ss * rd) / determinant, vd, c, device);
-  const change = Math.max(Math.abs(stepS), Math.abs(stepD));
-  const isNumber = change < Number.POSITIVE_INFINITY;
-  s[n + L.MOVED_V] = isNumber ? change : Number.POSITIVE_INFINITY;
-  if (!isNumber) return;
-  s[n + L.OVERDRIVE_S] = vs + stepS;
-  s[n + L.OVERDRIVE_D] = vd + stepD;
-}
-
-/** A step up into conduction is cut to its logarithm, so that the exponential cannot run away. */
-function shortened(step: number, v: number, c: Float64Array, device: number): number {
-  const rate = c[device + L.INVERSE_NVT];
-  const x = step * rate;
-  if (x <= 2 || v < c[device + L.ON_V])
-    return x > 2 && v + step > c[device + L.ON_V] + 20 / rate ? c[device + L.ON_V] + 20 / rate - v : step;
-  return (2 + x / (1 + 0.1 * x)) / rate;
-}
-
-/** Current of a junction above its reverse current, A, at the overdrive `v`; nothing below the threshold at which it is under 5e-5 of that. */
-function junctionCurrent(c: Float64Array, device: number, v: number): number {
-  if (!(v > c[device + L.JUNCTION_ON_V])) return 0;
-  return c[device + L.REVERSE_A] * exp((v + c[device + L.GATE_OFF_V]) * c[device + L.INVERSE_NVT]);
-}
-
-/** The same of the clamp. */
-function clampCurrent(c: Float64Array, device: number, v: number): number {
-  if (!(v > c[device + L.CLAMP_ON_V])) return 0;
-  return c[device + L.CLAMP_A] * exp((v + c[device + L.GATE_OFF_V]) * c[device + L.CLAMP_INVERSE_NVT]);
+  const S = vs > c[device + L.JUNCTION_ON_V] ? c[device + L.REVERSE_A] * exp((vs + offV) * rate) : 0;
+  const D = vd > c[device + L.JUNCTION_ON_V] ? c[device + L.REVERSE_A] * exp((vd + offV) * rate) : 0;
+  const clampRate = c[device + L.CLAMP_INVERSE_NVT];
+  const clampA = vs > c[device + L.CLAMP_ON_V] ? c[device + L.CLAMP_A] * exp((vs + offV) * clampRate) : 0;
+  s[n + L.PORT_S] = S + clampA;
+  s[n + L.PORT_D] = D;
+  if (c[device + L.GRADING] === 0) return;
+  const S0 = s[n + L.PORT_S];
+  const D0 = s[n + L.PORT_D];
+  addGraded(c, device, vs, c[device + L.STEP_S], s, n + L.CHARGES_S, n + L.PORT_S);
+  addGraded(c, device, vd, c[device + L.STEP_D], s, n + L.CHARGES_D, n + L.PORT_D);
+  s[n + L.PORT_S] += S0;
+  s[n + L.PORT_D] += D0;
 }
 
 function currents(c: Float64Array, t: Float64Array, device: number, s: Float64Array, n: number): void {
   const vs = s[n + L.OVERDRIVE_S];
   const vd = s[n + L.OVERDRIVE_D];
   const lambda = c[device + L.LAMBDA];
-  evaluate(c, t, device, vs, s, n + L.TERM_S);
-  evaluate(c, t, device, vd, s, n + L.TERM_D);
+  evaluate(c, t, device, s, n + L.OVERDRIVE_S, n + L.TERM_S);
+  evaluate(c, t, device, s, n + L.OVERDRIVE_D, n + L.TERM_D);
   s[n + L.CHANNEL_A] = s[n + L.TERM_S] * (1 + lambda * Math.max(-vd, 0)) - s[n + L.TERM_D] * (1 + lambda * Math.max(-vs, 0));
-  s[n + L.JUNCTION_S] = junctionCurrent(c, device, vs) + clampCurrent(c, device, vs);
-  s[n + L.JUNCTION_D] = junctionCurrent(c, device, vd);
+  gatePorts(c, device, s, n, vs, vd);
+  s[n + L.JUNCTION_S] = s[n + L.PORT_S];
+  s[n + L.JUNCTION_D] = s[n + L.PORT_D];
 }
 
 function residual(
@@ -137,21 +54,17 @@ function residual(
   c: Float64Array,
   t: Float64Array,
   device: number,
+  s: Float64Array,
+  n: number,
   vs: number,
   vd: number,
 ): number {
-  const channel = channelA(c, t, device, vs, vd);
-  return (
-    own -
-    free -
-    perA * channel -
-    perS * (junctionCurrent(c, device, vs) + clampCurrent(c, device, vs)) -
-    perD * junctionCurrent(c, device, vd)
-  );
+  gatePorts(c, device, s, n, vs, vd);
+  return own - free - perA * channelA(c, t, device, vs, vd) - perS * s[n + L.PORT_S] - perD * s[n + L.PORT_D];
 }
 
-/** Nested bisection between brackets that are widened until they hold the solution. */
-function bisect(
+/** Solves the ports by search and writes what a kernel's own solver would: the fall-back behind it. */
+export function searchPorts(
   c: Float64Array,
   t: Float64Array,
   device: number,
@@ -165,17 +78,19 @@ function bisect(
 ): void {
   let low = -1;
   let high = 1;
-  while (outerResidual(c, t, device, aI, bI, junction, a, b, low) > 0 && low > -1e12) low *= 2;
-  while (outerResidual(c, t, device, aI, bI, junction, a, b, high) < 0 && high < 1e12) high *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, s, n, a, b, low) > 0 && low > -1e12) low *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, s, n, a, b, high) < 0 && high < 1e12) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
-    if (outerResidual(c, t, device, aI, bI, junction, a, b, middle) > 0) high = middle;
+    if (outerResidual(c, t, device, aI, bI, junction, s, n, a, b, middle) > 0) high = middle;
     else low = middle;
   }
   s[n + L.OVERDRIVE_S] = (low + high) / 2;
-  s[n + L.OVERDRIVE_D] = innerOverdrive(c, t, device, bI, junction, b, (low + high) / 2);
+  s[n + L.OVERDRIVE_D] = innerOverdrive(c, t, device, bI, junction, s, n, b, (low + high) / 2);
   s[n + L.FALLBACKS] += 1;
+  currents(c, t, device, s, n);
+  if (c[device + L.GRADING] !== 0) keepCharges(c, device, s, n);
 }
 
 /** The source end's equation, with the drain end solved for it: rises with `vs`. */
@@ -186,26 +101,38 @@ function outerResidual(
   aI: number,
   bI: number,
   junction: number,
+  s: Float64Array,
+  n: number,
   a: number,
   b: number,
   vs: number,
 ): number {
-  const vd = innerOverdrive(c, t, device, bI, junction, b, vs);
-  return residual(vs, a, c[aI], c[junction + L.BY_S], c[junction + L.BY_D], c, t, device, vs, vd);
+  const vd = innerOverdrive(c, t, device, bI, junction, s, n, b, vs);
+  return residual(vs, a, c[aI], c[junction + L.BY_S], c[junction + L.BY_D], c, t, device, s, n, vs, vd);
 }
 
 /** The drain end's overdrive that satisfies its own equation for a given source end. */
-function innerOverdrive(c: Float64Array, t: Float64Array, device: number, bI: number, junction: number, b: number, vs: number): number {
+function innerOverdrive(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  bI: number,
+  junction: number,
+  s: Float64Array,
+  n: number,
+  b: number,
+  vs: number,
+): number {
   const bS = c[junction + L.JUNCTION_WIDTH + L.BY_S];
   const bD = c[junction + L.JUNCTION_WIDTH + L.BY_D];
   let low = -1;
   let high = 1;
-  while (residual(low, b, c[bI], bS, bD, c, t, device, vs, low) > 0 && low > -1e12) low *= 2;
-  while (residual(high, b, c[bI], bS, bD, c, t, device, vs, high) < 0 && high < 1e12) high *= 2;
+  while (residual(low, b, c[bI], bS, bD, c, t, device, s, n, vs, low) > 0 && low > -1e12) low *= 2;
+  while (residual(high, b, c[bI], bS, bD, c, t, device, s, n, vs, high) < 0 && high < 1e12) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
-    if (residual(middle, b, c[bI], bS, bD, c, t, device, vs, middle) > 0) high = middle;
+    if (residual(middle, b, c[bI], bS, bD, c, t, device, s, n, vs, middle) > 0) high = middle;
     else low = middle;
   }
   return (low + high) / 2;

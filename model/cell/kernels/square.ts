@@ -2,17 +2,65 @@
  * Kernels of the square law by number of trapezoidal and of stiff states: written from source.ts by `npm run kernels`, where the method is
  * explained. Not to be edited.
  *
- * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty) and `s` state as in
- * layout.ts, `audio` and `control` in V, `output` in V.
+ * Each advances a cell over the samples `from` to `to`: `c` coefficients, `t` the law's table, `w` noise (or empty), `e` kinks (or empty) and
+ * `s` state as in layout.ts, `audio` and `control` in V, `output` in V.
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
-import { bent, evaluate } from './channel.ts';
-import type { Kernel } from './kernel.ts';
-import { conduct } from './ports.ts';
+import { bent, evaluate, searched } from './channel.ts';
+import type { Conductor, Kernel } from './kernel.ts';
+import { addGraded, keepCharges } from './graded.ts';
+import { markKink } from './kinks.ts';
+import { searchPorts } from './ports.ts';
+import { exp } from '../../device/math.ts';
 
-function square0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {
+  const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
+  const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
+  const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
+  const rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;
+  const enough = 0.1 * c[device + 18] + 1e-15 * (Math.abs(a) + Math.abs(b));
+  const lambda = c[device + 5];
+  const scale = c[device + 6];
+  let vs = Math.min(a + perAs * freeA, s[n + 5] > onS ? s[n + 5] : kneeS);
+  let vd = Math.min(b + perAd * freeA, s[n + 6] > onD ? s[n + 6] : kneeD);
+  for (let step = 0; step < 40; step++) {
+    let Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;
+    if (vs > 0) { Fs = scale * vs * vs; fs = 2 * scale * vs; }
+    if (vd > 0) { Fd = scale * vd * vd; fd = 2 * scale * vd; }
+    if (lambda != 0) {
+      const past = lambda * Math.max(-vd, 0), reversed = lambda * Math.max(-vs, 0), term = Fs;
+      fs = fs * (1 + past) + (reversed > 0 ? lambda * Fd : 0);
+      fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);
+      Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);
+    }
+    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }
+    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }
+    if (vs > clampOn) { const Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }
+    if (grading != 0) {
+      addGraded(c, device, vs, c[device + 21], s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
+      addGraded(c, device, vd, c[device + 22], s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+    }
+    const channel = Fs - Fd;
+    const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
+    const ss = 1 - perAs * fs - aS * slopeS, sd = perAs * fd - aD * slopeD, ds = -perAd * fs - bS * slopeS, dd = 1 + perAd * fd - bD * slopeD;
+    const over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;
+    const stepS = wholeS * rateS <= 2 ? wholeS : vs < onS ? Math.min(wholeS, kneeS - vs) : (2 + wholeS * rateS / (1 + 0.1 * wholeS * rateS)) / rateS;
+    const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
+    vs += stepS; vd += stepD;
+    if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
+      s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 2] = channel + fs * stepS - fd * stepD;
+      s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
+      if (grading != 0) keepCharges(c, device, s, n);
+      return;
+    }
+  }
+  searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
+}
+
+function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -21,10 +69,7 @@ function square0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const b1 = c[5];
   const b2 = c[6];
   const b3 = c[7];
-  const y0 = c[8];
-  const y1 = c[9];
-  const y2 = c[10];
-  const y3 = c[11];
+  const sign = c[41], off = c[19];
   const on = c[20];
   const lambda = c[23];
   const scale = c[24];
@@ -34,16 +79,19 @@ function square0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let a = a0 * u + a1 * v + a2;
-    let b = b0 * u + b1 * v + b2;
+    const qs = vs, qd = vd;
+    let a = (a0 * u + a1 * v) + a2;
+    let b = (b0 * u + b1 * v) + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 18, vs, s, 9); evaluate(c, t, 18, vd, s, 11);
+      s[5] = vs; s[6] = vd;
+      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
       J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -59,26 +107,23 @@ function square0_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      conduct_square(c, t, 18, 3, 7, 12, s, 0, a, b, I);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
-    let y = 0;
-    if (noisy) {
-      y = w[i * 4 + 2];
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = sign * (a3 - b3);
+      markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    if (S != 0 || D != 0) {
-      y += c[16] * S + c[17] * D;
-    }
-    output[i] = y + y0 * u + y1 * v + y2 + y3 * I;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
-function square0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -94,364 +139,11 @@ function square0_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const n0_2 = c[12];
   const n0_3 = c[13];
   const n0_4 = c[14];
-  const y0 = c[15];
-  const y1 = c[16];
-  const y2 = c[17];
-  const y3 = c[18];
-  const y4 = c[19];
-  const m0_0 = c[28];
-  const m0_1 = c[29];
-  const m0_2 = c[30];
-  const on = c[36];
-  const lambda = c[39];
-  const scale = c[40];
-  const bent_ = c[43];
-  const fall = c[44];
-  const rise = c[45];
-  let x0 = s[0];
-  let e0 = s[1], f0 = s[2], g0 = s[3];
-  let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
-    let r0 = m0_0 * p0 + m0_1 * u0 + m0_2 * v0;
-    let a = a0 * r0 + a1 * u + a2 * v + a3;
-    let b = b0 * r0 + b1 * u + b2 * v + b3;
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      evaluate(c, t, 34, vs, s, 13); evaluate(c, t, 34, vd, s, 15);
-      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[14] + s[16]));
-      a += w[i * 5 + 0] + a4 * J;
-      b += w[i * 5 + 1] + b4 * J;
-    }
-    if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
-      if (!(a + a4 * I >= 0 && b + b4 * I >= 0)) {
-        if (a > b) {
-          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
-        } else {
-          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
-        }
-        if (lambda != 0) { bent(c, t, 34, 4, 9, a, b, I, s, 13); I = s[13]; }
-      }
-    }
-    vs = a + a4 * I;
-    vd = b + b4 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 4, a, b, I);
-      I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
-    }
-    I += J;
-    g0 = f0; f0 = e0; e0 = x0;
-    x0 = n0_0 * r0 + n0_1 * u + n0_2 * v + n0_3 + n0_4 * I;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 5 + 2];
-      y = w[i * 5 + 3];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[24] * S + c[25] * D;
-      y += c[26] * S + c[27] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * u + y2 * v + y3 + y4 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = e0; s[2] = f0; s[3] = g0;
-  s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
-  if (to > from) { s[9] = vs; s[10] = vd; }
-}
-
-function square0_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const b0 = c[6];
-  const b1 = c[7];
-  const b2 = c[8];
-  const b3 = c[9];
-  const b4 = c[10];
-  const b5 = c[11];
-  const n0_0 = c[12];
-  const n0_1 = c[13];
-  const n0_2 = c[14];
-  const n0_3 = c[15];
-  const n0_4 = c[16];
-  const n0_5 = c[17];
-  const n1_0 = c[18];
-  const n1_1 = c[19];
-  const n1_2 = c[20];
-  const n1_3 = c[21];
-  const n1_4 = c[22];
-  const n1_5 = c[23];
-  const y0 = c[24];
-  const y1 = c[25];
-  const y2 = c[26];
-  const y3 = c[27];
-  const y4 = c[28];
-  const y5 = c[29];
-  const m0_0 = c[40];
-  const m0_1 = c[41];
-  const m0_2 = c[42];
-  const m0_3 = c[43];
-  const m1_0 = c[45];
-  const m1_1 = c[46];
-  const m1_2 = c[47];
-  const m1_3 = c[48];
-  const on = c[56];
-  const lambda = c[59];
-  const scale = c[60];
-  const bent_ = c[63];
-  const fall = c[64];
-  const rise = c[65];
-  let x0 = s[0];
-  let x1 = s[1];
-  let e0 = s[2], f0 = s[4], g0 = s[6];
-  let e1 = s[3], f1 = s[5], g1 = s[7];
-  let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
-    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
-    let r0 = m0_0 * p0 + m0_1 * p1 + m0_2 * u0 + m0_3 * v0;
-    let r1 = m1_0 * p0 + m1_1 * p1 + m1_2 * u0 + m1_3 * v0;
-    let a = a0 * r0 + a1 * r1 + a2 * u + a3 * v + a4;
-    let b = b0 * r0 + b1 * r1 + b2 * u + b3 * v + b4;
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      evaluate(c, t, 54, vs, s, 17); evaluate(c, t, 54, vd, s, 19);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
-      a += w[i * 6 + 0] + a5 * J;
-      b += w[i * 6 + 1] + b5 * J;
-    }
-    if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
-      if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
-        if (a > b) {
-          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
-        } else {
-          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
-        }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 17); I = s[17]; }
-      }
-    }
-    vs = a + a5 * I;
-    vd = b + b5 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 8, a, b, I);
-      I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
-    }
-    I += J;
-    g0 = f0; f0 = e0; e0 = x0;
-    g1 = f1; f1 = e1; e1 = x1;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * u + n0_3 * v + n0_4 + n0_5 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * u + n1_3 * v + n1_4 + n1_5 * I;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 6 + 2];
-      x1 += w[i * 6 + 3];
-      y = w[i * 6 + 4];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[34] * S + c[35] * D;
-      x1 += c[36] * S + c[37] * D;
-      y += c[38] * S + c[39] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y4 + y5 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = e0; s[4] = f0; s[6] = g0;
-  s[3] = e1; s[5] = f1; s[7] = g1;
-  s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
-  if (to > from) { s[13] = vs; s[14] = vd; }
-}
-
-function square0_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const b0 = c[7];
-  const b1 = c[8];
-  const b2 = c[9];
-  const b3 = c[10];
-  const b4 = c[11];
-  const b5 = c[12];
-  const b6 = c[13];
-  const n0_0 = c[14];
-  const n0_1 = c[15];
-  const n0_2 = c[16];
-  const n0_3 = c[17];
-  const n0_4 = c[18];
-  const n0_5 = c[19];
-  const n0_6 = c[20];
-  const n1_0 = c[21];
-  const n1_1 = c[22];
-  const n1_2 = c[23];
-  const n1_3 = c[24];
-  const n1_4 = c[25];
-  const n1_5 = c[26];
-  const n1_6 = c[27];
-  const n2_0 = c[28];
-  const n2_1 = c[29];
-  const n2_2 = c[30];
-  const n2_3 = c[31];
-  const n2_4 = c[32];
-  const n2_5 = c[33];
-  const n2_6 = c[34];
-  const y0 = c[35];
-  const y1 = c[36];
-  const y2 = c[37];
-  const y3 = c[38];
-  const y4 = c[39];
-  const y5 = c[40];
-  const y6 = c[41];
-  const m0_0 = c[54];
-  const m0_1 = c[55];
-  const m0_2 = c[56];
-  const m0_3 = c[57];
-  const m0_4 = c[58];
-  const m1_0 = c[60];
-  const m1_1 = c[61];
-  const m1_2 = c[62];
-  const m1_3 = c[63];
-  const m1_4 = c[64];
-  const m2_0 = c[66];
-  const m2_1 = c[67];
-  const m2_2 = c[68];
-  const m2_3 = c[69];
-  const m2_4 = c[70];
-  const on = c[80];
-  const lambda = c[83];
-  const scale = c[84];
-  const bent_ = c[87];
-  const fall = c[88];
-  const rise = c[89];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let e0 = s[3], f0 = s[6], g0 = s[9];
-  let e1 = s[4], f1 = s[7], g1 = s[10];
-  let e2 = s[5], f2 = s[8], g2 = s[11];
-  let u0 = s[12], v0 = s[13];
-  let I0 = s[14], S0 = s[15], D0 = s[16], E0 = s[19], vs = s[17], vd = s[18];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
-    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
-    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
-    let r0 = m0_0 * p0 + m0_1 * p1 + m0_2 * p2 + m0_3 * u0 + m0_4 * v0;
-    let r1 = m1_0 * p0 + m1_1 * p1 + m1_2 * p2 + m1_3 * u0 + m1_4 * v0;
-    let r2 = m2_0 * p0 + m2_1 * p1 + m2_2 * p2 + m2_3 * u0 + m2_4 * v0;
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      evaluate(c, t, 78, vs, s, 21); evaluate(c, t, 78, vd, s, 23);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[22] + s[24]));
-      a += w[i * 7 + 0] + a6 * J;
-      b += w[i * 7 + 1] + b6 * J;
-    }
-    if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
-      if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
-        if (a > b) {
-          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
-        } else {
-          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
-        }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 21); I = s[21]; }
-      }
-    }
-    vs = a + a6 * I;
-    vd = b + b6 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 12, a, b, I);
-      I = s[14]; S = s[15]; D = s[16]; vs = s[17]; vd = s[18];
-    }
-    I += J;
-    g0 = f0; f0 = e0; e0 = x0;
-    g1 = f1; f1 = e1; e1 = x1;
-    g2 = f2; f2 = e2; e2 = x2;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 7 + 2];
-      x1 += w[i * 7 + 3];
-      x2 += w[i * 7 + 4];
-      y = w[i * 7 + 5];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[46] * S + c[47] * D;
-      x1 += c[48] * S + c[49] * D;
-      x2 += c[50] * S + c[51] * D;
-      y += c[52] * S + c[53] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = e0; s[6] = f0; s[9] = g0;
-  s[4] = e1; s[7] = f1; s[10] = g1;
-  s[5] = e2; s[8] = f2; s[11] = g2;
-  s[12] = u0; s[13] = v0;
-  s[14] = I0; s[15] = S0; s[16] = D0; s[19] = E0;
-  if (to > from) { s[17] = vs; s[18] = vd; }
-}
-
-function square1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const b0 = c[5];
-  const b1 = c[6];
-  const b2 = c[7];
-  const b3 = c[8];
-  const b4 = c[9];
-  const n0_0 = c[10];
-  const n0_1 = c[11];
-  const n0_2 = c[12];
-  const n0_3 = c[13];
-  const n0_4 = c[14];
-  const y0 = c[15];
-  const y1 = c[16];
-  const y2 = c[17];
-  const y3 = c[18];
-  const y4 = c[19];
   const m0_0 = c[28];
   const m0_1 = c[29];
   const m0_2 = c[30];
   const m0_3 = c[31];
+  const sign = c[57], off = c[35];
   const on = c[36];
   const lambda = c[39];
   const scale = c[40];
@@ -463,20 +155,23 @@ function square1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let r0 = m0_0 * x0 + m0_1 * u0 + m0_2 * v0 + m0_3 * I0;
+    const qs = vs, qd = vd;
+    let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[32] * S0 + c[33] * D0;
     }
-    let a = a0 * r0 + a1 * u + a2 * v + a3;
-    let b = b0 * r0 + b1 * u + b2 * v + b3;
+    let a = (a0 * r0 + a1 * u) + (a2 * v + a3);
+    let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 34, vs, s, 10); evaluate(c, t, 34, vd, s, 12);
+      s[6] = vs; s[7] = vd;
+      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
       J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -492,21 +187,22 @@ function square1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      conduct_square(c, t, 34, 4, 9, 20, s, 1, a, b, I);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
-    x0 = n0_0 * r0 + n0_1 * u + n0_2 * v + n0_3 + n0_4 * I;
-    let y = 0;
+    x0 = (n0_0 * r0 + n0_1 * u) + (n0_2 * v + n0_3) + n0_4 * I;
     if (noisy) {
       x0 += w[i * 5 + 2];
-      y = w[i * 5 + 3];
     }
     if (S != 0 || D != 0) {
       x0 += c[24] * S + c[25] * D;
-      y += c[26] * S + c[27] * D;
     }
-    output[i] = y + y0 * x0 + y1 * u + y2 * v + y3 + y4 * I;
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = sign * (a4 - b4);
+      markKink(c, t, 34, 4, 9, e, i, s, 1);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -516,8 +212,8 @@ function square1_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
-function square1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -542,12 +238,6 @@ function square1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const n1_3 = c[21];
   const n1_4 = c[22];
   const n1_5 = c[23];
-  const y0 = c[24];
-  const y1 = c[25];
-  const y2 = c[26];
-  const y3 = c[27];
-  const y4 = c[28];
-  const y5 = c[29];
   const m0_0 = c[40];
   const m0_1 = c[41];
   const m0_2 = c[42];
@@ -557,6 +247,8 @@ function square1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m1_1 = c[46];
   const m1_2 = c[47];
   const m1_3 = c[48];
+  const m1_4 = c[49];
+  const sign = c[77], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
@@ -565,27 +257,29 @@ function square1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const rise = c[65];
   let x0 = s[0];
   let x1 = s[1];
-  let e1 = s[2], f1 = s[3], g1 = s[4];
-  let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let u0 = s[2], v0 = s[3];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * u0 + m0_3 * v0 + m0_4 * I0;
-    let r1 = m1_0 * x0 + m1_1 * p1 + m1_2 * u0 + m1_3 * v0;
+    const qs = vs, qd = vd;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * u0) + (m1_3 * v0 + m1_4 * I0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[50] * S0 + c[51] * D0;
+      r1 += c[52] * S0 + c[53] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * u + a3 * v + a4;
-    let b = b0 * r0 + b1 * r1 + b2 * u + b3 * v + b4;
+    let a = ((a0 * r0 + a1 * r1) + a2 * u) + (a3 * v + a4);
+    let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 14); evaluate(c, t, 54, vd, s, 16);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[15] + s[17]));
+      s[7] = vs; s[8] = vd;
+      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -595,44 +289,43 @@ function square1_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 14); I = s[14]; }
+        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 11); I = s[11]; }
       }
     }
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 5, a, b, I);
-      I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
+      conduct_square(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
-    g1 = f1; f1 = e1; e1 = x1;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * u + n0_3 * v + n0_4 + n0_5 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * u + n1_3 * v + n1_4 + n1_5 * I;
-    let y = 0;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * u) + (n0_3 * v + n0_4) + n0_5 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * u) + (n1_3 * v + n1_4) + n1_5 * I;
     if (noisy) {
       x0 += w[i * 6 + 2];
       x1 += w[i * 6 + 3];
-      y = w[i * 6 + 4];
     }
     if (S != 0 || D != 0) {
       x0 += c[34] * S + c[35] * D;
       x1 += c[36] * S + c[37] * D;
-      y += c[38] * S + c[39] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y4 + y5 * I;
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 2);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
-  s[2] = e1; s[3] = f1; s[4] = g1;
-  s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
-  if (to > from) { s[10] = vs; s[11] = vd; }
+  s[2] = u0; s[3] = v0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function square1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -668,13 +361,6 @@ function square1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const n2_4 = c[32];
   const n2_5 = c[33];
   const n2_6 = c[34];
-  const y0 = c[35];
-  const y1 = c[36];
-  const y2 = c[37];
-  const y3 = c[38];
-  const y4 = c[39];
-  const y5 = c[40];
-  const y6 = c[41];
   const m0_0 = c[54];
   const m0_1 = c[55];
   const m0_2 = c[56];
@@ -686,11 +372,14 @@ function square1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m1_2 = c[62];
   const m1_3 = c[63];
   const m1_4 = c[64];
+  const m1_5 = c[65];
   const m2_0 = c[66];
   const m2_1 = c[67];
   const m2_2 = c[68];
   const m2_3 = c[69];
   const m2_4 = c[70];
+  const m2_5 = c[71];
+  const sign = c[101], off = c[79];
   const on = c[80];
   const lambda = c[83];
   const scale = c[84];
@@ -700,30 +389,31 @@ function square1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
-  let e1 = s[3], f1 = s[5], g1 = s[7];
-  let e2 = s[4], f2 = s[6], g2 = s[8];
-  let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let u0 = s[3], v0 = s[4];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
-    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * u0 + m0_4 * v0 + m0_5 * I0;
-    let r1 = m1_0 * x0 + m1_1 * p1 + m1_2 * p2 + m1_3 * u0 + m1_4 * v0;
-    let r2 = m2_0 * x0 + m2_1 * p1 + m2_2 * p2 + m2_3 * u0 + m2_4 * v0;
+    const qs = vs, qd = vd;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * x2) + ((m1_3 * u0 + m1_4 * v0) + m1_5 * I0);
+    let r2 = ((m2_0 * x0 + m2_1 * x1) + m2_2 * x2) + ((m2_3 * u0 + m2_4 * v0) + m2_5 * I0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[72] * S0 + c[73] * D0;
+      r1 += c[74] * S0 + c[75] * D0;
+      r2 += c[76] * S0 + c[77] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
+    let a = ((a0 * r0 + a1 * r1) + a2 * r2) + ((a3 * u + a4 * v) + a5);
+    let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 18); evaluate(c, t, 78, vd, s, 20);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      s[8] = vs; s[9] = vd;
+      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -733,50 +423,47 @@ function square1_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 18); I = s[18]; }
+        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 12); I = s[12]; }
       }
     }
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 9, a, b, I);
-      I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
+      conduct_square(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
-    g1 = f1; f1 = e1; e1 = x1;
-    g2 = f2; f2 = e2; e2 = x2;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
-    let y = 0;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * r2) + ((n0_3 * u + n0_4 * v) + n0_5) + n0_6 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * r2) + ((n1_3 * u + n1_4 * v) + n1_5) + n1_6 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + n2_2 * r2) + ((n2_3 * u + n2_4 * v) + n2_5) + n2_6 * I;
     if (noisy) {
       x0 += w[i * 7 + 2];
       x1 += w[i * 7 + 3];
       x2 += w[i * 7 + 4];
-      y = w[i * 7 + 5];
     }
     if (S != 0 || D != 0) {
       x0 += c[46] * S + c[47] * D;
       x1 += c[48] * S + c[49] * D;
       x2 += c[50] * S + c[51] * D;
-      y += c[52] * S + c[53] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = sign * (a6 - b6);
+      markKink(c, t, 78, 6, 13, e, i, s, 3);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
-  s[3] = e1; s[5] = f1; s[7] = g1;
-  s[4] = e2; s[6] = f2; s[8] = g2;
-  s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
-  if (to > from) { s[14] = vs; s[15] = vd; }
+  s[3] = u0; s[4] = v0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -825,14 +512,6 @@ function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const n3_5 = c[45];
   const n3_6 = c[46];
   const n3_7 = c[47];
-  const y0 = c[48];
-  const y1 = c[49];
-  const y2 = c[50];
-  const y3 = c[51];
-  const y4 = c[52];
-  const y5 = c[53];
-  const y6 = c[54];
-  const y7 = c[55];
   const m0_0 = c[70];
   const m0_1 = c[71];
   const m0_2 = c[72];
@@ -846,6 +525,562 @@ function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m1_3 = c[80];
   const m1_4 = c[81];
   const m1_5 = c[82];
+  const m1_6 = c[83];
+  const m2_0 = c[84];
+  const m2_1 = c[85];
+  const m2_2 = c[86];
+  const m2_3 = c[87];
+  const m2_4 = c[88];
+  const m2_5 = c[89];
+  const m2_6 = c[90];
+  const m3_0 = c[91];
+  const m3_1 = c[92];
+  const m3_2 = c[93];
+  const m3_3 = c[94];
+  const m3_4 = c[95];
+  const m3_5 = c[96];
+  const m3_6 = c[97];
+  const sign = c[129], off = c[107];
+  const on = c[108];
+  const lambda = c[111];
+  const scale = c[112];
+  const bent_ = c[115];
+  const fall = c[116];
+  const rise = c[117];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let x3 = s[3];
+  let u0 = s[4], v0 = s[5];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + (m1_2 * x2 + m1_3 * x3)) + ((m1_4 * u0 + m1_5 * v0) + m1_6 * I0);
+    let r2 = ((m2_0 * x0 + m2_1 * x1) + (m2_2 * x2 + m2_3 * x3)) + ((m2_4 * u0 + m2_5 * v0) + m2_6 * I0);
+    let r3 = ((m3_0 * x0 + m3_1 * x1) + (m3_2 * x2 + m3_3 * x3)) + ((m3_4 * u0 + m3_5 * v0) + m3_6 * I0);
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[98] * S0 + c[99] * D0;
+      r1 += c[100] * S0 + c[101] * D0;
+      r2 += c[102] * S0 + c[103] * D0;
+      r3 += c[104] * S0 + c[105] * D0;
+    }
+    let a = ((a0 * r0 + a1 * r1) + (a2 * r2 + a3 * r3)) + ((a4 * u + a5 * v) + a6);
+    let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[9] = vs; s[10] = vd;
+      evaluate(c, t, 106, s, 9, 13); evaluate(c, t, 106, s, 10, 15);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[14] + s[16]));
+      a += w[i * 8 + 0] + a7 * J;
+      b += w[i * 8 + 1] + b7 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a7 * I >= 0 && b + b7 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 13); I = s[13]; }
+      }
+    }
+    vs = a + a7 * I;
+    vd = b + b7 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 106, 7, 15, 56, s, 4, a, b, I);
+      I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
+    }
+    I += J;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + (n0_2 * r2 + n0_3 * r3)) + ((n0_4 * u + n0_5 * v) + n0_6) + n0_7 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + (n1_2 * r2 + n1_3 * r3)) + ((n1_4 * u + n1_5 * v) + n1_6) + n1_7 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + (n2_2 * r2 + n2_3 * r3)) + ((n2_4 * u + n2_5 * v) + n2_6) + n2_7 * I;
+    x3 = ((n3_0 * r0 + n3_1 * r1) + (n3_2 * r2 + n3_3 * r3)) + ((n3_4 * u + n3_5 * v) + n3_6) + n3_7 * I;
+    if (noisy) {
+      x0 += w[i * 8 + 2];
+      x1 += w[i * 8 + 3];
+      x2 += w[i * 8 + 4];
+      x3 += w[i * 8 + 5];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[60] * S + c[61] * D;
+      x1 += c[62] * S + c[63] * D;
+      x2 += c[64] * S + c[65] * D;
+      x3 += c[66] * S + c[67] * D;
+    }
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a7 - b7);
+      markKink(c, t, 106, 7, 15, e, i, s, 4);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = x3;
+  s[4] = u0; s[5] = v0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  if (to > from) { s[9] = vs; s[10] = vd; }
+}
+
+function square0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const b0 = c[5];
+  const b1 = c[6];
+  const b2 = c[7];
+  const b3 = c[8];
+  const b4 = c[9];
+  const m0_0 = c[28];
+  const m0_1 = c[29];
+  const m0_2 = c[30];
+  const sign = c[57], off = c[35];
+  const on = c[36];
+  const lambda = c[39];
+  const scale = c[40];
+  const bent_ = c[43];
+  const fall = c[44];
+  const rise = c[45];
+  let x0 = s[0];
+  let e0 = s[1], f0 = s[2], g0 = s[3];
+  let u0 = s[4], v0 = s[5];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
+    let r0 = (m0_0 * p0 + m0_1 * u0) + m0_2 * v0;
+    let a = (a0 * r0 + a1 * u) + (a2 * v + a3);
+    let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[9] = vs; s[10] = vd;
+      evaluate(c, t, 34, s, 9, 13); evaluate(c, t, 34, s, 10, 15);
+      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[14] + s[16]));
+      a += w[i * 5 + 0] + a4 * J;
+      b += w[i * 5 + 1] + b4 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a4 * I >= 0 && b + b4 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 34, 4, 9, a, b, I, s, 13); I = s[13]; }
+      }
+    }
+    vs = a + a4 * I;
+    vd = b + b4 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 34, 4, 9, 20, s, 4, a, b, I);
+      I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
+    }
+    I += J;
+    g0 = f0; f0 = e0; e0 = x0;
+    x0 = sign * (vs - vd);
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a4 - b4);
+      markKink(c, t, 34, 4, 9, e, i, s, 4);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = e0; s[2] = f0; s[3] = g0;
+  s[4] = u0; s[5] = v0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  if (to > from) { s[9] = vs; s[10] = vd; }
+}
+
+function square1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const b0 = c[6];
+  const b1 = c[7];
+  const b2 = c[8];
+  const b3 = c[9];
+  const b4 = c[10];
+  const b5 = c[11];
+  const n0_0 = c[12];
+  const n0_1 = c[13];
+  const n0_2 = c[14];
+  const n0_3 = c[15];
+  const n0_4 = c[16];
+  const n0_5 = c[17];
+  const m0_0 = c[40];
+  const m0_1 = c[41];
+  const m0_2 = c[42];
+  const m0_3 = c[43];
+  const m0_4 = c[44];
+  const m1_0 = c[45];
+  const m1_1 = c[46];
+  const m1_2 = c[47];
+  const m1_3 = c[48];
+  const sign = c[77], off = c[55];
+  const on = c[56];
+  const lambda = c[59];
+  const scale = c[60];
+  const bent_ = c[63];
+  const fall = c[64];
+  const rise = c[65];
+  let x0 = s[0];
+  let x1 = s[1];
+  let e1 = s[2], f1 = s[3], g1 = s[4];
+  let u0 = s[5], v0 = s[6];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
+    let r1 = (m1_0 * x0 + m1_1 * p1) + (m1_2 * u0 + m1_3 * v0);
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[50] * S0 + c[51] * D0;
+    }
+    let a = ((a0 * r0 + a1 * r1) + a2 * u) + (a3 * v + a4);
+    let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[10] = vs; s[11] = vd;
+      evaluate(c, t, 54, s, 10, 14); evaluate(c, t, 54, s, 11, 16);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[15] + s[17]));
+      a += w[i * 6 + 0] + a5 * J;
+      b += w[i * 6 + 1] + b5 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 14); I = s[14]; }
+      }
+    }
+    vs = a + a5 * I;
+    vd = b + b5 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 54, 5, 11, 30, s, 5, a, b, I);
+      I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
+    }
+    I += J;
+    g1 = f1; f1 = e1; e1 = x1;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * u) + (n0_3 * v + n0_4) + n0_5 * I;
+    x1 = sign * (vs - vd);
+    if (noisy) {
+      x0 += w[i * 6 + 2];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[34] * S + c[35] * D;
+    }
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[34] = qs; s[35] = qd; s[10] = vs; s[11] = vd; s[36] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 5);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = e1; s[3] = f1; s[4] = g1;
+  s[5] = u0; s[6] = v0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  if (to > from) { s[10] = vs; s[11] = vd; }
+}
+
+function square0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const b0 = c[6];
+  const b1 = c[7];
+  const b2 = c[8];
+  const b3 = c[9];
+  const b4 = c[10];
+  const b5 = c[11];
+  const m0_0 = c[40];
+  const m0_1 = c[41];
+  const m0_2 = c[42];
+  const m0_3 = c[43];
+  const m1_0 = c[45];
+  const m1_1 = c[46];
+  const m1_2 = c[47];
+  const m1_3 = c[48];
+  const sign = c[77], off = c[55];
+  const on = c[56];
+  const lambda = c[59];
+  const scale = c[60];
+  const bent_ = c[63];
+  const fall = c[64];
+  const rise = c[65];
+  let x0 = s[0];
+  let x1 = s[1];
+  let e0 = s[2], f0 = s[4], g0 = s[6];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let u0 = s[8], v0 = s[9];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    let r0 = (m0_0 * p0 + m0_1 * p1) + (m0_2 * u0 + m0_3 * v0);
+    let r1 = (m1_0 * p0 + m1_1 * p1) + (m1_2 * u0 + m1_3 * v0);
+    let a = ((a0 * r0 + a1 * r1) + a2 * u) + (a3 * v + a4);
+    let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
+      a += w[i * 6 + 0] + a5 * J;
+      b += w[i * 6 + 1] + b5 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 17); I = s[17]; }
+      }
+    }
+    vs = a + a5 * I;
+    vd = b + b5 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
+    }
+    I += J;
+    g0 = f0; f0 = e0; e0 = x0;
+    g1 = f1; f1 = e1; e1 = x1;
+    x0 = sign * (vs - vd);
+    x1 = sign * (vs + off);
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 8);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = e0; s[4] = f0; s[6] = g0;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[8] = u0; s[9] = v0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  if (to > from) { s[13] = vs; s[14] = vd; }
+}
+
+function square1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const b0 = c[7];
+  const b1 = c[8];
+  const b2 = c[9];
+  const b3 = c[10];
+  const b4 = c[11];
+  const b5 = c[12];
+  const b6 = c[13];
+  const n0_0 = c[14];
+  const n0_1 = c[15];
+  const n0_2 = c[16];
+  const n0_3 = c[17];
+  const n0_4 = c[18];
+  const n0_5 = c[19];
+  const n0_6 = c[20];
+  const m0_0 = c[54];
+  const m0_1 = c[55];
+  const m0_2 = c[56];
+  const m0_3 = c[57];
+  const m0_4 = c[58];
+  const m0_5 = c[59];
+  const m1_0 = c[60];
+  const m1_1 = c[61];
+  const m1_2 = c[62];
+  const m1_3 = c[63];
+  const m1_4 = c[64];
+  const m2_0 = c[66];
+  const m2_1 = c[67];
+  const m2_2 = c[68];
+  const m2_3 = c[69];
+  const m2_4 = c[70];
+  const sign = c[101], off = c[79];
+  const on = c[80];
+  const lambda = c[83];
+  const scale = c[84];
+  const bent_ = c[87];
+  const fall = c[88];
+  const rise = c[89];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let e2 = s[4], f2 = s[6], g2 = s[8];
+  let u0 = s[9], v0 = s[10];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * p1) + m1_2 * p2) + (m1_3 * u0 + m1_4 * v0);
+    let r2 = ((m2_0 * x0 + m2_1 * p1) + m2_2 * p2) + (m2_3 * u0 + m2_4 * v0);
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[72] * S0 + c[73] * D0;
+    }
+    let a = ((a0 * r0 + a1 * r1) + a2 * r2) + ((a3 * u + a4 * v) + a5);
+    let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      a += w[i * 7 + 0] + a6 * J;
+      b += w[i * 7 + 1] + b6 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 18); I = s[18]; }
+      }
+    }
+    vs = a + a6 * I;
+    vd = b + b6 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
+    }
+    I += J;
+    g1 = f1; f1 = e1; e1 = x1;
+    g2 = f2; f2 = e2; e2 = x2;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * r2) + ((n0_3 * u + n0_4 * v) + n0_5) + n0_6 * I;
+    x1 = sign * (vs - vd);
+    x2 = sign * (vs + off);
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[46] * S + c[47] * D;
+    }
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      markKink(c, t, 78, 6, 13, e, i, s, 9);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[4] = e2; s[6] = f2; s[8] = g2;
+  s[9] = u0; s[10] = v0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  if (to > from) { s[14] = vs; s[15] = vd; }
+}
+
+function square2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const a7 = c[7];
+  const b0 = c[8];
+  const b1 = c[9];
+  const b2 = c[10];
+  const b3 = c[11];
+  const b4 = c[12];
+  const b5 = c[13];
+  const b6 = c[14];
+  const b7 = c[15];
+  const n0_0 = c[16];
+  const n0_1 = c[17];
+  const n0_2 = c[18];
+  const n0_3 = c[19];
+  const n0_4 = c[20];
+  const n0_5 = c[21];
+  const n0_6 = c[22];
+  const n0_7 = c[23];
+  const n1_0 = c[24];
+  const n1_1 = c[25];
+  const n1_2 = c[26];
+  const n1_3 = c[27];
+  const n1_4 = c[28];
+  const n1_5 = c[29];
+  const n1_6 = c[30];
+  const n1_7 = c[31];
+  const m0_0 = c[70];
+  const m0_1 = c[71];
+  const m0_2 = c[72];
+  const m0_3 = c[73];
+  const m0_4 = c[74];
+  const m0_5 = c[75];
+  const m0_6 = c[76];
+  const m1_0 = c[77];
+  const m1_1 = c[78];
+  const m1_2 = c[79];
+  const m1_3 = c[80];
+  const m1_4 = c[81];
+  const m1_5 = c[82];
+  const m1_6 = c[83];
   const m2_0 = c[84];
   const m2_1 = c[85];
   const m2_2 = c[86];
@@ -858,6 +1093,7 @@ function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m3_3 = c[94];
   const m3_4 = c[95];
   const m3_5 = c[96];
+  const sign = c[129], off = c[107];
   const on = c[108];
   const lambda = c[111];
   const scale = c[112];
@@ -868,33 +1104,35 @@ function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let x1 = s[1];
   let x2 = s[2];
   let x3 = s[3];
-  let e1 = s[4], f1 = s[7], g1 = s[10];
-  let e2 = s[5], f2 = s[8], g2 = s[11];
-  let e3 = s[6], f3 = s[9], g3 = s[12];
-  let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let e2 = s[4], f2 = s[6], g2 = s[8];
+  let e3 = s[5], f3 = s[7], g3 = s[9];
+  let u0 = s[10], v0 = s[11];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const qs = vs, qd = vd;
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
-    let r1 = m1_0 * x0 + m1_1 * p1 + m1_2 * p2 + m1_3 * p3 + m1_4 * u0 + m1_5 * v0;
-    let r2 = m2_0 * x0 + m2_1 * p1 + m2_2 * p2 + m2_3 * p3 + m2_4 * u0 + m2_5 * v0;
-    let r3 = m3_0 * x0 + m3_1 * p1 + m3_2 * p2 + m3_3 * p3 + m3_4 * u0 + m3_5 * v0;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + (m1_2 * x2 + m1_3 * x3)) + ((m1_4 * u0 + m1_5 * v0) + m1_6 * I0);
+    let r2 = ((m2_0 * x0 + m2_1 * x1) + m2_2 * p2) + ((m2_3 * p3 + m2_4 * u0) + m2_5 * v0);
+    let r3 = ((m3_0 * x0 + m3_1 * x1) + m3_2 * p2) + ((m3_3 * p3 + m3_4 * u0) + m3_5 * v0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[98] * S0 + c[99] * D0;
+      r1 += c[100] * S0 + c[101] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
+    let a = ((a0 * r0 + a1 * r1) + (a2 * r2 + a3 * r3)) + ((a4 * u + a5 * v) + a6);
+    let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 22); evaluate(c, t, 106, vd, s, 24);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[23] + s[25]));
+      s[15] = vs; s[16] = vd;
+      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -904,39 +1142,35 @@ function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 22); I = s[22]; }
+        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 19); I = s[19]; }
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 13, a, b, I);
-      I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
+      conduct_square(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
-    g1 = f1; f1 = e1; e1 = x1;
     g2 = f2; f2 = e2; e2 = x2;
     g3 = f3; f3 = e3; e3 = x3;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
-    let y = 0;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + (n0_2 * r2 + n0_3 * r3)) + ((n0_4 * u + n0_5 * v) + n0_6) + n0_7 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + (n1_2 * r2 + n1_3 * r3)) + ((n1_4 * u + n1_5 * v) + n1_6) + n1_7 * I;
+    x2 = sign * (vs - vd);
+    x3 = sign * (vs + off);
     if (noisy) {
       x0 += w[i * 8 + 2];
       x1 += w[i * 8 + 3];
-      x2 += w[i * 8 + 4];
-      x3 += w[i * 8 + 5];
-      y = w[i * 8 + 6];
     }
     if (S != 0 || D != 0) {
       x0 += c[60] * S + c[61] * D;
       x1 += c[62] * S + c[63] * D;
-      x2 += c[64] * S + c[65] * D;
-      x3 += c[66] * S + c[67] * D;
-      y += c[68] * S + c[69] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = sign * (a7 - b7);
+      markKink(c, t, 106, 7, 15, e, i, s, 10);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -944,16 +1178,405 @@ function square1_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
-  s[4] = e1; s[7] = f1; s[10] = g1;
-  s[5] = e2; s[8] = f2; s[11] = g2;
-  s[6] = e3; s[9] = f3; s[12] = g3;
-  s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
-  if (to > from) { s[18] = vs; s[19] = vd; }
+  s[4] = e2; s[6] = f2; s[8] = g2;
+  s[5] = e3; s[7] = f3; s[9] = g3;
+  s[10] = u0; s[11] = v0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
-function square2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const b0 = c[6];
+  const b1 = c[7];
+  const b2 = c[8];
+  const b3 = c[9];
+  const b4 = c[10];
+  const b5 = c[11];
+  const m0_0 = c[40];
+  const m0_1 = c[41];
+  const m0_2 = c[42];
+  const m0_3 = c[43];
+  const m1_0 = c[45];
+  const m1_1 = c[46];
+  const m1_2 = c[47];
+  const m1_3 = c[48];
+  const sign = c[77], off = c[55];
+  const on = c[56];
+  const lambda = c[59];
+  const scale = c[60];
+  const bent_ = c[63];
+  const fall = c[64];
+  const rise = c[65];
+  let x0 = s[0];
+  let x1 = s[1];
+  let e0 = s[2], f0 = s[4], g0 = s[6];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let u0 = s[8], v0 = s[9];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    let r0 = (m0_0 * p0 + m0_1 * p1) + (m0_2 * u0 + m0_3 * v0);
+    let r1 = (m1_0 * p0 + m1_1 * p1) + (m1_2 * u0 + m1_3 * v0);
+    let a = ((a0 * r0 + a1 * r1) + a2 * u) + (a3 * v + a4);
+    let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
+      a += w[i * 6 + 0] + a5 * J;
+      b += w[i * 6 + 1] + b5 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 17); I = s[17]; }
+      }
+    }
+    vs = a + a5 * I;
+    vd = b + b5 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
+    }
+    I += J;
+    g0 = f0; f0 = e0; e0 = x0;
+    g1 = f1; f1 = e1; e1 = x1;
+    x0 = sign * (vs + off);
+    x1 = sign * (vd + off);
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      markKink(c, t, 54, 5, 11, e, i, s, 8);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = e0; s[4] = f0; s[6] = g0;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[8] = u0; s[9] = v0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  if (to > from) { s[13] = vs; s[14] = vd; }
+}
+
+function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const b0 = c[7];
+  const b1 = c[8];
+  const b2 = c[9];
+  const b3 = c[10];
+  const b4 = c[11];
+  const b5 = c[12];
+  const b6 = c[13];
+  const n0_0 = c[14];
+  const n0_1 = c[15];
+  const n0_2 = c[16];
+  const n0_3 = c[17];
+  const n0_4 = c[18];
+  const n0_5 = c[19];
+  const n0_6 = c[20];
+  const m0_0 = c[54];
+  const m0_1 = c[55];
+  const m0_2 = c[56];
+  const m0_3 = c[57];
+  const m0_4 = c[58];
+  const m0_5 = c[59];
+  const m1_0 = c[60];
+  const m1_1 = c[61];
+  const m1_2 = c[62];
+  const m1_3 = c[63];
+  const m1_4 = c[64];
+  const m2_0 = c[66];
+  const m2_1 = c[67];
+  const m2_2 = c[68];
+  const m2_3 = c[69];
+  const m2_4 = c[70];
+  const sign = c[101], off = c[79];
+  const on = c[80];
+  const lambda = c[83];
+  const scale = c[84];
+  const bent_ = c[87];
+  const fall = c[88];
+  const rise = c[89];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let e2 = s[4], f2 = s[6], g2 = s[8];
+  let u0 = s[9], v0 = s[10];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * p1) + m1_2 * p2) + (m1_3 * u0 + m1_4 * v0);
+    let r2 = ((m2_0 * x0 + m2_1 * p1) + m2_2 * p2) + (m2_3 * u0 + m2_4 * v0);
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[72] * S0 + c[73] * D0;
+    }
+    let a = ((a0 * r0 + a1 * r1) + a2 * r2) + ((a3 * u + a4 * v) + a5);
+    let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      a += w[i * 7 + 0] + a6 * J;
+      b += w[i * 7 + 1] + b6 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 18); I = s[18]; }
+      }
+    }
+    vs = a + a6 * I;
+    vd = b + b6 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
+    }
+    I += J;
+    g1 = f1; f1 = e1; e1 = x1;
+    g2 = f2; f2 = e2; e2 = x2;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * r2) + ((n0_3 * u + n0_4 * v) + n0_5) + n0_6 * I;
+    x1 = sign * (vs + off);
+    x2 = sign * (vd + off);
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[46] * S + c[47] * D;
+    }
+    output[i] = sign * (vs - vd);
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      markKink(c, t, 78, 6, 13, e, i, s, 9);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[4] = e2; s[6] = f2; s[8] = g2;
+  s[9] = u0; s[10] = v0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  if (to > from) { s[14] = vs; s[15] = vd; }
+}
+
+function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const b0 = c[4];
+  const b1 = c[5];
+  const b2 = c[6];
+  const b3 = c[7];
+  const y0 = c[8];
+  const y1 = c[9];
+  const y2 = c[10];
+  const y3 = c[11];
+  const sign = c[41], off = c[19];
+  const on = c[20];
+  const lambda = c[23];
+  const scale = c[24];
+  const bent_ = c[27];
+  const fall = c[28];
+  const rise = c[29];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    let a = (a0 * u + a1 * v) + a2;
+    let b = (b0 * u + b1 * v) + b2;
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[5] = vs; s[6] = vd;
+      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
+      J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
+      a += w[i * 4 + 0] + a3 * J;
+      b += w[i * 4 + 1] + b3 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a3 * I >= 0 && b + b3 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 18, 3, 7, a, b, I, s, 9); I = s[9]; }
+      }
+    }
+    vs = a + a3 * I;
+    vd = b + b3 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
+    }
+    I += J;
+    let y = 0;
+    if (noisy) {
+      y = w[i * 4 + 2];
+    }
+    if (S != 0 || D != 0) {
+      y += c[16] * S + c[17] * D;
+    }
+    output[i] = y + (y0 * u + y1 * v) + y2 + y3 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = y3;
+      markKink(c, t, 18, 3, 7, e, i, s, 0);
+    }
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  if (to > from) { s[5] = vs; s[6] = vd; }
+}
+
+function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const b0 = c[5];
+  const b1 = c[6];
+  const b2 = c[7];
+  const b3 = c[8];
+  const b4 = c[9];
+  const n0_0 = c[10];
+  const n0_1 = c[11];
+  const n0_2 = c[12];
+  const n0_3 = c[13];
+  const n0_4 = c[14];
+  const y0 = c[15];
+  const y1 = c[16];
+  const y2 = c[17];
+  const y3 = c[18];
+  const y4 = c[19];
+  const m0_0 = c[28];
+  const m0_1 = c[29];
+  const m0_2 = c[30];
+  const m0_3 = c[31];
+  const sign = c[57], off = c[35];
+  const on = c[36];
+  const lambda = c[39];
+  const scale = c[40];
+  const bent_ = c[43];
+  const fall = c[44];
+  const rise = c[45];
+  let x0 = s[0];
+  let u0 = s[1], v0 = s[2];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[32] * S0 + c[33] * D0;
+    }
+    let a = (a0 * r0 + a1 * u) + (a2 * v + a3);
+    let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[6] = vs; s[7] = vd;
+      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
+      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
+      a += w[i * 5 + 0] + a4 * J;
+      b += w[i * 5 + 1] + b4 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a4 * I >= 0 && b + b4 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 34, 4, 9, a, b, I, s, 10); I = s[10]; }
+      }
+    }
+    vs = a + a4 * I;
+    vd = b + b4 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
+    }
+    I += J;
+    x0 = (n0_0 * r0 + n0_1 * u) + (n0_2 * v + n0_3) + n0_4 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 5 + 2];
+      y = w[i * 5 + 3];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[24] * S + c[25] * D;
+      y += c[26] * S + c[27] * D;
+    }
+    output[i] = y + (y0 * x0 + y1 * u) + (y2 * v + y3) + y4 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = y4;
+      markKink(c, t, 34, 4, 9, e, i, s, 1);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = u0; s[2] = v0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  if (to > from) { s[6] = vs; s[7] = vd; }
+}
+
+function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -994,6 +1617,7 @@ function square2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m1_2 = c[47];
   const m1_3 = c[48];
   const m1_4 = c[49];
+  const sign = c[77], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
@@ -1006,22 +1630,25 @@ function square2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * u0 + m0_3 * v0 + m0_4 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * u0 + m1_3 * v0 + m1_4 * I0;
+    const qs = vs, qd = vd;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * u0) + (m1_3 * v0 + m1_4 * I0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[50] * S0 + c[51] * D0;
       r1 += c[52] * S0 + c[53] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * u + a3 * v + a4;
-    let b = b0 * r0 + b1 * r1 + b2 * u + b3 * v + b4;
+    let a = ((a0 * r0 + a1 * r1) + a2 * u) + (a3 * v + a4);
+    let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 54, vs, s, 11); evaluate(c, t, 54, vd, s, 13);
+      s[7] = vs; s[8] = vd;
+      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
       J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1037,12 +1664,12 @@ function square2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      conduct_square(c, t, 54, 5, 11, 30, s, 2, a, b, I);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * u + n0_3 * v + n0_4 + n0_5 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * u + n1_3 * v + n1_4 + n1_5 * I;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * u) + (n0_3 * v + n0_4) + n0_5 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * u) + (n1_3 * v + n1_4) + n1_5 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 6 + 2];
@@ -1054,7 +1681,11 @@ function square2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       x1 += c[36] * S + c[37] * D;
       y += c[38] * S + c[39] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * u + y3 * v + y4 + y5 * I;
+    output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = y5;
+      markKink(c, t, 54, 5, 11, e, i, s, 2);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1065,537 +1696,8 @@ function square2_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
-function square2_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const b0 = c[7];
-  const b1 = c[8];
-  const b2 = c[9];
-  const b3 = c[10];
-  const b4 = c[11];
-  const b5 = c[12];
-  const b6 = c[13];
-  const n0_0 = c[14];
-  const n0_1 = c[15];
-  const n0_2 = c[16];
-  const n0_3 = c[17];
-  const n0_4 = c[18];
-  const n0_5 = c[19];
-  const n0_6 = c[20];
-  const n1_0 = c[21];
-  const n1_1 = c[22];
-  const n1_2 = c[23];
-  const n1_3 = c[24];
-  const n1_4 = c[25];
-  const n1_5 = c[26];
-  const n1_6 = c[27];
-  const n2_0 = c[28];
-  const n2_1 = c[29];
-  const n2_2 = c[30];
-  const n2_3 = c[31];
-  const n2_4 = c[32];
-  const n2_5 = c[33];
-  const n2_6 = c[34];
-  const y0 = c[35];
-  const y1 = c[36];
-  const y2 = c[37];
-  const y3 = c[38];
-  const y4 = c[39];
-  const y5 = c[40];
-  const y6 = c[41];
-  const m0_0 = c[54];
-  const m0_1 = c[55];
-  const m0_2 = c[56];
-  const m0_3 = c[57];
-  const m0_4 = c[58];
-  const m0_5 = c[59];
-  const m1_0 = c[60];
-  const m1_1 = c[61];
-  const m1_2 = c[62];
-  const m1_3 = c[63];
-  const m1_4 = c[64];
-  const m1_5 = c[65];
-  const m2_0 = c[66];
-  const m2_1 = c[67];
-  const m2_2 = c[68];
-  const m2_3 = c[69];
-  const m2_4 = c[70];
-  const on = c[80];
-  const lambda = c[83];
-  const scale = c[84];
-  const bent_ = c[87];
-  const fall = c[88];
-  const rise = c[89];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let e2 = s[3], f2 = s[4], g2 = s[5];
-  let u0 = s[6], v0 = s[7];
-  let I0 = s[8], S0 = s[9], D0 = s[10], E0 = s[13], vs = s[11], vd = s[12];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * u0 + m0_4 * v0 + m0_5 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * u0 + m1_4 * v0 + m1_5 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * p2 + m2_3 * u0 + m2_4 * v0;
-    if (S0 != 0 || D0 != 0) {
-      r0 += c[72] * S0 + c[73] * D0;
-      r1 += c[74] * S0 + c[75] * D0;
-    }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      evaluate(c, t, 78, vs, s, 15); evaluate(c, t, 78, vd, s, 17);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[16] + s[18]));
-      a += w[i * 7 + 0] + a6 * J;
-      b += w[i * 7 + 1] + b6 * J;
-    }
-    if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
-      if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
-        if (a > b) {
-          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
-        } else {
-          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
-        }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 15); I = s[15]; }
-      }
-    }
-    vs = a + a6 * I;
-    vd = b + b6 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 6, a, b, I);
-      I = s[8]; S = s[9]; D = s[10]; vs = s[11]; vd = s[12];
-    }
-    I += J;
-    g2 = f2; f2 = e2; e2 = x2;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 7 + 2];
-      x1 += w[i * 7 + 3];
-      x2 += w[i * 7 + 4];
-      y = w[i * 7 + 5];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[46] * S + c[47] * D;
-      x1 += c[48] * S + c[49] * D;
-      x2 += c[50] * S + c[51] * D;
-      y += c[52] * S + c[53] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = e2; s[4] = f2; s[5] = g2;
-  s[6] = u0; s[7] = v0;
-  s[8] = I0; s[9] = S0; s[10] = D0; s[13] = E0;
-  if (to > from) { s[11] = vs; s[12] = vd; }
-}
-
-function square2_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const a7 = c[7];
-  const b0 = c[8];
-  const b1 = c[9];
-  const b2 = c[10];
-  const b3 = c[11];
-  const b4 = c[12];
-  const b5 = c[13];
-  const b6 = c[14];
-  const b7 = c[15];
-  const n0_0 = c[16];
-  const n0_1 = c[17];
-  const n0_2 = c[18];
-  const n0_3 = c[19];
-  const n0_4 = c[20];
-  const n0_5 = c[21];
-  const n0_6 = c[22];
-  const n0_7 = c[23];
-  const n1_0 = c[24];
-  const n1_1 = c[25];
-  const n1_2 = c[26];
-  const n1_3 = c[27];
-  const n1_4 = c[28];
-  const n1_5 = c[29];
-  const n1_6 = c[30];
-  const n1_7 = c[31];
-  const n2_0 = c[32];
-  const n2_1 = c[33];
-  const n2_2 = c[34];
-  const n2_3 = c[35];
-  const n2_4 = c[36];
-  const n2_5 = c[37];
-  const n2_6 = c[38];
-  const n2_7 = c[39];
-  const n3_0 = c[40];
-  const n3_1 = c[41];
-  const n3_2 = c[42];
-  const n3_3 = c[43];
-  const n3_4 = c[44];
-  const n3_5 = c[45];
-  const n3_6 = c[46];
-  const n3_7 = c[47];
-  const y0 = c[48];
-  const y1 = c[49];
-  const y2 = c[50];
-  const y3 = c[51];
-  const y4 = c[52];
-  const y5 = c[53];
-  const y6 = c[54];
-  const y7 = c[55];
-  const m0_0 = c[70];
-  const m0_1 = c[71];
-  const m0_2 = c[72];
-  const m0_3 = c[73];
-  const m0_4 = c[74];
-  const m0_5 = c[75];
-  const m0_6 = c[76];
-  const m1_0 = c[77];
-  const m1_1 = c[78];
-  const m1_2 = c[79];
-  const m1_3 = c[80];
-  const m1_4 = c[81];
-  const m1_5 = c[82];
-  const m1_6 = c[83];
-  const m2_0 = c[84];
-  const m2_1 = c[85];
-  const m2_2 = c[86];
-  const m2_3 = c[87];
-  const m2_4 = c[88];
-  const m2_5 = c[89];
-  const m3_0 = c[91];
-  const m3_1 = c[92];
-  const m3_2 = c[93];
-  const m3_3 = c[94];
-  const m3_4 = c[95];
-  const m3_5 = c[96];
-  const on = c[108];
-  const lambda = c[111];
-  const scale = c[112];
-  const bent_ = c[115];
-  const fall = c[116];
-  const rise = c[117];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let x3 = s[3];
-  let e2 = s[4], f2 = s[6], g2 = s[8];
-  let e3 = s[5], f3 = s[7], g3 = s[9];
-  let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
-    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * u0 + m1_5 * v0 + m1_6 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * p2 + m2_3 * p3 + m2_4 * u0 + m2_5 * v0;
-    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * p2 + m3_3 * p3 + m3_4 * u0 + m3_5 * v0;
-    if (S0 != 0 || D0 != 0) {
-      r0 += c[98] * S0 + c[99] * D0;
-      r1 += c[100] * S0 + c[101] * D0;
-    }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      evaluate(c, t, 106, vs, s, 19); evaluate(c, t, 106, vd, s, 21);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
-      a += w[i * 8 + 0] + a7 * J;
-      b += w[i * 8 + 1] + b7 * J;
-    }
-    if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
-      if (!(a + a7 * I >= 0 && b + b7 * I >= 0)) {
-        if (a > b) {
-          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
-        } else {
-          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
-        }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 19); I = s[19]; }
-      }
-    }
-    vs = a + a7 * I;
-    vd = b + b7 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 10, a, b, I);
-      I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
-    }
-    I += J;
-    g2 = f2; f2 = e2; e2 = x2;
-    g3 = f3; f3 = e3; e3 = x3;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 8 + 2];
-      x1 += w[i * 8 + 3];
-      x2 += w[i * 8 + 4];
-      x3 += w[i * 8 + 5];
-      y = w[i * 8 + 6];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[60] * S + c[61] * D;
-      x1 += c[62] * S + c[63] * D;
-      x2 += c[64] * S + c[65] * D;
-      x3 += c[66] * S + c[67] * D;
-      y += c[68] * S + c[69] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = x3;
-  s[4] = e2; s[6] = f2; s[8] = g2;
-  s[5] = e3; s[7] = f3; s[9] = g3;
-  s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
-  if (to > from) { s[15] = vs; s[16] = vd; }
-}
-
-function square2_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const a7 = c[7];
-  const a8 = c[8];
-  const b0 = c[9];
-  const b1 = c[10];
-  const b2 = c[11];
-  const b3 = c[12];
-  const b4 = c[13];
-  const b5 = c[14];
-  const b6 = c[15];
-  const b7 = c[16];
-  const b8 = c[17];
-  const n0_0 = c[18];
-  const n0_1 = c[19];
-  const n0_2 = c[20];
-  const n0_3 = c[21];
-  const n0_4 = c[22];
-  const n0_5 = c[23];
-  const n0_6 = c[24];
-  const n0_7 = c[25];
-  const n0_8 = c[26];
-  const n1_0 = c[27];
-  const n1_1 = c[28];
-  const n1_2 = c[29];
-  const n1_3 = c[30];
-  const n1_4 = c[31];
-  const n1_5 = c[32];
-  const n1_6 = c[33];
-  const n1_7 = c[34];
-  const n1_8 = c[35];
-  const n2_0 = c[36];
-  const n2_1 = c[37];
-  const n2_2 = c[38];
-  const n2_3 = c[39];
-  const n2_4 = c[40];
-  const n2_5 = c[41];
-  const n2_6 = c[42];
-  const n2_7 = c[43];
-  const n2_8 = c[44];
-  const n3_0 = c[45];
-  const n3_1 = c[46];
-  const n3_2 = c[47];
-  const n3_3 = c[48];
-  const n3_4 = c[49];
-  const n3_5 = c[50];
-  const n3_6 = c[51];
-  const n3_7 = c[52];
-  const n3_8 = c[53];
-  const n4_0 = c[54];
-  const n4_1 = c[55];
-  const n4_2 = c[56];
-  const n4_3 = c[57];
-  const n4_4 = c[58];
-  const n4_5 = c[59];
-  const n4_6 = c[60];
-  const n4_7 = c[61];
-  const n4_8 = c[62];
-  const y0 = c[63];
-  const y1 = c[64];
-  const y2 = c[65];
-  const y3 = c[66];
-  const y4 = c[67];
-  const y5 = c[68];
-  const y6 = c[69];
-  const y7 = c[70];
-  const y8 = c[71];
-  const m0_0 = c[88];
-  const m0_1 = c[89];
-  const m0_2 = c[90];
-  const m0_3 = c[91];
-  const m0_4 = c[92];
-  const m0_5 = c[93];
-  const m0_6 = c[94];
-  const m0_7 = c[95];
-  const m1_0 = c[96];
-  const m1_1 = c[97];
-  const m1_2 = c[98];
-  const m1_3 = c[99];
-  const m1_4 = c[100];
-  const m1_5 = c[101];
-  const m1_6 = c[102];
-  const m1_7 = c[103];
-  const m2_0 = c[104];
-  const m2_1 = c[105];
-  const m2_2 = c[106];
-  const m2_3 = c[107];
-  const m2_4 = c[108];
-  const m2_5 = c[109];
-  const m2_6 = c[110];
-  const m3_0 = c[112];
-  const m3_1 = c[113];
-  const m3_2 = c[114];
-  const m3_3 = c[115];
-  const m3_4 = c[116];
-  const m3_5 = c[117];
-  const m3_6 = c[118];
-  const m4_0 = c[120];
-  const m4_1 = c[121];
-  const m4_2 = c[122];
-  const m4_3 = c[123];
-  const m4_4 = c[124];
-  const m4_5 = c[125];
-  const m4_6 = c[126];
-  const on = c[140];
-  const lambda = c[143];
-  const scale = c[144];
-  const bent_ = c[147];
-  const fall = c[148];
-  const rise = c[149];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let x3 = s[3];
-  let x4 = s[4];
-  let e2 = s[5], f2 = s[8], g2 = s[11];
-  let e3 = s[6], f3 = s[9], g3 = s[12];
-  let e4 = s[7], f4 = s[10], g4 = s[13];
-  let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
-    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
-    const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * u0 + m0_6 * v0 + m0_7 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * u0 + m1_6 * v0 + m1_7 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * p2 + m2_3 * p3 + m2_4 * p4 + m2_5 * u0 + m2_6 * v0;
-    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * p2 + m3_3 * p3 + m3_4 * p4 + m3_5 * u0 + m3_6 * v0;
-    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * p2 + m4_3 * p3 + m4_4 * p4 + m4_5 * u0 + m4_6 * v0;
-    if (S0 != 0 || D0 != 0) {
-      r0 += c[128] * S0 + c[129] * D0;
-      r1 += c[130] * S0 + c[131] * D0;
-    }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * u + a6 * v + a7;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * u + b6 * v + b7;
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      evaluate(c, t, 138, vs, s, 23); evaluate(c, t, 138, vd, s, 25);
-      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[24] + s[26]));
-      a += w[i * 9 + 0] + a8 * J;
-      b += w[i * 9 + 1] + b8 * J;
-    }
-    if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
-      if (!(a + a8 * I >= 0 && b + b8 * I >= 0)) {
-        if (a > b) {
-          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
-        } else {
-          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
-        }
-        if (lambda != 0) { bent(c, t, 138, 8, 17, a, b, I, s, 23); I = s[23]; }
-      }
-    }
-    vs = a + a8 * I;
-    vd = b + b8 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 14, a, b, I);
-      I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
-    }
-    I += J;
-    g2 = f2; f2 = e2; e2 = x2;
-    g3 = f3; f3 = e3; e3 = x3;
-    g4 = f4; f4 = e4; e4 = x4;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * u + n0_6 * v + n0_7 + n0_8 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * u + n1_6 * v + n1_7 + n1_8 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * u + n2_6 * v + n2_7 + n2_8 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * u + n3_6 * v + n3_7 + n3_8 * I;
-    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * u + n4_6 * v + n4_7 + n4_8 * I;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 9 + 2];
-      x1 += w[i * 9 + 3];
-      x2 += w[i * 9 + 4];
-      x3 += w[i * 9 + 5];
-      x4 += w[i * 9 + 6];
-      y = w[i * 9 + 7];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[76] * S + c[77] * D;
-      x1 += c[78] * S + c[79] * D;
-      x2 += c[80] * S + c[81] * D;
-      x3 += c[82] * S + c[83] * D;
-      x4 += c[84] * S + c[85] * D;
-      y += c[86] * S + c[87] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y7 + y8 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = x3;
-  s[4] = x4;
-  s[5] = e2; s[8] = f2; s[11] = g2;
-  s[6] = e3; s[9] = f3; s[12] = g3;
-  s[7] = e4; s[10] = f4; s[13] = g4;
-  s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
-  if (to > from) { s[19] = vs; s[20] = vd; }
-}
-
-function square3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1656,6 +1758,7 @@ function square3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m2_3 = c[69];
   const m2_4 = c[70];
   const m2_5 = c[71];
+  const sign = c[101], off = c[79];
   const on = c[80];
   const lambda = c[83];
   const scale = c[84];
@@ -1669,24 +1772,27 @@ function square3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * u0 + m0_4 * v0 + m0_5 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * u0 + m1_4 * v0 + m1_5 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * u0 + m2_4 * v0 + m2_5 * I0;
+    const qs = vs, qd = vd;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + m1_2 * x2) + ((m1_3 * u0 + m1_4 * v0) + m1_5 * I0);
+    let r2 = ((m2_0 * x0 + m2_1 * x1) + m2_2 * x2) + ((m2_3 * u0 + m2_4 * v0) + m2_5 * I0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[72] * S0 + c[73] * D0;
       r1 += c[74] * S0 + c[75] * D0;
       r2 += c[76] * S0 + c[77] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * u + a4 * v + a5;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * u + b4 * v + b5;
+    let a = ((a0 * r0 + a1 * r1) + a2 * r2) + ((a3 * u + a4 * v) + a5);
+    let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 78, vs, s, 12); evaluate(c, t, 78, vd, s, 14);
+      s[8] = vs; s[9] = vd;
+      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
       J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1702,13 +1808,13 @@ function square3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      conduct_square(c, t, 78, 6, 13, 42, s, 3, a, b, I);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * u + n0_4 * v + n0_5 + n0_6 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * u + n1_4 * v + n1_5 + n1_6 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * u + n2_4 * v + n2_5 + n2_6 * I;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * r2) + ((n0_3 * u + n0_4 * v) + n0_5) + n0_6 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * r2) + ((n1_3 * u + n1_4 * v) + n1_5) + n1_6 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + n2_2 * r2) + ((n2_3 * u + n2_4 * v) + n2_5) + n2_6 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 7 + 2];
@@ -1722,7 +1828,11 @@ function square3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       x2 += c[50] * S + c[51] * D;
       y += c[52] * S + c[53] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * u + y4 * v + y5 + y6 * I;
+    output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = y6;
+      markKink(c, t, 78, 6, 13, e, i, s, 3);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1734,8 +1844,283 @@ function square3_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
-function square3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const b0 = c[6];
+  const b1 = c[7];
+  const b2 = c[8];
+  const b3 = c[9];
+  const b4 = c[10];
+  const b5 = c[11];
+  const n0_0 = c[12];
+  const n0_1 = c[13];
+  const n0_2 = c[14];
+  const n0_3 = c[15];
+  const n0_4 = c[16];
+  const n0_5 = c[17];
+  const n1_0 = c[18];
+  const n1_1 = c[19];
+  const n1_2 = c[20];
+  const n1_3 = c[21];
+  const n1_4 = c[22];
+  const n1_5 = c[23];
+  const y0 = c[24];
+  const y1 = c[25];
+  const y2 = c[26];
+  const y3 = c[27];
+  const y4 = c[28];
+  const y5 = c[29];
+  const m0_0 = c[40];
+  const m0_1 = c[41];
+  const m0_2 = c[42];
+  const m0_3 = c[43];
+  const m1_0 = c[45];
+  const m1_1 = c[46];
+  const m1_2 = c[47];
+  const m1_3 = c[48];
+  const sign = c[77], off = c[55];
+  const on = c[56];
+  const lambda = c[59];
+  const scale = c[60];
+  const bent_ = c[63];
+  const fall = c[64];
+  const rise = c[65];
+  let x0 = s[0];
+  let x1 = s[1];
+  let e0 = s[2], f0 = s[4], g0 = s[6];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let u0 = s[8], v0 = s[9];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    let r0 = (m0_0 * p0 + m0_1 * p1) + (m0_2 * u0 + m0_3 * v0);
+    let r1 = (m1_0 * p0 + m1_1 * p1) + (m1_2 * u0 + m1_3 * v0);
+    let a = ((a0 * r0 + a1 * r1) + a2 * u) + (a3 * v + a4);
+    let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[13] = vs; s[14] = vd;
+      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
+      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
+      a += w[i * 6 + 0] + a5 * J;
+      b += w[i * 6 + 1] + b5 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 17); I = s[17]; }
+      }
+    }
+    vs = a + a5 * I;
+    vd = b + b5 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
+    }
+    I += J;
+    g0 = f0; f0 = e0; e0 = x0;
+    g1 = f1; f1 = e1; e1 = x1;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * u) + (n0_3 * v + n0_4) + n0_5 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * u) + (n1_3 * v + n1_4) + n1_5 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 6 + 2];
+      x1 += w[i * 6 + 3];
+      y = w[i * 6 + 4];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[34] * S + c[35] * D;
+      x1 += c[36] * S + c[37] * D;
+      y += c[38] * S + c[39] * D;
+    }
+    output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = y5;
+      markKink(c, t, 54, 5, 11, e, i, s, 8);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = e0; s[4] = f0; s[6] = g0;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[8] = u0; s[9] = v0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  if (to > from) { s[13] = vs; s[14] = vd; }
+}
+
+function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const a0 = c[0];
+  const a1 = c[1];
+  const a2 = c[2];
+  const a3 = c[3];
+  const a4 = c[4];
+  const a5 = c[5];
+  const a6 = c[6];
+  const b0 = c[7];
+  const b1 = c[8];
+  const b2 = c[9];
+  const b3 = c[10];
+  const b4 = c[11];
+  const b5 = c[12];
+  const b6 = c[13];
+  const n0_0 = c[14];
+  const n0_1 = c[15];
+  const n0_2 = c[16];
+  const n0_3 = c[17];
+  const n0_4 = c[18];
+  const n0_5 = c[19];
+  const n0_6 = c[20];
+  const n1_0 = c[21];
+  const n1_1 = c[22];
+  const n1_2 = c[23];
+  const n1_3 = c[24];
+  const n1_4 = c[25];
+  const n1_5 = c[26];
+  const n1_6 = c[27];
+  const n2_0 = c[28];
+  const n2_1 = c[29];
+  const n2_2 = c[30];
+  const n2_3 = c[31];
+  const n2_4 = c[32];
+  const n2_5 = c[33];
+  const n2_6 = c[34];
+  const y0 = c[35];
+  const y1 = c[36];
+  const y2 = c[37];
+  const y3 = c[38];
+  const y4 = c[39];
+  const y5 = c[40];
+  const y6 = c[41];
+  const m0_0 = c[54];
+  const m0_1 = c[55];
+  const m0_2 = c[56];
+  const m0_3 = c[57];
+  const m0_4 = c[58];
+  const m0_5 = c[59];
+  const m1_0 = c[60];
+  const m1_1 = c[61];
+  const m1_2 = c[62];
+  const m1_3 = c[63];
+  const m1_4 = c[64];
+  const m2_0 = c[66];
+  const m2_1 = c[67];
+  const m2_2 = c[68];
+  const m2_3 = c[69];
+  const m2_4 = c[70];
+  const sign = c[101], off = c[79];
+  const on = c[80];
+  const lambda = c[83];
+  const scale = c[84];
+  const bent_ = c[87];
+  const fall = c[88];
+  const rise = c[89];
+  let x0 = s[0];
+  let x1 = s[1];
+  let x2 = s[2];
+  let e1 = s[3], f1 = s[5], g1 = s[7];
+  let e2 = s[4], f2 = s[6], g2 = s[8];
+  let u0 = s[9], v0 = s[10];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * p1) + m1_2 * p2) + (m1_3 * u0 + m1_4 * v0);
+    let r2 = ((m2_0 * x0 + m2_1 * p1) + m2_2 * p2) + (m2_3 * u0 + m2_4 * v0);
+    if (S0 != 0 || D0 != 0) {
+      r0 += c[72] * S0 + c[73] * D0;
+    }
+    let a = ((a0 * r0 + a1 * r1) + a2 * r2) + ((a3 * u + a4 * v) + a5);
+    let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
+    let I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[14] = vs; s[15] = vd;
+      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
+      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      a += w[i * 7 + 0] + a6 * J;
+      b += w[i * 7 + 1] + b6 * J;
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 18); I = s[18]; }
+      }
+    }
+    vs = a + a6 * I;
+    vd = b + b6 * I;
+    if (vs > on || vd > on) {
+      conduct_square(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
+    }
+    I += J;
+    g1 = f1; f1 = e1; e1 = x1;
+    g2 = f2; f2 = e2; e2 = x2;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * r2) + ((n0_3 * u + n0_4 * v) + n0_5) + n0_6 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * r2) + ((n1_3 * u + n1_4 * v) + n1_5) + n1_6 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + n2_2 * r2) + ((n2_3 * u + n2_4 * v) + n2_5) + n2_6 * I;
+    let y = 0;
+    if (noisy) {
+      x0 += w[i * 7 + 2];
+      x1 += w[i * 7 + 3];
+      x2 += w[i * 7 + 4];
+      y = w[i * 7 + 5];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[46] * S + c[47] * D;
+      x1 += c[48] * S + c[49] * D;
+      x2 += c[50] * S + c[51] * D;
+      y += c[52] * S + c[53] * D;
+    }
+    output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = y6;
+      markKink(c, t, 78, 6, 13, e, i, s, 9);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[0] = x0;
+  s[1] = x1;
+  s[2] = x2;
+  s[3] = e1; s[5] = f1; s[7] = g1;
+  s[4] = e2; s[6] = f2; s[8] = g2;
+  s[9] = u0; s[10] = v0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  if (to > from) { s[14] = vs; s[15] = vd; }
+}
+
+function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -1812,13 +2197,13 @@ function square3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m2_3 = c[87];
   const m2_4 = c[88];
   const m2_5 = c[89];
-  const m2_6 = c[90];
   const m3_0 = c[91];
   const m3_1 = c[92];
   const m3_2 = c[93];
   const m3_3 = c[94];
   const m3_4 = c[95];
   const m3_5 = c[96];
+  const sign = c[129], off = c[107];
   const on = c[108];
   const lambda = c[111];
   const scale = c[112];
@@ -1829,31 +2214,35 @@ function square3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let x1 = s[1];
   let x2 = s[2];
   let x3 = s[3];
-  let e3 = s[4], f3 = s[5], g3 = s[6];
-  let u0 = s[7], v0 = s[8];
-  let I0 = s[9], S0 = s[10], D0 = s[11], E0 = s[14], vs = s[12], vd = s[13];
+  let e2 = s[4], f2 = s[6], g2 = s[8];
+  let e3 = s[5], f3 = s[7], g3 = s[9];
+  let u0 = s[10], v0 = s[11];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * u0 + m1_5 * v0 + m1_6 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * u0 + m2_5 * v0 + m2_6 * I0;
-    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * p3 + m3_4 * u0 + m3_5 * v0;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + (m1_2 * x2 + m1_3 * x3)) + ((m1_4 * u0 + m1_5 * v0) + m1_6 * I0);
+    let r2 = ((m2_0 * x0 + m2_1 * x1) + m2_2 * p2) + ((m2_3 * p3 + m2_4 * u0) + m2_5 * v0);
+    let r3 = ((m3_0 * x0 + m3_1 * x1) + m3_2 * p2) + ((m3_3 * p3 + m3_4 * u0) + m3_5 * v0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[98] * S0 + c[99] * D0;
       r1 += c[100] * S0 + c[101] * D0;
-      r2 += c[102] * S0 + c[103] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
+    let a = ((a0 * r0 + a1 * r1) + (a2 * r2 + a3 * r3)) + ((a4 * u + a5 * v) + a6);
+    let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 16); evaluate(c, t, 106, vd, s, 18);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[17] + s[19]));
+      s[15] = vs; s[16] = vd;
+      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -1863,21 +2252,22 @@ function square3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 16); I = s[16]; }
+        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 19); I = s[19]; }
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 7, a, b, I);
-      I = s[9]; S = s[10]; D = s[11]; vs = s[12]; vd = s[13];
+      conduct_square(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
+    g2 = f2; f2 = e2; e2 = x2;
     g3 = f3; f3 = e3; e3 = x3;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + (n0_2 * r2 + n0_3 * r3)) + ((n0_4 * u + n0_5 * v) + n0_6) + n0_7 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + (n1_2 * r2 + n1_3 * r3)) + ((n1_4 * u + n1_5 * v) + n1_6) + n1_7 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + (n2_2 * r2 + n2_3 * r3)) + ((n2_4 * u + n2_5 * v) + n2_6) + n2_7 * I;
+    x3 = ((n3_0 * r0 + n3_1 * r1) + (n3_2 * r2 + n3_3 * r3)) + ((n3_4 * u + n3_5 * v) + n3_6) + n3_7 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 8 + 2];
@@ -1893,7 +2283,11 @@ function square3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       x3 += c[66] * S + c[67] * D;
       y += c[68] * S + c[69] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
+    output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = y7;
+      markKink(c, t, 106, 7, 15, e, i, s, 10);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -1901,14 +2295,15 @@ function square3_1(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
-  s[4] = e3; s[5] = f3; s[6] = g3;
-  s[7] = u0; s[8] = v0;
-  s[9] = I0; s[10] = S0; s[11] = D0; s[14] = E0;
-  if (to > from) { s[12] = vs; s[13] = vd; }
+  s[4] = e2; s[6] = f2; s[8] = g2;
+  s[5] = e3; s[7] = f3; s[9] = g3;
+  s[10] = u0; s[11] = v0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
-function square3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2019,6 +2414,7 @@ function square3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m4_4 = c[124];
   const m4_5 = c[125];
   const m4_6 = c[126];
+  const sign = c[161], off = c[139];
   const on = c[140];
   const lambda = c[143];
   const scale = c[144];
@@ -2036,28 +2432,31 @@ function square3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
+    const qs = vs, qd = vd;
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
     const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * u0 + m0_6 * v0 + m0_7 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * u0 + m1_6 * v0 + m1_7 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * x4 + m2_5 * u0 + m2_6 * v0 + m2_7 * I0;
-    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * p3 + m3_4 * p4 + m3_5 * u0 + m3_6 * v0;
-    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * x2 + m4_3 * p3 + m4_4 * p4 + m4_5 * u0 + m4_6 * v0;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * x4 + m0_5 * u0) + (m0_6 * v0 + m0_7 * I0));
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + (m1_2 * x2 + m1_3 * x3)) + ((m1_4 * x4 + m1_5 * u0) + (m1_6 * v0 + m1_7 * I0));
+    let r2 = ((m2_0 * x0 + m2_1 * x1) + (m2_2 * x2 + m2_3 * x3)) + ((m2_4 * x4 + m2_5 * u0) + (m2_6 * v0 + m2_7 * I0));
+    let r3 = ((m3_0 * x0 + m3_1 * x1) + (m3_2 * x2 + m3_3 * p3)) + ((m3_4 * p4 + m3_5 * u0) + m3_6 * v0);
+    let r4 = ((m4_0 * x0 + m4_1 * x1) + (m4_2 * x2 + m4_3 * p3)) + ((m4_4 * p4 + m4_5 * u0) + m4_6 * v0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[128] * S0 + c[129] * D0;
       r1 += c[130] * S0 + c[131] * D0;
       r2 += c[132] * S0 + c[133] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * u + a6 * v + a7;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * u + b6 * v + b7;
+    let a = ((a0 * r0 + a1 * r1) + (a2 * r2 + a3 * r3)) + ((a4 * r4 + a5 * u) + (a6 * v + a7));
+    let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 138, vs, s, 20); evaluate(c, t, 138, vd, s, 22);
+      s[16] = vs; s[17] = vd;
+      evaluate(c, t, 138, s, 16, 20); evaluate(c, t, 138, s, 17, 22);
       J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[21] + s[23]));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2073,17 +2472,17 @@ function square3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 11, a, b, I);
+      conduct_square(c, t, 138, 8, 17, 72, s, 11, a, b, I);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
     I += J;
     g3 = f3; f3 = e3; e3 = x3;
     g4 = f4; f4 = e4; e4 = x4;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * u + n0_6 * v + n0_7 + n0_8 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * u + n1_6 * v + n1_7 + n1_8 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * u + n2_6 * v + n2_7 + n2_8 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * u + n3_6 * v + n3_7 + n3_8 * I;
-    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * u + n4_6 * v + n4_7 + n4_8 * I;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + (n0_2 * r2 + n0_3 * r3)) + ((n0_4 * r4 + n0_5 * u) + (n0_6 * v + n0_7)) + n0_8 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + (n1_2 * r2 + n1_3 * r3)) + ((n1_4 * r4 + n1_5 * u) + (n1_6 * v + n1_7)) + n1_8 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + (n2_2 * r2 + n2_3 * r3)) + ((n2_4 * r4 + n2_5 * u) + (n2_6 * v + n2_7)) + n2_8 * I;
+    x3 = ((n3_0 * r0 + n3_1 * r1) + (n3_2 * r2 + n3_3 * r3)) + ((n3_4 * r4 + n3_5 * u) + (n3_6 * v + n3_7)) + n3_8 * I;
+    x4 = ((n4_0 * r0 + n4_1 * r1) + (n4_2 * r2 + n4_3 * r3)) + ((n4_4 * r4 + n4_5 * u) + (n4_6 * v + n4_7)) + n4_8 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 9 + 2];
@@ -2101,7 +2500,11 @@ function square3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       x4 += c[84] * S + c[85] * D;
       y += c[86] * S + c[87] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y7 + y8 * I;
+    output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[40] = qs; s[41] = qd; s[16] = vs; s[17] = vd; s[42] = y8;
+      markKink(c, t, 138, 8, 17, e, i, s, 11);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2117,259 +2520,8 @@ function square3_2(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
-function square3_3(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
-  const a0 = c[0];
-  const a1 = c[1];
-  const a2 = c[2];
-  const a3 = c[3];
-  const a4 = c[4];
-  const a5 = c[5];
-  const a6 = c[6];
-  const a7 = c[7];
-  const a8 = c[8];
-  const a9 = c[9];
-  const b0 = c[10];
-  const b1 = c[11];
-  const b2 = c[12];
-  const b3 = c[13];
-  const b4 = c[14];
-  const b5 = c[15];
-  const b6 = c[16];
-  const b7 = c[17];
-  const b8 = c[18];
-  const b9 = c[19];
-  const n0_0 = c[20];
-  const n0_1 = c[21];
-  const n0_2 = c[22];
-  const n0_3 = c[23];
-  const n0_4 = c[24];
-  const n0_5 = c[25];
-  const n0_6 = c[26];
-  const n0_7 = c[27];
-  const n0_8 = c[28];
-  const n0_9 = c[29];
-  const n1_0 = c[30];
-  const n1_1 = c[31];
-  const n1_2 = c[32];
-  const n1_3 = c[33];
-  const n1_4 = c[34];
-  const n1_5 = c[35];
-  const n1_6 = c[36];
-  const n1_7 = c[37];
-  const n1_8 = c[38];
-  const n1_9 = c[39];
-  const n2_0 = c[40];
-  const n2_1 = c[41];
-  const n2_2 = c[42];
-  const n2_3 = c[43];
-  const n2_4 = c[44];
-  const n2_5 = c[45];
-  const n2_6 = c[46];
-  const n2_7 = c[47];
-  const n2_8 = c[48];
-  const n2_9 = c[49];
-  const n3_0 = c[50];
-  const n3_1 = c[51];
-  const n3_2 = c[52];
-  const n3_3 = c[53];
-  const n3_4 = c[54];
-  const n3_5 = c[55];
-  const n3_6 = c[56];
-  const n3_7 = c[57];
-  const n3_8 = c[58];
-  const n3_9 = c[59];
-  const n4_0 = c[60];
-  const n4_1 = c[61];
-  const n4_2 = c[62];
-  const n4_3 = c[63];
-  const n4_4 = c[64];
-  const n4_5 = c[65];
-  const n4_6 = c[66];
-  const n4_7 = c[67];
-  const n4_8 = c[68];
-  const n4_9 = c[69];
-  const n5_0 = c[70];
-  const n5_1 = c[71];
-  const n5_2 = c[72];
-  const n5_3 = c[73];
-  const n5_4 = c[74];
-  const n5_5 = c[75];
-  const n5_6 = c[76];
-  const n5_7 = c[77];
-  const n5_8 = c[78];
-  const n5_9 = c[79];
-  const y0 = c[80];
-  const y1 = c[81];
-  const y2 = c[82];
-  const y3 = c[83];
-  const y4 = c[84];
-  const y5 = c[85];
-  const y6 = c[86];
-  const y7 = c[87];
-  const y8 = c[88];
-  const y9 = c[89];
-  const m0_0 = c[108];
-  const m0_1 = c[109];
-  const m0_2 = c[110];
-  const m0_3 = c[111];
-  const m0_4 = c[112];
-  const m0_5 = c[113];
-  const m0_6 = c[114];
-  const m0_7 = c[115];
-  const m0_8 = c[116];
-  const m1_0 = c[117];
-  const m1_1 = c[118];
-  const m1_2 = c[119];
-  const m1_3 = c[120];
-  const m1_4 = c[121];
-  const m1_5 = c[122];
-  const m1_6 = c[123];
-  const m1_7 = c[124];
-  const m1_8 = c[125];
-  const m2_0 = c[126];
-  const m2_1 = c[127];
-  const m2_2 = c[128];
-  const m2_3 = c[129];
-  const m2_4 = c[130];
-  const m2_5 = c[131];
-  const m2_6 = c[132];
-  const m2_7 = c[133];
-  const m2_8 = c[134];
-  const m3_0 = c[135];
-  const m3_1 = c[136];
-  const m3_2 = c[137];
-  const m3_3 = c[138];
-  const m3_4 = c[139];
-  const m3_5 = c[140];
-  const m3_6 = c[141];
-  const m3_7 = c[142];
-  const m4_0 = c[144];
-  const m4_1 = c[145];
-  const m4_2 = c[146];
-  const m4_3 = c[147];
-  const m4_4 = c[148];
-  const m4_5 = c[149];
-  const m4_6 = c[150];
-  const m4_7 = c[151];
-  const m5_0 = c[153];
-  const m5_1 = c[154];
-  const m5_2 = c[155];
-  const m5_3 = c[156];
-  const m5_4 = c[157];
-  const m5_5 = c[158];
-  const m5_6 = c[159];
-  const m5_7 = c[160];
-  const on = c[176];
-  const lambda = c[179];
-  const scale = c[180];
-  const bent_ = c[183];
-  const fall = c[184];
-  const rise = c[185];
-  let x0 = s[0];
-  let x1 = s[1];
-  let x2 = s[2];
-  let x3 = s[3];
-  let x4 = s[4];
-  let x5 = s[5];
-  let e3 = s[6], f3 = s[9], g3 = s[12];
-  let e4 = s[7], f4 = s[10], g4 = s[13];
-  let e5 = s[8], f5 = s[11], g5 = s[14];
-  let u0 = s[15], v0 = s[16];
-  let I0 = s[17], S0 = s[18], D0 = s[19], E0 = s[22], vs = s[20], vd = s[21];
-  for (let i = from; i < to; i++) {
-    const u = audio[i], v = control[i];
-    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
-    const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
-    const p5 = 3.5 * x5 - 2.25 * e5 + 0.8333333333333334 * f5 - 0.125 * g5;
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * x5 + m0_6 * u0 + m0_7 * v0 + m0_8 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * x5 + m1_6 * u0 + m1_7 * v0 + m1_8 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * x4 + m2_5 * x5 + m2_6 * u0 + m2_7 * v0 + m2_8 * I0;
-    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * p3 + m3_4 * p4 + m3_5 * p5 + m3_6 * u0 + m3_7 * v0;
-    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * x2 + m4_3 * p3 + m4_4 * p4 + m4_5 * p5 + m4_6 * u0 + m4_7 * v0;
-    let r5 = m5_0 * x0 + m5_1 * x1 + m5_2 * x2 + m5_3 * p3 + m5_4 * p4 + m5_5 * p5 + m5_6 * u0 + m5_7 * v0;
-    if (S0 != 0 || D0 != 0) {
-      r0 += c[162] * S0 + c[163] * D0;
-      r1 += c[164] * S0 + c[165] * D0;
-      r2 += c[166] * S0 + c[167] * D0;
-    }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * r5 + a6 * u + a7 * v + a8;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * r5 + b6 * u + b7 * v + b8;
-    let I = 0, S = 0, D = 0, J = 0;
-    if (noisy) {
-      evaluate(c, t, 174, vs, s, 24); evaluate(c, t, 174, vd, s, 26);
-      J = w[i * 10 + 9] * Math.sqrt(0.5 * (s[25] + s[27]));
-      a += w[i * 10 + 0] + a9 * J;
-      b += w[i * 10 + 1] + b9 * J;
-    }
-    if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
-      if (!(a + a9 * I >= 0 && b + b9 * I >= 0)) {
-        if (a > b) {
-          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
-        } else {
-          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
-        }
-        if (lambda != 0) { bent(c, t, 174, 9, 19, a, b, I, s, 24); I = s[24]; }
-      }
-    }
-    vs = a + a9 * I;
-    vd = b + b9 * I;
-    if (vs > on || vd > on) {
-      conduct(c, t, 174, 9, 19, 90, s, 15, a, b, I);
-      I = s[17]; S = s[18]; D = s[19]; vs = s[20]; vd = s[21];
-    }
-    I += J;
-    g3 = f3; f3 = e3; e3 = x3;
-    g4 = f4; f4 = e4; e4 = x4;
-    g5 = f5; f5 = e5; e5 = x5;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * r5 + n0_6 * u + n0_7 * v + n0_8 + n0_9 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * r5 + n1_6 * u + n1_7 * v + n1_8 + n1_9 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * r5 + n2_6 * u + n2_7 * v + n2_8 + n2_9 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * r5 + n3_6 * u + n3_7 * v + n3_8 + n3_9 * I;
-    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * r5 + n4_6 * u + n4_7 * v + n4_8 + n4_9 * I;
-    x5 = n5_0 * r0 + n5_1 * r1 + n5_2 * r2 + n5_3 * r3 + n5_4 * r4 + n5_5 * r5 + n5_6 * u + n5_7 * v + n5_8 + n5_9 * I;
-    let y = 0;
-    if (noisy) {
-      x0 += w[i * 10 + 2];
-      x1 += w[i * 10 + 3];
-      x2 += w[i * 10 + 4];
-      x3 += w[i * 10 + 5];
-      x4 += w[i * 10 + 6];
-      x5 += w[i * 10 + 7];
-      y = w[i * 10 + 8];
-    }
-    if (S != 0 || D != 0) {
-      x0 += c[94] * S + c[95] * D;
-      x1 += c[96] * S + c[97] * D;
-      x2 += c[98] * S + c[99] * D;
-      x3 += c[100] * S + c[101] * D;
-      x4 += c[102] * S + c[103] * D;
-      x5 += c[104] * S + c[105] * D;
-      y += c[106] * S + c[107] * D;
-    }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * x5 + y6 * u + y7 * v + y8 + y9 * I;
-    u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
-  }
-  s[0] = x0;
-  s[1] = x1;
-  s[2] = x2;
-  s[3] = x3;
-  s[4] = x4;
-  s[5] = x5;
-  s[6] = e3; s[9] = f3; s[12] = g3;
-  s[7] = e4; s[10] = f4; s[13] = g4;
-  s[8] = e5; s[11] = f5; s[14] = g5;
-  s[15] = u0; s[16] = v0;
-  s[17] = I0; s[18] = S0; s[19] = D0; s[22] = E0;
-  if (to > from) { s[20] = vs; s[21] = vd; }
-}
-
-function square4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2439,21 +2591,19 @@ function square4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m1_3 = c[80];
   const m1_4 = c[81];
   const m1_5 = c[82];
-  const m1_6 = c[83];
   const m2_0 = c[84];
   const m2_1 = c[85];
   const m2_2 = c[86];
   const m2_3 = c[87];
   const m2_4 = c[88];
   const m2_5 = c[89];
-  const m2_6 = c[90];
   const m3_0 = c[91];
   const m3_1 = c[92];
   const m3_2 = c[93];
   const m3_3 = c[94];
   const m3_4 = c[95];
   const m3_5 = c[96];
-  const m3_6 = c[97];
+  const sign = c[129], off = c[107];
   const on = c[108];
   const lambda = c[111];
   const scale = c[112];
@@ -2464,30 +2614,36 @@ function square4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let x1 = s[1];
   let x2 = s[2];
   let x3 = s[3];
-  let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let e1 = s[4], f1 = s[7], g1 = s[10];
+  let e2 = s[5], f2 = s[8], g2 = s[11];
+  let e3 = s[6], f3 = s[9], g3 = s[12];
+  let u0 = s[13], v0 = s[14];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * u0 + m0_5 * v0 + m0_6 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * u0 + m1_5 * v0 + m1_6 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * u0 + m2_5 * v0 + m2_6 * I0;
-    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * x3 + m3_4 * u0 + m3_5 * v0 + m3_6 * I0;
+    const qs = vs, qd = vd;
+    const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
+    let r1 = ((m1_0 * x0 + m1_1 * p1) + m1_2 * p2) + ((m1_3 * p3 + m1_4 * u0) + m1_5 * v0);
+    let r2 = ((m2_0 * x0 + m2_1 * p1) + m2_2 * p2) + ((m2_3 * p3 + m2_4 * u0) + m2_5 * v0);
+    let r3 = ((m3_0 * x0 + m3_1 * p1) + m3_2 * p2) + ((m3_3 * p3 + m3_4 * u0) + m3_5 * v0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[98] * S0 + c[99] * D0;
-      r1 += c[100] * S0 + c[101] * D0;
-      r2 += c[102] * S0 + c[103] * D0;
-      r3 += c[104] * S0 + c[105] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * u + a5 * v + a6;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * u + b5 * v + b6;
+    let a = ((a0 * r0 + a1 * r1) + (a2 * r2 + a3 * r3)) + ((a4 * u + a5 * v) + a6);
+    let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 106, vs, s, 13); evaluate(c, t, 106, vd, s, 15);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[14] + s[16]));
+      s[18] = vs; s[19] = vd;
+      evaluate(c, t, 106, s, 18, 22); evaluate(c, t, 106, s, 19, 24);
+      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[23] + s[25]));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2497,20 +2653,23 @@ function square4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 13); I = s[13]; }
+        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 22); I = s[22]; }
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 106, 7, 15, 56, s, 4, a, b, I);
-      I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
+      conduct_square(c, t, 106, 7, 15, 56, s, 13, a, b, I);
+      I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
     I += J;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * u + n0_5 * v + n0_6 + n0_7 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * u + n1_5 * v + n1_6 + n1_7 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * u + n2_5 * v + n2_6 + n2_7 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * u + n3_5 * v + n3_6 + n3_7 * I;
+    g1 = f1; f1 = e1; e1 = x1;
+    g2 = f2; f2 = e2; e2 = x2;
+    g3 = f3; f3 = e3; e3 = x3;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + (n0_2 * r2 + n0_3 * r3)) + ((n0_4 * u + n0_5 * v) + n0_6) + n0_7 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + (n1_2 * r2 + n1_3 * r3)) + ((n1_4 * u + n1_5 * v) + n1_6) + n1_7 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + (n2_2 * r2 + n2_3 * r3)) + ((n2_4 * u + n2_5 * v) + n2_6) + n2_7 * I;
+    x3 = ((n3_0 * r0 + n3_1 * r1) + (n3_2 * r2 + n3_3 * r3)) + ((n3_4 * u + n3_5 * v) + n3_6) + n3_7 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 8 + 2];
@@ -2526,7 +2685,11 @@ function square4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       x3 += c[66] * S + c[67] * D;
       y += c[68] * S + c[69] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * u + y5 * v + y6 + y7 * I;
+    output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[42] = qs; s[43] = qd; s[18] = vs; s[19] = vd; s[44] = y7;
+      markKink(c, t, 106, 7, 15, e, i, s, 13);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2534,13 +2697,16 @@ function square4_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
-  s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
-  if (to > from) { s[9] = vs; s[10] = vd; }
+  s[4] = e1; s[7] = f1; s[10] = g1;
+  s[5] = e2; s[8] = f2; s[11] = g2;
+  s[6] = e3; s[9] = f3; s[12] = g3;
+  s[13] = u0; s[14] = v0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
-function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
-  const noisy = w.length > 0;
+function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+  const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
   const a2 = c[2];
@@ -2636,7 +2802,6 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m2_4 = c[108];
   const m2_5 = c[109];
   const m2_6 = c[110];
-  const m2_7 = c[111];
   const m3_0 = c[112];
   const m3_1 = c[113];
   const m3_2 = c[114];
@@ -2644,7 +2809,6 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m3_4 = c[116];
   const m3_5 = c[117];
   const m3_6 = c[118];
-  const m3_7 = c[119];
   const m4_0 = c[120];
   const m4_1 = c[121];
   const m4_2 = c[122];
@@ -2652,7 +2816,7 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   const m4_4 = c[124];
   const m4_5 = c[125];
   const m4_6 = c[126];
-  const m4_7 = c[127];
+  const sign = c[161], off = c[139];
   const on = c[140];
   const lambda = c[143];
   const scale = c[144];
@@ -2664,32 +2828,38 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   let x2 = s[2];
   let x3 = s[3];
   let x4 = s[4];
-  let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let e2 = s[5], f2 = s[8], g2 = s[11];
+  let e3 = s[6], f3 = s[9], g3 = s[12];
+  let e4 = s[7], f4 = s[10], g4 = s[13];
+  let u0 = s[14], v0 = s[15];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
-    let r0 = m0_0 * x0 + m0_1 * x1 + m0_2 * x2 + m0_3 * x3 + m0_4 * x4 + m0_5 * u0 + m0_6 * v0 + m0_7 * I0;
-    let r1 = m1_0 * x0 + m1_1 * x1 + m1_2 * x2 + m1_3 * x3 + m1_4 * x4 + m1_5 * u0 + m1_6 * v0 + m1_7 * I0;
-    let r2 = m2_0 * x0 + m2_1 * x1 + m2_2 * x2 + m2_3 * x3 + m2_4 * x4 + m2_5 * u0 + m2_6 * v0 + m2_7 * I0;
-    let r3 = m3_0 * x0 + m3_1 * x1 + m3_2 * x2 + m3_3 * x3 + m3_4 * x4 + m3_5 * u0 + m3_6 * v0 + m3_7 * I0;
-    let r4 = m4_0 * x0 + m4_1 * x1 + m4_2 * x2 + m4_3 * x3 + m4_4 * x4 + m4_5 * u0 + m4_6 * v0 + m4_7 * I0;
+    const qs = vs, qd = vd;
+    const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
+    const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
+    const p4 = 3.5 * x4 - 2.25 * e4 + 0.8333333333333334 * f4 - 0.125 * g4;
+    let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * x4 + m0_5 * u0) + (m0_6 * v0 + m0_7 * I0));
+    let r1 = ((m1_0 * x0 + m1_1 * x1) + (m1_2 * x2 + m1_3 * x3)) + ((m1_4 * x4 + m1_5 * u0) + (m1_6 * v0 + m1_7 * I0));
+    let r2 = ((m2_0 * x0 + m2_1 * x1) + (m2_2 * p2 + m2_3 * p3)) + ((m2_4 * p4 + m2_5 * u0) + m2_6 * v0);
+    let r3 = ((m3_0 * x0 + m3_1 * x1) + (m3_2 * p2 + m3_3 * p3)) + ((m3_4 * p4 + m3_5 * u0) + m3_6 * v0);
+    let r4 = ((m4_0 * x0 + m4_1 * x1) + (m4_2 * p2 + m4_3 * p3)) + ((m4_4 * p4 + m4_5 * u0) + m4_6 * v0);
     if (S0 != 0 || D0 != 0) {
       r0 += c[128] * S0 + c[129] * D0;
       r1 += c[130] * S0 + c[131] * D0;
-      r2 += c[132] * S0 + c[133] * D0;
-      r3 += c[134] * S0 + c[135] * D0;
-      r4 += c[136] * S0 + c[137] * D0;
     }
-    let a = a0 * r0 + a1 * r1 + a2 * r2 + a3 * r3 + a4 * r4 + a5 * u + a6 * v + a7;
-    let b = b0 * r0 + b1 * r1 + b2 * r2 + b3 * r3 + b4 * r4 + b5 * u + b6 * v + b7;
+    let a = ((a0 * r0 + a1 * r1) + (a2 * r2 + a3 * r3)) + ((a4 * r4 + a5 * u) + (a6 * v + a7));
+    let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      evaluate(c, t, 138, vs, s, 14); evaluate(c, t, 138, vd, s, 16);
-      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[15] + s[17]));
+      s[19] = vs; s[20] = vd;
+      evaluate(c, t, 138, s, 19, 23); evaluate(c, t, 138, s, 20, 25);
+      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[24] + s[26]));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if (a > 0 || b > 0) {
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
+    else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
       I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
@@ -2699,21 +2869,24 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 138, 8, 17, a, b, I, s, 14); I = s[14]; }
+        if (lambda != 0) { bent(c, t, 138, 8, 17, a, b, I, s, 23); I = s[23]; }
       }
     }
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct(c, t, 138, 8, 17, 72, s, 5, a, b, I);
-      I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
+      conduct_square(c, t, 138, 8, 17, 72, s, 14, a, b, I);
+      I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
     I += J;
-    x0 = n0_0 * r0 + n0_1 * r1 + n0_2 * r2 + n0_3 * r3 + n0_4 * r4 + n0_5 * u + n0_6 * v + n0_7 + n0_8 * I;
-    x1 = n1_0 * r0 + n1_1 * r1 + n1_2 * r2 + n1_3 * r3 + n1_4 * r4 + n1_5 * u + n1_6 * v + n1_7 + n1_8 * I;
-    x2 = n2_0 * r0 + n2_1 * r1 + n2_2 * r2 + n2_3 * r3 + n2_4 * r4 + n2_5 * u + n2_6 * v + n2_7 + n2_8 * I;
-    x3 = n3_0 * r0 + n3_1 * r1 + n3_2 * r2 + n3_3 * r3 + n3_4 * r4 + n3_5 * u + n3_6 * v + n3_7 + n3_8 * I;
-    x4 = n4_0 * r0 + n4_1 * r1 + n4_2 * r2 + n4_3 * r3 + n4_4 * r4 + n4_5 * u + n4_6 * v + n4_7 + n4_8 * I;
+    g2 = f2; f2 = e2; e2 = x2;
+    g3 = f3; f3 = e3; e3 = x3;
+    g4 = f4; f4 = e4; e4 = x4;
+    x0 = ((n0_0 * r0 + n0_1 * r1) + (n0_2 * r2 + n0_3 * r3)) + ((n0_4 * r4 + n0_5 * u) + (n0_6 * v + n0_7)) + n0_8 * I;
+    x1 = ((n1_0 * r0 + n1_1 * r1) + (n1_2 * r2 + n1_3 * r3)) + ((n1_4 * r4 + n1_5 * u) + (n1_6 * v + n1_7)) + n1_8 * I;
+    x2 = ((n2_0 * r0 + n2_1 * r1) + (n2_2 * r2 + n2_3 * r3)) + ((n2_4 * r4 + n2_5 * u) + (n2_6 * v + n2_7)) + n2_8 * I;
+    x3 = ((n3_0 * r0 + n3_1 * r1) + (n3_2 * r2 + n3_3 * r3)) + ((n3_4 * r4 + n3_5 * u) + (n3_6 * v + n3_7)) + n3_8 * I;
+    x4 = ((n4_0 * r0 + n4_1 * r1) + (n4_2 * r2 + n4_3 * r3)) + ((n4_4 * r4 + n4_5 * u) + (n4_6 * v + n4_7)) + n4_8 * I;
     let y = 0;
     if (noisy) {
       x0 += w[i * 9 + 2];
@@ -2731,7 +2904,11 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
       x4 += c[84] * S + c[85] * D;
       y += c[86] * S + c[87] * D;
     }
-    output[i] = y + y0 * x0 + y1 * x1 + y2 * x2 + y3 * x3 + y4 * x4 + y5 * u + y6 * v + y7 + y8 * I;
+    output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[43] = qs; s[44] = qd; s[19] = vs; s[20] = vd; s[45] = y8;
+      markKink(c, t, 138, 8, 17, e, i, s, 14);
+    }
     u0 = u; v0 = v;
     E0 = I0; I0 = I; S0 = S; D0 = D;
   }
@@ -2740,29 +2917,38 @@ function square5_0(c: Float64Array, t: Float64Array, w: Float64Array, s: Float64
   s[2] = x2;
   s[3] = x3;
   s[4] = x4;
-  s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
-  if (to > from) { s[10] = vs; s[11] = vd; }
+  s[5] = e2; s[8] = f2; s[11] = g2;
+  s[6] = e3; s[9] = f3; s[12] = g3;
+  s[7] = e4; s[10] = f4; s[13] = g4;
+  s[14] = u0; s[15] = v0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
-/** By numbers of trapezoidal and of stiff states, "2 1". */
+export const SQUARE_CONDUCTOR: Conductor = conduct_square;
+
+/** By the key of a shape. */
 export const SQUARE_KERNELS: Readonly<Record<string, Kernel>> = {
-  '0 0': square0_0,
-  '0 1': square0_1,
-  '0 2': square0_2,
-  '0 3': square0_3,
-  '1 0': square1_0,
-  '1 1': square1_1,
-  '1 2': square1_2,
-  '1 3': square1_3,
-  '2 0': square2_0,
-  '2 1': square2_1,
-  '2 2': square2_2,
-  '2 3': square2_3,
-  '3 0': square3_0,
-  '3 1': square3_1,
-  '3 2': square3_2,
-  '3 3': square3_3,
-  '4 0': square4_0,
-  '5 0': square5_0,
+  '0  d': square0__d,
+  '1  d': square1__d,
+  '2  d': square2__d,
+  '3  d': square3__d,
+  '4  d': square4__d,
+  '0 d d': square0_d_d,
+  '1 d d': square1_d_d,
+  '0 dg d': square0_dg_d,
+  '1 dg d': square1_dg_d,
+  '2 dg d': square2_dg_d,
+  '0 gm d': square0_gm_d,
+  '1 gm d': square1_gm_d,
+  '0  x': square0__x,
+  '1  x': square1__x,
+  '2  x': square2__x,
+  '3  x': square3__x,
+  '0 xx x': square0_xx_x,
+  '1 xx x': square1_xx_x,
+  '2 xx x': square2_xx_x,
+  '3 xx x': square3_xx_x,
+  '1 xxx x': square1_xxx_x,
+  '2 xxx x': square2_xxx_x,
 };

@@ -1,5 +1,7 @@
 import { expect, test } from 'vitest';
+import { createKinks } from '../../../model/cell/kernels/kinks.ts';
 import type { FilterSet } from '../../../model/chain/halfband.ts';
+import { createSoftener, soften } from '../../../model/chain/kinks.ts';
 import { createOversampler, lower, oversamplingDelay, raise } from '../../../model/chain/oversample.ts';
 
 const SETS: FilterSet[] = ['lowLatency', 'linearPhase'];
@@ -8,12 +10,17 @@ const FACTORS = [2, 4, 8, 16];
 /** Impulse response of the way up (at the upper rate) and of the way up and down. */
 function impulse(factor: number, filters: FilterSet, length: number) {
   const oversampler = createOversampler(factor, filters, 128);
+  const softener = createSoftener();
+  const kinks = createKinks(1);
   const upper: number[] = [];
   const lowerRate: number[] = [];
   for (let block = 0; block * 128 < length; block++) {
     oversampler.buffers[0].fill(0);
     if (block === 0) oversampler.buffers[0][0] = 1;
-    upper.push(...raise(oversampler, 128));
+    const top = raise(oversampler, 128);
+    upper.push(...top);
+    // Between the two ways the kinks are softened, which here is a delay.
+    if (factor > 1) soften(softener, top, kinks, 128 * factor);
     lowerRate.push(...lower(oversampler, 128));
   }
   return { upper, lowerRate };

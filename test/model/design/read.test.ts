@@ -320,3 +320,16 @@ describe('files that are no design', () => {
     );
   });
 });
+
+test('a pair of devices may stand in place of the device, which is then the left one', () => {
+  const { device, ...rest } = defaultVariant();
+  const pair = [device, { ...device, idssA: 0.004 }];
+  const result = checkDesign({ fettle: 1, variants: [{ ...rest, devices: pair }] });
+  if ('faults' in result) throw new Error(result.faults.map((fault) => fault.sentence).join('; '));
+  expect(result.design.variants[0].device).toEqual(device);
+  expect(result.design.variants[0].devices).toEqual(pair);
+  const none = checkDesign({ fettle: 1, variants: [rest] });
+  expect('faults' in none && none.faults.map((fault) => fault.path)).toEqual(['variants[0].device']);
+  const faulty = checkDesign({ fettle: 1, variants: [{ ...rest, devices: [{ ...device, idssA: -1 }, device] }] });
+  expect('faults' in faulty && faulty.faults.map((fault) => fault.path)).toEqual(['variants[0].devices[0].idssA']);
+});

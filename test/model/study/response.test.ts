@@ -7,7 +7,7 @@ import type { Cell, Device } from '../../../model/design/types.ts';
 import { type ResponsePoint, smallSignal, type Transfer } from '../../../model/study/response.ts';
 import { measureTone } from '../../../model/study/tone.ts';
 import { BOARD } from '../../support/board.ts';
-import { designOf, REAL_CELL, REAL_DEVICE, variantOf } from '../../support/designs.ts';
+import { CELL_A_DEVICE, designOf, REAL_CELL, REAL_DEVICE, variantOf } from '../../support/designs.ts';
 
 type Pair = readonly [number, number];
 interface Point extends Record<'audio' | 'control' | 'gate' | 'inputOhm', Pair> {
@@ -172,4 +172,12 @@ test('unequal gate capacitances, 10 and 5 pF with 1 MΩ, 1 MΩ, at 10 kHz: k is 
 
 test('a frequency that cannot be is refused by name', () => {
   expect(() => read({}, [-1])).toThrow('frequenciesHz is -1; expected 0 to 1000000000 Hz');
+});
+
+test('a capacitance that falls with reverse voltage moves the control’s pole: C0/√(1 − V/φ) at an abrupt junction', () => {
+  const device = { ...CELL_A_DEVICE, gateSourceF: 8e-12, gateDrainF: 4e-12, barrierV: 0.8 };
+  const design = (grading: number) =>
+    designOf(variantOf({ seriesOhm: 1, controlOhm: 1e7 }, { ...device, grading }, { source: 'fixed', controlV: -2.4 }));
+  const pole = (grading: number) => smallSignal(design(grading), 0, { referenceHz: 1 }).gateBand.highHz as number;
+  expect(pole(0.5) / pole(0)).toBeCloseTo(Math.sqrt(1 + 2.4 / 0.8), 3);
 });

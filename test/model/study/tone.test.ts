@@ -154,3 +154,23 @@ test('λ 0.05 leaves every harmonic under −200 dB for the square law at k = ½
   const deep = (lambdaPerV: number) => measureTone(design(lambdaPerV), 0, { toneV: 1, controlV: -1.4 }).harmonics[2].db as number;
   expect(Math.abs(deep(0.05) - deep(0))).toBeGreaterThan(0.01);
 });
+
+test('a reading at the output goes through the amplifier: a sine cut at a quarter of its height has the harmonics of the cut sine', () => {
+  const variant = {
+    ...variantOf({ seriesOhm: 1, loadOhm: 1e9 }, {}, { source: 'fixed', controlV: -30 } as const),
+    output: { gainDb: 40, gainBandwidthHz: null, slewVPerSec: null, swingV: 25 },
+  };
+  const reading = measureTone(designOf(variant), 0, { toneV: 1, at: 'output' });
+  // Fourier series of A·cos cut at c = A/4: b1 = 2A/π·(asin(x) + x·√(1 − x²)), x = c/A; third 4A/(3π)·… by numerical integration here.
+  const size = 100000;
+  const cut = Array.from({ length: size }, (_, i) => Math.max(-25, Math.min(25, 100 * Math.cos((2 * Math.PI * i) / size))));
+  const harmonic = (n: number) => Math.abs((2 / size) * cut.reduce((sum, v, i) => sum + v * Math.cos((2 * Math.PI * n * i) / size), 0));
+  for (const n of [1, 3, 5]) expect(reading.harmonics[n - 1].amplitudeV / harmonic(n)).toBeCloseTo(1, 4);
+  expect(reading.fundamentalV / ((200 / Math.PI) * (Math.asin(0.25) + 0.25 * Math.sqrt(1 - 0.0625)))).toBeCloseTo(1, 4);
+});
+
+test('a gain-bandwidth product lowers the gain as one pole does: 40 dB from 1 MHz is 3.01 dB down at 10 kHz', () => {
+  const base = variantOf({ seriesOhm: 1, loadOhm: 1e9 }, {}, { source: 'fixed', controlV: -30 } as const);
+  const variant = { ...base, output: { gainDb: 40, gainBandwidthHz: 1e6, slewVPerSec: null, swingV: null } };
+  expect(measureTone(designOf(variant), 0, { toneV: 0.01, toneHz: 10000, at: 'output' }).gainDb).toBeCloseTo(40 - 3.0103, 3);
+});

@@ -4,9 +4,13 @@ import type { Design } from '../../../model/design/types.ts';
 import workletUrl from '../../../worklet/fettle.worklet.ts?worker&url';
 import type { CellOptions, FromCell } from '../../../worklet/protocol.ts';
 import { CELL_PROCESSOR } from '../../../worklet/protocol.ts';
+import { renderNamed, sha256 } from '../../support/sameRenders.ts';
+import RenderWorker from './render.worker.ts?worker';
 
 declare global {
   interface Window {
+    /** SHA-256 of one of the named renders, made on the page's own thread or in a worker. */
+    hashOf(name: string, where: 'page' | 'worker'): Promise<string>;
     /** The samples that leave the cell's processor, as the bytes of Float32 in base64, one text for each channel. */
     playOffline(design: Design, rateHz: number, channels: readonly string[]): Promise<string[]>;
   }
@@ -40,6 +44,16 @@ window.playOffline = async (design, rateHz, channels) => {
   source.start();
   const rendered = await context.startRendering();
   return lines.map((_, c) => toText(rendered.getChannelData(c)));
+};
+
+window.hashOf = async (name, where) => {
+  if (where === 'page') return sha256(renderNamed(name));
+  const worker = new RenderWorker();
+  return new Promise((resolve, reject) => {
+    worker.onmessage = ({ data }: MessageEvent<string>) => resolve(data);
+    worker.onerror = (event) => reject(new Error(event.message));
+    worker.postMessage(name);
+  });
 };
 
 function toSamples(text: string): Float32Array<ArrayBuffer> {

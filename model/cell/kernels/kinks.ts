@@ -1,0 +1,63 @@
+/**
+ * Marks where the output bends: an end of the channel passes VGS(off) between two samples, and its term ½F″·v² begins or ends.
+ *
+ * Law      near the crossing the overdrive e that the end would have without its own term runs straight; with it v + K·v² = e while v > 0, where K is
+ *          what the circuit makes of the term, and the output gains J/2·D(τ; κ) with the slope e′ of e, κ = 2K·e′, J = F″·e′² by the output's
+ *          weight. D is τ² for small κ; for large κ it is nearly a corner. chain/kinks.ts has D and what it does with it
+ * Error    e is taken to be straight over one step, and F″ to be that at VGS(off)
+ */
+import { evaluate } from './channel.ts';
+import * as L from './layout.ts';
+
+/** A list: the count; then for each kink the sample after the crossing, 1 where the end comes on and −1 where it goes off, τ of the sample before (or after) it, κ, J/2. */
+export const KINK_WIDTH = 5;
+
+export function createKinks(most: number): Float64Array {
+  return new Float64Array(1 + KINK_WIDTH * most);
+}
+
+/** Marks sample `i` from the overdrives before and at it, which stand in the slots of `s` from `n` on with the output's weight. */
+export function markKink(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  aI: number,
+  bI: number,
+  e: Float64Array,
+  i: number,
+  s: Float64Array,
+  n: number,
+): void {
+  evaluate(c, t, device, s, n + L.OVERDRIVE_S, n + L.TERM_S);
+  evaluate(c, t, device, s, n + L.OVERDRIVE_D, n + L.TERM_D);
+  const half = c[device + L.LAW] === L.LAW_NUMBER.square ? c[device + L.SCALE] : 0.25 * c[device + L.SLOPE] * c[device + L.INVERSE_WIDTH];
+  const perA = s[n + L.PER_A];
+  const qs = s[n + L.BEFORE_S];
+  const qd = s[n + L.BEFORE_D];
+  const vs = s[n + L.OVERDRIVE_S];
+  const vd = s[n + L.OVERDRIVE_D];
+  if (vs > 0 !== qs > 0) {
+    const own = half / (1 + c[bI] * s[n + L.TERM_D + 1]);
+    add(e, i, qs, vs, -c[aI] * own, perA * own);
+  }
+  if (vd > 0 !== qd > 0) {
+    const own = half / (1 - c[aI] * s[n + L.TERM_S + 1]);
+    add(e, i, qd, vd, c[bI] * own, -perA * own);
+  }
+}
+
+function add(e: Float64Array, i: number, before: number, after: number, bend: number, amount: number): void {
+  const at = 1 + KINK_WIDTH * e[0];
+  if (at + KINK_WIDTH > e.length) return;
+  const comesOn = after > 0;
+  const on = Math.max(before, after);
+  const off = Math.min(before, after);
+  const free = on + bend * on * on;
+  const slope = free - off;
+  e[at] = i;
+  e[at + 1] = comesOn ? 1 : -1;
+  e[at + 2] = -off / slope;
+  e[at + 3] = 2 * bend * slope;
+  e[at + 4] = amount * slope * slope;
+  e[0] += 1;
+}
