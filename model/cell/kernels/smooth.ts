@@ -10,7 +10,7 @@
 import { evaluate, searched } from './channel.ts';
 import type { Conductor, Kernel } from './kernel.ts';
 import { addGraded, keepCharges } from './graded.ts';
-import { searchPorts } from './ports.ts';
+import { currents, searchPorts } from './ports.ts';
 import { exp } from '../../device/math.ts';
 
 function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {
@@ -18,7 +18,7 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
   const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
   const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
   const rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;
-  const enough = 0.1 * c[device + 18] + 1e-15 * (Math.abs(a) + Math.abs(b));
+  const enough = 0.1 * c[device + 18], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
   const inverseWidth = c[device + 7];
@@ -82,6 +82,11 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) keepCharges(c, device, s, n);
+      return;
+    }
+    if (Math.abs(stepS) < rounding && Math.abs(stepD) < rounding) {
+      s[n + 5] = vs; s[n + 6] = vd;
+      currents(c, t, device, s, n);
       return;
     }
   }
