@@ -22,6 +22,8 @@ const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
 /** Below this many nVT, and where less than this flows above it, a junction carries its reverse current and no more. */
 const OFF_BELOW = -10;
 const LEFT_OUT_A = 1e-15;
+/** How far above that the search of ports.ts begins. */
+const KNEE_NVT = 20;
 
 const KERNELS = { square: SQUARE_KERNELS, gradual: GRADUAL_KERNELS, smooth: SMOOTH_KERNELS };
 
@@ -42,6 +44,7 @@ const CLAMP_A = 6;
 const CLAMP_NVT_V = 7;
 export const DEVICE_VALUES = 8;
 const NO_NOISE = new Float64Array(0);
+const MOST_RATIO = 1.25;
 
 /** Newton's last step, V, and the current that it may leave, A, half the channel's curvature times its square. In readings rounding only. */
 const PLAYING_ENOUGH_V = 1e-6;
@@ -175,7 +178,7 @@ export function loadValues(cell: Cell, values: Float64Array): boolean {
 
 /**
  * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients at both ends are exact, between them they follow a
- * straight line. False, and nothing changes, when the network would be singular.
+ * straight line, unless values are too far apart for that. False, and nothing changes, when the network would be singular.
  */
 export function aimAt(cell: Cell, values: Float64Array, samples: number): boolean {
   const { reduction, stepSec, coefficients, target, increment } = cell;
@@ -187,9 +190,26 @@ export function aimAt(cell: Cell, values: Float64Array, samples: number): boolea
     discretise(reduction, stepSec);
     return false;
   }
+  const near = areNear(cell, values);
   for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
   packStep(cell);
+  if (!near) arrive(cell);
   for (let i = 0; i < target.length; i++) increment[i] = target[i] === coefficients[i] ? 0 : (target[i] - coefficients[i]) / samples;
+  return true;
+}
+
+/**
+ * Whether no part's value changes by more than a quarter. A straight line between the coefficients of circuits further apart leads through what is no
+ * circuit, and grows without limit: a move over decades steps there, in its first slices, and is heard as the click that it would be on a board.
+ */
+function areNear(cell: Cell, values: Float64Array): boolean {
+  const { elements } = cell.numbers.plan;
+  for (let i = 0; i < elements.length; i++) {
+    const { kind } = elements[i];
+    if (kind !== 'conductance' && kind !== 'capacitor' && kind !== 'inductor') continue;
+    const smaller = Math.min(values[i], cell.values[i]);
+    if (Math.max(values[i], cell.values[i]) > MOST_RATIO * smaller) return false;
+  }
   return true;
 }
 
@@ -327,6 +347,10 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   c[at + L.JUNCTION_ON_V] = conductsFrom(reverseA, nVt) - offV;
   c[at + L.CLAMP_ON_V] = conductsFrom(clampA, clampNVt) - offV;
   c[at + L.ON_V] = Math.min(c[at + L.JUNCTION_ON_V], c[at + L.CLAMP_ON_V]);
+  const clampFirst = c[at + L.CLAMP_ON_V] < c[at + L.JUNCTION_ON_V];
+  c[at + L.KNEE_D] = c[at + L.JUNCTION_ON_V] + KNEE_NVT * nVt;
+  c[at + L.KNEE_S] = clampFirst ? c[at + L.CLAMP_ON_V] + KNEE_NVT * clampNVt : c[at + L.KNEE_D];
+  c[at + L.FIRST_INVERSE_NVT] = 1 / (clampFirst ? clampNVt : nVt);
   c[at + L.REVERSE_A] = reverseA;
   c[at + L.INVERSE_NVT] = 1 / nVt;
   c[at + L.CLAMP_A] = clampA;

@@ -55,7 +55,14 @@ export const CLAMP_A = 16;
 export const CLAMP_INVERSE_NVT = 17;
 /** Step at which Newton's method stops, V. */
 export const ENOUGH_V = 18;
-export const DEVICE_WIDTH = 19;
+/**
+ * The overdrive at which an end's junction (or the clamp, where it conducts first) carries 0.5 μA, or 2e4 times its reverse current where that is more,
+ * V: no step of ports.ts goes past it at once. And 1/nVT of what conducts first at the source end.
+ */
+export const KNEE_S = 19;
+export const KNEE_D = 20;
+export const FIRST_INVERSE_NVT = 21;
+export const DEVICE_WIDTH = 22;
 
 export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 

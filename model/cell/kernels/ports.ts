@@ -4,7 +4,8 @@
  * Law      with overdrives s and d of the two ends, channel current I = F(s) − F(d) and junction currents S, D above the reverse current,
  *          s = a + aI·I + aS·S + aD·D  and  d = b + bI·I + bS·S + bD·D
  * Scheme   Newton on (s, d) with exact derivatives and steps into a junction shortened to its logarithm; if that has not settled in 40 steps,
- *          nested bisection, which always does: for one FET and 0 ≤ k ≤ 1 the equations are monotonic
+ *          nested bisection, which always does for one FET and 0 ≤ k ≤ 1, where the equations are monotonic; where they are not (γ < 0), Newton along a
+ *          path from where nothing conducts, in steps as short as it takes
  * Error    Newton stops at a step under 1e-11 V, where the next would be under 1e-20 V
  * Source   damping of the exponential: Nagel, UCB/ERL M520 (1975), from memory
  */
@@ -36,11 +37,8 @@ export function conduct(
 ): void {
   const freeS = a + c[aI] * freeA;
   const freeD = b + c[bI] * freeA;
-  const clampFirst = c[device + L.CLAMP_ON_V] < c[device + L.JUNCTION_ON_V];
-  const kneeS = clampFirst ? kneeV(c, device, L.CLAMP_ON_V, L.CLAMP_INVERSE_NVT) : kneeV(c, device, L.JUNCTION_ON_V, L.INVERSE_NVT);
-  const kneeD = kneeV(c, device, L.JUNCTION_ON_V, L.INVERSE_NVT);
-  s[n + L.OVERDRIVE_S] = Math.min(freeS, s[n + L.OVERDRIVE_S] > c[device + L.ON_V] ? s[n + L.OVERDRIVE_S] : kneeS);
-  s[n + L.OVERDRIVE_D] = Math.min(freeD, s[n + L.OVERDRIVE_D] > c[device + L.ON_V] ? s[n + L.OVERDRIVE_D] : kneeD);
+  s[n + L.OVERDRIVE_S] = Math.min(freeS, s[n + L.OVERDRIVE_S] > c[device + L.ON_V] ? s[n + L.OVERDRIVE_S] : c[device + L.KNEE_S]);
+  s[n + L.OVERDRIVE_D] = Math.min(freeD, s[n + L.OVERDRIVE_D] > c[device + L.ON_V] ? s[n + L.OVERDRIVE_D] : c[device + L.KNEE_D]);
   for (let step = 0; step < NEWTON_STEPS; step++) {
     newtonStep(c, t, device, aI, bI, junction, s, n, a, b);
     if (s[n + L.MOVED_V] < SETTLED_V) {
@@ -48,8 +46,52 @@ export function conduct(
       return;
     }
   }
-  bisect(c, t, device, aI, bI, junction, s, n, a, b);
+  s[n + L.FALLBACKS] += 1;
+  const isMonotonic = c[aI] <= 0 && c[bI] >= 0;
+  if (isMonotonic || !walk(c, t, device, aI, bI, junction, s, n, a, b)) bisect(c, t, device, aI, bI, junction, s, n, a, b);
   currents(c, t, device, s, n);
+}
+
+const SHORTEST_STRIDE = 1e-7;
+
+/** Follows the solution from where nothing conducts to (a, b). False where the path turns back. */
+function walk(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  aI: number,
+  bI: number,
+  junction: number,
+  s: Float64Array,
+  n: number,
+  a: number,
+  b: number,
+): boolean {
+  const fromS = Math.min(a, 0);
+  const fromD = Math.min(b, 0);
+  let reachedS = fromS;
+  let reachedD = fromD;
+  let done = 0;
+  let stride = 1 / 16;
+  while (done < 1) {
+    const next = Math.min(1, done + stride);
+    s[n + L.OVERDRIVE_S] = reachedS;
+    s[n + L.OVERDRIVE_D] = reachedD;
+    for (let step = 0; step < NEWTON_STEPS; step++) {
+      newtonStep(c, t, device, aI, bI, junction, s, n, fromS + next * (a - fromS), fromD + next * (b - fromD));
+      if (s[n + L.MOVED_V] < SETTLED_V) break;
+    }
+    if (s[n + L.MOVED_V] < SETTLED_V) {
+      done = next;
+      stride *= 2;
+      reachedS = s[n + L.OVERDRIVE_S];
+      reachedD = s[n + L.OVERDRIVE_D];
+    } else {
+      stride /= 4;
+      if (stride < SHORTEST_STRIDE) return false;
+    }
+  }
+  return true;
 }
 
 /** One damped step of both overdrives; the larger change, less rounding, V, goes into a slot (Infinity when it is not a number). */
@@ -93,24 +135,14 @@ function newtonStep(
   const ds = -c[bI] * fs - bS * slopeS;
   const dd = 1 + c[bI] * fd - bD * D * rate;
   const determinant = ss * dd - sd * ds;
-  const clampFirst = c[device + L.CLAMP_ON_V] < c[device + L.JUNCTION_ON_V];
-  const onD = c[device + L.JUNCTION_ON_V];
-  const kneeD = kneeV(c, device, L.JUNCTION_ON_V, L.INVERSE_NVT);
-  const rateS = clampFirst ? c[device + L.CLAMP_INVERSE_NVT] : rate;
-  const kneeS = clampFirst ? kneeV(c, device, L.CLAMP_ON_V, L.CLAMP_INVERSE_NVT) : kneeD;
-  const stepS = shortened((sd * rd - dd * rs) / determinant, vs, kneeS, c[device + L.ON_V], rateS);
-  const stepD = shortened((ds * rs - ss * rd) / determinant, vd, kneeD, onD, rate);
+  const stepS = shortened((sd * rd - dd * rs) / determinant, vs, c[device + L.KNEE_S], c[device + L.ON_V], c[device + L.FIRST_INVERSE_NVT]);
+  const stepD = shortened((ds * rs - ss * rd) / determinant, vd, c[device + L.KNEE_D], c[device + L.JUNCTION_ON_V], rate);
   const change = Math.max(Math.abs(stepS), Math.abs(stepD));
   const isNumber = change < Number.POSITIVE_INFINITY;
   s[n + L.MOVED_V] = isNumber ? change - ROUNDING * (Math.abs(a) + Math.abs(b)) : Number.POSITIVE_INFINITY;
   if (!isNumber) return;
   s[n + L.OVERDRIVE_S] = vs + stepS;
   s[n + L.OVERDRIVE_D] = vd + stepD;
-}
-
-/** The overdrive at which a junction or the clamp carries 0.5 μA, or 2e4 times its reverse current where that is more, V: no step goes past it at once. */
-function kneeV(c: Float64Array, device: number, on: number, rate: number): number {
-  return c[device + on] + 20 / c[device + rate];
 }
 
 /** A step up into conduction is cut to its logarithm, so that the exponential cannot run away. */
@@ -165,8 +197,8 @@ function residual(
   );
 }
 
-/** Nested bisection between brackets that are widened until they hold the solution. */
-function bisect(
+/** Nested bisection between brackets that are widened until they hold the solution; writes the overdrives. For `conduct`, and for the test of it. */
+export function bisect(
   c: Float64Array,
   t: Float64Array,
   device: number,
@@ -178,10 +210,11 @@ function bisect(
   a: number,
   b: number,
 ): void {
+  const farthest = farthestV(a, b);
   let low = -1;
   let high = 1;
-  while (outerResidual(c, t, device, aI, bI, junction, a, b, low) > 0 && low > -1e12) low *= 2;
-  while (outerResidual(c, t, device, aI, bI, junction, a, b, high) < 0 && high < 1e12) high *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, a, b, low) > 0 && low > -farthest) low *= 2;
+  while (outerResidual(c, t, device, aI, bI, junction, a, b, high) < 0 && high < farthest) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
@@ -189,8 +222,12 @@ function bisect(
     else low = middle;
   }
   s[n + L.OVERDRIVE_S] = (low + high) / 2;
-  s[n + L.OVERDRIVE_D] = innerOverdrive(c, t, device, bI, junction, b, (low + high) / 2);
-  s[n + L.FALLBACKS] += 1;
+  s[n + L.OVERDRIVE_D] = innerOverdrive(c, t, device, bI, junction, a, b, (low + high) / 2);
+}
+
+/** Junctions and channel only draw from what stands there without them. */
+function farthestV(a: number, b: number): number {
+  return 4 * (1 + Math.abs(a) + Math.abs(b));
 }
 
 /** The source end's equation, with the drain end solved for it: rises with `vs`. */
@@ -205,18 +242,28 @@ function outerResidual(
   b: number,
   vs: number,
 ): number {
-  const vd = innerOverdrive(c, t, device, bI, junction, b, vs);
+  const vd = innerOverdrive(c, t, device, bI, junction, a, b, vs);
   return residual(vs, a, c[aI], c[junction + L.BY_S], c[junction + L.BY_D], c, t, device, vs, vd);
 }
 
 /** The drain end's overdrive that satisfies its own equation for a given source end. */
-function innerOverdrive(c: Float64Array, t: Float64Array, device: number, bI: number, junction: number, b: number, vs: number): number {
+function innerOverdrive(
+  c: Float64Array,
+  t: Float64Array,
+  device: number,
+  bI: number,
+  junction: number,
+  a: number,
+  b: number,
+  vs: number,
+): number {
   const bS = c[junction + L.JUNCTION_WIDTH + L.BY_S];
   const bD = c[junction + L.JUNCTION_WIDTH + L.BY_D];
+  const farthest = farthestV(a, b);
   let low = -1;
   let high = 1;
-  while (residual(low, b, c[bI], bS, bD, c, t, device, vs, low) > 0 && low > -1e12) low *= 2;
-  while (residual(high, b, c[bI], bS, bD, c, t, device, vs, high) < 0 && high < 1e12) high *= 2;
+  while (residual(low, b, c[bI], bS, bD, c, t, device, vs, low) > 0 && low > -farthest) low *= 2;
+  while (residual(high, b, c[bI], bS, bD, c, t, device, vs, high) < 0 && high < farthest) high *= 2;
   for (let step = 0; step < 200; step++) {
     const middle = (low + high) / 2;
     if (middle === low || middle === high) break;
