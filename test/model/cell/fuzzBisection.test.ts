@@ -9,7 +9,7 @@ import { Dice } from '../../fuzz/dice.ts';
 import { randomDesign } from '../../fuzz/randomDesign.ts';
 import { Witness } from '../../fuzz/witness.ts';
 
-const CIRCUITS = 200;
+const CIRCUITS = 100;
 const POINTS = 10;
 
 /** Passive random cells, with where ports.ts and channel.ts find their numbers. */
