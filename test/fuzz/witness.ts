@@ -267,8 +267,6 @@ export class Witness {
     const now = new Float64Array(2 * n);
     for (let k = 0; k < n; k++) now[2 * k] = cell.state[k];
     const base = this.floor();
-    const letters = cell.numbers.plan.voltages.states;
-    const ports = [0, 1].reduce((most, port) => Math.max(most, combine(new Float64Array(2), step.ports, port * width, width, known)), 0);
     const sizes = Float64Array.from(known, (value, i) => (i >= 2 * at.newJ && i < 2 * at.one && i % 2 === 0 ? gross : value));
     const grossKnown = Array.from({ length: n }, (_, k) => combine(new Float64Array(2), step.right, k * width, width, sizes));
     return Array.from({ length: n }, (_, k) => {
@@ -278,16 +276,12 @@ export class Witness {
       const rounded = grossKnown.reduce((total, v, c) => total + step.spread[k * n + c] * v, 0);
       const flow = new Float64Array(2);
       combine(flow, this.network.rows, k * this.network.width, this.network.width, this.inputs());
-      // A state that is a port voltage follows from the overdrives, and carries the rounding of what adds up to them into
-      // every row that it has a weight in.
-      let followed = 0;
-      for (let j = 0; j < n; j++) if (letters[j] !== 'x') followed += Math.abs(step.left[2 * (k * n + j)]);
       const isCurrent = cell.numbers.plan.elements[cell.numbers.plan.states[k].element].kind === 'capacitor';
       return {
         where: isCurrent ? 'capacitor' : 'inductor',
         value: sum[0],
         currents: Math.max(currents, Math.abs(flow[0])),
-        floor: base + ROUNDING * (rounded + followed * ports),
+        floor: base + ROUNDING * rounded,
       };
     });
   }

@@ -18,8 +18,8 @@ import type { Law } from '../../design/types.ts';
 import * as L from './layout.ts';
 
 /**
- * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of, and the same for the output:
- * `g` gate to source, `m` gate to drain, `d` drain to source, which follow from the overdrives, or `x` anything else, which takes a row of its own.
+ * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of: `g` gate to source, `m` gate to
+ * drain, which follow from the overdrives, or `x` anything else, which takes a row of its own; and for the output `d` drain to source or `x`.
  */
 export interface Shape {
   readonly trapezoidal: number;
@@ -30,8 +30,8 @@ export interface Shape {
 /** `x` serves for every letter, and looped.ts for every other shape. */
 export const SHAPES: readonly Shape[] = [
   ...written([0, 1, 2, 3, 4], '', 'd'),
-  ...written([0, 1], 'd', 'd'),
-  ...written([0, 1, 2], 'dg', 'd'),
+  ...written([0, 1], 'x', 'd'),
+  ...written([0, 1, 2], 'xg', 'd'),
   ...written([0, 1], 'gm', 'd'),
   ...written([0, 1, 2, 3], '', 'x'),
   ...written([0, 1, 2, 3], 'xx', 'x'),

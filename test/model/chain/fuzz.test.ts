@@ -4,7 +4,7 @@ import { emptyChainReport, type Process, runChainSeed } from '../../fuzz/chainCa
 import { CHAIN_SEEDS } from '../../fuzz/seeds.ts';
 
 const SLICES = 6;
-const SESSIONS_A_SLICE = 20;
+const SESSIONS_A_SLICE = 14;
 
 test.each(Array.from({ length: SLICES }, (_, slice) => slice))(
   'slice %i of random sessions: finite, bounded, inputs left alone, unusable ones counted, at rest after a second of silence',
