@@ -577,3 +577,33 @@ describe('designs', () => {
     expect(bench.design.value).toBe(before);
   });
 });
+
+describe('the load', () => {
+  const report = (frame: number, loadFraction: number): Report => ({
+    ...{ type: 'report', slot: 0, frame, input: new Float32Array(100), output: new Float32Array(100), loadFraction },
+    ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, inputPeakV: 0, drainPeakV: 0 },
+    ...{ feedthroughPeakV: 0, faults: 0, slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5) },
+    ...{ latencySamples: 48, ceilingFrames: 0, lagMs: 0, controlV: -1, gateSourceV: -1 },
+  });
+
+  test('that lasts and leaves little of the time is said once, and again after it was low', async () => {
+    const sound = await startSound();
+    let frame = 0;
+    const play = (seconds: number, load: number) => {
+      for (let n = 0; n < 30 * seconds; n++) {
+        sound.events.message(report(frame, load));
+        frame += 1600;
+      }
+    };
+    play(2, 0.95);
+    expect(sentences()).toEqual([]);
+    play(20, 0.95);
+    expect(sentences()).toEqual(['The 3 variants take 95 % of the time that this machine has for sound; there may be gaps.']);
+    bench.dismiss(bench.notes.value[0].id);
+    play(20, 0.95);
+    expect(sentences()).toEqual([]);
+    play(20, 0.2);
+    play(30, 0.95);
+    expect(sentences()).toHaveLength(1);
+  });
+});
