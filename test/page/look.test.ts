@@ -190,7 +190,41 @@ describe('a value where it stands', () => {
   });
 });
 
+describe('the rate of the LFO', () => {
+  test('is tapped by key and by pointer', async () => {
+    const { page, close } = await openSheet(1280);
+    const tap = page.getByRole('button', { name: 'Tap the rate of the LFO' });
+    const rate = async () => Number((await value(page, 'Rate of the LFO').textContent())?.split('\u2009')[0]);
+    await tap.focus();
+    for (let n = 0; n < 5; n++) {
+      await page.keyboard.press('Enter');
+      await page.waitForTimeout(125);
+    }
+    expect(await rate()).toBeGreaterThan(5);
+    expect(await rate()).toBeLessThan(8.1);
+    await page.waitForTimeout(2600);
+    for (let n = 0; n < 4; n++) {
+      await tap.click();
+      await page.waitForTimeout(400);
+    }
+    expect(await rate()).toBeGreaterThan(1.5);
+    expect(await rate()).toBeLessThan(2.6);
+    await close();
+  });
+});
+
 describe('k', () => {
+  test('moves the resistor that is chosen', async () => {
+    const { page, close } = await openSheet(1280);
+    const before = await value(page, 'R2').textContent();
+    await page.getByLabel('What setting k moves').selectOption('controlOhm');
+    await page.getByRole('slider').focus();
+    await page.keyboard.press('PageUp');
+    expect(await value(page, 'R2').textContent()).toBe(before);
+    expect(await value(page, 'R3').textContent()).not.toBe('910\u2009kΩ');
+    await close();
+  });
+
   test('is set by the pointer on the axis of Fig. 2, from the keyboard and by dragging', async () => {
     const { page, close } = await openSheet(1280);
     await page.locator('.drawing').getByLabel(FEEDBACK).selectOption('buffered');

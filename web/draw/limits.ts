@@ -24,11 +24,15 @@ export function deviceLimit(variant: Variant, reading: ToneReading, drainPeakV: 
   return most.size > LEAST_SHARE ? most : null;
 }
 
-/** The highest reverse voltage of either gate junction, V: the gate at rest, k of the drain's peak on it, and all of that across the drain's. */
+/**
+ * The highest reverse voltage of either gate junction, V: the gate at rest, and the larger share of the drain's peak, k of which rides on the gate.
+ * Where the source pin stands on a supply, the drain's peak is the tone's alone: what is measured there is from 0 V.
+ */
 export function reverseV(variant: Variant, { vgsV, fundamentalV }: ToneReading, drainPeakV: number): number {
   const k = feedbackFraction(variant.cell);
   const restV = variant.device.channel === 'n' ? -vgsV : vgsV;
-  return restV + Math.max(k, 1 - k) * Math.max(drainPeakV, fundamentalV);
+  const peakV = variant.cell.reference.kind === 'ground' ? Math.max(drainPeakV, fundamentalV) : fundamentalV;
+  return restV + Math.max(k, 1 - k) * peakV;
 }
 
 /** What passes the amplifier's swing; `outputPeakV` is what it puts out now, 0 while sound is stopped. */
@@ -41,7 +45,7 @@ export function amplifierLimit({ output }: Variant, { fundamentalV }: ToneReadin
   return outputPeakV >= 0.999 * swingV ? { kind: 'rail', size: swingV } : null;
 }
 
-/** For the drawing, on two lines. */
+/** For the drawing; what stands at the FET is on two lines. */
 export function limitWords({ kind, size }: Passed, limitV: number): string {
   const volts = (v: number) => `${decimals(v, v < 9.95 ? 2 : 1)}\u2009V`;
   switch (kind) {
@@ -50,9 +54,9 @@ export function limitWords({ kind, size }: Passed, limitV: number): string {
     case 'gateOn':
       return `gate conducts for up to\n${share(size)} of the tone`;
     case 'reverse':
-      return `gate reversed by ${volts(size)},\nover its limit of ${volts(limitV)}`;
+      return `gate reversed by\n${volts(size)}, limit ${volts(limitV)}`;
     case 'rail':
-      return size > limitV ? `would need ${volts(size)},\nrail at ${volts(limitV)}` : `at its rail of ${volts(limitV)}`;
+      return size > limitV ? `would need ${volts(size)}, its rail is ${volts(limitV)}` : `at its rail of ${volts(limitV)}`;
   }
 }
 

@@ -64,7 +64,6 @@ export type Slot =
   | 'gateLive'
   | 'drainLive'
   | 'limit'
-  | 'rail'
   | 'device'
   | 'load'
   | 'makeUp'

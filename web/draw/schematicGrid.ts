@@ -73,7 +73,6 @@ export function wideGrid(fitted: Fitted, width: number): Grid {
       gateLive: start(feedback + 12, gate - 15),
       drainLive: middle(device, top - 18),
       limit: start(device + 22, top + 44),
-      rail: end(width, top + 112),
       device: start(device + 22, gate - 52),
       load: start(capacitor + 24, loadY),
       makeUp: end(width, top + 53),

@@ -21,7 +21,7 @@ export function Schematic({ form }: { readonly form: Form }) {
     ...(drawing && limits.device ? [drawing.deviceBox] : []),
     ...(drawing && limits.amplifier && !fitted.rows.output ? [drawing.amplifierBox] : []),
   ];
-  const values = schematicValues(fitted, form, limits);
+  const values = schematicValues(fitted, form, limits.device);
   return (
     <Figure
       number={1}
@@ -50,8 +50,8 @@ export function Schematic({ form }: { readonly form: Form }) {
       {drawing && <Board width={drawing.width} form={form} amplifierPast={limits.amplifier !== null} />}
       <ControlSentence />
       <Fittings />
-      {form === 'upright' && limits.device && <p class="fault limit-words">J1: {limits.device}.</p>}
-      {(form === 'upright' || fitted.rows.output) && limits.amplifier && <p class="fault limit-words">The amplifier {limits.amplifier}.</p>}
+      {form === 'upright' && limits.device && <p class="fault limit-words below">J1: {limits.device}.</p>}
+      {limits.amplifier && <p class="fault limit-words below">The amplifier {limits.amplifier}.</p>}
     </Figure>
   );
 }

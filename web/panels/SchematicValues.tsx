@@ -7,13 +7,8 @@ import { FeedbackChoice } from './FeedbackChoice.tsx';
 import { LiveVolts } from './LiveVolts.tsx';
 import { Named } from './parts/Named.tsx';
 
-interface Limits {
-  readonly device: string | null;
-  readonly amplifier: string | null;
-}
-
 /** What stands at each place of the drawing, for the parts that are fitted. */
-export function schematicValues(fitted: Fitted, form: Form, limits: Limits): Values {
+export function schematicValues(fitted: Fitted, form: Form, deviceLimit: string | null): Values {
   const resistors = fitted.feedback === 'resistor';
   return {
     ...inputValues(fitted),
@@ -54,10 +49,10 @@ export function schematicValues(fitted: Fitted, form: Form, limits: Limits): Val
     ...(fitted.rows.control ? { fromDriver: <span class="name">driver</span> } : { generator: <ControlValues /> }),
     ...(fitted.rows.source && { sourcePin: <span class="name">J1, source</span> }),
     gateLive: <LiveVolts symbol={form === 'wide' ? 'GS' : null} which="gateSourceV" />,
-    drainLive: <LiveVolts symbol="DS" which="drainPeakV" />,
-    ...(limits.device && { limit: <p class="fault limit-words">{limits.device}</p> }),
+    drainLive: <LiveVolts symbol={fitted.rows.source ? 'D' : 'DS'} which="drainPeakV" />,
+    ...(deviceLimit && { limit: <p class="fault limit-words">{deviceLimit}</p> }),
     device: <DeviceValues form={form} />,
-    ...(fitted.rows.output ? { toOutput: <span class="name">drain</span> } : outputValues(form, limits)),
+    ...(fitted.rows.output ? { toOutput: <span class="name">drain</span> } : outputValues(form)),
     ground: <span class="name">0 V</span>,
   };
 }
@@ -76,7 +71,7 @@ function inputValues({ rows }: Fitted): Values {
   };
 }
 
-function outputValues(form: Form, limits: Limits): Values {
+function outputValues(form: Form): Values {
   return {
     load: (
       <div class="stack">
@@ -95,6 +90,5 @@ function outputValues(form: Form, limits: Limits): Values {
       </div>
     ),
     out: <LiveVolts which="output" />,
-    ...(limits.amplifier && { rail: <p class="fault limit-words">{limits.amplifier}</p> }),
   };
 }

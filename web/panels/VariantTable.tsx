@@ -11,7 +11,7 @@ const LETTERS = ['A', 'B', 'C', 'D'];
 /** Differences told of; the rest is counted. */
 const MOST_TOLD = 3;
 const COLUMNS = [
-  { key: 'letter', head: 'Variant' },
+  { key: 'which', head: 'Variant' },
   { key: 'what', head: 'What it tries' },
   { key: 'number k', head: <i>k</i> },
   { key: 'number', head: 'THD, rest' },
@@ -48,9 +48,9 @@ function VariantRow({ index }: { readonly index: number }) {
   const over = summary !== null && overLimit(summary.worstThd, limit.value);
   return (
     <tr class={heard ? 'heard' : undefined}>
-      <th scope="row" class="letter-cell">
+      <th scope="row" class="which">
         {LETTERS[index]}
-        {heard && ', heard'}
+        {heard && <span class="heard-word">, heard</span>}
       </th>
       <td class="what">
         {heard ? <VariantName name={variant.name} letter={LETTERS[index]} /> : variant.name !== LETTERS[index] && `${variant.name}: `}
@@ -59,7 +59,7 @@ function VariantRow({ index }: { readonly index: number }) {
       <td class="number k">{feedbackFraction(variant.cell).toFixed(3)}</td>
       <td class="number">
         {summary && (
-          <span class="live">
+          <span>
             {percentText(summary.restThd)}
             {'\u2009'}%
           </span>
@@ -67,7 +67,7 @@ function VariantRow({ index }: { readonly index: number }) {
       </td>
       <td class="number">
         {summary && (
-          <span class={over ? 'over' : 'live'}>
+          <span class={over ? 'over' : undefined}>
             {percentText(summary.worstThd)}
             {'\u2009'}%
           </span>
@@ -91,12 +91,14 @@ function EmptyRow({ letter }: { readonly letter: string }) {
   const bench = useBench();
   return (
     <tr>
-      <th scope="row" class="letter-cell aside">
+      <th scope="row" class="which aside">
         {letter}
       </th>
       <td colSpan={4} class="aside">
         empty{' '}
-        <WordActions actions={[{ words: 'Copy here', label: `Copy the heard variant to ${letter}`, run: () => bench.addVariant() }]} />
+        <WordActions
+          actions={[{ words: 'Copy here', label: `Copy here, to ${letter}, the variant that is heard`, run: () => bench.addVariant() }]}
+        />
       </td>
     </tr>
   );

@@ -1,9 +1,10 @@
 /** The shadow tone's readings, from a worker: asked for when something changed, and at the gate of the moment while sound moves it. */
 import type { ReadonlySignal } from '@preact/signals';
-import { effect, signal } from '@preact/signals';
+import { batch, effect, signal } from '@preact/signals';
 import type { Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { Bench, ControlPicture, FeedbackCurve, LiveLevels, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import { createCurves } from './curves.ts';
 import { createSummaries } from './summaries.ts';
 import { setWithin } from './within.ts';
 import type { FromReading, ToReading, WorkerPort } from './workers.ts';
@@ -49,17 +50,22 @@ export function createReadings(
     if (failed === null) worker.post({ type: 'moment', id, gateV: asked?.gateSourceV ?? null });
     else publish({ fault: failed }, null);
   }, now);
+  const curves = createCurves();
   const curveTurn = createTurn(() => {
     const levels = sources.playing.peek() ? moment.peek()?.levels : null;
-    worker.post({ type: 'curve', id, gateV: levels?.gateSourceV ?? null });
+    worker.post({ type: 'curve', id, gateV: levels ? curves.nearV(levels.gateSourceV) : null });
   }, now);
   const summaries = createSummaries((index) => worker.post({ type: 'variant', id, index }));
   const swingTurn = createTurn(() => worker.post({ type: 'swing', id }), now);
 
   const publish = (reading: Moment['reading'], thdBand: Moment['thdBand']) => {
-    moment.value = { levels: asked, reading, thdBand };
+    const known = asked && curves.at(asked.gateSourceV);
+    batch(() => {
+      moment.value = { levels: asked, reading, thdBand };
+      if (known) feedbackCurve.value = known;
+    });
     momentTurn.done();
-    if (asked !== null && !curveTurn.taken() && now() - curveEndMs >= CURVE_REST_MS) curveTurn.ask();
+    if (asked !== null && !known && !curveTurn.taken() && now() - curveEndMs >= CURVE_REST_MS) curveTurn.ask();
   };
 
   const receive = (message: FromReading) => {
@@ -68,7 +74,9 @@ export function createReadings(
         if (message.id === id) return publish(message.reading, message.thdBand);
         return momentTurn.done(true);
       case 'curve':
-        feedbackCurve.value = message.curve;
+        if (message.id === id && message.curve) curves.keep(message.curve);
+        // The moment's own curve may be there by now: then this one would be a step back.
+        if (!asked || !curves.at(asked.gateSourceV)) feedbackCurve.value = message.curve;
         curveEndMs = now();
         return curveTurn.done();
       case 'period':
@@ -104,6 +112,7 @@ export function createReadings(
     };
     id++;
     noise.value = null;
+    curves.clear();
     worker.post({ type: 'question', id, question });
     momentTurn.ask();
     curveTurn.ask();

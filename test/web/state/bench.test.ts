@@ -287,6 +287,18 @@ describe('readings', () => {
     readingWorker.answer({ type: 'curve', id: 1, curve: null });
     const again = readingWorker.posted.findLast((message) => message.type === 'curve');
     expect(again?.gateV).toBe(bench.moment.value?.levels?.gateSourceV);
+    const own = { gateV: -1.23, points: [] };
+    readingWorker.answer({ type: 'curve', id: again?.id ?? 0, curve: own });
+    readingWorker.answer({ type: 'curve', id: again?.id ?? 0, curve: { gateV: -2, points: [] } });
+    const curvesAsked = () => readingWorker.posted.filter(({ type }) => type === 'curve').length;
+    const askedSoFar = curvesAsked();
+    vi.advanceTimersByTime(100);
+    sound.events.message(report(-1.2334));
+    expect(bench.feedbackCurve.value?.gateV).toBe(-2);
+    answer();
+    expect(bench.feedbackCurve.value).toBe(own);
+    expect(bench.moment.value?.levels?.gateSourceV).toBe(-1.2334);
+    expect(curvesAsked()).toBe(askedSoFar);
   });
 
   test('when the worker fails the levels go on, with a sentence for the reading', async () => {
