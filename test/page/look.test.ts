@@ -190,6 +190,33 @@ describe('a value where it stands', () => {
   });
 });
 
+describe('a choice', () => {
+  test('that is refused says why, and the list goes back', async () => {
+    const { page, close } = await openSheet(1280);
+    const control = page.getByLabel(CONTROL);
+    await control.selectOption('fixed');
+    await value(page, 'Control voltage').click();
+    await page.keyboard.type('90');
+    await page.keyboard.press('Enter');
+    await control.selectOption('sine');
+    expect(await page.getByRole('alert').textContent()).toContain('is 135; expected −100 V to 100 V');
+    expect(await control.inputValue()).toBe('fixed');
+    expect(await value(page, 'Control voltage').textContent()).toBe('90.00\u2009V');
+    await close();
+  });
+
+  test('of the channel is one step of undo, with the control that goes with it', async () => {
+    const { page, close } = await openSheet(1280);
+    const texts = () => page.locator('.drawing .value').allTextContents();
+    const before = await texts();
+    await page.getByLabel('Channel of J1').selectOption('p');
+    expect(await value(page, 'VGS(off)').textContent()).toBe('1.50\u2009V');
+    await page.getByRole('button', { name: 'Undo' }).click();
+    expect(await texts()).toEqual(before);
+    await close();
+  });
+});
+
 describe('the rate of the LFO', () => {
   test('is tapped by key and by pointer', async () => {
     const { page, close } = await openSheet(1280);
