@@ -179,6 +179,8 @@ export interface GatePeriod {
   readonly steady: boolean;
   /** VGS(off) at the temperature of the circuit, V, negative for an n-channel part. */
   readonly gateOffV: number;
+  /** Size of the forward gate voltage from which the gate is said to conduct, V. */
+  readonly gateOnV: number;
 }
 
 /** What a follower makes of a steady tone at the input: V peak, ascending where its control moves one way. */
@@ -187,6 +189,7 @@ export interface FollowerCurve {
   readonly control: Float64Array;
   readonly gate: Float64Array;
   readonly gateOffV: number;
+  readonly gateOnV: number;
 }
 
 export type ControlPicture = GatePeriod | FollowerCurve;
