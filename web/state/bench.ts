@@ -252,4 +252,6 @@ export interface Note {
   readonly kind: 'fault' | 'note';
   readonly sentence: string;
   readonly advice?: string;
+  /** Sentences under the first, where there are several of one kind: every fault of a file. */
+  readonly list?: readonly string[];
 }

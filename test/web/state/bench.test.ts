@@ -422,10 +422,17 @@ describe('designs', () => {
     expect(bench.design.value).toEqual(first);
   });
 
-  test('a faulty file is refused whole, with the file’s name, and the first five faults', async () => {
+  test('a faulty file is refused whole, with the file’s name and every fault in one note', async () => {
     const before = bench.design.value;
     await bench.openDesign(new File(['{ "fettle": 1, "variants": [ { "cell": { "seriesOhm": -5 } } ] }'], 'bad.json'));
-    expect(sentences().some((sentence) => /^“bad.json”: .*seriesOhm is -5; expected/.test(sentence))).toBe(true);
+    expect(bench.notes.value).toHaveLength(1);
+    expect(sentences()).toEqual(['“bad.json” was not opened; its faults:']);
+    expect(bench.notes.value[0].list?.some((sentence) => /seriesOhm is .5; expected/.test(sentence))).toBe(true);
+    const extras = Object.fromEntries(Array.from({ length: 24 }, (_, n) => [`extra${n}`, 1]));
+    const many = { fettle: 1, variants: [{ name: 'A', cell: { circuit: 'shunt', ...extras } }] };
+    await bench.openDesign(new File([JSON.stringify(many)], 'many.json'));
+    expect(bench.notes.value).toHaveLength(2);
+    expect(bench.notes.value[1].list?.filter((sentence) => sentence.includes('.extra'))).toHaveLength(24);
     await bench.openDesign(new File(['{'], 'worse.json'));
     expect(sentences().at(-1)).toMatch(/^“worse.json”: /);
     expect(bench.design.value).toBe(before);
