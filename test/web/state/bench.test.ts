@@ -125,8 +125,8 @@ describe('changing values while sound plays', () => {
     expect(sound.last('gain')?.gain).toBeCloseTo(0.1, 12);
     expect(bench.setCeilingDbfs(-40)).toBeNull();
     expect(sound.last('ceiling')?.peak).toBeCloseTo(0.01, 12);
-    expect(bench.setListenDb(3)).toBe('The listening level is 3 dB; expected -60 to 0 dB.');
-    expect(bench.setCeilingDbfs(-41)).toBe('The ceiling is -41 dBFS; expected -40 to 0 dBFS.');
+    expect(bench.setListenDb(3)).toBe('The listening level is 3 dB; expected −60 to 0 dB.');
+    expect(bench.setCeilingDbfs(-41)).toBe('The ceiling is −41 dBFS; expected −40 to 0 dBFS.');
     expect(bench.listenDb.value).toBe(-20);
     expect(bench.ceilingDbfs.value).toBe(-40);
   });
@@ -250,7 +250,7 @@ describe('readings', () => {
     readingWorker.answer({ type: 'worst', id: first.id, swing: { worst, points: [] } });
     expect(bench.worst.value).toEqual(worst);
     expect(asked()).toBe(2);
-    expect(bench.setToneV(-1)).toBe('The shadow tone is -1 V peak; expected 0.0001 to 100 V peak.');
+    expect(bench.setToneV(-1)).toBe('The shadow tone is −1 V peak; expected 0.0001 to 100 V peak.');
     expect(bench.setToneHz(440)).toBeNull();
     expect(readingWorker.posted.findLast((message) => message.type === 'question')?.question.toneHz).toBe(440);
   });
