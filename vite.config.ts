@@ -102,6 +102,8 @@ export default defineConfig({
     assetsInlineLimit: 0,
     copyPublicDir: false,
     reportCompressedSize: false,
+    // Our own plugins take most of so short a build, which is no news to anyone who starts the page.
+    rolldownOptions: { checks: { pluginTimings: false } },
   },
   test: {
     root: here('.'),

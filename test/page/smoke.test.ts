@@ -34,7 +34,7 @@ describe('the built page', () => {
     await close();
   });
 
-  test.each(VIEWS)('has no fault against WCAG 2.2 A and AA that axe-core can find at $widthPx × $heightPx, $colourScheme', async (view) => {
+  test.each(VIEWS)('has no fault against WCAG 2.2 A and AA, or best practice, that axe-core can find at $widthPx × $heightPx, $colourScheme', async (view) => {
     const { page, close } = await openTab(browser, built, view);
     await page.getByRole('heading').first().waitFor();
     expect(await findAccessFaults(page)).toEqual([]);
