@@ -66,6 +66,18 @@ describe.each(WIDTHS)('at %i px', (widthPx) => {
     await close();
   });
 
+  test('what stands in red beside the FET crosses no wire and no value, and nothing scrolls sideways', async () => {
+    const { page, close } = await openSheet(widthPx);
+    await page.getByLabel(CONTROL).selectOption('fixed');
+    await value(page, 'Control voltage').click();
+    await page.keyboard.type('1.2');
+    await page.keyboard.press('Enter');
+    await page.locator('.limit-words', { hasText: 'gate conducts' }).waitFor();
+    expect(await page.evaluate(underLimitWords)).toEqual([]);
+    expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(widthPx);
+    await close();
+  });
+
   test('no text is under 11 px', async () => {
     const { page, close } = await openSheet(widthPx);
     expect(await page.evaluate(smallTexts)).toEqual([]);
@@ -290,6 +302,19 @@ function overlapsInDrawing(): string[] {
     }
   });
   return found;
+}
+
+/** Wires, symbols and values of Fig. 1 that the sentence about a limit lies on. */
+function underLimitWords(): string[] {
+  const words = document.querySelector('.drawing .limit-words')?.getBoundingClientRect();
+  if (!words) return [];
+  const things = [...document.querySelectorAll('.drawing line, .drawing .symbol, .drawing .value, .drawing .choice, .drawing .live')];
+  return things
+    .filter((element) => {
+      const box = element.getBoundingClientRect();
+      return box.left < words.right && words.left < box.right && box.top < words.bottom && words.top < box.bottom;
+    })
+    .map((element) => element.textContent || element.outerHTML);
 }
 
 function smallTexts(): string[] {

@@ -34,12 +34,15 @@ describe('the built page', () => {
     await close();
   });
 
-  test.each(VIEWS)('has no fault against WCAG 2.2 A and AA, or best practice, that axe-core can find at $widthPx × $heightPx, $colourScheme', async (view) => {
-    const { page, close } = await openTab(browser, built, view);
-    await page.getByRole('heading').first().waitFor();
-    expect(await findAccessFaults(page)).toEqual([]);
-    await close();
-  });
+  test.each(VIEWS)(
+    'has no fault against WCAG 2.2 A and AA, or best practice, that axe-core can find at $widthPx × $heightPx, $colourScheme',
+    async (view) => {
+      const { page, close } = await openTab(browser, built, view);
+      await page.getByRole('heading').first().waitFor();
+      expect(await findAccessFaults(page)).toEqual([]);
+      await close();
+    },
+  );
 
   test('does not scroll sideways at 390 px', async () => {
     const { page, close } = await openTab(browser, built, SIZES[0]);
