@@ -17,7 +17,7 @@ export type Element =
   | (Between & {
       readonly kind: 'capacitor';
       readonly valueF: number;
-      /** `coupling` is advanced by the trapezoidal rule, `parasitic` (picofarads, stiff) by backward Euler. */
+      /** `coupling` is advanced by the trapezoidal rule, `parasitic` (picofarads, stiff) by backward differences. */
       readonly role: 'coupling' | 'parasitic';
     })
   | (Between & { readonly kind: 'inductor'; readonly valueH: number })

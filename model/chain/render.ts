@@ -6,8 +6,9 @@ import { compileChain } from './compile.ts';
 const FRAMES_AT_A_TIME = 4096;
 
 /**
- * Renders one or two channels at `sampleRateHz`; each output is as long as its input. `onProgress` is told a fraction now and then.
- * Throws a RangeError naming what cannot be rendered.
+ * Renders one or two channels at `sampleRateHz`; each output is as long as its input. `onProgress` is told a fraction now and then. `recorded` is the
+ * control of a design whose control is external, as long as the clip. Throws a RangeError naming what cannot be rendered, and an Error where a cell
+ * lost its state: such a render would be no answer.
  */
 export function renderClip(
   design: Design,
@@ -15,6 +16,7 @@ export function renderClip(
   channels: readonly Float32Array[],
   sampleRateHz: number,
   onProgress?: (fraction: number) => void,
+  recorded?: Float32Array,
 ): Float32Array[] {
   const chain = createChain(compileChain(design, variantIndex, sampleRateHz, channels.length, 'linearPhase'));
   const delay = chain.latencySamples;
@@ -22,12 +24,15 @@ export function renderClip(
   const result = channels.map(() => new Float32Array(length));
   const input = channels.map(() => new Float32Array(FRAMES_AT_A_TIME));
   const output = channels.map(() => new Float32Array(FRAMES_AT_A_TIME));
+  const control = recorded ? new Float32Array(FRAMES_AT_A_TIME) : null;
   for (let start = 0; start < length + delay; start += FRAMES_AT_A_TIME) {
     channels.forEach((samples, channel) => {
-      input[channel].fill(0);
-      input[channel].set(samples.subarray(start, Math.min(length, start + FRAMES_AT_A_TIME)));
+      fill(input[channel], samples, start);
     });
-    processChain(chain, input, output);
+    if (control && recorded) fill(control, recorded, start);
+    processChain(chain, input, output, control);
+    if (chain.readings.faults > 0)
+      throw new Error(`the cell lost its state after ${(start / sampleRateHz).toFixed(2)} s; the render was given up`);
     output.forEach((samples, channel) => {
       const skipped = Math.max(0, delay - start);
       const target = start + skipped - delay;
@@ -38,4 +43,10 @@ export function renderClip(
     onProgress?.(Math.min(1, (start + FRAMES_AT_A_TIME) / (length + delay)));
   }
   return result;
+}
+
+/** The stretch of `samples` from `start` on, then silence. */
+function fill(stretch: Float32Array, samples: Float32Array, start: number): void {
+  stretch.fill(0);
+  stretch.set(samples.subarray(start, Math.min(samples.length, start + stretch.length)));
 }

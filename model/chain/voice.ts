@@ -61,6 +61,19 @@ function levelAt({ from, to, done, total }: Levels, index: number, i: number): n
   return at >= total ? to[index] : from[index] + (at / total) * (to[index] - from[index]);
 }
 
+interface Quiet {
+  readonly cell: Cell;
+  readonly signal: Float64Array;
+  readonly control: Float64Array;
+  /** Lower-rate samples until its next step. */
+  waiting: number;
+  /** Of its last steps. */
+  feedthroughPeakV: number;
+}
+
+/** Lower-rate samples in a step of the silent copy. */
+const QUIET_STEP = 4;
+
 /** One audio channel of a voice. */
 export interface Lane {
   readonly cell: Cell;
@@ -92,10 +105,10 @@ export interface Voice {
   /** Slices done and to do of the ramp; upper-rate samples done of the slice. */
   readonly ramp: { done: number; total: number; inSlice: number };
   /**
-   * A silent copy of the first channel's cell at the lower rate: where the gate stands without the audio that rides on it, and what the
+   * A silent copy of the first channel's cell at a quarter of the lower rate: where the gate stands without the audio that rides on it, and what the
    * control alone leaves at the output.
    */
-  readonly quiet: { readonly cell: Cell; readonly signal: Float64Array; readonly control: Float64Array; feedthroughPeakV: number };
+  readonly quiet: Quiet;
 }
 
 function moving(values: Float64Array): Moving {
@@ -108,7 +121,7 @@ export function createVoice(numbers: ChainNumbers): Voice {
   const { oversampling, filters, sampleRateHz, noiseSeed } = numbers;
   const stepSec = 1 / (sampleRateHz * oversampling);
   const restV = quietControlV(numbers.control);
-  const quietCell = createCell(numbers.cells[0], 1 / sampleRateHz);
+  const quietCell = createCell(numbers.cells[0], QUIET_STEP / sampleRateHz);
   settle(quietCell, 0, restV);
   const lanes = numbers.cells.map((values, channel): Lane => {
     const cell = createCell(values, stepSec);
@@ -138,7 +151,13 @@ export function createVoice(numbers: ChainNumbers): Voice {
     amplifier: standing(numbers.amplifier),
     amplifierNow: Float64Array.from(numbers.amplifier),
     ramp: { done: 0, total: 0, inSlice: 0 },
-    quiet: { cell: quietCell, signal: new Float64Array(LONGEST_BLOCK), control: new Float64Array(LONGEST_BLOCK), feedthroughPeakV: 0 },
+    quiet: {
+      cell: quietCell,
+      signal: new Float64Array(LONGEST_BLOCK / QUIET_STEP),
+      control: new Float64Array(LONGEST_BLOCK / QUIET_STEP),
+      waiting: QUIET_STEP,
+      feedthroughPeakV: 0,
+    },
   };
 }
 
@@ -310,12 +329,18 @@ function putAtRest(voice: Voice, lane: Lane): void {
 
 function advanceQuiet(voice: Voice, count: number): void {
   const { quiet, drive, numbers } = voice;
+  let steps = 0;
   for (let i = 0; i < count; i++) {
-    quiet.signal[i] = 0;
-    quiet.control[i] = drive.controls[0][(i + 1) * numbers.oversampling - 1];
+    quiet.waiting -= 1;
+    if (quiet.waiting > 0) continue;
+    quiet.waiting = QUIET_STEP;
+    quiet.signal[steps] = 0;
+    quiet.control[steps] = drive.controls[0][(i + 1) * numbers.oversampling - 1];
+    steps += 1;
   }
-  advanceCell(quiet.cell, quiet.signal, quiet.control, 0, count);
+  if (steps === 0) return;
+  advanceCell(quiet.cell, quiet.signal, quiet.control, 0, steps);
   quiet.feedthroughPeakV = 0;
-  for (let i = 0; i < count; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
+  for (let i = 0; i < steps; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
   if (!(quiet.feedthroughPeakV < RUNAWAY_V)) settle(quiet.cell, 0, quietControlV(numbers.control));
 }

@@ -13,14 +13,21 @@ import { openSubject, SET, SET_NOTES, VARIANT } from './subject.ts';
 const FORMATS: readonly WavFormat[] = ['pcm16', 'pcm24', 'pcm32', 'float32'];
 const FORMAT: Option = { name: 'format', value: 'FORMAT', about: `samples of OUT: ${either(FORMATS)}; those of IN when left out` };
 
+const CONTROL: Option = {
+  name: 'control',
+  value: 'CONTROL.wav',
+  about: 'recorded control, for a variant whose control.source is external',
+};
+
 export const render: Command = {
   name: 'render',
   files: ['DESIGN', 'IN.wav', 'OUT.wav'],
   about: 'Puts a sound through one variant of a design.',
-  options: [VARIANT, SET, FORMAT],
+  options: [VARIANT, SET, FORMAT, CONTROL],
   notes: `IN is a WAV file of PCM with 16, 24 or 32 bits or of 32-bit float, mono or stereo. OUT has its sample rate, channels and number of
 frames, and no delay. Its samples are of IN's kind unless --format says otherwise; PCM is rounded to the nearest step, without dither,
 and samples beyond full scale are cut to it, counted and reported on stderr. OUT appears only when it is whole; IN is never touched.
+CONTROL has IN's sample rate and at least its frames; its first channel moves the gate: control.offsetV + control.fullScaleV × sample.
 
 ${SET_NOTES}`,
   run: runRender,
@@ -30,12 +37,13 @@ async function runRender(line: Line): Promise<void> {
   const [designPath, inPath, outPath] = line.words;
   const asked = askedFormat(line);
   const { design, variantIndex } = openSubject(designPath, line);
-  refuseExternal(design.variants[variantIndex]);
   const clip = openClip(inPath);
-  const target = outputPath(outPath, [inPath, designPath]);
+  const controlPath = controlPathOf(line, design.variants[variantIndex]);
+  const recorded = controlPath === undefined ? undefined : openControl(controlPath, clip, inPath);
+  const target = outputPath(outPath, [inPath, designPath, ...(controlPath === undefined ? [] : [controlPath])]);
   const progress = createProgress();
   const about = `${inPath} cannot be rendered with variant ${design.variants[variantIndex].name}: `;
-  const rendered = judged(about, () => renderClip(design, variantIndex, clip.channels, clip.sampleRateHz, progress.show));
+  const rendered = judged(about, () => renderClip(design, variantIndex, clip.channels, clip.sampleRateHz, progress.show, recorded));
   progress.clear();
   const format = asked ?? formatOf(clip);
   const { bytes, cut } = writeWav(rendered, clip.sampleRateHz, format);
@@ -43,12 +51,26 @@ async function runRender(line: Line): Promise<void> {
   if (cut > 0) process.stderr.write(`${outPath}: ${cutSentence(cut, rendered.length * rendered[0].length)}\n`);
 }
 
-/** A recorded control cannot be given here, and a gate held at its offset would be another circuit. */
-function refuseExternal({ name, control }: Variant): void {
-  if (control.source !== 'external') return;
-  throw new CommandFault(
-    `control.source of variant ${name} is external, and render takes no recorded control; expected fixed, lfo or envelope`,
-  );
+/** An external control needs its recording, and no other may have one: each would be another circuit. */
+function controlPathOf({ values }: Line, { name, control }: Variant): string | undefined {
+  const [path] = values.get(CONTROL.name) ?? [];
+  if (control.source === 'external' && path === undefined) {
+    throw new CommandFault(`control.source of variant ${name} is external; expected --control CONTROL.wav with its recording`);
+  }
+  if (control.source !== 'external' && path !== undefined) {
+    throw new CommandFault(`--control is given, but control.source of variant ${name} is ${control.source}; expected external`);
+  }
+  return path;
+}
+
+function openControl(path: string, clip: WavClip, inPath: string): Float32Array {
+  const { channels, sampleRateHz } = openClip(path);
+  const [frames, expected] = [channels[0].length, clip.channels[0].length];
+  if (sampleRateHz !== clip.sampleRateHz) {
+    throw new CommandFault(`${path} has a sample rate of ${sampleRateHz} Hz; expected that of ${inPath}, ${clip.sampleRateHz} Hz`);
+  }
+  if (frames < expected) throw new CommandFault(`${path} has ${frames} frames; expected at least the ${expected} of ${inPath}`);
+  return channels[0];
 }
 
 function cutSentence(cut: number, count: number): string {

@@ -88,8 +88,10 @@ function runSine(values: Float64Array, phase: Float64Array, output: Float64Array
     const inHalf = beyond ? turn - 0.5 : turn;
     const x = TURN * (inHalf > 0.25 ? 0.5 - inHalf : inHalf);
     const z = x * x;
-    const high = z * (S11 + z * (S13 + z * (S15 + z * (S17 + z * (S19 + z * S21)))));
-    const sine = x + x * z * (S3 + z * (S5 + z * (S7 + z * (S9 + high))));
+    const square = z * z;
+    const low = S3 + z * S5 + square * (S7 + z * S9);
+    const high = S11 + z * S13 + square * (S15 + z * S17 + square * (S19 + z * S21));
+    const sine = x + x * z * (low + square * square * high);
     output[i] = beyond ? middle - half * sine : middle + half * sine;
     turn += turns;
     if (turn >= 1) turn -= 1;

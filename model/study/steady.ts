@@ -3,7 +3,8 @@
  *
  * Scheme   one period as a map of the state, its fixed point by Newton with a Jacobian by differences (exact for the linear part); where that
  *          does not settle the cell is run period after period until it does
- * Error    the state repeats within `REPEATS`·(its size + 1 µV) from one period to the next, or the reading says that it did not settle
+ * Error    each state repeats within `REPEATS`·(its size + 1 µV) + `ROUNDING`·(the largest state) from one period to the next, or the reading says
+ *          that it did not settle: beside a supply of some volts, arithmetic lets a small voltage repeat no better
  * Source   shooting method: Aprille & Trick, Proc. IEEE 60 (1972) 108, from memory
  */
 import { advanceCell, type Cell, gateConducts, overdriveV, settle } from '../cell/cell.ts';
@@ -16,6 +17,7 @@ const NEWTON_ROUNDS = 20;
 const SETTLING_PERIODS = 4000;
 const SETTLING_SAMPLES = 16777216;
 const REPEATS = 1e-12;
+const ROUNDING = 3e-14;
 
 /** One period at the cell's own step: the output and both overdrives, V; whether a junction conducts. Sample 0 is the tone's crest. */
 export interface SteadyPeriod {
@@ -74,7 +76,7 @@ function shoot(cell: Cell, run: () => void, search: { slope: Slope | null }): bo
     const from = cell.state.slice();
     run();
     const miss = Float64Array.from({ length: n }, (_, i) => cell.state[i] - from[i]);
-    if (miss.every((value, i) => Math.abs(value) <= REPEATS * (Math.abs(from[i]) + 1e-6))) return true;
+    if (repeats(from, miss)) return true;
     const end = cell.state.slice();
     const size = miss.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
     if (search.slope === null || size > 0.1 * before) search.slope = slopeAt(cell, run, from, end);
@@ -109,9 +111,16 @@ function runUntilSettled(cell: Cell, run: () => void, size: number): boolean {
   for (let period = 0; period < SETTLING_PERIODS && period * size < SETTLING_SAMPLES; period++) {
     const before = cell.state.slice(0, n);
     run();
-    if (before.every((value, i) => Math.abs(cell.state[i] - value) <= REPEATS * (Math.abs(value) + 1e-6))) return true;
+    const miss = before.map((value, i) => cell.state[i] - value);
+    if (repeats(before, miss)) return true;
   }
   return false;
+}
+
+/** Whether the first states of `from` came back within `miss` of themselves. */
+function repeats(from: Float64Array, miss: Float64Array): boolean {
+  const largest = miss.reduce((most, _, i) => Math.max(most, Math.abs(from[i])), 0);
+  return miss.every((value, i) => Math.abs(value) <= REPEATS * (Math.abs(from[i]) + 1e-6) + ROUNDING * largest);
 }
 
 function recordPeriod(cell: Cell, audio: Float64Array, control: Float64Array): Omit<SteadyPeriod, 'settled' | 'start'> {

@@ -24,10 +24,13 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
   const scale = c[device + 6];
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
-  let vs = Math.min(a + perAs * freeA, s[n + 5] > onS ? s[n + 5] : kneeS);
-  let vd = Math.min(b + perAd * freeA, s[n + 6] > onD ? s[n + 6] : kneeD);
+  const lastS = s[n + 5], lineS = lastS - s[n + 32];
+  let vs = Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
+  const lastD = s[n + 6], lineD = lastD - s[n + 33];
+  let vd = Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
+  let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
-    let Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;
+    let Fs = 0, fs = 0, Fd = 0, fd = 0;
     if (vs > 0) {
       const q = vs * inverseWidth;
       if (q < 1) {
@@ -48,9 +51,19 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
       fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);
       Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);
     }
-    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }
-    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }
-    if (vs > clampOn) { const Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }
+    if (vs > onD) {
+      const x = movedS * rateD;
+      junctionS = junctionS > 0 && x < 1e-3 && x > -1e-3 ? junctionS * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666))) : reverse * exp((vs + off) * rateD);
+    } else junctionS = 0;
+    if (vd > onD) {
+      const x = movedD * rateD;
+      junctionD = junctionD > 0 && x < 1e-3 && x > -1e-3 ? junctionD * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666))) : reverse * exp((vd + off) * rateD);
+    } else junctionD = 0;
+    if (vs > clampOn) {
+      const x = movedS * clampRate;
+      clamped = clamped > 0 && x < 1e-3 && x > -1e-3 ? clamped * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666))) : clampA * exp((vs + off) * clampRate);
+    } else clamped = 0;
+    let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
       addGraded(c, device, vs, c[device + 21], s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
       addGraded(c, device, vd, c[device + 22], s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
@@ -61,9 +74,9 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     const over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;
     const stepS = wholeS * rateS <= 2 ? wholeS : vs < onS ? Math.min(wholeS, kneeS - vs) : (2 + wholeS * rateS / (1 + 0.1 * wholeS * rateS)) / rateS;
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
-    vs += stepS; vd += stepD;
+    vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) keepCharges(c, device, s, n);

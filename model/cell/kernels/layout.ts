@@ -108,4 +108,7 @@ export const CHARGES_D = 23;
 export const BEFORE_S = 29;
 export const BEFORE_D = 30;
 export const PER_A = 31;
-export const STATE_SLOTS = 32;
+/** Overdrives of the conducting sample before the last, for the first guess of the next. */
+export const EARLIER_S = 32;
+export const EARLIER_D = 33;
+export const STATE_SLOTS = 34;

@@ -1,6 +1,6 @@
 /**
- * The kernel for any law and any number of states, in loops over the same coefficients: for circuits of a shape that is not written out. About
- * five times slower than those, and the same in the bits that matter (test/model/cell/kernels.test.ts).
+ * The kernel for any law and any number of states, in loops over the same coefficients: for circuits of a shape that is not written out. Several times
+ * slower than those; the same voltages to rounding (test/model/cell/kernels.test.ts).
  */
 import { bent, searched, slopeAt, termAt } from './channel.ts';
 import type { Conductor, Kernel } from './kernel.ts';
@@ -13,113 +13,156 @@ const NEWTON_STEPS = 40;
 export function loopedKernel(trapezoidal: number, stiff: number, conductor: Conductor): Kernel {
   const n = trapezoidal + stiff;
   const row = L.rowLayout(n);
-  const past = L.memoryLayout(n);
   const all = L.coefficientLayout(n);
   const slots = L.slotStart(trapezoidal, stiff);
-  const memories = new Float64Array(n);
   const aI = row.current;
   const bI = row.width + row.current;
-
-  const sum = (c: Float64Array, r: number, from: Float64Array, u: number, v: number): number => {
-    const at = r * row.width;
-    let total = 0;
-    for (let k = 0; k < n; k++) total += c[at + k] * from[k];
-    return total + c[at + row.u] * u + c[at + row.u + 1] * v + c[at + row.constant];
-  };
-
-  const remember = (c: Float64Array, s: Float64Array): void => {
-    for (let i = 0; i < n; i++) {
-      const at = all.memory + i * past.width;
-      const isStiff = i >= trapezoidal;
-      let total = c[at + past.oldU] * s[slots + L.OLD_AUDIO] + c[at + past.oldU + 1] * s[slots + L.OLD_CONTROL];
-      for (let k = 0; k < n; k++) {
-        total += c[at + k] * (isStiff && k >= trapezoidal ? pastOf(s, n, stiff, k - trapezoidal) : s[k]);
-      }
-      if (!isStiff) {
-        total += c[at + past.oldI] * s[slots + L.CHANNEL_A];
-        total += c[all.memoryJunction + 2 * i] * s[slots + L.JUNCTION_S] + c[all.memoryJunction + 2 * i + 1] * s[slots + L.JUNCTION_D];
-      }
-      memories[i] = total;
-    }
-  };
+  /** What each row remembers, then the audio, the control and 1: the drives of every row, in the order of its coefficients. */
+  const drives = new Float64Array(n + 3);
+  /** The past of the stiff states as their backward differences weigh it, the trapezoidal ones as they are. */
+  const past = new Float64Array(n);
+  /** The sums of all rows. */
+  const sums = new Float64Array(n + 3);
 
   return (c, t, w, e, s, audio, control, output, from, to) => {
     for (let i = from; i < to; i++) {
-      const u = audio[i];
-      const v = control[i];
-      remember(c, s);
-      let a = sum(c, 0, memories, u, v);
-      let b = sum(c, 1, memories, u, v);
-      let noiseA = 0;
+      weighPast(s, past, trapezoidal, stiff);
+      remember(c, s, past, drives, trapezoidal, n, slots);
+      drives[n] = audio[i];
+      drives[n + 1] = control[i];
+      drives[n + 2] = 1;
+      addRows(c, drives, sums, n + 2, row.width);
       const noise = i * (all.rows + 1);
+      let noiseA = 0;
       if (w.length > 0) {
         const slope = slopeAt(c, t, all.device, s[slots + L.OVERDRIVE_S]) + slopeAt(c, t, all.device, s[slots + L.OVERDRIVE_D]);
         noiseA = w[noise + all.rows] * Math.sqrt(0.5 * slope);
-        a += w[noise] + c[aI] * noiseA;
-        b += w[noise + 1] + c[bI] * noiseA;
+        for (let r = 0; r < n + 2; r++) sums[r] += w[noise + r];
+        sums[0] += c[aI] * noiseA;
+        sums[1] += c[bI] * noiseA;
       }
-      solveChannel(c, t, all.device, aI, bI, a, b, 2 * s[slots + L.CHANNEL_A] - s[slots + L.EARLIER_A], s, slots + L.TERM_S);
-      const free = s[slots + L.TERM_S];
-      s[slots + L.EARLIER_A] = s[slots + L.CHANNEL_A];
-      const qs = s[slots + L.OVERDRIVE_S];
-      const qd = s[slots + L.OVERDRIVE_D];
-      const vs = a + c[aI] * free;
-      const vd = b + c[bI] * free;
-      if (vs > c[all.device + L.ON_V] || vd > c[all.device + L.ON_V]) {
-        conductor(c, t, all.device, aI, bI, all.junction, s, slots, a, b, free);
-      } else {
-        s[slots + L.CHANNEL_A] = free;
-        s[slots + L.JUNCTION_S] = 0;
-        s[slots + L.JUNCTION_D] = 0;
-        s[slots + L.OVERDRIVE_S] = vs;
-        s[slots + L.OVERDRIVE_D] = vd;
-      }
+      solvePorts(c, t, s, sums, all.device, aI, bI, all.junction, slots, conductor);
+      const crossed = e.length > 0 && hasCrossed(s, slots);
       s[slots + L.CHANNEL_A] += noiseA;
+      shiftPast(s, n, trapezoidal, stiff);
       const current = s[slots + L.CHANNEL_A];
       const S = s[slots + L.JUNCTION_S];
       const D = s[slots + L.JUNCTION_D];
-      for (let k = 0; k < stiff; k++) {
-        s[n + 2 * stiff + k] = s[n + stiff + k];
-        s[n + stiff + k] = s[n + k];
-        s[n + k] = s[trapezoidal + k];
+      for (let k = 0; k < n; k++) {
+        s[k] =
+          sums[2 + k] +
+          c[(2 + k) * row.width + row.current] * current +
+          c[all.junction + 2 * (2 + k)] * S +
+          c[all.junction + 2 * (2 + k) + 1] * D;
       }
-      const added = (r: number) => c[r * row.width + row.current] * current + c[all.junction + 2 * r] * S + c[all.junction + 2 * r + 1] * D;
-      for (let k = 0; k < n; k++) s[k] = sum(c, 2 + k, memories, u, v) + added(2 + k) + (w.length > 0 ? w[noise + 2 + k] : 0);
-      output[i] = sum(c, all.outputRow, s, u, v) + added(all.outputRow) + (w.length > 0 ? w[noise + all.outputRow] : 0);
-      if (e.length > 0) {
-        s[slots + L.BEFORE_S] = qs;
-        s[slots + L.BEFORE_D] = qd;
-        s[slots + L.PER_A] = c[all.outputRow * row.width + row.current];
-        markCrossing(c, t, all.device, aI, bI, e, i, s, slots);
+      const at = all.outputRow * row.width;
+      let y = c[at + row.u] * audio[i] + c[at + row.u + 1] * control[i] + c[at + row.constant] + c[at + row.current] * current;
+      for (let k = 0; k < n; k++) y += c[at + k] * s[k];
+      output[i] =
+        y +
+        c[all.junction + 2 * all.outputRow] * S +
+        c[all.junction + 2 * all.outputRow + 1] * D +
+        (w.length > 0 ? w[noise + all.outputRow] : 0);
+      if (crossed && c[all.device + L.LAW] !== L.LAW_NUMBER.smooth) {
+        s[slots + L.PER_A] = c[at + row.current];
+        markKink(c, t, all.device, aI, bI, e, i, s, slots);
       }
-      s[slots + L.OLD_AUDIO] = u;
-      s[slots + L.OLD_CONTROL] = v;
+      s[slots + L.OLD_AUDIO] = drives[n];
+      s[slots + L.OLD_CONTROL] = drives[n + 1];
     }
   };
 }
 
-function markCrossing(
+function weighPast(s: Float64Array, past: Float64Array, trapezoidal: number, stiff: number): void {
+  const n = trapezoidal + stiff;
+  for (let k = 0; k < trapezoidal; k++) past[k] = s[k];
+  for (let k = 0; k < stiff; k++) {
+    past[trapezoidal + k] = 3.5 * s[trapezoidal + k] - 2.25 * s[n + k] + (5 / 6) * s[n + stiff + k] - 0.125 * s[n + 2 * stiff + k];
+  }
+}
+
+function remember(
+  c: Float64Array,
+  s: Float64Array,
+  past: Float64Array,
+  drives: Float64Array,
+  trapezoidal: number,
+  n: number,
+  slots: number,
+): void {
+  const layout = L.memoryLayout(n);
+  const all = L.coefficientLayout(n);
+  for (let i = 0; i < n; i++) {
+    const at = all.memory + i * layout.width;
+    const isStiff = i >= trapezoidal;
+    let total = c[at + layout.oldU] * s[slots + L.OLD_AUDIO] + c[at + layout.oldU + 1] * s[slots + L.OLD_CONTROL];
+    for (let k = 0; k < n; k++) total += c[at + k] * (isStiff ? past[k] : s[k]);
+    if (!isStiff) {
+      total += c[at + layout.oldI] * s[slots + L.CHANNEL_A];
+      total += c[all.memoryJunction + 2 * i] * s[slots + L.JUNCTION_S] + c[all.memoryJunction + 2 * i + 1] * s[slots + L.JUNCTION_D];
+    }
+    drives[i] = total;
+  }
+}
+
+/** The first `rows` rows of the coefficients, each times the drives. */
+function addRows(c: Float64Array, drives: Float64Array, sums: Float64Array, rows: number, width: number): void {
+  const length = drives.length;
+  for (let r = 0; r < rows; r++) {
+    const at = r * width;
+    let even = 0;
+    let odd = 0;
+    for (let k = 0; k + 1 < length; k += 2) {
+      even += c[at + k] * drives[k];
+      odd += c[at + k + 1] * drives[k + 1];
+    }
+    sums[r] = length % 2 === 1 ? even + odd + c[at + length - 1] * drives[length - 1] : even + odd;
+  }
+}
+
+function shiftPast(s: Float64Array, n: number, trapezoidal: number, stiff: number): void {
+  for (let k = 0; k < stiff; k++) {
+    s[n + 2 * stiff + k] = s[n + stiff + k];
+    s[n + stiff + k] = s[n + k];
+    s[n + k] = s[trapezoidal + k];
+  }
+}
+
+/** Channel and junction currents and overdrives into their slots; those of the sample before into BEFORE_S and BEFORE_D. */
+function solvePorts(
   c: Float64Array,
   t: Float64Array,
+  s: Float64Array,
+  sums: Float64Array,
   device: number,
   aI: number,
   bI: number,
-  e: Float64Array,
-  i: number,
-  s: Float64Array,
+  junction: number,
   slots: number,
+  conductor: Conductor,
 ): void {
-  const qs = s[slots + L.BEFORE_S];
-  const qd = s[slots + L.BEFORE_D];
-  const vs = s[slots + L.OVERDRIVE_S];
-  const vd = s[slots + L.OVERDRIVE_D];
-  if (c[device + L.LAW] === L.LAW_NUMBER.smooth || (vs > 0 === qs > 0 && vd > 0 === qd > 0)) return;
-  markKink(c, t, device, aI, bI, e, i, s, slots);
+  const a = sums[0];
+  const b = sums[1];
+  s[slots + L.BEFORE_S] = s[slots + L.OVERDRIVE_S];
+  s[slots + L.BEFORE_D] = s[slots + L.OVERDRIVE_D];
+  solveChannel(c, t, device, aI, bI, a, b, 2 * s[slots + L.CHANNEL_A] - s[slots + L.EARLIER_A], s, slots + L.TERM_S);
+  const free = s[slots + L.TERM_S];
+  s[slots + L.EARLIER_A] = s[slots + L.CHANNEL_A];
+  const vs = a + c[aI] * free;
+  const vd = b + c[bI] * free;
+  if (vs > c[device + L.ON_V] || vd > c[device + L.ON_V]) {
+    conductor(c, t, device, aI, bI, junction, s, slots, a, b, free);
+    return;
+  }
+  s[slots + L.CHANNEL_A] = free;
+  s[slots + L.JUNCTION_S] = 0;
+  s[slots + L.JUNCTION_D] = 0;
+  s[slots + L.OVERDRIVE_S] = vs;
+  s[slots + L.OVERDRIVE_D] = vd;
 }
 
-/** The past of stiff state `k` as its backward difference weighs it. */
-function pastOf(s: Float64Array, n: number, stiff: number, k: number): number {
-  return 3.5 * s[n - stiff + k] - 2.25 * s[n + k] + (5 / 6) * s[n + stiff + k] - 0.125 * s[n + 2 * stiff + k];
+function hasCrossed(s: Float64Array, slots: number): boolean {
+  return s[slots + L.OVERDRIVE_S] > 0 !== s[slots + L.BEFORE_S] > 0 || s[slots + L.OVERDRIVE_D] > 0 !== s[slots + L.BEFORE_D] > 0;
 }
 
 /** Channel current, A, from a first guess into `out[at]`, by Newton with the search behind it. */

@@ -144,8 +144,11 @@ function conductor(law: Law, language: Language): string {
     (law === 'square' ? [`if (${v} > 0) { ${F} = scale * ${v} * ${v}; ${f} = 2 * scale * ${v}; }`] : lawText(law, v, F, f, language)).map(
       (line) => `    ${line.replaceAll('DEVICE', 'device').replaceAll('TERM', `n + ${L.TERM_S}`)}`,
     );
-  const start = (end: 'S' | 'D', free: string, over: number) =>
-    `  ${variable} v${end === 'S' ? 's' : 'd'} = ${least}(${free}, ${slot(over)} > on${end} ? ${slot(over)} : knee${end});`;
+  /** Where an end last conducted, a step further along its line unless that is half of nVT; or just into conduction. */
+  const start = (end: 'S' | 'D', free: string, over: number, earlier: number) => [
+    `  ${constant} last${end} = ${slot(over)}, line${end} = last${end} - ${slot(earlier)};`,
+    `  ${variable} v${end === 'S' ? 's' : 'd'} = ${least}(${free}, last${end} > on${end} ? last${end} + (line${end} * rate${end} < 0.5 && line${end} * rate${end} > -0.5 ? line${end} : 0) : knee${end});`,
+  ];
   const cut = (end: 'S' | 'D', v: string) =>
     `    ${constant} step${end} = whole${end} * rate${end} <= 2 ? whole${end} : ${v} < on${end} ? ${least}(whole${end}, knee${end} - ${v}) : (2 + whole${end} * rate${end} / (1 + 0.1 * whole${end} * rate${end})) / rate${end};`;
   return [
@@ -158,10 +161,11 @@ function conductor(law: Law, language: Language): string {
     ...deviceConstants(law, device)
       .filter(([name]) => !['on', 'bent_', 'fall', 'rise', 'enough'].includes(name))
       .map(([name, value]) => `  ${constant} ${name} = ${value};`),
-    start('S', 'a + perAs * freeA', L.OVERDRIVE_S),
-    start('D', 'b + perAd * freeA', L.OVERDRIVE_D),
+    ...start('S', 'a + perAs * freeA', L.OVERDRIVE_S, L.EARLIER_S),
+    ...start('D', 'b + perAd * freeA', L.OVERDRIVE_D, L.EARLIER_D),
+    `  ${variable} junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;`,
     `  for (${counter} step = 0; step < ${NEWTON_STEPS}; step++) {`,
-    `    ${variable} Fs = 0, fs = 0, Fd = 0, fd = 0, S = 0, slopeS = 0, D = 0, slopeD = 0;`,
+    `    ${variable} Fs = 0, fs = 0, Fd = 0, fd = 0;`,
     ...text('vs', 'Fs', 'fs'),
     ...text('vd', 'Fd', 'fd'),
     '    if (lambda != 0) {',
@@ -170,9 +174,10 @@ function conductor(law: Law, language: Language): string {
     '      fd = fd * (1 + reversed) + (past > 0 ? lambda * term : 0);',
     '      Fs = Fs * (1 + past); Fd = Fd * (1 + reversed);',
     '    }',
-    '    if (vs > onD) { S = reverse * exp((vs + off) * rateD); slopeS = S * rateD; }',
-    '    if (vd > onD) { D = reverse * exp((vd + off) * rateD); slopeD = D * rateD; }',
-    `    if (vs > clampOn) { ${constant} Q = clampA * exp((vs + off) * clampRate); S += Q; slopeS += Q * clampRate; }`,
+    ...exponential('vs', 'onD', 'movedS * rateD', 'junctionS', 'reverse', 'rateD', language),
+    ...exponential('vd', 'onD', 'movedD * rateD', 'junctionD', 'reverse', 'rateD', language),
+    ...exponential('vs', 'clampOn', 'movedS * clampRate', 'clamped', 'clampA', 'clampRate', language),
+    `    ${variable} S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;`,
     '    if (grading != 0) {',
     `      addGraded(c, device, vs, ${device(L.STEP_S)}, s, n + ${L.CHARGES_S}, n + ${L.PORT_S}); S += ${slot(L.PORT_S)}; slopeS += ${slot(L.PORT_S + 1)};`,
     `      addGraded(c, device, vd, ${device(L.STEP_D)}, s, n + ${L.CHARGES_D}, n + ${L.PORT_D}); D += ${slot(L.PORT_D)}; slopeD += ${slot(L.PORT_D + 1)};`,
@@ -183,9 +188,9 @@ function conductor(law: Law, language: Language): string {
     `    ${constant} over = 1 / (ss * dd - sd * ds), wholeS = (sd * rd - dd * rs) * over, wholeD = (ds * rs - ss * rd) * over;`,
     cut('S', 'vs'),
     cut('D', 'vd'),
-    '    vs += stepS; vd += stepD;',
+    '    vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;',
     `    if (${absolute}(stepS) < enough && ${absolute}(stepD) < enough) {`,
-    `      ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    `      ${slot(L.EARLIER_S)} = lastS; ${slot(L.EARLIER_D)} = lastD; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
     `      ${slot(L.CHANNEL_A)} = channel + fs * stepS - fd * stepD;`,
     `      ${slot(L.JUNCTION_S)} = S + slopeS * stepS; ${slot(L.JUNCTION_D)} = D + slopeD * stepD;`,
     '      if (grading != 0) keepCharges(c, device, s, n);',
@@ -334,6 +339,16 @@ function sum(terms: readonly string[]): string {
   const half = Math.ceil(terms.length / 2);
   const part = (some: readonly string[]) => (some.length > 1 ? `(${sum(some)})` : sum(some));
   return `${part(terms.slice(0, half))} + ${part(terms.slice(half))}`;
+}
+
+/** A junction's current; after a step of under a thousandth of nVT its series to the third power, which leaves 4e-14 of it, in place of the exponential. */
+function exponential(v: string, on: string, x: string, name: string, reverse: string, rate: string, { constant }: Language): string[] {
+  return [
+    `    if (${v} > ${on}) {`,
+    `      ${constant} x = ${x};`,
+    `      ${name} = ${name} > 0 && x < 1e-3 && x > -1e-3 ? ${name} * (1 + x * (1 + x * (0.5 + x * ${1 / 6}))) : ${reverse} * exp((${v} + off) * ${rate});`,
+    `    } else ${name} = 0;`,
+  ];
 }
 
 function deviceConstants(law: Law, device: (index: number) => string): [string, string][] {

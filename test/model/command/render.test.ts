@@ -144,11 +144,63 @@ test('an unknown format is refused with those there are', async () => {
   expect({ code, stderr }).toEqual({ code: 2, stderr: '--format is "mp3"; expected pcm16, pcm24, pcm32 or float32\n' });
 });
 
-test('a recorded control, which cannot be given here, is refused, not held still', async () => {
-  const folder = folderWith(wavOf(PLAIN, [0]));
-  const { code, stderr } = await folder.fettle('render', 'a.json', 'in.wav', 'out.wav', '--set', 'control.source=external');
-  expect(code).toBe(2);
-  expect(stderr).toBe('control.source of variant A is external, and render takes no recorded control; expected fixed, lfo or envelope\n');
+// Cell A with the gate held at 0 V by its recording: 250 Ω under 10 kΩ, −32.26 dB; off while the recording stands at −1.
+test('a recorded control moves the gate, in time with the sound', async () => {
+  const sound = soundOf(PLAIN, 9600).map((sample) => Math.round(sample / 100));
+  const folder = folderWith(wavOf(PLAIN, sound));
+  folder.write(
+    'control.wav',
+    wavOf(
+      PLAIN,
+      sound.map((_, n) => (n < 4800 ? -32768 : 0)),
+    ),
+  );
+  const control = JSON.stringify({ source: 'external', fullScaleV: 9, offsetV: 0 });
+  const words = ['render', 'a.json', 'in.wav', 'out.wav', '--control', 'control.wav', '--format', 'float32'];
+  expect(await folder.fettle(...words, '--set', `control=${control}`, '--set', 'cell.seriesOhm=10000')).toEqual(SILENT);
+  const { samples } = takeApart(folder.read('out.wav'));
+  const power = (from: number, to: number, of: readonly number[]) => of.slice(from, to).reduce((total, v) => total + v * v, 0);
+  const levelDb = (from: number, to: number) =>
+    10 *
+    Math.log10(
+      power(from, to, samples) /
+        power(
+          from,
+          to,
+          sound.map((v) => v / 32768),
+        ),
+    );
+  expect(levelDb(1000, 4700)).toBeCloseTo(0, 1);
+  expect(levelDb(5000, 9600)).toBeCloseTo(-32.26, 1);
+});
+
+test.each([
+  [
+    'has no recording',
+    ['--set', 'control.source=external'],
+    'control.source of variant A is external; expected --control CONTROL.wav with its recording',
+  ],
+  [
+    'has a recording and no use for it',
+    ['--control', 'in.wav'],
+    '--control is given, but control.source of variant A is fixed; expected external',
+  ],
+  [
+    'has a recording that ends before the sound',
+    ['--set', 'control.source=external', '--control', 'short.wav'],
+    'short.wav has 1 frames; expected at least the 3 of in.wav',
+  ],
+  [
+    'has a recording at another rate',
+    ['--set', 'control.source=external', '--control', 'other.wav'],
+    'other.wav has a sample rate of 44100 Hz; expected that of in.wav, 48000 Hz',
+  ],
+])('a control that %s is refused', async (_, options, sentence) => {
+  const folder = folderWith(wavOf(PLAIN, [0, 0, 0]));
+  folder.write('short.wav', wavOf(PLAIN, [0]));
+  folder.write('other.wav', wavOf({ ...PLAIN, rateHz: 44100 }, [0, 0, 0]));
+  const { code, stderr } = await folder.fettle('render', 'a.json', 'in.wav', 'out.wav', ...options);
+  expect({ code, stderr }).toEqual({ code: 2, stderr: `${sentence}\n` });
   expect(existsSync(folder.at('out.wav'))).toBe(false);
 });
 
