@@ -65,9 +65,11 @@ export function Distortion() {
 /** What parts of 1 % make of it, and the gate that it is read at. */
 function BandWords({ band, gateV }: { readonly band: readonly [number, number] | null; readonly gateV: number }) {
   if (band === null) return <>gate at {gateVolts(gateV)}</>;
+  const [low, high] = band.map(percentText);
+  if (low === high) return <>the same with 1{PERCENT} parts</>;
   return (
     <>
-      {percentText(band[0])} to {percentText(band[1])}, 1{PERCENT} parts
+      {low} to {high}, 1{PERCENT} parts
     </>
   );
 }

@@ -23,7 +23,7 @@ export function FeedbackFigure() {
   const { cell } = useVariant();
   const drawable = curve !== null && curve.points.length > 1 ? curve : null;
   const vgsV = useReading()?.vgsV ?? null;
-  const current = drawable !== null && (vgsV === null || Math.abs(drawable.gateV - vgsV) < SAME_GATE_V);
+  const current = drawable === null || vgsV === null || Math.abs(drawable.gateV - vgsV) < SAME_GATE_V;
   const range = useHeldRange(drawable && thdRangeOf(drawable.points), usePlaying());
   const plot = size && drawable && range ? plotFeedback(drawable.points, size.width, size.height, range) : null;
   return (
@@ -32,14 +32,8 @@ export function FeedbackFigure() {
       className="feedback-figure"
       caption={
         <>
-          Distortion against <i>k</i> (drag it)
-          {drawable && (
-            <>
-              , gate at {gateVolts(drawable.gateV)}
-              {!current && ' a moment ago'}
-            </>
-          )}
-          . Shaded: 1{'\u2009'}% parts.
+          Distortion against <i>k</i> (drag it){drawable && <>, gate at {gateVolts(drawable.gateV)}</>}
+          {current ? <>. Shaded: 1{'\u2009'}% parts.</> : ' a moment ago.'}
         </>
       }
     >
