@@ -5,7 +5,7 @@
 import type { Device, Law } from '../design/types.ts';
 import { type LawConstants, lawConstants } from '../device/law.ts';
 import { smoothTable, TERMS } from '../device/table.ts';
-import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
+import { atTemperature, thermalVoltage } from '../device/temperature.ts';
 import { log } from '../device/math.ts';
 import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
@@ -18,8 +18,6 @@ import { SQUARE_CONDUCTOR, SQUARE_KERNELS } from './kernels/square.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
 import { createReduction, discretise, memoryColumns, type Reduction, respond, respondAtRest, stepColumns } from './reduce.ts';
 
-/** Boltzmann's constant over the elementary charge, V/K (SI 2019, exact values 1.380649e-23 and 1.602176634e-19). */
-const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
 /** Below this many nVT, and where less than this flows above it, a junction carries its reverse current and no more. */
 const OFF_BELOW = -10;
 const LEFT_OUT_A = 1e-15;
@@ -107,7 +105,7 @@ export function compileCell(circuit: Circuit, device: Device, tempC: number, noi
   values[plan.values.length + SCALE] = law.scale;
   values[plan.values.length + GATE_OFF_V] = law.gateOffV;
   values[plan.values.length + REVERSE_A] = junction.reverseA;
-  const thermalV = VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
+  const thermalV = thermalVoltage(tempC);
   values[plan.values.length + NVT_V] = junction.ideality * thermalV;
   values[plan.values.length + LAMBDA] = device.lambdaPerV;
   values[plan.values.length + BARRIER_V] = device.barrierV;
