@@ -27,7 +27,8 @@ const CONDUCTORS = { square: SQUARE_CONDUCTOR, gradual: GRADUAL_CONDUCTOR, smoot
 
 /** The smooth law's table reaches this far past VGS = 0; beyond it, and beyond the longest table, the law is evaluated directly. */
 const TABLE_BEYOND_V = 1.5;
-const LONGEST_TABLE_Z = 400;
+const SHORTEST_TABLE_Z = 32;
+const LONGEST_TABLE_Z = 512;
 
 /** The device's movable values, after the elements'. */
 const SCALE = 0;
@@ -77,6 +78,8 @@ export interface Cell {
   readonly kernel: Kernel;
   /** The values in force; changed by `loadValues`. */
   readonly values: Float64Array;
+  /** The same with the next values of what stores charge. */
+  readonly stored: Float64Array;
   readonly reduction: Reduction;
   /** In force; then those aimed at, and one step of the way there. */
   readonly coefficients: Float64Array;
@@ -113,8 +116,9 @@ export function compileCell(circuit: Circuit, device: Device, tempC: number, noi
   values[plan.values.length + CLAMP_A] = clamp.reverseA;
   values[plan.values.length + CLAMP_NVT_V] = clamp.ideality * thermalV;
   values[plan.values.length + WIDTH_V] = law.law === 'smooth' ? law.tailV : law.depletionV;
+  const table = tableOf(law);
   return {
-    shape: [device.channel, law.law, law.law === 'smooth' ? law.exponent : '', device.grading, plan.shape].join(' '),
+    shape: [device.channel, law.law, law.law === 'smooth' ? `${law.exponent} ${table.length}` : '', device.grading, plan.shape].join(' '),
     plan,
     polarity: device.channel === 'n' ? 1 : -1,
     law: law.law,
@@ -122,15 +126,18 @@ export function compileCell(circuit: Circuit, device: Device, tempC: number, noi
     grading: device.grading,
     gateSourceAt: circuit.elements.findIndex((element) => element.name === 'gateSourceF'),
     gateDrainAt: circuit.elements.findIndex((element) => element.name === 'gateDrainF'),
-    table: tableOf(law),
+    table,
     enoughV: PLAYING_ENOUGH_V,
     values,
   };
 }
 
+/** Tables come in lengths that double: values that need another one belong to another shape. */
 function tableOf(law: LawConstants): Float64Array {
   if (law.law !== 'smooth') return new Float64Array(0);
-  return smoothTable(law.exponent, Math.min(LONGEST_TABLE_Z, (TABLE_BEYOND_V - law.gateOffV) / law.tailV));
+  let length = SHORTEST_TABLE_Z;
+  while (length < LONGEST_TABLE_Z && length < (TABLE_BEYOND_V - law.gateOffV) / law.tailV) length *= 2;
+  return smoothTable(law.exponent, length);
 }
 
 /**
@@ -159,6 +166,7 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
     numbers,
     stateCount: n,
     values: Float64Array.from(numbers.values),
+    stored: new Float64Array(numbers.values.length),
     reduction: createReduction(numbers.plan),
     coefficients: new Float64Array(L.coefficientLayout(n).length),
     target: new Float64Array(L.coefficientLayout(n).length),
@@ -189,9 +197,28 @@ export function loadValues(cell: Cell, values: Float64Array): boolean {
 
 /**
  * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients at both ends are exact, between them they follow a
- * straight line, unless values are too far apart for that. False, and nothing changes, when the network would be singular.
+ * straight line, unless values are too far apart for that. What stores charge between samples, and holds a direct voltage, changes at once: half way
+ * between two sets it would not stay at rest. False, and nothing changes, when the network would be singular.
  */
 export function aimAt(cell: Cell, values: Float64Array, samples: number): boolean {
+  const { plan } = cell.numbers;
+  const { stored } = cell;
+  let changes = false;
+  stored.set(cell.values);
+  for (let i = 0; i < plan.elements.length; i++) {
+    const { kind } = plan.elements[i];
+    if ((kind !== 'capacitor' && kind !== 'inductor') || values[i] === stored[i]) continue;
+    stored[i] = values[i];
+    changes = true;
+  }
+  if (changes && samples > 1) {
+    if (!headFor(cell, stored, 1)) return false;
+    arrive(cell);
+  }
+  return headFor(cell, values, samples);
+}
+
+function headFor(cell: Cell, values: Float64Array, samples: number): boolean {
   const { reduction, stepSec, coefficients, target, increment } = cell;
   const { values: moved } = reduction;
   for (let i = 0; i < moved.length; i++) moved[i] = values[i];
@@ -256,6 +283,26 @@ export function advanceCell(
   kinks: Float64Array = NOTHING,
 ): void {
   cell.kernel(cell.coefficients, cell.numbers.table, noise, kinks, cell.state, signal, control, signal, from, to);
+}
+
+/** Takes over the states, and their past, of elements that have the same name in both cells. Allocates. */
+export function inheritStates(cell: Cell, from: Cell): void {
+  const named = (of: Cell) => of.numbers.plan.states.map(({ element }) => of.numbers.plan.elements[element].name);
+  const theirs = named(from);
+  named(cell).forEach((name, to) => {
+    const place = theirs.indexOf(name);
+    if (place < 0) return;
+    cell.state[to] = from.state[place];
+    const stiff = to - cell.numbers.plan.trapezoidal;
+    if (stiff < 0) return;
+    const fromStiff = place - from.numbers.plan.trapezoidal;
+    const width = cell.stateCount - cell.numbers.plan.trapezoidal;
+    const fromWidth = from.stateCount - from.numbers.plan.trapezoidal;
+    for (let past = 0; past < 3; past++) {
+      cell.state[cell.stateCount + past * width + stiff] =
+        fromStiff < 0 ? from.state[place] : from.state[from.stateCount + past * fromWidth + fromStiff];
+    }
+  });
 }
 
 /** Gate-source voltage of the last sample, V, with the sign of the part's channel. */

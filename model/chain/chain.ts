@@ -6,7 +6,7 @@ import { gateSourceV } from '../cell/cell.ts';
 import { quietControlV } from '../control/control.ts';
 import type { ChainNumbers } from './compile.ts';
 import { oversamplingDelay } from './oversample.ts';
-import { createVoice, LONGEST_BLOCK, moveVoice, processVoice, type Voice } from './voice.ts';
+import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, type Voice } from './voice.ts';
 
 const FADE_SEC = 0.03;
 /** A new voice runs unheard for this long before it is faded in, so that its filters are full. */
@@ -95,7 +95,7 @@ export function moveChain(chain: Chain, numbers: ChainNumbers): void {
 }
 
 function startFade(chain: Chain, next: Voice): void {
-  next.drive.phase[0] = chain.voice.drive.phase[0];
+  inherit(next, chain.voice);
   chain.next = next;
   chain.fadeDone = -Math.round(LEAD_SEC * next.numbers.sampleRateHz);
   chain.latencySamples = oversamplingDelay(next.numbers.oversampling, next.numbers.filters);
@@ -114,11 +114,23 @@ export function processChain(
   readings.outputPeak = 0;
   readings.drainPeakV = 0;
   readings.feedthroughPeakV = 0;
-  for (let start = 0; start < length; start += LONGEST_BLOCK) {
-    takeExternal(chain, external, start, Math.min(LONGEST_BLOCK, length - start));
-    processBlock(chain, inputs, outputs, start, Math.min(LONGEST_BLOCK, length - start));
+  let start = 0;
+  while (start < length) {
+    const count = Math.min(LONGEST_BLOCK, length - start, samplesToFadeEnd(chain));
+    takeExternal(chain, external, start, count);
+    processBlock(chain, inputs, outputs, start, count);
+    start += count;
   }
   readings.gateSourceV = gateSourceV(chain.voice.quiet.cell);
+}
+
+/** A fade ends at the end of a block, so that what follows it begins at the same sample whatever the caller's blocks are. */
+function samplesToFadeEnd({ next, fadeDone }: Chain): number {
+  return next ? fadeSamples(next) - fadeDone : LONGEST_BLOCK;
+}
+
+function fadeSamples(next: Voice): number {
+  return Math.round(FADE_SEC * next.numbers.sampleRateHz);
 }
 
 function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[], start: number, count: number): void {
@@ -173,7 +185,7 @@ function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number
 
 function crossfade(chain: Chain, next: Voice, count: number): boolean {
   const sound = processVoice(next, chain.inputs, chain.external, chain.fadeOutputs, count);
-  const total = Math.round(FADE_SEC * next.numbers.sampleRateHz);
+  const total = fadeSamples(next);
   for (let channel = 0; channel < chain.outputs.length; channel++) {
     const out = chain.outputs[channel];
     const incoming = chain.fadeOutputs[channel];
@@ -195,15 +207,20 @@ function crossfade(chain: Chain, next: Voice, count: number): boolean {
 
 const WARM_BLOCKS = 400;
 
-/** Runs every branch often enough to be compiled, on a copy; the chain itself is untouched. */
+const WARM_MOVE = 1.001;
+
+/** Runs every branch often enough to be compiled, on a copy that moves and fades; the chain itself is untouched. */
 export function warmChain(chain: Chain): void {
   const copy = createChain(chain.numbers);
   const input = copy.inputs.map(() => new Float32Array(LONGEST_BLOCK));
   const output = copy.inputs.map(() => new Float32Array(LONGEST_BLOCK));
+  const { numbers } = chain;
+  const moved = { ...numbers, cells: numbers.cells.map((cell) => ({ ...cell, values: cell.values.map((value) => value * WARM_MOVE) })) };
   for (let block = 0; block < WARM_BLOCKS; block++) {
     const peak = block % 4 === 3 ? 40 / chain.numbers.fullScaleV : block % 4;
     for (const channel of input) for (let i = 0; i < channel.length; i++) channel[i] = peak * (((block + i) % 32) / 16 - 1);
-    if (block % 50 === 0) moveChain(copy, chain.numbers);
+    if (block % 50 === 0) moveChain(copy, block % 100 === 0 ? moved : numbers);
+    if (block === WARM_BLOCKS / 2) moveChain(copy, { ...numbers, shape: `${numbers.shape} once more` });
     processChain(copy, input, output);
   }
 }

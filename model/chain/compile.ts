@@ -3,7 +3,7 @@ import type { CellNumbers } from '../cell/cell.ts';
 import { cellNumbers, variantAt } from '../cell/fromDesign.ts';
 import { type ControlNumbers, compileControl, controlShape } from '../control/control.ts';
 import type { Design } from '../design/types.ts';
-import { amplifierValues, isIdeal } from './amplifier.ts';
+import { amplifierValues, isIdeal, limitsOf } from './amplifier.ts';
 import type { FilterSet } from './halfband.ts';
 
 export type { FilterSet } from './halfband.ts';
@@ -57,7 +57,7 @@ export function compileChain(
     oversampling,
     filters,
     controlShape(control),
-    idealAmplifier ? 'ideal' : 'real',
+    limitsOf(variant.output),
     noiseSeed ?? 'silent',
     ...cells.map((cell) => cell.shape),
   ].join(' | ');

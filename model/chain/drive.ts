@@ -2,13 +2,14 @@
  * Control and cells closed into one loop at every upper-rate sample.
  *
  * Scheme   a control that does not listen to the output runs ahead of the cells, a slice at a time. A follower of the output is predicted along a straight
- *          line, the cells are solved with that, the follower with their output, and the cells again with the corrected control until both agree
+ *          line, the cells are solved with that and the follower with their output: the control asked for falls as the control given rises, so
+ *          secants within a bracket bring the two together, to 0.1 µV or 24 passes
  * Error    against a continuous solution: test/model/chain/loop.test.ts
  */
 import { advanceCell, type Cell } from '../cell/cell.ts';
 import { fillNoise } from '../cell/noise.ts';
 import type { ControlNumbers } from '../control/control.ts';
-import { FOLLOWER_SLOTS, follow, HEARD, keepStep, NEXT_CONTROL_V } from '../control/follower.ts';
+import { ENVELOPE, FOLLOWER_SLOTS, follow, HEARD, keepStep, LIMIT_V, NEXT_CONTROL_V, RECTIFIED, REST_V } from '../control/follower.ts';
 import { runOscillator } from '../control/oscillator.ts';
 import type { GaussianSource } from '../device/random.ts';
 import type { ChainNumbers } from './compile.ts';
@@ -22,15 +23,22 @@ interface Driven {
   readonly gaussian: GaussianSource;
 }
 
-/** After a follower's own memory: the control voltages of the two samples before, and how far a correction moved it, V. */
+/** After a follower's own memory: the control voltages of the two samples before, V. */
 const CONTROL_V = FOLLOWER_SLOTS;
 const EARLIER_V = FOLLOWER_SLOTS + 1;
-const MOVED_V = FOLLOWER_SLOTS + 2;
-const DETECTOR_SLOTS = FOLLOWER_SLOTS + 3;
+/** While a sample is solved: the bracket; what was given and how much more was asked for, in this pass and in the one before, V. */
+const LOW_V = FOLLOWER_SLOTS + 2;
+const HIGH_V = FOLLOWER_SLOTS + 3;
+const GIVEN_V = FOLLOWER_SLOTS + 4;
+const EXCESS_V = FOLLOWER_SLOTS + 5;
+const LAST_GIVEN_V = FOLLOWER_SLOTS + 6;
+const LAST_EXCESS_V = FOLLOWER_SLOTS + 7;
+const DETECTOR_SLOTS = FOLLOWER_SLOTS + 8;
 
-/** Passes through the loop at one sample: the prediction, and corrections until they agree or are as many as this. */
-const MOST_PASSES = 4;
-const AGREED_V = 1e-6;
+const MOST_PASSES = 24;
+const AGREED_V = 1e-7;
+/** Without a pass that halves the excess, the bracket is halved. */
+const TOO_LITTLE = 0.5;
 
 export interface Drive {
   readonly control: ControlNumbers;
@@ -51,7 +59,7 @@ export interface Drive {
 export function createDrive(control: ControlNumbers, values: Float64Array, lanes: readonly Driven[], longest: number): Drive {
   const shared = !(control.kind === 'follower' && !control.linked);
   const first = new Float64Array(longest);
-  const restV = control.kind === 'external' ? values[1] : values[0];
+  const restV = restControlV(control, values);
   return {
     control,
     values,
@@ -66,6 +74,29 @@ export function createDrive(control: ControlNumbers, values: Float64Array, lanes
     saved: lanes.map((lane) => new Float64Array(lane.cell.state.length + 2)),
     recorded: first,
   };
+}
+
+/** Takes over an oscillator's phase and, between two followers, what they have heard. */
+export function inheritDrive(drive: Drive, from: Drive): void {
+  drive.phase[0] = from.phase[0];
+  if (drive.control.kind !== 'follower' || from.control.kind !== 'follower') return;
+  drive.detectors.forEach((slots, d) => {
+    const theirs = from.detectors[Math.min(d, from.detectors.length - 1)];
+    for (const place of [ENVELOPE, RECTIFIED, CONTROL_V, EARLIER_V]) slots[place] = theirs[place];
+  });
+}
+
+/** Every detector as before the first sound. */
+export function restDrive({ detectors, control, values }: Drive): void {
+  for (let d = 0; d < detectors.length; d++) {
+    detectors[d].fill(0);
+    detectors[d][CONTROL_V] = restControlV(control, values);
+    detectors[d][EARLIER_V] = detectors[d][CONTROL_V];
+  }
+}
+
+function restControlV(control: ControlNumbers, values: Float64Array): number {
+  return control.kind === 'external' ? values[1] : values[0];
 }
 
 /** Solves the upper-rate samples `from` to `to` of every lane's top buffer in place. Allocates nothing. */
@@ -124,10 +155,10 @@ function followInput(drive: Drive, lanes: readonly Driven[], fullWave: boolean, 
   }
 }
 
-/** Solves sample `i` with the predicted control, then again with the control that the solution asks for, until the two agree. */
+/** Solves sample `i` with the predicted control, then with better ones, until the control given and the control asked for agree. */
 function closeLoop(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
-  const { detectors, controls, saved } = drive;
-  for (let d = 0; d < detectors.length; d++) controls[d][i] = 2 * detectors[d][CONTROL_V] - detectors[d][EARLIER_V];
+  const { detectors, controls, saved, values } = drive;
+  for (let d = 0; d < detectors.length; d++) predict(values, detectors[d]);
   for (let channel = 0; channel < lanes.length; channel++) {
     const { cell } = lanes[channel];
     saved[channel].set(cell.state);
@@ -136,14 +167,51 @@ function closeLoop(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i:
   }
   for (let pass = 0; pass < MOST_PASSES; pass++) {
     if (pass > 0) restore(lanes, saved, i);
+    for (let d = 0; d < detectors.length; d++) controls[d][i] = detectors[d][GIVEN_V];
     for (let channel = 0; channel < lanes.length; channel++) {
       advanceCell(lanes[channel].cell, top(lanes[channel]), controls[channel], i, i + 1, lanes[channel].noise, lanes[channel].kinks);
     }
-    correct(drive, lanes, fullWave, i);
-    if (pass > 0 && detectors[0][MOVED_V] < AGREED_V) break;
+    hear(drive, lanes, fullWave, i);
+    let agreed = true;
+    for (let d = 0; d < detectors.length; d++) {
+      compare(values, detectors[d], pass);
+      if (Math.abs(detectors[d][EXCESS_V]) > AGREED_V) agreed = false;
+    }
+    if (agreed || pass === MOST_PASSES - 1) break;
+    for (let d = 0; d < detectors.length; d++) if (Math.abs(detectors[d][EXCESS_V]) > AGREED_V) improve(detectors[d], pass);
   }
-  hear(drive, lanes, fullWave, i);
-  for (let d = 0; d < detectors.length; d++) takeStep(drive.values, detectors[d]);
+  for (let d = 0; d < detectors.length; d++) takeStep(detectors[d]);
+}
+
+function predict(values: Float64Array, slots: Float64Array): void {
+  const low = Math.min(values[REST_V], values[LIMIT_V]);
+  const high = Math.max(values[REST_V], values[LIMIT_V]);
+  slots[LOW_V] = low;
+  slots[HIGH_V] = high;
+  slots[GIVEN_V] = Math.min(high, Math.max(low, 2 * slots[CONTROL_V] - slots[EARLIER_V]));
+}
+
+/** How much more control the present output asks for than it was given; it narrows the bracket. */
+function compare(values: Float64Array, slots: Float64Array, pass: number): void {
+  follow(values, slots);
+  if (pass > 0 && slots[GIVEN_V] === slots[LAST_GIVEN_V]) return;
+  const excess = slots[NEXT_CONTROL_V] - slots[GIVEN_V];
+  slots[EXCESS_V] = excess;
+  if (excess > 0) slots[LOW_V] = slots[GIVEN_V];
+  else slots[HIGH_V] = slots[GIVEN_V];
+}
+
+/** The next control to give: at first the one asked for, then the secant's, and half way where that leaves the bracket or gains too little. */
+function improve(slots: Float64Array, pass: number): void {
+  const given = slots[GIVEN_V];
+  const excess = slots[EXCESS_V];
+  const change = excess - slots[LAST_EXCESS_V];
+  const gains = pass < 2 || Math.abs(excess) < TOO_LITTLE * Math.abs(slots[LAST_EXCESS_V]);
+  let next = pass === 0 || change === 0 ? given + excess : given - (excess * (given - slots[LAST_GIVEN_V])) / change;
+  if (!(gains && next >= slots[LOW_V] && next <= slots[HIGH_V])) next = 0.5 * (slots[LOW_V] + slots[HIGH_V]);
+  slots[LAST_GIVEN_V] = given;
+  slots[LAST_EXCESS_V] = excess;
+  slots[GIVEN_V] = next;
 }
 
 function restore(lanes: readonly Driven[], saved: readonly Float64Array[], i: number): void {
@@ -155,21 +223,7 @@ function restore(lanes: readonly Driven[], saved: readonly Float64Array[], i: nu
   }
 }
 
-/** Sets the control that the present output asks for; how far it moved, V, stands with the first detector. */
-function correct(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
-  const { detectors, values, controls } = drive;
-  hear(drive, lanes, fullWave, i);
-  detectors[0][MOVED_V] = 0;
-  for (let d = 0; d < detectors.length; d++) {
-    const slots = detectors[d];
-    follow(values, slots);
-    detectors[0][MOVED_V] = Math.max(detectors[0][MOVED_V], Math.abs(slots[NEXT_CONTROL_V] - controls[d][i]));
-    controls[d][i] = slots[NEXT_CONTROL_V];
-  }
-}
-
-function takeStep(values: Float64Array, slots: Float64Array): void {
-  follow(values, slots);
+function takeStep(slots: Float64Array): void {
   keepStep(slots);
   slots[EARLIER_V] = slots[CONTROL_V];
   slots[CONTROL_V] = slots[NEXT_CONTROL_V];

@@ -45,6 +45,11 @@ export function createHalf(filters: FilterSet, stage: number): Half {
   };
 }
 
+export function clearHalf({ state, history }: Half): void {
+  state.fill(0);
+  history.fill(0);
+}
+
 /** Doubles the rate: `count` samples of `input` become 2·`count` of `output`. */
 export function doubleRate(half: Half, input: Float64Array, output: Float64Array, count: number): void {
   if (half.filters === 'lowLatency') {

@@ -33,6 +33,11 @@ export function createSoftener(): Softener {
   return { late: new Float64Array(KINK_DELAY), ahead: new Float64Array(1) };
 }
 
+export function clearSoftener({ late, ahead }: Softener): void {
+  late.fill(0);
+  ahead.fill(0);
+}
+
 /** Delays `count` samples of `signal`, at least KINK_DELAY, in place and corrects them at the marked `kinks`, which are then forgotten. */
 export function soften({ late, ahead }: Softener, signal: Float64Array, kinks: Float64Array, count: number): void {
   const first = late[0];

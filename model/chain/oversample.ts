@@ -1,5 +1,5 @@
 /** Up to the rate at which the cell is solved, and back: half-band stages in a row, the signal as Float64 from edge to edge. */
-import { createHalf, doubleRate, type FilterSet, type Half, halveRate, roundTripSamples } from './halfband.ts';
+import { clearHalf, createHalf, doubleRate, type FilterSet, type Half, halveRate, roundTripSamples } from './halfband.ts';
 import { KINK_DELAY } from './kinks.ts';
 
 export interface Oversampler {
@@ -48,6 +48,16 @@ export function createOversampler(factor: number, filters: FilterSet, longest: n
     delay: new Float64Array(paddingSamples(factor, filters)),
     leaving: new Float64Array(paddingSamples(factor, filters)),
   };
+}
+
+/** Forgets every sample. */
+export function clearOversampler({ up, down, buffers, delay }: Oversampler): void {
+  for (let stage = 0; stage < up.length; stage++) {
+    clearHalf(up[stage]);
+    clearHalf(down[stage]);
+  }
+  for (let rate = 0; rate < buffers.length; rate++) buffers[rate].fill(0);
+  delay.fill(0);
 }
 
 /** Raises `count` samples in the first buffer to the last, which it returns. */

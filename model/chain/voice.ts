@@ -1,18 +1,18 @@
 /**
  * One complete path of a chain, for one shape of circuit: oversamplers, cells, control and amplifier with their state. Values move along straight
  * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
- * its coefficients go straight from one exact set to the next, a step at each sample.
+ * its coefficients go from one exact set to the next as `aimAt` in cell.ts says.
  */
-import { advanceCell, aimAt, approach, arrive, type Cell, createCell, loadValues, settle } from '../cell/cell.ts';
+import { advanceCell, aimAt, approach, arrive, type Cell, createCell, inheritStates, loadValues, settle } from '../cell/cell.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
 import { createAmplifierState, GAIN, processAmplifier } from './amplifier.ts';
 import { createKinks } from '../cell/kernels/kinks.ts';
 import type { ChainNumbers } from './compile.ts';
-import { advanceSlice, createDrive, type Drive } from './drive.ts';
-import { createSoftener, type Softener, soften } from './kinks.ts';
-import { createOversampler, lower, type Oversampler, raise } from './oversample.ts';
+import { advanceSlice, createDrive, type Drive, inheritDrive, restDrive } from './drive.ts';
+import { clearSoftener, createSoftener, type Softener, soften } from './kinks.ts';
+import { clearOversampler, createOversampler, lower, type Oversampler, raise } from './oversample.ts';
 
 /** Lower-rate samples that a voice takes at a time. */
 export const LONGEST_BLOCK = 128;
@@ -88,10 +88,14 @@ export interface Lane {
   /** Of the last block; `lost` where a voltage in it was no number or ran away. */
   outputPeakV: number;
   lost: boolean;
+  /** Last voltage of the cell in a sound block, and upper-rate samples until the lane is at its full level again after a loss. */
+  lastV: number;
+  muted: number;
 }
 
 export interface Voice {
-  readonly numbers: ChainNumbers;
+  /** Those last moved to. */
+  numbers: ChainNumbers;
   readonly lanes: readonly Lane[];
   readonly drive: Drive;
   /** Raises a recorded control; null for other controls. */
@@ -138,6 +142,8 @@ export function createVoice(numbers: ChainNumbers): Voice {
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
       outputPeakV: 0,
       lost: false,
+      lastV: 0,
+      muted: 0,
     };
   });
   const control = moving(Float64Array.from(numbers.control.values));
@@ -169,9 +175,10 @@ export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
   numbers.cells.forEach((cell, channel) => {
     retarget(voice.lanes[channel].values, cell.values);
   });
+  voice.numbers = numbers;
   voice.ramp.done = 0;
   voice.ramp.inSlice = 0;
-  voice.ramp.total = Math.max(1, Math.round((RAMP_SEC * numbers.sampleRateHz * numbers.oversampling) / voice.numbers.updateEvery));
+  voice.ramp.total = Math.max(1, Math.round((RAMP_SEC * numbers.sampleRateHz * numbers.oversampling) / numbers.updateEvery));
 }
 
 function retarget(values: Moving, to: Float64Array): void {
@@ -189,6 +196,13 @@ function aim({ now, from, to, aim: end, increment }: Moving, fraction: number, s
 
 function step({ now, increment }: Moving): void {
   for (let i = 0; i < now.length; i++) now[i] += increment[i];
+}
+
+/** Takes over what a voice of another shape remembers and this one has too: the control's memory, and the states of elements of the same name. */
+export function inherit(voice: Voice, from: Voice): void {
+  inheritDrive(voice.drive, from.drive);
+  inheritStates(voice.quiet.cell, from.quiet.cell);
+  for (let channel = 0; channel < voice.lanes.length; channel++) inheritStates(voice.lanes[channel].cell, from.lanes[channel].cell);
 }
 
 /**
@@ -221,16 +235,23 @@ export function processVoice(
   advanceAll(voice, upperCount);
   advanceQuiet(voice, count);
   let sound = true;
+  for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) sound = false;
+  if (!sound) restDrive(voice.drive);
   for (let channel = 0; channel < lanes.length; channel++) {
-    if (lanes[channel].lost) {
-      putAtRest(voice, lanes[channel]);
-      sound = false;
-    }
+    if (lanes[channel].lost) putAtRest(voice, lanes[channel], upperCount);
+    else fadeIn(voice, lanes[channel], upperCount);
+    lanes[channel].lastV = top(lanes[channel])[upperCount - 1];
     if (numbers.oversampling > 1) soften(lanes[channel].softener, top(lanes[channel]), lanes[channel].kinks, upperCount);
   }
   amplify(voice, upperCount);
   for (let channel = 0; channel < lanes.length; channel++) {
     const low = lower(lanes[channel].oversampler, count);
+    if (!allFinite(low, count)) {
+      clearOversampler(lanes[channel].oversampler);
+      clearSoftener(lanes[channel].softener);
+      lanes[channel].amplifier.fill(0);
+      sound = false;
+    }
     for (let i = 0; i < count; i++) outputs[channel][i] = low[i] * levelAt(levels, PER_V, i);
   }
   levels.done = Math.min(levels.done + count, levels.total);
@@ -317,12 +338,32 @@ function amplify({ numbers, lanes, amplifier, amplifierNow }: Voice, upperCount:
   amplifier.done = Math.min(amplifier.done + upperCount, amplifier.total);
 }
 
-/** The cell at its operating point, the block silent. */
-function putAtRest(voice: Voice, lane: Lane): void {
-  top(lane).fill(0);
+function allFinite(signal: Float64Array, count: number): boolean {
+  for (let i = 0; i < count; i++) if (!Number.isFinite(signal[i])) return false;
+  return true;
+}
+
+function mutedSamples({ numbers }: Voice): number {
+  return Math.round(RAMP_SEC * numbers.sampleRateHz * numbers.oversampling);
+}
+
+/** Brings a lane that was lost back to its level. */
+function fadeIn(voice: Voice, lane: Lane, upperCount: number): void {
+  const total = mutedSamples(voice);
+  const signal = top(lane);
+  for (let i = 0; i < upperCount && lane.muted > 0; i++) {
+    lane.muted -= 1;
+    signal[i] *= 1 - lane.muted / total;
+  }
+}
+
+/** The cell at its operating point; the block falls from the last good voltage to silence. */
+function putAtRest(voice: Voice, lane: Lane, upperCount: number): void {
+  const signal = top(lane);
+  for (let i = 0; i < upperCount; i++) signal[i] = lane.lastV * (1 - (i + 1) / upperCount);
+  lane.muted = mutedSamples(voice);
   if (lane.kinks.length > 0) lane.kinks[0] = 0;
   lane.outputPeakV = 0;
-  lane.amplifier.fill(0);
   lane.cell.state.fill(0);
   settle(lane.cell, 0, quietControlV(voice.numbers.control));
 }

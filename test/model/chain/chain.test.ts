@@ -4,9 +4,9 @@ import { type Chain, createChain, moveChain, processChain, warmChain } from '../
 import { compileChain } from '../../../model/chain/compile.ts';
 import type { FilterSet } from '../../../model/chain/halfband.ts';
 import { renderClip } from '../../../model/chain/render.ts';
-import type { Control, Design, Variant } from '../../../model/design/types.ts';
+import type { Cell, Control, Design, Variant } from '../../../model/design/types.ts';
 import { measureTone } from '../../../model/study/tone.ts';
-import { CELL_A_DEVICE, designOf, REAL_CELL, REAL_DEVICE, variantOf } from '../../support/designs.ts';
+import { CELL_A, CELL_A_DEVICE, designOf, REAL_CELL, REAL_DEVICE, variantOf } from '../../support/designs.ts';
 
 const RATE = 48000;
 const TREMOLO: Control = { source: 'lfo', shape: 'sine', rateHz: 4, fromV: -0.4, toV: -1.7, edgeSec: 0.01 };
@@ -42,6 +42,84 @@ test('block length changes no bit, while values move and shapes fade too', () =>
   };
   const whole = play(128);
   for (const block of [1, 37, 128, 333, 4000]) expect(play(block)).toEqual(whole);
+});
+
+test('block length changes no bit where a third shape waits for the fade to the second', () => {
+  const input = tone(9600);
+  const withLoad = withVariant(DESIGN, { cell: { ...REAL_CELL, loadF: 0 } });
+  const without = withVariant(DESIGN, { cell: { ...REAL_CELL, feedback: { kind: 'none' } } });
+  const play = (block: number) => {
+    const chain = chainOf(DESIGN);
+    const parts = [run(chain, input.subarray(0, 1800), block)];
+    moveChain(chain, compileChain(withLoad, 0, RATE, 1, 'lowLatency'));
+    parts.push(run(chain, input.subarray(1800, 2400), block));
+    moveChain(chain, compileChain(without, 0, RATE, 1, 'lowLatency'));
+    parts.push(run(chain, input.subarray(2400), block));
+    return parts.flatMap((part) => Array.from(part));
+  };
+  const whole = play(128);
+  for (const block of [1, 7, 37, 600]) expect(play(block)).toEqual(whole);
+});
+
+const SLOW: Control = {
+  source: 'envelope',
+  senses: 'input',
+  rectifier: 'full',
+  attackOhm: 1e5,
+  releaseOhm: 1e6,
+  timingF: 1e-6,
+  thresholdV: 0.02,
+  gainVPerV: 8,
+  restV: -1.6,
+  limitV: -0.3,
+  linked: true,
+};
+
+test('a circuit of another shape takes over the envelope: its level stays', () => {
+  const compressor = withVariant(DESIGN, { control: SLOW });
+  const chain = chainOf(compressor);
+  const before = run(chain, tone(RATE), 128).subarray(-4800);
+  moveChain(chain, compileChain(withVariant(compressor, { cell: { ...REAL_CELL, loadF: 0 } }), 0, RATE, 1, 'lowLatency'));
+  const after = run(chain, tone(9600), 128);
+  const peak = (samples: Float32Array) => Math.max(...samples.map(Math.abs));
+  expect(20 * Math.log10(peak(after) / peak(before))).toBeLessThan(0.5);
+  expect(20 * Math.log10(peak(after.subarray(-4800)) / peak(before))).toBeGreaterThan(-0.5);
+});
+
+test('a lost state is found again: the level falls to silence without a step and comes back, with a follower in the loop too', () => {
+  const chain = chainOf(withVariant(DESIGN, { control: { ...SLOW, senses: 'output', attackOhm: 4700 } }));
+  const before = run(chain, tone(RATE / 2), 128);
+  chain.voice.lanes[0].cell.state[0] = Number.NaN;
+  const after = run(chain, tone(RATE), 128);
+  expect(chain.readings.faults).toBe(1);
+  expect(after.every(Number.isFinite)).toBe(true);
+  const peak = (samples: Float32Array) => Math.max(...samples.map(Math.abs));
+  expect(peak(after.subarray(-4800)) / peak(before.subarray(-4800))).toBeCloseTo(1, 2);
+  const largestStep = (samples: Float32Array) =>
+    samples.reduce((most, v, i) => (i === 0 ? 0 : Math.max(most, Math.abs(v - samples[i - 1]))), 0);
+  const joined = Float32Array.from([...before.subarray(-100), ...after.subarray(0, 2000)]);
+  expect(largestStep(joined)).toBeLessThan(1.5 * largestStep(before.subarray(-4800)));
+});
+
+const HALF_SUPPLY: Cell = {
+  ...CELL_A,
+  coupling: { kind: 'capacitor', couplingF: 1e-6, leakOhm: 1e9 },
+  outputCouplingF: 1e-6,
+  loadOhm: 1e5,
+  drainReturnOhm: 1e6,
+  reference: { kind: 'halfSupply', supplyV: 9, upperOhm: 1e4, lowerOhm: 1e4, decouplingF: 1e-5 },
+};
+
+test.each([
+  ['output coupling 1 to 2.2 µF', { outputCouplingF: 2.2e-6 }],
+  ['input coupling 1 to 10 µF', { coupling: { kind: 'capacitor', couplingF: 1e-5, leakOhm: 1e9 } }],
+  ['decoupling 10 to 22 µF', { reference: { ...HALF_SUPPLY.reference, decouplingF: 2.2e-5 } }],
+] as [string, Partial<Cell>][])('%s on half a supply: the capacitor keeps its voltage, and silence stays silence', (_, change) => {
+  const design = (cell: Cell) => designOf(variantOf(cell, {}, { source: 'fixed', controlV: 3.3 }));
+  const chain = chainOf(design(HALF_SUPPLY));
+  run(chain, new Float32Array(9600), 128);
+  moveChain(chain, compileChain(design({ ...HALF_SUPPLY, ...change }), 0, RATE, 1, 'lowLatency'));
+  expect(Math.max(...run(chain, new Float32Array(9600), 128).map(Math.abs))).toBeLessThan(1e-6);
 });
 
 test('a rendered tone has the gain and the harmonics of the steady reading, to the oversampling filters and −100 dB', () => {
@@ -89,6 +167,10 @@ test.each([
   ['seriesOhm 10 k to 22 k', { cell: { ...REAL_CELL, seriesOhm: 22000 } }],
   ['k ½ to ⅓', { cell: { ...REAL_CELL, feedback: { kind: 'resistor', drainOhm: 9.4e5, blockingF: 1e-7 } } }],
   ['loadF 100 pF to 1 nF', { cell: { ...REAL_CELL, loadF: 1e-9 } }],
+  [
+    'gate blocking 100 nF to 150 nF',
+    { cell: { ...REAL_CELL, feedback: { ...REAL_CELL.feedback, blockingF: 1.5e-7 } as Cell['feedback'] } },
+  ],
   ['another part', { device: { ...REAL_DEVICE, idssA: 0.006, gateOffV: -2 } }],
   ['the control', { control: { source: 'fixed', controlV: -1.4 } }],
 ] as [string, Partial<Variant>][])(
