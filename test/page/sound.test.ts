@@ -61,6 +61,13 @@ describe('sound on the built page, after a real click', () => {
     expect(firstSec).toBeLessThan(2);
   });
 
+  test('stopped while it is starting it stays silent, and the next Start plays', async () => {
+    await button('Start').dblclick();
+    await page.waitForTimeout(2000);
+    expect(await page.evaluate(() => window.soundProbe.firstSoundMs)).toBeNull();
+    await startSound();
+  });
+
   test('values change while it plays, and it plays on', async () => {
     await startSound();
     const reading = async () => page.evaluate(() => document.querySelector('main')?.textContent ?? document.body.textContent);
