@@ -50,7 +50,10 @@ const assetsWithoutScripts: Plugin = {
     cpSync(here('assets'), here('dist'), { recursive: true, filter: (path) => !/\.(mjs|js|ts|py|sh)$|screenshots/.test(path) }),
 };
 
-/** Fails the build when the entry, its static imports and the workers and worklets they name weigh too much. */
+/**
+ * Fails the build when the entry, its static imports and the workers and worklets they name weigh too much. That nothing else is fetched before a
+ * click is tested on the built page.
+ */
 const firstLoadBudget: Plugin = {
   name: 'fettle-budget',
   apply: 'build',
@@ -99,6 +102,8 @@ export default defineConfig({
     assetsInlineLimit: 0,
     copyPublicDir: false,
     reportCompressedSize: false,
+    // Our own plugins take most of so short a build, which is no news to anyone who starts the page.
+    rolldownOptions: { checks: { pluginTimings: false } },
   },
   test: {
     root: here('.'),

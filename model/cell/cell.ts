@@ -5,7 +5,7 @@
 import type { Device, Law } from '../design/types.ts';
 import { type LawConstants, lawConstants } from '../device/law.ts';
 import { smoothTable, TERMS } from '../device/table.ts';
-import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
+import { atTemperature, thermalVoltage } from '../device/temperature.ts';
 import { log } from '../device/math.ts';
 import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
@@ -18,8 +18,6 @@ import { SQUARE_CONDUCTOR, SQUARE_KERNELS } from './kernels/square.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
 import { createReduction, discretise, memoryColumns, type Reduction, respond, respondAtRest, stepColumns } from './reduce.ts';
 
-/** Boltzmann's constant over the elementary charge, V/K (SI 2019, exact values 1.380649e-23 and 1.602176634e-19). */
-const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
 /** Below this many nVT, and where less than this flows above it, a junction carries its reverse current and no more. */
 const OFF_BELOW = -10;
 const LEFT_OUT_A = 1e-15;
@@ -107,7 +105,7 @@ export function compileCell(circuit: Circuit, device: Device, tempC: number, noi
   values[plan.values.length + SCALE] = law.scale;
   values[plan.values.length + GATE_OFF_V] = law.gateOffV;
   values[plan.values.length + REVERSE_A] = junction.reverseA;
-  const thermalV = VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
+  const thermalV = thermalVoltage(tempC);
   values[plan.values.length + NVT_V] = junction.ideality * thermalV;
   values[plan.values.length + LAMBDA] = device.lambdaPerV;
   values[plan.values.length + BARRIER_V] = device.barrierV;
@@ -191,7 +189,7 @@ export function loadValues(cell: Cell, values: Float64Array): boolean {
 
 /**
  * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients at both ends are exact, between them they follow a
- * straight line. False, and nothing changes, when the network would be singular.
+ * straight line, unless values are too far apart for that. False, and nothing changes, when the network would be singular.
  */
 export function aimAt(cell: Cell, values: Float64Array, samples: number): boolean {
   const { reduction, stepSec, coefficients, target, increment } = cell;
@@ -203,12 +201,32 @@ export function aimAt(cell: Cell, values: Float64Array, samples: number): boolea
     discretise(reduction, stepSec);
     return false;
   }
+  const near = areNear(cell, values);
   for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
   packStep(cell);
+  if (!near) arrive(cell);
   for (let i = 0; i < target.length; i++) {
     // A threshold that was or becomes infinite has no way between: it changes on arrival.
     const way = target[i] - coefficients[i];
     increment[i] = Number.isFinite(way) ? way / samples : 0;
+  }
+  return true;
+}
+
+/** The most by which a part's value may change along one straight line. */
+const MOST_RATIO = 1.25;
+
+/**
+ * Whether no part's value changes by more than a quarter. A straight line between the coefficients of circuits further apart leads through what is no
+ * circuit, and may grow without limit: a move over decades steps there, in its first slices, and is heard as the click that it would be on a board.
+ */
+function areNear(cell: Cell, values: Float64Array): boolean {
+  const { elements } = cell.numbers.plan;
+  for (let i = 0; i < elements.length; i++) {
+    const { kind } = elements[i];
+    if (kind !== 'conductance' && kind !== 'capacitor' && kind !== 'inductor') continue;
+    const smaller = Math.min(values[i], cell.values[i]);
+    if (Math.max(values[i], cell.values[i]) > MOST_RATIO * smaller) return false;
   }
   return true;
 }

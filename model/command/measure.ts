@@ -1,8 +1,10 @@
 /** `fettle measure` */
 import { controlRangeV, restControlV } from '../control/range.ts';
+import { fieldAt } from '../design/path.ts';
 import type { Control } from '../design/types.ts';
 import { formatQuantity, parseQuantity, type Unit } from '../design/values.ts';
-import { measureTone, type ToneReading } from '../study/tone.ts';
+import { requireRange } from '../study/require.ts';
+import { measureTone, TONE_HZ_RANGE, TONE_V_RANGE, type ToneReading } from '../study/tone.ts';
 import { judged } from './fault.ts';
 import type { Command, Line, Option } from './line.ts';
 import { type Asked, printReading } from './reading.ts';
@@ -13,6 +15,8 @@ const TONE_V: Option = { name: 'toneV', value: 'V', about: "size of the tone at 
 const CONTROL_V: Option = { name: 'controlV', value: 'V', about: "voltage of the control's driver; where the control rests when left out" };
 const AT_OUTPUT: Option = { name: 'atOutput', about: "reads the amplifier's output in place of the drain" };
 const JSON_OUT: Option = { name: 'json', about: 'prints one JSON object' };
+
+type Range = readonly [least: number, most: number];
 
 export const measure: Command = {
   name: 'measure',
@@ -33,9 +37,9 @@ ${SET_NOTES}`,
 };
 
 function runMeasure(line: Line): void {
-  const toneHz = quantityOf(line, TONE_HZ, 'Hz') ?? 1000;
-  const toneV = quantityOf(line, TONE_V, 'V') ?? 0.5;
-  const givenV = quantityOf(line, CONTROL_V, 'V');
+  const toneHz = quantityOf(line, TONE_HZ, 'Hz', TONE_HZ_RANGE) ?? 1000;
+  const toneV = quantityOf(line, TONE_V, 'V', TONE_V_RANGE, ' peak') ?? 0.5;
+  const givenV = quantityOf(line, CONTROL_V, 'V', controlRange());
   const { design, variantIndex } = openSubject(line.words[0], line);
   const variant = design.variants[variantIndex];
   const controlV = givenV ?? restControlV(variant.control);
@@ -51,9 +55,19 @@ function runMeasure(line: Line): void {
   if (!reading.converged) process.stderr.write('The reading had not stopped changing on the finest grid: its last digits are uncertain\n');
 }
 
-function quantityOf({ values }: Line, option: Option, unit: Unit): number | undefined {
+/** `note` stands after the limits in the sentence. */
+function quantityOf({ values }: Line, option: Option, unit: Unit, [least, most]: Range, note = ''): number | undefined {
   const [text] = values.get(option.name) ?? [];
-  return text === undefined ? undefined : judged(`--${option.name}: `, () => parseQuantity(text, unit));
+  if (text === undefined) return undefined;
+  const value = judged(`--${option.name}: `, () => parseQuantity(text, unit));
+  judged('', () => requireRange(`--${option.name}`, value, least, most, unit, note));
+  return value;
+}
+
+/** What the document allows a control to be. */
+function controlRange(): Range {
+  const { min, max } = fieldAt('control.controlV');
+  return [min, max];
 }
 
 function heldBy(control: Control): string {

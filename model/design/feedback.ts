@@ -61,15 +61,16 @@ function cellWithFraction(cell: Cell, k: number, moves: Moves): Cell {
   switch (feedback.kind) {
     case 'none':
       if (k === 0) return cell;
-      throw new RangeError(`k is ${k}; expected 0 while cell.feedback.kind is none`);
+      throw new RangeError(`k is ${String(k).replace('-', '−')}; expected 0 while cell.feedback.kind is none`);
     case 'resistor': {
-      if (!(k > 0 && k < 1)) throw new RangeError(`k is ${k}; expected more than 0 and less than 1, as two resistors give`);
+      if (!(k > 0 && k < 1))
+        throw new RangeError(`k is ${String(k).replace('-', '−')}; expected more than 0 and less than 1, as two resistors give`);
       const pair = pairAt(k, controlOhm, feedback.drainOhm, moves);
       return { ...cell, controlOhm: pair.controlOhm, feedback: { ...feedback, drainOhm: pair.drainOhm } };
     }
     case 'buffered':
       if (k >= 0 && k <= 1) return { ...cell, feedback: { ...feedback, fraction: k } };
-      throw new RangeError(`k is ${k}; expected 0 to 1`);
+      throw new RangeError(`k is ${String(k).replace('-', '−')}; expected 0 to 1`);
   }
 }
 

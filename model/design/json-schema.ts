@@ -1,4 +1,7 @@
-/** A description (`kinds.ts`) as JSON Schema, draft 2020-12. Units stand in `x-unit` ("1" for a plain number) and in the description. */
+/**
+ * A description (`kinds.ts`) as JSON Schema, draft 2020-12. Every field has its unit in `x-unit` ("1" for a plain number, "none" for what is no
+ * quantity) and in the description, with its range and its default.
+ */
 import { defaultOf, type Field, type FieldInfo, type Group, keyField, memberDefaults, type Union } from './kinds.ts';
 import { expectedOf, plainly } from './wording.ts';
 
@@ -11,24 +14,41 @@ export function toJsonSchema(root: Group): Record<string, unknown> {
 
 type Defs = Record<string, object>;
 
-function fieldSchema(field: Field, defs: Defs): object {
+const NO_QUANTITY = { 'x-unit': 'none' };
+
+/** What it is, what it may hold, and `rest`. */
+function described(field: Field, rest: string): string {
+  const expected = expectedOf(field);
+  return `${field.description} ${expected[0].toUpperCase()}${expected.slice(1)}; ${rest}.`;
+}
+
+/** `optional`: what may be left out, so that no default stands for it. */
+function fieldSchema(field: Field, defs: Defs, optional = false): object {
   switch (field.kind) {
     case 'group':
-      return { ...reference(field, {}, defs), default: defaultOf(field) };
+      return {
+        ...reference(field, {}, defs),
+        description: described(field, 'default each value at its own'),
+        ...NO_QUANTITY,
+        default: defaultOf(field),
+      };
     case 'union':
       return {
         title: field.title,
-        description: field.description,
+        description: described(field, `default ${field.default}`),
+        ...NO_QUANTITY,
         oneOf: Object.entries(field.members).map(([key, member]) => reference(member, keySchema(field, key), defs)),
         default: memberDefaults(field, field.default),
       };
     case 'list':
       return {
         type: 'array',
-        description: field.description,
+        description: described(field, optional ? 'default none' : `default ${field.min} with every value at its own`),
+        ...NO_QUANTITY,
         items: reference(field.item, {}, defs),
         minItems: field.min,
         maxItems: field.max,
+        ...(!optional && { default: defaultOf(field) }),
       };
     default:
       return leafSchema(field);
@@ -38,14 +58,17 @@ function fieldSchema(field: Field, defs: Defs): object {
 function leafSchema(field: FieldInfo): object {
   const usual = field.kind === 'number' && typeof field.default === 'number' ? plainly(field.default, field.unit) : String(field.default);
   const type = field.whole ? 'integer' : 'number';
-  const notes = { description: `${field.description} ${expectedOf(field)}; default ${usual}.`, default: field.default };
+  const notes = {
+    description: described(field, `default ${usual}`),
+    'x-unit': field.kind === 'number' ? field.unit || '1' : 'none',
+    default: field.default,
+  };
   switch (field.kind) {
     case 'number':
       return {
         type: field.nullable ? [type, 'null'] : type,
         minimum: field.min,
         maximum: field.max,
-        'x-unit': field.unit || '1',
         ...notes,
       };
     case 'text':
@@ -58,7 +81,10 @@ function leafSchema(field: FieldInfo): object {
 }
 
 function keySchema(union: Union, key: string): Record<string, object> {
-  return { [union.key]: { const: key, description: keyField(union).description } };
+  const field = keyField(union);
+  return {
+    [union.key]: { const: key, description: described(field, `here ${key}; default ${union.default}`), ...NO_QUANTITY, default: key },
+  };
 }
 
 function reference(group: Group, extra: Record<string, object>, defs: Defs): object {
@@ -69,8 +95,9 @@ function reference(group: Group, extra: Record<string, object>, defs: Defs): obj
 function groupSchema(group: Group, extra: Record<string, object>, defs: Defs): object {
   const properties: Record<string, object> = { ...extra };
   for (const [name, field] of Object.entries(group.fields)) {
-    const inner = fieldSchema(field, defs);
-    properties[name] = group.presence[name] === 'optional' ? { anyOf: [inner, { type: 'null' }] } : inner;
+    const optional = group.presence[name] === 'optional';
+    const inner = fieldSchema(field, defs, optional);
+    properties[name] = optional ? { anyOf: [inner, { type: 'null' }], default: null } : inner;
   }
   const required = Object.keys(properties).filter((name) => name in extra || group.presence[name] === 'required');
   const eitherOr = Object.entries(group.presence).flatMap(([name, presence]) =>

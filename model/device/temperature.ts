@@ -13,6 +13,13 @@ const GATE_OFF_V_PER_C = 2.2e-3;
 const MOBILITY_EXPONENT = 2.087;
 const LEAKAGE_DOUBLES_C = 10;
 export const ZERO_CELSIUS_K = 273.15;
+/** k/q: Boltzmann's constant over the elementary charge, both exact in the SI of 2019, V/K. */
+const VOLT_PER_KELVIN = 1.380649e-23 / 1.602176634e-19;
+
+/** kT/q, V. */
+export function thermalVoltage(tempC: number): number {
+  return VOLT_PER_KELVIN * (tempC + ZERO_CELSIUS_K);
+}
 
 /** What changes with temperature: the device's values at `tempC`, and the factor on β or G0 that they do not express. */
 export function atTemperature(device: Device, tempC: number): { device: Device; mobilityFactor: number } {

@@ -85,7 +85,7 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
   const { toneV = 0.5, at = 'drain', channel = 0 } = options;
   const { control, output } = variantAt(design, variantIndex);
   if (control.source !== 'lfo') throw new RangeError(`control.source is ${control.source}; expected lfo, whose cycle this reading is of`);
-  requireRange('toneV', toneV, 1e-9, 1e3, 'V peak');
+  requireRange('toneV', toneV, 1e-9, 1e3, 'V', ' peak');
   const periods = wholePeriods(options.toneHz ?? 1000, control.rateHz);
   const gain = at === 'output' ? ratioFromDb(output.gainDb) : 1;
   const numbers = forReadings(cellNumbers(design, variantIndex, channel));
@@ -126,7 +126,8 @@ function wholePeriods(toneHz: number, rateHz: number): number {
     toneHz,
     FEWEST_PERIODS * rateHz,
     MOST_PERIODS * rateHz,
-    `Hz, ${FEWEST_PERIODS} to ${MOST_PERIODS} periods in a cycle`,
+    'Hz',
+    `, ${FEWEST_PERIODS} to ${MOST_PERIODS} periods in a cycle`,
   );
   return Math.round(toneHz / rateHz);
 }

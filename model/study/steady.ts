@@ -9,6 +9,7 @@
  */
 import { advanceCell, type Cell, gateConducts, overdriveV, settle } from '../cell/cell.ts';
 import { factor, solve } from '../cell/linear.ts';
+import { CONDUCTS_A } from '../device/junction.ts';
 import { channelRegion } from '../device/law.ts';
 import { cosTurns } from '../device/math.ts';
 
@@ -17,9 +18,6 @@ const SETTLING_PERIODS = 4000;
 const SETTLING_SAMPLES = 16777216;
 const REPEATS = 1e-12;
 const ROUNDING = 3e-14;
-
-/** Forward current above which a gate junction is said to conduct, A. */
-const CONDUCTS_A = 1e-9;
 
 /** One period at the cell's own step: the output and both overdrives, V; whether a junction conducts. Sample 0 is the tone's crest. */
 export interface SteadyPeriod {

@@ -19,6 +19,9 @@ import { type RegionShares, regionShares, type SteadyPeriod, steadyPeriod } from
 const HARMONICS = 9;
 const COARSEST = 256;
 const FINEST = 32768;
+/** What a tone may be: least and most, Hz, and V peak. */
+export const TONE_HZ_RANGE = [0.1, 1e6] as const;
+export const TONE_V_RANGE = [1e-9, 1e3] as const;
 const TURN = 6.283185307179586;
 /** −260 dB: below it a double holds rounding only. */
 const NOTHING = 1e-13;
@@ -65,8 +68,8 @@ export interface ToneReading {
 export function measureTone(design: Design, variantIndex: number, options: ToneOptions = {}): ToneReading {
   const { toneHz = 1000, toneV = 0.5, at = 'drain', channel = 0 } = options;
   const variant = variantAt(design, variantIndex);
-  requireRange('toneHz', toneHz, 0.1, 1e6, 'Hz');
-  requireRange('toneV', toneV, 1e-9, 1e3, 'V peak');
+  requireRange('toneHz', toneHz, ...TONE_HZ_RANGE, 'Hz');
+  requireRange('toneV', toneV, ...TONE_V_RANGE, 'V', ' peak');
   const numbers = forReadings(cellNumbers(design, variantIndex, channel));
   const controlV = restingControlV(design, variantIndex, numbers, options);
   const solveOn = (size: number): SteadyPeriod => {

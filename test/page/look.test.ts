@@ -66,6 +66,18 @@ describe.each(WIDTHS)('at %i px', (widthPx) => {
     await close();
   });
 
+  test('what stands in red beside the FET crosses no wire and no value, and nothing scrolls sideways', async () => {
+    const { page, close } = await openSheet(widthPx);
+    await page.getByLabel(CONTROL).selectOption('fixed');
+    await value(page, 'Control voltage').click();
+    await page.keyboard.type('1.2');
+    await page.keyboard.press('Enter');
+    await page.locator('.limit-words', { hasText: 'gate conducts' }).waitFor();
+    expect(await page.evaluate(underLimitWords)).toEqual([]);
+    expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(widthPx);
+    await close();
+  });
+
   test('no text is under 11 px', async () => {
     const { page, close } = await openSheet(widthPx);
     expect(await page.evaluate(smallTexts)).toEqual([]);
@@ -190,6 +202,33 @@ describe('a value where it stands', () => {
   });
 });
 
+describe('a choice', () => {
+  test('that is refused says why, and the list goes back', async () => {
+    const { page, close } = await openSheet(1280);
+    const control = page.getByLabel(CONTROL);
+    await control.selectOption('fixed');
+    await value(page, 'Control voltage').click();
+    await page.keyboard.type('90');
+    await page.keyboard.press('Enter');
+    await control.selectOption('sine');
+    expect(await page.getByRole('alert').textContent()).toContain('is 135; expected −100 V to 100 V');
+    expect(await control.inputValue()).toBe('fixed');
+    expect(await value(page, 'Control voltage').textContent()).toBe('90.00\u2009V');
+    await close();
+  });
+
+  test('of the channel is one step of undo, with the control that goes with it', async () => {
+    const { page, close } = await openSheet(1280);
+    const texts = () => page.locator('.drawing .value').allTextContents();
+    const before = await texts();
+    await page.getByLabel('Channel of J1').selectOption('p');
+    expect(await value(page, 'VGS(off)').textContent()).toBe('1.50\u2009V');
+    await page.getByRole('button', { name: 'Undo' }).click();
+    expect(await texts()).toEqual(before);
+    await close();
+  });
+});
+
 describe('the rate of the LFO', () => {
   test('is tapped by key and by pointer', async () => {
     const { page, close } = await openSheet(1280);
@@ -263,6 +302,19 @@ function overlapsInDrawing(): string[] {
     }
   });
   return found;
+}
+
+/** Wires, symbols and values of Fig. 1 that the sentence about a limit lies on. */
+function underLimitWords(): string[] {
+  const words = document.querySelector('.drawing .limit-words')?.getBoundingClientRect();
+  if (!words) return [];
+  const things = [...document.querySelectorAll('.drawing line, .drawing .symbol, .drawing .value, .drawing .choice, .drawing .live')];
+  return things
+    .filter((element) => {
+      const box = element.getBoundingClientRect();
+      return box.left < words.right && words.left < box.right && box.top < words.bottom && words.top < box.bottom;
+    })
+    .map((element) => element.textContent || element.outerHTML);
 }
 
 function smallTexts(): string[] {

@@ -124,12 +124,12 @@ export async function peek<T>(page: Page, read: () => T | Promise<T>): Promise<T
 
 const AXE_SOURCE = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
 
-/** Faults that axe-core finds against WCAG 2.2 A and AA, each as `rule: help (element, element)`. Empty when there are none. */
+/** Faults that axe-core finds against WCAG 2.2 A and AA and against its best practices, each as `rule: help (element, element)`. Empty when there are none. */
 export async function findAccessFaults(page: Page): Promise<string[]> {
   await page.evaluate(AXE_SOURCE);
   return page.evaluate(async () => {
     const { axe } = globalThis as unknown as { axe: typeof import('axe-core') };
-    const tags = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'];
+    const tags = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'];
     const { violations } = await axe.run(document, { runOnly: { type: 'tag', values: tags } });
     return violations.map(({ id, help, nodes }) => `${id}: ${help} (${nodes.map((node) => node.target.join(' ')).join(', ')})`);
   });

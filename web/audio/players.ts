@@ -1,6 +1,6 @@
 /**
  * Tone's players on a native context: the looping source and the take that is played instead, with their fades.
- * Loaded apart from the rest, when the page has been painted. Tone's classes come from their own files, so importing them makes no context;
+ * Loaded apart from the rest, at the first Start. Tone's classes come from their own files, so importing them makes no context;
  * its clock is a plain timer because the page's policy allows no worker made from a blob.
  */
 import { Context } from 'tone/build/esm/core/context/Context.js';

@@ -37,9 +37,9 @@ const MUTED_AFTER_MS = 2000 * MUTE_SEC;
 const READY_WITHIN_MS = 5000;
 const RESUME_WITHIN_MS = 3000;
 
-/** Fetches what sound needs before it is asked for, so that the first start is quick. */
+/** Fetches the largest part of what sound needs before it is asked for, so that the first start is quick; the players come with Start. */
 export function prepareSound(): Promise<unknown> {
-  return Promise.all([import('./players.ts'), fetch(workletUrl)]);
+  return fetch(workletUrl);
 }
 
 /**

@@ -1,7 +1,7 @@
 /** Fig. 2: distortion against k, on a logarithmic scale of per cent. */
 import { linePath, type Point } from './line.ts';
 import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
-import { decadeTicks, insideScale, linearScale, linearTicks, logScale, type Scale, toPixel } from './scale.ts';
+import { decadeTicks, linearScale, linearTicks, logScale, type Scale, toPixel } from './scale.ts';
 import { between, fractionsWithin, thdWithin } from './tolerance.ts';
 import { decimals, percentText } from './words.ts';
 
@@ -25,11 +25,10 @@ export interface FeedbackPlot {
   /** A closed shape: what parts of 1 % make of each k. */
   readonly band: string;
   readonly h2: string;
+  readonly h2Points: readonly Point[];
   readonly h3: string;
+  readonly h3Points: readonly Point[];
   readonly least: { readonly k: number; readonly thd: number; readonly x: number; readonly y: number };
-  /** Where the direct labels of the harmonics stand; null when the curve is out of the frame there. */
-  readonly h2Label: Point | null;
-  readonly h3Label: Point | null;
 }
 
 /** Decades shown at most, from the highest value down: a deeper null runs out of the frame at its foot. */
@@ -87,6 +86,8 @@ export function plotFeedback(
   const points = (pick: (point: CurvePoint) => number): Point[] =>
     curve.map((point) => ({ x: toPixel(x, point.k), y: Math.min(toPixel(y, Math.abs(pick(point))), floor) }));
   const thdPoints = points((point) => point.thd);
+  const h2Points = points((point) => point.h2Signed);
+  const h3Points = points((point) => point.h3);
   const lowest = curve.reduce((best, point) => (point.thd < best.thd ? point : best));
   return {
     area,
@@ -99,11 +100,11 @@ export function plotFeedback(
     band: bandPath(
       bandOf(curve).map(({ k, low, high }) => ({ x: toPixel(x, k), low: Math.min(toPixel(y, low), floor), high: toPixel(y, high) })),
     ),
-    h2: linePath(points((point) => point.h2Signed)),
-    h3: linePath(points((point) => point.h3)),
+    h2: linePath(h2Points),
+    h2Points,
+    h3: linePath(h3Points),
+    h3Points,
     least: { ...lowest, x: toPixel(x, lowest.k), y: Math.min(toPixel(y, lowest.thd), area.bottom) },
-    h2Label: labelOn(curve, (point) => Math.abs(point.h2Signed), x, y, 0.61),
-    h3Label: labelOn(curve, (point) => Math.abs(point.h3), x, y, 0.1),
   };
 }
 
@@ -153,21 +154,6 @@ function yTicks(y: Scale): Tick[] {
 /** Decades of per cent as short as they go: 10, 0.1, 0.001. */
 function tickPercent(fraction: number): string {
   return String(Number((100 * fraction).toPrecision(6)));
-}
-
-function labelOn(curve: readonly CurvePoint[], pick: (point: CurvePoint) => number, x: Scale, y: Scale, fraction: number): Point | null {
-  const point = curve[Math.round(fraction * (curve.length - 1))];
-  const value = pick(point);
-  return insideScale(y, value) ? { x: toPixel(x, point.k), y: toPixel(y, value) } : null;
-}
-
-/** The side of a point on which its label crosses no curve: towards the null above the curve, away from it below. */
-export function labelSide(plot: FeedbackPlot, { x, y }: Point): 'left' | 'right' {
-  const curve = plot.thdPoints.find((point) => point.x >= x) ?? plot.thdPoints[plot.thdPoints.length - 1];
-  const beforeNull = x < plot.least.x;
-  const free = y > curve.y + 4 ? !beforeNull : beforeNull;
-  const room = free ? plot.area.right - x > 90 : x - plot.area.left > 90;
-  return free === room ? 'right' : 'left';
 }
 
 /** Words for the least distortion that k alone can reach. */

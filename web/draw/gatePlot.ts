@@ -5,9 +5,6 @@ import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
 import { linearScale, linearTicks, logScale, type Scale, toPixel } from './scale.ts';
 import { dbuFromPeak, decimals, peakFromDbu } from './words.ts';
 
-/** Forward gate voltage from which this figure calls the gate conducting, V: 0.7 V at 1 mA (data sheets), about 0.5 V at microamperes. */
-const GATE_ON_V = 0.5;
-
 export type Region = 'ohmic' | 'off' | 'conducting';
 
 export interface GatePlot {
@@ -29,10 +26,10 @@ export interface GatePlot {
   readonly deepest: Point & { readonly pastV: number };
 }
 
-export function regionAt(gateV: number, gateOffV: number): Region {
+export function regionAt(gateV: number, { gateOffV, gateOnV }: Pick<ControlPicture, 'gateOffV' | 'gateOnV'>): Region {
   const towardsOn = gateOffV < 0 ? gateV : -gateV;
   if (towardsOn < -Math.abs(gateOffV)) return 'off';
-  return towardsOn > GATE_ON_V ? 'conducting' : 'ohmic';
+  return towardsOn > gateOnV ? 'conducting' : 'ohmic';
 }
 
 const MARGINS = { left: 46, right: 10, top: 8, bottom: 34 };
@@ -71,7 +68,7 @@ export function plotGate(picture: ControlPicture, width: number, height: number)
     labelAbove: gateOffV < 0 !== Math.abs(points[0].y - (gateOffV < 0 ? offY - 11 : offY + 11)) < 14,
     offY,
     offArea: gateOffV < 0 ? { top: offY, height: area.bottom - offY } : { top: area.top, height: offY - area.top },
-    regions: regionRuns(gate, gateOffV, across),
+    regions: regionRuns(picture, across),
     deepest: { ...points[deepest], pastV: past(gate[deepest]) },
   };
 }
@@ -108,11 +105,12 @@ function voltTicks(y: Scale): Tick[] {
   }));
 }
 
-function regionRuns(gate: Float64Array, gateOffV: number, across: readonly number[]): { region: Region; from: number; to: number }[] {
+function regionRuns(picture: ControlPicture, across: readonly number[]): { region: Region; from: number; to: number }[] {
+  const { gate } = picture;
   const steps = gate.length - 1;
   const runs: { region: Region; from: number; to: number }[] = [];
   for (let n = 0; n < steps; n++) {
-    const region = regionAt((gate[n] + gate[n + 1]) / 2, gateOffV);
+    const region = regionAt((gate[n] + gate[n + 1]) / 2, picture);
     const to = across[n + 1];
     const last = runs.at(-1);
     if (last?.region === region) runs[runs.length - 1] = { ...last, to };

@@ -45,14 +45,14 @@ export function amplifierLimit({ output }: Variant, { fundamentalV }: ToneReadin
   return outputPeakV >= 0.999 * swingV ? { kind: 'rail', size: swingV } : null;
 }
 
-/** For the drawing; what stands at the FET is on two lines. */
+/** For the drawing; what stands at the FET is on two or three short lines. */
 export function limitWords({ kind, size }: Passed, limitV: number): string {
   const volts = (v: number) => `${decimals(v, v < 9.95 ? 2 : 1)}\u2009V`;
   switch (kind) {
     case 'saturated':
       return `saturates for up to\n${share(size)} of the tone`;
     case 'gateOn':
-      return `gate conducts for up to\n${share(size)} of the tone`;
+      return `gate conducts\nfor up to ${share(size)}\nof the tone`;
     case 'reverse':
       return `gate reversed by\n${volts(size)}, limit ${volts(limitV)}`;
     case 'rail':

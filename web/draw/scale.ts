@@ -32,10 +32,6 @@ export function toValue(scale: Scale, pixel: number): number {
   return scale.kind === 'linear' ? from + fraction * (to - from) : from * Math.exp(fraction * Math.log(to / from));
 }
 
-export function insideScale(scale: Scale, value: number): boolean {
-  return value >= Math.min(scale.from, scale.to) && value <= Math.max(scale.from, scale.to);
-}
-
 /** Round values (1, 2 or 5 times a power of ten apart), at most `most` of them, inside from…to. */
 export function linearTicks(from: number, to: number, most: number): number[] {
   const low = Math.min(from, to);

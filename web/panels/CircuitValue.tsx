@@ -2,6 +2,7 @@ import { fieldAt, getAt, rangeFault } from '../../model/design/path.ts';
 import { formatQuantity, parseQuantity, type Unit } from '../../model/design/values.ts';
 import { valueVolts } from '../draw/words.ts';
 import { useBench, useVariant } from './BenchContext.ts';
+import { bareSentence } from './parts/bareSentence.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
 import type { Stepping } from './parts/stepping.ts';
 
@@ -45,7 +46,7 @@ export function CircuitValue({ path, label, short, zeroIsAbsent = false, signed 
 /** The document's sentences name a value by its path; here it has a name of its own. */
 function named(sentence: string | null, path: string, short: string): string | null {
   if (sentence === null) return null;
-  const bare = sentence.replace(/^variants\[\d+\]\./, '');
+  const bare = bareSentence(sentence);
   return bare.startsWith(`${path} `) ? `${short}${bare.slice(path.length)}` : bare;
 }
 

@@ -62,7 +62,10 @@ function SourceChoice() {
         hint={bench.phrases.value.find(({ title }) => title === source.title)?.listenFor}
         value={current?.value ?? ''}
         options={options}
-        onChoose={(name) => name !== '' && void bench.choosePhrase(name)}
+        onChoose={(name) => {
+          if (name !== '') void bench.choosePhrase(name);
+          return null;
+        }}
       />{' '}
       or{' '}
       <button

@@ -11,7 +11,6 @@ import { Sym } from './parts/Symbol.tsx';
 /** What moves the gate, and between which voltages: a steady one, an LFO, a follower (the rest of which stands under the figure), a recording. */
 export function ControlValues() {
   const bench = useBench();
-  const caption = useContext(CaptionContext);
   const variant = useVariant();
   const { control } = variant;
   return (
@@ -23,10 +22,7 @@ export function ControlValues() {
         label="Control: what moves the gate"
         value={kindOf(control)}
         options={CONTROL_KINDS}
-        onChoose={(kind) => {
-          const refused = bench.setValue('control', controlOf(kind, variant));
-          caption.value = refused === null ? null : { words: refused, refused: true };
-        }}
+        onChoose={(kind) => bench.setValue('control', controlOf(kind, variant))}
       />
       {control.source === 'fixed' && <CircuitValue path="control.controlV" label="Control voltage" short="VC" />}
       {control.source === 'lfo' && <Lfo shape={control.shape} />}

@@ -21,8 +21,8 @@ export function DeviceValues({ form }: { readonly form: Form }) {
   const variant = useVariant();
   const { channel, law } = variant.device;
   const chooseChannel = (next: Channel) => {
-    if (next === channel) return;
-    bench.setValues([
+    if (next === channel) return null;
+    return bench.setValues([
       ['control', mirrored(variant.control)],
       ['device', { ...variant.device, channel: next, gateOffV: -variant.device.gateOffV }],
     ]);

@@ -1,12 +1,13 @@
 import type { Signal } from '@preact/signals';
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import { parseQuantity } from '../../model/design/values.ts';
+import { signedHarmonic } from '../../model/study/signed.ts';
 import { decimals, gateVolts, percentText, signedDecimals, signedPercentText } from '../draw/words.ts';
 import type { Bench } from '../state/bench.ts';
-import { useBench, useBenchView, useReading } from './BenchContext.ts';
+import { useBench, useBenchView, useReading, useVariant } from './BenchContext.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { LiveReading } from './parts/LiveReading.tsx';
 import { Sym } from './parts/Symbol.tsx';
-import { signedHarmonic } from './readingWords.ts';
 import { overLimit, useThdLimit } from './sheetLimits.ts';
 
 const PERCENT = '\u2009%';
@@ -18,9 +19,12 @@ export function Distortion() {
   const moment = useBenchView().moment.value;
   const read = moment?.reading ?? null;
   const reading = useReading();
+  const variant = useVariant();
+  const { channel } = deviceOf(variant, 0);
+  const fitted = variant.cell.feedback.kind !== 'none';
   const why = read !== null && 'fault' in read ? read.fault : '';
-  const h2 = reading === null ? null : signedHarmonic(reading, 2);
-  const h3 = reading === null ? null : signedHarmonic(reading, 3);
+  const h2 = reading === null ? null : signedHarmonic(reading, 2, channel);
+  const h3 = reading === null ? null : signedHarmonic(reading, 3, channel);
   return (
     <section aria-label="Distortion, by the shadow tone">
       <dl class="distortion">
@@ -40,7 +44,7 @@ export function Distortion() {
           }
           value={h2 === null ? null : signedPercentText(h2)}
           unit={PERCENT}
-          meaning={h2 === null ? '' : <H2Words h2={h2} />}
+          meaning={h2 === null ? '' : <H2Words h2={h2} fitted={fitted} />}
         />
         <LiveReading
           label={
@@ -50,15 +54,7 @@ export function Distortion() {
           }
           value={h3 === null ? null : signedPercentText(h3)}
           unit={PERCENT}
-          meaning={
-            h3 === null ? (
-              ''
-            ) : (
-              <>
-                not cured by <i>k</i>
-              </>
-            )
-          }
+          meaning={h3 === null ? '' : <H3Words h3={h3} />}
         />
       </dl>
       {why !== '' && <p class="why fault">No reading: {why}</p>}
@@ -69,19 +65,34 @@ export function Distortion() {
 /** What parts of 1 % make of it, and the gate that it is read at. */
 function BandWords({ band, gateV }: { readonly band: readonly [number, number] | null; readonly gateV: number }) {
   if (band === null) return <>gate at {gateVolts(gateV)}</>;
+  const [low, high] = band.map(percentText);
+  if (low === high) return <>the same with 1{PERCENT} parts</>;
   return (
     <>
-      {percentText(band[0])} to {percentText(band[1])}, 1{PERCENT} parts
+      {low} to {high}, 1{PERCENT} parts
     </>
   );
 }
 
-function H2Words({ h2 }: { readonly h2: number }) {
-  if (Math.abs(h2) < 5e-6) return <>nulled</>;
+/** As printed, 0.000 %. */
+const NOTHING = 5e-6;
+
+function H2Words({ h2, fitted }: { readonly h2: number; readonly fitted: boolean }) {
+  if (Math.abs(h2) < NOTHING) return <>nulled</>;
+  if (!fitted) return h2 > 0 ? <>plus: feedback lowers it</> : <>minus: feedback adds to it</>;
   return (
     <>
       {h2 > 0 ? 'plus: raise ' : 'minus: lower '}
       <i>k</i>
+    </>
+  );
+}
+
+function H3Words({ h3 }: { readonly h3: number }) {
+  if (Math.abs(h3) < NOTHING) return <>none to speak of</>;
+  return (
+    <>
+      not cured by <i>k</i>
     </>
   );
 }

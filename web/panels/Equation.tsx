@@ -4,7 +4,7 @@ import type { Keep } from '../state/bench.ts';
 import { useBench, useVariant } from './BenchContext.ts';
 import { CircuitValue } from './CircuitValue.tsx';
 import { FeedbackChoice } from './FeedbackChoice.tsx';
-import { Choice } from './parts/Choice.tsx';
+import { Choice, chosen } from './parts/Choice.tsx';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { Sym } from './parts/Symbol.tsx';
 
@@ -43,11 +43,11 @@ export function Equation() {
           <>
             Setting <i>k</i> moves{' '}
             {kind === 'resistor' ? (
-              <Choice label="What setting k moves" value={bench.moves.value} options={MOVES} onChoose={bench.setMoves} />
+              <Choice label="What setting k moves" value={bench.moves.value} options={MOVES} onChoose={chosen(bench.setMoves)} />
             ) : (
               'the buffer’s share'
             )}{' '}
-            and keeps <Choice label="What setting k keeps" value={bench.keep.value} options={KEEPS} onChoose={bench.setKeep} />.
+            and keeps <Choice label="What setting k keeps" value={bench.keep.value} options={KEEPS} onChoose={chosen(bench.setKeep)} />.
           </>
         )}
       </p>

@@ -68,9 +68,9 @@ export function FeedbackPointer({ plot }: { readonly plot: FeedbackPlot }) {
         role="slider"
         tabIndex={0}
         aria-label="k, the feedback fraction"
-        aria-valuemin={0}
-        aria-valuemax={1}
-        aria-valuenow={k}
+        aria-valuemin={x.from}
+        aria-valuemax={x.to}
+        aria-valuenow={Number(k.toFixed(4))}
         aria-valuetext={`k ${k.toFixed(3)}`}
         style={{ left: rem(across - area.left), top: rem(area.bottom - area.top) }}
         onKeyDown={onKeyDown}

@@ -10,7 +10,7 @@ export function Fittings() {
   const bench = useBench();
   const variant = useVariant();
   const caption = useContext(CaptionContext);
-  const change = (changes: Changes) => {
+  const takeOut = (changes: Changes) => {
     const refused = bench.setValues(changes);
     caption.value = refused === null ? null : { words: refused, refused: true };
   };
@@ -26,7 +26,7 @@ export function Fittings() {
         options={options}
         onChoose={(words) => {
           const part = BOARD_PARTS.find((each) => each.words === words);
-          if (part) change(part.fit(variant));
+          return part ? bench.setValues(part.fit(variant)) : null;
         }}
       />
       {fitted.length === 0 ? (
@@ -38,7 +38,7 @@ export function Fittings() {
             actions={fitted.map((part) => ({
               words: part.words,
               label: `Take out: ${part.words}`,
-              run: () => change(part.takeOut(variant)),
+              run: () => takeOut(part.takeOut(variant)),
             }))}
           />
         </>

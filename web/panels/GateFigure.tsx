@@ -1,6 +1,6 @@
 import { useEffect, useMemo, useRef } from 'preact/hooks';
 import type { ControlPicture, LiveLevels } from '../state/bench.ts';
-import { type GatePlot, isFollower, plotGate, turnOf } from '../draw/gatePlot.ts';
+import { type GatePlot, isFollower, plotGate, type Region, turnOf } from '../draw/gatePlot.ts';
 import { toPixel } from '../draw/scale.ts';
 import { valueVolts, voltsText } from '../draw/words.ts';
 import { useBench, useBenchView, usePlaying } from './BenchContext.ts';
@@ -40,6 +40,7 @@ function Drawn({ plot, period }: DrawnProps) {
   const { gateOffV } = period;
   const { area, offY, offArea, deepest } = plot;
   const roomy = deepest.pastV > 0 && Math.abs(deepest.y - offY) >= 12;
+  const arrowX = Math.max(area.left + 6, Math.min(area.right - 6, deepest.x));
   const labelLeft = deepest.x > (area.left + area.right) / 2;
   return (
     <svg
@@ -50,6 +51,9 @@ function Drawn({ plot, period }: DrawnProps) {
       <defs>
         <pattern id="off-hatch" width="6" height="6" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
           <path class="hatch" d="M0 0V6" />
+        </pattern>
+        <pattern id="on-hatch" width="4" height="4" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
+          <path class="hatch strong" d="M0 0V4" />
         </pattern>
       </defs>
       <PlotFrame area={area} xTicks={plot.xTicks} yTicks={plot.yTicks} under={11} />
@@ -70,7 +74,7 @@ function Drawn({ plot, period }: DrawnProps) {
       {roomy && (
         <path
           class="dimension"
-          d={`M${deepest.x} ${offY}V${deepest.y}m-3 ${deepest.y > offY ? -6 : 6}l3 ${deepest.y > offY ? 6 : -6}l3 ${deepest.y > offY ? -6 : 6}`}
+          d={`M${arrowX} ${offY}V${deepest.y}m-3 ${deepest.y > offY ? -6 : 6}l3 ${deepest.y > offY ? 6 : -6}l3 ${deepest.y > offY ? -6 : 6}`}
         />
       )}
       <Strip plot={plot} />
@@ -89,11 +93,15 @@ function Strip({ plot }: { readonly plot: GatePlot }) {
   return (
     <g class="strip">
       {plot.regions.map(({ region, from, to }) => (
-        <rect key={from} class={`region-${region}`} x={from} y={y} width={to - from} height={7} />
+        <rect key={from} {...paintOf(region)} x={from} y={y} width={to - from} height={7} />
       ))}
       <rect class="border" x={plot.area.left} y={y} width={plot.area.right - plot.area.left} height={7} />
     </g>
   );
+}
+
+function paintOf(region: Region): { class: string } | { fill: string } {
+  return region === 'conducting' ? { fill: 'url(#on-hatch)' } : { class: `region-${region}` };
 }
 
 /** The point of this moment: moved at frame rate, outside rendering. */

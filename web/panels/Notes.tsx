@@ -9,8 +9,8 @@ export function Notes() {
   if (notes.length === 0) return null;
   return (
     <div class="notes">
-      {notes.map(({ id, kind, sentence, advice }, index) => (
-        <Note key={id} kind={kind} sentence={sentence} advice={advice}>
+      {notes.map(({ id, kind, sentence, advice, list }, index) => (
+        <Note key={id} kind={kind} sentence={sentence} advice={advice} list={list}>
           {failed && kind === 'fault' && index === notes.length - 1 && (
             <button type="button" class="button small" onClick={() => void bench.start()}>
               Start again

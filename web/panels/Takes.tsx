@@ -3,7 +3,7 @@ import { useRef } from 'preact/hooks';
 import { clockText } from '../draw/words.ts';
 import type { TakeFormat } from '../state/bench.ts';
 import { useBench } from './BenchContext.ts';
-import { Choice } from './parts/Choice.tsx';
+import { Choice, chosen } from './parts/Choice.tsx';
 import { DataTable } from './parts/DataTable.tsx';
 import { WordActions } from './parts/WordActions.tsx';
 import { TakeRow } from './TakeRow.tsx';
@@ -64,7 +64,8 @@ export function Takes() {
           Render the {bench.source.value.kind === 'phrase' ? 'phrase' : 'file'}
         </button>
         <span class="aside">
-          as <Choice label="Format of saved takes" value={format.value} options={FORMATS} onChoose={(next) => (format.value = next)} />
+          as{' '}
+          <Choice label="Format of saved takes" value={format.value} options={FORMATS} onChoose={chosen((next) => (format.value = next))} />
         </span>
       </p>
     </section>

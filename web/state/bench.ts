@@ -202,6 +202,8 @@ export interface GatePeriod {
   readonly steady: boolean;
   /** VGS(off) at the temperature of the circuit, V, negative for an n-channel part. */
   readonly gateOffV: number;
+  /** Size of the forward gate voltage from which the gate is said to conduct, V. */
+  readonly gateOnV: number;
 }
 
 /** What a follower makes of a steady tone at the input: V peak, ascending where its control moves one way. */
@@ -210,6 +212,7 @@ export interface FollowerCurve {
   readonly control: Float64Array;
   readonly gate: Float64Array;
   readonly gateOffV: number;
+  readonly gateOnV: number;
 }
 
 export type ControlPicture = GatePeriod | FollowerCurve;
@@ -272,4 +275,6 @@ export interface Note {
   readonly kind: 'fault' | 'note';
   readonly sentence: string;
   readonly advice?: string;
+  /** Sentences under the first, where there are several of one kind: every fault of a file. */
+  readonly list?: readonly string[];
 }

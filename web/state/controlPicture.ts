@@ -1,4 +1,6 @@
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import type { Design } from '../../model/design/types.ts';
+import { conductsFromV } from '../../model/device/junction.ts';
 import { lawConstants } from '../../model/device/law.ts';
 import { controlSwing } from '../../model/study/swing.ts';
 import type { ControlPicture, GatePeriod } from './bench.ts';
@@ -20,7 +22,7 @@ export function controlPicture(design: Design, variantIndex: number, toneHz: num
 
 /** One period of a control that needs no signal, without audio. Throws a RangeError for one that does. */
 export function gatePeriod(design: Design, variantIndex: number): GatePeriod {
-  const { device } = design.variants[variantIndex];
+  const device = deviceOf(design.variants[variantIndex], 0);
   const { periodSec, controlV, gateV, drainV } = controlSwing(design, variantIndex, STEPS);
   return {
     seconds: periodSec || 1,
@@ -29,6 +31,7 @@ export function gatePeriod(design: Design, variantIndex: number): GatePeriod {
     gate: closed(gateV),
     drain: closed(drainV),
     gateOffV: Math.sign(device.gateOffV) * Math.abs(lawConstants(device, design.tempC).gateOffV),
+    gateOnV: conductsFromV(device, design.tempC),
   };
 }
 

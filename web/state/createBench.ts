@@ -21,8 +21,6 @@ import { createTakes } from './takes.ts';
 
 /** Before any sound is open, a design is tried out at the lowest usual rate. */
 const TRY_OUT_HZ = 44100;
-/** Of a faulty file; more would bury the page. */
-const MOST_SENTENCES = 5;
 
 export function createBench(): Bench {
   return assembleBench(browserParts());
@@ -74,9 +72,10 @@ export function assembleBench(parts: Parts): Bench {
 
   const openText = (text: string, from: string) => {
     const result = readDesign(text);
-    const sentences = 'faults' in result ? result.faults.map((fault) => fault.sentence) : [document.replace(result.design)];
-    for (const sentence of sentences.slice(0, MOST_SENTENCES)) if (sentence !== null) notes.fault(`“${from}”: ${sentence}`);
-    if (sentences.length > MOST_SENTENCES) notes.fault(`“${from}” has ${sentences.length - MOST_SENTENCES} more faults.`);
+    const refused = 'faults' in result ? result.faults.map((fault) => fault.sentence) : [document.replace(result.design)];
+    const sentences = refused.filter((sentence) => sentence !== null);
+    if (sentences.length === 1) notes.fault(`“${from}”: ${sentences[0]}`);
+    if (sentences.length > 1) notes.add('fault', `“${from}” was not opened; its faults:`, undefined, sentences);
   };
 
   noting(async () => {

@@ -9,6 +9,7 @@ import { cosTurns } from '../../model/device/math.ts';
 import { ENVELOPE, FOLLOWER_SLOTS, follow, followerValues, HEARD, keepStep, RECTIFIED } from '../../model/control/follower.ts';
 import type { Control, Design } from '../../model/design/types.ts';
 import { deviceOf } from '../../model/cell/fromDesign.ts';
+import { conductsFromV } from '../../model/device/junction.ts';
 import { lawConstants } from '../../model/device/law.ts';
 import { measureTone } from '../../model/study/tone.ts';
 import type { FollowerCurve } from './bench.ts';
@@ -46,6 +47,7 @@ export function followerCurve(design: Design, variantIndex: number, control: Env
     control: column(({ controlV }) => controlV),
     gate: column(({ gateV }) => gateV),
     gateOffV: Math.sign(device.gateOffV) * Math.abs(lawConstants(device, design.tempC).gateOffV),
+    gateOnV: conductsFromV(device, design.tempC),
   };
 }
 

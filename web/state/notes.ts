@@ -5,7 +5,7 @@ import type { Note } from './bench.ts';
 
 export interface Notes {
   readonly notes: ReadonlySignal<readonly Note[]>;
-  add(kind: Note['kind'], sentence: string, advice?: string): void;
+  add(kind: Note['kind'], sentence: string, advice?: string, list?: readonly string[]): void;
   /** Adds a fault from anything that was thrown. */
   fault(error: unknown, advice?: string): void;
   dismiss(id: number): void;
@@ -14,9 +14,12 @@ export interface Notes {
 export function createNotes(): Notes {
   const notes = signal<readonly Note[]>([]);
   let nextId = 1;
-  const add: Notes['add'] = (kind, sentence, advice) => {
+  const add: Notes['add'] = (kind, sentence, advice, list) => {
     const others = notes.value.filter((note) => note.sentence !== sentence);
-    notes.value = [...others, { id: nextId++, kind, sentence, ...(advice === undefined ? {} : { advice }) }];
+    notes.value = [
+      ...others,
+      { id: nextId++, kind, sentence, ...(advice === undefined ? {} : { advice }), ...(list === undefined ? {} : { list }) },
+    ];
   };
   return {
     notes,

@@ -1,8 +1,10 @@
 /** What the page's worker reads of the shadow tone, as a pure plan of small steps that a test in Node can run too. */
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import { controlRangeV } from '../../model/control/range.ts';
 import { feedbackFraction, type Moves, withFeedbackFraction } from '../../model/design/feedback.ts';
-import type { Variant } from '../../model/design/types.ts';
+import type { Channel, Variant } from '../../model/design/types.ts';
 import { noiseReading } from '../../model/study/noiseDensity.ts';
+import { signedHarmonic } from '../../model/study/signed.ts';
 import { controlSwing } from '../../model/study/swing.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import { measureTone } from '../../model/study/tone.ts';
@@ -29,11 +31,12 @@ export function readMoment(question: ToneQuestion, gateV: number | null): Pick<M
   const variant = question.design.variants[question.variantIndex];
   if (variant.cell.feedback.kind === 'none') return { reading, thdBand: null };
   const k = feedbackFraction(variant.cell);
+  const { channel } = deviceOf(variant, 0);
   const [low, high] = fractionsWithin(k).map((end) => {
     const moved = questionAt(question, end);
-    return moved === null ? [] : [feedbackPoint(end, readTone(moved, reading.vgsV))];
+    return moved === null ? [] : [feedbackPoint(end, readTone(moved, reading.vgsV), channel)];
   });
-  return { reading, thdBand: thdWithin([...low, feedbackPoint(k, reading), ...high]) };
+  return { reading, thdBand: thdWithin([...low, feedbackPoint(k, reading, channel), ...high]) };
 }
 
 /**
@@ -102,14 +105,16 @@ function gateRangeV({ design, variantIndex }: ToneQuestion): readonly [number, n
  * lies inside; a k that parts within their limits cannot give is left out. A cell without feedback has no such curve: null.
  */
 export function* readFeedbackCurve(question: ToneQuestion, gateV: number | null): Generator<void, FeedbackCurve | null> {
-  const { cell } = question.design.variants[question.variantIndex];
+  const variant = question.design.variants[question.variantIndex];
+  const { cell } = variant;
+  const { channel } = deviceOf(variant, 0);
   if (cell.feedback.kind === 'none') return null;
   const keptV = gateV ?? readTone(question, null).vgsV;
   const points: FeedbackPoint[] = [];
   for (const k of curveFractions(feedbackFraction(cell))) {
     yield;
     const moved = questionAt(question, k);
-    if (moved !== null) points.push(feedbackPoint(k, readTone(moved, keptV)));
+    if (moved !== null) points.push(feedbackPoint(k, readTone(moved, keptV), channel));
   }
   return { gateV: keptV, points };
 }
@@ -141,16 +146,9 @@ export function curveFractions(present: number): number[] {
   return [...even.filter((k) => Math.abs(k - present) > apart), present].sort((a, b) => a - b);
 }
 
-function feedbackPoint(k: number, reading: ToneReading): FeedbackPoint {
-  const harmonic = (n: number) => reading.harmonics.find((each) => each.n === n);
-  const second = harmonic(2);
-  const fraction = (n: number) => (harmonic(n)?.amplitudeV ?? 0) / reading.fundamentalV;
-  return { k, thd: reading.thdFundamental, h2Signed: fraction(2) * secondSign(second?.phaseRad ?? 0), h3: fraction(3) };
-}
-
-/** Plus asks for more feedback, minus for less: the sign of the second harmonic's cosine against the input's. */
-export function secondSign(phaseRad: number): 1 | -1 {
-  return Math.cos(phaseRad) >= 0 ? 1 : -1;
+function feedbackPoint(k: number, reading: ToneReading, channel: Channel): FeedbackPoint {
+  const signed = (n: number) => signedHarmonic(reading, n, channel) ?? 0;
+  return { k, thd: reading.thdFundamental, h2Signed: signed(2), h3: Math.abs(signed(3)) };
 }
 
 function higher(a: WorstReading, b: WorstReading): WorstReading {

@@ -7,7 +7,10 @@ export function setWithin(
   name: string,
   unit: string,
 ): string | null {
-  if (!(value >= least && value <= most)) return `${name} is ${value} ${unit}; expected ${least} to ${most} ${unit}.`;
+  if (!(value >= least && value <= most))
+    return `${name} is ${printed(value)} ${unit}; expected ${printed(least)} to ${printed(most)} ${unit}.`;
   target.value = value;
   return null;
 }
+
+const printed = (value: number) => String(value).replace('-', '−');

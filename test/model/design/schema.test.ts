@@ -76,11 +76,21 @@ function leaves(node: Schema = schema): [string, Schema][] {
   return [...own, ...inner];
 }
 
+/** Every other schema of a field: of a group, a union, a list and the word that tells a union's members apart. */
+function shells(): [string, Schema][] {
+  const objects = [schema, ...Object.values(defs)];
+  const fields = objects.flatMap((node) => Object.entries((node.properties ?? {}) as Record<string, Schema>));
+  return fields
+    .filter(([, field]) => !('type' in field && field.type !== 'array') && !field.enum)
+    .map(([name, field]) => [name, 'anyOf' in field ? { ...(field.anyOf as Schema[])[0], default: field.default } : field]);
+}
+
 describe('the JSON Schema', () => {
-  test('is draft 2020-12 and gives each number a unit, a range, a default and a description', () => {
+  test('is draft 2020-12 and gives each field a unit, a default and a description, and each number a range', () => {
     expect(schema.$schema).toBe('https://json-schema.org/draft/2020-12/schema');
     expect(leaves().length).toBeGreaterThan(75);
-    for (const [name, field] of leaves()) {
+    for (const [name, field] of [...leaves(), ...shells()]) {
+      expect(field['x-unit'], name).toMatch(/./);
       expect(field.description, name).toMatch(/\. .*; default \S/);
       expect(field, name).toHaveProperty('default');
       if ([field.type].flat().some((type) => type === 'number' || type === 'integer')) {
@@ -112,7 +122,7 @@ describe('the JSON Schema', () => {
     };
     const ended = new Set<string>();
     for (const [name, field] of leaves()) {
-      if (!('x-unit' in field)) continue;
+      if (field['x-unit'] === 'none') continue;
       const ending = Object.keys(endings)
         .sort((a, b) => b.length - a.length)
         .find((end) => name.endsWith(end));

@@ -104,8 +104,10 @@ test('the whole board over a cycle: converged, the regions add up, and a shift o
 
 test('a control without a cycle, and a tone that does not fit, are refused by name', () => {
   expect(() => measureOverCycle(designOf(variantOf()), 0)).toThrow('control.source is fixed; expected lfo, whose cycle this reading is of');
-  expect(() => measureOverCycle(cellA, 0, { toneHz: 20 })).toThrow('toneHz is 20; expected 32 to 65536 Hz, 8 to 16384 periods in a cycle');
-  expect(() => measureOverCycle(cellA, 0, { toneV: 0 })).toThrow('toneV is 0; expected 1e-9 to 1000 V peak');
+  expect(() => measureOverCycle(cellA, 0, { toneHz: 20 })).toThrow(
+    'toneHz is 20; expected 32 Hz to 65.536 kHz, 8 to 16384 periods in a cycle',
+  );
+  expect(() => measureOverCycle(cellA, 0, { toneV: 0 })).toThrow('toneV is 0; expected 1 nV to 1 kV peak');
 });
 
 /** The largest THD over the gate voltage, found by golden section on the resting reading, and the gain where it is. */

@@ -139,6 +139,6 @@ test('two FETs side by side, 50 mV apart in VP, IDSS ∝ VP^1.4: within 0.24 dB 
 
 test('what cannot be is refused by name', () => {
   const design = designOf(variantOf(REAL_CELL, REAL_DEVICE));
-  expect(() => operatingPoint(design, 0, { controlV: 2e3 })).toThrow('controlV is 2000; expected -1000 to 1000 V');
+  expect(() => operatingPoint(design, 0, { controlV: 2e3 })).toThrow('controlV is 2000; expected −1 kV to 1 kV');
   expect(() => operatingPoint(design, 0, { gateV: 50 })).toThrow('gateV is 50; expected a voltage that the driver can bring the gate to');
 });

@@ -110,7 +110,7 @@ test('make-up gain counts at the output and not at the drain', () => {
 });
 
 test('an option that makes no sense is named with its value', () => {
-  expect(() => measureTone(cellA(0), 0, { toneHz: -5 })).toThrow('toneHz is -5; expected 0.1 to 1000000 Hz');
+  expect(() => measureTone(cellA(0), 0, { toneHz: -5 })).toThrow('toneHz is -5; expected 0.1 Hz to 1 MHz');
   expect(() => measureTone(cellA(0), 3, {})).toThrow('variant 3 is not in the design; expected 0 to 0');
 });
 

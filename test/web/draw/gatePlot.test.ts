@@ -1,6 +1,7 @@
 import { expect, test } from 'vitest';
 import { defaultDesign } from '../../../model/design/defaults.ts';
 import type { Cell, Control, Design } from '../../../model/design/types.ts';
+import { measureTone } from '../../../model/study/tone.ts';
 import { plotGate, regionAt, turnOf } from '../../../web/draw/gatePlot.ts';
 import type { GatePeriod } from '../../../web/state/bench.ts';
 import { controlPicture, gatePeriod } from '../../../web/state/controlPicture.ts';
@@ -44,9 +45,9 @@ test('a fixed control is a straight line at the gate’s own voltage', () => {
   expect(period.gate[0]).toBeCloseTo(-1, 6);
 });
 
-test('the gate is off past VGS(off), conducts about half a volt forward, and is mirrored for a p-channel part', () => {
-  expect([-1.6, -1.4, 0.4, 0.6].map((v) => regionAt(v, -1.5))).toEqual(['off', 'ohmic', 'ohmic', 'conducting']);
-  expect([1.6, 1.4, -0.6].map((v) => regionAt(v, 1.5))).toEqual(['off', 'ohmic', 'conducting']);
+test('the gate is off past VGS(off), conducts past the forward voltage that is given, and is mirrored for a p-channel part', () => {
+  expect([-1.6, -1.4, 0.4, 0.6].map((v) => regionAt(v, { gateOffV: -1.5, gateOnV: 0.5 }))).toEqual(['off', 'ohmic', 'ohmic', 'conducting']);
+  expect([1.6, 1.4, -0.6].map((v) => regionAt(v, { gateOffV: 1.5, gateOnV: 0.5 }))).toEqual(['off', 'ohmic', 'conducting']);
 });
 
 test('regions fill the strip without gaps, and the deepest point says how far it is past off', () => {
@@ -66,4 +67,18 @@ test('the present point is found on the falling or the rising half, as the contr
 test('a control that comes from outside has no period of its own, and the sentence says so', () => {
   const design = designOf({ source: 'external', fullScaleV: 1, offsetV: -1 }, cell);
   expect(controlPicture(design, 0, 1000)).toHaveProperty('fault');
+});
+
+test('the strip says that the gate conducts where the reading of a tone does', () => {
+  for (const controlV of [0.1, 0.25, 0.35, 0.6, 2]) {
+    const design = defaultDesign();
+    const [variant] = design.variants;
+    const asked: Design = { ...design, variants: [{ ...variant, control: { source: 'fixed', controlV } }] };
+    const { regions } = plotGate(gatePeriod(asked, 0), 600, 150);
+    const { gateOn } = measureTone(asked, 0, { toneV: 1e-6 }).regions;
+    expect(
+      regions.map(({ region }) => region),
+      `${controlV} V`,
+    ).toEqual([gateOn > 0.5 ? 'conducting' : 'ohmic']);
+  }
 });

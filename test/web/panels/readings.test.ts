@@ -4,7 +4,6 @@ import { measureTone } from '../../../model/study/tone.ts';
 import { characteristicRows, noiseAt } from '../../../web/panels/characteristicRows.ts';
 import { gatePeriod } from '../../../web/state/controlPicture.ts';
 import type { LiveLevels } from '../../../web/state/bench.ts';
-import { signedHarmonic } from '../../../web/panels/readingWords.ts';
 
 const [variant] = defaultDesign().variants;
 
@@ -12,12 +11,6 @@ function readAt(k: number) {
   const cell = { ...variant.cell, feedback: { kind: 'buffered', fraction: k } } as const;
   return measureTone({ ...defaultDesign(), variants: [{ ...variant, cell }] }, 0, { toneV: 0.2, controlV: -0.9 });
 }
-
-test('H2 is plus below the balance of k, where k should be raised, and minus above it', () => {
-  expect(signedHarmonic(readAt(0.4), 2)).toBeGreaterThan(0);
-  expect(signedHarmonic(readAt(0.6), 2)).toBeLessThan(0);
-  expect(signedHarmonic(readAt(0.4), 99)).toBeNull();
-});
 
 test('the rows of Table 1 have a number each, and their ends follow from an LFO’s swing', () => {
   const control = { source: 'lfo', shape: 'sine', rateHz: 4, fromV: -0.4, toV: -2, edgeSec: 0.005 } as const;

@@ -127,8 +127,8 @@ describe('changing values while sound plays', () => {
     expect(sound.last('gain')?.gain).toBeCloseTo(0.1, 12);
     expect(bench.setCeilingDbfs(-40)).toBeNull();
     expect(sound.last('ceiling')?.peak).toBeCloseTo(0.01, 12);
-    expect(bench.setListenDb(3)).toBe('The listening level is 3 dB; expected -60 to 0 dB.');
-    expect(bench.setCeilingDbfs(-41)).toBe('The ceiling is -41 dBFS; expected -40 to 0 dBFS.');
+    expect(bench.setListenDb(3)).toBe('The listening level is 3 dB; expected −60 to 0 dB.');
+    expect(bench.setCeilingDbfs(-41)).toBe('The ceiling is −41 dBFS; expected −40 to 0 dBFS.');
     expect(bench.listenDb.value).toBe(-20);
     expect(bench.ceilingDbfs.value).toBe(-40);
   });
@@ -344,7 +344,7 @@ describe('readings', () => {
     readingWorker.answer({ type: 'worst', id: first.id, swing: { worst, points: [] } });
     expect(bench.worst.value).toEqual(worst);
     expect(asked()).toBe(2);
-    expect(bench.setToneV(-1)).toBe('The shadow tone is -1 V peak; expected 0.0001 to 100 V peak.');
+    expect(bench.setToneV(-1)).toBe('The shadow tone is −1 V peak; expected 0.0001 to 100 V peak.');
     expect(bench.setToneHz(440)).toBeNull();
     expect(readingWorker.posted.findLast((message) => message.type === 'question')?.question.toneHz).toBe(440);
   });
@@ -583,10 +583,17 @@ describe('designs', () => {
     expect(bench.design.value).toEqual(first);
   });
 
-  test('a faulty file is refused whole, with the file’s name, and the first five faults', async () => {
+  test('a faulty file is refused whole, with the file’s name and every fault in one note', async () => {
     const before = bench.design.value;
     await bench.openDesign(new File(['{ "fettle": 1, "variants": [ { "cell": { "seriesOhm": -5 } } ] }'], 'bad.json'));
-    expect(sentences().some((sentence) => /^“bad.json”: .*seriesOhm is -5; expected/.test(sentence))).toBe(true);
+    expect(bench.notes.value).toHaveLength(1);
+    expect(sentences()).toEqual(['“bad.json” was not opened; its faults:']);
+    expect(bench.notes.value[0].list?.some((sentence) => /seriesOhm is .5; expected/.test(sentence))).toBe(true);
+    const extras = Object.fromEntries(Array.from({ length: 24 }, (_, n) => [`extra${n}`, 1]));
+    const many = { fettle: 1, variants: [{ name: 'A', cell: { circuit: 'shunt', ...extras } }] };
+    await bench.openDesign(new File([JSON.stringify(many)], 'many.json'));
+    expect(bench.notes.value).toHaveLength(2);
+    expect(bench.notes.value[1].list?.filter((sentence) => sentence.includes('.extra'))).toHaveLength(24);
     await bench.openDesign(new File(['{'], 'worse.json'));
     expect(sentences().at(-1)).toMatch(/^“worse.json”: /);
     expect(bench.design.value).toBe(before);

@@ -1,6 +1,7 @@
 import { useContext, useLayoutEffect, useRef, useState } from 'preact/hooks';
 import { CaptionContext } from './CaptionContext.ts';
 import { pageValue, type Stepping, stepValue } from './stepping.ts';
+import { Slip } from './Slip.tsx';
 import { TypingBox } from './TypingBox.tsx';
 import { useValueDrag } from './useValueDrag.ts';
 
@@ -27,12 +28,14 @@ export interface EditableValueProps {
 export function EditableValue(props: EditableValueProps) {
   const { label, short, value, stepping, format, min, max, onSet, className = '' } = props;
   const [typing, setTyping] = useState<string | null>(null);
+  const [refusal, setRefusal] = useState<string | null>(null);
   const caption = useContext(CaptionContext);
   const rest = useRef<HTMLSpanElement>(null);
   const wantsFocus = useRef(false);
   const printed = value === null ? 'none' : format(value);
 
   const say = (refused: string | null) => {
+    setRefusal(refused);
     caption.value = refused === null ? null : { words: `${refused} ${short} stays at ${printed}.`, refused: true };
   };
   const set = (next: number) => say(onSet(next));
@@ -54,11 +57,12 @@ export function EditableValue(props: EditableValueProps) {
   };
   const done = (byKey: boolean) => {
     wantsFocus.current = byKey;
+    setRefusal(null);
     setTyping(null);
   };
 
   return (
-    <span class={typing === null ? 'value-box' : 'value-box editing'}>
+    <span class={typing === null && refusal === null ? 'value-box' : 'value-box editing'}>
       <span
         ref={rest}
         role="spinbutton"
@@ -75,6 +79,7 @@ export function EditableValue(props: EditableValueProps) {
       >
         {printed}
       </span>
+      {typing === null && refusal !== null && <Slip refused>{refusal}</Slip>}
       {typing !== null && <TypingBox {...props} printed={printed} initial={typing} done={done} />}
     </span>
   );

@@ -6,11 +6,13 @@ interface NoteProps {
   readonly sentence: string;
   /** One plain sentence more. */
   readonly advice?: string | undefined;
+  /** Further sentences, scrolled where there are many. */
+  readonly list?: readonly string[] | undefined;
   readonly children?: ComponentChildren;
 }
 
 /** A block of paper with what the user must be told, and buttons that name the act. */
-export function Note({ kind, sentence, advice, children }: NoteProps) {
+export function Note({ kind, sentence, advice, list, children }: NoteProps) {
   const [head, ...rest] = sentence.split('; ');
   return (
     <section class={`note ${kind}`} role={kind === 'fault' ? 'alert' : 'status'}>
@@ -19,6 +21,14 @@ export function Note({ kind, sentence, advice, children }: NoteProps) {
         <strong>{head}</strong>
         {rest.length > 0 && `; ${rest.join('; ')}`} {advice}
       </p>
+      {list !== undefined && (
+        // biome-ignore lint/a11y/noNoninteractiveTabindex: a list that scrolls must be reached by key.
+        <ul class="note-list" tabIndex={0} aria-label="What was found">
+          {list.map((each) => (
+            <li key={each}>{each}</li>
+          ))}
+        </ul>
+      )}
       {children !== undefined && <p class="buttons">{children}</p>}
     </section>
   );
