@@ -192,6 +192,23 @@ describe('sound on the built page, after a real click', () => {
     expect(taken.every((x, n) => x === source[(start + n) % source.length])).toBe(true);
   });
 
+  test('the setting before the last change and the loudness of the source are a press away, and the gain is shown', async () => {
+    await startSound();
+    expect(await button('before the last change').count()).toBe(0);
+    await page
+      .getByRole('spinbutton', { name: /^R1, in series/ })
+      .first()
+      .click();
+    await page.keyboard.type('22k');
+    await page.keyboard.press('Enter');
+    await button('before the last change').click();
+    await button('as loud as the source').click();
+    await page.getByText(/\([+−]\d+\.\d\sdB\)/).waitFor();
+    await button('the cell').click();
+    await page.waitForTimeout(300);
+    expect(await page.evaluate(() => window.soundProbe.peak)).toBeGreaterThan(0);
+  });
+
   describe.each([
     ['one variant', 1],
     ['four stereo variants', 2],
