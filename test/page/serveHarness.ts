@@ -13,7 +13,7 @@ const root = fileURLToPath(new URL('./harness', import.meta.url));
 export async function serveHarness(): Promise<Site> {
   const outDir = mkdtempSync(join(tmpdir(), 'fettle-harness-'));
   const { test: _, plugins, ...rest } = config;
-  const copying = (plugins as Plugin[]).filter(({ name }) => name !== 'fettle-assets');
+  const copying = (plugins as Plugin[]).filter(({ name }) => name !== 'fettle-assets' && name !== 'fettle-budget');
   await build({
     ...rest,
     configFile: false,

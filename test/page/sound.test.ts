@@ -61,6 +61,13 @@ describe('sound on the built page, after a real click', () => {
     expect(firstSec).toBeLessThan(2);
   });
 
+  test('stopped while it is starting it stays silent, and the next Start plays', async () => {
+    await button('Start').dblclick();
+    await page.waitForTimeout(2000);
+    expect(await page.evaluate(() => window.soundProbe.firstSoundMs)).toBeNull();
+    await startSound();
+  });
+
   test('values change while it plays, and it plays on', async () => {
     await startSound();
     const reading = async () => page.evaluate(() => document.querySelector('main')?.textContent ?? document.body.textContent);
@@ -183,6 +190,23 @@ describe('sound on the built page, after a real click', () => {
     const start = placeIn(source, taken.subarray(0, 4096));
     expect(start).toBeGreaterThanOrEqual(0);
     expect(taken.every((x, n) => x === source[(start + n) % source.length])).toBe(true);
+  });
+
+  test('the setting before the last change and the loudness of the source are a press away, and the gain is shown', async () => {
+    await startSound();
+    expect(await button('before the last change').count()).toBe(0);
+    await page
+      .getByRole('spinbutton', { name: /^R1, in series/ })
+      .first()
+      .click();
+    await page.keyboard.type('22k');
+    await page.keyboard.press('Enter');
+    await button('before the last change').click();
+    await button('as loud as the source').click();
+    await page.getByText(/\([+−]\d+\.\d\sdB\)/).waitFor();
+    await button('the cell').click();
+    await page.waitForTimeout(300);
+    expect(await page.evaluate(() => window.soundProbe.peak)).toBeGreaterThan(0);
   });
 
   describe.each([

@@ -3,9 +3,12 @@ import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { createChain, processChain } from '../../model/chain/chain.ts';
 import { compileChain } from '../../model/chain/compile.ts';
+import { renderClip } from '../../model/chain/render.ts';
+import { readWav, writeWav } from '../../model/chain/wav.ts';
 import { setAt } from '../../model/design/path.ts';
 import { readDesign } from '../../model/design/read.ts';
 import type { Design } from '../../model/design/types.ts';
+import { loudnessOf } from '../../model/measure/loudness.ts';
 import { launchBrowser, openTab, type Site, type Tab } from '../support/browser.ts';
 import { createNoise } from '../support/noise.ts';
 import { RENDER_NAMES } from '../support/sameRenders.ts';
@@ -68,6 +71,25 @@ for (const rateHz of [44100, 48000, 96000]) {
     expect(tab.complaints).toEqual([]);
   });
 }
+
+test('the page’s worker measures the gains that Node does, and with them every variant is as loud as the source', async () => {
+  const design = example('harbour-tremolo');
+  const { channels, sampleRateHz } = readWav(readFileSync(new URL('../../assets/phrases/guitar.wav', import.meta.url)));
+  const lines = channels.map((line) => line.slice(0, 3 * sampleRateHz));
+  const file = Buffer.from(writeWav(lines, sampleRateHz, 'float32').bytes).toString('base64');
+  const { variants } = await tab.page.evaluate(([text, sound]) => window.matchOf(text, sound), [JSON.stringify(design), file] as const);
+  const wanted = loudnessOf(lines, sampleRateHz);
+  expect(variants).toHaveLength(design.variants.length);
+  variants.forEach((db, index) => {
+    const heard = renderClip(design, index, lines, sampleRateHz).map((line) => line.map((x) => x * 10 ** ((db ?? 0) / 20)));
+    expect(Math.abs(loudnessOf(heard, sampleRateHz) - wanted)).toBeLessThan(0.05);
+    // What is heard live has other filters and starts at once: still as loud.
+    const live = lines.map((line) => new Float32Array(line.length));
+    processChain(createChain(compileChain(design, index, sampleRateHz, lines.length, 'lowLatency')), lines, live);
+    const lufs = loudnessOf(live, sampleRateHz) + (db ?? 0);
+    expect(Math.abs(lufs - wanted)).toBeLessThan(0.05);
+  });
+});
 
 const COMMITTED: Record<string, string> = JSON.parse(readFileSync(new URL('../reference/renders.json', import.meta.url), 'utf8'));
 

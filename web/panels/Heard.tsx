@@ -9,6 +9,7 @@ const WAYS: readonly { which: Hearing; words: string }[] = [
   { which: 'cell', words: 'the cell' },
   { which: 'bypass', words: 'bypass' },
 ];
+const BEFORE = { which: 'previous', words: 'before the last change' } as const;
 const OVERSAMPLING = [1, 2, 4, 8, 16].map((factor) => ({
   value: String(factor),
   words: factor === 1 ? 'not oversampled' : `oversampled ${factor}×`,
@@ -23,13 +24,13 @@ export function Heard() {
     <p class="sentence">
       <i class="lead">Heard:</i> <State />{' '}
       <span class="ways">
-        {WAYS.map(({ which, words }) => (
+        {(bench.previous.value === null ? WAYS : [...WAYS, BEFORE]).map(({ which, words }) => (
           <button key={which} type="button" class="way" aria-pressed={hearing === which} onClick={() => bench.hear(which)}>
             {words}
           </button>
         ))}
-      </span>{' '}
-      at{' '}
+      </span>
+      , <Matched /> at{' '}
       <EditableValue
         label="Listening level"
         short="Level"
@@ -62,6 +63,25 @@ export function Heard() {
       />
       .
     </p>
+  );
+}
+
+/** Whether all of them are as loud as the source, and the gain that this takes. */
+function Matched() {
+  const bench = useBench();
+  const on = bench.matched.value;
+  const { variants, previous } = bench.matchDb.value;
+  const gains = { cell: variants[bench.heardVariant.value], previous, bypass: 0 };
+  const db = gains[bench.hearing.value];
+  return (
+    <>
+      <span class="ways">
+        <button type="button" class="way" aria-pressed={on} onClick={() => bench.setMatched(!on)}>
+          as loud as the source
+        </button>
+      </span>
+      {on && (db === null ? ' (being measured)' : ` (${db < 0 ? '' : '+'}${decimals(db, 1)}\u2009dB)`)}
+    </>
   );
 }
 

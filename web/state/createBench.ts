@@ -4,7 +4,8 @@ import firstDesign from '../../assets/designs/harbour-tremolo.json?raw';
 import { compileChain } from '../../model/chain/compile.ts';
 import { readDesign } from '../../model/design/read.ts';
 import type { Design } from '../../model/design/types.ts';
-import type { Bench } from './bench.ts';
+import type { Clip } from '../audio/clip.ts';
+import type { Bench, SourceInfo } from './bench.ts';
 import { createDocument } from './document.ts';
 import { fileName } from './fileName.ts';
 import { createLevels } from './levels.ts';
@@ -32,10 +33,21 @@ export function assembleBench(parts: Parts): Bench {
   const document = createDocument(openingDesign(), (design, variantIndex) => {
     compileChain(design, variantIndex, listening.rateHz.peek() ?? TRY_OUT_HZ, 1, 'lowLatency');
   });
+  /** Counts the choices of a source: while one is being loaded another may be made, and the last one counts. */
+  let choice = 0;
+  let choosing: Promise<unknown> = Promise.resolve();
+  const choose = (kind: SourceInfo['kind'], load: () => Promise<Clip>) => {
+    choice++;
+    const mine = choice;
+    const chosen = load().then((clip) => (mine === choice ? listening.setSource(clip, kind) : undefined));
+    choosing = Promise.allSettled([chosen]);
+    return chosen;
+  };
   const loadFirstSource = async () => {
     await library.load();
+    await choosing;
     const [first] = library.phrases.peek();
-    if (first !== undefined && listening.source.peek().title === '') await choosePhrase(first.name);
+    if (first !== undefined && listening.source.peek().title === '') await choose('phrase', () => library.loadPhrase(first.name));
   };
   const listening: Listening = createListening({ parts, document, levels, notes, takes: () => takes, loadFirstSource });
   const takes: Takes = createTakes(parts, document, listening.forTakes, notes);
@@ -56,7 +68,7 @@ export function assembleBench(parts: Parts): Bench {
     }
   };
 
-  const choosePhrase = (name: string) => noting(async () => listening.setSource(await library.loadPhrase(name), 'phrase'));
+  const choosePhrase = (name: string) => noting(() => choose('phrase', () => library.loadPhrase(name)));
 
   const openText = (text: string, from: string) => {
     const result = readDesign(text);
@@ -82,7 +94,7 @@ export function assembleBench(parts: Parts): Bench {
     notes: notes.notes,
     dismiss: notes.dismiss,
     choosePhrase,
-    openAudio: (file) => noting(async () => listening.setSource(await parts.decodeAudio(await file.arrayBuffer(), file.name), 'file')),
+    openAudio: (file) => noting(() => choose('file', async () => parts.decodeAudio(await file.arrayBuffer(), file.name))),
     openDesign: (file) => noting(async () => openText(await file.text(), file.name)),
     openExample: (name) => noting(async () => openText(await library.loadExample(name), name)),
     saveDesign() {

@@ -2,6 +2,8 @@
 import { compileChain } from '../../../model/chain/compile.ts';
 import type { Design } from '../../../model/design/types.ts';
 import workletUrl from '../../../worklet/fettle.worklet.ts?worker&url';
+import type { MatchDb } from '../../../web/state/bench.ts';
+import { createBench } from '../../../web/state/createBench.ts';
 import type { CellOptions, FromCell } from '../../../worklet/protocol.ts';
 import { CELL_PROCESSOR } from '../../../worklet/protocol.ts';
 import { renderNamed, sha256 } from '../../support/sameRenders.ts';
@@ -9,6 +11,8 @@ import RenderWorker from './render.worker.ts?worker';
 
 declare global {
   interface Window {
+    /** The gains to one loudness that the page's bench measures for a design, as JSON, and a sound file, as base64. */
+    matchOf(design: string, file: string): Promise<MatchDb>;
     /** SHA-256 of one of the named renders, made on the page's own thread or in a worker. */
     hashOf(name: string, where: 'page' | 'worker'): Promise<string>;
     /** The samples that leave the cell's processor, as the bytes of Float32 in base64, one text for each channel. */
@@ -47,6 +51,21 @@ window.playOffline = async (design, rateHz, channels) => {
   source.start();
   const rendered = await context.startRendering();
   return lines.map((_, c) => toText(rendered.getChannelData(c)));
+};
+
+window.matchOf = async (design, file) => {
+  const bench = createBench();
+  await bench.openDesign(new File([design], 'design.json'));
+  const bytes = Uint8Array.from(atob(file), (letter) => letter.charCodeAt(0));
+  await bench.openAudio(new File([bytes], 'sound.wav'));
+  bench.setMatched(true);
+  return new Promise((resolve) => {
+    const stop = bench.matchDb.subscribe((match) => {
+      if (match.variants.includes(null)) return;
+      resolve(match);
+      queueMicrotask(() => stop());
+    });
+  });
 };
 
 window.hashOf = async (name, where) => {

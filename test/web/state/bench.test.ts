@@ -267,6 +267,21 @@ describe('sources', () => {
     expect(bench.sound.value).toBe('playing');
   });
 
+  test('of sources chosen while another is being loaded the last one counts, the first phrase too', async () => {
+    const { fetchBytes } = parts;
+    const waiting: (() => void)[] = [];
+    parts.fetchBytes = async (path) => {
+      if (path.endsWith('.wav')) await new Promise<void>((go) => waiting.push(go));
+      return fetchBytes(path);
+    };
+    bench = assembleBench(parts);
+    await vi.waitUntil(() => waiting.length === 1);
+    await bench.openAudio(fileOf([createNoise(1, 4800, 0.5)], 48000, 'mine.wav'));
+    waiting[0]();
+    await vi.advanceTimersByTimeAsync(100);
+    expect(bench.source.value.title).toBe('mine.wav');
+  });
+
   test('a machine that cannot run at the source’s rate says that it resamples', async () => {
     parts.onlyRateHz = 44100;
     await bench.start();
