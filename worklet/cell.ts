@@ -1,85 +1,133 @@
-/** The cell's processor: input 0 → chain → monitor → output 0. Input 1 carries a take that is played instead. */
-import type { Chain } from '../model/chain/chain.ts';
-import { createChain, moveChain, processChain, warmChain } from '../model/chain/chain.ts';
-import type { Delay } from './delay.ts';
-import { createDelay, processDelay } from './delay.ts';
-import type { Meter } from './meter.ts';
+/**
+ * The cell's processor: input 0 → chains of all variants, and the bypass → choice → take → level, mute, ceiling → output 0. Input 1 carries a take
+ * that is played instead.
+ */
+import type { Bank, Lane } from './bank.ts';
+import { checkSlot, createBank, dropLane, processBank, setLane } from './bank.ts';
+import { beginBlock, createLoad, endBlock } from './load.ts';
+import type { Measured, Meter } from './meter.ts';
 import { createMeter, processMeter, returnReport } from './meter.ts';
-import type { Monitor } from './monitor.ts';
-import { createMonitor, processMonitor, setCeiling, setGain, setHeard, setMuted } from './monitor.ts';
-import type { CellOptions, FromCell, ToCell } from './protocol.ts';
+import { choose, createMix, processMix, setGains } from './mix.ts';
+import { createMonitor, processMonitor, setCeiling, setGain, setMuted } from './monitor.ts';
+import type { CellOptions, FromCell, Heard, Match, ToCell } from './protocol.ts';
+import { PREVIOUS_SLOT, SLOTS } from './protocol.ts';
 import type { Recorder } from './recorder.ts';
 import { createRecorder, endRecording, processRecorder, returnChunk, startRecording } from './recorder.ts';
 
+/** Sources of the mix after the slots. */
+const BYPASS = SLOTS;
+const ASIDE = SLOTS + 1;
+const SOURCES = SLOTS + 2;
+
 export class CellProcessor extends AudioWorkletProcessor {
-  private readonly chain: Chain;
-  private readonly monitor: Monitor;
+  private readonly measured: Measured;
   private readonly meter: Meter;
   private readonly recorder: Recorder;
-  private delay: Delay;
-  private latencySamples: number;
   private readonly inputs: Float32Array[];
   private readonly asides: Float32Array[];
+  private readonly sources: (readonly Float32Array[])[];
+  private focus: number;
+  private heard: Heard;
   private silence = new Float32Array(128);
   private alive = true;
 
   constructor(options: { processorOptions: CellOptions }) {
     super();
-    const { numbers, channels, heard, gain, ceilingPeak, muted } = options.processorOptions;
-    this.chain = createChain(numbers);
-    warmChain(this.chain);
-    this.monitor = createMonitor(heard, gain, ceilingPeak, muted, sampleRate);
+    const { chains, focus, channels, heard, match, gain, ceilingPeak, muted } = options.processorOptions;
+    const bank = createBank(chains, channels, sampleRate);
+    this.focus = checkFilled(bank, focus);
+    this.heard = heard;
+    const mix = createMix(SOURCES, sourceOf(bank, focus, heard), sampleRate);
+    setGains(mix, gainsOf(match));
+    mix.gain.set(mix.gainTo);
+    const monitor = createMonitor(gain, ceilingPeak, muted, sampleRate);
+    this.measured = { bank, mix, monitor, load: createLoad() };
     this.meter = createMeter(this.port, sampleRate);
     this.recorder = createRecorder(this.port, channels);
-    this.latencySamples = this.chain.latencySamples;
-    this.delay = createDelay(channels, this.latencySamples);
     this.inputs = Array.from({ length: channels }, () => this.silence);
     this.asides = Array.from({ length: channels }, () => this.silence);
+    this.sources = Array.from({ length: SOURCES }, () => this.asides);
     this.port.onmessage = (event: MessageEvent<ToCell>) => this.receive(event.data);
-    this.tell({ type: 'ready', latencySamples: this.latencySamples });
+    this.tell({ type: 'ready', latencySamples: bank.latencySamples });
   }
 
   process(inputs: Float32Array[][], outputs: Float32Array[][]): boolean {
     const lines = outputs[0];
+    const { bank, mix, monitor, load } = this.measured;
+    beginBlock(load);
     if (this.silence.length !== lines[0].length) this.silence = new Float32Array(lines[0].length);
     for (let c = 0; c < this.inputs.length; c++) {
       this.inputs[c] = inputs[0][c] ?? this.silence;
       this.asides[c] = inputs[1]?.[c] ?? this.silence;
     }
-    processDelay(this.delay, this.inputs);
-    processChain(this.chain, this.inputs, lines);
+    processBank(bank, this.inputs);
+    this.findSources();
+    const chosen = mix.chosen < SLOTS ? bank.lanes[mix.chosen] : null;
+    processMix(mix, this.sources, lines, chosen !== null && chosen.lead > 0);
     processRecorder(this.recorder, currentFrame, lines);
-    processMeter(this.meter, currentFrame, this.inputs, lines, this.chain.readings, this.monitor);
-    processMonitor(this.monitor, lines, this.delay.lines, this.asides);
+    processMonitor(monitor, lines);
+    const lane = this.laneInFocus();
+    processMeter(this.meter, currentFrame, this.inputs, lane.lines, lane.chain.readings, this.measured);
+    endBlock(load, lines[0].length / sampleRate);
     return this.alive;
+  }
+
+  /** The lines of each source, where they are now; empties slots that were dropped and are no longer heard. */
+  private findSources(): void {
+    const { bank, mix } = this.measured;
+    for (let slot = 0; slot < SLOTS; slot++) {
+      const lane = bank.lanes[slot];
+      if (lane === null) continue;
+      this.sources[slot] = lane.lines;
+      if (lane.leaving && mix.weight[slot] === 0) bank.lanes[slot] = null;
+    }
+    this.sources[BYPASS] = bank.bypassLines;
+  }
+
+  private laneInFocus(): Lane {
+    // There always is one: a slot in focus is never dropped.
+    return this.measured.bank.lanes[this.focus] as Lane;
   }
 
   /** A message that is refused changes nothing: the last good values go on sounding and the page is told why. */
   private receive(message: ToCell): void {
     try {
       this.obey(message);
-      this.followLatency();
     } catch (error) {
       this.tell({ type: 'fault', sentence: error instanceof Error ? error.message : String(error) });
     }
   }
 
   private obey(message: ToCell): void {
+    const { bank, mix, monitor } = this.measured;
     switch (message.type) {
       case 'move':
-        moveChain(this.chain, message.numbers);
+        setLane(bank, message.slot, message.numbers, this.laneInFocus());
+        return;
+      case 'drop':
+        if (message.slot === this.focus || message.slot === mix.chosen) {
+          throw new RangeError(`Slot ${message.slot} is heard; expected another one to be dropped`);
+        }
+        dropLane(bank, message.slot);
+        return;
+      case 'focus':
+        checkSlot(bank, message.slot);
+        this.turnTo(message.slot, this.heard);
         return;
       case 'hear':
-        setHeard(this.monitor, message.heard);
+        this.turnTo(this.focus, message.heard);
+        return;
+      case 'match':
+        setGains(mix, gainsOf(message.match));
         return;
       case 'gain':
-        setGain(this.monitor, message.gain);
+        setGain(monitor, message.gain);
         return;
       case 'ceiling':
-        setCeiling(this.monitor, message.peak);
+        setCeiling(monitor, message.peak);
         return;
       case 'mute':
-        setMuted(this.monitor, message.on);
+        setMuted(monitor, message.on);
         return;
       case 'record':
         message.on ? startRecording(this.recorder) : endRecording(this.recorder);
@@ -99,16 +147,43 @@ export class CellProcessor extends AudioWorkletProcessor {
     }
   }
 
-  /** The chain's delay changes with its oversampling, at a move or at the end of a fade; the bypass follows at the next message. */
-  private followLatency(): void {
-    const { latencySamples } = this.chain;
-    if (latencySamples === this.latencySamples) return;
-    this.latencySamples = latencySamples;
-    this.delay = createDelay(this.inputs.length, latencySamples);
-    this.tell({ type: 'latency', latencySamples });
+  private turnTo(focus: number, heard: Heard): void {
+    const { bank, mix } = this.measured;
+    checkFilled(bank, focus);
+    choose(mix, sourceOf(bank, focus, heard));
+    this.focus = focus;
+    this.heard = heard;
   }
 
   private tell(message: FromCell): void {
     this.port.postMessage(message);
   }
+}
+
+function gainsOf({ slots, bypass }: Match): number[] {
+  return [...slots, bypass, 1];
+}
+
+/** Throws a RangeError where what is to be heard is not there. */
+function sourceOf(bank: Bank, focus: number, heard: Heard): number {
+  switch (heard) {
+    case 'cell':
+      return checkFilled(bank, focus);
+    case 'previous':
+      return checkFilled(bank, PREVIOUS_SLOT);
+    case 'bypass':
+      return BYPASS;
+    case 'aside':
+      return ASIDE;
+    default:
+      heard satisfies never;
+      throw new RangeError(`heard is “${heard}”; expected cell, previous, bypass or aside`);
+  }
+}
+
+function checkFilled(bank: Bank, slot: number): number {
+  checkSlot(bank, slot);
+  const lane = bank.lanes[slot];
+  if (lane === null || lane.leaving) throw new RangeError(`Slot ${slot} is empty; expected one with a chain`);
+  return slot;
 }

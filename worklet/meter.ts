@@ -5,9 +5,14 @@
  * While none is free nothing is sent; the totals go on, so no peak is lost, only the samples between two reports.
  */
 import type { ChainReadings } from '../model/chain/chain.ts';
+import type { Bank } from './bank.ts';
+import type { Load } from './load.ts';
+import { takeLoad } from './load.ts';
+import type { Mix } from './mix.ts';
 import type { Monitor } from './monitor.ts';
-import { BROKEN_SAMPLES, CEILING_FRAMES, HEARD_PEAK } from './monitor.ts';
+import { CEILING_FRAMES, HEARD_PEAK, HEARD_SQUARES } from './monitor.ts';
 import type { Report } from './protocol.ts';
+import { SLOTS } from './protocol.ts';
 
 const POOL = 6;
 const REPORTS_PER_SEC = 30;
@@ -23,6 +28,14 @@ const TOTALS = 7;
 
 export interface Post {
   postMessage(message: unknown, transfer: Transferable[]): void;
+}
+
+/** What a report is made of beside the totals. */
+export interface Measured {
+  readonly bank: Bank;
+  readonly mix: Mix;
+  readonly monitor: Monitor;
+  readonly load: Load;
 }
 
 export interface Meter {
@@ -46,14 +59,14 @@ export function createMeter(post: Post, sampleRateHz: number): Meter {
   return { post, reports, transfers, free: reports.map((_, slot) => slot > 0), totals, frames, sampleRateHz, slot: 0, fill: 0 };
 }
 
-/** Counts one block. Call it before the monitor writes over the chain's output, which is `outputs`. */
+/** Counts one block; `outputs` and `readings` are those of the chain in focus. */
 export function processMeter(
   meter: Meter,
   frame: number,
   inputs: readonly Float32Array[],
   outputs: readonly Float32Array[],
   readings: ChainReadings,
-  monitor: Monitor,
+  measured: Measured,
 ): void {
   const { totals } = meter;
   for (let c = 0; c < outputs.length; c++) addLevels(totals, inputs[c], outputs[c]);
@@ -67,7 +80,7 @@ export function processMeter(
     report.input[meter.fill] = inputs[0][n];
     report.output[meter.fill] = outputs[0][n];
     meter.fill++;
-    if (meter.fill === meter.frames) send(meter, report, readings, monitor);
+    if (meter.fill === meter.frames) send(meter, report, readings, measured);
   }
 }
 
@@ -109,24 +122,32 @@ function takeSlot(meter: Meter): boolean {
   return true;
 }
 
-function send(meter: Meter, report: Report, readings: ChainReadings, monitor: Monitor): void {
+function send(meter: Meter, report: Report, readings: ChainReadings, { bank, mix, monitor, load }: Measured): void {
   const { totals } = meter;
   report.inputPeak = totals[INPUT_PEAK];
   report.outputPeak = totals[OUTPUT_PEAK];
   report.outputSquare = totals[OUTPUT_SQUARES] / totals[SAMPLES];
+  report.heardSquare = monitor.totals[HEARD_SQUARES] / totals[SAMPLES];
   report.inputPeakV = totals[INPUT_PEAK_V];
   report.drainPeakV = totals[DRAIN_PEAK_V];
   report.feedthroughPeakV = totals[FEEDTHROUGH_PEAK_V];
   report.lagMs = Date.now() - (1000 * report.frame) / meter.sampleRateHz;
   report.controlV = readings.controlV;
   report.gateSourceV = readings.gateSourceV;
-  report.faults = readings.faults + monitor.totals[BROKEN_SAMPLES];
+  report.faults = readings.faults + mix.broken;
   report.heardPeak = monitor.totals[HEARD_PEAK];
   report.ceilingFrames = monitor.totals[CEILING_FRAMES];
+  report.latencySamples = bank.latencySamples;
+  report.loadFraction = takeLoad(load);
+  for (let slot = 0; slot < SLOTS; slot++) {
+    const lane = bank.lanes[slot];
+    report.slotPeaks[slot] = lane === null ? 0 : lane.peak;
+    report.slotFaults[slot] = lane === null ? 0 : lane.chain.readings.faults;
+    if (lane !== null) lane.peak = 0;
+  }
   meter.post.postMessage(report, meter.transfers[meter.slot]);
   totals.fill(0);
-  monitor.totals[HEARD_PEAK] = 0;
-  monitor.totals[CEILING_FRAMES] = 0;
+  monitor.totals.fill(0);
   meter.slot = -1;
 }
 
@@ -141,12 +162,17 @@ function createReport(slot: number, frames: number): Report {
     outputPeak: 0,
     heardPeak: 0,
     outputSquare: 0,
+    heardSquare: 0,
     controlV: 0,
     gateSourceV: 0,
     inputPeakV: 0,
     drainPeakV: 0,
     feedthroughPeakV: 0,
     faults: 0,
+    slotPeaks: new Float64Array(SLOTS),
+    slotFaults: new Float64Array(SLOTS),
+    latencySamples: 0,
+    loadFraction: 0,
     ceilingFrames: 0,
     lagMs: 0,
   };

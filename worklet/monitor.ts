@@ -1,66 +1,55 @@
 /**
- * The listening side: chooses between the cell, its bypass and a take, sets the level, mutes, and keeps a ceiling.
+ * The listening side: sets the level, mutes, and keeps a ceiling.
  *
- * Law      y = g·level·mute·(w0·cell + w1·bypass + w2·aside); the weights, level and mute move in straight lines
+ * Law      y = g·level·mute·x;  level and mute move in straight lines
  * Ceiling  one gain g for all channels. The first sample that would pass the ceiling is itself turned down to it, so nothing ever leaves above
  *          it and no delay is added; g then recovers with a time constant of 0.2 s. The price is some distortion at the edge of
  *          an attack: `ceilingFrames` says when, and takes are recorded before it
- * Error    at rest (one weight 1, level 1, unmuted, below the ceiling) the output is the input, bit for bit
- * Valid    gain 0 to 1; ceiling 0.01 (−40 dBFS) to 1; any block length; a sample that is no finite number leaves as silence and is counted
+ * Error    at rest (level 1, unmuted, below the ceiling) the output is the input, bit for bit
+ * Valid    gain 0 to 1; ceiling 0.01 (−40 dBFS) to 1; any block length; finite samples
  */
-import type { Heard } from './protocol.ts';
 import { MUTE_SEC } from './protocol.ts';
 
-const FADE_SEC = 0.01;
 const LEVEL_SEC = 0.03;
 const UNMUTE_SEC = 0.1;
 const RECOVER_SEC = 0.2;
 
-const SOURCES: readonly Heard[] = ['cell', 'bypass', 'aside'];
-const LEVEL = 3;
-const MUTE = 4;
-const RAMPS = 5;
+const LEVEL = 0;
+const MUTE = 1;
+const RAMPS = 2;
 
 export interface Monitor {
-  /** Present value, target and largest change per sample of the three weights, the level and the mute. */
+  /** Present value, target and largest change per sample of the level and the mute. */
   readonly value: Float64Array;
   readonly target: Float64Array;
   readonly step: Float64Array;
   readonly ceiling: Float64Array;
-  /** Since the caller last cleared them: peak that left, frames turned down, broken samples. */
+  /** Since the caller last cleared them: peak and sum of squares that left, over all channels; frames turned down. */
   readonly totals: Float64Array;
   readonly sampleRateHz: number;
 }
 
 export const HEARD_PEAK = 0;
 export const CEILING_FRAMES = 1;
-export const BROKEN_SAMPLES = 2;
+export const HEARD_SQUARES = 2;
 
 const PEAK = 0;
 const GAIN = 1;
 
-export function createMonitor(heard: Heard, gain: number, ceilingPeak: number, muted: boolean, sampleRateHz: number): Monitor {
+export function createMonitor(gain: number, ceilingPeak: number, muted: boolean, sampleRateHz: number): Monitor {
   const monitor: Monitor = {
     value: new Float64Array(RAMPS),
     target: new Float64Array(RAMPS),
-    step: new Float64Array(RAMPS).fill(1 / (FADE_SEC * sampleRateHz)),
+    step: new Float64Array(RAMPS).fill(1 / (LEVEL_SEC * sampleRateHz)),
     ceiling: new Float64Array([1, 1]),
     totals: new Float64Array(3),
     sampleRateHz,
   };
-  monitor.step[LEVEL] = 1 / (LEVEL_SEC * sampleRateHz);
-  setHeard(monitor, heard);
   setGain(monitor, gain);
   setCeiling(monitor, ceilingPeak);
   setMuted(monitor, muted);
   monitor.value.set(monitor.target);
   return monitor;
-}
-
-export function setHeard(monitor: Monitor, heard: Heard): void {
-  const chosen = SOURCES.indexOf(heard);
-  if (chosen < 0) throw new RangeError(`heard is “${heard}”; expected cell, bypass or aside`);
-  for (let i = 0; i < SOURCES.length; i++) monitor.target[i] = i === chosen ? 1 : 0;
 }
 
 export function setGain(monitor: Monitor, gain: number): void {
@@ -80,13 +69,8 @@ export function setMuted(monitor: Monitor, on: boolean): void {
   monitor.step[MUTE] = 1 / ((on ? MUTE_SEC : UNMUTE_SEC) * monitor.sampleRateHz);
 }
 
-/** `lines` holds the cell's output and receives what is heard; `bypass` and `aside` have as many channels of the same length. */
-export function processMonitor(
-  monitor: Monitor,
-  lines: readonly Float32Array[],
-  bypass: readonly Float32Array[],
-  aside: readonly Float32Array[],
-): void {
+/** In place: `lines` holds what is chosen and receives what is heard. */
+export function processMonitor(monitor: Monitor, lines: readonly Float32Array[]): void {
   const { value, target, step, ceiling, totals } = monitor;
   const recover = 1 / (RECOVER_SEC * monitor.sampleRateHz);
   const limit = ceiling[PEAK];
@@ -99,12 +83,7 @@ export function processMonitor(
     const level = value[LEVEL] * value[MUTE];
     let peak = 0;
     for (let c = 0; c < lines.length; c++) {
-      let x = level * (value[0] * lines[c][n] + value[1] * bypass[c][n] + value[2] * aside[c][n]);
-      if (!(x - x === 0)) {
-        x = 0;
-        totals[BROKEN_SAMPLES]++;
-      }
-      lines[c][n] = x;
+      lines[c][n] *= level;
       // As stored: rounded to a Float32 it may be larger than it was.
       peak = Math.max(peak, Math.abs(lines[c][n]));
     }
@@ -113,7 +92,10 @@ export function processMonitor(
       gain = limit / peak;
       totals[CEILING_FRAMES]++;
     }
-    if (gain < 1) for (let c = 0; c < lines.length; c++) lines[c][n] *= gain;
+    for (let c = 0; c < lines.length; c++) {
+      if (gain < 1) lines[c][n] *= gain;
+      totals[HEARD_SQUARES] += lines[c][n] * lines[c][n];
+    }
     totals[HEARD_PEAK] = Math.max(totals[HEARD_PEAK], peak * gain);
   }
   ceiling[GAIN] = gain;

@@ -10,22 +10,44 @@ export const PASS_PROCESSOR = 'fettle-pass';
 /** Length of the ramp that mutes. */
 export const MUTE_SEC = 0.03;
 
-/** What the listener hears: the chain's output, its delayed input, or the processor's second input (a take being played). */
-export type Heard = 'cell' | 'bypass' | 'aside';
+/** Places for chains in the processor: four for variants, the last for the setting before the last change. */
+export const SLOTS = 5;
+export const PREVIOUS_SLOT = 4;
+
+/**
+ * What the listener hears: the chain in focus, the setting before the last change, the input as late as the chains, or the processor's second
+ * input (a take being played).
+ */
+export type Heard = 'cell' | 'previous' | 'bypass' | 'aside';
+
+/** Gains that bring what can be heard to one loudness: one for each slot, and the bypass's. Linear, 0 to 100. */
+export interface Match {
+  readonly slots: readonly number[];
+  readonly bypass: number;
+}
 
 /** `processorOptions` of the cell's processor. `gain` and `ceilingPeak` are linear, 0 to 1. */
 export interface CellOptions {
-  readonly numbers: ChainNumbers;
+  /** By slot; null or absent for an empty one. */
+  readonly chains: readonly (ChainNumbers | null)[];
+  readonly focus: number;
   readonly channels: number;
   readonly heard: Heard;
+  readonly match: Match;
   readonly gain: number;
   readonly ceilingPeak: number;
   readonly muted: boolean;
 }
 
 export type ToCell =
-  | { readonly type: 'move'; readonly numbers: ChainNumbers }
+  /** Moves the chain of a slot, or puts one there; the others go on as they are. */
+  | { readonly type: 'move'; readonly slot: number; readonly numbers: ChainNumbers }
+  /** Empties a slot once it is no longer heard; one that is chosen to be heard is refused. */
+  | { readonly type: 'drop'; readonly slot: number }
+  /** The slot whose chain «cell» is, and whose readings the reports hold. */
+  | { readonly type: 'focus'; readonly slot: number }
   | { readonly type: 'hear'; readonly heard: Heard }
+  | { readonly type: 'match'; readonly match: Match }
   | { readonly type: 'gain'; readonly gain: number }
   | { readonly type: 'ceiling'; readonly peak: number }
   | { readonly type: 'mute'; readonly on: boolean }
@@ -41,7 +63,6 @@ export type ToCell =
 
 export type FromCell =
   | { readonly type: 'ready'; readonly latencySamples: number }
-  | { readonly type: 'latency'; readonly latencySamples: number }
   | Report
   | Chunk
   /** The page did not return chunks in time: so many frames of the take are missing. */
@@ -51,7 +72,7 @@ export type FromCell =
 
 export type ToPass = { readonly type: 'dispose' };
 
-/** Levels over the frames since the last report, every sample counted, and those frames themselves (first channel). */
+/** Levels over the frames since the last report, every sample counted, and those frames themselves (first channel). Output is that of the chain in focus. */
 export interface Report {
   readonly type: 'report';
   readonly slot: number;
@@ -63,16 +84,24 @@ export interface Report {
   inputPeak: number;
   outputPeak: number;
   heardPeak: number;
-  /** Mean square of the output, all channels. */
+  /** Mean squares of the output and of what left for the loudspeakers, all channels. */
   outputSquare: number;
-  /** The chain's own readings: the voltages of the last block, the peaks of all. */
+  heardSquare: number;
+  /** The readings of the chain in focus: the voltages of the last block, the peaks of all. */
   controlV: number;
   gateSourceV: number;
   inputPeakV: number;
   drainPeakV: number;
   feedthroughPeakV: number;
-  /** Times, since the node was made, that the chain fell back or a sample that is no number was replaced by silence. */
+  /** Times, since the node was made, that the chain in focus fell back or a sample that is no number was replaced by silence. */
   faults: number;
+  /** By slot, 0 where it is empty: output peak since the last report; times that the chain fell back since it was made. */
+  readonly slotPeaks: Float64Array;
+  readonly slotFaults: Float64Array;
+  /** Delay of everything that is heard. */
+  latencySamples: number;
+  /** Part of the time a block lasts that it took to compute, by a clock of whole milliseconds: only the mean of hundreds of reports is a measurement. */
+  loadFraction: number;
   /** Frames that the ceiling turned down. */
   ceilingFrames: number;
   /** How far the audio clock is behind the wall clock, ms, up to a constant: where its least value steps up, there was a gap in the sound. */

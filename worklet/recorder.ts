@@ -1,5 +1,5 @@
 /**
- * Records the chain's output: chunks of 8192 frames with their frame numbers, from a pool, without a gap.
+ * Records what is chosen to be heard: chunks of 8192 frames with their frame numbers, from a pool, without a gap.
  * The pool lasts 2.7 s at 48 kHz; should the page be silent for longer, the frames that found no chunk are counted and told.
  */
 import type { Post } from './meter.ts';

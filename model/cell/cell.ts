@@ -189,7 +189,7 @@ export function loadValues(cell: Cell, values: Float64Array): boolean {
 
 /**
  * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients at both ends are exact, between them they follow a
- * straight line. False, and nothing changes, when the network would be singular.
+ * straight line, unless values are too far apart for that. False, and nothing changes, when the network would be singular.
  */
 export function aimAt(cell: Cell, values: Float64Array, samples: number): boolean {
   const { reduction, stepSec, coefficients, target, increment } = cell;
@@ -201,12 +201,32 @@ export function aimAt(cell: Cell, values: Float64Array, samples: number): boolea
     discretise(reduction, stepSec);
     return false;
   }
+  const near = areNear(cell, values);
   for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
   packStep(cell);
+  if (!near) arrive(cell);
   for (let i = 0; i < target.length; i++) {
     // A threshold that was or becomes infinite has no way between: it changes on arrival.
     const way = target[i] - coefficients[i];
     increment[i] = Number.isFinite(way) ? way / samples : 0;
+  }
+  return true;
+}
+
+/** The most by which a part's value may change along one straight line. */
+const MOST_RATIO = 1.25;
+
+/**
+ * Whether no part's value changes by more than a quarter. A straight line between the coefficients of circuits further apart leads through what is no
+ * circuit, and may grow without limit: a move over decades steps there, in its first slices, and is heard as the click that it would be on a board.
+ */
+function areNear(cell: Cell, values: Float64Array): boolean {
+  const { elements } = cell.numbers.plan;
+  for (let i = 0; i < elements.length; i++) {
+    const { kind } = elements[i];
+    if (kind !== 'conductance' && kind !== 'capacitor' && kind !== 'inductor') continue;
+    const smaller = Math.min(values[i], cell.values[i]);
+    if (Math.max(values[i], cell.values[i]) > MOST_RATIO * smaller) return false;
   }
   return true;
 }

@@ -136,12 +136,16 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
   };
 }
 
-/** `g` gate to source, `m` gate to drain, `d` drain to source, `x` anything else. */
+/**
+ * `g` gate to source, `m` gate to drain, `x` anything else. A capacitor from drain to source has a row of its own: behind a small load the difference of
+ * two overdrives is not exact enough for its current.
+ */
 function letterOf(element: Element, { drain, gate, source }: Jfet): string {
   if (element.kind !== 'capacitor') return 'x';
   const { a, b } = element;
-  if (a === gate) return b === source ? 'g' : b === drain ? 'm' : 'x';
-  return a === drain && b === source ? 'd' : 'x';
+  if (a !== gate) return 'x';
+  if (b === source) return 'g';
+  return b === drain ? 'm' : 'x';
 }
 
 function planRest(

@@ -54,6 +54,7 @@ export function doubleRate(half: Half, input: Float64Array, output: Float64Array
       output[2 * i] = allPassChain(weights, 0, straightCount, state, 0, x);
       output[2 * i + 1] = allPassChain(weights, straightCount, weights.length, state, 1, x);
     }
+    forgetNothing(state);
     return;
   }
   const { weights, history } = half;
@@ -77,6 +78,13 @@ export function doubleRate(half: Half, input: Float64Array, output: Float64Array
   for (let k = 0; k < kept; k++) history[k] = history[count + k];
 }
 
+/** In silence a recursive filter decays into numbers that processors are slow with, and stays there. */
+const NOTHING = 1e-300;
+
+function forgetNothing(state: Float64Array): void {
+  for (let k = 0; k < state.length; k++) if (state[k] < NOTHING && state[k] > -NOTHING) state[k] = 0;
+}
+
 /** Halves the rate: 2·`count` samples of `input` become `count` of `output`. */
 export function halveRate(half: Half, input: Float64Array, output: Float64Array, count: number): void {
   if (half.filters === 'lowLatency') {
@@ -86,6 +94,7 @@ export function halveRate(half: Half, input: Float64Array, output: Float64Array,
       const straight = allPassChain(weights, 0, straightCount, state, 0, input[2 * i + 1]);
       output[i] = 0.5 * (straight + delayed);
     }
+    forgetNothing(state);
     return;
   }
   const { weights, history, state } = half;

@@ -31,6 +31,9 @@ export interface WavOptions {
   readonly design?: string;
 }
 
+/** The file may be in order, but its audio is coded as this reader does not know it. */
+export class UnknownCodingError extends RangeError {}
+
 interface Layout {
   readonly sampleRateHz: number;
   readonly channelCount: number;
@@ -94,7 +97,7 @@ function readLayout(view: DataView, at: number, size: number): Layout {
   const bits = view.getUint16(at + 14, true);
   const plain = kind === PCM && (bits === 16 || bits === 24 || bits === 32);
   if (!plain && !(kind === FLOAT && bits === 32)) {
-    throw new RangeError(`the audio is coded as ${kind} with ${bits} bits; expected PCM of 16, 24 or 32 bits, or 32-bit float`);
+    throw new UnknownCodingError(`the audio is coded as ${kind} with ${bits} bits; expected PCM of 16, 24 or 32 bits, or 32-bit float`);
   }
   if (channelCount !== 1 && channelCount !== 2) throw new RangeError(`the file has ${channelCount} channels; expected 1 or 2`);
   if (sampleRateHz === 0) throw new RangeError('the sample rate is 0 Hz; expected a positive rate');

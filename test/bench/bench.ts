@@ -53,7 +53,7 @@ function kernelRows(state: 'ohmic' | 'conducting', bars: { native: number; byHan
   const output = new Float64Array(SAMPLES);
   const silent = new Float64Array(0);
   const { kernel, coefficients } = cell;
-  const native = buildNative({ trapezoidal: 1, stiff: 'dg', output: 'd' }, { coefficients, state: cell.state, audio, control });
+  const native = buildNative({ trapezoidal: 1, stiff: 'xg', output: 'd' }, { coefficients, state: cell.state, audio, control });
   const handState = cell.state.slice();
   const ns = { native: Number.POSITIVE_INFINITY, any: Number.POSITIVE_INFINITY, byHand: Number.POSITIVE_INFINITY };
   for (let turn = 0; turn < 8; turn++) {

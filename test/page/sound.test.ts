@@ -11,10 +11,10 @@ const asset = (path: string) => readFileSync(new URL(`../../assets/${path}`, imp
 
 const RUN_SEC = 60;
 /**
- * Gaps beyond the pass-through's that the machine's other work may cause, which hits the busier of two threads first: with a load average of 5 on two
- * cores 3 were seen, without other work none. A chain that is too slow has several each second.
+ * The machine's other programs can only add gaps, and hit the busier of two threads first, so the best of a few runs is nearest to what the sound
+ * needs by itself. A chain that is too slow has several gaps each second of every run.
  */
-const MOST_MORE_GAPS = 6;
+const MOST_RUNS = 3;
 
 let site: Site;
 let browser: Browser;
@@ -169,19 +169,73 @@ describe('sound on the built page, after a real click', () => {
     expect(Buffer.compare(bytes, expected)).toBe(0);
   });
 
-  test(`in ${RUN_SEC} s it drops out hardly more often than a processor that only passes its input on`, async () => {
+  test('a take of the bypass is the source, sample by sample, and its row says so', async () => {
     await startSound();
-    await page.evaluate(startPassThrough);
-    // The browser brings its counts up to date once a second.
-    await page.waitForTimeout(3000);
-    const before = await page.evaluate(() => window.soundProbe.underruns());
-    await page.waitForTimeout(RUN_SEC * 1000);
-    const after = await page.evaluate(() => window.soundProbe.underruns());
-    const [cell, pass] = after.map((count, i) => (count ?? Number.NaN) - (before[i] ?? Number.NaN));
-    console.log(`gaps in ${RUN_SEC} s: cell ${cell}, pass-through ${pass}`);
-    expect(cell).toBeLessThanOrEqual(pass + MOST_MORE_GAPS);
+    await button('bypass').click();
+    await page.waitForTimeout(300);
+    await button('Take what is heard').click();
+    await page.waitForTimeout(700);
+    await button('End the take').click();
+    await page.getByRole('cell', { name: 'bypass', exact: true }).waitFor();
+    await page.getByRole('combobox', { name: 'Format of saved takes' }).selectOption('float32');
+    const [taken] = readWav(await saved(() => button('Save “Take 1”').click())).channels;
+    const [source] = readWav(asset('phrases/guitar.wav')).channels;
+    const start = placeIn(source, taken.subarray(0, 4096));
+    expect(start).toBeGreaterThanOrEqual(0);
+    expect(taken.every((x, n) => x === source[(start + n) % source.length])).toBe(true);
+  });
+
+  describe.each([
+    ['one variant', 1],
+    ['four stereo variants', 2],
+  ] as const)('%s', (what, channels) => {
+    test(`in ${RUN_SEC} s there are no more gaps than with a processor that only passes its input on`, { timeout: 300_000 }, async () => {
+      await (channels === 1 ? openOneVariant() : openFourVariants());
+      await startSound();
+      await page.evaluate(startPassThrough, channels);
+      const runs: [number, number][] = [];
+      do runs.push(await countGaps());
+      while (runs.length < MOST_RUNS && !runs.some(([cell, pass]) => cell <= pass));
+      console.log(`${what}, gaps in ${RUN_SEC} s, sound and pass-through: ${runs.map((run) => run.join(' and ')).join(', ')}`);
+      expect(runs.some(([cell, pass]) => cell <= pass)).toBe(true);
+    });
   });
 });
+
+async function countGaps(): Promise<[number, number]> {
+  // The browser brings its counts up to date once a second.
+  await page.waitForTimeout(3000);
+  const before = await page.evaluate(() => window.soundProbe.underruns());
+  await page.waitForTimeout(RUN_SEC * 1000);
+  const after = await page.evaluate(() => window.soundProbe.underruns());
+  const counts = after.map((count, i) => (count ?? Number.NaN) - (before[i] ?? Number.NaN));
+  // Contexts of sources that were played before are closed and stand still.
+  return [counts[counts.length - 2], counts[counts.length - 1]];
+}
+
+async function openOneVariant(): Promise<void> {
+  const design = JSON.parse(asset('designs/harbour-tremolo.json').toString());
+  const text = JSON.stringify({ ...design, variants: design.variants.slice(0, 1) });
+  await page.evaluate((json) => {
+    const dropped = new DataTransfer();
+    dropped.items.add(new File([json], 'one.json'));
+    window.dispatchEvent(new DragEvent('drop', { dataTransfer: dropped }));
+  }, text);
+  await button('Copy variant A to B').waitFor();
+}
+
+async function openFourVariants(): Promise<void> {
+  await button('Copy variant A to D').click();
+  await button('Variant D').waitFor();
+  const lines = [readWav(asset('phrases/guitar.wav')).channels[0], readWav(asset('phrases/guitar.wav')).channels[0].toReversed()];
+  await chooseFile('stereo.wav', Buffer.from(writeWav(lines, 48000, 'pcm24').bytes));
+  await page.getByText('stereo.wav').first().waitFor();
+}
+
+/** Where a piece stands in a looped line; −1 where it does not. */
+function placeIn(line: Float32Array, piece: Float32Array): number {
+  return line.findIndex((x, start) => x === piece[0] && piece.every((y, n) => y === line[(start + n) % line.length]));
+}
 
 async function chooseFile(name: string, buffer: Buffer): Promise<void> {
   const [chooser] = await Promise.all([page.waitForEvent('filechooser'), button('your own file').click()]);
@@ -202,13 +256,13 @@ function eightBitWav(rateHz: number): Buffer {
 }
 
 /** Runs in the page: a second context with the same worklet's pass-through processor, fed and heard, but silent. */
-async function startPassThrough(): Promise<void> {
+async function startPassThrough(channels: number): Promise<void> {
   const worklet = performance.getEntriesByType('resource').find(({ name }) => name.includes('fettle.worklet'));
   if (worklet === undefined) throw new Error('the page has fetched no worklet');
   const context = new AudioContext({ sampleRate: 48000, latencyHint: 'playback' });
   await context.audioWorklet.addModule(worklet.name);
   const source = new OscillatorNode(context);
-  const pass = new AudioWorkletNode(context, 'fettle-pass');
+  const pass = new AudioWorkletNode(context, 'fettle-pass', { outputChannelCount: [channels] });
   source
     .connect(pass)
     .connect(new GainNode(context, { gain: 0 }))

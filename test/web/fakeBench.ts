@@ -4,7 +4,7 @@ import { defaultDesign } from '../../model/design/defaults.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
-import type { Bench, FeedbackPoint, LiveLevels, Note, SoundState, Take } from '../../web/state/bench.ts';
+import type { Bench, FeedbackPoint, Hearing, LiveLevels, Note, SoundState, Take } from '../../web/state/bench.ts';
 import { controlPicture } from '../../web/state/controlPicture.ts';
 import { createDocument } from '../../web/state/document.ts';
 
@@ -31,7 +31,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
   }
   const sound = signal<SoundState>(options.sound ?? 'playing');
   const muted = signal(options.muted ?? false);
-  const hearing = signal<'cell' | 'bypass'>('cell');
+  const hearing = signal<Hearing>('cell');
   const listenDb = signal(-18);
   const ceilingDbfs = signal(-6);
   const toneV = signal(0.2);
@@ -60,7 +60,14 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     muted,
     setMuted: (on) => assign(muted, on),
     hearing,
-    hear: (which) => assign(hearing, which),
+    hear: (which) => {
+      assign(hearing, which);
+      return null;
+    },
+    previous: signal(null),
+    matched: signal(false),
+    setMatched: none,
+    matchDb: signal({ variants: [null, null, null], previous: null }),
     phrases: signal([
       { name: 'chords', title: 'Plucked chords' },
       { name: 'bass', title: 'Bass line' },
@@ -159,6 +166,9 @@ function inventedLevels(muted: boolean): LiveLevels {
     outputRmsDbfs: -4,
     recentPeakDbfs: 0,
     heardPeakDbfs: muted ? Number.NEGATIVE_INFINITY : -17,
+    heardRmsDbfs: muted ? Number.NEGATIVE_INFINITY : -22,
+    variants: [7.4, 3, -2].map((peakDbfs) => ({ peakDbfs, faults: 0 })),
+    loadFraction: 0.3,
     atCeiling: false,
     faults: 0,
     underruns: 0,

@@ -10,7 +10,7 @@ const entry = fileURLToPath(new URL('./allocationRun.ts', import.meta.url));
 
 // In a process of its own and bundled, as the page's worklet is: the test runner rewrites imports into property reads, behind which every
 // number that a function returns is an object.
-test('200 000 blocks, with reports and a take running, cause no garbage collection; one object for each block does', async () => {
+test('200 000 blocks of four variants, another heard at each, with reports and a take running, cause no garbage collection; one object for each block does', async () => {
   const folder = mkdtempSync(join(tmpdir(), 'fettle-allocation-'));
   try {
     await build({

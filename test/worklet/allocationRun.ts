@@ -1,5 +1,6 @@
 /**
- * Runs by itself, bundled as the page's worklet is: counts garbage collections over 200 000 blocks of the cell's processor, then over as
+ * Runs by itself, bundled as the page's worklet is: counts garbage collections over 200 000 blocks of the cell's processor, four variants in it and
+ * another heard at every block, then over as
  * many turns of a loop that makes one object each. Prints both as JSON. Needs --expose-gc.
  */
 import { PerformanceObserver } from 'node:perf_hooks';
@@ -67,13 +68,23 @@ async function countCollections(work: () => void): Promise<number> {
 const port = new ReturningPort();
 const scope = createScope(RATE, port);
 const { CellProcessor } = await import('../../worklet/cell.ts');
-const numbers = compileChain(movingDesign(), 0, RATE, 2, 'lowLatency');
-const cell = new CellProcessor({ processorOptions: { numbers, channels: 2, heard: 'cell', gain: 0.7, ceilingPeak: 0.05, muted: false } });
+const chains = [5000, 6800, 10_000, 22_000].map((ohm) =>
+  compileChain(setAt(movingDesign(), 'variants[0].cell.seriesOhm', ohm), 0, RATE, 2, 'lowLatency'),
+);
+const match = { slots: [1, 2, 3, 4, 1], bypass: 0.5 };
+const level = { gain: 0.7, ceilingPeak: 0.05, muted: false };
+const cell = new CellProcessor({ processorOptions: { chains, focus: 0, channels: 2, heard: 'cell', match, ...level } });
 port.answer({ data: { type: 'record', on: true } });
 const inputs = [[createNoise(1, BLOCK, 0.8), createNoise(2, BLOCK, 0.8)], []];
 const outputs = [[new Float32Array(BLOCK), new Float32Array(BLOCK)]];
+const turns: { data: ToCell }[] = [
+  ...[0, 1, 2, 3].map((slot) => ({ data: { type: 'focus', slot } as const })),
+  { data: { type: 'hear', heard: 'bypass' } },
+  { data: { type: 'hear', heard: 'cell' } },
+];
 const run = (blocks: number) => {
   for (let block = 0; block < blocks; block++) {
+    port.onmessage?.(turns[block % turns.length]);
     cell.process(inputs, outputs);
     scope.currentFrame += BLOCK;
   }

@@ -1,6 +1,9 @@
 import { describe, expect, test } from 'vitest';
 import type { ChainReadings } from '../../model/chain/chain.ts';
-import { createMeter, processMeter, returnReport } from '../../worklet/meter.ts';
+import { createBank } from '../../worklet/bank.ts';
+import { createLoad } from '../../worklet/load.ts';
+import { createMeter, type Measured, processMeter, returnReport } from '../../worklet/meter.ts';
+import { createMix } from '../../worklet/mix.ts';
 import { createMonitor } from '../../worklet/monitor.ts';
 import type { Report } from '../../worklet/protocol.ts';
 import { createNoise } from '../support/noise.ts';
@@ -16,6 +19,10 @@ const READINGS: ChainReadings = {
 };
 const BLOCK = 128;
 
+function measuredAt(rate: number): Measured {
+  return { bank: createBank([], 1, rate), mix: createMix(7, 0, rate), monitor: createMonitor(1, 1, false, rate), load: createLoad() };
+}
+
 function runMeter(rate: number, inputs: Float32Array[], outputs: Float32Array[]): Report[] {
   const reports: Report[] = [];
   const meter = createMeter(
@@ -28,10 +35,10 @@ function runMeter(rate: number, inputs: Float32Array[], outputs: Float32Array[])
     },
     rate,
   );
-  const monitor = createMonitor('cell', 1, 1, false, rate);
+  const measured = measuredAt(rate);
   for (let at = 0; at < inputs[0].length; at += BLOCK) {
     const block = (line: Float32Array) => line.subarray(at, at + BLOCK);
-    processMeter(meter, at, inputs.map(block), outputs.map(block), READINGS, monitor);
+    processMeter(meter, at, inputs.map(block), outputs.map(block), READINGS, measured);
   }
   return reports;
 }
@@ -75,14 +82,14 @@ describe('the meter', () => {
   test('while the page keeps the reports nothing is sent, and the next one still holds the highest peak', () => {
     const kept: Report[] = [];
     const meter = createMeter({ postMessage: (message, transfer) => kept.push(structuredClone(message, { transfer }) as Report) }, 48000);
-    const monitor = createMonitor('cell', 1, 1, false, 48000);
+    const measured = measuredAt(48000);
     const quiet = new Float32Array(BLOCK);
     const loud = quiet.slice();
     loud[5] = 0.9;
     for (let block = 0; block < 400; block++) {
       if (block === 350) returnReport(meter, 2, kept[2].input, kept[2].output);
       const line = block === 300 ? loud : quiet;
-      processMeter(meter, block * BLOCK, [quiet], [line], READINGS, monitor);
+      processMeter(meter, block * BLOCK, [quiet], [line], READINGS, measured);
     }
     expect(kept.map((report) => report.slot)).toEqual([0, 1, 2, 3, 4, 5, 2]);
     expect(kept[6].outputPeak).toBe(Math.fround(0.9));

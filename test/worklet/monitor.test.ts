@@ -1,28 +1,23 @@
 import { describe, expect, test } from 'vitest';
 import {
-  BROKEN_SAMPLES,
   CEILING_FRAMES,
   createMonitor,
   HEARD_PEAK,
+  HEARD_SQUARES,
   type Monitor,
   processMonitor,
   setCeiling,
   setGain,
-  setHeard,
   setMuted,
 } from '../../worklet/monitor.ts';
 import { createNoise } from '../support/noise.ts';
 
 const RATE = 48000;
-const SILENCE = new Float32Array(128);
 
 /** Runs whole blocks of 128 through the monitor, one channel; returns what left. */
-function run(monitor: Monitor, cell: Float32Array, bypass?: Float32Array, aside?: Float32Array): Float32Array {
-  const out = cell.slice();
-  for (let at = 0; at < out.length; at += 128) {
-    const block = (line?: Float32Array) => line?.subarray(at, at + 128) ?? SILENCE;
-    processMonitor(monitor, [out.subarray(at, at + 128)], [block(bypass)], [block(aside)]);
-  }
+function run(monitor: Monitor, heard: Float32Array): Float32Array {
+  const out = heard.slice();
+  for (let at = 0; at < out.length; at += 128) processMonitor(monitor, [out.subarray(at, at + 128)]);
   return out;
 }
 
@@ -30,17 +25,16 @@ const peakOf = (samples: Float32Array) => samples.reduce((peak, x) => Math.max(p
 const largestStep = (samples: Float32Array) => samples.reduce((most, x, n) => Math.max(most, n > 0 ? Math.abs(x - samples[n - 1]) : 0), 0);
 
 describe('the monitor', () => {
-  test('at rest passes what it hears bit for bit', () => {
+  test('at rest passes what it hears bit for bit, and counts its squares', () => {
     const noise = createNoise(1, 12800, 0.9);
-    const heard = { cell: noise, bypass: createNoise(2, 12800, 0.9), aside: createNoise(3, 12800, 0.9) };
-    for (const which of ['cell', 'bypass', 'aside'] as const) {
-      const monitor = createMonitor(which, 1, 1, false, RATE);
-      expect(run(monitor, heard.cell, heard.bypass, heard.aside)).toEqual(heard[which]);
-    }
+    const monitor = createMonitor(1, 1, false, RATE);
+    expect(run(monitor, noise)).toEqual(noise);
+    const squares = noise.reduce((sum, x) => sum + x * x, 0);
+    expect(monitor.totals[HEARD_SQUARES] / squares).toBeCloseTo(1, 12);
   });
 
   test('is silent to the last bit while muted, and unmutes over a tenth of a second without a step', () => {
-    const monitor = createMonitor('cell', 1, 1, true, RATE);
+    const monitor = createMonitor(1, 1, true, RATE);
     const ones = new Float32Array(9600).fill(1);
     expect(peakOf(run(monitor, ones))).toBe(0);
     setMuted(monitor, false);
@@ -56,15 +50,6 @@ describe('the monitor', () => {
     expect(falling.at(-1)).toBe(0);
   });
 
-  test('crosses from cell to bypass in 10 ms with the two weights adding up to one', () => {
-    const monitor = createMonitor('cell', 1, 1, false, RATE);
-    const constant = new Float32Array(1280).fill(0.5);
-    setHeard(monitor, 'bypass');
-    for (const x of run(monitor, constant, constant)) expect(x).toBeCloseTo(0.5, 6);
-    const other = new Float32Array(1280).fill(0.25);
-    expect(run(monitor, constant, other).every((x) => x === 0.25)).toBe(true);
-  });
-
   test('no sample ever leaves above the ceiling, whatever comes and however the values move', () => {
     for (const [seed, ceiling, gain] of [
       [11, 1, 1],
@@ -73,7 +58,7 @@ describe('the monitor', () => {
       [14, 0.01, 0.251],
       [15, 0.7, 0.3],
     ]) {
-      const monitor = createMonitor('cell', gain, ceiling, false, RATE);
+      const monitor = createMonitor(gain, ceiling, false, RATE);
       const loud = createNoise(seed, 128 * 300, 30);
       loud.fill(1e30, 1000, 1100);
       loud[2000] = -3.4e38;
@@ -87,7 +72,7 @@ describe('the monitor', () => {
   });
 
   test('after a peak the gain comes back with a time constant of 0.2 s, and in the end is exactly one', () => {
-    const monitor = createMonitor('cell', 1, 0.5, false, RATE);
+    const monitor = createMonitor(1, 0.5, false, RATE);
     const line = new Float32Array(128 * 3000).fill(0.1);
     line[0] = 1;
     const out = run(monitor, line);
@@ -99,34 +84,17 @@ describe('the monitor', () => {
   });
 
   test('the ceiling turns all channels down alike, so the image does not move', () => {
-    const monitor = createMonitor('cell', 1, 0.5, false, RATE);
+    const monitor = createMonitor(1, 0.5, false, RATE);
     const left = new Float32Array(128).fill(1);
     const right = new Float32Array(128).fill(0.25);
-    processMonitor(monitor, [left, right], [SILENCE, SILENCE], [SILENCE, SILENCE]);
+    processMonitor(monitor, [left, right]);
     for (let n = 0; n < 128; n++) expect(right[n] / left[n]).toBeCloseTo(0.25, 6);
   });
 
-  test('what is no finite number leaves as silence and is counted', () => {
-    const monitor = createMonitor('cell', 1, 1, false, RATE);
-    const line = createNoise(5, 256, 0.5);
-    const expected = line.slice();
-    for (const [n, x] of [
-      [7, Number.NaN],
-      [100, Number.POSITIVE_INFINITY],
-      [200, Number.NEGATIVE_INFINITY],
-    ]) {
-      line[n] = x;
-      expected[n] = 0;
-    }
-    expect(run(monitor, line)).toEqual(expected);
-    expect(monitor.totals[BROKEN_SAMPLES]).toBe(3);
-  });
-
   test('refuses values without meaning, naming them, and keeps the last good ones', () => {
-    const monitor = createMonitor('cell', 1, 1, false, RATE);
+    const monitor = createMonitor(1, 1, false, RATE);
     for (const bad of [Number.NaN, -0.1, 1.01]) expect(() => setGain(monitor, bad)).toThrow(`The listening gain is ${bad}`);
     for (const bad of [Number.NaN, 0, 2]) expect(() => setCeiling(monitor, bad)).toThrow(`The ceiling is ${bad}`);
-    expect(() => setHeard(monitor, 'both' as 'cell')).toThrow('heard is “both”');
     const noise = createNoise(6, 1280, 0.9);
     expect(run(monitor, noise)).toEqual(noise);
   });

@@ -36,11 +36,25 @@ export function createPlayers(raw: AudioContext): Players {
     return new Player({ context, url: buffer, loop, fadeIn: FADE_SEC, fadeOut: FADE_SEC });
   };
 
+  /** Starts it now, or once the context runs: before that Tone complains of it on the console. */
+  const begin = (player: Player) => {
+    if (raw.state === 'running') {
+      player.start();
+      return;
+    }
+    const whenRunning = () => {
+      if (raw.state !== 'running') return;
+      raw.removeEventListener('statechange', whenRunning);
+      if (!player.disposed) player.start();
+    };
+    raw.addEventListener('statechange', whenRunning);
+  };
+
   return {
     loop(clip, node) {
       retire(looping);
       looping = open(clip, true).connect(node as never, 0, 0);
-      looping.start();
+      begin(looping);
     },
     once(clip, node, ended) {
       retire(single);
@@ -54,7 +68,7 @@ export function createPlayers(raw: AudioContext): Players {
         player.dispose();
         ended();
       };
-      player.start();
+      begin(player);
     },
     async close() {
       looping?.dispose();
@@ -68,6 +82,10 @@ export function createPlayers(raw: AudioContext): Players {
 /** Fades a player out and disposes of it once it is silent. */
 function retire(player: Player | null): void {
   if (player === null) return;
+  if (player.state !== 'started') {
+    player.dispose();
+    return;
+  }
   player.onstop = () => player.dispose();
   player.stop();
 }

@@ -12,7 +12,7 @@ export function Ruler() {
   const { bench, slowLive } = useBenchView();
   const live = usePlaying() ? slowLive.value : null;
   const peak = live?.heardPeakDbfs ?? Number.NEGATIVE_INFINITY;
-  const level = Math.min(peak, (live?.outputRmsDbfs ?? Number.NEGATIVE_INFINITY) + bench.listenDb.value);
+  const level = live?.heardRmsDbfs ?? Number.NEGATIVE_INFINITY;
   const ceiling = toPixel(SCALE, bench.ceilingDbfs.value);
   const spoken = Number.isFinite(peak) ? `peak ${decimals(peak, 1)} dBFS, level ${decimals(level, 1)} dBFS` : 'silent';
   return (

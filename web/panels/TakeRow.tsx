@@ -34,7 +34,7 @@ export function TakeRow({ take, format }: { readonly take: Take; readonly format
         {take.how === 'rendered' && <span class="aside how"> rendered</span>}
       </td>
       <td class="variant">{take.variant}</td>
-      <td class="number k">{take.k.toFixed(3)}</td>
+      <td class="number k">{take.k === null ? '–' : take.k.toFixed(3)}</td>
       <td class="number length">{clockText(take.seconds, true)}</td>
       <td class="actions">
         <WordActions

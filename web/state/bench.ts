@@ -7,7 +7,7 @@
  */
 import type { ReadonlySignal } from '@preact/signals';
 import type { Moves } from '../../model/design/feedback.ts';
-import type { Design } from '../../model/design/types.ts';
+import type { Design, Variant } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 
 export interface Bench {
@@ -48,8 +48,17 @@ export interface Bench {
   /** Mutes with a ramp; the chain and every reading go on. */
   readonly muted: ReadonlySignal<boolean>;
   setMuted(on: boolean): void;
+  /** All variants run at once; the heard one, its setting before the last change, or the bypass is let through, without a click. */
   readonly hearing: ReadonlySignal<Hearing>;
-  hear(which: Hearing): void;
+  /** Refused for `previous` where the heard variant has none. */
+  hear(which: Hearing): string | null;
+  /** The heard variant before its last change; null where there was none. */
+  readonly previous: ReadonlySignal<Variant | null>;
+  /** Whether variants and the previous setting are heard at the loudness of the source, which is that of the bypass. */
+  readonly matched: ReadonlySignal<boolean>;
+  setMatched(on: boolean): void;
+  /** Gains to the loudness of the source, measured by BS.1770 on a render of it (of its first minute); measured only while `matched` is on. */
+  readonly matchDb: ReadonlySignal<MatchDb>;
   readonly phrases: ReadonlySignal<readonly { readonly name: string; readonly title: string; readonly listenFor?: string }[]>;
   readonly source: ReadonlySignal<SourceInfo>;
   choosePhrase(name: string): Promise<void>;
@@ -97,14 +106,17 @@ export interface Bench {
   readonly takes: ReadonlySignal<readonly Take[]>;
   readonly taking: ReadonlySignal<{ readonly seconds: number } | null>;
   readonly rendering: ReadonlySignal<{ readonly fraction: number } | null>;
-  /** Records what the chain puts out, before the listening level and the ceiling. */
+  /** Records what is heard (variant, previous setting, bypass or a take, matched or not) before the listening level and the ceiling. */
   startTake(): void;
   endTake(): void;
   /** Renders the whole source through the heard variant, off the audio thread, with the linear-phase filters. */
   renderClip(): Promise<void>;
   endRender(): void;
   saveTake(id: number, format: TakeFormat): void;
-  /** Marks a take as deleted; `restoreTake` takes that back. */
+  /**
+   * Marks a take as deleted; `restoreTake` takes that back as long as it is in the list. The last three stay, while there is room in memory; of
+   * others nothing is kept.
+   */
   deleteTake(id: number): void;
   restoreTake(id: number): void;
   renameTake(id: number, name: string): void;
@@ -118,7 +130,7 @@ export interface Bench {
 }
 
 export type Keep = 'gate' | 'control';
-export type Hearing = 'cell' | 'bypass';
+export type Hearing = 'cell' | 'bypass' | 'previous';
 export type SoundState = 'idle' | 'starting' | 'playing' | 'stopped' | 'failed';
 export type DesignPath = 'fullScaleV' | 'tempC' | 'oversampling' | 'title';
 export type TakeFormat = 'pcm16' | 'pcm24' | 'float32';
@@ -136,6 +148,12 @@ export interface SourceInfo {
   readonly kind: 'phrase' | 'file';
 }
 
+/** dB; null while not measured, 0 where a render is silent. More than 40 dB either way is shown but not applied, and said. */
+export interface MatchDb {
+  readonly variants: readonly (number | null)[];
+  readonly previous: number | null;
+}
+
 /** Of the time since the last report (about 1/30 s), unless it says otherwise. dBFS of silence is −Infinity. */
 export interface LiveLevels {
   readonly controlV: number;
@@ -145,17 +163,22 @@ export interface LiveLevels {
   readonly feedthroughPeakV: number;
   readonly inputPeakV: number;
   readonly drainPeakV: number;
-  /** Of the chain's output, before the listening level. */
+  /** Of the heard variant's output, before matching and the listening level, whatever is let through. */
   readonly outputPeakDbfs: number;
   readonly outputRmsDbfs: number;
   /** The highest output peak of the last 1.5 s. */
   readonly recentPeakDbfs: number;
   /** Of what leaves for the loudspeakers, after level, mute and ceiling. */
   readonly heardPeakDbfs: number;
+  readonly heardRmsDbfs: number;
   /** True while the ceiling turns the sound down. */
   readonly atCeiling: boolean;
   /** Since the start: times that the chain fell back to its last good values. */
   readonly faults: number;
+  /** Of every variant that runs: output peak, and its own faults. */
+  readonly variants: readonly { readonly peakDbfs: number; readonly faults: number }[];
+  /** What part of the time that it has the sound takes to compute, a mean over some seconds; above 1 there are gaps. */
+  readonly loadFraction: number;
   /** Since the start: gaps in the sound because the machine was late. */
   readonly underruns: number;
 }
@@ -235,12 +258,12 @@ export interface FeedbackPoint {
   readonly h3: number;
 }
 
-/** k is the heard variant's feedback fraction when the take began. */
+/** `variant` says what was heard, in order: «A», «bypass», «A then B». k is the heard variant's feedback fraction when the take began; null where it was not the cell. */
 export interface Take {
   readonly id: number;
   readonly name: string;
   readonly variant: string;
-  readonly k: number;
+  readonly k: number | null;
   readonly seconds: number;
   readonly sampleRateHz: number;
   readonly how: 'heard' | 'rendered';

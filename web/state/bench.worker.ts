@@ -3,10 +3,11 @@
  * for each render until it is done.
  */
 import { renderClip } from '../../model/chain/render.ts';
+import { loudnessOf } from '../../model/measure/loudness.ts';
 import { controlPicture } from './controlPicture.ts';
 import { sentenceOf } from './notes.ts';
 import { readFeedbackCurve, readMoment, readNoise, readSummary, readSwing } from './toneStudy.ts';
-import type { FromReading, FromRender, ToneQuestion, ToReading, ToRender } from './workers.ts';
+import type { FromLoudness, FromReading, FromRender, ToLoudness, ToneQuestion, ToReading, ToRender } from './workers.ts';
 
 let asked: { id: number; question: ToneQuestion } | null = null;
 type Work = 'curve' | 'swing' | 'noise' | 'variant';
@@ -17,7 +18,7 @@ const work = new Map<Work, Generator<void, void>>();
 let pumping = false;
 const pump = new MessageChannel();
 
-self.onmessage = ({ data }: MessageEvent<ToReading | ToRender>) => {
+self.onmessage = ({ data }: MessageEvent<ToReading | ToRender | ToLoudness>) => {
   switch (data.type) {
     case 'question':
       asked = data;
@@ -37,6 +38,9 @@ self.onmessage = ({ data }: MessageEvent<ToReading | ToRender>) => {
       return;
     case 'render':
       render(data);
+      return;
+    case 'loudness':
+      answerLoudness(data);
       return;
     default:
       data satisfies never;
@@ -116,6 +120,15 @@ function render({ design, variantIndex, channels, sampleRateHz }: ToRender): voi
   }
 }
 
-function tell(message: FromReading | FromRender, transfer: Transferable[] = []): void {
+function answerLoudness({ about, channels, sampleRateHz }: ToLoudness): void {
+  try {
+    const lines = about === null ? channels : renderClip(about.design, about.index, channels, sampleRateHz);
+    tell({ type: 'loudness', lufs: loudnessOf(lines, sampleRateHz) });
+  } catch (error) {
+    tell({ type: 'fault', sentence: sentenceOf(error) });
+  }
+}
+
+function tell(message: FromReading | FromRender | FromLoudness, transfer: Transferable[] = []): void {
   self.postMessage(message, { transfer });
 }

@@ -1,6 +1,6 @@
 /** The design being edited: every change is checked, then kept for undo. */
 import type { ReadonlySignal } from '@preact/signals';
-import { computed, signal } from '@preact/signals';
+import { batch, computed, signal } from '@preact/signals';
 import { type Moves, withFeedbackFraction } from '../../model/design/feedback.ts';
 import { setAt } from '../../model/design/path.ts';
 import { checkDesign } from '../../model/design/read.ts';
@@ -59,8 +59,10 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
     lastMs = now;
     if (!sameChange) past.value = [...past.value.slice(1 - MOST_UNDO), design.value];
     future.value = [];
-    design.value = next;
-    heard.value = heardNext;
+    batch(() => {
+      design.value = next;
+      heard.value = heardNext;
+    });
     return null;
   };
 
@@ -92,8 +94,10 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
     from.value = from.value.slice(0, -1);
     to.value = [...to.value, design.value];
     lastKey = '';
-    design.value = next;
-    heard.value = Math.min(heard.value, next.variants.length - 1);
+    batch(() => {
+      design.value = next;
+      heard.value = Math.min(heard.value, next.variants.length - 1);
+    });
   };
 
   return {

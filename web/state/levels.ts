@@ -6,11 +6,13 @@ import type { LiveLevels } from './bench.ts';
 
 export const MOST_SAMPLES = 32768;
 const RECENT_MS = 1500;
+/** Reports that the load is averaged over: 4 s. */
+const LOAD_REPORTS = 120;
 
 export interface Levels {
   readonly live: ReadonlySignal<LiveLevels | null>;
-  /** Takes a report in; its arrays are copied, so they may go back at once. */
-  note(report: Report, underruns: number): void;
+  /** Takes a report in; its arrays are copied, so they may go back at once. `slots` are the variants' places in it. */
+  note(report: Report, underruns: number, slots: readonly number[]): void;
   outputSamples(into: Float32Array): void;
   inputSamples(into: Float32Array): void;
   /** Forgets the samples: silence or another rate lies between. */
@@ -22,10 +24,12 @@ export function createLevels(now: () => number = () => performance.now()): Level
   const input = createRing();
   const output = createRing();
   let nextFrame = 0;
+  let load = 0;
+  let loads = 0;
   let recent: { atMs: number; peak: number }[] = [];
   return {
     live,
-    note(report, underruns) {
+    note(report, underruns, slots) {
       if (report.frame !== nextFrame) {
         input.clear();
         output.clear();
@@ -34,6 +38,8 @@ export function createLevels(now: () => number = () => performance.now()): Level
       input.write(report.input);
       output.write(report.output);
       const atMs = now();
+      loads = Math.min(loads + 1, LOAD_REPORTS);
+      load += (report.loadFraction - load) / loads;
       recent = [...recent.filter((each) => atMs - each.atMs < RECENT_MS), { atMs, peak: report.outputPeak }];
       live.value = {
         controlV: report.controlV,
@@ -45,6 +51,9 @@ export function createLevels(now: () => number = () => performance.now()): Level
         outputRmsDbfs: toDb(Math.sqrt(report.outputSquare)),
         recentPeakDbfs: toDb(Math.max(...recent.map((each) => each.peak))),
         heardPeakDbfs: toDb(report.heardPeak),
+        heardRmsDbfs: toDb(Math.sqrt(report.heardSquare)),
+        variants: slots.map((slot) => ({ peakDbfs: toDb(report.slotPeaks[slot]), faults: report.slotFaults[slot] })),
+        loadFraction: load,
         atCeiling: report.ceilingFrames > 0,
         faults: report.faults,
         underruns,
@@ -55,6 +64,8 @@ export function createLevels(now: () => number = () => performance.now()): Level
     clear() {
       input.clear();
       output.clear();
+      load = 0;
+      loads = 0;
     },
   };
 }

@@ -1,17 +1,22 @@
 /** Sound as the user knows it: start and stop, what is heard, how loud, from which source. */
 import { computed, signal } from '@preact/signals';
 import { compileChain } from '../../model/chain/compile.ts';
+import type { ToCell } from '../../worklet/protocol.ts';
 import { MUTE_SEC } from '../../worklet/protocol.ts';
 import type { Clip } from '../audio/clip.ts';
 import { clipSeconds } from '../audio/clip.ts';
-import type { Bench, Hearing, SoundState, SourceInfo } from './bench.ts';
+import type { Bench, SoundState, SourceInfo } from './bench.ts';
+import { createChains } from './chains.ts';
 import type { DocumentState } from './document.ts';
+import { createHearing } from './hearing.ts';
 import type { Levels } from './levels.ts';
 import { createLoudness } from './loudness.ts';
+import { createMatching } from './matching.ts';
 import { watchMoves } from './moves.ts';
 import type { Notes } from './notes.ts';
 import { sentenceOf } from './notes.ts';
 import type { Parts } from './parts.ts';
+import { watchPrevious } from './previous.ts';
 import { createReceiver } from './receiving.ts';
 import { createSoundLine } from './soundLine.ts';
 import type { Takes, TakeSource } from './takes.ts';
@@ -28,6 +33,10 @@ type Shared =
   | 'setMuted'
   | 'hearing'
   | 'hear'
+  | 'previous'
+  | 'matched'
+  | 'setMatched'
+  | 'matchDb'
   | 'source'
   | 'rateHz'
   | 'latencySec'
@@ -55,24 +64,37 @@ export interface ListeningNeeds {
 export function createListening({ parts, document, levels, notes, takes, loadFirstSource }: ListeningNeeds): Listening {
   const state = signal<SoundState>('idle');
   const muted = signal(false);
-  const hearing = signal<Hearing>('cell');
   const rateHz = signal<number | null>(null);
   const latencySec = signal<number | null>(null);
   const source = signal<SourceInfo>({ title: '', seconds: 0, kind: 'phrase' });
   let clip: Clip | null = null;
   let pausedBySystem = false;
 
-  const compile = (hz: number, channels: number) =>
-    compileChain(document.design.peek(), document.heardVariant.peek(), hz, channels, 'lowLatency');
+  const send = (message: ToCell) => line.send(message);
+  const before = watchPrevious(document);
+  const hearing = createHearing(document, before, send, () => update());
+  const chains = createChains({ document, notes, previous: hearing.wantedPrevious, send });
+  const matching = createMatching({
+    ...{ document, previous: before, notes, slots: chains.slots, send, clip: () => clip },
+    openWorker: parts.openLoudnessWorker,
+  });
+  const loudness = createLoudness(send);
 
   const line = createSoundLine(parts.openSound, {
     cellFor(hz, channels) {
       rateHz.value = hz;
-      return { numbers: compile(hz, channels), channels, heard: hearing.peek(), ...loudness.options(), muted: true };
+      const what = chains.options(hz, channels);
+      const { heard } = hearing;
+      return { ...what, channels, heard: heard(), match: matching.match(), ...loudness.options(), muted: true };
     },
     message: (message) => receive(message),
     renewed() {
-      move();
+      chains.renewed();
+      update();
+      // What was chosen while it was being made has reached no one.
+      send({ type: 'hear', heard: hearing.heard() });
+      send({ type: 'match', match: matching.match() });
+      loudness.tell();
       takes().cutShort();
       takes().noteEnded();
       levels.clear();
@@ -103,15 +125,13 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     takeEnded: () => endTakeHeard(),
   });
 
-  const loudness = createLoudness((message) => line.send(message));
-
   const fail = (error: unknown) => {
     state.value = 'failed';
     notes.fault(sentenceOf(error));
   };
 
   const endTakeHeard = () => {
-    line.send({ type: 'hear', heard: hearing.peek() });
+    hearing.setAside(null);
     takes().noteEnded();
   };
 
@@ -120,23 +140,21 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     notes,
     takes,
     line: () => line,
+    slots: chains.slots,
     noteLatency(samples) {
       latencySec.value = samples / (rateHz.peek() ?? RATE_BEFORE_START_HZ);
     },
   });
 
-  /** Sends the design's numbers as they are now. */
-  const move = () => {
+  /** Tells the processor what has changed in the design, and what is heard of it. */
+  const update = () => {
     const sound = line.sound();
     const channels = line.channels();
     if (sound === null || channels === null) return;
-    try {
-      sound.send({ type: 'move', numbers: compile(sound.sampleRateHz, channels) });
-    } catch (error) {
-      notes.fault(error);
-    }
+    chains.update(sound.sampleRateHz, channels);
+    matching.update();
   };
-  watchMoves(document, move);
+  watchMoves(document, update);
 
   const adapt = async (next: Clip) => {
     await line.adapt(next);
@@ -180,11 +198,19 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
   return {
     sound: state,
     muted,
-    hearing,
+    hearing: hearing.hearing,
+    hear: hearing.hear,
+    previous: hearing.previous,
+    matched: matching.matched,
+    setMatched: matching.setMatched,
+    matchDb: matching.matchDb,
     rateHz,
     latencySec,
     source,
-    ...loudness,
+    listenDb: loudness.listenDb,
+    setListenDb: loudness.setListenDb,
+    ceilingDbfs: loudness.ceilingDbfs,
+    setCeilingDbfs: loudness.setCeilingDbfs,
     spectrumRateHz: computed(() => rateHz.value ?? RATE_BEFORE_START_HZ),
     start,
     stop() {
@@ -200,17 +226,14 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       muted.value = on;
       if (state.peek() === 'playing') line.send({ type: 'mute', on });
     },
-    hear(which) {
-      hearing.value = which;
-      if (takes().playingTake.peek() === null) line.send({ type: 'hear', heard: which });
-    },
     async setSource(next, kind) {
       try {
-        compile(next.sampleRateHz, next.channels.length);
+        compileChain(document.design.peek(), document.heardVariant.peek(), next.sampleRateHz, next.channels.length, 'lowLatency');
       } catch (error) {
         throw new RangeError(`“${next.title}” cannot be played: ${sentenceOf(error)}.`);
       }
       clip = next;
+      matching.noteSource();
       source.value = { title: next.title, seconds: clipSeconds(next), kind };
       if (line.sound() === null) return;
       if (state.peek() === 'playing') await adapt(next).catch(fail);
@@ -218,15 +241,17 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     },
     forTakes: {
       record: (on) => (state.peek() === 'playing' || !on ? line.send({ type: 'record', on }) : false),
-      play(take) {
+      play(take, name) {
         if (line.sound() === null || (take !== null && state.peek() !== 'playing')) return false;
         line.sound()?.playTake(take);
         if (take === null) endTakeHeard();
-        else line.send({ type: 'hear', heard: 'aside' });
+        else hearing.setAside(name);
         return true;
       },
       rateHz: () => rateHz.peek() ?? RATE_BEFORE_START_HZ,
       clip: () => clip,
+      heardWords: hearing.words,
+      hearsCell: () => hearing.heard() === 'cell',
     },
   };
 }

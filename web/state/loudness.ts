@@ -10,6 +10,8 @@ const FIRST_CEILING_DBFS = -6;
 export interface Loudness extends Pick<Bench, 'listenDb' | 'setListenDb' | 'ceilingDbfs' | 'setCeilingDbfs'> {
   /** The same for a processor that is being made. */
   options(): Pick<CellOptions, 'gain' | 'ceilingPeak'>;
+  /** Sends both as they are. */
+  tell(): void;
 }
 
 export function createLoudness(send: (message: ToCell) => void): Loudness {
@@ -19,6 +21,10 @@ export function createLoudness(send: (message: ToCell) => void): Loudness {
     listenDb,
     ceilingDbfs,
     options: () => ({ gain: toRatio(listenDb.peek()), ceilingPeak: toRatio(ceilingDbfs.peek()) }),
+    tell() {
+      send({ type: 'gain', gain: toRatio(listenDb.peek()) });
+      send({ type: 'ceiling', peak: toRatio(ceilingDbfs.peek()) });
+    },
     setListenDb(db) {
       const refused = setWithin(listenDb, db, -60, 0, 'The listening level', 'dB');
       if (refused === null) send({ type: 'gain', gain: toRatio(db) });

@@ -5,7 +5,7 @@ import { missingFeature } from '../audio/features.ts';
 import type { OpenSound } from '../audio/sound.ts';
 import { openSound, prepareSound } from '../audio/sound.ts';
 import BenchWorker from './bench.worker.ts?worker';
-import type { FromReading, FromRender, ToReading, ToRender, WorkerPort } from './workers.ts';
+import type { FromLoudness, FromReading, FromRender, ToLoudness, ToReading, ToRender, WorkerPort } from './workers.ts';
 
 export interface Parts {
   openSound: OpenSound;
@@ -17,6 +17,7 @@ export interface Parts {
   fetchBytes(path: string): Promise<ArrayBuffer>;
   openReadingWorker(): WorkerPort<ToReading, FromReading>;
   openRenderWorker(): WorkerPort<ToRender, FromRender>;
+  openLoudnessWorker(): WorkerPort<ToLoudness, FromLoudness>;
   download(name: string, bytes: Uint8Array<ArrayBuffer>, mediaType: string): void;
 }
 
@@ -29,6 +30,7 @@ export function browserParts(): Parts {
     fetchBytes,
     openReadingWorker: () => portOf(new BenchWorker()),
     openRenderWorker: () => portOf(new BenchWorker()),
+    openLoudnessWorker: () => portOf(new BenchWorker()),
     download,
   };
 }

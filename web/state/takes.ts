@@ -1,26 +1,33 @@
-/** Takes: recorded from the chain's output or rendered whole, kept in memory until the page closes. */
+/** Takes: what was heard, recorded, or the source rendered whole. */
 import type { ReadonlySignal } from '@preact/signals';
 import { signal } from '@preact/signals';
 import { writeWav } from '../../model/chain/wav.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Chunk } from '../../worklet/protocol.ts';
 import type { Clip } from '../audio/clip.ts';
-import { clipSeconds } from '../audio/clip.ts';
 import type { Bench, Take } from './bench.ts';
 import type { DocumentState } from './document.ts';
 import { fileName } from './fileName.ts';
 import type { Notes } from './notes.ts';
 import type { Parts } from './parts.ts';
+import { bytesOf, createTakeStore, MOST_BYTES } from './takeStore.ts';
 import type { FromRender, ToRender, WorkerPort } from './workers.ts';
 
-const LONGEST_SEC = 1200;
+/** Of what was heard, named one after the other; of more, the first ones. */
+const MOST_NAMED = 4;
+/** Room that there must be to begin with: about three seconds. */
+const LEAST_BYTES = 1e6;
+const ROOM = `${MOST_BYTES / 1e6} MB that are kept for takes`;
 
 /** What takes need of the sound that plays. */
 export interface TakeSource {
   /** Asks the processor to record or to end; false where no sound is open. */
   record(on: boolean): boolean;
-  /** Plays a take once, or null to end it; false where no sound is open. */
-  play(clip: Clip | null): boolean;
+  /** Plays a take once, under the name that is shown, or null to end it; false where no sound is open. */
+  play(clip: Clip | null, name: string): boolean;
+  /** What is heard now, in words, and whether it is the heard variant as it stands. */
+  readonly heardWords: ReadonlySignal<string>;
+  hearsCell(): boolean;
   rateHz(): number;
   /** The whole source, or null while none has been loaded. */
   clip(): Clip | null;
@@ -53,50 +60,41 @@ export interface Takes extends TakeActions {
 }
 
 interface Recording {
-  readonly heading: Pick<Take, 'variant' | 'k'>;
+  readonly k: number | null;
   readonly sampleRateHz: number;
   readonly pieces: Float32Array<ArrayBuffer>[][];
+  /** In order, in words. */
+  readonly heard: string[];
   frames: number;
+  bytes: number;
 }
 
+type About = Pick<Take, 'variant' | 'k' | 'how'>;
+
 export function createTakes(parts: Parts, document: DocumentState, source: TakeSource, notes: Notes): Takes {
-  const takes = signal<readonly Take[]>([]);
+  const store = createTakeStore();
   const taking = signal<{ readonly seconds: number } | null>(null);
   const rendering = signal<{ readonly fraction: number } | null>(null);
   const playingTake = signal<number | null>(null);
-  const clips = new Map<number, Clip>();
   let recording: Recording | null = null;
   let render: { readonly worker: WorkerPort<ToRender, FromRender>; readonly done: () => void } | null = null;
-  let nextId = 1;
 
-  const heading = () => {
-    const variant = document.variant.peek();
-    return { variant: variant.name, k: feedbackFraction(variant.cell) };
-  };
-
-  const keep = (
-    channels: readonly Float32Array<ArrayBuffer>[],
-    sampleRateHz: number,
-    about: Pick<Take, 'variant' | 'k'>,
-    how: Take['how'],
-  ) => {
-    const id = nextId++;
-    const clip: Clip = { title: `Take ${id}`, sampleRateHz, channels };
-    clips.set(id, clip);
-    takes.value = [...takes.value, { id, name: clip.title, ...about, seconds: clipSeconds(clip), sampleRateHz, how, deleted: false }];
-  };
+  const takeOf = (id: number) => store.takes.peek().find((each) => each.id === id);
+  const heardK = () => feedbackFraction(document.variant.peek().cell);
 
   const finish = () => {
     const ended = recording;
     recording = null;
     taking.value = null;
     if (ended === null || ended.frames === 0) return;
-    keep(joinPieces(ended.pieces, ended.frames), ended.sampleRateHz, ended.heading, 'heard');
+    const { heard, k, frames, pieces, sampleRateHz } = ended;
+    const variant = heard.slice(0, MOST_NAMED).join(' then ') + (heard.length > MOST_NAMED ? ' and on' : '');
+    store.keep(joinPieces(pieces, frames), sampleRateHz, { variant, k, how: 'heard' });
   };
 
-  const edit = (id: number, change: Partial<Take>) => {
-    takes.value = takes.value.map((take) => (take.id === id ? { ...take, ...change } : take));
-  };
+  source.heardWords.subscribe((words) => {
+    if (recording !== null && recording.heard.at(-1) !== words) recording.heard.push(words);
+  });
 
   const endRender = () => {
     render?.worker.end();
@@ -105,13 +103,13 @@ export function createTakes(parts: Parts, document: DocumentState, source: TakeS
     rendering.value = null;
   };
 
-  const receiveRender = (message: FromRender, clip: Clip, about: Pick<Take, 'variant' | 'k'>) => {
+  const receiveRender = (message: FromRender, clip: Clip, about: About) => {
     switch (message.type) {
       case 'progress':
         rendering.value = { fraction: message.fraction };
         return;
       case 'done':
-        keep(message.channels, clip.sampleRateHz, about, 'rendered');
+        store.keep(message.channels, clip.sampleRateHz, about);
         return endRender();
       case 'fault':
         notes.fault(message.sentence);
@@ -123,14 +121,16 @@ export function createTakes(parts: Parts, document: DocumentState, source: TakeS
   };
 
   return {
-    takes,
+    takes: store.takes,
     taking,
     rendering,
     playingTake,
     startTake() {
       if (recording !== null) return;
+      if (!store.makeRoom(LEAST_BYTES)) return notes.fault(`The ${ROOM} are full.`, 'Save takes and delete them.');
       if (!source.record(true)) return notes.fault('There is no sound to take. Press Start first.');
-      recording = { heading: heading(), sampleRateHz: source.rateHz(), pieces: [], frames: 0 };
+      const k = source.hearsCell() ? heardK() : null;
+      recording = { k, sampleRateHz: source.rateHz(), pieces: [], heard: [source.heardWords.peek()], frames: 0, bytes: 0 };
       taking.value = { seconds: 0 };
     },
     endTake() {
@@ -138,20 +138,28 @@ export function createTakes(parts: Parts, document: DocumentState, source: TakeS
     },
     noteChunk(chunk) {
       if (recording === null) return;
-      if (chunk.frames > 0) recording.pieces.push(chunk.channels.map((line) => line.slice(0, chunk.frames)));
+      const piece = chunk.channels.map((line) => line.slice(0, chunk.frames));
+      recording.pieces.push(piece);
       recording.frames += chunk.frames;
-      const seconds = recording.frames / recording.sampleRateHz;
+      recording.bytes += bytesOf(piece);
+      taking.value = { seconds: recording.frames / recording.sampleRateHz };
       if (chunk.last) return finish();
-      taking.value = { seconds };
-      if (seconds < LONGEST_SEC) return;
-      notes.add('note', `The take was ended at ${LONGEST_SEC / 60} minutes, the longest that is kept in memory.`);
+      if (store.makeRoom(recording.bytes)) return;
+      notes.add('note', `The take has been ended: it fills the ${ROOM}.`, 'Save takes and delete them.');
       source.record(false);
     },
     cutShort: finish,
     renderClip() {
       const clip = source.clip();
       if (clip === null || render !== null) return Promise.resolve();
-      const about = heading();
+      if (!store.makeRoom(bytesOf(clip.channels))) {
+        notes.fault(
+          `A render of ${Math.round(bytesOf(clip.channels) / 1e6)} MB does not fit into the ${ROOM}.`,
+          'Save takes and delete them.',
+        );
+        return Promise.resolve();
+      }
+      const about: About = { variant: document.variant.peek().name, k: heardK(), how: 'rendered' };
       const worker = parts.openRenderWorker();
       rendering.value = { fraction: 0 };
       return new Promise<void>((done) => {
@@ -164,22 +172,24 @@ export function createTakes(parts: Parts, document: DocumentState, source: TakeS
     },
     endRender,
     saveTake(id, format) {
-      const take = takes.peek().find((each) => each.id === id);
-      const clip = clips.get(id);
-      if (take === undefined || clip === undefined) return notes.fault(`There is no take ${id} to save.`);
+      const take = takeOf(id);
+      const clip = store.clip(id);
+      if (take === undefined || clip === null) return notes.fault(`There is no take ${id} to save.`);
       const { bytes, cut } = writeWav(clip.channels, clip.sampleRateHz, format);
       parts.download(`${fileName(take.name)}.wav`, bytes, 'audio/wav');
       if (cut > 0) notes.add('note', cutSentence(take.name, cut), 'Save it as 32-bit float to keep it whole.');
     },
     deleteTake(id) {
-      if (playingTake.peek() === id) source.play(null);
-      edit(id, { deleted: true });
+      if (playingTake.peek() === id) source.play(null, '');
+      store.edit(id, { deleted: true });
     },
-    restoreTake: (id) => edit(id, { deleted: false }),
-    renameTake: (id, name) => edit(id, { name }),
+    restoreTake: (id) => store.edit(id, { deleted: false }),
+    renameTake: (id, name) => store.edit(id, { name }),
     playTake(id) {
-      const clip = id === null ? null : (clips.get(id) ?? null);
-      if (!source.play(clip)) return notes.fault('A take is heard through the sound that plays. Press Start first.');
+      const clip = id === null ? null : store.clip(id);
+      if (id !== null && clip === null) return notes.fault(`There is no take ${id} to play.`);
+      const name = id === null ? '' : (takeOf(id)?.name ?? '');
+      if (!source.play(clip, name)) return notes.fault('A take is heard through the sound that plays. Press Start first.');
       playingTake.value = clip === null ? null : id;
     },
     noteEnded() {

@@ -53,6 +53,18 @@ export type ToRender = {
   readonly sampleRateHz: number;
 };
 
+/** Asks for the loudness of the source, or of what a variant makes of it. */
+export type ToLoudness = {
+  readonly type: 'loudness';
+  readonly about: { readonly design: Design; readonly index: number } | null;
+  readonly channels: readonly Float32Array<ArrayBuffer>[];
+  readonly sampleRateHz: number;
+};
+
+export type FromLoudness =
+  /** −Infinity where all is silent. */
+  { readonly type: 'loudness'; readonly lufs: number } | { readonly type: 'fault'; readonly sentence: string };
+
 export type FromRender =
   | { readonly type: 'progress'; readonly fraction: number }
   | { readonly type: 'done'; readonly channels: readonly Float32Array<ArrayBuffer>[] }

@@ -12,6 +12,10 @@ import * as L from './layout.ts';
 /** A list: the count; then for each kink the sample after the crossing, 1 where the end comes on and −1 where it goes off, τ of the sample before (or after) it, κ, J/2. */
 export const KINK_WIDTH = 5;
 
+/** Kinks of larger jumps, V, and sharper bends are those of a state on its way to be lost. */
+const MOST_V = 1e6;
+const MOST_BEND = 1e12;
+
 export function createKinks(most: number): Float64Array {
   return new Float64Array(1 + KINK_WIDTH * most);
 }
@@ -48,12 +52,14 @@ export function markKink(
 
 function add(e: Float64Array, i: number, before: number, after: number, bend: number, amount: number): void {
   const at = 1 + KINK_WIDTH * e[0];
-  if (at + KINK_WIDTH > e.length) return;
+  // Where more than the drain's voltage is fed back the bend may open the other way, without limit: that is no kink to soften.
+  if (at + KINK_WIDTH > e.length || !(bend >= 0)) return;
   const comesOn = after > 0;
   const on = Math.max(before, after);
   const off = Math.min(before, after);
   const free = on + bend * on * on;
   const slope = free - off;
+  if (!(amount * slope * slope < MOST_V && amount * slope * slope > -MOST_V && bend * slope < MOST_BEND)) return;
   e[at] = i;
   e[at + 1] = comesOn ? 1 : -1;
   e[at + 2] = -off / slope;

@@ -18,8 +18,8 @@ import type { Law } from '../../design/types.ts';
 import * as L from './layout.ts';
 
 /**
- * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of, and the same for the output:
- * `g` gate to source, `m` gate to drain, `d` drain to source, which follow from the overdrives, or `x` anything else, which takes a row of its own.
+ * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of: `g` gate to source, `m` gate to
+ * drain, which follow from the overdrives, or `x` anything else, which takes a row of its own; and for the output `d` drain to source or `x`.
  */
 export interface Shape {
   readonly trapezoidal: number;
@@ -30,8 +30,8 @@ export interface Shape {
 /** `x` serves for every letter, and looped.ts for every other shape. */
 export const SHAPES: readonly Shape[] = [
   ...written([0, 1, 2, 3, 4], '', 'd'),
-  ...written([0, 1], 'd', 'd'),
-  ...written([0, 1, 2], 'dg', 'd'),
+  ...written([0, 1], 'x', 'd'),
+  ...written([0, 1, 2], 'xg', 'd'),
   ...written([0, 1], 'gm', 'd'),
   ...written([0, 1, 2, 3], '', 'x'),
   ...written([0, 1, 2, 3], 'xx', 'x'),
@@ -105,7 +105,7 @@ export function kernelModule(law: Law): string {
 import { ${helpers} } from './channel.ts';
 import type { Conductor, Kernel } from './kernel.ts';
 import { addGraded, keepCharges } from './graded.ts';
-${law === 'smooth' ? '' : "import { markKink } from './kinks.ts';\n"}import { searchPorts } from './ports.ts';
+${law === 'smooth' ? '' : "import { markKink } from './kinks.ts';\n"}import { currents, searchPorts } from './ports.ts';
 import { exp } from '../../device/math.ts';
 
 ${conductor(law, typescript)}
@@ -157,7 +157,7 @@ function conductor(law: Law, language: Language): string {
     `  ${constant} off = ${device(L.GATE_OFF_V)}, reverse = ${device(L.REVERSE_A)}, rateD = ${device(L.INVERSE_NVT)}, onD = ${device(L.JUNCTION_ON_V)};`,
     `  ${constant} clampA = ${device(L.CLAMP_A)}, clampRate = ${device(L.CLAMP_INVERSE_NVT)}, clampOn = ${device(L.CLAMP_ON_V)}, grading = ${device(L.GRADING)};`,
     `  ${constant} rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;`,
-    `  ${constant} enough = 0.1 * ${device(L.ENOUGH_V)} + 1e-15 * (${absolute}(a) + ${absolute}(b));`,
+    `  ${constant} enough = 0.1 * ${device(L.ENOUGH_V)}, rounding = 1e-15 * (${absolute}(a) + ${absolute}(b));`,
     ...deviceConstants(law, device)
       .filter(([name]) => !['on', 'bent_', 'fall', 'rise', 'enough'].includes(name))
       .map(([name, value]) => `  ${constant} ${name} = ${value};`),
@@ -194,6 +194,11 @@ function conductor(law: Law, language: Language): string {
     `      ${slot(L.CHANNEL_A)} = channel + fs * stepS - fd * stepD;`,
     `      ${slot(L.JUNCTION_S)} = S + slopeS * stepS; ${slot(L.JUNCTION_D)} = D + slopeD * stepD;`,
     '      if (grading != 0) keepCharges(c, device, s, n);',
+    '      return;',
+    '    }',
+    `    if (${absolute}(stepS) < rounding && ${absolute}(stepD) < rounding) {`,
+    `      ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    '      currents(c, t, device, s, n);',
     '      return;',
     '    }',
     '  }',

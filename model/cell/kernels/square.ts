@@ -11,7 +11,7 @@ import { bent, evaluate, searched } from './channel.ts';
 import type { Conductor, Kernel } from './kernel.ts';
 import { addGraded, keepCharges } from './graded.ts';
 import { markKink } from './kinks.ts';
-import { searchPorts } from './ports.ts';
+import { currents, searchPorts } from './ports.ts';
 import { exp } from '../../device/math.ts';
 
 function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {
@@ -19,7 +19,7 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
   const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
   const rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;
-  const enough = 0.1 * c[device + 18] + 1e-15 * (Math.abs(a) + Math.abs(b));
+  const enough = 0.1 * c[device + 18], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
   const lastS = s[n + 5], lineS = lastS - s[n + 32];
@@ -66,6 +66,11 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) keepCharges(c, device, s, n);
+      return;
+    }
+    if (Math.abs(stepS) < rounding && Math.abs(stepD) < rounding) {
+      s[n + 5] = vs; s[n + 6] = vd;
+      currents(c, t, device, s, n);
       return;
     }
   }
@@ -643,7 +648,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function square0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -655,6 +660,11 @@ function square0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const b2 = c[7];
   const b3 = c[8];
   const b4 = c[9];
+  const n0_0 = c[10];
+  const n0_1 = c[11];
+  const n0_2 = c[12];
+  const n0_3 = c[13];
+  const n0_4 = c[14];
   const m0_0 = c[28];
   const m0_1 = c[29];
   const m0_2 = c[30];
@@ -706,7 +716,13 @@ function square0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     I += J;
     g0 = f0; f0 = e0; e0 = x0;
-    x0 = sign * (vs - vd);
+    x0 = (n0_0 * r0 + n0_1 * u) + (n0_2 * v + n0_3) + n0_4 * I;
+    if (noisy) {
+      x0 += w[i * 5 + 2];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[24] * S + c[25] * D;
+    }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
       s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a4 - b4);
@@ -722,7 +738,7 @@ function square0_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
-function square1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -742,6 +758,12 @@ function square1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const n0_3 = c[15];
   const n0_4 = c[16];
   const n0_5 = c[17];
+  const n1_0 = c[18];
+  const n1_1 = c[19];
+  const n1_2 = c[20];
+  const n1_3 = c[21];
+  const n1_4 = c[22];
+  const n1_5 = c[23];
   const m0_0 = c[40];
   const m0_1 = c[41];
   const m0_2 = c[42];
@@ -805,12 +827,14 @@ function square1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     I += J;
     g1 = f1; f1 = e1; e1 = x1;
     x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * u) + (n0_3 * v + n0_4) + n0_5 * I;
-    x1 = sign * (vs - vd);
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * u) + (n1_3 * v + n1_4) + n1_5 * I;
     if (noisy) {
       x0 += w[i * 6 + 2];
+      x1 += w[i * 6 + 3];
     }
     if (S != 0 || D != 0) {
       x0 += c[34] * S + c[35] * D;
+      x1 += c[36] * S + c[37] * D;
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
@@ -828,7 +852,7 @@ function square1_d_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
-function square0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -842,6 +866,12 @@ function square0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const b3 = c[9];
   const b4 = c[10];
   const b5 = c[11];
+  const n0_0 = c[12];
+  const n0_1 = c[13];
+  const n0_2 = c[14];
+  const n0_3 = c[15];
+  const n0_4 = c[16];
+  const n0_5 = c[17];
   const m0_0 = c[40];
   const m0_1 = c[41];
   const m0_2 = c[42];
@@ -903,8 +933,14 @@ function square0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     I += J;
     g0 = f0; f0 = e0; e0 = x0;
     g1 = f1; f1 = e1; e1 = x1;
-    x0 = sign * (vs - vd);
+    x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * u) + (n0_3 * v + n0_4) + n0_5 * I;
     x1 = sign * (vs + off);
+    if (noisy) {
+      x0 += w[i * 6 + 2];
+    }
+    if (S != 0 || D != 0) {
+      x0 += c[34] * S + c[35] * D;
+    }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
       s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
@@ -922,7 +958,7 @@ function square0_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
-function square1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -945,6 +981,13 @@ function square1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const n0_4 = c[18];
   const n0_5 = c[19];
   const n0_6 = c[20];
+  const n1_0 = c[21];
+  const n1_1 = c[22];
+  const n1_2 = c[23];
+  const n1_3 = c[24];
+  const n1_4 = c[25];
+  const n1_5 = c[26];
+  const n1_6 = c[27];
   const m0_0 = c[54];
   const m0_1 = c[55];
   const m0_2 = c[56];
@@ -1020,13 +1063,15 @@ function square1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     g1 = f1; f1 = e1; e1 = x1;
     g2 = f2; f2 = e2; e2 = x2;
     x0 = ((n0_0 * r0 + n0_1 * r1) + n0_2 * r2) + ((n0_3 * u + n0_4 * v) + n0_5) + n0_6 * I;
-    x1 = sign * (vs - vd);
+    x1 = ((n1_0 * r0 + n1_1 * r1) + n1_2 * r2) + ((n1_3 * u + n1_4 * v) + n1_5) + n1_6 * I;
     x2 = sign * (vs + off);
     if (noisy) {
       x0 += w[i * 7 + 2];
+      x1 += w[i * 7 + 3];
     }
     if (S != 0 || D != 0) {
       x0 += c[46] * S + c[47] * D;
+      x1 += c[48] * S + c[49] * D;
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
@@ -1046,7 +1091,7 @@ function square1_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
-function square2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
+function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
   const noisy = w.length > 0, marking = e.length > 0;
   const a0 = c[0];
   const a1 = c[1];
@@ -1080,6 +1125,14 @@ function square2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const n1_5 = c[29];
   const n1_6 = c[30];
   const n1_7 = c[31];
+  const n2_0 = c[32];
+  const n2_1 = c[33];
+  const n2_2 = c[34];
+  const n2_3 = c[35];
+  const n2_4 = c[36];
+  const n2_5 = c[37];
+  const n2_6 = c[38];
+  const n2_7 = c[39];
   const m0_0 = c[70];
   const m0_1 = c[71];
   const m0_2 = c[72];
@@ -1169,15 +1222,17 @@ function square2_dg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     g3 = f3; f3 = e3; e3 = x3;
     x0 = ((n0_0 * r0 + n0_1 * r1) + (n0_2 * r2 + n0_3 * r3)) + ((n0_4 * u + n0_5 * v) + n0_6) + n0_7 * I;
     x1 = ((n1_0 * r0 + n1_1 * r1) + (n1_2 * r2 + n1_3 * r3)) + ((n1_4 * u + n1_5 * v) + n1_6) + n1_7 * I;
-    x2 = sign * (vs - vd);
+    x2 = ((n2_0 * r0 + n2_1 * r1) + (n2_2 * r2 + n2_3 * r3)) + ((n2_4 * u + n2_5 * v) + n2_6) + n2_7 * I;
     x3 = sign * (vs + off);
     if (noisy) {
       x0 += w[i * 8 + 2];
       x1 += w[i * 8 + 3];
+      x2 += w[i * 8 + 4];
     }
     if (S != 0 || D != 0) {
       x0 += c[60] * S + c[61] * D;
       x1 += c[62] * S + c[63] * D;
+      x2 += c[64] * S + c[65] * D;
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
@@ -2947,11 +3002,11 @@ export const SQUARE_KERNELS: Readonly<Record<string, Kernel>> = {
   '2  d': square2__d,
   '3  d': square3__d,
   '4  d': square4__d,
-  '0 d d': square0_d_d,
-  '1 d d': square1_d_d,
-  '0 dg d': square0_dg_d,
-  '1 dg d': square1_dg_d,
-  '2 dg d': square2_dg_d,
+  '0 x d': square0_x_d,
+  '1 x d': square1_x_d,
+  '0 xg d': square0_xg_d,
+  '1 xg d': square1_xg_d,
+  '2 xg d': square2_xg_d,
   '0 gm d': square0_gm_d,
   '1 gm d': square1_gm_d,
   '0  x': square0__x,

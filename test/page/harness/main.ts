@@ -22,7 +22,10 @@ window.playOffline = async (design, rateHz, channels) => {
   const context = new OfflineAudioContext(lines.length, length, rateHz);
   await context.audioWorklet.addModule(workletUrl);
   const numbers = compileChain(design, 0, rateHz, lines.length, 'lowLatency');
-  const processorOptions: CellOptions = { numbers, channels: lines.length, heard: 'cell', gain: 1, ceilingPeak: 1, muted: false };
+  const processorOptions: CellOptions = {
+    ...{ chains: [numbers], focus: 0, channels: lines.length, heard: 'cell', match: { slots: [1, 1, 1, 1, 1], bypass: 1 } },
+    ...{ gain: 1, ceilingPeak: 1, muted: false },
+  };
   const node = new AudioWorkletNode(context, CELL_PROCESSOR, {
     numberOfInputs: 2,
     outputChannelCount: [lines.length],

@@ -1,10 +1,12 @@
 import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest';
+import { renderClip } from '../../../model/chain/render.ts';
 import { readWav, writeWav } from '../../../model/chain/wav.ts';
+import { loudnessOf } from '../../../model/measure/loudness.ts';
 import type { Bench } from '../../../web/state/bench.ts';
 import { assembleBench } from '../../../web/state/createBench.ts';
 import type { Chunk, Report } from '../../../worklet/protocol.ts';
 import { createNoise } from '../../support/noise.ts';
-import { createFakeParts, type FakeParts, type FakeSound, runRender } from './fakeParts.ts';
+import { createFakeParts, type FakeParts, type FakeSound, runLoudness, runRender } from './fakeParts.ts';
 
 let parts: FakeParts;
 let bench: Bench;
@@ -42,7 +44,7 @@ describe('starting and stopping', () => {
     const [sound] = parts.sounds;
     expect(bench.sound.value).toBe('playing');
     expect(sound.cells[0]).toMatchObject({ channels: 1, muted: true, heard: 'cell' });
-    expect(sound.cells[0].numbers.sampleRateHz).toBe(48000);
+    expect(sound.cells[0].chains[0]?.sampleRateHz).toBe(48000);
     expect(sound.loops.map(({ title }) => title)).toEqual([bench.source.value.title]);
     expect(bench.source.value).toMatchObject({ kind: 'phrase', seconds: 8 });
     expect(sound.last('mute')).toEqual({ type: 'mute', on: false });
@@ -106,17 +108,17 @@ describe('starting and stopping', () => {
 });
 
 describe('changing values while sound plays', () => {
-  test('new numbers go out once for all changes in a frame', async () => {
+  test('new numbers go out once for all changes in a frame, to each variant that they are about', async () => {
     const sound = await startSound();
     vi.advanceTimersByTime(50);
-    const before = sound.told.filter(({ type }) => type === 'move').length;
+    const moved = () => sound.told.flatMap((message) => (message.type === 'move' ? [message] : []));
     for (const ohm of [5000, 6000, 6800]) expect(bench.setValue('cell.seriesOhm', ohm)).toBeNull();
+    vi.advanceTimersByTime(50);
+    expect(moved().map(({ slot }) => slot)).toEqual([0]);
+    expect(JSON.stringify(moved()[0].numbers.cells)).not.toBe(JSON.stringify(sound.cells[0].chains[0]?.cells));
     expect(bench.setDesignValue('tempC', 40)).toBeNull();
     vi.advanceTimersByTime(50);
-    const moves = sound.told.filter((message) => message.type === 'move');
-    expect(moves).toHaveLength(before + 1);
-    const cells = JSON.stringify(moves.at(-1)?.numbers.cells);
-    expect(cells).not.toBe(JSON.stringify(sound.cells[0].numbers.cells));
+    expect(moved().map(({ slot }) => slot)).toEqual([0, 0, 1, 2]);
   });
 
   test('level and ceiling are checked and sent as ratios', async () => {
@@ -131,15 +133,92 @@ describe('changing values while sound plays', () => {
     expect(bench.ceilingDbfs.value).toBe(-40);
   });
 
-  test('bypass and another variant are heard at once', async () => {
+  test('bypass and another variant are heard at once, and nothing is computed anew for it', async () => {
     const sound = await startSound();
+    const { chains, focus } = sound.cells[0];
+    expect(chains.map((numbers) => numbers !== null)).toEqual([true, true, true, false, false].slice(0, 5));
+    expect(focus).toBe(0);
     bench.hear('bypass');
     expect(sound.last('hear')).toEqual({ type: 'hear', heard: 'bypass' });
     vi.advanceTimersByTime(50);
-    const before = sound.last('move');
+    const before = sound.told.length;
     bench.hearVariant(2);
     vi.advanceTimersByTime(50);
-    expect(sound.last('move')).not.toBe(before);
+    expect(sound.told.slice(before)).toEqual([{ type: 'focus', slot: 2 }]);
+  });
+
+  test('a variant that is edited, added or taken back moves its own chain and no other', async () => {
+    const sound = await startSound();
+    const told = (work: () => void) => {
+      const before = sound.told.length;
+      work();
+      vi.advanceTimersByTime(50);
+      return sound.told.slice(before).map((message) => ('slot' in message ? [message.type, message.slot] : message.type));
+    };
+    expect(told(() => bench.addVariant())).toEqual([
+      ['move', 3],
+      ['focus', 3],
+    ]);
+    expect(told(() => bench.setValue('cell.seriesOhm', 4700))).toEqual([['move', 3]]);
+    expect(told(() => bench.setDesignValue('title', 'Another'))).toEqual([]);
+    expect(told(() => bench.undo())).toEqual([]);
+    expect(told(() => bench.undo())).toEqual([['move', 3]]);
+    expect(told(() => bench.undo())).toEqual([
+      ['focus', 2],
+      ['drop', 3],
+    ]);
+  });
+
+  test('the setting before the last change is heard, run from then on, and left when there is none', async () => {
+    const sound = await startSound();
+    expect(bench.hear('previous')).toBe('Variant A has not been changed yet; there is nothing before it to hear.');
+    const first = bench.design.value.variants[0];
+    for (const ohm of [5000, 6000, 6800]) {
+      bench.setValue('cell.seriesOhm', ohm);
+      vi.advanceTimersByTime(100);
+    }
+    expect(bench.previous.value).toBe(first);
+    const before = sound.told.length;
+    expect(bench.hear('previous')).toBeNull();
+    expect(sound.told.slice(before)).toMatchObject([
+      { type: 'move', slot: 4 },
+      { type: 'hear', heard: 'previous' },
+    ]);
+    vi.advanceTimersByTime(1000);
+    bench.setValue('cell.seriesOhm', 10_000);
+    vi.advanceTimersByTime(50);
+    expect(bench.previous.value?.cell.seriesOhm).toBe(6800);
+    expect(sound.last('move')).toMatchObject({ slot: 4 });
+    bench.hearVariant(1);
+    expect(bench.hearing.value).toBe('cell');
+    expect(sound.last('hear')).toEqual({ type: 'hear', heard: 'cell' });
+  });
+
+  test('variants and previous setting at the loudness of the source: measured on renders, within 0.05 LU', async () => {
+    const sound = await startSound();
+    const tone = Float32Array.from({ length: 96_000 }, (_, n) => 0.3 * Math.sin((2 * Math.PI * 440 * n) / 48000));
+    await bench.openAudio(fileOf([tone], 48000, 'tone.wav'));
+    bench.setValue('cell.seriesOhm', 22_000);
+    expect(parts.loudnessWorkers).toEqual([]);
+    bench.setMatched(true);
+    for (let n = 0; n < parts.loudnessWorkers.length; n++) runLoudness(parts.loudnessWorkers[n]);
+    expect(parts.loudnessWorkers.every(({ ended }) => ended)).toBe(true);
+    const { variants, previous } = bench.matchDb.value;
+    expect(variants).toHaveLength(bench.design.value.variants.length);
+    const { slots, bypass } = sound.last('match')?.match ?? { slots: [], bypass: 0 };
+    expect(bypass).toBe(1);
+    const wanted = loudnessOf([tone], 48000);
+    for (const [index, db] of [...variants, previous].entries()) {
+      const slot = index === variants.length ? 4 : index;
+      expect(slots[slot]).toBeCloseTo(10 ** ((db ?? Number.NaN) / 20), 9);
+      if (slot === 4) continue;
+      const [heard] = renderClip(bench.design.value, index, [tone], 48000);
+      const lufs = loudnessOf([heard.map((x) => x * slots[slot])], 48000);
+      expect(Math.abs(lufs - wanted)).toBeLessThan(0.05);
+    }
+    expect(previous).not.toBeNull();
+    bench.setMatched(false);
+    expect(sound.last('match')?.match).toEqual({ slots: [1, 1, 1, 1, 1], bypass: 1 });
   });
 });
 
@@ -169,7 +248,7 @@ describe('sources', () => {
       await rebuild.call(sound, cell);
     };
     await bench.choosePhrase('guitar');
-    const { numbers } = sound.cells[2];
+    const [numbers] = sound.cells[2].chains;
     expect(sound.last('move')?.numbers.cells).toHaveLength(1);
     expect(JSON.stringify(sound.last('move')?.numbers)).not.toBe(JSON.stringify(numbers));
     expect(sentences()).toEqual([]);
@@ -260,7 +339,8 @@ describe('readings', () => {
     const sound = await startSound();
     const report = (gateSourceV: number): Report => ({
       ...{ type: 'report', slot: 0, frame: 0, input: new Float32Array(100), output: new Float32Array(100) },
-      ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, inputPeakV: 0, drainPeakV: 0, feedthroughPeakV: 0 },
+      ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, inputPeakV: 0, drainPeakV: 0, feedthroughPeakV: 0 },
+      ...{ slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5), latencySamples: 48, loadFraction: 0.1 },
       ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: 2 * gateSourceV, gateSourceV },
     });
     const asked = () => readingWorker.posted.filter((message) => message.type === 'moment');
@@ -394,13 +474,79 @@ describe('takes', () => {
     expect(bench.takes.value[0].deleted).toBe(false);
   });
 
-  test('without sound there is nothing to take or to play it with', () => {
+  test('a row says what was heard, one after the other, and has a k only where it began with the cell', async () => {
+    const sound = await startSound();
+    const take = (work: () => void) => {
+      bench.startTake();
+      work();
+      sound.events.message(chunk(0, createNoise(1, 1000, 0.5), true));
+      return bench.takes.value.at(-1);
+    };
+    expect(take(() => bench.hearVariant(1))).toMatchObject({ variant: 'A then B', k: expect.any(Number) });
+    bench.hear('bypass');
+    expect(take(() => {})).toMatchObject({ variant: 'bypass', k: null });
+    expect(take(() => bench.playTake(1))).toMatchObject({ variant: 'bypass then Take 1' });
+    sound.events.takeEnded();
+    const letters = () => [0, 1, 2, 0, 1].map((index) => bench.hearVariant(index));
+    bench.hear('cell');
+    expect(take(letters)?.variant).toBe('B then A then B then C and on');
+  });
+
+  test('of deleted takes the last three can be brought back; those before are gone', async () => {
+    const sound = await startSound();
+    for (let n = 1; n <= 5; n++) {
+      bench.startTake();
+      sound.events.message(chunk(0, createNoise(n, 1000, 0.5), true));
+    }
+    for (const id of [2, 1, 4, 3]) bench.deleteTake(id);
+    expect(bench.takes.value.map(({ id, deleted }) => [id, deleted])).toEqual([
+      [1, true],
+      [3, true],
+      [4, true],
+      [5, false],
+    ]);
+    bench.restoreTake(1);
+    bench.deleteTake(5);
+    expect(bench.takes.value.map(({ id }) => id)).toEqual([1, 3, 4, 5]);
+    bench.saveTake(2, 'pcm16');
+    expect(sentences()).toEqual(['There is no take 2 to save.']);
+  });
+
+  test('takes fill the memory that is kept for them and no more; deleted ones make room first', async () => {
+    const sound = await startSound();
+    const big = new Float32Array(30e6);
+    for (let n = 1; n <= 4; n++) {
+      bench.startTake();
+      sound.events.message(chunk(0, big, true));
+      if (n === 1) bench.deleteTake(1);
+    }
+    expect(bench.takes.value.map(({ id }) => id)).toEqual([1, 2, 3, 4]);
+    bench.startTake();
+    expect(bench.takes.value.map(({ id }) => id)).toEqual([2, 3, 4]);
+    sound.events.message(chunk(0, big, false));
+    expect(sentences()).toEqual([]);
+    sound.events.message(chunk(30e6, big.subarray(0, 8192), false));
+    expect(sentences()).toEqual(['The take has been ended: it fills the 480 MB that are kept for takes.']);
+    expect(sound.last('record')).toEqual({ type: 'record', on: false });
+    sound.events.message(chunk(30e6 + 8192, big.subarray(0, 1), true));
+    bench.startTake();
+    expect(bench.taking.value).toBeNull();
+    expect(sentences().at(-1)).toBe('The 480 MB that are kept for takes are full.');
+  });
+
+  test('without sound there is nothing to take or to play it with', async () => {
+    await bench.openAudio(fileOf([createNoise(3, 4800, 0.5)], 48000, 'short.wav'));
+    const done = bench.renderClip();
+    runRender(parts.renderWorkers[0]);
+    await done;
     bench.startTake();
     bench.playTake(1);
+    bench.playTake(2);
     expect(bench.taking.value).toBeNull();
     expect(sentences()).toEqual([
       'There is no sound to take. Press Start first.',
       'A take is heard through the sound that plays. Press Start first.',
+      'There is no take 2 to play.',
     ]);
   });
 });
@@ -436,5 +582,35 @@ describe('designs', () => {
     await bench.openDesign(new File(['{'], 'worse.json'));
     expect(sentences().at(-1)).toMatch(/^“worse.json”: /);
     expect(bench.design.value).toBe(before);
+  });
+});
+
+describe('the load', () => {
+  const report = (frame: number, loadFraction: number): Report => ({
+    ...{ type: 'report', slot: 0, frame, input: new Float32Array(100), output: new Float32Array(100), loadFraction },
+    ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, inputPeakV: 0, drainPeakV: 0 },
+    ...{ feedthroughPeakV: 0, faults: 0, slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5) },
+    ...{ latencySamples: 48, ceilingFrames: 0, lagMs: 0, controlV: -1, gateSourceV: -1 },
+  });
+
+  test('that lasts and leaves little of the time is said once, and again after it was low', async () => {
+    const sound = await startSound();
+    let frame = 0;
+    const play = (seconds: number, load: number) => {
+      for (let n = 0; n < 30 * seconds; n++) {
+        sound.events.message(report(frame, load));
+        frame += 1600;
+      }
+    };
+    play(2, 0.95);
+    expect(sentences()).toEqual([]);
+    play(20, 0.95);
+    expect(sentences()).toEqual(['The 3 variants take 95 % of the time that this machine has for sound; there may be gaps.']);
+    bench.dismiss(bench.notes.value[0].id);
+    play(20, 0.95);
+    expect(sentences()).toEqual([]);
+    play(20, 0.2);
+    play(30, 0.95);
+    expect(sentences()).toHaveLength(1);
   });
 });

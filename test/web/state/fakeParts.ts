@@ -2,11 +2,12 @@
 import { readFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { renderClip } from '../../../model/chain/render.ts';
+import { loudnessOf } from '../../../model/measure/loudness.ts';
 import type { Clip } from '../../../web/audio/clip.ts';
 import { decodeAudio } from '../../../web/audio/decode.ts';
 import type { Sound, SoundEvents } from '../../../web/audio/sound.ts';
 import type { Parts } from '../../../web/state/parts.ts';
-import type { FromReading, FromRender, ToReading, ToRender, WorkerPort } from '../../../web/state/workers.ts';
+import type { FromLoudness, FromReading, FromRender, ToLoudness, ToReading, ToRender, WorkerPort } from '../../../web/state/workers.ts';
 import type { CellOptions, FromCell, ToCell } from '../../../worklet/protocol.ts';
 
 export class FakeSound implements Sound {
@@ -88,6 +89,7 @@ export interface FakeParts extends Parts {
   readonly sounds: FakeSound[];
   readonly readingWorker: FakeWorker<ToReading, FromReading>;
   readonly renderWorkers: FakeWorker<ToRender, FromRender>[];
+  readonly loudnessWorkers: FakeWorker<ToLoudness, FromLoudness>[];
   readonly downloads: { name: string; bytes: Uint8Array; mediaType: string }[];
   missing: string | null;
   /** What opening sound rejects with; the machine's rate where it cannot run at the one asked for. */
@@ -102,6 +104,7 @@ export function createFakeParts(): FakeParts {
     sounds: [],
     readingWorker: new FakeWorker(),
     renderWorkers: [],
+    loudnessWorkers: [],
     downloads: [],
     missing: null,
     refusal: null,
@@ -127,6 +130,11 @@ export function createFakeParts(): FakeParts {
       parts.renderWorkers.push(worker);
       return worker;
     },
+    openLoudnessWorker() {
+      const worker = new FakeWorker<ToLoudness, FromLoudness>();
+      parts.loudnessWorkers.push(worker);
+      return worker;
+    },
     download: (name, bytes, mediaType) => parts.downloads.push({ name, bytes, mediaType }),
   };
   return parts;
@@ -137,4 +145,11 @@ export function runRender(worker: FakeWorker<ToRender, FromRender>): void {
   const { design, variantIndex, channels, sampleRateHz } = worker.posted[0];
   const rendered = renderClip(design, variantIndex, channels, sampleRateHz, (fraction) => worker.answer({ type: 'progress', fraction }));
   worker.answer({ type: 'done', channels: rendered as Float32Array<ArrayBuffer>[] });
+}
+
+/** Does a worker's measurement. */
+export function runLoudness(worker: FakeWorker<ToLoudness, FromLoudness>): void {
+  const { about, channels, sampleRateHz } = worker.posted[0];
+  const lines = about === null ? channels : renderClip(about.design, about.index, channels, sampleRateHz);
+  worker.answer({ type: 'loudness', lufs: loudnessOf(lines, sampleRateHz) });
 }

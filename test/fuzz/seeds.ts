@@ -1,0 +1,23 @@
+/** Seeds that have failed, each kept for ever and replayed in CI, with what it found. */
+export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
+  [148, 'no operating point: a ground path of 0.1 mΩ made the network at rest singular'],
+  [177, 'junctions of 0.1 A reverse current through a ground path of 0.1 mΩ'],
+  [716, 'a driver of 16 μΩ beside picofarads'],
+  [1484, 'a pickup of 100 H: 900 V of L/h·I in the sums'],
+  [1733, 'a pickup of 100 H with a bias of 1 mA'],
+  [2276, '27 fF at the gate beside a ground path of 0.1 mΩ'],
+  [3110, 'a buffer and a stray capacitance feed back 1.5 times the drain: the search found no solution'],
+  [3235, 'values moved from 10 MΩ to 24 μΩ'],
+  [5581, "Newton's last step left 1.2 pA where the law's tail is 32 mV wide"],
+  [5996, 'the smooth law’s table where VGS(off) is no larger than its tail'],
+];
+
+export const CHAIN_SEEDS: readonly (readonly [seed: number, found: string])[] = [
+  [1, 'a move over decades: interpolated matrices grew until the state was lost'],
+  [45, 'the same within 12 samples of the move'],
+  [97, 'the same in the last slice of a move'],
+  [164, 'the same with a follower of the input'],
+  [211, 'a buffered source pin on a ground path of 100 Ω: the rest was solved at 1e27 V'],
+  [1017, 'an operating point moved behind a slow coupling capacitor'],
+  [2101, 'an external control of 1 MV through the ground path'],
+];
