@@ -98,7 +98,11 @@ export function plotFeedback(
     thd: linePath(thdPoints),
     thdPoints,
     band: bandPath(
-      bandOf(curve).map(({ k, low, high }) => ({ x: toPixel(x, k), low: Math.min(toPixel(y, low), floor), high: toPixel(y, high) })),
+      bandOf(curve).map(({ k, low, high }) => ({
+        x: toPixel(x, k),
+        low: Math.min(toPixel(y, low), floor),
+        high: Math.min(toPixel(y, high), floor),
+      })),
     ),
     h2: linePath(h2Points),
     h2Points,

@@ -38,6 +38,11 @@ test('between measured points the harmonics run straight, so that a null between
   expect(Math.max(...heights)).toBeCloseTo(Math.max(...measured), 0);
 });
 
+test('a stretch without any distortion does not cut a corner off the band', () => {
+  const cutOff = curve.map((point) => (point.k > 0.44 && point.k < 0.56 ? { ...point, thd: 0, h2Signed: 0, h3: 0 } : point));
+  expect(plotFeedback(cutOff, 500, 200).band.match(/M/g)).toHaveLength(1);
+});
+
 function pathHeights(path: string): number[] {
   return [...path.matchAll(/[ML]\S+ (\S+?)(?=[ML]|$)/g)].map((match) => Number(match[1]));
 }
