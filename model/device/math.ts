@@ -45,6 +45,11 @@ export function exp(x: number): number {
   return y * POWERS_OF_TWO[k + 100 - LOWEST_EXPONENT] * POWERS_OF_TWO[-100 - LOWEST_EXPONENT];
 }
 
+/** Puts e to the power of `slots[at]` in its place: a number as an argument or a result may cost memory. */
+export function expAt(slots: Float64Array, at: number): void {
+  slots[at] = exp(slots[at]);
+}
+
 /** Natural logarithm. log(0) is −Infinity, of a negative number NaN. */
 export function log(x: number): number {
   if (x < 0 || Number.isNaN(x)) return Number.NaN;

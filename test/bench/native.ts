@@ -36,6 +36,9 @@ function program(shape: Shape, coefficientCount: number, slotCount: number, samp
 #include <stdio.h>
 #include <stdlib.h>
 #include <time.h>
+static void expAt(double *s, int at) {
+  s[at] = exp(s[at]);
+}
 static void addGraded(const double *c, int device, double v, double perStep, double *s, int charges, int at) {
   (void)c; (void)device; (void)v; (void)perStep; (void)charges;
   s[at] = 0;

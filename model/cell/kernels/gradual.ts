@@ -12,9 +12,10 @@ import type { Conductor, Kernel } from './kernel.ts';
 import { addGraded, keepCharges } from './graded.ts';
 import { markKink } from './kinks.ts';
 import { currents, searchPorts } from './ports.ts';
-import { exp } from '../../device/math.ts';
+import { expAt } from '../../device/math.ts';
 
-function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {
+function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
+  const a = s[n + 34], b = s[n + 35], freeA = s[n + 36];
   const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
   const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
   const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
@@ -53,15 +54,18 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     }
     if (vs > onD) {
       const x = movedS * rateD;
-      junctionS = junctionS > 0 && x < 1e-3 && x > -1e-3 ? junctionS * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666))) : reverse * exp((vs + off) * rateD);
+      if (junctionS > 0 && x < 1e-3 && x > -1e-3) junctionS = junctionS * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
+      else { s[n + 37] = (vs + off) * rateD; expAt(s, n + 37); junctionS = reverse * s[n + 37]; }
     } else junctionS = 0;
     if (vd > onD) {
       const x = movedD * rateD;
-      junctionD = junctionD > 0 && x < 1e-3 && x > -1e-3 ? junctionD * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666))) : reverse * exp((vd + off) * rateD);
+      if (junctionD > 0 && x < 1e-3 && x > -1e-3) junctionD = junctionD * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
+      else { s[n + 37] = (vd + off) * rateD; expAt(s, n + 37); junctionD = reverse * s[n + 37]; }
     } else junctionD = 0;
     if (vs > clampOn) {
       const x = movedS * clampRate;
-      clamped = clamped > 0 && x < 1e-3 && x > -1e-3 ? clamped * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666))) : clampA * exp((vs + off) * clampRate);
+      if (clamped > 0 && x < 1e-3 && x > -1e-3) clamped = clamped * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
+      else { s[n + 37] = (vs + off) * clampRate; expAt(s, n + 37); clamped = clampA * s[n + 37]; }
     } else clamped = 0;
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
@@ -154,7 +158,8 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      s[34] = a; s[35] = b; s[36] = I;
+      conduct_gradual(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -249,7 +254,8 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      s[35] = a; s[36] = b; s[37] = I;
+      conduct_gradual(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -372,7 +378,8 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      s[36] = a; s[37] = b; s[38] = I;
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -521,7 +528,8 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      s[37] = a; s[38] = b; s[39] = I;
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -700,7 +708,8 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 106, 7, 15, 56, s, 4, a, b, I);
+      s[38] = a; s[39] = b; s[40] = I;
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -815,7 +824,8 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 34, 4, 9, 20, s, 4, a, b, I);
+      s[38] = a; s[39] = b; s[40] = I;
+      conduct_gradual(c, t, 34, 4, 9, 20, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
     I += J;
@@ -940,7 +950,8 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 54, 5, 11, 30, s, 5, a, b, I);
+      s[39] = a; s[40] = b; s[41] = I;
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 5);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
     I += J;
@@ -1061,7 +1072,8 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      s[42] = a; s[43] = b; s[44] = I;
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1205,7 +1217,8 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      s[43] = a; s[44] = b; s[45] = I;
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1378,7 +1391,8 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      s[44] = a; s[45] = b; s[46] = I;
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -1501,7 +1515,8 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      s[42] = a; s[43] = b; s[44] = I;
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -1632,7 +1647,8 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      s[43] = a; s[44] = b; s[45] = I;
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -1732,7 +1748,8 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 18, 3, 7, 12, s, 0, a, b, I);
+      s[34] = a; s[35] = b; s[36] = I;
+      conduct_gradual(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
@@ -1839,7 +1856,8 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 34, 4, 9, 20, s, 1, a, b, I);
+      s[35] = a; s[36] = b; s[37] = I;
+      conduct_gradual(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
     I += J;
@@ -1971,7 +1989,8 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 54, 5, 11, 30, s, 2, a, b, I);
+      s[36] = a; s[37] = b; s[38] = I;
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
     I += J;
@@ -2130,7 +2149,8 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 78, 6, 13, 42, s, 3, a, b, I);
+      s[37] = a; s[38] = b; s[39] = I;
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
     I += J;
@@ -2268,7 +2288,8 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 54, 5, 11, 30, s, 8, a, b, I);
+      s[42] = a; s[43] = b; s[44] = I;
+      conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
     I += J;
@@ -2431,7 +2452,8 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 78, 6, 13, 42, s, 9, a, b, I);
+      s[43] = a; s[44] = b; s[45] = I;
+      conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
     I += J;
@@ -2625,7 +2647,8 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 106, 7, 15, 56, s, 10, a, b, I);
+      s[44] = a; s[45] = b; s[46] = I;
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
     I += J;
@@ -2854,7 +2877,8 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 138, 8, 17, 72, s, 11, a, b, I);
+      s[45] = a; s[46] = b; s[47] = I;
+      conduct_gradual(c, t, 138, 8, 17, 72, s, 11);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
     I += J;
@@ -3056,7 +3080,8 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
     if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 106, 7, 15, 56, s, 13, a, b, I);
+      s[47] = a; s[48] = b; s[49] = I;
+      conduct_gradual(c, t, 106, 7, 15, 56, s, 13);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
     I += J;
@@ -3287,7 +3312,8 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
     if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      conduct_gradual(c, t, 138, 8, 17, 72, s, 14, a, b, I);
+      s[48] = a; s[49] = b; s[50] = I;
+      conduct_gradual(c, t, 138, 8, 17, 72, s, 14);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
     I += J;

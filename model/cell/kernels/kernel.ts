@@ -12,7 +12,7 @@ export type Kernel = (
   to: number,
 ) => void;
 
-/** Solves both ports while a gate junction conducts: see ports.ts. */
+/** Solves both ports while a gate junction conducts, from what stands in GIVEN_A, GIVEN_B and GIVEN_FREE: see ports.ts. A number as an argument may cost memory. */
 export type Conductor = (
   c: Float64Array,
   t: Float64Array,
@@ -22,7 +22,4 @@ export type Conductor = (
   junction: number,
   s: Float64Array,
   n: number,
-  a: number,
-  b: number,
-  freeA: number,
 ) => void;

@@ -111,4 +111,9 @@ export const PER_A = 31;
 /** Overdrives of the conducting sample before the last, for the first guess of the next. */
 export const EARLIER_S = 32;
 export const EARLIER_D = 33;
-export const STATE_SLOTS = 34;
+/** For a conductor: overdrives without currents, V, and the channel current without the junctions', A; then the argument of its exponential and its value. */
+export const GIVEN_A = 34;
+export const GIVEN_B = 35;
+export const GIVEN_FREE = 36;
+export const POWER = 37;
+export const STATE_SLOTS = 38;

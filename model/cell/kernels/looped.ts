@@ -151,7 +151,10 @@ function solvePorts(
   const vs = a + c[aI] * free;
   const vd = b + c[bI] * free;
   if (vs > c[device + L.ON_V] || vd > c[device + L.ON_V]) {
-    conductor(c, t, device, aI, bI, junction, s, slots, a, b, free);
+    s[slots + L.GIVEN_A] = a;
+    s[slots + L.GIVEN_B] = b;
+    s[slots + L.GIVEN_FREE] = free;
+    conductor(c, t, device, aI, bI, junction, s, slots);
     return;
   }
   s[slots + L.CHANNEL_A] = free;

@@ -63,7 +63,7 @@ interface Language {
 
 const typescript: Language = {
   conduct: (name) =>
-    `function ${name}(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number, a: number, b: number, freeA: number): void {`,
+    `function ${name}(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {`,
   absolute: 'Math.abs',
   least: 'Math.min',
   most: 'Math.max',
@@ -76,8 +76,7 @@ const typescript: Language = {
 };
 
 const c: Language = {
-  conduct: (name) =>
-    `static void ${name}(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n, double a, double b, double freeA) {`,
+  conduct: (name) => `static void ${name}(const double *c, const double *t, int device, int aI, int bI, int junction, double *s, int n) {`,
   absolute: 'fabs',
   least: 'fmin',
   most: 'fmax',
@@ -106,7 +105,7 @@ import { ${helpers} } from './channel.ts';
 import type { Conductor, Kernel } from './kernel.ts';
 import { addGraded, keepCharges } from './graded.ts';
 ${law === 'smooth' ? '' : "import { markKink } from './kinks.ts';\n"}import { currents, searchPorts } from './ports.ts';
-import { exp } from '../../device/math.ts';
+import { expAt } from '../../device/math.ts';
 
 ${conductor(law, typescript)}
 
@@ -153,6 +152,7 @@ function conductor(law: Law, language: Language): string {
     `    ${constant} step${end} = whole${end} * rate${end} <= 2 ? whole${end} : ${v} < on${end} ? ${least}(whole${end}, knee${end} - ${v}) : (2 + whole${end} * rate${end} / (1 + 0.1 * whole${end} * rate${end})) / rate${end};`;
   return [
     language.conduct(conductorName(law)),
+    `  ${constant} a = ${slot(L.GIVEN_A)}, b = ${slot(L.GIVEN_B)}, freeA = ${slot(L.GIVEN_FREE)};`,
     `  ${constant} perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];`,
     `  ${constant} off = ${device(L.GATE_OFF_V)}, reverse = ${device(L.REVERSE_A)}, rateD = ${device(L.INVERSE_NVT)}, onD = ${device(L.JUNCTION_ON_V)};`,
     `  ${constant} clampA = ${device(L.CLAMP_A)}, clampRate = ${device(L.CLAMP_INVERSE_NVT)}, clampOn = ${device(L.CLAMP_ON_V)}, grading = ${device(L.GRADING)};`,
@@ -293,7 +293,8 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   body.push(...(law === 'square' ? squareSolution(aI, bI, places, slot, language) : newtonSolution(law, aI, bI, places, slot, language)));
   body.push(
     'if (vs > on || vd > on) {',
-    `  ${conductorName(law)}(c, t, ${places}, ${all.junction}, s, ${slots}, a, b, I);`,
+    `  ${slot(L.GIVEN_A)} = a; ${slot(L.GIVEN_B)} = b; ${slot(L.GIVEN_FREE)} = I;`,
+    `  ${conductorName(law)}(c, t, ${places}, ${all.junction}, s, ${slots});`,
     `  I = ${slot(L.CHANNEL_A)}; S = ${slot(L.JUNCTION_S)}; D = ${slot(L.JUNCTION_D)}; vs = ${slot(L.OVERDRIVE_S)}; vd = ${slot(L.OVERDRIVE_D)};`,
     '}',
     'I += J;',
@@ -351,7 +352,8 @@ function exponential(v: string, on: string, x: string, name: string, reverse: st
   return [
     `    if (${v} > ${on}) {`,
     `      ${constant} x = ${x};`,
-    `      ${name} = ${name} > 0 && x < 1e-3 && x > -1e-3 ? ${name} * (1 + x * (1 + x * (0.5 + x * ${1 / 6}))) : ${reverse} * exp((${v} + off) * ${rate});`,
+    `      if (${name} > 0 && x < 1e-3 && x > -1e-3) ${name} = ${name} * (1 + x * (1 + x * (0.5 + x * ${1 / 6})));`,
+    `      else { s[n + ${L.POWER}] = (${v} + off) * ${rate}; expAt(s, n + ${L.POWER}); ${name} = ${reverse} * s[n + ${L.POWER}]; }`,
     `    } else ${name} = 0;`,
   ];
 }

@@ -48,7 +48,10 @@ test('Newton at the ports finds what the bisection behind it finds, to 1e-9 of t
       const newton = new Float64Array(L.STATE_SLOTS);
       const halved = new Float64Array(L.STATE_SLOTS);
       searched(c, numbers.table, device, aI, bI, a, b, newton, L.TERM_S);
-      CONDUCTORS[numbers.law](c, numbers.table, device, aI, bI, junction, newton, 0, a, b, newton[L.TERM_S]);
+      newton[L.GIVEN_A] = a;
+      newton[L.GIVEN_B] = b;
+      newton[L.GIVEN_FREE] = newton[L.TERM_S];
+      CONDUCTORS[numbers.law](c, numbers.table, device, aI, bI, junction, newton, 0);
       if (newton[L.FALLBACKS] > 0 || c[bI] < 0) continue;
       bisect(c, numbers.table, device, aI, bI, junction, halved, 0, a, b);
       const allowed = 1e-9 * (1 + Math.abs(a) + Math.abs(b));
