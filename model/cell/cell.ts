@@ -4,9 +4,8 @@
  */
 import type { Device, Law } from '../design/types.ts';
 import { type LawConstants, lawConstants } from '../device/law.ts';
-import { smoothTable, TERMS } from '../device/table.ts';
+import { smoothTable } from '../device/table.ts';
 import { atTemperature, thermalVoltage } from '../device/temperature.ts';
-import { log } from '../device/math.ts';
 import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
@@ -16,11 +15,23 @@ import { GRADUAL_CONDUCTOR, GRADUAL_KERNELS } from './kernels/gradual.ts';
 import { SMOOTH_CONDUCTOR, SMOOTH_KERNELS } from './kernels/smooth.ts';
 import { SQUARE_CONDUCTOR, SQUARE_KERNELS } from './kernels/square.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
-import { createReduction, discretise, memoryColumns, type Reduction, respond, respondAtRest, stepColumns } from './reduce.ts';
-
-/** Below this many nVT, and where less than this flows above it, a junction carries its reverse current and no more. */
-const OFF_BELOW = -10;
-const LEFT_OUT_A = 1e-15;
+import {
+  BARRIER_V,
+  CLAMP_A,
+  CLAMP_NVT_V,
+  DEVICE_VALUES,
+  deviceValue,
+  GATE_OFF_V,
+  LAMBDA,
+  NVT_V,
+  packRest,
+  packStep,
+  READING_ENOUGH_V,
+  REVERSE_A,
+  SCALE,
+  WIDTH_V,
+} from './pack.ts';
+import { createReduction, discretise, type Reduction, respond, respondAtRest } from './reduce.ts';
 
 const KERNELS = { square: SQUARE_KERNELS, gradual: GRADUAL_KERNELS, smooth: SMOOTH_KERNELS };
 const CONDUCTORS = { square: SQUARE_CONDUCTOR, gradual: GRADUAL_CONDUCTOR, smooth: SMOOTH_CONDUCTOR };
@@ -30,25 +41,10 @@ const TABLE_BEYOND_V = 1.5;
 const SHORTEST_TABLE_Z = 32;
 const LONGEST_TABLE_Z = 512;
 
-/** The device's movable values, after the elements'. */
-const SCALE = 0;
-const GATE_OFF_V = 1;
-const REVERSE_A = 2;
-const NVT_V = 3;
-const LAMBDA = 4;
-/** W of the gradual channel, T of the smooth law, V. */
-const WIDTH_V = 5;
-/** Reverse current of the gate clamp, 0 where there is none, and its nVT. */
-const CLAMP_A = 6;
-const CLAMP_NVT_V = 7;
-const BARRIER_V = 8;
-export const DEVICE_VALUES = 9;
 const NOTHING = new Float64Array(0);
 
-/** Newton's last step, V, and the current that it may leave, A, half the channel's curvature times its square. In readings rounding only. */
+/** Newton's last step while playing, V. */
 const PLAYING_ENOUGH_V = 1e-6;
-const READING_ENOUGH_V = 1e-9;
-const ENOUGH_A = 1e-13;
 
 /** Plain numbers, structured-cloneable. `values` are the elements' movable values, then the device's. */
 export interface CellNumbers {
@@ -320,140 +316,6 @@ export function gateConducts(cell: Cell, amperes: number): boolean {
   return cell.state[cell.slots + L.JUNCTION_S] > amperes || cell.state[cell.slots + L.JUNCTION_D] > amperes;
 }
 
-function deviceValue(cell: Cell, index: number): number {
-  return cell.values[cell.numbers.plan.values.length + index];
-}
-
-function packStep(cell: Cell): void {
-  const n = cell.stateCount;
-  const { target: c, reduction } = cell;
-  const { polarity, plan } = cell.numbers;
-  const row = L.rowLayout(n);
-  const all = L.coefficientLayout(n);
-  const columns = stepColumns(n, plan.noisy.length);
-  const { step, response } = reduction;
-  for (let r = 0; r < n + 2; r++) {
-    const from = r * columns.width;
-    const to = r * row.width;
-    const sign = r < 2 ? polarity : 1;
-    for (let k = 0; k < n; k++) c[to + k] = sign * step[from + k];
-    for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * step[from + columns.newU + k];
-    const j = from + columns.newJ;
-    packCurrents(cell, c, to, r, row, all, sign * polarity * step[j], sign * polarity * step[j + 1]);
-    c[to + row.constant] += sign * step[from + columns.constant] - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
-  }
-  const from = (n + 2) * plan.width;
-  const to = all.outputRow * row.width;
-  for (let k = 0; k < n + 2; k++) c[to + k] = response[from + k];
-  packCurrents(cell, c, to, all.outputRow, row, all, polarity * response[from + n + CHANNEL], polarity * response[from + n + GATE_DRAIN]);
-  c[to + row.constant] += response[from + n + CONSTANT];
-  packMemory(cell);
-  packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
-  packGrading(cell, c, all.device);
-}
-
-/** The gate's capacitances where they fall with reverse voltage: then every sample is solved by the ports. */
-function packGrading(cell: Cell, c: Float64Array, at: number): void {
-  const { grading, gateSourceAt, gateDrainAt } = cell.numbers;
-  const farads = (index: number) => (index < 0 ? 0 : cell.values[index]);
-  c[at + L.GRADING] = grading;
-  c[at + L.BARRIER_V] = deviceValue(cell, BARRIER_V);
-  c[at + L.STEP_S] = farads(gateSourceAt) / cell.stepSec;
-  c[at + L.STEP_D] = farads(gateDrainAt) / cell.stepSec;
-  if (grading > 0) c[at + L.ON_V] = Number.NEGATIVE_INFINITY;
-}
-
-/** A row's weights of the port currents, and as its constant what the steady reverse currents add. */
-function packCurrents(
-  cell: Cell,
-  c: Float64Array,
-  to: number,
-  r: number,
-  row: ReturnType<typeof L.rowLayout>,
-  all: ReturnType<typeof L.coefficientLayout>,
-  byChannel: number,
-  byD: number,
-): void {
-  const byS = byChannel + byD;
-  c[to + row.current] = byChannel;
-  c[to + row.constant] = steadyCurrents(cell, byS, byD);
-  c[all.junction + r * L.JUNCTION_WIDTH + L.BY_S] = byS;
-  c[all.junction + r * L.JUNCTION_WIDTH + L.BY_D] = byD;
-}
-
-/** The memory rows; old reverse currents, which are as steady as the new ones, go into the constants of the rows through their memory. */
-function packMemory(cell: Cell): void {
-  const n = cell.stateCount;
-  const { target: c, reduction } = cell;
-  const { polarity } = cell.numbers;
-  const row = L.rowLayout(n);
-  const past = L.memoryLayout(n);
-  const all = L.coefficientLayout(n);
-  const from = memoryColumns(n);
-  for (let i = 0; i < n; i++) {
-    const at = i * from.width;
-    const to = all.memory + i * past.width;
-    for (let k = 0; k < n + 2; k++) c[to + k] = reduction.memory[at + k];
-    const byChannel = polarity * reduction.memory[at + from.oldJ];
-    const byD = polarity * reduction.memory[at + from.oldJ + 1];
-    const byS = byChannel + byD;
-    c[to + past.oldI] = byChannel;
-    c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_S] = byS;
-    c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_D] = byD;
-    const steady = steadyCurrents(cell, byS, byD);
-    for (let r = 0; r < n + 2; r++) c[r * row.width + row.constant] += c[r * row.width + i] * steady;
-  }
-}
-
-/** What the reverse currents of the junctions and the clamp, which always flow, add to a row with these weights. */
-function steadyCurrents(cell: Cell, weightS: number, weightD: number): number {
-  const reverseA = deviceValue(cell, REVERSE_A);
-  return -(reverseA + deviceValue(cell, CLAMP_A)) * weightS - reverseA * weightD;
-}
-
-function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: number): void {
-  const { law, exponent, table } = cell.numbers;
-  const scale = deviceValue(cell, SCALE);
-  const nVt = deviceValue(cell, NVT_V);
-  const clampNVt = deviceValue(cell, CLAMP_NVT_V);
-  const reverseA = deviceValue(cell, REVERSE_A);
-  const clampA = deviceValue(cell, CLAMP_A);
-  const widthV = deviceValue(cell, WIDTH_V);
-  const offV = deviceValue(cell, GATE_OFF_V);
-  c[at + L.LAW] = L.LAW_NUMBER[law];
-  c[at + L.POLARITY] = cell.numbers.polarity;
-  c[at + L.GATE_OFF_V] = offV;
-  c[at + L.JUNCTION_ON_V] = conductsFrom(reverseA, nVt) - offV;
-  c[at + L.CLAMP_ON_V] = conductsFrom(clampA, clampNVt) - offV;
-  c[at + L.ON_V] = Math.min(c[at + L.JUNCTION_ON_V], c[at + L.CLAMP_ON_V]);
-  c[at + L.REVERSE_A] = reverseA;
-  c[at + L.INVERSE_NVT] = 1 / nVt;
-  c[at + L.CLAMP_A] = clampA;
-  c[at + L.CLAMP_INVERSE_NVT] = 1 / clampNVt;
-  c[at + L.LAMBDA] = deviceValue(cell, LAMBDA);
-  c[at + L.SCALE] = law === 'gradual' ? (scale * widthV) / 3 : scale;
-  c[at + L.INVERSE_WIDTH] = 1 / widthV;
-  c[at + L.SLOPE] = law === 'gradual' ? scale : scale / widthV;
-  c[at + L.BENT] = scale * (aI - bI) * (aI + bI);
-  c[at + L.FALL] = -2 * scale * aI;
-  c[at + L.RISE] = 2 * scale * bI;
-  c[at + L.PIECES] = table.length / TERMS;
-  c[at + L.EXPONENT] = exponent;
-  c[at + L.ENOUGH_V] = Math.min(cell.numbers.enoughV, Math.sqrt((2 * ENOUGH_A) / mostCurvature(law, scale, widthV, offV, exponent)));
-}
-
-/** A bound on F″, A/V², but where the gradual channel's slope ends. */
-function mostCurvature(law: Law, scale: number, widthV: number, offV: number, exponent: number): number {
-  if (law === 'square') return 2 * scale;
-  if (law === 'gradual') return (2 * scale) / widthV;
-  return ((exponent * scale) / (widthV * widthV)) * (exponent > 2 ? Math.max(1, -offV / widthV) : 1);
-}
-
-/** The voltage below which a junction's current above its reverse current is left out, V. */
-function conductsFrom(reverseA: number, nVtV: number): number {
-  return reverseA > 0 ? Math.min(OFF_BELOW, log(LEFT_OUT_A / reverseA)) * nVtV : Number.POSITIVE_INFINITY;
-}
-
 /**
  * Puts the cell at its operating point for steady `audioV` and `controlV`: every capacitor's current is zero. Returns the output, V.
  * False voltages cannot result: where the direct-current network is singular the states are left as they are and NaN is returned.
@@ -493,32 +355,4 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
     restCharge(cell.target, device, overdriveV(cell, 'drain'), state, cell.slots + L.CHARGES_D);
   }
   return rest.output[0];
-}
-
-/** The direct-current network as the coefficients of a cell without states. */
-function packRest(cell: Cell): void {
-  const { rest, reduction, stateCount: n } = cell;
-  const { polarity } = cell.numbers;
-  const row = L.rowLayout(0);
-  const all = L.coefficientLayout(0);
-  const c = rest.coefficients;
-  for (let r = 0; r < 3; r++) {
-    const from = (n + r) * DRIVES;
-    const to = r * row.width;
-    const sign = r < 2 ? polarity : 1;
-    for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * reduction.rest[from + k];
-    packCurrents(
-      cell,
-      c,
-      to,
-      r,
-      row,
-      all,
-      sign * polarity * reduction.rest[from + CHANNEL],
-      sign * polarity * reduction.rest[from + GATE_DRAIN],
-    );
-    c[to + row.constant] += sign * reduction.rest[from + CONSTANT] - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
-  }
-  packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
-  c[all.device + L.ENOUGH_V] = READING_ENOUGH_V;
 }
