@@ -30,7 +30,7 @@ export function Heard() {
           </button>
         ))}
       </span>
-      , <Matched /> at{' '}
+      <Matched /> at{' '}
       <EditableValue
         label="Listening level"
         short="Level"
