@@ -2,13 +2,16 @@
  * The chains of one processor, each in its slot: up to four variants and the setting before the last change, all fed by the same input. Every
  * chain and the bypass leave as late as the latest of them. A chain that is set, moved or dropped leaves the others as they are.
  */
-import { type Chain, createChain, moveChain, processChain, warmChain } from '../model/chain/chain.ts';
+import { type Chain, createChain, moveChain, processChain, setResidual, warmChain } from '../model/chain/chain.ts';
 import type { ChainNumbers } from '../model/chain/compile.ts';
+import type { ResidualPart } from '../model/chain/residual.ts';
 import { createDelay, type Delay, LONGEST_DELAY, processDelay, setDelay } from './delay.ts';
+import { createJoin, type Join, joinAnew, processJoin } from './join.ts';
 import { SLOTS } from './protocol.ts';
 
 /** A new chain runs unheard for this long, so that its filters are full. */
 const LEAD_SEC = 0.01;
+const NO_LINES: readonly Float32Array[] = [];
 
 export interface Lane {
   readonly chain: Chain;
@@ -29,6 +32,10 @@ export interface Bank {
   readonly channels: number;
   readonly sampleRateHz: number;
   bypassLines: Float32Array[];
+  /** The slot whose cells leave what they add in `residualLines`, −1 for none. */
+  residualSlot: number;
+  residualLines: Float32Array[];
+  readonly join: Join;
   /** Of the latest lane, whole. */
   latencySamples: number;
 }
@@ -46,7 +53,35 @@ export function createBank(all: readonly (ChainNumbers | null)[], channels: numb
     if (lane !== null) lane.delay.to = lane.delay.wanted = latencySamples - Math.round(lane.chain.latencySamples);
   }
   const bypass = createDelay(channels, latencySamples, sampleRateHz);
-  return { lanes, bypass, channels, sampleRateHz, bypassLines: blocks(channels, 128), latencySamples };
+  return {
+    lanes,
+    bypass,
+    channels,
+    sampleRateHz,
+    bypassLines: blocks(channels, 128),
+    residualSlot: -1,
+    residualLines: blocks(channels, 128),
+    join: createJoin(channels, sampleRateHz),
+    latencySamples,
+  };
+}
+
+/** From now on the chain of a slot leaves this part of what its cells add; the chain that did so before no longer does. Allocates. */
+export function startResidual(bank: Bank, slot: number, part: ResidualPart): void {
+  const lane = bank.lanes[slot];
+  if (lane === null) throw new RangeError(`Slot ${slot} is empty; expected one with a chain`);
+  if (bank.residualSlot === slot && lane.chain.residual === part) return;
+  endResidual(bank);
+  setResidual(lane.chain, part);
+  bank.residualSlot = slot;
+}
+
+/** Allocates nothing. */
+export function endResidual(bank: Bank): void {
+  joinAnew(bank.join);
+  const lane = bank.residualSlot < 0 ? null : bank.lanes[bank.residualSlot];
+  if (lane !== null) setResidual(lane.chain, null);
+  bank.residualSlot = -1;
 }
 
 /** Moves the chain of a slot, or makes one: it takes over the phase of `like`, so that a copy sounds the same. Throws a RangeError and changes nothing. */
@@ -82,13 +117,17 @@ export function checkSlot(bank: Bank, slot: number): void {
 /** One block through every chain. Allocates only where the block's length differs from the last one's. */
 export function processBank(bank: Bank, inputs: readonly Float32Array[]): void {
   const frames = inputs[0].length;
-  if (bank.bypassLines[0].length !== frames) bank.bypassLines = blocks(bank.channels, frames);
+  if (bank.bypassLines[0].length !== frames) {
+    bank.bypassLines = blocks(bank.channels, frames);
+    bank.residualLines = blocks(bank.channels, frames);
+  }
+  if (bank.residualSlot < 0) silence(bank.residualLines);
   bank.latencySamples = latestOf(bank.lanes);
   for (let slot = 0; slot < bank.lanes.length; slot++) {
     const lane = bank.lanes[slot];
     if (lane === null) continue;
     if (lane.lines[0].length !== frames) lane.lines = blocks(bank.channels, frames);
-    processChain(lane.chain, inputs, lane.lines);
+    processChain(lane.chain, inputs, lane.lines, null, slot === bank.residualSlot ? bank.residualLines : NO_LINES);
     if (lane.chain.readings.outputPeak > lane.peak) lane.peak = lane.chain.readings.outputPeak;
     setDelay(lane.delay, bank.latencySamples - Math.round(lane.chain.latencySamples));
     processDelay(lane.delay, lane.lines, lane.lines);
@@ -96,6 +135,11 @@ export function processBank(bank: Bank, inputs: readonly Float32Array[]): void {
   }
   setDelay(bank.bypass, bank.latencySamples);
   processDelay(bank.bypass, inputs, bank.bypassLines);
+  processJoin(bank.join, bank.residualLines);
+}
+
+function silence(lines: readonly Float32Array[]): void {
+  for (let c = 0; c < lines.length; c++) lines[c].fill(0);
 }
 
 function createLane(chain: Chain, lead: number, channels: number, sampleRateHz: number): Lane {

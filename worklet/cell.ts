@@ -3,13 +3,13 @@
  * that is played instead.
  */
 import type { Bank, Lane } from './bank.ts';
-import { checkSlot, createBank, dropLane, processBank, setLane } from './bank.ts';
+import { checkSlot, createBank, dropLane, endResidual, processBank, setLane, startResidual } from './bank.ts';
 import { beginBlock, createLoad, endBlock } from './load.ts';
 import type { Measured, Meter } from './meter.ts';
 import { createMeter, processMeter, returnReport } from './meter.ts';
 import { choose, createMix, processMix, setGains } from './mix.ts';
 import { createMonitor, processMonitor, setCeiling, setGain, setMuted } from './monitor.ts';
-import type { CellOptions, FromCell, Heard, Match, ToCell } from './protocol.ts';
+import type { CellOptions, FromCell, Heard, Match, ResidualChoice, ToCell } from './protocol.ts';
 import { PREVIOUS_SLOT, SLOTS } from './protocol.ts';
 import type { Recorder } from './recorder.ts';
 import { createRecorder, endRecording, processRecorder, returnChunk, startRecording } from './recorder.ts';
@@ -17,7 +17,8 @@ import { createRecorder, endRecording, processRecorder, returnChunk, startRecord
 /** Sources of the mix after the slots. */
 const BYPASS = SLOTS;
 const ASIDE = SLOTS + 1;
-const SOURCES = SLOTS + 2;
+const RESIDUAL = SLOTS + 2;
+const SOURCES = SLOTS + 3;
 
 export class CellProcessor extends AudioWorkletProcessor {
   private readonly measured: Measured;
@@ -28,17 +29,22 @@ export class CellProcessor extends AudioWorkletProcessor {
   private readonly sources: (readonly Float32Array[])[];
   private focus: number;
   private heard: Heard;
+  private match: Match;
+  private residual: ResidualChoice;
   private silence = new Float32Array(128);
   private alive = true;
 
   constructor(options: { processorOptions: CellOptions }) {
     super();
-    const { chains, focus, channels, heard, match, gain, ceilingPeak, muted } = options.processorOptions;
+    const { chains, focus, channels, heard, match, residual, gain, ceilingPeak, muted } = options.processorOptions;
     const bank = createBank(chains, channels, sampleRate);
     this.focus = checkFilled(bank, focus);
     this.heard = heard;
+    this.match = match;
+    this.residual = residual;
+    if (residual.part !== null) startResidual(bank, focus, residual.part);
     const mix = createMix(SOURCES, sourceOf(bank, focus, heard), sampleRate);
-    setGains(mix, gainsOf(match));
+    setGains(mix, gainsOf(match, residual));
     mix.gain.set(mix.gainTo);
     const monitor = createMonitor(gain, ceilingPeak, muted, sampleRate);
     this.measured = { bank, mix, monitor, load: createLoad() };
@@ -79,9 +85,14 @@ export class CellProcessor extends AudioWorkletProcessor {
       const lane = bank.lanes[slot];
       if (lane === null) continue;
       this.sources[slot] = lane.lines;
-      if (lane.leaving && mix.weight[slot] === 0) bank.lanes[slot] = null;
+      if (lane.leaving && mix.weight[slot] === 0) {
+        if (bank.residualSlot === slot) endResidual(bank);
+        bank.lanes[slot] = null;
+      }
     }
     this.sources[BYPASS] = bank.bypassLines;
+    this.sources[RESIDUAL] = bank.residualLines;
+    if (this.residual.part === null && bank.residualSlot >= 0 && mix.weight[RESIDUAL] === 0) endResidual(bank);
   }
 
   private laneInFocus(): Lane {
@@ -118,7 +129,13 @@ export class CellProcessor extends AudioWorkletProcessor {
         this.turnTo(this.focus, message.heard);
         return;
       case 'match':
-        setGains(mix, gainsOf(message.match));
+        setGains(mix, gainsOf(message.match, this.residual));
+        this.match = message.match;
+        return;
+      case 'residual':
+        setGains(mix, gainsOf(this.match, message.residual));
+        this.residual = message.residual;
+        this.followFocus();
         return;
       case 'gain':
         setGain(monitor, message.gain);
@@ -153,6 +170,13 @@ export class CellProcessor extends AudioWorkletProcessor {
     choose(mix, sourceOf(bank, focus, heard));
     this.focus = focus;
     this.heard = heard;
+    this.followFocus();
+  }
+
+  /** The residual is that of the chain in focus; one that is no longer wanted goes on until it is not heard. */
+  private followFocus(): void {
+    const { part } = this.residual;
+    if (part !== null) startResidual(this.measured.bank, this.focus, part);
   }
 
   private tell(message: FromCell): void {
@@ -160,8 +184,8 @@ export class CellProcessor extends AudioWorkletProcessor {
   }
 }
 
-function gainsOf({ slots, bypass }: Match): number[] {
-  return [...slots, bypass, 1];
+function gainsOf({ slots, bypass }: Match, { gain }: ResidualChoice): number[] {
+  return [...slots, bypass, 1, gain];
 }
 
 /** Throws a RangeError where what is to be heard is not there. */
@@ -173,11 +197,13 @@ function sourceOf(bank: Bank, focus: number, heard: Heard): number {
       return checkFilled(bank, PREVIOUS_SLOT);
     case 'bypass':
       return BYPASS;
+    case 'residual':
+      return RESIDUAL;
     case 'aside':
       return ASIDE;
     default:
       heard satisfies never;
-      throw new RangeError(`heard is “${heard}”; expected cell, previous, bypass or aside`);
+      throw new RangeError(`heard is “${heard}”; expected cell, previous, bypass, residual or aside`);
   }
 }
 

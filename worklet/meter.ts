@@ -24,7 +24,8 @@ const INPUT_PEAK_V = 3;
 const DRAIN_PEAK_V = 4;
 const FEEDTHROUGH_PEAK_V = 5;
 const SAMPLES = 6;
-const TOTALS = 7;
+const RESIDUAL_SQUARES = 7;
+const TOTALS = 8;
 
 export interface Post {
   postMessage(message: unknown, transfer: Transferable[]): void;
@@ -70,6 +71,7 @@ export function processMeter(
 ): void {
   const { totals } = meter;
   for (let c = 0; c < outputs.length; c++) addLevels(totals, inputs[c], outputs[c]);
+  if (measured.bank.residualSlot >= 0) addResidual(totals, measured.bank.residualLines);
   totals[INPUT_PEAK_V] = Math.max(totals[INPUT_PEAK_V], readings.inputPeakV);
   totals[DRAIN_PEAK_V] = Math.max(totals[DRAIN_PEAK_V], readings.drainPeakV);
   totals[FEEDTHROUGH_PEAK_V] = Math.max(totals[FEEDTHROUGH_PEAK_V], readings.feedthroughPeakV);
@@ -114,6 +116,12 @@ function addLevels(totals: Float64Array, input: Float32Array, output: Float32Arr
   totals[SAMPLES] += output.length;
 }
 
+function addResidual(totals: Float64Array, lines: readonly Float32Array[]): void {
+  let squares = totals[RESIDUAL_SQUARES];
+  for (let c = 0; c < lines.length; c++) for (let n = 0; n < lines[c].length; n++) squares += lines[c][n] * lines[c][n];
+  totals[RESIDUAL_SQUARES] = squares;
+}
+
 function takeSlot(meter: Meter): boolean {
   meter.slot = meter.free.indexOf(true);
   if (meter.slot < 0) return false;
@@ -128,6 +136,7 @@ function send(meter: Meter, report: Report, readings: ChainReadings, { bank, mix
   report.outputPeak = totals[OUTPUT_PEAK];
   report.outputSquare = totals[OUTPUT_SQUARES] / totals[SAMPLES];
   report.heardSquare = monitor.totals[HEARD_SQUARES] / totals[SAMPLES];
+  report.residualSquare = totals[RESIDUAL_SQUARES] / totals[SAMPLES];
   report.inputPeakV = totals[INPUT_PEAK_V];
   report.drainPeakV = totals[DRAIN_PEAK_V];
   report.feedthroughPeakV = totals[FEEDTHROUGH_PEAK_V];
@@ -163,6 +172,7 @@ function createReport(slot: number, frames: number): Report {
     heardPeak: 0,
     outputSquare: 0,
     heardSquare: 0,
+    residualSquare: 0,
     controlV: 0,
     gateSourceV: 0,
     inputPeakV: 0,

@@ -9,8 +9,8 @@
 const FADE_SEC = 0.01;
 /** A gain crosses 0 to 1 in this time. */
 const GAIN_SEC = 0.03;
-/** 40 dB. */
-export const HIGHEST_GAIN = 100;
+/** 80 dB: what a cell adds may be that far down. */
+export const HIGHEST_GAIN = 10000;
 
 export interface Mix {
   readonly weight: Float64Array;
@@ -54,7 +54,7 @@ export function choose(mix: Mix, source: number): void {
 export function setGains(mix: Mix, gains: readonly number[]): void {
   if (gains.length !== mix.gain.length) throw new RangeError(`There are ${gains.length} gains; expected ${mix.gain.length}`);
   const bad = gains.find((gain) => !(gain >= 0 && gain <= HIGHEST_GAIN));
-  if (bad !== undefined) throw new RangeError(`A matching gain is ${bad}; expected 0 to ${HIGHEST_GAIN}`);
+  if (bad !== undefined) throw new RangeError(`A gain is ${bad}; expected 0 to ${HIGHEST_GAIN}`);
   mix.gainTo.set(gains);
 }
 

@@ -3,6 +3,7 @@
  * Arrays in `report` and `chunk` are transferred to the page and must come back by `return report` and `return chunk`.
  */
 import type { ChainNumbers } from '../model/chain/compile.ts';
+import type { ResidualPart } from '../model/chain/residual.ts';
 
 export const CELL_PROCESSOR = 'fettle-cell';
 export const PASS_PROCESSOR = 'fettle-pass';
@@ -15,10 +16,16 @@ export const SLOTS = 5;
 export const PREVIOUS_SLOT = 4;
 
 /**
- * What the listener hears: the chain in focus, the setting before the last change, the input as late as the chains, or the processor's second
- * input (a take being played).
+ * What the listener hears: the chain in focus, the setting before the last change, the input as late as the chains, what the cells of the chain in
+ * focus add, or the processor's second input (a take being played).
  */
-export type Heard = 'cell' | 'previous' | 'bypass' | 'aside';
+export type Heard = 'cell' | 'previous' | 'bypass' | 'residual' | 'aside';
+
+/** The part of what the cells of the chain in focus add that is computed, null for none, and the gain it is heard with: linear, 0 to 10 000. */
+export interface ResidualChoice {
+  readonly part: ResidualPart | null;
+  readonly gain: number;
+}
 
 /** Gains that bring what can be heard to one loudness: one for each slot, and the bypass's. Linear, 0 to 100. */
 export interface Match {
@@ -34,6 +41,7 @@ export interface CellOptions {
   readonly channels: number;
   readonly heard: Heard;
   readonly match: Match;
+  readonly residual: ResidualChoice;
   readonly gain: number;
   readonly ceilingPeak: number;
   readonly muted: boolean;
@@ -48,6 +56,7 @@ export type ToCell =
   | { readonly type: 'focus'; readonly slot: number }
   | { readonly type: 'hear'; readonly heard: Heard }
   | { readonly type: 'match'; readonly match: Match }
+  | { readonly type: 'residual'; readonly residual: ResidualChoice }
   | { readonly type: 'gain'; readonly gain: number }
   | { readonly type: 'ceiling'; readonly peak: number }
   | { readonly type: 'mute'; readonly on: boolean }
@@ -87,6 +96,8 @@ export interface Report {
   /** Mean squares of the output and of what left for the loudspeakers, all channels. */
   outputSquare: number;
   heardSquare: number;
+  /** Mean square of the residual before its gain, all channels; 0 while there is none. */
+  residualSquare: number;
   /** The readings of the chain in focus: the voltages of the last block, the peaks of all. */
   controlV: number;
   gateSourceV: number;

@@ -184,6 +184,11 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
   return cell;
 }
 
+/** A cell that shares the coefficients, moving ones too, and has a state of its own, so far the same. Allocates. */
+export function copyOf(cell: Cell): Cell {
+  return { ...cell, state: Float64Array.from(cell.state) };
+}
+
 /** Puts new values in force; the state stays as it is. False, with the old coefficients kept, when the network would be singular. */
 export function loadValues(cell: Cell, values: Float64Array): boolean {
   if (!aimAt(cell, values, 1)) return false;

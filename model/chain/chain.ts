@@ -6,7 +6,8 @@ import { gateSourceV } from '../cell/cell.ts';
 import { quietControlV } from '../control/control.ts';
 import type { ChainNumbers } from './compile.ts';
 import { oversamplingDelay } from './oversample.ts';
-import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, type Voice } from './voice.ts';
+import type { ResidualPart } from './residual.ts';
+import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, setVoiceResidual, type Voice } from './voice.ts';
 
 const FADE_SEC = 0.03;
 /** A new voice runs unheard for this long before it is faded in, so that its filters are full. */
@@ -29,6 +30,8 @@ export interface ChainReadings {
   faults: number;
 }
 
+const NO_LINES: readonly Float32Array[] = [];
+
 export interface Chain {
   numbers: ChainNumbers;
   latencySamples: number;
@@ -42,6 +45,10 @@ export interface Chain {
   readonly external: Float64Array;
   readonly outputs: readonly Float64Array[];
   readonly fadeOutputs: readonly Float64Array[];
+  /** The part of what the cells add that is left beside the output; null for none. */
+  residual: ResidualPart | null;
+  readonly residuals: readonly Float64Array[];
+  readonly fadeResiduals: readonly Float64Array[];
 }
 
 /** A chain at its operating point. Throws a RangeError when a cell's network is singular. */
@@ -68,7 +75,17 @@ export function createChain(numbers: ChainNumbers): Chain {
     external: new Float64Array(LONGEST_BLOCK),
     outputs: buffers(),
     fadeOutputs: buffers(),
+    residual: null,
+    residuals: buffers(),
+    fadeResiduals: buffers(),
   };
+}
+
+/** From now on the chain leaves this part of what its cells add beside its output; null ends that. Allocates. */
+export function setResidual(chain: Chain, part: ResidualPart | null): void {
+  chain.residual = part;
+  setVoiceResidual(chain.voice, part);
+  if (chain.next !== null) setVoiceResidual(chain.next, part);
 }
 
 /**
@@ -96,17 +113,22 @@ export function moveChain(chain: Chain, numbers: ChainNumbers): void {
 
 function startFade(chain: Chain, next: Voice): void {
   inherit(next, chain.voice);
+  setVoiceResidual(next, chain.residual);
   chain.next = next;
   chain.fadeDone = -Math.round(LEAD_SEC * next.numbers.sampleRateHz);
   chain.latencySamples = oversamplingDelay(next.numbers.oversampling, next.numbers.filters);
 }
 
-/** Any number of frames. Missing inputs are silence; `external` is the recorded control, where the design has one, silence when missing. Never throws, allocates nothing. */
+/**
+ * Any number of frames. Missing inputs are silence; `external` is the recorded control, where the design has one, silence when missing;
+ * `residuals` takes what `setResidual` asked for, one line for each channel. Never throws, allocates nothing.
+ */
 export function processChain(
   chain: Chain,
   inputs: readonly Float32Array[],
   outputs: readonly Float32Array[],
   external: Float32Array | null = null,
+  residuals: readonly Float32Array[] = NO_LINES,
 ): void {
   const { readings } = chain;
   const length = outputs.length > 0 ? outputs[0].length : 0;
@@ -119,6 +141,9 @@ export function processChain(
     const count = Math.min(LONGEST_BLOCK, length - start, samplesToFadeEnd(chain));
     takeExternal(chain, external, start, count);
     processBlock(chain, inputs, outputs, start, count);
+    for (let channel = 0; channel < residuals.length; channel++) {
+      for (let i = 0; i < count; i++) residuals[channel][start + i] = chain.residual === null ? 0 : chain.residuals[channel][i];
+    }
     start += count;
   }
   readings.gateSourceV = gateSourceV(chain.voice.quiet.cell);
@@ -136,7 +161,7 @@ function fadeSamples(next: Voice): number {
 function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[], start: number, count: number): void {
   const { readings, voice } = chain;
   let sound = takeInputs(chain, inputs, start, count);
-  sound = processVoice(voice, chain.inputs, chain.external, chain.outputs, count) && sound;
+  sound = processVoice(voice, chain.inputs, chain.external, chain.outputs, chain.residuals, count) && sound;
   if (chain.next) sound = crossfade(chain, chain.next, count) && sound;
   for (let channel = 0; channel < outputs.length; channel++) {
     const from = chain.outputs[Math.min(channel, chain.outputs.length - 1)];
@@ -184,16 +209,10 @@ function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number
 }
 
 function crossfade(chain: Chain, next: Voice, count: number): boolean {
-  const sound = processVoice(next, chain.inputs, chain.external, chain.fadeOutputs, count);
+  const sound = processVoice(next, chain.inputs, chain.external, chain.fadeOutputs, chain.fadeResiduals, count);
   const total = fadeSamples(next);
-  for (let channel = 0; channel < chain.outputs.length; channel++) {
-    const out = chain.outputs[channel];
-    const incoming = chain.fadeOutputs[channel];
-    for (let i = 0; i < count; i++) {
-      const share = Math.min(1, Math.max(0, (chain.fadeDone + i + 1) / total));
-      out[i] += share * (incoming[i] - out[i]);
-    }
-  }
+  mixIn(chain, chain.outputs, chain.fadeOutputs, total, count);
+  if (chain.residual !== null) mixIn(chain, chain.residuals, chain.fadeResiduals, total, count);
   chain.fadeDone += count;
   if (chain.fadeDone >= total) {
     chain.voice = next;
@@ -203,6 +222,15 @@ function crossfade(chain: Chain, next: Voice, count: number): boolean {
     if (pending) startFade(chain, pending);
   }
   return sound;
+}
+
+function mixIn({ fadeDone }: Chain, lines: readonly Float64Array[], incoming: readonly Float64Array[], total: number, count: number): void {
+  for (let channel = 0; channel < lines.length; channel++) {
+    for (let i = 0; i < count; i++) {
+      const share = Math.min(1, Math.max(0, (fadeDone + i + 1) / total));
+      lines[channel][i] += share * (incoming[channel][i] - lines[channel][i]);
+    }
+  }
 }
 
 const WARM_BLOCKS = 400;

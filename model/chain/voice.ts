@@ -13,6 +13,7 @@ import type { ChainNumbers } from './compile.ts';
 import { advanceSlice, createDrive, type Drive, inheritDrive, restDrive } from './drive.ts';
 import { clearSoftener, createSoftener, type Softener, soften } from './kinks.ts';
 import { clearOversampler, createOversampler, lower, type Oversampler, raise } from './oversample.ts';
+import { advanceResidual, createResidual, keepAudio, lowerResidual, type Residual, type ResidualPart, restResidual } from './residual.ts';
 
 /** Lower-rate samples that a voice takes at a time. */
 export const LONGEST_BLOCK = 128;
@@ -38,9 +39,10 @@ interface Levels {
 
 const FULL_SCALE_V = 0;
 const PER_V = 1;
+const RESIDUAL_PER_V = 2;
 
-function levelsOf(numbers: ChainNumbers): Float64Array {
-  return Float64Array.of(numbers.fullScaleV, (numbers.idealAmplifier ? numbers.amplifier[GAIN] : 1) / numbers.fullScaleV);
+function levelsOf({ fullScaleV, idealAmplifier, amplifier }: ChainNumbers): Float64Array {
+  return Float64Array.of(fullScaleV, (idealAmplifier ? amplifier[GAIN] : 1) / fullScaleV, amplifier[GAIN] / fullScaleV);
 }
 
 function standing(values: Float64Array): Levels {
@@ -100,7 +102,7 @@ export interface Voice {
   readonly drive: Drive;
   /** Raises a recorded control; null for other controls. */
   readonly external: Oversampler | null;
-  /** Full scale, V, and samples for a volt: they move at the lower rate. */
+  /** Full scale, V, and samples for a volt of the output and of the residual: they move at the lower rate. */
   readonly levels: Levels;
   readonly control: Moving;
   /** The amplifier's values, which move at the upper rate. */
@@ -113,6 +115,8 @@ export interface Voice {
    * control alone leaves at the output.
    */
   readonly quiet: Quiet;
+  /** Null unless it is asked for. */
+  residual: Residual | null;
 }
 
 function moving(values: Float64Array): Moving {
@@ -164,7 +168,13 @@ export function createVoice(numbers: ChainNumbers): Voice {
       waiting: QUIET_STEP,
       feedthroughPeakV: 0,
     },
+    residual: null,
   };
+}
+
+/** From now on the voice leaves what its cells add; null ends that. Allocates. */
+export function setVoiceResidual(voice: Voice, part: ResidualPart | null): void {
+  voice.residual = part === null ? null : createResidual(voice, part, LONGEST_BLOCK);
 }
 
 /** Starts moving to the values of `numbers`, which have the voice's shape, from wherever they are now. */
@@ -206,17 +216,18 @@ export function inherit(voice: Voice, from: Voice): void {
 }
 
 /**
- * Advances by `count` samples, at most LONGEST_BLOCK; `external` is the recorded control, used where there is one. False when a state was lost:
- * the voice is at rest again.
+ * Advances by `count` samples, at most LONGEST_BLOCK; `external` is the recorded control, used where there is one. What the cells add goes to
+ * `residuals`, where it is asked for. False when a state was lost: the voice is at rest again.
  */
 export function processVoice(
   voice: Voice,
   inputs: readonly Float64Array[],
   external: Float64Array,
   outputs: readonly Float64Array[],
+  residuals: readonly Float64Array[],
   count: number,
 ): boolean {
-  const { lanes, numbers, levels } = voice;
+  const { lanes, numbers, levels, residual } = voice;
   const upperCount = count * numbers.oversampling;
   for (let channel = 0; channel < lanes.length; channel++) {
     const first = lanes[channel].oversampler.buffers[0];
@@ -232,11 +243,13 @@ export function processVoice(
     lanes[channel].outputPeakV = 0;
     lanes[channel].lost = false;
   }
+  if (residual !== null) keepAudio(residual, voice, upperCount);
   advanceAll(voice, upperCount);
   advanceQuiet(voice, count);
   let sound = true;
   for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) sound = false;
   if (!sound) restDrive(voice.drive);
+  if (residual !== null) leaveResidual(voice, residual, residuals, sound, count);
   for (let channel = 0; channel < lanes.length; channel++) {
     if (lanes[channel].lost) putAtRest(voice, lanes[channel], upperCount);
     else fadeIn(voice, lanes[channel], upperCount);
@@ -273,12 +286,25 @@ function advanceAll(voice: Voice, upperCount: number): void {
     ramp.inSlice += 1;
     if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
     advanceSlice(voice.drive, lanes, numbers, at, at + 1);
+    if (voice.residual !== null) advanceResidual(voice.residual, voice, at, at + 1);
     finish(voice, at, at + 1);
     at += 1;
   }
   if (at === upperCount) return;
   advanceSlice(voice.drive, lanes, numbers, at, upperCount);
+  if (voice.residual !== null) advanceResidual(voice.residual, voice, at, upperCount);
   finish(voice, at, upperCount);
+}
+
+/** The residual at the lower rate, in samples; silence where a state was lost. */
+function leaveResidual(voice: Voice, residual: Residual, outputs: readonly Float64Array[], sound: boolean, count: number): void {
+  for (let channel = 0; channel < voice.lanes.length; channel++) {
+    const low = lowerResidual(residual, voice, channel, count);
+    const usable = sound && allFinite(low, count);
+    for (let i = 0; i < count; i++) outputs[channel][i] = usable ? low[i] * levelAt(voice.levels, RESIDUAL_PER_V, i) : 0;
+    if (!usable) sound = false;
+  }
+  if (!sound) restResidual(residual, quietControlV(voice.numbers.control));
 }
 
 function beginSlice(voice: Voice, fraction: number): void {

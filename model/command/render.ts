@@ -1,6 +1,7 @@
 /** `fettle render` */
 import { LARGEST_SAMPLE } from '../chain/chain.ts';
 import { renderClip } from '../chain/render.ts';
+import { RESIDUAL_PARTS, type ResidualPart } from '../chain/residual.ts';
 import { readWav, type WavClip, type WavFormat, writeWav } from '../chain/wav.ts';
 import type { Variant } from '../design/types.ts';
 import { either, shown } from '../design/wording.ts';
@@ -19,15 +20,23 @@ const CONTROL: Option = {
   about: 'recorded control, for a variant whose control.source is external',
 };
 
+const RESIDUAL: Option = {
+  name: 'residual',
+  value: 'PART',
+  about: `what the cell adds, in place of its output: ${either(RESIDUAL_PARTS)}`,
+};
+
 export const render: Command = {
   name: 'render',
   files: ['DESIGN', 'IN.wav', 'OUT.wav'],
   about: 'Puts a sound through one variant of a design.',
-  options: [VARIANT, SET, FORMAT, CONTROL],
+  options: [VARIANT, SET, FORMAT, CONTROL, RESIDUAL],
   notes: `IN is a WAV file of PCM with 16, 24 or 32 bits or of 32-bit float, mono or stereo. OUT has its sample rate, channels and number of
 frames, and no delay. Its samples are of IN's kind unless --format says otherwise; PCM is rounded to the nearest step, without dither,
 and samples beyond full scale are cut to it, counted and reported on stderr. OUT appears only when it is whole; IN is never touched.
 CONTROL has IN's sample rate and at least its frames; its first channel moves the gate: control.offsetV + control.fullScaleV × sample.
+--residual distortion is the cell less its copy without audio and its linear twin; feedthrough is that copy; noise is there though the
+design has it switched off. All are at the level that they have in OUT.
 
 ${SET_NOTES}`,
   run: runRender,
@@ -36,6 +45,7 @@ ${SET_NOTES}`,
 async function runRender(line: Line): Promise<void> {
   const [designPath, inPath, outPath] = line.words;
   const asked = askedFormat(line);
+  const residual = askedPart(line);
   const { design, variantIndex } = openSubject(designPath, line);
   const clip = openClip(inPath);
   const controlPath = controlPathOf(line, design.variants[variantIndex]);
@@ -43,7 +53,9 @@ async function runRender(line: Line): Promise<void> {
   const target = outputPath(outPath, [inPath, designPath, ...(controlPath === undefined ? [] : [controlPath])]);
   const progress = createProgress();
   const about = `${inPath} cannot be rendered with variant ${design.variants[variantIndex].name}: `;
-  const rendered = judged(about, () => renderClip(design, variantIndex, clip.channels, clip.sampleRateHz, progress.show, recorded));
+  const rendered = judged(about, () =>
+    renderClip(design, variantIndex, clip.channels, clip.sampleRateHz, { onProgress: progress.show, recorded, residual }),
+  );
   progress.clear();
   const format = asked ?? formatOf(clip);
   const { bytes, cut } = writeWav(rendered, clip.sampleRateHz, format);
@@ -83,6 +95,13 @@ function askedFormat({ values }: Line): WavFormat | undefined {
   const format = FORMATS.find((name) => name === text);
   if (text !== undefined && !format) throw new CommandFault(`--format is ${shown(text)}; expected ${either(FORMATS)}`);
   return format;
+}
+
+function askedPart({ values }: Line): ResidualPart | undefined {
+  const [text] = values.get(RESIDUAL.name) ?? [];
+  const part = RESIDUAL_PARTS.find((name) => name === text);
+  if (text !== undefined && !part) throw new CommandFault(`--residual is ${shown(text)}; expected ${either(RESIDUAL_PARTS)}`);
+  return part;
 }
 
 function formatOf({ float, bits }: WavClip): WavFormat {

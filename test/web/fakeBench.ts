@@ -65,6 +65,10 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
       return null;
     },
     previous: signal(null),
+    residualPart: signal('distortion'),
+    setResidualPart: () => null,
+    residualGainDb: signal(20),
+    setResidualGainDb: () => null,
     matched: signal(false),
     setMatched: none,
     matchDb: signal({ variants: [null, null, null], previous: null }),
@@ -169,6 +173,7 @@ function inventedLevels(muted: boolean): LiveLevels {
     heardRmsDbfs: muted ? Number.NEGATIVE_INFINITY : -22,
     variants: [7.4, 3, -2].map((peakDbfs) => ({ peakDbfs, faults: 0 })),
     loadFraction: 0.3,
+    residualDb: null,
     atCeiling: false,
     faults: 0,
     underruns: 0,

@@ -72,7 +72,7 @@ const chains = [5000, 6800, 10_000, 22_000].map((ohm) =>
   compileChain(setAt(movingDesign(), 'variants[0].cell.seriesOhm', ohm), 0, RATE, 2, 'lowLatency'),
 );
 const match = { slots: [1, 2, 3, 4, 1], bypass: 0.5 };
-const level = { gain: 0.7, ceilingPeak: 0.05, muted: false };
+const level = { residual: { part: null, gain: 1 }, gain: 0.7, ceilingPeak: 0.05, muted: false };
 const cell = new CellProcessor({ processorOptions: { chains, focus: 0, channels: 2, heard: 'cell', match, ...level } });
 port.answer({ data: { type: 'record', on: true } });
 const inputs = [[createNoise(1, BLOCK, 0.8), createNoise(2, BLOCK, 0.8)], []];

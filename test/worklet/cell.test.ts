@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest';
-import { createChain, processChain } from '../../model/chain/chain.ts';
+import { createChain, processChain, setResidual } from '../../model/chain/chain.ts';
 import { type ChainNumbers, compileChain } from '../../model/chain/compile.ts';
 import { defaultDesign } from '../../model/design/defaults.ts';
 import { setAt } from '../../model/design/path.ts';
@@ -12,6 +12,7 @@ const RATE = 48000;
 const BLOCK = 128;
 
 const AS_IT_IS: Match = { slots: [1, 1, 1, 1, 1], bypass: 1 };
+const NO_RESIDUAL = { part: null, gain: 1 };
 
 const compiled = (path: string, value: unknown, channels = 1) =>
   compileChain(setAt(defaultDesign(), path, value), 0, RATE, channels, 'lowLatency');
@@ -19,7 +20,7 @@ const series = (ohm: number, channels = 1) => compiled('variants[0].cell.seriesO
 
 function optionsFor(channels: number, change: Partial<CellOptions> = {}): CellOptions {
   const numbers = compileChain(defaultDesign(), 0, RATE, channels, 'lowLatency');
-  const level = { match: AS_IT_IS, gain: 1, ceilingPeak: 1, muted: false };
+  const level = { match: AS_IT_IS, residual: NO_RESIDUAL, gain: 1, ceilingPeak: 1, muted: false };
   return { chains: [numbers], focus: 0, channels, heard: 'cell', ...level, ...change };
 }
 
@@ -107,7 +108,7 @@ describe('the cell’s processor', () => {
       [{ type: 'focus', slot: 1 }, 'Slot 1 is empty'],
       [{ type: 'focus', slot: 7 }, 'The slot is 7'],
       [{ type: 'drop', slot: 0 }, 'Slot 0 is heard'],
-      [{ type: 'match', match: { slots: [1, 1, 1, 1, -1], bypass: 1 } }, 'A matching gain is -1'],
+      [{ type: 'match', match: { slots: [1, 1, 1, 1, -1], bypass: 1 } }, 'A gain is -1'],
       [{ type: 'move', slot: 9, numbers: series(5000) }, 'The slot is 9'],
       [{ type: 'move', slot: 0, numbers: compileChain(defaultDesign(), 0, 44100, 1, 'lowLatency') }, '44100'],
       [{ type: 'move', slot: 1, numbers: compileChain(defaultDesign(), 0, 44100, 1, 'lowLatency') }, '44100'],
@@ -288,6 +289,55 @@ describe('the cell’s processor', () => {
       expect(chunk.channels[0]).toEqual(expected);
     },
   );
+
+  describe('the residual', () => {
+    const RESIDUAL = { part: 'distortion', gain: 100 } as const;
+
+    test('is that of the chain in focus, with its gain, and its level is reported before that', async () => {
+      const input = noise(21);
+      const cell = await createCellProcessor(RATE, optionsFor(1, { heard: 'residual', residual: RESIDUAL }));
+      const [out] = play(cell, [input]);
+      const chain = createChain(optionsFor(1).chains[0] as ChainNumbers);
+      setResidual(chain, 'distortion');
+      const left = [new Float32Array(input.length)];
+      processChain(chain, [input], [new Float32Array(input.length)], null, left);
+      expect(out.subarray(1440)).toEqual(left[0].map((x) => 100 * x).subarray(1440));
+      const reports = cell.port.sent.filter((message): message is Report => message.type === 'report');
+      const { frame, output, residualSquare } = reports[3];
+      const square = left[0].subarray(frame, frame + output.length).reduce((sum, x) => sum + x * x, 0) / output.length;
+      expect(Math.abs(residualSquare / square - 1)).toBeLessThan(0.1);
+    });
+
+    test('another part, another chain and no longer being heard make no click', async () => {
+      const chains = [series(5000), series(22000)];
+      const cell = await createCellProcessor(RATE, optionsFor(1, { chains, heard: 'residual', residual: RESIDUAL }));
+      const tone = (from: number) => Float32Array.from({ length: BLOCK * 40 }, (_, n) => 0.3 * Math.sin((n + from) * 0.05));
+      let at = 0;
+      const next = () => {
+        const [out] = play(cell, [tone(at)]);
+        at += BLOCK * 40;
+        return out;
+      };
+      next();
+      const usual = largestStep(next());
+      const whole = Math.max(...next().map(Math.abs));
+      for (const message of [
+        { type: 'focus', slot: 1 },
+        { type: 'residual', residual: { ...RESIDUAL, part: 'feedthrough' } },
+        { type: 'residual', residual: RESIDUAL },
+        { type: 'focus', slot: 0 },
+      ] as const) {
+        cell.tell(message);
+        expect(largestStep(next())).toBeLessThan(2 * usual + whole / 200);
+      }
+      cell.tell({ type: 'hear', heard: 'bypass' });
+      cell.tell({ type: 'residual', residual: { ...RESIDUAL, part: null } });
+      next();
+      cell.tell({ type: 'hear', heard: 'residual' });
+      next();
+      expect(next()).toEqual(new Float32Array(BLOCK * 40));
+    });
+  });
 
   test('says what part of its time it needs, and what left for the loudspeakers', async () => {
     const cell = await createCellProcessor(RATE, optionsFor(1, { heard: 'bypass', gain: 0.5 }));

@@ -4,10 +4,12 @@ import type { Hearing } from '../state/bench.ts';
 import { useBench } from './BenchContext.ts';
 import { Choice } from './parts/Choice.tsx';
 import { EditableValue } from './parts/EditableValue.tsx';
+import { Residual } from './Residual.tsx';
 
 const WAYS: readonly { which: Hearing; words: string }[] = [
   { which: 'cell', words: 'the cell' },
   { which: 'bypass', words: 'bypass' },
+  { which: 'residual', words: 'residual' },
 ];
 const BEFORE = { which: 'previous', words: 'before the last change' } as const;
 const OVERSAMPLING = [1, 2, 4, 8, 16].map((factor) => ({
@@ -30,7 +32,7 @@ export function Heard() {
           </button>
         ))}
       </span>
-      <Matched /> at{' '}
+      {hearing === 'residual' ? <Residual /> : <Matched />} at{' '}
       <EditableValue
         label="Listening level"
         short="Level"
@@ -71,8 +73,7 @@ function Matched() {
   const bench = useBench();
   const on = bench.matched.value;
   const { variants, previous } = bench.matchDb.value;
-  const gains = { cell: variants[bench.heardVariant.value], previous, bypass: 0 };
-  const db = gains[bench.hearing.value];
+  const db = { cell: variants[bench.heardVariant.value], previous, bypass: 0, residual: 0 }[bench.hearing.value];
   return (
     <>
       <span class="ways">

@@ -6,6 +6,7 @@
  * Signals of numbers that are measured now are null until sound has run.
  */
 import type { ReadonlySignal } from '@preact/signals';
+import type { ResidualPart } from '../../model/chain/residual.ts';
 import type { Moves } from '../../model/design/feedback.ts';
 import type { Design, Variant } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
@@ -48,10 +49,15 @@ export interface Bench {
   /** Mutes with a ramp; the chain and every reading go on. */
   readonly muted: ReadonlySignal<boolean>;
   setMuted(on: boolean): void;
-  /** All variants run at once; the heard one, its setting before the last change, or the bypass is let through, without a click. */
+  /** All variants run at once; the heard one, what its cell adds, its setting before the last change, or the bypass is let through, without a click. */
   readonly hearing: ReadonlySignal<Hearing>;
   /** Refused for `previous` where the heard variant has none. */
   hear(which: Hearing): string | null;
+  /** The part of what the heard variant's cell adds that «residual» lets through, and its gain, dB, 0 to 80. */
+  readonly residualPart: ReadonlySignal<ResidualPart>;
+  setResidualPart(part: ResidualPart): string | null;
+  readonly residualGainDb: ReadonlySignal<number>;
+  setResidualGainDb(db: number): string | null;
   /** The heard variant before its last change; null where there was none. */
   readonly previous: ReadonlySignal<Variant | null>;
   /** Whether variants and the previous setting are heard at the loudness of the source, which is that of the bypass. */
@@ -130,7 +136,7 @@ export interface Bench {
 }
 
 export type Keep = 'gate' | 'control';
-export type Hearing = 'cell' | 'bypass' | 'previous';
+export type Hearing = 'cell' | 'bypass' | 'previous' | 'residual';
 export type SoundState = 'idle' | 'starting' | 'playing' | 'stopped' | 'failed';
 export type DesignPath = 'fullScaleV' | 'tempC' | 'oversampling' | 'title';
 export type TakeFormat = 'pcm16' | 'pcm24' | 'float32';
@@ -171,6 +177,8 @@ export interface LiveLevels {
   /** Of what leaves for the loudspeakers, after level, mute and ceiling. */
   readonly heardPeakDbfs: number;
   readonly heardRmsDbfs: number;
+  /** Level of the residual, before its gain, re the heard variant's output, over the last second; null while none is heard or the output is silent. */
+  readonly residualDb: number | null;
   /** True while the ceiling turns the sound down. */
   readonly atCeiling: boolean;
   /** Since the start: times that the chain fell back to its last good values. */

@@ -112,7 +112,7 @@ function answerMoment(id: number, gateV: number | null): void {
 function render({ design, variantIndex, channels, sampleRateHz }: ToRender): void {
   try {
     const onProgress = (fraction: number) => tell({ type: 'progress', fraction });
-    const lines = renderClip(design, variantIndex, channels, sampleRateHz, onProgress) as Float32Array<ArrayBuffer>[];
+    const lines = renderClip(design, variantIndex, channels, sampleRateHz, { onProgress }) as Float32Array<ArrayBuffer>[];
     const buffers = lines.map((line) => line.buffer);
     tell({ type: 'done', channels: lines }, buffers);
   } catch (error) {

@@ -1,5 +1,6 @@
 /** Which chains the processor holds: one for each variant, and the setting before the last change while it is wanted. */
 import { compileChain } from '../../model/chain/compile.ts';
+import { withNoise } from '../../model/chain/residual.ts';
 import type { CellOptions, ToCell } from '../../worklet/protocol.ts';
 import { PREVIOUS_SLOT, SLOTS } from '../../worklet/protocol.ts';
 import type { DocumentState } from './document.ts';
@@ -24,10 +25,12 @@ export interface ChainsNeeds {
   readonly notes: Notes;
   /** What the last slot shall hold. */
   previous(): Before | null;
+  /** Whether the heard variant's parts must hiss, whatever the design says. */
+  wantsNoise(): boolean;
   send(message: ToCell): void;
 }
 
-export function createChains({ document, notes, previous, send }: ChainsNeeds): Chains {
+export function createChains({ document, notes, previous, wantsNoise, send }: ChainsNeeds): Chains {
   let slots: readonly number[] = [];
   let texts: readonly string[] = [];
   /** By slot, what the processor has; null for nothing. */
@@ -41,7 +44,10 @@ export function createChains({ document, notes, previous, send }: ChainsNeeds): 
     slots = assignSlots(slots, texts, next);
     texts = next;
     const all: (Before | null)[] = Array.from({ length: SLOTS }, () => null);
-    for (const [index, slot] of slots.entries()) all[slot] = { design, index };
+    for (const [index, slot] of slots.entries()) {
+      const hisses = index === document.heardVariant.peek() && wantsNoise();
+      all[slot] = { design: hisses ? withNoise(design) : design, index };
+    }
     all[PREVIOUS_SLOT] = previous();
     return all;
   };

@@ -1,4 +1,4 @@
-/** The choice of what is heard: the heard variant, the same before its last change, the bypass, or for a while a take. */
+/** The choice of what is heard: the heard variant, what its cell adds, the same before its last change, the bypass, or for a while a take. */
 import type { ReadonlySignal } from '@preact/signals';
 import { computed, signal } from '@preact/signals';
 import type { Heard, ToCell } from '../../worklet/protocol.ts';
@@ -17,11 +17,12 @@ export interface HearingState extends Pick<Bench, 'hearing' | 'hear' | 'previous
   wantedPrevious(): Before | null;
 }
 
+/** `changed` is called before the processor is told of another choice: it may have to hold other chains, or compute a residual. */
 export function createHearing(
   document: Pick<DocumentState, 'variant'>,
   before: ReadonlySignal<Before | null>,
   send: (message: ToCell) => void,
-  beforeHeard: () => void,
+  changed: () => void,
 ): HearingState {
   const hearing = signal<Hearing>('cell');
   const aside = signal<string | null>(null);
@@ -33,10 +34,8 @@ export function createHearing(
       return `Variant ${document.variant.peek().name} has not been changed yet; there is nothing before it to hear.`;
     }
     hearing.value = which;
-    if (which === 'previous' && !previousAsked) {
-      previousAsked = true;
-      beforeHeard();
-    }
+    if (which === 'previous') previousAsked = true;
+    changed();
     if (aside.peek() === null) send({ type: 'hear', heard: which });
     return null;
   };
@@ -53,7 +52,9 @@ export function createHearing(
     words: computed(() => {
       if (aside.value !== null) return aside.value;
       if (hearing.value === 'bypass') return 'bypass';
-      return hearing.value === 'cell' ? document.variant.value.name : `${document.variant.value.name} before`;
+      const { name } = document.variant.value;
+      if (hearing.value === 'residual') return `residual of ${name}`;
+      return hearing.value === 'cell' ? name : `${name} before`;
     }),
     setAside(title) {
       aside.value = title;

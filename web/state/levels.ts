@@ -8,6 +8,8 @@ export const MOST_SAMPLES = 32768;
 const RECENT_MS = 1500;
 /** Reports that the load is averaged over: 4 s. */
 const LOAD_REPORTS = 120;
+/** Reports that the residual's level is taken over: 1 s. */
+const RESIDUAL_REPORTS = 30;
 
 export interface Levels {
   readonly live: ReadonlySignal<LiveLevels | null>;
@@ -26,6 +28,7 @@ export function createLevels(now: () => number = () => performance.now()): Level
   let nextFrame = 0;
   let load = 0;
   let loads = 0;
+  let squares: { readonly output: number; readonly residual: number }[] = [];
   let recent: { atMs: number; peak: number }[] = [];
   return {
     live,
@@ -41,6 +44,7 @@ export function createLevels(now: () => number = () => performance.now()): Level
       loads = Math.min(loads + 1, LOAD_REPORTS);
       load += (report.loadFraction - load) / loads;
       recent = [...recent.filter((each) => atMs - each.atMs < RECENT_MS), { atMs, peak: report.outputPeak }];
+      squares = [...squares.slice(1 - RESIDUAL_REPORTS), { output: report.outputSquare, residual: report.residualSquare }];
       live.value = {
         controlV: report.controlV,
         gateSourceV: report.gateSourceV,
@@ -54,6 +58,7 @@ export function createLevels(now: () => number = () => performance.now()): Level
         heardRmsDbfs: toDb(Math.sqrt(report.heardSquare)),
         variants: slots.map((slot) => ({ peakDbfs: toDb(report.slotPeaks[slot]), faults: report.slotFaults[slot] })),
         loadFraction: load,
+        residualDb: levelUnder(squares),
         atCeiling: report.ceilingFrames > 0,
         faults: report.faults,
         underruns,
@@ -68,6 +73,14 @@ export function createLevels(now: () => number = () => performance.now()): Level
       loads = 0;
     },
   };
+}
+
+/** Of the time in which there was a residual. */
+function levelUnder(squares: readonly { readonly output: number; readonly residual: number }[]): number | null {
+  const both = squares.filter(({ residual }) => residual > 0);
+  const output = both.reduce((sum, each) => sum + each.output, 0);
+  const residual = both.reduce((sum, each) => sum + each.residual, 0);
+  return output > 0 ? toDb(Math.sqrt(residual / output)) : null;
 }
 
 export function toDb(ratio: number): number {

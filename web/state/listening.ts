@@ -18,6 +18,7 @@ import { sentenceOf } from './notes.ts';
 import type { Parts } from './parts.ts';
 import { watchPrevious } from './previous.ts';
 import { createReceiver } from './receiving.ts';
+import { createResidualState } from './residual.ts';
 import { createSoundLine } from './soundLine.ts';
 import type { Takes, TakeSource } from './takes.ts';
 
@@ -34,6 +35,10 @@ type Shared =
   | 'hearing'
   | 'hear'
   | 'previous'
+  | 'residualPart'
+  | 'setResidualPart'
+  | 'residualGainDb'
+  | 'setResidualGainDb'
   | 'matched'
   | 'setMatched'
   | 'matchDb'
@@ -72,8 +77,12 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
 
   const send = (message: ToCell) => line.send(message);
   const before = watchPrevious(document);
-  const hearing = createHearing(document, before, send, () => update());
-  const chains = createChains({ document, notes, previous: hearing.wantedPrevious, send });
+  const hearing = createHearing(document, before, send, () => {
+    update();
+    residual.tell();
+  });
+  const residual = createResidualState(hearing.hearing, send, () => update());
+  const chains = createChains({ document, notes, previous: hearing.wantedPrevious, wantsNoise: residual.wantsNoise, send });
   const matching = createMatching({
     ...{ document, previous: before, notes, slots: chains.slots, send, clip: () => clip },
     openWorker: parts.openLoudnessWorker,
@@ -85,7 +94,15 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       rateHz.value = hz;
       const what = chains.options(hz, channels);
       const { heard } = hearing;
-      return { ...what, channels, heard: heard(), match: matching.match(), ...loudness.options(), muted: true };
+      return {
+        ...what,
+        channels,
+        heard: heard(),
+        match: matching.match(),
+        residual: residual.choice(),
+        ...loudness.options(),
+        muted: true,
+      };
     },
     message: (message) => receive(message),
     renewed() {
@@ -94,6 +111,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       // What was chosen while it was being made has reached no one.
       send({ type: 'hear', heard: hearing.heard() });
       send({ type: 'match', match: matching.match() });
+      residual.tell();
       loudness.tell();
       takes().cutShort();
       takes().noteEnded();
@@ -201,6 +219,10 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     hearing: hearing.hearing,
     hear: hearing.hear,
     previous: hearing.previous,
+    residualPart: residual.residualPart,
+    setResidualPart: residual.setResidualPart,
+    residualGainDb: residual.residualGainDb,
+    setResidualGainDb: residual.setResidualGainDb,
     matched: matching.matched,
     setMatched: matching.setMatched,
     matchDb: matching.matchDb,

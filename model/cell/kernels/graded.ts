@@ -9,7 +9,7 @@ import { power } from '../../device/math.ts';
 import * as L from './layout.ts';
 
 /** Newest, then past ones, of the backward difference in reduce.ts. */
-const NEWEST = 47 / 24;
+export const NEWEST = 47 / 24;
 const PAST_1 = 7 / 2;
 const PAST_2 = -9 / 4;
 const PAST_3 = 5 / 6;
@@ -39,9 +39,19 @@ export function addGraded(
 ): void {
   const scratch = charges + 4;
   deviation(c[device + L.GRADING], c[device + L.BARRIER_V], overV + c[device + L.GATE_OFF_V], s, scratch);
-  const past = PAST_1 * s[charges] + PAST_2 * s[charges + 1] + PAST_3 * s[charges + 2] + PAST_4 * s[charges + 3];
-  s[at] = perStepS * (NEWEST * s[scratch] - past);
+  s[at] = perStepS * (NEWEST * s[scratch] - pastCharge(s, charges));
   s[at + 1] = perStepS * NEWEST * s[scratch + 1];
+}
+
+/** What the backward difference takes of the past q/C0 from `charges` on. */
+export function pastCharge(s: Float64Array, charges: number): number {
+  return PAST_1 * s[charges] + PAST_2 * s[charges + 1] + PAST_3 * s[charges + 2] + PAST_4 * s[charges + 3];
+}
+
+/** The q/C0 after the past ones becomes the newest of them. */
+export function pushCharge(s: Float64Array, charges: number): void {
+  for (let k = 3; k > 0; k--) s[charges + k] = s[charges + k - 1];
+  s[charges] = s[charges + 4];
 }
 
 /** The charges of both junctions at the sample's solution become the newest of the past ones. */
@@ -52,8 +62,7 @@ export function keepCharges(c: Float64Array, device: number, s: Float64Array, n:
 
 function keepCharge(c: Float64Array, device: number, overV: number, s: Float64Array, charges: number): void {
   deviation(c[device + L.GRADING], c[device + L.BARRIER_V], overV + c[device + L.GATE_OFF_V], s, charges + 4);
-  for (let k = 3; k > 0; k--) s[charges + k] = s[charges + k - 1];
-  s[charges] = s[charges + 4];
+  pushCharge(s, charges);
 }
 
 /** All past charges as at rest. */

@@ -73,7 +73,7 @@ export function loopedKernel(trapezoidal: number, stiff: number, conductor: Cond
   };
 }
 
-function weighPast(s: Float64Array, past: Float64Array, trapezoidal: number, stiff: number): void {
+export function weighPast(s: Float64Array, past: Float64Array, trapezoidal: number, stiff: number): void {
   const n = trapezoidal + stiff;
   for (let k = 0; k < trapezoidal; k++) past[k] = s[k];
   for (let k = 0; k < stiff; k++) {
@@ -81,7 +81,7 @@ function weighPast(s: Float64Array, past: Float64Array, trapezoidal: number, sti
   }
 }
 
-function remember(
+export function remember(
   c: Float64Array,
   s: Float64Array,
   past: Float64Array,
@@ -106,7 +106,7 @@ function remember(
 }
 
 /** The first `rows` rows of the coefficients, each times the drives. */
-function addRows(c: Float64Array, drives: Float64Array, sums: Float64Array, rows: number, width: number): void {
+export function addRows(c: Float64Array, drives: Float64Array, sums: Float64Array, rows: number, width: number): void {
   const length = drives.length;
   for (let r = 0; r < rows; r++) {
     const at = r * width;
@@ -120,7 +120,7 @@ function addRows(c: Float64Array, drives: Float64Array, sums: Float64Array, rows
   }
 }
 
-function shiftPast(s: Float64Array, n: number, trapezoidal: number, stiff: number): void {
+export function shiftPast(s: Float64Array, n: number, trapezoidal: number, stiff: number): void {
   for (let k = 0; k < stiff; k++) {
     s[n + 2 * stiff + k] = s[n + stiff + k];
     s[n + stiff + k] = s[n + k];

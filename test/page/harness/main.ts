@@ -28,7 +28,7 @@ window.playOffline = async (design, rateHz, channels) => {
   const numbers = compileChain(design, 0, rateHz, lines.length, 'lowLatency');
   const processorOptions: CellOptions = {
     ...{ chains: [numbers], focus: 0, channels: lines.length, heard: 'cell', match: { slots: [1, 1, 1, 1, 1], bypass: 1 } },
-    ...{ gain: 1, ceilingPeak: 1, muted: false },
+    ...{ residual: { part: null, gain: 1 }, gain: 1, ceilingPeak: 1, muted: false },
   };
   const node = new AudioWorkletNode(context, CELL_PROCESSOR, {
     numberOfInputs: 2,

@@ -169,6 +169,29 @@ describe('changing values while sound plays', () => {
     ]);
   });
 
+  test('the residual is computed while it is heard, of the part that is chosen; for noise the heard variant’s parts hiss', async () => {
+    const sound = await startSound();
+    expect(bench.hear('residual')).toBeNull();
+    expect(sound.told.slice(-2)).toEqual([
+      { type: 'residual', residual: { part: 'distortion', gain: 10 } },
+      { type: 'hear', heard: 'residual' },
+    ]);
+    expect(bench.setResidualGainDb(81)).toBe('The gain of the residual is 81 dB; expected 0 to 80 dB.');
+    expect(bench.setResidualGainDb(60)).toBeNull();
+    expect(sound.last('residual')?.residual).toEqual({ part: 'distortion', gain: 1000 });
+    bench.setResidualPart('noise');
+    expect(sound.told.slice(-2)).toMatchObject([
+      { type: 'move', slot: 0, numbers: { noiseSeed: 1 } },
+      { type: 'residual', residual: { part: 'noise', gain: 1000 } },
+    ]);
+    bench.hear('cell');
+    expect(sound.told.slice(-3)).toMatchObject([
+      { type: 'move', slot: 0, numbers: { noiseSeed: null } },
+      { type: 'residual', residual: { part: null, gain: 1000 } },
+      { type: 'hear', heard: 'cell' },
+    ]);
+  });
+
   test('the setting before the last change is heard, run from then on, and left when there is none', async () => {
     const sound = await startSound();
     expect(bench.hear('previous')).toBe('Variant A has not been changed yet; there is nothing before it to hear.');
@@ -354,7 +377,17 @@ describe('readings', () => {
     const sound = await startSound();
     const report = (gateSourceV: number): Report => ({
       ...{ type: 'report', slot: 0, frame: 0, input: new Float32Array(100), output: new Float32Array(100) },
-      ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, inputPeakV: 0, drainPeakV: 0, feedthroughPeakV: 0 },
+      ...{
+        inputPeak: 0,
+        outputPeak: 0,
+        heardPeak: 0,
+        outputSquare: 0,
+        heardSquare: 0,
+        residualSquare: 0,
+        inputPeakV: 0,
+        drainPeakV: 0,
+        feedthroughPeakV: 0,
+      },
       ...{ slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5), latencySamples: 48, loadFraction: 0.1 },
       ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: 2 * gateSourceV, gateSourceV },
     });
@@ -603,7 +636,7 @@ describe('designs', () => {
 describe('the load', () => {
   const report = (frame: number, loadFraction: number): Report => ({
     ...{ type: 'report', slot: 0, frame, input: new Float32Array(100), output: new Float32Array(100), loadFraction },
-    ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, inputPeakV: 0, drainPeakV: 0 },
+    ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, residualSquare: 0, inputPeakV: 0, drainPeakV: 0 },
     ...{ feedthroughPeakV: 0, faults: 0, slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5) },
     ...{ latencySamples: 48, ceilingFrames: 0, lagMs: 0, controlV: -1, gateSourceV: -1 },
   });

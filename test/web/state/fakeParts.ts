@@ -143,7 +143,9 @@ export function createFakeParts(): FakeParts {
 /** Does a worker's render: progress, then the clip. */
 export function runRender(worker: FakeWorker<ToRender, FromRender>): void {
   const { design, variantIndex, channels, sampleRateHz } = worker.posted[0];
-  const rendered = renderClip(design, variantIndex, channels, sampleRateHz, (fraction) => worker.answer({ type: 'progress', fraction }));
+  const rendered = renderClip(design, variantIndex, channels, sampleRateHz, {
+    onProgress: (fraction) => worker.answer({ type: 'progress', fraction }),
+  });
   worker.answer({ type: 'done', channels: rendered as Float32Array<ArrayBuffer>[] });
 }
 

@@ -11,6 +11,7 @@ const quiet = {
   heardPeak: 0,
   outputSquare: 0,
   heardSquare: 0,
+  residualSquare: 0,
   slotPeaks: new Float64Array(5),
   slotFaults: new Float64Array(5),
   latencySamples: 48,
