@@ -1,5 +1,5 @@
 /**
- * Coefficients of the half-band filters of the oversampling stages, made by test/reference/halfband.py, where the methods are named.
+ * Coefficients of the half-band filters of the oversampling stages and of the kernels that soften kinks. The filters are made by test/reference/halfband.py, where the methods are named.
  * Stage 0 passes 20 kHz at 44.1 kHz (0.2268 of its upper rate); the later ones have the wider transition that it leaves them.
  * Reached, checked in test/model/chain/oversample.test.ts: stop band at least 115 dB, pass band within 0.0001 dB.
  */
@@ -33,4 +33,14 @@ export const LINEAR_PHASE: readonly (readonly number[])[] = [
   ],
   [0.3004107563468647, -0.06227451696227602, 0.01338893355740479, -0.001525317491415627],
   [0.29341685383023586, -0.049505118631566196, 0.006088319624235595],
+];
+
+/**
+ * Kernels that soften kinks, for ×2, ×4, ×8 and ×16: h(u) = (1 − x)²·Σ c·xʲ with x = (u/2)², |u| < 2 samples; made by test/reference/kinks.py.
+ */
+export const SOFTENING: readonly (readonly number[])[] = [
+  [1.164459153638566, -8.84332024165385, 6.865328221636606, 56.36837181031272, -151.16504916842948, 111.88859108683654],
+  [1.1884492182638229, -9.380650870777838, 3.5441535119454968, 90.14904856794028, -218.57445026836862, 149.84029149457243],
+  [1.1917374294263618, -9.413022814121806, 2.00229688971207, 101.01553963451512, -239.75164947324285, 162.19165413248066],
+  [1.22334335065586, -10.999100926595592, 17.836058684747243, 36.81541571263898, -128.70791163604935, 95.89471235768144],
 ];

@@ -12,6 +12,7 @@ import { createKinks } from '../cell/kernels/kinks.ts';
 import type { ChainNumbers } from './compile.ts';
 import { advanceSlice, createDrive, type Drive, inheritDrive, restDrive } from './drive.ts';
 import { clearSoftener, createSoftener, type Softener, soften } from './kinks.ts';
+import { bendTable } from './kinkTables.ts';
 import { clearOversampler, createOversampler, lower, type Oversampler, raise } from './oversample.ts';
 import { advanceResidual, createResidual, keepAudio, lowerResidual, type Residual, type ResidualPart, restResidual } from './residual.ts';
 
@@ -140,7 +141,7 @@ export function createVoice(numbers: ChainNumbers): Voice {
       oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK),
       amplifier: createAmplifierState(),
       kinks: oversampling > 1 ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
-      softener: createSoftener(),
+      softener: createSoftener(bendTable(oversampling)),
       values: moving(Float64Array.from(cell.values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),

@@ -3,13 +3,17 @@
  *
  * Law      near the crossing the overdrive e that the end would have without its own term runs straight; with it v + K·v² = e while v > 0, where K is
  *          what the circuit makes of the term, and the output gains J/2·D(τ; κ) with the slope e′ of e, κ = 2K·e′, J = F″·e′² by the output's
- *          weight. D is τ² for small κ; for large κ it is nearly a corner. chain/kinks.ts has D and what it does with it
+ *          weight, D(τ; κ) = (2/κ)·(τ − (√(1 + 2κτ) − 1)/κ). D is τ² for small κ; for large κ it is nearly a corner. chain/kinks.ts corrects it,
+ *          with (1 + κ)·D by u = κ/(1 + κ)
  * Error    e is taken to be straight over one step, and F″ to be that at VGS(off)
  */
 import { evaluate } from './channel.ts';
 import * as L from './layout.ts';
 
-/** A list: the count; then for each kink the sample after the crossing, 1 where the end comes on and −1 where it goes off, τ of the sample before (or after) it, κ, J/2. */
+/**
+ * A list: the count; then for each kink the sample after it, 1 where its shape begins and −1 where it ends, how far after the sample before it (or before
+ * the one after), the shape from 0 to 1, and its amount in V.
+ */
 export const KINK_WIDTH = 5;
 
 /** Kinks of larger jumps, V, and sharper bends are those of a state on its way to be lost. */
@@ -63,7 +67,8 @@ function add(e: Float64Array, i: number, before: number, after: number, bend: nu
   e[at] = i;
   e[at + 1] = comesOn ? 1 : -1;
   e[at + 2] = -off / slope;
-  e[at + 3] = 2 * bend * slope;
-  e[at + 4] = amount * slope * slope;
+  const sharpness = 2 * bend * slope;
+  e[at + 3] = sharpness / (1 + sharpness);
+  e[at + 4] = (amount * slope * slope) / (1 + sharpness);
   e[0] += 1;
 }

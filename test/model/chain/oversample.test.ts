@@ -10,7 +10,7 @@ const FACTORS = [2, 4, 8, 16];
 /** Impulse response of the way up (at the upper rate) and of the way up and down. */
 function impulse(factor: number, filters: FilterSet, length: number) {
   const oversampler = createOversampler(factor, filters, 128);
-  const softener = createSoftener();
+  const softener = createSoftener(new Float64Array(0));
   const kinks = createKinks(1);
   const upper: number[] = [];
   const lowerRate: number[] = [];
