@@ -4,7 +4,7 @@ import { defaultDesign } from '../../model/design/defaults.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
-import type { Bench, FeedbackPoint, Hearing, LiveLevels, Note, SoundState, Take } from '../../web/state/bench.ts';
+import type { Bench, FeedbackPoint, Hearing, LiveLevels, Note, Region, SoundState, SourceInfo, Take } from '../../web/state/bench.ts';
 import { controlPicture } from '../../web/state/controlPicture.ts';
 import { createDocument } from '../../web/state/document.ts';
 
@@ -14,6 +14,7 @@ export interface FakeOptions {
   readonly notes?: readonly Note[];
   readonly takes?: readonly Take[];
   readonly underWay?: boolean;
+  readonly source?: SourceInfo;
   /** Replaces values of the first variant, by path. */
   readonly values?: Readonly<Record<string, unknown>>;
   readonly saturated?: number;
@@ -36,6 +37,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
   const ceilingDbfs = signal(-6);
   const toneV = signal(0.2);
   const toneHz = signal(997);
+  const region = signal<Region | null>(null);
   const takes = signal<readonly Take[]>(options.takes ?? []);
   const notes = signal<readonly Note[]>(options.notes ?? []);
   const none = () => undefined;
@@ -76,9 +78,26 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
       { name: 'chords', title: 'Plucked chords' },
       { name: 'bass', title: 'Bass line' },
     ]),
-    source: signal({ title: 'Plucked chords', seconds: 16, kind: 'phrase' }),
+    source: signal(options.source ?? { title: 'Plucked chords', seconds: 16, kind: 'phrase' }),
     choosePhrase: asyncNone,
     openAudio: asyncNone,
+    chooseTestTone: asyncNone,
+    testToneHz: signal(997),
+    setTestToneHz: () => null,
+    testToneV: signal(0.2),
+    setTestToneV: () => null,
+    openInput: asyncNone,
+    inputs: signal([]),
+    input: signal(null),
+    region,
+    setRegion: (next) => {
+      assign(region, next);
+      return null;
+    },
+    seek: () => null,
+    positionSec: () => 3.2,
+    sourceSamples: () => [],
+    outputLatencySec: signal(0.02),
     listenDb,
     setListenDb: put(listenDb),
     ceilingDbfs,

@@ -1,9 +1,10 @@
-/** The audio graph: source (Tone) → the cell's processor (native) → loudspeakers. Knows no design, only numbers and clips. */
+/** The audio graph: source (Tone, or a device) → the cell's processor (native) → loudspeakers. Knows no design, only numbers and clips. */
 import workletUrl from '../../worklet/fettle.worklet.ts?worker&url';
 import type { CellOptions, FromCell, ToCell } from '../../worklet/protocol.ts';
 import { CELL_PROCESSOR, MUTE_SEC } from '../../worklet/protocol.ts';
 import type { Clip } from './clip.ts';
 import type { Players } from './players.ts';
+import type { Feed, SourceForm } from './source.ts';
 import { countUnderruns } from './underruns.ts';
 
 export interface SoundEvents {
@@ -12,6 +13,8 @@ export interface SoundEvents {
   broken(): void;
   /** The system or the browser has paused the context, or let it go on. */
   paused(on: boolean): void;
+  /** The browser could not go on putting sound out: the device is gone or refuses. */
+  outputLost(): void;
   takeEnded(): void;
 }
 
@@ -19,7 +22,11 @@ export interface SoundEvents {
 export interface Sound {
   readonly sampleRateHz: number;
   send(message: ToCell, transfer?: Transferable[]): void;
-  loop(clip: Clip): void;
+  feed(feed: Feed): void;
+  /** Where in its clip the feed is, s. */
+  positionSec(): number;
+  /** From the processor to the device, as the browser states it; null where it does not. */
+  outputLatencySec(): number | null;
   playTake(clip: Clip | null): void;
   /** Makes the processor anew; resolves when it has warmed up. */
   rebuild(cell: CellOptions): Promise<void>;
@@ -30,7 +37,9 @@ export interface Sound {
   close(): Promise<void>;
 }
 
-export type OpenSound = (sampleRateHz: number, cellFor: (sampleRateHz: number) => CellOptions, events: SoundEvents) => Promise<Sound>;
+export type SoundForm = Pick<SourceForm, 'sampleRateHz' | 'latency'>;
+
+export type OpenSound = (form: SoundForm, cellFor: (sampleRateHz: number) => CellOptions, events: SoundEvents) => Promise<Sound>;
 
 /** Twice the ramp, since the message takes its time as well. */
 const MUTED_AFTER_MS = 2000 * MUTE_SEC;
@@ -46,8 +55,8 @@ export function prepareSound(): Promise<unknown> {
  * Opens a context at the rate, or at the machine's own where it cannot; `cellFor` is asked with the rate that it became.
  * Call it from a user's gesture: the context is made before anything is awaited. Throws an Error with a sentence.
  */
-export const openSound: OpenSound = async (sampleRateHz, cellFor, events) => {
-  const context = openContext(sampleRateHz);
+export const openSound: OpenSound = async (form, cellFor, events) => {
+  const context = openContext(form);
   // Asked for within the gesture, then put off: a processor that warms up in a running context makes gaps.
   // Whether that was allowed is known only from the resume below.
   context.resume().catch(() => undefined);
@@ -74,16 +83,14 @@ function loadModules(context: AudioContext) {
 }
 
 /**
- * What is heard is a recording, so a few hundredths of a second more are no loss, and the wider buffer is a gain: with three busy processes beside it on two
- * cores it had no gap in 10 s where the `balanced` one had 1.
+ * For a recording a few hundredths of a second more are no loss, and the wider buffer of `playback` is a gain: with three busy processes beside it on two
+ * cores it had no gap in 10 s where the `balanced` one had 1. Live input has the narrowest there is.
  */
-const LATENCY_HINT = 'playback';
-
-function openContext(sampleRateHz: number): AudioContext {
+function openContext({ sampleRateHz, latency }: SoundForm): AudioContext {
   try {
-    return new AudioContext({ sampleRate: sampleRateHz, latencyHint: LATENCY_HINT });
+    return new AudioContext({ sampleRate: sampleRateHz, latencyHint: latency });
   } catch (error) {
-    if (error instanceof DOMException && error.name === 'NotSupportedError') return new AudioContext({ latencyHint: LATENCY_HINT });
+    if (error instanceof DOMException && error.name === 'NotSupportedError') return new AudioContext({ latencyHint: latency });
     throw error;
   }
 }
@@ -94,7 +101,7 @@ function resume(context: AudioContext): Promise<void> {
 
 function createSound(context: AudioContext, first: AudioWorkletNode, players: Players, events: SoundEvents): Sound {
   let node = first;
-  let clip: Clip | null = null;
+  let fed: Feed | null = null;
   let wanted = true;
   const underruns = countUnderruns(context);
   node.connect(context.destination);
@@ -102,6 +109,9 @@ function createSound(context: AudioContext, first: AudioWorkletNode, players: Pl
   context.addEventListener('statechange', () => {
     if (wanted && context.state !== 'closed') events.paused(context.state !== 'running');
   });
+
+  // Of the Web Audio specification, not yet in the standard type library.
+  context.addEventListener('error', () => events.outputLost());
 
   /** Mutes and waits for the end of the ramp, so that nothing is cut off with a click. */
   const quieten = async () => {
@@ -113,9 +123,15 @@ function createSound(context: AudioContext, first: AudioWorkletNode, players: Pl
   return {
     sampleRateHz: context.sampleRate,
     send: (message, transfer = []) => node.port.postMessage(message, transfer),
-    loop(next) {
-      clip = next;
-      players.loop(next, node);
+    feed(next) {
+      fed = next;
+      players.feed(next, node);
+    },
+    positionSec: players.positionSec,
+    outputLatencySec() {
+      // Older browsers have not both.
+      const { baseLatency, outputLatency } = context as { baseLatency?: number; outputLatency?: number };
+      return baseLatency === undefined || outputLatency === undefined ? null : baseLatency + outputLatency;
     },
     playTake: (take) => players.once(take, node, events.takeEnded),
     async rebuild(cell) {
@@ -130,7 +146,7 @@ function createSound(context: AudioContext, first: AudioWorkletNode, players: Pl
         wanted = true;
         await resume(context);
       }
-      if (clip !== null) players.loop(clip, node);
+      if (fed !== null) players.feed(fed.kind === 'clip' ? { ...fed, atSec: players.positionSec() } : fed, node);
     },
     async suspend() {
       wanted = false;

@@ -69,6 +69,30 @@ export interface Bench {
   readonly source: ReadonlySignal<SourceInfo>;
   choosePhrase(name: string): Promise<void>;
   openAudio(file: File): Promise<void>;
+  /** A sine, from one to 20000 Hz, of so many V peak at the cell's input whatever full scale is. */
+  chooseTestTone(): Promise<void>;
+  readonly testToneHz: ReadonlySignal<number>;
+  setTestToneHz(hz: number): string | null;
+  readonly testToneV: ReadonlySignal<number>;
+  setTestToneV(volts: number): string | null;
+  /**
+   * Live input from a device, or from the one that the browser proposes; it may ask for permission. Begins muted. Where it cannot be opened `notes`
+   * say why, and what plays goes on.
+   */
+  openInput(deviceId?: string): Promise<void>;
+  /** The devices there are, once one was opened. */
+  readonly inputs: ReadonlySignal<readonly { readonly id: string; readonly title: string }[]>;
+  readonly input: ReadonlySignal<InputInfo | null>;
+  /** The part of the source that loops; null for the whole. Its end runs into its beginning by a crossfade of 10 ms. */
+  readonly region: ReadonlySignal<Region | null>;
+  /** Refused outside the source or under 50 ms. */
+  setRegion(region: Region | null): string | null;
+  /** Goes on from another place by a crossfade of 20 ms; refused outside what loops. */
+  seek(seconds: number): string | null;
+  /** Where in the source the sound is, s. */
+  positionSec(): number;
+  /** The whole source, its channels; none for live input. */
+  sourceSamples(): readonly Float32Array[];
   /** Monitoring level after the chain's output, dB, −60 to 0. */
   readonly listenDb: ReadonlySignal<number>;
   setListenDb(db: number): string | null;
@@ -79,6 +103,8 @@ export interface Bench {
   readonly rateHz: ReadonlySignal<number | null>;
   /** Delay of the chain, input to output, s; null before the first start. */
   readonly latencySec: ReadonlySignal<number | null>;
+  /** Delay from the chain to the output device, s; null before the first start and where the browser does not state it. */
+  readonly outputLatencySec: ReadonlySignal<number | null>;
 
   // Measured now
   /** At the rate of the processor's reports. */
@@ -148,10 +174,26 @@ export interface ExampleEntry {
   readonly listenFor?: string;
 }
 
+/** Live input has no length: 0 s. */
 export interface SourceInfo {
   readonly title: string;
   readonly seconds: number;
-  readonly kind: 'phrase' | 'file';
+  readonly kind: 'phrase' | 'file' | 'tone' | 'live';
+}
+
+export interface Region {
+  readonly fromSec: number;
+  readonly toSec: number;
+}
+
+/** Live input that is open. */
+export interface InputInfo {
+  readonly title: string;
+  readonly deviceId: string;
+  readonly sampleRateHz: number;
+  readonly channels: number;
+  /** From the device to the page, as the browser states it; null where it does not. */
+  readonly latencySec: number | null;
 }
 
 /** dB; null while not measured, 0 where a render is silent. More than 40 dB either way is shown but not applied, and said. */

@@ -4,8 +4,7 @@ import firstDesign from '../../assets/designs/harbour-tremolo.json?raw';
 import { compileChain } from '../../model/chain/compile.ts';
 import { readDesign } from '../../model/design/read.ts';
 import type { Design } from '../../model/design/types.ts';
-import type { Clip } from '../audio/clip.ts';
-import type { Bench, SourceInfo } from './bench.ts';
+import type { Bench } from './bench.ts';
 import { createDocument } from './document.ts';
 import { fileName } from './fileName.ts';
 import { createLevels } from './levels.ts';
@@ -16,6 +15,8 @@ import { createNotes } from './notes.ts';
 import type { Parts } from './parts.ts';
 import { browserParts } from './parts.ts';
 import { createReadings } from './readings.ts';
+import type { Sources } from './sources.ts';
+import { createSources } from './sources.ts';
 import type { Takes } from './takes.ts';
 import { createTakes } from './takes.ts';
 
@@ -33,23 +34,8 @@ export function assembleBench(parts: Parts): Bench {
   const document = createDocument(openingDesign(), (design, variantIndex) => {
     compileChain(design, variantIndex, listening.rateHz.peek() ?? TRY_OUT_HZ, 1, 'lowLatency');
   });
-  /** Counts the choices of a source: while one is being loaded another may be made, and the last one counts. */
-  let choice = 0;
-  let choosing: Promise<unknown> = Promise.resolve();
-  const choose = (kind: SourceInfo['kind'], load: () => Promise<Clip>) => {
-    choice++;
-    const mine = choice;
-    const chosen = load().then((clip) => (mine === choice ? listening.setSource(clip, kind) : undefined));
-    choosing = Promise.allSettled([chosen]);
-    return chosen;
-  };
-  const loadFirstSource = async () => {
-    await library.load();
-    await choosing;
-    const [first] = library.phrases.peek();
-    if (first !== undefined && listening.source.peek().title === '') await choose('phrase', () => library.loadPhrase(first.name));
-  };
-  const listening: Listening = createListening({ parts, document, levels, notes, takes: () => takes, loadFirstSource });
+  const sources: Sources = createSources({ parts, library, document, notes, listening: () => listening });
+  const listening: Listening = createListening({ parts, document, levels, notes, takes: () => takes, loadFirstSource: sources.loadFirst });
   const takes: Takes = createTakes(parts, document, listening.forTakes, notes);
   const readings = createReadings(parts.openReadingWorker(), {
     design: document.design,
@@ -68,8 +54,6 @@ export function assembleBench(parts: Parts): Bench {
     }
   };
 
-  const choosePhrase = (name: string) => noting(() => choose('phrase', () => library.loadPhrase(name)));
-
   const openText = (text: string, from: string) => {
     const result = readDesign(text);
     const refused = 'faults' in result ? result.faults.map((fault) => fault.sentence) : [document.replace(result.design)];
@@ -79,7 +63,7 @@ export function assembleBench(parts: Parts): Bench {
   };
 
   noting(async () => {
-    await loadFirstSource();
+    await sources.loadFirst();
     await parts.prepareSound();
   });
 
@@ -89,12 +73,10 @@ export function assembleBench(parts: Parts): Bench {
     ...levels,
     ...readings,
     ...takes,
-    phrases: library.phrases,
+    ...sources,
     examples: library.examples,
     notes: notes.notes,
     dismiss: notes.dismiss,
-    choosePhrase,
-    openAudio: (file) => noting(() => choose('file', async () => parts.decodeAudio(await file.arrayBuffer(), file.name))),
     openDesign: (file) => noting(async () => openText(await file.text(), file.name)),
     openExample: (name) => noting(async () => openText(await library.loadExample(name), name)),
     saveDesign() {

@@ -3,9 +3,9 @@ import { computed, signal } from '@preact/signals';
 import { compileChain } from '../../model/chain/compile.ts';
 import type { ToCell } from '../../worklet/protocol.ts';
 import { MUTE_SEC } from '../../worklet/protocol.ts';
-import type { Clip } from '../audio/clip.ts';
-import { clipSeconds } from '../audio/clip.ts';
-import type { Bench, SoundState, SourceInfo } from './bench.ts';
+import type { Source } from '../audio/source.ts';
+import { formOf } from '../audio/source.ts';
+import type { Bench, SoundState } from './bench.ts';
 import { createChains } from './chains.ts';
 import type { DocumentState } from './document.ts';
 import { createHearing } from './hearing.ts';
@@ -20,6 +20,7 @@ import { watchPrevious } from './previous.ts';
 import { createReceiver } from './receiving.ts';
 import { createResidualState } from './residual.ts';
 import { createSoundLine } from './soundLine.ts';
+import { createSourceState } from './sourceState.ts';
 import type { Takes, TakeSource } from './takes.ts';
 
 /** Twice the ramp, since the message takes its time as well; then the context may rest. */
@@ -43,14 +44,23 @@ type Shared =
   | 'setMatched'
   | 'matchDb'
   | 'source'
+  | 'region'
+  | 'setRegion'
+  | 'seek'
+  | 'positionSec'
+  | 'sourceSamples'
   | 'rateHz'
   | 'latencySec'
+  | 'outputLatencySec'
   | 'spectrumRateHz';
 type Level = 'listenDb' | 'setListenDb' | 'ceilingDbfs' | 'setCeilingDbfs';
 
 export interface Listening extends Pick<Bench, Shared | Level> {
-  /** Puts another clip in place of the source; sound that plays goes on. Rejects, and changes nothing, where the clip cannot be played. */
-  setSource(clip: Clip, kind: SourceInfo['kind']): Promise<void>;
+  /**
+   * Puts another source in place of the one there is; sound that plays goes on, but live input begins muted. Rejects, and changes nothing, where it
+   * cannot be played.
+   */
+  setSource(source: Source): Promise<void>;
   /** What takes need of it. */
   readonly forTakes: TakeSource;
 }
@@ -71,8 +81,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
   const muted = signal(false);
   const rateHz = signal<number | null>(null);
   const latencySec = signal<number | null>(null);
-  const source = signal<SourceInfo>({ title: '', seconds: 0, kind: 'phrase' });
-  let clip: Clip | null = null;
+  const outputLatencySec = signal<number | null>(null);
   let pausedBySystem = false;
 
   const send = (message: ToCell) => line.send(message);
@@ -84,7 +93,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
   const residual = createResidualState(hearing.hearing, send, () => update());
   const chains = createChains({ document, notes, previous: hearing.wantedPrevious, wantsNoise: residual.wantsNoise, send });
   const matching = createMatching({
-    ...{ document, previous: before, notes, slots: chains.slots, send, clip: () => clip },
+    ...{ document, previous: before, notes, slots: chains.slots, send, clip: () => source.clip() },
     openWorker: parts.openLoudnessWorker,
   });
   const loudness = createLoudness(send);
@@ -130,6 +139,10 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       );
     },
     failed: (error) => fail(error),
+    outputLost() {
+      stop();
+      notes.fault('The sound output is gone; sound was stopped.', 'Plug the device in or choose another in the system, then press Start.');
+    },
     paused(on) {
       if (on && state.peek() === 'playing') {
         pausedBySystem = true;
@@ -142,6 +155,8 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     },
     takeEnded: () => endTakeHeard(),
   });
+
+  const source = createSourceState(() => line.sound());
 
   const fail = (error: unknown) => {
     state.value = 'failed';
@@ -161,6 +176,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     slots: chains.slots,
     noteLatency(samples) {
       latencySec.value = samples / (rateHz.peek() ?? RATE_BEFORE_START_HZ);
+      outputLatencySec.value = line.sound()?.outputLatencySec() ?? null;
     },
   });
 
@@ -174,13 +190,14 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
   };
   watchMoves(document, update);
 
-  const adapt = async (next: Clip) => {
-    await line.adapt(next);
-    const playedHz = line.sound()?.sampleRateHz ?? next.sampleRateHz;
-    if (playedHz === next.sampleRateHz) return;
+  const adapt = async (next: Source) => {
+    const form = formOf(next);
+    await line.adapt(form, source.feed);
+    const playedHz = line.sound()?.sampleRateHz ?? form.sampleRateHz;
+    if (playedHz === form.sampleRateHz) return;
     notes.add(
       'note',
-      `This machine plays at ${playedHz} Hz; “${next.title}” (${next.sampleRateHz} Hz) is resampled to be heard, never to be rendered.`,
+      `This machine plays at ${playedHz} Hz; “${form.title}” (${form.sampleRateHz} Hz) is resampled to be heard, never to be rendered.`,
     );
   };
 
@@ -190,14 +207,14 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     if (missing !== null) return fail(missing);
     state.value = 'starting';
     try {
-      if (clip === null) await loadFirstSource();
-      if (clip === null) throw new Error('There is nothing to play. Choose a phrase or open a file.');
+      if (source.current() === null) await loadFirstSource();
       const open = line.sound();
       if (open !== null) await open.resume();
       // Another source may be chosen while this one is being opened.
-      for (let adapted: Clip | null = open === null ? null : clip; adapted !== clip; ) {
-        adapted = clip;
-        await adapt(clip);
+      for (let adapted = open === null ? null : source.current(); adapted === null || adapted !== source.current(); ) {
+        adapted = source.current();
+        if (adapted === null) throw new Error('There is nothing to play. Choose a phrase or open a file.');
+        await adapt(adapted);
       }
       // Stop may have been pressed meanwhile.
       if (state.peek() !== ('starting' as SoundState)) return suspend();
@@ -211,6 +228,21 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
 
   const suspend = () => {
     line.sound()?.suspend().catch(fail);
+  };
+
+  const stop = () => {
+    if (state.peek() !== 'starting' && state.peek() !== 'playing') return;
+    state.value = 'stopped';
+    takes().endTake();
+    line.send({ type: 'mute', on: true });
+    setTimeout(() => {
+      if (state.peek() === 'stopped') suspend();
+    }, MUTED_AFTER_MS);
+  };
+
+  const setMuted = (on: boolean) => {
+    muted.value = on;
+    if (state.peek() === 'playing') line.send({ type: 'mute', on });
   };
 
   return {
@@ -228,35 +260,31 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     matchDb: matching.matchDb,
     rateHz,
     latencySec,
-    source,
+    outputLatencySec,
+    source: source.source,
+    region: source.region,
+    setRegion: source.setRegion,
+    seek: source.seek,
+    positionSec: source.positionSec,
+    sourceSamples: source.sourceSamples,
     listenDb: loudness.listenDb,
     setListenDb: loudness.setListenDb,
     ceilingDbfs: loudness.ceilingDbfs,
     setCeilingDbfs: loudness.setCeilingDbfs,
     spectrumRateHz: computed(() => rateHz.value ?? RATE_BEFORE_START_HZ),
     start,
-    stop() {
-      if (state.peek() !== 'starting' && state.peek() !== 'playing') return;
-      state.value = 'stopped';
-      takes().endTake();
-      line.send({ type: 'mute', on: true });
-      setTimeout(() => {
-        if (state.peek() === 'stopped') suspend();
-      }, MUTED_AFTER_MS);
-    },
-    setMuted(on) {
-      muted.value = on;
-      if (state.peek() === 'playing') line.send({ type: 'mute', on });
-    },
-    async setSource(next, kind) {
+    stop,
+    setMuted,
+    async setSource(next) {
+      const { title, sampleRateHz, channels } = formOf(next);
       try {
-        compileChain(document.design.peek(), document.heardVariant.peek(), next.sampleRateHz, next.channels.length, 'lowLatency');
+        compileChain(document.design.peek(), document.heardVariant.peek(), sampleRateHz, channels, 'lowLatency');
       } catch (error) {
-        throw new RangeError(`“${next.title}” cannot be played: ${sentenceOf(error)}.`);
+        throw new RangeError(`“${title}” cannot be played: ${sentenceOf(error)}.`);
       }
-      clip = next;
+      if (next.kind === 'live') setMuted(true);
+      source.set(next);
       matching.noteSource();
-      source.value = { title: next.title, seconds: clipSeconds(next), kind };
       if (line.sound() === null) return;
       if (state.peek() === 'playing') await adapt(next).catch(fail);
       else await line.close();
@@ -271,7 +299,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
         return true;
       },
       rateHz: () => rateHz.peek() ?? RATE_BEFORE_START_HZ,
-      clip: () => clip,
+      clip: source.clip,
       heardWords: hearing.words,
       hearsCell: () => hearing.heard() === 'cell',
     },

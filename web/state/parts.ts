@@ -2,6 +2,8 @@
 import type { Clip } from '../audio/clip.ts';
 import { decodeAudio } from '../audio/decode.ts';
 import { missingFeature } from '../audio/features.ts';
+import type { Inputs } from '../audio/input.ts';
+import { browserInputs } from '../audio/input.ts';
 import type { OpenSound } from '../audio/sound.ts';
 import { openSound, prepareSound } from '../audio/sound.ts';
 import BenchWorker from './bench.worker.ts?worker';
@@ -12,6 +14,7 @@ export interface Parts {
   /** Fetches what the first start needs. */
   prepareSound(): Promise<unknown>;
   missingFeature(): string | null;
+  readonly inputs: Inputs;
   decodeAudio(bytes: ArrayBuffer, title: string): Promise<Clip>;
   /** Reads one of the page's own files; throws an Error with a sentence. */
   fetchBytes(path: string): Promise<ArrayBuffer>;
@@ -26,6 +29,7 @@ export function browserParts(): Parts {
     openSound,
     prepareSound,
     missingFeature,
+    inputs: browserInputs(),
     decodeAudio,
     fetchBytes,
     openReadingWorker: () => portOf(new BenchWorker()),

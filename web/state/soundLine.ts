@@ -1,7 +1,7 @@
 /** The sound's life: opened at the source's rate, fitted to another source, mended when its processor fails, closed. */
 import type { CellOptions, FromCell, ToCell } from '../../worklet/protocol.ts';
-import type { Clip } from '../audio/clip.ts';
 import type { OpenSound, Sound } from '../audio/sound.ts';
+import type { Feed, SourceForm } from '../audio/source.ts';
 
 const MOST_REBUILDS = 3;
 const REBUILD_WINDOW_MS = 10_000;
@@ -17,6 +17,7 @@ export interface LineEvents {
   /** Making it anew failed too. */
   failed(error: unknown): void;
   paused(on: boolean): void;
+  outputLost(): void;
   takeEnded(): void;
 }
 
@@ -25,15 +26,15 @@ export interface SoundLine {
   sound(): Sound | null;
   /** Channels of the processor that is open. */
   channels(): number | null;
-  /** Opens sound for the clip, or fits what is open to it, and loops it. Rejects with a sentence. */
-  adapt(clip: Clip): Promise<void>;
+  /** Opens sound for a source, or fits what is open to it, and feeds it. Rejects with a sentence. */
+  adapt(form: SourceForm, feed: () => Feed): Promise<void>;
   send(message: ToCell, transfer?: Transferable[]): boolean;
   close(): Promise<void>;
 }
 
 export function createSoundLine(openSound: OpenSound, events: LineEvents, now: () => number = () => performance.now()): SoundLine {
   let sound: Sound | null = null;
-  let fitted: { readonly rateHz: number; readonly channels: number } | null = null;
+  let fitted: SourceForm | null = null;
   let rebuilds: number[] = [];
   let turn: Promise<unknown> = Promise.resolve();
 
@@ -51,10 +52,10 @@ export function createSoundLine(openSound: OpenSound, events: LineEvents, now: (
     await closing?.close();
   };
 
-  const rebuild = async (rateHz: number, channels: number) => {
+  const rebuild = async (form: SourceForm) => {
     if (sound === null) return;
-    await sound.rebuild(events.cellFor(sound.sampleRateHz, channels));
-    fitted = { rateHz, channels };
+    await sound.rebuild(events.cellFor(sound.sampleRateHz, form.channels));
+    fitted = form;
     events.renewed();
   };
 
@@ -63,27 +64,26 @@ export function createSoundLine(openSound: OpenSound, events: LineEvents, now: (
     rebuilds = [...rebuilds.filter((each) => at - each < REBUILD_WINDOW_MS), at];
     const givenUp = rebuilds.length > MOST_REBUILDS;
     events.broken(givenUp);
-    inTurn(() => (givenUp || fitted === null ? close() : rebuild(fitted.rateHz, fitted.channels))).catch(events.failed);
+    inTurn(() => (givenUp || fitted === null ? close() : rebuild(fitted))).catch(events.failed);
   };
 
-  const adapt = async (clip: Clip) => {
-    const rateHz = clip.sampleRateHz;
-    const channels = clip.channels.length;
-    if (sound !== null && fitted?.rateHz !== rateHz) await close();
+  const adapt = async (form: SourceForm, feed: () => Feed) => {
+    const fits = fitted?.sampleRateHz === form.sampleRateHz && fitted.latency === form.latency;
+    if (sound !== null && !fits) await close();
     if (sound === null) {
-      sound = await openSound(rateHz, (openedHz) => events.cellFor(openedHz, channels), { ...events, broken: mend });
-      fitted = { rateHz, channels };
+      sound = await openSound(form, (openedHz) => events.cellFor(openedHz, form.channels), { ...events, broken: mend });
+      fitted = form;
       events.renewed();
-    } else if (fitted?.channels !== channels) {
-      await rebuild(rateHz, channels);
+    } else if (fitted?.channels !== form.channels) {
+      await rebuild(form);
     }
-    sound.loop(clip);
+    sound.feed(feed());
   };
 
   return {
     sound: () => sound,
     channels: () => fitted?.channels ?? null,
-    adapt: (clip) => inTurn(() => adapt(clip)),
+    adapt: (form, feed) => inTurn(() => adapt(form, feed)),
     send(message, transfer) {
       sound?.send(message, transfer);
       return sound !== null;

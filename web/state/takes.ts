@@ -151,7 +151,11 @@ export function createTakes(parts: Parts, document: DocumentState, source: TakeS
     cutShort: finish,
     renderClip() {
       const clip = source.clip();
-      if (clip === null || render !== null) return Promise.resolve();
+      if (render !== null) return Promise.resolve();
+      if (clip === null) {
+        notes.fault('There is no whole to render; live input has no end.', 'Take what is heard instead.');
+        return Promise.resolve();
+      }
       if (!store.makeRoom(bytesOf(clip.channels))) {
         notes.fault(
           `A render of ${Math.round(bytesOf(clip.channels) / 1e6)} MB does not fit into the ${ROOM}.`,

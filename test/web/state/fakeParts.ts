@@ -5,6 +5,8 @@ import { renderClip } from '../../../model/chain/render.ts';
 import { loudnessOf } from '../../../model/measure/loudness.ts';
 import type { Clip } from '../../../web/audio/clip.ts';
 import { decodeAudio } from '../../../web/audio/decode.ts';
+import type { InputDevice, Inputs, LiveInput } from '../../../web/audio/input.ts';
+import type { Feed, SourceForm } from '../../../web/audio/source.ts';
 import type { Sound, SoundEvents } from '../../../web/audio/sound.ts';
 import type { Parts } from '../../../web/state/parts.ts';
 import type { FromLoudness, FromReading, FromRender, ToLoudness, ToReading, ToRender, WorkerPort } from '../../../web/state/workers.ts';
@@ -13,14 +15,18 @@ import type { CellOptions, FromCell, ToCell } from '../../../worklet/protocol.ts
 export class FakeSound implements Sound {
   readonly told: ToCell[] = [];
   readonly loops: Clip[] = [];
+  readonly feeds: Feed[] = [];
+  playedSec = 0;
   readonly played: (Clip | null)[] = [];
   readonly cells: CellOptions[] = [];
   state: 'running' | 'suspended' | 'closed' = 'running';
   readonly sampleRateHz: number;
+  readonly latency: SourceForm['latency'];
   readonly events: SoundEvents;
 
-  constructor(sampleRateHz: number, cell: CellOptions, events: SoundEvents) {
+  constructor(sampleRateHz: number, latency: SourceForm['latency'], cell: CellOptions, events: SoundEvents) {
     this.sampleRateHz = sampleRateHz;
+    this.latency = latency;
     this.events = events;
     this.cells.push(cell);
   }
@@ -34,8 +40,19 @@ export class FakeSound implements Sound {
     return this.told.filter((message): message is ToCell & { type: T } => message.type === type).at(-1);
   }
 
-  loop(clip: Clip): void {
-    this.loops.push(clip);
+  feed(feed: Feed): void {
+    this.feeds.push(feed);
+    if (feed.kind !== 'clip') return;
+    this.loops.push(feed.clip);
+    this.playedSec = feed.atSec;
+  }
+
+  positionSec(): number {
+    return this.playedSec;
+  }
+
+  outputLatencySec(): number {
+    return 0.02;
   }
 
   playTake(clip: Clip | null): void {
@@ -85,7 +102,50 @@ export class FakeWorker<Out, In> implements WorkerPort<Out, In> {
   }
 }
 
+/** Two inputs that can be unplugged. */
+export class FakeInputs implements Inputs {
+  devices: InputDevice[] = [
+    { id: 'built-in', title: 'Built-in microphone' },
+    { id: 'interface', title: 'Two-channel interface' },
+  ];
+  refusal: Error | null = null;
+  rate = 48000;
+  readonly opened: { readonly input: LiveInput; readonly unplug: () => void; ended: boolean }[] = [];
+  changed: () => void = () => {};
+  keptOn: readonly string[] = [];
+
+  async list() {
+    return this.devices;
+  }
+
+  async open(deviceId: string | null, unplug: () => void): Promise<LiveInput> {
+    if (this.refusal !== null) throw this.refusal;
+    const { id, title } = this.devices.find((device) => device.id === deviceId) ?? this.devices[0];
+    const of = {
+      title,
+      deviceId: id,
+      sampleRateHz: this.rate,
+      channels: id === 'interface' ? 2 : 1,
+      latencySec: 0.01,
+      keptOn: this.keptOn,
+    };
+    const input: LiveInput = { ...of, stream: {} as MediaStream, end: () => Object.assign(record, { ended: true }) };
+    const record = { input, unplug, ended: false };
+    this.opened.push(record);
+    return input;
+  }
+
+  rateHz(): number {
+    return this.rate;
+  }
+
+  watch(changed: () => void): void {
+    this.changed = changed;
+  }
+}
+
 export interface FakeParts extends Parts {
+  readonly inputs: FakeInputs;
   readonly sounds: FakeSound[];
   readonly readingWorker: FakeWorker<ToReading, FromReading>;
   readonly renderWorkers: FakeWorker<ToRender, FromRender>[];
@@ -109,16 +169,17 @@ export function createFakeParts(): FakeParts {
     missing: null,
     refusal: null,
     onlyRateHz: null,
-    async openSound(sampleRateHz, cellFor, events) {
+    async openSound({ sampleRateHz, latency }, cellFor, events) {
       if (parts.refusal !== null) throw parts.refusal;
       const rateHz = parts.onlyRateHz ?? sampleRateHz;
-      const sound = new FakeSound(rateHz, cellFor(rateHz), events);
+      const sound = new FakeSound(rateHz, latency, cellFor(rateHz), events);
       parts.sounds.push(sound);
       events.message({ type: 'ready', latencySamples: 48 } satisfies FromCell);
       return sound;
     },
     prepareSound: async () => {},
     missingFeature: () => parts.missing,
+    inputs: new FakeInputs(),
     decodeAudio,
     async fetchBytes(path) {
       const bytes = readFileSync(asset(path));
