@@ -59,7 +59,7 @@ export function createResidual({ lanes, drive, quiet, numbers }: Voice, part: Re
         silentV: new Float64Array(upper),
         noisyV: new Float64Array(part === 'noise' ? upper : 0),
         oversampler: createOversampler(numbers.oversampling, numbers.filters, longest),
-        softener: createSoftener(),
+        softener: createSoftener(lane.softener.table),
       };
     }),
   };

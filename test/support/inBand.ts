@@ -31,7 +31,7 @@ export function renderTone(design: Design, bin: number, toneV: number, filters: 
   const block = new Float64Array(LONGEST_BLOCK);
   for (let start = 0; start < output.length; start += LONGEST_BLOCK) {
     for (let i = 0; i < LONGEST_BLOCK; i++) input[i] = (toneV / design.fullScaleV) * Math.cos((2 * Math.PI * bin * (start + i)) / SIZE);
-    processVoice(used, [input], input, [block], LONGEST_BLOCK);
+    processVoice(used, [input], input, [block], [], LONGEST_BLOCK);
     output.set(block, start);
   }
   return output.map((v) => v * design.fullScaleV);
