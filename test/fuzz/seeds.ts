@@ -3,6 +3,7 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [148, 'no operating point: a ground path of 0.1 mΩ made the network at rest singular'],
   [177, 'junctions of 0.1 A reverse current through a ground path of 0.1 mΩ'],
   [716, 'a driver of 16 μΩ beside picofarads'],
+  [1177, 'more than the drain fed back: the path from where nothing conducts turns back'],
   [1484, 'a pickup of 100 H: 900 V of L/h·I in the sums'],
   [1733, 'a pickup of 100 H with a bias of 1 mA'],
   [2276, '27 fF at the gate beside a ground path of 0.1 mΩ'],
