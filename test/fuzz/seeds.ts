@@ -9,8 +9,10 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [2276, '27 fF at the gate beside a ground path of 0.1 mΩ'],
   [3110, 'a buffer and a stray capacitance feed back 1.5 times the drain: the search found no solution'],
   [3235, 'values moved from 10 MΩ to 24 μΩ'],
+  [5356, 'a ground path of 100 Ω moved to 0.6 mΩ in one sample: 23 kV at the output, in what the witness held to be a circuit of volts'],
   [5581, "Newton's last step left 1.2 pA where the law's tail is 32 mV wide"],
   [5996, 'the smooth law’s table where VGS(off) is no larger than its tail'],
+  [8612, 'a feedback loop of 10 Ω that floats on megohms: 45 pV of rounding at the output, where the witness allowed 7'],
 ];
 
 export const CHAIN_SEEDS: readonly (readonly [seed: number, found: string])[] = [
