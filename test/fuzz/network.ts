@@ -26,6 +26,8 @@ export interface Network {
   readonly rows: Float64Array;
   /** Rows of plain doubles: the currents of the resistors and of the control's draw at the FET's three nodes, A. */
   readonly currents: readonly Float64Array[];
+  /** Of a voltage at every node, what the output gains where each conductance there is wrong by all of itself: Σ |Z|·G over the nodes. */
+  readonly outputSpread: number;
   /** Capacitance or inductance of each state and of each link. */
   readonly stored: Float64Array;
 }
@@ -114,6 +116,7 @@ export function solveNetwork({ elements, values, jfet, outputNode, stateElements
   });
   carry(jfet.gate, jfet.source, n + GATE_SOURCE);
   carry(jfet.gate, jfet.drain, n + GATE_DRAIN);
+  const outputSpread = spreadTo(at(outputNode), matrix, size, nodes.length);
   if (!solveTwofold(matrix, size, right, width)) throw new Error('the network is singular');
   const rows = new Float64Array(2 * (n + 3 + links.length) * width);
   const one = Float64Array.of(1, 0);
@@ -151,6 +154,23 @@ export function solveNetwork({ elements, values, jfet, outputNode, stateElements
     width,
     rows,
     currents,
+    outputSpread,
     stored: Float64Array.from([...stateElements, ...links], (i) => values[i]),
   };
+}
+
+/** Transfer impedances from every node to one, which are a row of the inverse, times what the node's own conductances add up to. */
+function spreadTo(output: number, matrix: Float64Array, size: number, nodes: number): number {
+  if (output < 0) return 0;
+  const transposed = new Float64Array(matrix.length);
+  for (let i = 0; i < size; i++) {
+    for (let k = 0; k < size; k++)
+      for (let part = 0; part < 2; part++) transposed[2 * (k * size + i) + part] = matrix[2 * (i * size + k) + part];
+  }
+  const row = new Float64Array(2 * size);
+  row[2 * output] = 1;
+  if (!solveTwofold(transposed, size, row, 1)) return 0;
+  let sum = 0;
+  for (let i = 0; i < nodes; i++) sum += Math.abs(row[2 * i] * matrix[2 * (i * size + i)]);
+  return sum;
 }

@@ -3,13 +3,16 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [148, 'no operating point: a ground path of 0.1 mΩ made the network at rest singular'],
   [177, 'junctions of 0.1 A reverse current through a ground path of 0.1 mΩ'],
   [716, 'a driver of 16 μΩ beside picofarads'],
+  [1177, 'more than the drain fed back: the path from where nothing conducts turns back'],
   [1484, 'a pickup of 100 H: 900 V of L/h·I in the sums'],
   [1733, 'a pickup of 100 H with a bias of 1 mA'],
   [2276, '27 fF at the gate beside a ground path of 0.1 mΩ'],
   [3110, 'a buffer and a stray capacitance feed back 1.5 times the drain: the search found no solution'],
   [3235, 'values moved from 10 MΩ to 24 μΩ'],
+  [5356, 'a ground path of 100 Ω moved to 0.6 mΩ in one sample: 23 kV at the output, in what the witness held to be a circuit of volts'],
   [5581, "Newton's last step left 1.2 pA where the law's tail is 32 mV wide"],
   [5996, 'the smooth law’s table where VGS(off) is no larger than its tail'],
+  [8612, 'a feedback loop of 10 Ω that floats on megohms: 45 pV of rounding at the output, where the witness allowed 7'],
 ];
 
 export const CHAIN_SEEDS: readonly (readonly [seed: number, found: string])[] = [

@@ -8,7 +8,8 @@
  * Output   the voltage of the output node, V
  * Floor    the number format's: matrices and voltages are kept to half an ulp, which leaves ε·G·V at a node, G the largest conductance in the circuit
  *          (resistors, C/h) and V its largest voltage (L/h times the current of an inductor counts), and ε·|A|·|A⁻¹|·|r| in a row of the step, whose
- *          solution is A⁻¹·r. 1e-13 A for 1 S and 10 V; more where milliohms and picofarads stand in one loop
+ *          solution is A⁻¹·r. The output misses Σ ε·|Z|·G·V over the nodes, Z from there to it: behind megohms it sees a loop of 1 Ω that floats
+ *          beside it. 1e-13 A for 1 S and 10 V; more where milliohms and picofarads stand in one loop
  */
 import type { Cell } from '../../model/cell/cell.ts';
 import type { Circuit } from '../../model/cell/circuit.ts';
@@ -21,8 +22,6 @@ import { addNumber, addProduct } from './twofold.ts';
 /** Half an ulp of 1, times the roundings that eliminating two dozen unknowns adds up, about. */
 const ROUNDING = 64 * 2 ** -53;
 
-/** Of the largest voltage: what the output may miss besides. A node behind megohms sees ε·V of a 1 Ω loop that floats beside it. */
-const OUTPUT_SHARE = 1e-11;
 /** Of the smooth law's table, in its own unit: its pieces are polynomials of degree 5 over 1/8, f⁽⁶⁾/6!·(1/16)⁶/2⁵, f⁽⁶⁾ up to 4. */
 const TABLE_ERROR = 1e-11;
 
@@ -294,7 +293,7 @@ export class Witness {
       where: 'output',
       value: outputV - sum[0],
       currents: this.largestVoltage(),
-      floor: ROUNDING * gross + OUTPUT_SHARE * this.largestVoltage(),
+      floor: ROUNDING * (gross + network.outputSpread * this.largestVoltage()),
     };
   }
 
@@ -312,14 +311,15 @@ export class Witness {
     }, 0);
   }
 
-  /** Of states, sources and supplies, V. */
+  /** Of states before and after the sample, of sources and supplies, V. */
   private largestVoltage(): number {
     const { cell, known } = this;
     const { states, elements } = cell.numbers.plan;
     let most = 0;
     for (let k = 0; k < knownPlaces(cell.stateCount).newJ; k++) {
       const isCurrent = k < cell.stateCount && elements[states[k].element].kind === 'inductor';
-      most = Math.max(most, Math.abs(known[2 * k]) * (isCurrent ? cell.values[states[k].element] / cell.stepSec : 1));
+      const size = k < cell.stateCount ? Math.max(Math.abs(known[2 * k]), Math.abs(cell.state[k])) : Math.abs(known[2 * k]);
+      most = Math.max(most, size * (isCurrent ? cell.values[states[k].element] / cell.stepSec : 1));
     }
     return elements.reduce((v, element, i) => (element.kind === 'supply' ? Math.max(v, Math.abs(cell.values[i])) : v), most);
   }

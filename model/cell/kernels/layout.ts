@@ -116,4 +116,7 @@ export const GIVEN_A = 34;
 export const GIVEN_B = 35;
 export const GIVEN_FREE = 36;
 export const POWER = 37;
-export const STATE_SLOTS = 38;
+/** Working memory of ports.ts: by how much the equations of the two ends are missed, V. */
+export const MISSED_S = 38;
+export const MISSED_D = 39;
+export const STATE_SLOTS = 40;
