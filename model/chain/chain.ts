@@ -5,8 +5,7 @@
 import { gateSourceV } from '../cell/cell.ts';
 import { quietControlV } from '../control/control.ts';
 import type { ChainNumbers } from './compile.ts';
-import { oversamplingDelay } from './oversample.ts';
-import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, type Voice } from './voice.ts';
+import { createVoice, inherit, latencyOf, LONGEST_BLOCK, moveVoice, processVoice, type Voice } from './voice.ts';
 
 const FADE_SEC = 0.03;
 /** A new voice runs unheard for this long before it is faded in, so that its filters are full. */
@@ -50,7 +49,7 @@ export function createChain(numbers: ChainNumbers): Chain {
   const voice = createVoice(numbers);
   return {
     numbers,
-    latencySamples: oversamplingDelay(numbers.oversampling, numbers.filters),
+    latencySamples: latencyOf(numbers),
     readings: {
       controlV: quietControlV(numbers.control),
       gateSourceV: gateSourceV(voice.quiet.cell),
@@ -98,7 +97,7 @@ function startFade(chain: Chain, next: Voice): void {
   inherit(next, chain.voice);
   chain.next = next;
   chain.fadeDone = -Math.round(LEAD_SEC * next.numbers.sampleRateHz);
-  chain.latencySamples = oversamplingDelay(next.numbers.oversampling, next.numbers.filters);
+  chain.latencySamples = latencyOf(next.numbers);
 }
 
 /** Any number of frames. Missing inputs are silence; `external` is the recorded control, where the design has one, silence when missing. Never throws, allocates nothing. */

@@ -7,13 +7,14 @@ import { advanceCell, aimAt, approach, arrive, type Cell, createCell, inheritSta
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
-import { createAmplifierState, GAIN, processAmplifier } from './amplifier.ts';
+import { createAmplifierState, processAmplifier } from './amplifier.ts';
 import { createKinks } from '../cell/kernels/kinks.ts';
 import type { ChainNumbers } from './compile.ts';
 import { advanceSlice, createDrive, type Drive, inheritDrive, restDrive } from './drive.ts';
 import { clearSoftener, createSoftener, type Softener, soften } from './kinks.ts';
-import { bendTable } from './kinkTables.ts';
-import { clearOversampler, createOversampler, lower, type Oversampler, raise } from './oversample.ts';
+import { bendTable, lagTable } from './kinkTables.ts';
+import { GAIN } from './limits.ts';
+import { clearOversampler, createOversampler, lower, type Oversampler, oversamplingDelay, raise } from './oversample.ts';
 
 /** Lower-rate samples that a voice takes at a time. */
 export const LONGEST_BLOCK = 128;
@@ -83,6 +84,9 @@ export interface Lane {
   /** Where the output bends, and what softens that; nothing without oversampling. */
   readonly kinks: Float64Array;
   readonly softener: Softener;
+  /** The same of a real amplifier. */
+  readonly amplifierKinks: Float64Array;
+  readonly amplifierSoftener: Softener;
   readonly values: Moving;
   readonly noise: Float64Array;
   readonly gaussian: GaussianSource;
@@ -116,6 +120,16 @@ export interface Voice {
   readonly quiet: Quiet;
 }
 
+/** The cell's kinks, then those of a real amplifier. */
+function timesSoftened({ idealAmplifier }: ChainNumbers): number {
+  return idealAmplifier ? 1 : 2;
+}
+
+/** In samples of the lower rate. */
+export function latencyOf(numbers: ChainNumbers): number {
+  return oversamplingDelay(numbers.oversampling, numbers.filters, timesSoftened(numbers));
+}
+
 function moving(values: Float64Array): Moving {
   const copy = () => Float64Array.from(values);
   return { now: values, from: copy(), to: copy(), aim: copy(), increment: new Float64Array(values.length) };
@@ -128,16 +142,19 @@ export function createVoice(numbers: ChainNumbers): Voice {
   const restV = quietControlV(numbers.control);
   const quietCell = createCell(numbers.cells[0], QUIET_STEP / sampleRateHz);
   settle(quietCell, 0, restV);
+  const isReal = oversampling > 1 && !numbers.idealAmplifier;
   const lanes = numbers.cells.map((values, channel): Lane => {
     const cell = createCell(values, stepSec);
     settle(cell, 0, restV);
     const noiseLength = noiseSeed === null ? 0 : LONGEST_BLOCK * oversampling * noiseWidth(cell.stateCount);
     return {
       cell,
-      oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK),
+      oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK, timesSoftened(numbers)),
       amplifier: createAmplifierState(),
       kinks: oversampling > 1 ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
       softener: createSoftener(bendTable(oversampling)),
+      amplifierKinks: isReal ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
+      amplifierSoftener: createSoftener(lagTable(oversampling)),
       values: moving(Float64Array.from(cell.values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
@@ -250,6 +267,7 @@ export function processVoice(
     if (!allFinite(low, count)) {
       clearOversampler(lanes[channel].oversampler);
       clearSoftener(lanes[channel].softener);
+      clearSoftener(lanes[channel].amplifierSoftener);
       lanes[channel].amplifier.fill(0);
       sound = false;
     }
@@ -332,9 +350,10 @@ function amplify({ numbers, lanes, amplifier, amplifierNow }: Voice, upperCount:
     const signal = lane.oversampler.buffers[lane.oversampler.buffers.length - 1];
     for (let i = 0; i < moving; i++) {
       for (let index = 0; index < amplifierNow.length; index++) amplifierNow[index] = levelAt(amplifier, index, i);
-      processAmplifier(amplifierNow, lane.amplifier, signal, i, i + 1);
+      processAmplifier(amplifierNow, lane.amplifier, signal, i, i + 1, lane.amplifierKinks);
     }
-    processAmplifier(amplifier.to, lane.amplifier, signal, moving, upperCount);
+    processAmplifier(amplifier.to, lane.amplifier, signal, moving, upperCount, lane.amplifierKinks);
+    if (numbers.oversampling > 1) soften(lane.amplifierSoftener, signal, lane.amplifierKinks, upperCount);
   }
   amplifier.done = Math.min(amplifier.done + upperCount, amplifier.total);
 }
