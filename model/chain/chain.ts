@@ -5,7 +5,7 @@
 import { gateSourceV } from '../cell/cell.ts';
 import { quietControlV } from '../control/control.ts';
 import type { ChainNumbers } from './compile.ts';
-import { oversamplingDelay } from './oversample.ts';
+import { latencyOf } from './latency.ts';
 import type { ResidualPart } from './residual.ts';
 import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, setVoiceResidual, type Voice } from './voice.ts';
 
@@ -57,7 +57,7 @@ export function createChain(numbers: ChainNumbers): Chain {
   const voice = createVoice(numbers);
   return {
     numbers,
-    latencySamples: oversamplingDelay(numbers.oversampling, numbers.filters),
+    latencySamples: latencyOf(numbers),
     readings: {
       controlV: quietControlV(numbers.control),
       gateSourceV: gateSourceV(voice.quiet.cell),
@@ -116,7 +116,7 @@ function startFade(chain: Chain, next: Voice): void {
   setVoiceResidual(next, chain.residual);
   chain.next = next;
   chain.fadeDone = -Math.round(LEAD_SEC * next.numbers.sampleRateHz);
-  chain.latencySamples = oversamplingDelay(next.numbers.oversampling, next.numbers.filters);
+  chain.latencySamples = latencyOf(next.numbers);
 }
 
 /**

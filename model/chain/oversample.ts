@@ -14,26 +14,29 @@ export interface Oversampler {
 }
 
 /** Upper-rate samples of extra delay that make the linear-phase round trip a whole number of lower-rate samples. */
-function paddingSamples(factor: number, filters: FilterSet): number {
+function paddingSamples(factor: number, filters: FilterSet, softened: number): number {
   if (filters === 'lowLatency') return 0;
-  const upper = Math.round(filterDelay(factor, filters) * factor);
+  const upper = Math.round(filterDelay(factor, filters, softened) * factor);
   return (factor - (upper % factor)) % factor;
 }
 
 /** Of the filters, and of what softens kinks at the upper rate. */
-function filterDelay(factor: number, filters: FilterSet): number {
-  let sum = factor > 1 ? KINK_DELAY / factor : 0;
+function filterDelay(factor: number, filters: FilterSet, softened: number): number {
+  let sum = factor > 1 ? (softened * KINK_DELAY) / factor : 0;
   for (let stage = 0, rate = 1; rate < factor; stage++, rate *= 2) sum += roundTripSamples(filters, stage) / rate;
   return sum;
 }
 
-/** Delay of the way up and down, in samples of the lower rate: whole for linear phase, that of low frequencies for low latency. */
-export function oversamplingDelay(factor: number, filters: FilterSet): number {
-  return filterDelay(factor, filters) + paddingSamples(factor, filters) / factor;
+/**
+ * Delay of the way up and down, in samples of the lower rate: whole for linear phase, that of low frequencies for low latency. Kinks are softened
+ * `softened` times between the two.
+ */
+export function oversamplingDelay(factor: number, filters: FilterSet, softened = 1): number {
+  return filterDelay(factor, filters, softened) + paddingSamples(factor, filters, softened) / factor;
 }
 
 /** For runs of up to `longest` samples at the lower rate. */
-export function createOversampler(factor: number, filters: FilterSet, longest: number): Oversampler {
+export function createOversampler(factor: number, filters: FilterSet, longest: number, softened = 1): Oversampler {
   const stages: number[] = [];
   const buffers = [new Float64Array(longest)];
   for (let rate = 2; rate <= factor; rate *= 2) {
@@ -45,8 +48,8 @@ export function createOversampler(factor: number, filters: FilterSet, longest: n
     up: stages.map((stage) => createHalf(filters, stage)),
     down: stages.map((stage) => createHalf(filters, stage)),
     buffers,
-    delay: new Float64Array(paddingSamples(factor, filters)),
-    leaving: new Float64Array(paddingSamples(factor, filters)),
+    delay: new Float64Array(paddingSamples(factor, filters, softened)),
+    leaving: new Float64Array(paddingSamples(factor, filters, softened)),
   };
 }
 

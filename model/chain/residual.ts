@@ -10,6 +10,7 @@ import { advanceCell, type Cell, copyOf, inheritStates, settle } from '../cell/c
 import { advanceTwin, createTwin, restTwin, type Twin } from '../cell/twin.ts';
 import type { Design } from '../design/types.ts';
 import { clearSoftener, createSoftener, type Softener, soften } from './kinks.ts';
+import { timesSoftened } from './latency.ts';
 import { clearOversampler, createOversampler, lower, type Oversampler } from './oversample.ts';
 import type { Voice } from './voice.ts';
 
@@ -28,6 +29,8 @@ interface Copies {
   readonly noisyV: Float64Array;
   readonly oversampler: Oversampler;
   readonly softener: Softener;
+  /** As late as a real amplifier's own; null beside an ideal one. */
+  readonly later: Softener | null;
 }
 
 export interface Residual {
@@ -36,6 +39,7 @@ export interface Residual {
 }
 
 const SEED = 1;
+const NO_KINKS = new Float64Array(1);
 
 /** A design whose parts hiss, with the seed that it has or one of ours. */
 export function withNoise(design: Design): Design {
@@ -58,8 +62,9 @@ export function createResidual({ lanes, drive, quiet, numbers }: Voice, part: Re
         audio: new Float64Array(upper),
         silentV: new Float64Array(upper),
         noisyV: new Float64Array(part === 'noise' ? upper : 0),
-        oversampler: createOversampler(numbers.oversampling, numbers.filters, longest),
+        oversampler: createOversampler(numbers.oversampling, numbers.filters, longest, timesSoftened(numbers)),
         softener: createSoftener(lane.softener.table),
+        later: numbers.idealAmplifier ? null : createSoftener(lane.softener.table),
       };
     }),
   };
@@ -103,7 +108,7 @@ export function advanceResidual({ lanes, part }: Residual, voice: Voice, from: n
 
 /** The residual of one channel at the lower rate, V, in the array that is returned; before the cell's own kinks are forgotten. */
 export function lowerResidual({ lanes, part }: Residual, voice: Voice, channel: number, count: number): Float64Array {
-  const { oversampler, softener } = lanes[channel];
+  const { oversampler, softener, later } = lanes[channel];
   const { kinks } = voice.lanes[channel];
   const { oversampling } = voice.numbers;
   if (oversampling > 1) {
@@ -111,6 +116,7 @@ export function lowerResidual({ lanes, part }: Residual, voice: Voice, channel: 
     if (part !== 'distortion') kinks[0] = 0;
     soften(softener, topOf(oversampler), kinks, count * oversampling);
     kinks[0] = marked;
+    if (later !== null) soften(later, topOf(oversampler), NO_KINKS, count * oversampling);
   }
   return lower(oversampler, count);
 }
@@ -118,13 +124,14 @@ export function lowerResidual({ lanes, part }: Residual, voice: Voice, channel: 
 /** A state was lost and the cells are at rest: so are the copies. */
 export function restResidual({ lanes }: Residual, controlV: number): void {
   for (let channel = 0; channel < lanes.length; channel++) {
-    const { silent, twin, noisy, oversampler, softener } = lanes[channel];
+    const { silent, twin, noisy, oversampler, softener, later } = lanes[channel];
     silent.state.fill(0);
     settle(silent, 0, controlV);
     if (twin !== null) restTwin(twin);
     if (noisy !== null) noisy.state.set(silent.state);
     clearOversampler(oversampler);
     clearSoftener(softener);
+    if (later !== null) clearSoftener(later);
   }
 }
 

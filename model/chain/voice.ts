@@ -7,12 +7,14 @@ import { advanceCell, aimAt, approach, arrive, type Cell, createCell, inheritSta
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
-import { createAmplifierState, GAIN, processAmplifier } from './amplifier.ts';
+import { createAmplifierState, processAmplifier } from './amplifier.ts';
 import { createKinks } from '../cell/kernels/kinks.ts';
 import type { ChainNumbers } from './compile.ts';
 import { advanceSlice, createDrive, type Drive, inheritDrive, restDrive } from './drive.ts';
 import { clearSoftener, createSoftener, type Softener, soften } from './kinks.ts';
-import { bendTable } from './kinkTables.ts';
+import { bendTable, lagTable } from './kinkTables.ts';
+import { timesSoftened } from './latency.ts';
+import { GAIN } from './limits.ts';
 import { clearOversampler, createOversampler, lower, type Oversampler, raise } from './oversample.ts';
 import { advanceResidual, createResidual, keepAudio, lowerResidual, type Residual, type ResidualPart, restResidual } from './residual.ts';
 
@@ -85,6 +87,9 @@ export interface Lane {
   /** Where the output bends, and what softens that; nothing without oversampling. */
   readonly kinks: Float64Array;
   readonly softener: Softener;
+  /** The same of a real amplifier. */
+  readonly amplifierKinks: Float64Array;
+  readonly amplifierSoftener: Softener;
   readonly values: Moving;
   readonly noise: Float64Array;
   readonly gaussian: GaussianSource;
@@ -132,16 +137,19 @@ export function createVoice(numbers: ChainNumbers): Voice {
   const restV = quietControlV(numbers.control);
   const quietCell = createCell(numbers.cells[0], QUIET_STEP / sampleRateHz);
   settle(quietCell, 0, restV);
+  const isReal = oversampling > 1 && !numbers.idealAmplifier;
   const lanes = numbers.cells.map((values, channel): Lane => {
     const cell = createCell(values, stepSec);
     settle(cell, 0, restV);
     const noiseLength = noiseSeed === null ? 0 : LONGEST_BLOCK * oversampling * noiseWidth(cell.stateCount);
     return {
       cell,
-      oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK),
+      oversampler: createOversampler(oversampling, filters, LONGEST_BLOCK, timesSoftened(numbers)),
       amplifier: createAmplifierState(),
       kinks: oversampling > 1 ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
       softener: createSoftener(bendTable(oversampling)),
+      amplifierKinks: isReal ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
+      amplifierSoftener: createSoftener(lagTable(oversampling)),
       values: moving(Float64Array.from(cell.values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
@@ -263,6 +271,7 @@ export function processVoice(
     if (!allFinite(low, count)) {
       clearOversampler(lanes[channel].oversampler);
       clearSoftener(lanes[channel].softener);
+      clearSoftener(lanes[channel].amplifierSoftener);
       lanes[channel].amplifier.fill(0);
       sound = false;
     }
@@ -358,9 +367,10 @@ function amplify({ numbers, lanes, amplifier, amplifierNow }: Voice, upperCount:
     const signal = lane.oversampler.buffers[lane.oversampler.buffers.length - 1];
     for (let i = 0; i < moving; i++) {
       for (let index = 0; index < amplifierNow.length; index++) amplifierNow[index] = levelAt(amplifier, index, i);
-      processAmplifier(amplifierNow, lane.amplifier, signal, i, i + 1);
+      processAmplifier(amplifierNow, lane.amplifier, signal, i, i + 1, lane.amplifierKinks);
     }
-    processAmplifier(amplifier.to, lane.amplifier, signal, moving, upperCount);
+    processAmplifier(amplifier.to, lane.amplifier, signal, moving, upperCount, lane.amplifierKinks);
+    if (numbers.oversampling > 1) soften(lane.amplifierSoftener, signal, lane.amplifierKinks, upperCount);
   }
   amplifier.done = Math.min(amplifier.done + upperCount, amplifier.total);
 }

@@ -4,7 +4,8 @@
  * Scheme   the amplifier is driven with the period again and again until its output repeats
  * Error    second order in the grid; where slew or swing cut, one step of the grid at each corner, which the reading's doubling sees
  */
-import { amplifierValues, createAmplifierState, GAIN, isIdeal, processAmplifier, SWING_V } from '../chain/amplifier.ts';
+import { amplifierValues, createAmplifierState, isIdeal, processAmplifier } from '../chain/amplifier.ts';
+import { GAIN, OUTPUT_V, SWING_V } from '../chain/limits.ts';
 import type { Output } from '../design/types.ts';
 
 const MOST_PERIODS = 2000;
@@ -17,10 +18,10 @@ export function amplifiedPeriod(output: Output, period: Float64Array, rateHz: nu
   const state = createAmplifierState();
   const amplified = new Float64Array(period.length);
   for (let turn = 0; turn < MOST_PERIODS; turn++) {
-    const before = state[1];
+    const before = state[OUTPUT_V];
     amplified.set(period);
     processAmplifier(values, state, amplified, 0, amplified.length);
-    if (turn > 0 && Math.abs(state[1] - before) <= REPEATS * (Math.abs(before) + 1e-6)) return { period: amplified, settled: true };
+    if (turn > 0 && Math.abs(state[OUTPUT_V] - before) <= REPEATS * (Math.abs(before) + 1e-6)) return { period: amplified, settled: true };
   }
   return { period: amplified, settled: false };
 }

@@ -22,10 +22,12 @@ export interface Complex {
   readonly im: number;
 }
 
-/** One channel through the chain in Float64, its values V; `corrected` false leaves the cell's kinks as they are. */
+/** One channel through the chain in Float64, its values V; `corrected` false leaves kinks as they are. */
 export function renderTone(design: Design, bin: number, toneV: number, filters: FilterSet, corrected = true): Float64Array {
   const voice = createVoice(compileChain(design, 0, RATE_HZ, 1, filters));
-  const used = corrected ? voice : { ...voice, lanes: voice.lanes.map((lane) => ({ ...lane, kinks: new Float64Array(0) })) };
+  const used = corrected
+    ? voice
+    : { ...voice, lanes: voice.lanes.map((lane) => ({ ...lane, kinks: new Float64Array(0), amplifierKinks: new Float64Array(0) })) };
   const output = new Float64Array(LEAD + SIZE);
   const input = new Float64Array(LONGEST_BLOCK);
   const block = new Float64Array(LONGEST_BLOCK);
@@ -52,9 +54,9 @@ export interface Filters {
   readonly both: (hz: number) => Complex;
 }
 
-/** Measured from their impulse responses; `delays` are whole samples of the upper rate that the chain adds between the two ways. */
-export function filtersOf(factor: number, filters: FilterSet, delays = KINK_DELAY): Filters {
-  const oversampler = createOversampler(factor, filters, LONGEST_BLOCK);
+/** Measured from their impulse responses; between the two ways kinks are softened once, or twice where a real amplifier follows. */
+export function filtersOf(factor: number, filters: FilterSet, softened = 1): Filters {
+  const oversampler = createOversampler(factor, filters, LONGEST_BLOCK, softened);
   const up: number[] = [];
   const both: number[] = [];
   for (let start = 0; start < IMPULSE; start += LONGEST_BLOCK) {
@@ -63,7 +65,7 @@ export function filtersOf(factor: number, filters: FilterSet, delays = KINK_DELA
     up.push(...raise(oversampler, LONGEST_BLOCK));
     both.push(...lower(oversampler, LONGEST_BLOCK));
   }
-  const late = (hz: number): Complex => turned({ re: 1, im: 0 }, (-delays * hz) / (RATE_HZ * factor));
+  const late = (hz: number): Complex => turned({ re: 1, im: 0 }, (-softened * KINK_DELAY * hz) / (RATE_HZ * factor));
   return {
     up: (hz) => responseOf(up, hz / (RATE_HZ * factor), 1 / factor),
     both: (hz) => times(responseOf(both, hz / RATE_HZ, 1), late(hz)),
