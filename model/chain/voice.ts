@@ -206,8 +206,8 @@ export function inherit(voice: Voice, from: Voice): void {
 }
 
 /**
- * Advances by `count` samples, at most LONGEST_BLOCK; `external` is the recorded control, used where there is one. False when a state was lost:
- * the voice is at rest again.
+ * Advances by `count` samples, at most LONGEST_BLOCK; `external` is the recorded control, used where there is one. False when a state was lost, and the
+ * voice is at rest again, or when values on the way of a move make a singular network, and the cell plays on with its last good ones.
  */
 export function processVoice(
   voice: Voice,
@@ -232,11 +232,14 @@ export function processVoice(
     lanes[channel].outputPeakV = 0;
     lanes[channel].lost = false;
   }
-  advanceAll(voice, upperCount);
+  let sound = advanceAll(voice, upperCount);
   advanceQuiet(voice, count);
-  let sound = true;
-  for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) sound = false;
-  if (!sound) restDrive(voice.drive);
+  let lost = false;
+  for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) lost = true;
+  if (lost) {
+    restDrive(voice.drive);
+    sound = false;
+  }
   for (let channel = 0; channel < lanes.length; channel++) {
     if (lanes[channel].lost) putAtRest(voice, lanes[channel], upperCount);
     else fadeIn(voice, lanes[channel], upperCount);
@@ -263,12 +266,13 @@ function top(lane: Lane): Float64Array {
   return buffers[buffers.length - 1];
 }
 
-/** Control and cells; sample by sample while values move. */
-function advanceAll(voice: Voice, upperCount: number): void {
+/** Control and cells; sample by sample while values move. False where those make a singular network. */
+function advanceAll(voice: Voice, upperCount: number): boolean {
   const { lanes, ramp, numbers } = voice;
   let at = 0;
+  let regular = true;
   while (at < upperCount && ramp.done < ramp.total) {
-    if (ramp.inSlice === 0) beginSlice(voice, (ramp.done + 1) / ramp.total);
+    if (ramp.inSlice === 0) regular = beginSlice(voice, (ramp.done + 1) / ramp.total) && regular;
     stepSlice(voice);
     ramp.inSlice += 1;
     if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
@@ -276,20 +280,24 @@ function advanceAll(voice: Voice, upperCount: number): void {
     finish(voice, at, at + 1);
     at += 1;
   }
-  if (at === upperCount) return;
-  advanceSlice(voice.drive, lanes, numbers, at, upperCount);
-  finish(voice, at, upperCount);
+  if (at < upperCount) {
+    advanceSlice(voice.drive, lanes, numbers, at, upperCount);
+    finish(voice, at, upperCount);
+  }
+  return regular;
 }
 
-function beginSlice(voice: Voice, fraction: number): void {
+/** False where the slice's values make a singular network: that cell stays as it is. */
+function beginSlice(voice: Voice, fraction: number): boolean {
   const { updateEvery } = voice.numbers;
+  let regular = true;
   aim(voice.control, fraction, updateEvery);
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const { cell, values } = voice.lanes[channel];
     aim(values, fraction, updateEvery);
-    aimAt(cell, values.aim, updateEvery);
+    if (!aimAt(cell, values.aim, updateEvery)) regular = false;
   }
-  loadValues(voice.quiet.cell, voice.lanes[0].values.aim);
+  return loadValues(voice.quiet.cell, voice.lanes[0].values.aim) && regular;
 }
 
 function stepSlice(voice: Voice): void {
