@@ -227,6 +227,7 @@ function headFor(cell: Cell, values: Float64Array, samples: number): boolean {
     for (let i = 0; i < moved.length; i++) moved[i] = cell.values[i];
     respond(reduction);
     discretise(reduction, stepSec);
+    increment.fill(0);
     return false;
   }
   const near = areNear(cell, values);

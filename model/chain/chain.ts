@@ -4,18 +4,19 @@
  */
 import { gateSourceV } from '../cell/cell.ts';
 import { quietControlV } from '../control/control.ts';
+import { type Aligner, align, createAligner, setAligner } from './align.ts';
 import type { ChainNumbers } from './compile.ts';
 import { latencyOf } from './latency.ts';
 import type { ResidualPart } from './residual.ts';
 import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, setVoiceResidual, type Voice } from './voice.ts';
 
 const FADE_SEC = 0.03;
-/** A new voice runs unheard for this long before it is faded in, so that its filters are full. */
+/** A new voice runs unheard for at least this long before it is faded in, so that its filters are full. */
 const LEAD_SEC = 0.01;
 /** Input samples beyond this many times full scale are no audio: they count as faults and are taken as silence. */
 export const LARGEST_SAMPLE = 1e4;
 
-/** Of the last call of `processChain`; peaks over all channels. `faults` counts blocks with unusable input or a lost state since the start. */
+/** Of the last call of `processChain`; peaks over all channels. `faults` counts blocks with unusable input, a lost state or values that could not be put in force, since the start. */
 export interface ChainReadings {
   /** The control voltage used for the last sample. */
   controlV: number;
@@ -41,6 +42,7 @@ export interface Chain {
   next: Voice | null;
   pending: Voice | null;
   fadeDone: number;
+  readonly aligner: Aligner;
   readonly inputs: readonly Float64Array[];
   readonly external: Float64Array;
   readonly outputs: readonly Float64Array[];
@@ -71,6 +73,7 @@ export function createChain(numbers: ChainNumbers): Chain {
     next: null,
     pending: null,
     fadeDone: 0,
+    aligner: createAligner(numbers.cells.length),
     inputs: buffers(),
     external: new Float64Array(LONGEST_BLOCK),
     outputs: buffers(),
@@ -114,8 +117,9 @@ export function moveChain(chain: Chain, numbers: ChainNumbers): void {
 function startFade(chain: Chain, next: Voice): void {
   inherit(next, chain.voice);
   setVoiceResidual(next, chain.residual);
+  setAligner(chain.aligner, latencyOf(next.numbers) - latencyOf(chain.voice.numbers), Math.round(LEAD_SEC * next.numbers.sampleRateHz));
   chain.next = next;
-  chain.fadeDone = -Math.round(LEAD_SEC * next.numbers.sampleRateHz);
+  chain.fadeDone = -chain.aligner.glide;
   chain.latencySamples = latencyOf(next.numbers);
 }
 
@@ -150,8 +154,13 @@ export function processChain(
 }
 
 /** A fade ends at the end of a block, so that what follows it begins at the same sample whatever the caller's blocks are. */
-function samplesToFadeEnd({ next, fadeDone }: Chain): number {
-  return next ? fadeSamples(next) - fadeDone : LONGEST_BLOCK;
+function samplesToFadeEnd({ next, fadeDone, aligner }: Chain): number {
+  return next ? fadeSamples(next) + tailSamples(aligner) - fadeDone : LONGEST_BLOCK;
+}
+
+/** After the fade a new voice that is earlier than the old one goes back to its own time. */
+function tailSamples({ lateness, glide }: Aligner): number {
+  return lateness < 0 ? glide : 0;
 }
 
 function fadeSamples(next: Voice): number {
@@ -211,10 +220,14 @@ function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number
 function crossfade(chain: Chain, next: Voice, count: number): boolean {
   const sound = processVoice(next, chain.inputs, chain.external, chain.fadeOutputs, chain.fadeResiduals, count);
   const total = fadeSamples(next);
+  const { aligner } = chain;
+  const since = chain.fadeDone + aligner.glide;
+  if (aligner.lateness > 0) align(aligner, chain.outputs, since, 0, count);
+  else if (aligner.lateness < 0) align(aligner, chain.fadeOutputs, since, aligner.glide + total, count);
   mixIn(chain, chain.outputs, chain.fadeOutputs, total, count);
   if (chain.residual !== null) mixIn(chain, chain.residuals, chain.fadeResiduals, total, count);
   chain.fadeDone += count;
-  if (chain.fadeDone >= total) {
+  if (chain.fadeDone >= total + tailSamples(aligner)) {
     chain.voice = next;
     chain.next = null;
     const { pending } = chain;

@@ -226,7 +226,8 @@ export function inherit(voice: Voice, from: Voice): void {
 
 /**
  * Advances by `count` samples, at most LONGEST_BLOCK; `external` is the recorded control, used where there is one. What the cells add goes to
- * `residuals`, where it is asked for. False when a state was lost: the voice is at rest again.
+ * `residuals`, where it is asked for. False when a state was lost, and the voice is at rest again, or when values on the way of a move make a singular
+ * network, and the cell plays on with its last good ones.
  */
 export function processVoice(
   voice: Voice,
@@ -253,12 +254,15 @@ export function processVoice(
     lanes[channel].lost = false;
   }
   if (residual !== null) keepAudio(residual, voice, upperCount);
-  advanceAll(voice, upperCount);
+  let sound = advanceAll(voice, upperCount);
   advanceQuiet(voice, count);
-  let sound = true;
-  for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) sound = false;
-  if (!sound) restDrive(voice.drive);
-  if (residual !== null) leaveResidual(voice, residual, residuals, sound, count);
+  let lost = false;
+  for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) lost = true;
+  if (lost) {
+    restDrive(voice.drive);
+    sound = false;
+  }
+  if (residual !== null) leaveResidual(voice, residual, residuals, lost, count);
   for (let channel = 0; channel < lanes.length; channel++) {
     if (lanes[channel].lost) putAtRest(voice, lanes[channel], upperCount);
     else fadeIn(voice, lanes[channel], upperCount);
@@ -286,12 +290,13 @@ function top(lane: Lane): Float64Array {
   return buffers[buffers.length - 1];
 }
 
-/** Control and cells; sample by sample while values move. */
-function advanceAll(voice: Voice, upperCount: number): void {
+/** Control and cells; sample by sample while values move. False where those make a singular network. */
+function advanceAll(voice: Voice, upperCount: number): boolean {
   const { lanes, ramp, numbers } = voice;
   let at = 0;
+  let regular = true;
   while (at < upperCount && ramp.done < ramp.total) {
-    if (ramp.inSlice === 0) beginSlice(voice, (ramp.done + 1) / ramp.total);
+    if (ramp.inSlice === 0) regular = beginSlice(voice, (ramp.done + 1) / ramp.total) && regular;
     stepSlice(voice);
     ramp.inSlice += 1;
     if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
@@ -300,32 +305,36 @@ function advanceAll(voice: Voice, upperCount: number): void {
     finish(voice, at, at + 1);
     at += 1;
   }
-  if (at === upperCount) return;
-  advanceSlice(voice.drive, lanes, numbers, at, upperCount);
-  if (voice.residual !== null) advanceResidual(voice.residual, voice, at, upperCount);
-  finish(voice, at, upperCount);
+  if (at < upperCount) {
+    advanceSlice(voice.drive, lanes, numbers, at, upperCount);
+    if (voice.residual !== null) advanceResidual(voice.residual, voice, at, upperCount);
+    finish(voice, at, upperCount);
+  }
+  return regular;
 }
 
 /** The residual at the lower rate, in samples; silence where a state was lost. */
-function leaveResidual(voice: Voice, residual: Residual, outputs: readonly Float64Array[], sound: boolean, count: number): void {
+function leaveResidual(voice: Voice, residual: Residual, outputs: readonly Float64Array[], lost: boolean, count: number): void {
+  let usable = !lost;
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const low = lowerResidual(residual, voice, channel, count);
-    const usable = sound && allFinite(low, count);
+    usable = usable && allFinite(low, count);
     for (let i = 0; i < count; i++) outputs[channel][i] = usable ? low[i] * levelAt(voice.levels, RESIDUAL_PER_V, i) : 0;
-    if (!usable) sound = false;
   }
-  if (!sound) restResidual(residual, quietControlV(voice.numbers.control));
+  if (!usable) restResidual(residual, quietControlV(voice.numbers.control));
 }
 
-function beginSlice(voice: Voice, fraction: number): void {
+/** False where the slice's values make a singular network: that cell stays as it is. */
+function beginSlice(voice: Voice, fraction: number): boolean {
   const { updateEvery } = voice.numbers;
+  let regular = true;
   aim(voice.control, fraction, updateEvery);
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const { cell, values } = voice.lanes[channel];
     aim(values, fraction, updateEvery);
-    aimAt(cell, values.aim, updateEvery);
+    if (!aimAt(cell, values.aim, updateEvery)) regular = false;
   }
-  loadValues(voice.quiet.cell, voice.lanes[0].values.aim);
+  return loadValues(voice.quiet.cell, voice.lanes[0].values.aim) && regular;
 }
 
 function stepSlice(voice: Voice): void {
