@@ -39,6 +39,7 @@ type Shared =
   | 'setMatched'
   | 'matchDb'
   | 'source'
+  | 'input'
   | 'region'
   | 'setRegion'
   | 'seek'
@@ -240,6 +241,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     latencySec,
     outputLatencySec,
     source: source.source,
+    input: source.input,
     region: source.region,
     setRegion: source.setRegion,
     seek: source.seek,
