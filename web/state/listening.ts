@@ -20,6 +20,7 @@ import { watchPrevious } from './previous.ts';
 import { createReceiver } from './receiving.ts';
 import { createSoundLine } from './soundLine.ts';
 import { createSourceState } from './sourceState.ts';
+import { watchStall } from './stall.ts';
 import type { Takes, TakeSource } from './takes.ts';
 
 /** Twice the ramp, since the message takes its time as well; then the context may rest. */
@@ -157,6 +158,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     takes,
     line: () => line,
     slots: chains.slots,
+    noteAlive: watchStall(state, notes),
     noteLatency(samples) {
       latencySec.value = samples / (rateHz.peek() ?? RATE_BEFORE_START_HZ);
       outputLatencySec.value = line.sound()?.outputLatencySec() ?? null;
