@@ -1,4 +1,6 @@
 import { render } from 'preact';
+import { missingForPage } from './audio/features.ts';
+import { Missing } from './panels/Missing.tsx';
 import { Sheet } from './panels/Sheet.tsx';
 import { createBench } from './state/createBench.ts';
 import './style/tokens.css';
@@ -15,4 +17,5 @@ import './style/narrow.css';
 
 const place = document.getElementById('sheet');
 if (place === null) throw new Error('The page has no place for the sheet');
-render(<Sheet bench={createBench()} />, place);
+const missing = missingForPage();
+render(missing.length > 0 ? <Missing features={missing} /> : <Sheet bench={createBench()} />, place);

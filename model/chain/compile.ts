@@ -30,8 +30,8 @@ export interface ChainNumbers {
 }
 
 const UPDATE_EVERY = 32;
-const LOWEST_RATE_HZ = 8000;
-const HIGHEST_RATE_HZ = 384000;
+export const LOWEST_RATE_HZ = 8000;
+export const HIGHEST_RATE_HZ = 384000;
 
 /** Throws a RangeError whose message names the field, its value and what was expected. */
 export function compileChain(

@@ -1,5 +1,6 @@
 /** Files to clips, at the file's own rate. */
 import { LARGEST_SAMPLE } from '../../model/chain/chain.ts';
+import { HIGHEST_RATE_HZ, LOWEST_RATE_HZ } from '../../model/chain/compile.ts';
 import { readWav, UnknownCodingError } from '../../model/chain/wav.ts';
 import type { Clip } from './clip.ts';
 import { isWave, readFileRate } from './fileRate.ts';
@@ -21,6 +22,9 @@ export async function decodeAudio(bytes: ArrayBuffer, title: string): Promise<Cl
     if (!(read instanceof UnknownCodingError)) throw new Error(`“${title}” could not be read: ${reason}.`);
   }
   const rateHz = readFileRate(view) ?? RATE_IF_UNKNOWN_HZ;
+  if (!(rateHz >= LOWEST_RATE_HZ && rateHz <= HIGHEST_RATE_HZ)) {
+    throw new Error(`“${title}” states a sample rate of ${rateHz} Hz; expected ${LOWEST_RATE_HZ} to ${HIGHEST_RATE_HZ} Hz.`);
+  }
   const { OfflineAudioContext } = await import('standardized-audio-context');
   const buffer = await new OfflineAudioContext(1, 1, rateHz).decodeAudioData(bytes).catch(() => {
     throw new Error(`“${title}” could not be read: ${reason}.`);

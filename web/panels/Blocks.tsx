@@ -4,6 +4,7 @@ import { Distortion } from './Distortion.tsx';
 import { Equation } from './Equation.tsx';
 import { FeedbackFigure } from './FeedbackFigure.tsx';
 import { GateFigure } from './GateFigure.tsx';
+import { LevelTable } from './LevelTable.tsx';
 import { Schematic } from './Schematic.tsx';
 import { SpectrumFigure } from './SpectrumFigure.tsx';
 import { Takes } from './Takes.tsx';
@@ -22,6 +23,7 @@ export function Blocks({ layout }: { readonly layout: Layout }) {
     <div class="lower-tables">
       <VariantTable />
       <DeviceTable />
+      <LevelTable />
     </div>
   );
   if (layout === 'wide') {

@@ -81,7 +81,12 @@ function Matched() {
           as loud as the source
         </button>
       </span>
-      {on && (db === null ? ' (being measured)' : ` (${db < 0 ? '' : '+'}${decimals(db, 1)}\u2009dB)`)}
+      {on &&
+        (bench.source.value.kind === 'live'
+          ? ' (not live input, which cannot be measured ahead)'
+          : db === null
+            ? ' (being measured)'
+            : ` (${db < 0 ? '' : '+'}${decimals(db, 1)}\u2009dB)`)}
     </>
   );
 }

@@ -9,6 +9,13 @@ const ON_VALUES = [
   ['Drag, Shift and drag', 'through the steps, or freely'],
 ] as const;
 
+const ON_PLACE = [
+  ['← →, Page Up, Page Down', 'half a second, or five'],
+  ['Home, End', 'the ends of the loop'],
+  ['[ and ]', 'the loop begins here, ends here'],
+  ['Esc', 'loop it whole'],
+] as const;
+
 /** What the keyboard does. */
 export function KeysDialog({ onClose }: { readonly onClose: () => void }) {
   return (
@@ -24,6 +31,12 @@ export function KeysDialog({ onClose }: { readonly onClose: () => void }) {
           <div key={keys}>
             <dt>{keys}</dt>
             <dd>{words}</dd>
+          </div>
+        ))}
+        {ON_PLACE.map(([keys, words]) => (
+          <div key={`place ${keys}`}>
+            <dt>{keys}</dt>
+            <dd>in the source: {words}</dd>
           </div>
         ))}
       </dl>

@@ -13,6 +13,7 @@ import { OpenDialog } from './OpenDialog.tsx';
 import { sampled } from './parts/sampled.ts';
 import { Ruler } from './Ruler.tsx';
 import { SoundButtons } from './SoundButtons.tsx';
+import { SourceScale } from './SourceScale.tsx';
 import { runShortcut } from './shortcuts.ts';
 import { createRateTap } from './tap.ts';
 import { createSheetLimits, LimitsContext } from './sheetLimits.ts';
@@ -62,6 +63,7 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
                 <Heard />
               </div>
               <Ruler />
+              <SourceScale />
             </section>
             <Notes />
             <Blocks layout={layout} />

@@ -28,6 +28,7 @@ export function Takes() {
   const bench = useBench();
   const format = useSignal<TakeFormat>('pcm24');
   const takes = [...bench.takes.value].reverse();
+  const { kind } = bench.source.value;
   const busy = bench.taking.value !== null || bench.rendering.value !== null;
   return (
     <section class="takes" aria-label="Takes">
@@ -60,9 +61,13 @@ export function Takes() {
         >
           Take what is heard
         </button>
-        <button type="button" class="button small" disabled={bench.rendering.value !== null} onClick={() => void bench.renderClip()}>
-          Render the {bench.source.value.kind === 'phrase' ? 'phrase' : 'file'}
-        </button>
+        {kind === 'live' ? (
+          <span class="aside">Live input has no end, so it is not rendered whole.</span>
+        ) : (
+          <button type="button" class="button small" disabled={bench.rendering.value !== null} onClick={() => void bench.renderClip()}>
+            Render the {kind}
+          </button>
+        )}
         <span class="aside">
           as{' '}
           <Choice label="Format of saved takes" value={format.value} options={FORMATS} onChoose={chosen((next) => (format.value = next))} />

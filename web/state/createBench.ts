@@ -58,10 +58,12 @@ export function assembleBench(parts: Parts): Bench {
     const result = readDesign(text);
     const refused = 'faults' in result ? result.faults.map((fault) => fault.sentence) : [document.replace(result.design)];
     const sentences = refused.filter((sentence) => sentence !== null);
-    if (sentences.length === 1) notes.fault(`“${from}”: ${sentences[0]}`);
+    if (sentences.length === 1) notes.fault(`“${from}”: ${sentences[0].replace(/\.$/, '')}.`);
     if (sentences.length > 1) notes.add('fault', `“${from}” was not opened; its faults:`, undefined, sentences);
   };
 
+  const missing = parts.missingFeature();
+  if (missing !== null) notes.fault(missing, 'Everything else works; values can be read and designs saved.');
   noting(async () => {
     await sources.loadFirst();
     await parts.prepareSound();

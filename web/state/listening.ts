@@ -21,6 +21,7 @@ import { createReceiver } from './receiving.ts';
 import { createResidualState } from './residual.ts';
 import { createSoundLine } from './soundLine.ts';
 import { createSourceState } from './sourceState.ts';
+import { watchStall } from './stall.ts';
 import type { Takes, TakeSource } from './takes.ts';
 
 /** Twice the ramp, since the message takes its time as well; then the context may rest. */
@@ -44,6 +45,7 @@ type Shared =
   | 'setMatched'
   | 'matchDb'
   | 'source'
+  | 'input'
   | 'region'
   | 'setRegion'
   | 'seek'
@@ -174,6 +176,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     takes,
     line: () => line,
     slots: chains.slots,
+    noteAlive: watchStall(state, notes),
     noteLatency(samples) {
       latencySec.value = samples / (rateHz.peek() ?? RATE_BEFORE_START_HZ);
       outputLatencySec.value = line.sound()?.outputLatencySec() ?? null;
@@ -262,6 +265,7 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
     latencySec,
     outputLatencySec,
     source: source.source,
+    input: source.input,
     region: source.region,
     setRegion: source.setRegion,
     seek: source.seek,

@@ -13,6 +13,8 @@ export interface ReceiverNeeds {
   line(): SoundLine;
   slots(): readonly number[];
   noteLatency(samples: number): void;
+  /** The sound goes on: called with each report. */
+  noteAlive(): void;
 }
 
 /** The load that is said, the one below which it may be said again, and how long it must last, s. */
@@ -20,7 +22,7 @@ const HIGH_LOAD = 0.85;
 const CALM_LOAD = 0.7;
 const LASTS_SEC = 4;
 
-export function createReceiver({ levels, notes, takes, line, slots, noteLatency }: ReceiverNeeds): (message: FromCell) => void {
+export function createReceiver({ levels, notes, takes, line, slots, noteLatency, noteAlive }: ReceiverNeeds): (message: FromCell) => void {
   let highSinceFrame: number | null = null;
   let said = false;
 
@@ -42,6 +44,7 @@ export function createReceiver({ levels, notes, takes, line, slots, noteLatency 
         noteLatency(message.latencySamples);
         return;
       case 'report': {
+        noteAlive();
         const { slot, input, output, lagMs } = message;
         const sound = line().sound();
         sound?.noteLag(lagMs);

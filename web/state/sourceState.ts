@@ -3,16 +3,17 @@ import { signal } from '@preact/signals';
 import type { Clip } from '../audio/clip.ts';
 import { clipSeconds } from '../audio/clip.ts';
 import { loopOf } from '../audio/loop.ts';
+import type { LiveInput } from '../audio/input.ts';
 import type { Sound } from '../audio/sound.ts';
 import type { Feed, Source } from '../audio/source.ts';
-import type { Bench, SourceInfo } from './bench.ts';
+import type { Bench, InputInfo, SourceInfo } from './bench.ts';
 
 /** Shorter than this a loop is a tone of its own. */
 const SHORTEST_SEC = 0.05;
 /** Ends that are being dragged are not cut before they rest. */
 const REST_MS = 100;
 
-export interface SourceState extends Pick<Bench, 'source' | 'region' | 'setRegion' | 'seek' | 'positionSec' | 'sourceSamples'> {
+export interface SourceState extends Pick<Bench, 'source' | 'input' | 'region' | 'setRegion' | 'seek' | 'positionSec' | 'sourceSamples'> {
   current(): Source | null;
   /** The whole of it; null for live input and while there is none. */
   clip(): Clip | null;
@@ -26,6 +27,7 @@ const NOTHING: SourceInfo = { title: '', seconds: 0, kind: 'phrase' };
 
 export function createSourceState(sound: () => Sound | null): SourceState {
   const source = signal(NOTHING);
+  const input = signal<InputInfo | null>(null);
   const region = signal<Bench['region']['value']>(null);
   let current: Source | null = null;
   /** Where playing goes on at the next feed, and where the loop that was fed last begins; s from the start of the clip. */
@@ -56,6 +58,7 @@ export function createSourceState(sound: () => Sound | null): SourceState {
 
   return {
     source,
+    input,
     region,
     current: () => current,
     clip,
@@ -68,6 +71,7 @@ export function createSourceState(sound: () => Sound | null): SourceState {
       nextSec = 0;
       loopFromSec = null;
       region.value = null;
+      input.value = next.kind === 'live' ? infoOf(next.input) : null;
       source.value =
         next.kind === 'live'
           ? { kind: 'live', title: next.input.title, seconds: 0 }
@@ -101,4 +105,8 @@ export function createSourceState(sound: () => Sound | null): SourceState {
       return null;
     },
   };
+}
+
+function infoOf({ title, deviceId, sampleRateHz, channels, latencySec }: LiveInput): InputInfo {
+  return { title, deviceId, sampleRateHz, channels, latencySec };
 }

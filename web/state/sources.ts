@@ -3,7 +3,7 @@ import { signal } from '@preact/signals';
 import { testTone } from '../../model/chain/testTone.ts';
 import type { LiveInput } from '../audio/input.ts';
 import type { Source } from '../audio/source.ts';
-import type { Bench, InputInfo } from './bench.ts';
+import type { Bench } from './bench.ts';
 import type { DocumentState } from './document.ts';
 import type { Library } from './library.ts';
 import type { Listening } from './listening.ts';
@@ -29,7 +29,6 @@ export interface Sources
     | 'testToneV'
     | 'setTestToneV'
     | 'inputs'
-    | 'input'
     | 'openInput'
   > {
   /** Chooses the first phrase where nothing is chosen or being loaded. Rejects with a sentence. */
@@ -48,7 +47,6 @@ export function createSources({ parts, library, document, notes, listening }: So
   const testToneHz = signal(FIRST_TONE_HZ);
   const testToneV = signal(FIRST_TONE_V);
   const inputs = signal<Bench['inputs']['value']>([]);
-  const input = signal<InputInfo | null>(null);
   /** Counts the choices of a source: while one is being loaded another may be made, and the last one counts. */
   let choice = 0;
   let choosing: Promise<unknown> = Promise.resolve();
@@ -61,7 +59,6 @@ export function createSources({ parts, library, document, notes, listening }: So
     const live = source.kind === 'live' ? source.input : null;
     if (live !== opened) opened?.end();
     opened = live;
-    input.value = live === null ? null : infoOf(live);
     if (source.kind !== 'live') recorded = source;
   };
 
@@ -151,7 +148,6 @@ export function createSources({ parts, library, document, notes, listening }: So
     setTestToneHz: (hz) => toneAgain(setWithin(testToneHz, hz, 1, 20000, 'The test tone', 'Hz')),
     setTestToneV: (volts) => toneAgain(setWithin(testToneV, volts, 1e-4, 100, 'The test tone', 'V peak')),
     inputs,
-    input,
     openInput: (deviceId) => noting(choose(() => loadInput(deviceId ?? null))),
     async loadFirst() {
       await library.load();
@@ -164,8 +160,4 @@ export function createSources({ parts, library, document, notes, listening }: So
 
 function letGo(source: Source): void {
   if (source.kind === 'live') source.input.end();
-}
-
-function infoOf({ title, deviceId, sampleRateHz, channels, latencySec }: LiveInput): InputInfo {
-  return { title, deviceId, sampleRateHz, channels, latencySec };
 }

@@ -7,18 +7,23 @@ import { createBench } from '../../../web/state/createBench.ts';
 import type { CellOptions, FromCell } from '../../../worklet/protocol.ts';
 import { CELL_PROCESSOR } from '../../../worklet/protocol.ts';
 import { renderNamed, sha256 } from '../../support/sameRenders.ts';
+import { feedMalformed } from './feedMalformed.ts';
 import RenderWorker from './render.worker.ts?worker';
 
 declare global {
   interface Window {
     /** The gains to one loudness that the page's bench measures for a design, as JSON, and a sound file, as base64. */
     matchOf(design: string, file: string): Promise<MatchDb>;
+    /** Opens the malformed files of these seeds, one after the other, as the page's own door does. */
+    feedMalformed: typeof feedMalformed;
     /** SHA-256 of one of the named renders, made on the page's own thread or in a worker. */
     hashOf(name: string, where: 'page' | 'worker'): Promise<string>;
     /** The samples that leave the cell's processor, as the bytes of Float32 in base64, one text for each channel. */
     playOffline(design: Design, rateHz: number, channels: readonly string[]): Promise<string[]>;
   }
 }
+
+window.feedMalformed = feedMalformed;
 
 window.playOffline = async (design, rateHz, channels) => {
   const lines = channels.map(toSamples);

@@ -13,14 +13,16 @@ interface ChoiceProps<Value extends string> {
   readonly hint?: string | undefined;
   /** What stands on the page, where it is not the option's own words. */
   readonly shown?: string;
+  /** The choice takes effect later, or not at all: until `value` changes the list stays as it is. */
+  readonly stays?: boolean;
 }
 
 /** One of a few, underlined, with a drawn chevron. The list itself is the browser's, so that it works under any thumb. */
-export function Choice<Value extends string>({ label, value, options, onChoose, hint, shown }: ChoiceProps<Value>) {
+export function Choice<Value extends string>({ label, value, options, onChoose, hint, shown, stays = false }: ChoiceProps<Value>) {
   const [refusal, setRefusal] = useState<string | null>(null);
   const onChange = ({ currentTarget }: { readonly currentTarget: HTMLSelectElement }) => {
     const refused = onChoose(currentTarget.value as Value);
-    if (refused !== null) currentTarget.value = value;
+    if (refused !== null || stays) currentTarget.value = value;
     setRefusal(refused);
   };
   return (

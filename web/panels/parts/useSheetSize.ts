@@ -1,7 +1,7 @@
 import { useLayoutEffect, useRef, useState } from 'preact/hooks';
 
 /** Anything smaller is not laid out yet. */
-const LEAST = 60;
+const LEAST = 40;
 
 /** Size of an element in sheet pixels (1/16 rem), watched; null until it has been measured. A drawing made at this size never scales its text. */
 export function useSheetSize<Element extends HTMLElement>() {
