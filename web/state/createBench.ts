@@ -1,5 +1,5 @@
 /** The real bench: document, sound, readings and takes put together. */
-import { computed } from '@preact/signals';
+import { computed, signal } from '@preact/signals';
 import firstDesign from '../../assets/designs/harbour-tremolo.json?raw';
 import { compileChain } from '../../model/chain/compile.ts';
 import { readDesign } from '../../model/design/read.ts';
@@ -83,6 +83,7 @@ export function assembleBench(parts: Parts): Bench {
     await parts.prepareSound();
   });
 
+  const hints = signal(true);
   return {
     ...document,
     ...listening,
@@ -93,6 +94,14 @@ export function assembleBench(parts: Parts): Bench {
     examples: library.examples,
     notes: notes.notes,
     dismiss: notes.dismiss,
+    hints,
+    putHintsAway() {
+      hints.value = false;
+    },
+    savePlot(name, kind, text) {
+      const mediaType = kind === 'csv' ? 'text/csv' : 'image/svg+xml';
+      parts.download(`${fileName(document.design.peek().title)}-${name}.${kind}`, new TextEncoder().encode(text), mediaType);
+    },
     choosePhrase,
     openAudio: (file) => noting(() => choose('file', async () => parts.decodeAudio(await file.arrayBuffer(), file.name))),
     openDesign: (file) => noting(async () => openText(await file.text(), file.name)),

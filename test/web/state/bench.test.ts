@@ -334,10 +334,10 @@ describe('readings', () => {
     const latest = readingWorker.posted.findLast((message) => message.type === 'question');
     expect(latest?.question.design).toBe(bench.design.value);
     const reading = { fault: 'none yet' };
-    readingWorker.answer({ type: 'reading', id: first.id, reading, thdBand: null });
+    readingWorker.answer({ type: 'reading', id: first.id, reading, thdBand: null, path: null });
     expect(bench.moment.value).toBeNull();
-    readingWorker.answer({ type: 'reading', id: latest?.id ?? 0, reading, thdBand: null });
-    expect(bench.moment.value).toEqual({ levels: null, reading, thdBand: null });
+    readingWorker.answer({ type: 'reading', id: latest?.id ?? 0, reading, thdBand: null, path: null });
+    expect(bench.moment.value).toEqual({ levels: null, reading, thdBand: null, path: null });
     const worst = { thdFundamental: 0.02, gainDb: -6, gateV: -1 };
     const asked = () => readingWorker.posted.filter(({ type }) => type === 'swing').length;
     expect(asked()).toBe(1);
@@ -361,7 +361,7 @@ describe('readings', () => {
     const asked = () => readingWorker.posted.filter((message) => message.type === 'moment');
     const answer = () => {
       const { id = 0, gateV } = asked().at(-1) ?? {};
-      readingWorker.answer({ type: 'reading', id, reading: { fault: `at ${gateV}` }, thdBand: null });
+      readingWorker.answer({ type: 'reading', id, reading: { fault: `at ${gateV}` }, thdBand: null, path: null });
     };
     answer();
     answer();
