@@ -6,7 +6,7 @@ import type { Plugin, Rolldown } from 'vite';
 import { defineConfig } from 'vitest/config';
 
 /** JavaScript that a first visit may load, compressed, in kB of 1000 bytes. The README states the same number. */
-const FIRST_LOAD_LIMIT_KB = 250;
+const FIRST_LOAD_LIMIT_KB = 300;
 
 const here = (path: string) => fileURLToPath(new URL(path, import.meta.url));
 

@@ -71,7 +71,7 @@ describe('the built page', () => {
     await close();
   });
 
-  test('loads under 250 kB of compressed JavaScript before a click, all that the browser fetches counted', async () => {
+  test('loads under 300 kB of compressed JavaScript before a click, all that the browser fetches counted', async () => {
     const { page, close } = await openTab(browser, built);
     const names = new Set<string>();
     page.context().on('request', (request) => {
@@ -85,7 +85,7 @@ describe('the built page', () => {
     console.log(`first load ${totalKb.toFixed(1)} kB: ${[...names].map((name, n) => `${name} ${sizes[n]}`).join(', ')}`);
     // The entry, the worker and the worklet at least: a count that misses one of them would prove nothing.
     for (const part of ['index', 'worker', 'worklet']) expect([...names].join()).toContain(part);
-    expect(totalKb).toBeLessThan(250);
+    expect(totalKb).toBeLessThan(300);
     await close();
   });
 
