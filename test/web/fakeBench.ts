@@ -105,7 +105,9 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     ]),
     period: computed(() => controlPicture(document.design.value, document.heardVariant.value, 997)),
     worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, gateV: -1.55 })),
-    summaries: computed(() => document.design.value.variants.map((_, n) => ({ restThd: 0.0047 + n / 100, worstThd: 0.04 }))),
+    summaries: computed(() =>
+      document.design.value.variants.map((_, n) => ({ restThd: 0.0047 + n / 100, worstThd: 0.04, gainDb: [-27.9, -0.1] as const })),
+    ),
     feedbackCurve: signal({ gateV: -1.38, points: inventedCurve() }),
     toneV,
     setToneV: put(toneV),
@@ -170,6 +172,8 @@ function inventedLevels(muted: boolean): LiveLevels {
   return {
     controlV: -1.53,
     gateSourceV: -1.38,
+    gateLowV: -1.4,
+    gateHighV: -1.36,
     feedthroughPeakV: 0.0012,
     inputPeakV: 0.2,
     drainPeakV: 0.059,

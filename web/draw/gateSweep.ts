@@ -5,16 +5,19 @@
 import type { Point } from './line.ts';
 import { type Scale, toPixel } from './scale.ts';
 
-interface Reading {
+export interface SweepReading {
   readonly atSec: number;
-  readonly gateV: number;
+  readonly controlV: number;
+  readonly gateSourceV: number;
+  /** The ends of what the gate did since the reading before. */
+  readonly gateLowV: number;
+  readonly gateHighV: number;
 }
 
 export interface GateSweep {
-  note(atSec: number, gateV: number): void;
-  clear(): void;
+  note(reading: SweepReading): void;
   /** Oldest first, over the last `spanSec`. */
-  readings(): readonly Reading[];
+  readings(): readonly SweepReading[];
 }
 
 /** Gap, s, that a line is not drawn over: sound had stopped. */
@@ -23,23 +26,23 @@ const GAP_SEC = 0.3;
 const BLANK = 0.02;
 
 export function createGateSweep(spanSec: number): GateSweep {
-  let kept: Reading[] = [];
+  let kept: SweepReading[] = [];
   return {
-    note(atSec, gateV) {
-      kept.push({ atSec, gateV });
-      const first = kept.findIndex((reading) => reading.atSec > atSec - spanSec);
+    note(reading) {
+      kept.push(reading);
+      const first = kept.findIndex(({ atSec }) => atSec > reading.atSec - spanSec);
       if (first > 0) kept = kept.slice(first);
-    },
-    clear() {
-      kept = [];
     },
     readings: () => kept,
   };
 }
 
-/** The present turn up to the pen, and what is left of the one before; points that are not finite break a line. */
+/**
+ * The present turn up to the pen, and what is left of the one before, through both ends of every reading so that no dip is lost. Points that are not
+ * finite break a line.
+ */
 export function sweepLines(
-  readings: readonly Reading[],
+  readings: readonly SweepReading[],
   spanSec: number,
   x: Scale,
   y: Scale,
@@ -49,14 +52,23 @@ export function sweepLines(
   if (last === undefined) return { ...lines, pen: null };
   const turn = Math.floor(last.atSec / spanSec);
   const penSec = last.atSec - turn * spanSec;
-  let previous: Reading | undefined;
+  let previous: SweepReading | undefined;
   for (const reading of readings) {
-    const place = { x: toPixel(x, reading.atSec % spanSec), y: toPixel(y, reading.gateV) };
+    const across = toPixel(x, reading.atSec % spanSec);
     const now = Math.floor(reading.atSec / spanSec) === turn;
     const line = now ? lines.now : lines.before;
-    if (previous && reading.atSec - previous.atSec > GAP_SEC) line.push({ x: place.x, y: Number.NaN });
-    if (now || reading.atSec % spanSec > penSec + BLANK * spanSec) line.push(place);
+    if (previous && reading.atSec - previous.atSec > GAP_SEC) line.push({ x: across, y: Number.NaN });
+    if (now || reading.atSec % spanSec > penSec + BLANK * spanSec)
+      line.push(...endsOf(reading, previous).map((volts) => ({ x: across, y: toPixel(y, volts) })));
     previous = reading;
   }
   return { ...lines, pen: lines.now.at(-1) ?? null };
+}
+
+/** In the order in which they were met, as far as that can be told: the end that is nearer to where the gate came from first. */
+function endsOf({ gateLowV, gateHighV, gateSourceV }: SweepReading, before: SweepReading | undefined): number[] {
+  if (gateLowV === gateHighV) return [gateSourceV];
+  const fromV = before?.gateSourceV ?? gateSourceV;
+  const ends = Math.abs(fromV - gateLowV) <= Math.abs(fromV - gateHighV) ? [gateLowV, gateHighV] : [gateHighV, gateLowV];
+  return [...ends, gateSourceV];
 }

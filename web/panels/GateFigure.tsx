@@ -1,7 +1,7 @@
 import { useSignal } from '@preact/signals';
 import { useMemo } from 'preact/hooks';
 import { type GatePlot, isFollower, plotGate, regionAt } from '../draw/gatePlot.ts';
-import { createGateSweep, sweepLines } from '../draw/gateSweep.ts';
+import { createGateSweep, sweepLines, type SweepReading } from '../draw/gateSweep.ts';
 import type { PlotTable } from '../draw/plotData.ts';
 import type { Trace } from '../draw/traces.ts';
 import { dbuFromPeak, decimals, gateVolts, voltsText } from '../draw/words.ts';
@@ -113,12 +113,19 @@ function timeDrawing(plot: GatePlot, picture: ControlPicture, sweep: ReturnType<
   };
 }
 
-/** In the order in which the frame shows it; one row without a number while nothing has sounded. */
-function sweepTable(readings: readonly { readonly atSec: number; readonly gateV: number }[]): PlotTable {
-  const rows =
-    readings.length > 0 ? [...readings].sort((a, b) => (a.atSec % SWEEP_SEC) - (b.atSec % SWEEP_SEC)) : [{ atSec: 0, gateV: Number.NaN }];
+const NOTHING: SweepReading = { atSec: 0, controlV: Number.NaN, gateSourceV: Number.NaN, gateLowV: Number.NaN, gateHighV: Number.NaN };
+
+/** In the order in which the frame shows it; one row without numbers while nothing has sounded. */
+function sweepTable(readings: readonly SweepReading[]): PlotTable {
+  const rows = readings.length > 0 ? [...readings].sort((a, b) => (a.atSec % SWEEP_SEC) - (b.atSec % SWEEP_SEC)) : [NOTHING];
+  const volts = (name: string, pick: (reading: SweepReading) => number) => ({ name, unit: 'V', values: rows.map(pick), print: gateVolts });
   return {
     x: { name: 'time', unit: 's', values: rows.map(({ atSec }) => atSec % SWEEP_SEC), print: secondsText },
-    ys: [{ name: 'gate', unit: 'V', values: rows.map(({ gateV }) => gateV), print: gateVolts }],
+    ys: [
+      volts('gate', ({ gateSourceV }) => gateSourceV),
+      volts('lowest', ({ gateLowV }) => gateLowV),
+      volts('highest', ({ gateHighV }) => gateHighV),
+      volts('control', ({ controlV }) => controlV),
+    ],
   };
 }

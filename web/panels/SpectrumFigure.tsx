@@ -107,7 +107,7 @@ function spectrumDrawing({ read, sticks, silent }: SpectrumView, width: number, 
         </svg>
         <TraceCanvas area={area} traces={traces} label={spoken(standing)} />
         <svg class="over-canvas" viewBox={`0 0 ${width} ${height}`} aria-hidden="true">
-          {standing.map(({ n, x: across, y: top }) => (
+          {namedOf(standing).map(({ n, x: across, y: top }) => (
             <text key={n} class="note-text halo stick-text" x={across} y={Math.max(area.top + 11, top - 4)} text-anchor="middle">
               {n}
             </text>
@@ -122,6 +122,16 @@ function spectrumDrawing({ read, sticks, silent }: SpectrumView, width: number, 
       </>
     ),
   };
+}
+
+/** A stick's number takes so much, pixels: high orders stand closer than that, and are named where there is room. */
+const NUMBER_WIDE = 10;
+
+function namedOf(sticks: readonly Stick[]): Stick[] {
+  return sticks.reduce<Stick[]>((named, stick) => {
+    const last = named.at(-1);
+    return last !== undefined && stick.x - last.x < NUMBER_WIDE ? named : [...named, stick];
+  }, []);
 }
 
 function spoken(sticks: readonly Stick[]): string {

@@ -27,7 +27,7 @@ export function TransferFigure() {
       title="Drain current against drain-source voltage"
       caption={
         <>
-          Drain current by <Sym of="V" sub="GS" />; thick: now; dash-dot: end of ohmic.
+          Drain current by <Sym of="V" sub="GS" />; thick: now, broken: end of ohmic.
         </>
       }
       draw={drawn}

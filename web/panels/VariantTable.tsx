@@ -14,6 +14,7 @@ const COLUMNS = [
   { key: 'which', head: 'Variant' },
   { key: 'what', head: 'What it tries' },
   { key: 'number k', head: <i>k</i> },
+  { key: 'number gain', head: 'Gain' },
   { key: 'number', head: 'THD, rest' },
   { key: 'number', head: 'Worst' },
   { key: 'number level', head: 'Peak now' },
@@ -26,7 +27,7 @@ export function VariantTable() {
     <DataTable
       number={3}
       className="variant-table"
-      caption="Variants by the shadow tone: THD with the control at rest, and the worst over its swing; what each puts out now."
+      caption="Variants by the shadow tone: gain and worst THD over the control’s swing, THD with it at rest; what each puts out now."
       columns={COLUMNS}
     >
       <tbody>
@@ -60,6 +61,7 @@ function VariantRow({ index }: { readonly index: number }) {
         {live && <Faults faults={live.faults} />}
       </td>
       <td class="number k">{feedbackFraction(variant.cell).toFixed(3)}</td>
+      <td class="number gain">{summary && gainWords(summary.gainDb)}</td>
       <td class="number">
         {summary && (
           <span>
@@ -79,6 +81,11 @@ function VariantRow({ index }: { readonly index: number }) {
       <td class="number level">{live && <Level peakDbfs={live.peakDbfs} />}</td>
     </tr>
   );
+}
+
+function gainWords([least, most]: readonly [number, number]): string {
+  const [from, to] = [decimals(least, 1), decimals(most, 1)];
+  return `${from === to ? from : `${from} to ${to}`}\u2009dB`;
 }
 
 function Level({ peakDbfs }: { readonly peakDbfs: number }) {
@@ -114,7 +121,7 @@ function EmptyRow({ letter }: { readonly letter: string }) {
       <th scope="row" class="which aside">
         {letter}
       </th>
-      <td colSpan={5} class="aside">
+      <td colSpan={6} class="aside">
         empty{' '}
         <WordActions
           actions={[{ words: 'Copy here', label: `Copy here, to ${letter}, the variant that is heard`, run: () => bench.addVariant() }]}

@@ -8,7 +8,9 @@ export function useGateSweep(sweep: GateSweep): void {
   useEffect(
     () =>
       bench.live.subscribe((live) => {
-        if (live !== null && bench.sound.peek() === 'playing') sweep.note(performance.now() / 1000, live.gateSourceV);
+        if (live === null || bench.sound.peek() !== 'playing') return;
+        const { controlV, gateSourceV, gateLowV, gateHighV } = live;
+        sweep.note({ atSec: performance.now() / 1000, controlV, gateSourceV, gateLowV, gateHighV });
       }),
     [bench, sweep],
   );

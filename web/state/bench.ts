@@ -172,6 +172,9 @@ export interface LiveLevels {
   readonly controlV: number;
   /** Of the first channel, without the audio that rides on it. */
   readonly gateSourceV: number;
+  /** The least and the highest that it was. */
+  readonly gateLowV: number;
+  readonly gateHighV: number;
   /** What the control alone leaves at the drain, peak. */
   readonly feedthroughPeakV: number;
   readonly inputPeakV: number;
@@ -254,6 +257,8 @@ export interface WorstReading {
 export interface VariantSummary {
   readonly restThd: number;
   readonly worstThd: number;
+  /** Least and highest gain over the swing, dB. */
+  readonly gainDb: readonly [number, number];
 }
 
 /** The shadow tone at one gate voltage of the swing. */

@@ -146,8 +146,9 @@ export function readPlane(question: ToneQuestion): TransferPlane {
 export function* readSummary(question: ToneQuestion): Generator<void, VariantSummary> {
   const restThd = readTone(question, null).thdFundamental;
   yield;
-  const { worst } = yield* readSwing(question);
-  return { restThd, worstThd: worst.thdFundamental };
+  const { worst, points } = yield* readSwing(question);
+  const gains = points.map(({ gainDb }) => gainDb);
+  return { restThd, worstThd: worst.thdFundamental, gainDb: [Math.min(...gains), Math.max(...gains)] };
 }
 
 /** The noise at the drain over the gate's swing, at 25 gate voltages. Yields between readings. */

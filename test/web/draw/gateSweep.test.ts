@@ -6,11 +6,13 @@ import { linearScale } from '../../../web/draw/scale.ts';
 const x = linearScale(0, 8, 0, 800);
 const y = linearScale(-2, 0, 100, 0);
 
+const steady = { controlV: -1, gateSourceV: -1, gateLowV: -1, gateHighV: -1 };
+
 function swept(fromSec: number, toSec: number, gapAtSec = Number.POSITIVE_INFINITY) {
   const sweep = createGateSweep(8);
   for (let n = 0; fromSec + n / 10 <= toSec + 1e-9; n++) {
     const atSec = fromSec + n / 10;
-    if (atSec < gapAtSec || atSec > gapAtSec + 1) sweep.note(atSec, -1);
+    if (atSec < gapAtSec || atSec > gapAtSec + 1) sweep.note({ ...steady, atSec });
   }
   return sweep;
 }
@@ -38,4 +40,11 @@ test('no line is drawn over a time without sound', () => {
 
 test('nothing has been written before anything has sounded', () => {
   expect(sweepLines([], 8, x, y)).toEqual({ now: [], before: [], pen: null });
+});
+
+test('a dip between two readings is drawn, and the gate goes on from where it was read', () => {
+  const sweep = createGateSweep(8);
+  sweep.note({ ...steady, atSec: 1 });
+  sweep.note({ ...steady, atSec: 1.03, gateLowV: -1.8 });
+  expect(sweepLines(sweep.readings(), 8, x, y).now.map((point) => Math.round(point.y))).toEqual([50, 50, 90, 50]);
 });

@@ -356,7 +356,7 @@ describe('readings', () => {
       ...{ type: 'report', slot: 0, frame: 0, input: new Float32Array(100), output: new Float32Array(100) },
       ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, inputPeakV: 0, drainPeakV: 0, feedthroughPeakV: 0 },
       ...{ slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5), latencySamples: 48, loadFraction: 0.1 },
-      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: 2 * gateSourceV, gateSourceV },
+      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: 2 * gateSourceV, gateSourceV, gateLowV: gateSourceV, gateHighV: gateSourceV },
     });
     const asked = () => readingWorker.posted.filter((message) => message.type === 'moment');
     const answer = () => {
@@ -605,7 +605,7 @@ describe('the load', () => {
     ...{ type: 'report', slot: 0, frame, input: new Float32Array(100), output: new Float32Array(100), loadFraction },
     ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, inputPeakV: 0, drainPeakV: 0 },
     ...{ feedthroughPeakV: 0, faults: 0, slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5) },
-    ...{ latencySamples: 48, ceilingFrames: 0, lagMs: 0, controlV: -1, gateSourceV: -1 },
+    ...{ latencySamples: 48, ceilingFrames: 0, lagMs: 0, controlV: -1, gateSourceV: -1, gateLowV: -1, gateHighV: -1 },
   });
 
   test('that lasts and leaves little of the time is said once, and again after it was low', async () => {
