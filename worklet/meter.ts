@@ -24,8 +24,10 @@ const INPUT_PEAK_V = 3;
 const DRAIN_PEAK_V = 4;
 const FEEDTHROUGH_PEAK_V = 5;
 const SAMPLES = 6;
-const RESIDUAL_SQUARES = 7;
-const TOTALS = 8;
+const GATE_LOW_V = 7;
+const GATE_HIGH_V = 8;
+const RESIDUAL_SQUARES = 9;
+const TOTALS = 10;
 
 export interface Post {
   postMessage(message: unknown, transfer: Transferable[]): void;
@@ -57,6 +59,7 @@ export function createMeter(post: Post, sampleRateHz: number): Meter {
   const reports = Array.from({ length: POOL }, (_, slot) => createReport(slot, frames));
   const transfers = reports.map((report): Transferable[] => [report.input.buffer, report.output.buffer]);
   const totals = new Float64Array(TOTALS);
+  clearTotals(totals);
   return { post, reports, transfers, free: reports.map((_, slot) => slot > 0), totals, frames, sampleRateHz, slot: 0, fill: 0 };
 }
 
@@ -75,6 +78,8 @@ export function processMeter(
   totals[INPUT_PEAK_V] = Math.max(totals[INPUT_PEAK_V], readings.inputPeakV);
   totals[DRAIN_PEAK_V] = Math.max(totals[DRAIN_PEAK_V], readings.drainPeakV);
   totals[FEEDTHROUGH_PEAK_V] = Math.max(totals[FEEDTHROUGH_PEAK_V], readings.feedthroughPeakV);
+  totals[GATE_LOW_V] = Math.min(totals[GATE_LOW_V], readings.gateSourceV);
+  totals[GATE_HIGH_V] = Math.max(totals[GATE_HIGH_V], readings.gateSourceV);
   for (let n = 0; n < outputs[0].length; n++) {
     if (meter.slot < 0 && !takeSlot(meter)) return;
     const report = meter.reports[meter.slot];
@@ -97,6 +102,12 @@ export function returnReport(meter: Meter, slot: number, input: Float32Array<Arr
   meter.transfers[slot][0] = input.buffer;
   meter.transfers[slot][1] = output.buffer;
   meter.free[slot] = true;
+}
+
+function clearTotals(totals: Float64Array): void {
+  totals.fill(0);
+  totals[GATE_LOW_V] = Number.POSITIVE_INFINITY;
+  totals[GATE_HIGH_V] = Number.NEGATIVE_INFINITY;
 }
 
 function addLevels(totals: Float64Array, input: Float32Array, output: Float32Array): void {
@@ -140,6 +151,8 @@ function send(meter: Meter, report: Report, readings: ChainReadings, { bank, mix
   report.inputPeakV = totals[INPUT_PEAK_V];
   report.drainPeakV = totals[DRAIN_PEAK_V];
   report.feedthroughPeakV = totals[FEEDTHROUGH_PEAK_V];
+  report.gateLowV = totals[GATE_LOW_V];
+  report.gateHighV = totals[GATE_HIGH_V];
   report.lagMs = Date.now() - (1000 * report.frame) / meter.sampleRateHz;
   report.controlV = readings.controlV;
   report.gateSourceV = readings.gateSourceV;
@@ -155,7 +168,7 @@ function send(meter: Meter, report: Report, readings: ChainReadings, { bank, mix
     if (lane !== null) lane.peak = 0;
   }
   meter.post.postMessage(report, meter.transfers[meter.slot]);
-  totals.fill(0);
+  clearTotals(totals);
   monitor.totals.fill(0);
   meter.slot = -1;
 }
@@ -178,6 +191,8 @@ function createReport(slot: number, frames: number): Report {
     inputPeakV: 0,
     drainPeakV: 0,
     feedthroughPeakV: 0,
+    gateLowV: 0,
+    gateHighV: 0,
     faults: 0,
     slotPeaks: new Float64Array(SLOTS),
     slotFaults: new Float64Array(SLOTS),

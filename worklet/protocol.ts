@@ -104,6 +104,9 @@ export interface Report {
   inputPeakV: number;
   drainPeakV: number;
   feedthroughPeakV: number;
+  /** The least and the highest gate-source voltage of the blocks since the last report, V. */
+  gateLowV: number;
+  gateHighV: number;
   /** Times, since the node was made, that the chain in focus fell back or a sample that is no number was replaced by silence. */
   faults: number;
   /** By slot, 0 where it is empty: output peak since the last report; times that the chain fell back since it was made. */

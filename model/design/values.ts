@@ -61,7 +61,7 @@ const RULES: Readonly<Record<Unit, UnitRule>> = {
     printsTo: 12,
   },
   F: rule('a capacitance', '100n, 0.1 u or 100 nF', 'F', -12, -6),
-  V: rule('a voltage', '-1.2, 1V2 or 50 mV', 'V', -9, 3),
+  V: rule('a voltage', '-1.2, 1V2 or 50 mV', 'V', -15, 3),
   A: rule('a current', '3m, 3.0 mA or 0.003', 'A', -15, 0),
   Hz: { ...rule('a frequency', '4.2, 4.2 Hz or 1k5', 'Hz', 0, 9), spellings: ['Hz', 'hz'], pointLetter: '' },
   s: { ...rule('a time', '10m, 10 ms or 0.01', 's', -9, 0), spellings: ['s', 'sec'], pointLetter: '' },

@@ -62,6 +62,14 @@ export function channelSlope(constants: LawConstants, v: number): number {
   return (scale / constants.tailV) * smoothSlope(v / constants.tailV, constants.exponent);
 }
 
+/** Current from drain to source, A, at the two overdrives, V, with channel-length modulation beyond the knee only. */
+export function channelCurrentA(constants: LawConstants, lambdaPerV: number, sourceOverdriveV: number, drainOverdriveV: number): number {
+  const floor = channelTerm(constants, Number.NEGATIVE_INFINITY);
+  const past = 1 + lambdaPerV * Math.max(-drainOverdriveV, 0);
+  const pastReversed = 1 + lambdaPerV * Math.max(-sourceOverdriveV, 0);
+  return (channelTerm(constants, sourceOverdriveV) - floor) * past - (channelTerm(constants, drainOverdriveV) - floor) * pastReversed;
+}
+
 /** Which region the channel is in at the two overdrives (gate-source and gate-drain less VGS(off)), V. They exclude one another. */
 export function channelRegion(sourceOverdriveV: number, drainOverdriveV: number): 'ohmic' | 'saturated' | 'cutoff' {
   const sourceOn = sourceOverdriveV > 0;

@@ -10,7 +10,7 @@ import type { Circuit } from '../cell/circuit.ts';
 import { cellNumbers, circuitOf, deviceOf, variantAt } from '../cell/fromDesign.ts';
 import { restControlV } from '../control/range.ts';
 import type { Design, Device } from '../design/types.ts';
-import { channelRegion, channelSlope, channelTerm, type LawConstants, lawConstants } from '../device/law.ts';
+import { channelCurrentA, channelRegion, channelSlope, channelTerm, type LawConstants, lawConstants } from '../device/law.ts';
 import { exp } from '../device/math.ts';
 import { atTemperature, ZERO_CELSIUS_K } from '../device/temperature.ts';
 import { deviation } from '../cell/kernels/graded.ts';
@@ -167,7 +167,7 @@ function endsAt(device: Device, tempC: number, { jfet }: Circuit, law: LawConsta
     gateSourceS: sourceJunction.slopeS,
     gateDrainS: drainJunction.slopeS,
   };
-  return { channelA: Fs * past - Fd * pastReversed, vgs, vgd, sourceJunction, drainJunction, slopes };
+  return { channelA: channelCurrentA(law, lambda, vs, vd), vgs, vgd, sourceJunction, drainJunction, slopes };
 }
 
 function junctionAt(reverseA: number, nVt: number, v: number): Junction {

@@ -29,7 +29,7 @@ afterAll(async () => {
 
 async function openSheet(widthPx: number, colourScheme: 'light' | 'dark' = 'light') {
   const tab = await openTab(browser, site, { widthPx, heightPx: 900, colourScheme });
-  await tab.page.getByRole('slider').waitFor();
+  await tab.page.getByRole('slider', { name: 'k, the feedback fraction' }).waitFor();
   return tab;
 }
 
@@ -257,7 +257,7 @@ describe('k', () => {
     const { page, close } = await openSheet(1280);
     const before = await value(page, 'R2').textContent();
     await page.getByLabel('What setting k moves').selectOption('controlOhm');
-    await page.getByRole('slider').focus();
+    await page.getByRole('slider', { name: 'k, the feedback fraction' }).focus();
     await page.keyboard.press('PageUp');
     expect(await value(page, 'R2').textContent()).toBe(before);
     expect(await value(page, 'R3').textContent()).not.toBe('910\u2009kΩ');
@@ -267,7 +267,7 @@ describe('k', () => {
   test('is set by the pointer on the axis of Fig. 2, from the keyboard and by dragging', async () => {
     const { page, close } = await openSheet(1280);
     await page.locator('.drawing').getByLabel(FEEDBACK).selectOption('buffered');
-    const slider = page.getByRole('slider');
+    const slider = page.getByRole('slider', { name: 'k, the feedback fraction' });
     await slider.focus();
     await page.keyboard.press('Home');
     const low = Number(await slider.getAttribute('aria-valuenow'));

@@ -4,7 +4,19 @@ import { defaultDesign } from '../../model/design/defaults.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
-import type { Bench, FeedbackPoint, Hearing, LiveLevels, Note, Region, SoundState, SourceInfo, Take } from '../../web/state/bench.ts';
+import type { TransferPath } from '../../model/study/transfer.ts';
+import type {
+  Bench,
+  FeedbackPoint,
+  Hearing,
+  LiveLevels,
+  Note,
+  Region,
+  SoundState,
+  SourceInfo,
+  Take,
+  TransferPlane,
+} from '../../web/state/bench.ts';
 import { controlPicture } from '../../web/state/controlPicture.ts';
 import { createDocument } from '../../web/state/document.ts';
 
@@ -40,6 +52,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
   const region = signal<Region | null>(null);
   const takes = signal<readonly Take[]>(options.takes ?? []);
   const notes = signal<readonly Note[]>(options.notes ?? []);
+  const hints = signal(true);
   const none = () => undefined;
   const asyncNone = async () => undefined;
   const put = (target: { value: number }) => (value: number) => {
@@ -109,18 +122,26 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
       levels: sound.value === 'playing' ? inventedLevels(muted.value) : null,
       reading: options.unread ? { fault: 'The cell cannot be solved here' } : inventedReading(k.value, options.saturated ?? 0),
       thdBand: [0.0037, 0.0057] as const,
+      path: options.unread ? null : inventedPath(),
     })),
     swing: signal([
       { gateV: -1.8, gainDb: -0.1, rdsOhm: Number.POSITIVE_INFINITY },
       { gateV: -0.6, gainDb: -27.9, rdsOhm: 420 },
     ]),
+    beyond: signal([
+      { gateV: -1.9, gainDb: -0.1, rdsOhm: Number.POSITIVE_INFINITY },
+      { gateV: 0, gainDb: -33, rdsOhm: 250 },
+    ]),
+    plane: signal(inventedPlane()),
     noise: signal([
       { gateV: -1.8, drainV: 1.8e-6 },
       { gateV: -0.6, drainV: 0.36e-6 },
     ]),
     period: computed(() => controlPicture(document.design.value, document.heardVariant.value, 997)),
     worst: computed(() => ({ thdFundamental: 0.04, gainDb: -2, gateV: -1.55 })),
-    summaries: computed(() => document.design.value.variants.map((_, n) => ({ restThd: 0.0047 + n / 100, worstThd: 0.04 }))),
+    summaries: computed(() =>
+      document.design.value.variants.map((_, n) => ({ restThd: 0.0047 + n / 100, worstThd: 0.04, gainDb: [-27.9, -0.1] as const })),
+    ),
     feedbackCurve: signal({ gateV: -1.38, points: inventedCurve() }),
     toneV,
     setToneV: put(toneV),
@@ -154,6 +175,9 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
       ),
     playTake: none,
     playingTake: signal(null),
+    hints,
+    putHintsAway: () => assign(hints, false),
+    savePlot: none,
     notes,
     dismiss: (id) =>
       assign(
@@ -182,6 +206,8 @@ function inventedLevels(muted: boolean): LiveLevels {
   return {
     controlV: -1.53,
     gateSourceV: -1.38,
+    gateLowV: -1.4,
+    gateHighV: -1.36,
     feedthroughPeakV: 0.0012,
     inputPeakV: 0.2,
     drainPeakV: 0.059,
@@ -220,6 +246,23 @@ function inventedReading(k: number, saturated: number): ToneReading {
     regions: { ohmic: 1 - saturated, saturated, cutoff: 0, gateOn: 0 },
     gridPoints: 512,
     converged: true,
+  };
+}
+
+/** A resistor of 4.25 kΩ. */
+function inventedPath(): TransferPath {
+  const drainSourceV = Float64Array.from({ length: 65 }, (_, n) => 0.059 * Math.cos((n * Math.PI) / 32));
+  return { drainSourceV, drainA: drainSourceV.map((v) => v / 4250) };
+}
+
+function inventedPlane(): TransferPlane {
+  const drainSourceV = Float64Array.from({ length: 41 }, (_, n) => 0.2 * (n / 20 - 1));
+  const slopes = [2e-3, 1e-3, 5e-4, 2e-4];
+  return {
+    drainSourceV,
+    curves: slopes.map((slopeS) => ({ gateV: -1.5 + slopeS / 2.67e-3, drainA: drainSourceV.map((v) => slopeS * v) })),
+    edgeA: drainSourceV.map((v) => 1.33e-3 * v * Math.abs(v)),
+    topA: 1.5e-4,
   };
 }
 

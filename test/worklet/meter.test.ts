@@ -23,7 +23,7 @@ function measuredAt(rate: number): Measured {
   return { bank: createBank([], 1, rate), mix: createMix(7, 0, rate), monitor: createMonitor(1, 1, false, rate), load: createLoad() };
 }
 
-function runMeter(rate: number, inputs: Float32Array[], outputs: Float32Array[]): Report[] {
+function runMeter(rate: number, inputs: Float32Array[], outputs: Float32Array[], readingsAt = (_block: number) => READINGS): Report[] {
   const reports: Report[] = [];
   const meter = createMeter(
     {
@@ -38,7 +38,7 @@ function runMeter(rate: number, inputs: Float32Array[], outputs: Float32Array[])
   const measured = measuredAt(rate);
   for (let at = 0; at < inputs[0].length; at += BLOCK) {
     const block = (line: Float32Array) => line.subarray(at, at + BLOCK);
-    processMeter(meter, at, inputs.map(block), outputs.map(block), READINGS, measured);
+    processMeter(meter, at, inputs.map(block), outputs.map(block), readingsAt(at / BLOCK), measured);
   }
   return reports;
 }
@@ -50,6 +50,18 @@ describe('the meter', () => {
     const reports = runMeter(rate, [line], [line]);
     expect(reports.length).toBeLessThanOrEqual(30 * seconds);
     expect(reports.length).toBeGreaterThanOrEqual(25 * seconds);
+  });
+
+  test('the gate’s least and highest voltage are those of every block since the report before, and of none before that', () => {
+    const line = new Float32Array(BLOCK * 40);
+    // A dip in block 3 and a rise in block 20: 1600 samples are 12.5 blocks, so the first report holds the one and the second the other.
+    const gateV = (block: number) => (block === 3 ? -1.4 : block === 20 ? -0.1 : -0.5);
+    const reports = runMeter(48000, [line], [line], (block) => ({ ...READINGS, gateSourceV: gateV(block) }));
+    expect(reports.slice(0, 3).map(({ gateLowV, gateHighV }) => [gateLowV, gateHighV])).toEqual([
+      [-1.4, -0.5],
+      [-0.5, -0.1],
+      [-0.5, -0.5],
+    ]);
   });
 
   test('its windows put together are the samples themselves', () => {

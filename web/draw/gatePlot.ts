@@ -1,4 +1,4 @@
-/** Fig. 3: the gate against VGS(off), over one period of the control without audio, or over the level of a tone that a follower hears. */
+/** Fig. 3: the gate against VGS(off), over one period of the control without audio, over the level of a tone that a follower hears, or over time. */
 import type { ControlPicture, FollowerCurve, GatePeriod } from '../state/bench.ts';
 import { linePath, type Point } from './line.ts';
 import { plotArea, type PlotArea, type Tick } from './plotArea.ts';
@@ -38,7 +38,8 @@ export function isFollower(picture: ControlPicture): picture is FollowerCurve {
   return 'levelV' in picture;
 }
 
-export function plotGate(picture: ControlPicture, width: number, height: number): GatePlot {
+/** With `sweepSec` the frame is that of the same gate over so much time: without a curve of its own or regions. */
+export function plotGate(picture: ControlPicture, width: number, height: number, sweepSec: number | null = null): GatePlot {
   const { gate, gateOffV } = picture;
   const area = plotArea(width, height, MARGINS);
   const values = [...gate, gateOffV, 0];
@@ -49,9 +50,10 @@ export function plotGate(picture: ControlPicture, width: number, height: number)
     area.bottom,
     area.top,
   );
-  const x = acrossScale(picture, area);
+  const own = acrossScale(picture, area);
+  const x = sweepSec === null ? own : linearScale(0, sweepSec, area.left, area.right);
   const across = Array.from(gate, (_, n) =>
-    toPixel(x, isFollower(picture) ? picture.levelV[n] : (n / (gate.length - 1)) * picture.seconds),
+    toPixel(own, isFollower(picture) ? picture.levelV[n] : (n / (gate.length - 1)) * picture.seconds),
   );
   const points = Array.from(gate, (v, n) => ({ x: across[n], y: toPixel(y, v) }));
   const past = (v: number) => (gateOffV < 0 ? gateOffV - v : v - gateOffV);
@@ -61,14 +63,14 @@ export function plotGate(picture: ControlPicture, width: number, height: number)
     area,
     x,
     y,
-    xTicks: isFollower(picture) ? levelTicks(x) : timeTicks(x, picture),
+    xTicks: sweepSec !== null ? timeTicks(x) : ticksOf(picture, x),
     yTicks: voltTicks(y),
-    gate: linePath(points),
+    gate: sweepSec === null ? linePath(points) : '',
     start: !isFollower(picture) && picture.steady ? { x: (area.left + area.right) / 2, y: points[0].y } : points[0],
     labelAbove: gateOffV < 0 !== Math.abs(points[0].y - (gateOffV < 0 ? offY - 11 : offY + 11)) < 14,
     offY,
     offArea: gateOffV < 0 ? { top: offY, height: area.bottom - offY } : { top: area.top, height: offY - area.top },
-    regions: regionRuns(picture, across),
+    regions: sweepSec === null ? regionRuns(picture, across) : [],
     deepest: { ...points[deepest], pastV: past(gate[deepest]) },
   };
 }
@@ -86,8 +88,13 @@ function levelTicks(x: Scale): Tick[] {
   }));
 }
 
-function timeTicks(x: Scale, { seconds, steady }: GatePeriod): Tick[] {
-  if (steady) return [];
+function ticksOf(picture: ControlPicture, x: Scale): Tick[] {
+  if (isFollower(picture)) return levelTicks(x);
+  return picture.steady ? [] : timeTicks(x);
+}
+
+function timeTicks(x: Scale): Tick[] {
+  const seconds = x.to;
   const milli = seconds < 1;
   const ticks = linearTicks(0, milli ? seconds * 1000 : seconds, 4);
   return ticks.map((t, n) => ({
@@ -131,4 +138,31 @@ export function turnOf(period: GatePeriod, controlV: number, falling: boolean): 
     if (distance < miss) [best, miss] = [n, distance];
   }
   return best / steps;
+}
+
+interface Moved {
+  readonly controlV: number;
+  readonly gateSourceV: number;
+}
+
+/**
+ * Where the gate is on the way from one report to the next: its share of the period goes evenly, and it keeps to the curve's own shape between what the
+ * two reports say.
+ */
+export function onPeriod(
+  period: GatePeriod,
+  { before, now, share }: { readonly before: Moved; readonly now: Moved; readonly share: number },
+): { turn: number; gateV: number } {
+  const falling = now.controlV < before.controlV;
+  const [from, to] = [turnOf(period, before.controlV, falling), turnOf(period, now.controlV, falling)];
+  const way = to - from - Math.round(to - from);
+  const turn = (from + share * way + 1) % 1;
+  const off = (1 - share) * (before.gateSourceV - gateAt(period, from)) + share * (now.gateSourceV - gateAt(period, to));
+  return { turn, gateV: gateAt(period, turn) + off };
+}
+
+function gateAt({ gate }: GatePeriod, turn: number): number {
+  const at = turn * (gate.length - 1);
+  const n = Math.min(gate.length - 2, Math.floor(at));
+  return gate[n] + (at - n) * (gate[n + 1] - gate[n]);
 }

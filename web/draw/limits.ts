@@ -1,4 +1,5 @@
 /** What drives a part past its limit, with the number. Being cut off is none: that is how a cell turns the sound on. */
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
 import type { Variant } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
@@ -30,7 +31,7 @@ export function deviceLimit(variant: Variant, reading: ToneReading, drainPeakV: 
  */
 export function reverseV(variant: Variant, { vgsV, fundamentalV }: ToneReading, drainPeakV: number): number {
   const k = feedbackFraction(variant.cell);
-  const restV = variant.device.channel === 'n' ? -vgsV : vgsV;
+  const restV = deviceOf(variant, 0).channel === 'n' ? -vgsV : vgsV;
   const peakV = variant.cell.reference.kind === 'ground' ? Math.max(drainPeakV, fundamentalV) : fundamentalV;
   return restV + Math.max(k, 1 - k) * peakV;
 }

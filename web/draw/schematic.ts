@@ -1,4 +1,5 @@
 /** The drawing of the cell for the parts that are fitted, as numbers: wires, symbols, and where each value stands. Sheet pixels (1/16 rem). */
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import type { Variant } from '../../model/design/types.ts';
 import { type BoardRows, boardRows } from './board.ts';
 import type { Point } from './line.ts';
@@ -101,7 +102,7 @@ export function fittedIn(variant: Variant): Fitted {
     blocking: feedback.kind === 'resistor' && feedback.blockingF !== null,
     loadCapacitor: loadF > 0,
     wave,
-    channel: variant.device.channel,
+    channel: deviceOf(variant, 0).channel,
     rows: boardRows(variant),
   };
 }

@@ -1,4 +1,5 @@
 /** Fig. 4: a spectrum as one highest level for each column of pixels, so that no peak falls between two. */
+import type { Point } from './line.ts';
 import type { Scale } from './scale.ts';
 import { toPixel, toValue } from './scale.ts';
 
@@ -24,6 +25,41 @@ export function spectrumColumns(spectrum: Spectrum, x: Scale, y: Scale): Float64
     columns[column] = Number.isFinite(level) ? toPixel(y, level) : Number.NaN;
   }
   return columns;
+}
+
+/** The same as a line of points; nothing to show lies just under the frame. */
+export function spectrumPoints(spectrum: Spectrum, x: Scale, y: Scale): Point[] {
+  const under = y.start + 2;
+  return Array.from(spectrumColumns(spectrum, x, y), (height, column) => ({
+    x: x.start + column,
+    y: Number.isNaN(height) ? under : Math.min(height, under),
+  }));
+}
+
+export interface Stick {
+  /** Its order: 1 is the fundamental. */
+  readonly n: number;
+  readonly x: number;
+  /** Its top, within the frame. */
+  readonly y: number;
+  readonly hz: number;
+  readonly dbfs: number;
+}
+
+/**
+ * The shadow tone and its harmonics where they fall within the frame, at the level that they have at the output: `amplitudeV` at the drain, V peak,
+ * with `gainDb` of make-up after it; 0 dBFS is a sine of `fullScaleV`.
+ */
+export function harmonicSticks(
+  harmonics: readonly { readonly n: number; readonly amplitudeV: number }[],
+  at: { readonly toneHz: number; readonly gainDb: number; readonly fullScaleV: number },
+  x: Scale,
+  y: Scale,
+): Stick[] {
+  return harmonics
+    .map(({ n, amplitudeV }) => ({ n, hz: n * at.toneHz, dbfs: 20 * Math.log10(amplitudeV / at.fullScaleV) + at.gainDb }))
+    .filter(({ hz, dbfs }) => hz >= x.from && hz <= x.to && dbfs > y.from)
+    .map((stick) => ({ ...stick, x: toPixel(x, stick.hz), y: Math.max(Math.min(y.start, y.end), toPixel(y, stick.dbfs)) }));
 }
 
 function highest(dbfs: ArrayLike<number>, from: number, to: number): number {

@@ -1,5 +1,7 @@
 /** Numbers as the sheet prints them: real minus, signs where they tell which way to turn, as many digits as mean something. */
 
+import { formatQuantity } from '../../model/design/values.ts';
+
 const MINUS = '−';
 const THIN = '\u2009';
 
@@ -45,7 +47,8 @@ export function voltsText(volts: number): string {
   const size = Math.abs(volts);
   if (size >= 0.9995) return `${decimals(volts, 2)}${THIN}V`;
   if (size >= 0.00995) return `${decimals(volts * 1000, 0)}${THIN}mV`;
-  return size >= 0.0000995 ? `${decimals(volts * 1000, 1)}${THIN}mV` : `${decimals(volts * 1e6, 0)}${THIN}μV`;
+  if (size >= 0.0000995) return `${decimals(volts * 1000, 1)}${THIN}mV`;
+  return size >= 0.995e-6 || size === 0 ? `${decimals(volts * 1e6, 0)}${THIN}μV` : formatQuantity(volts, 'V');
 }
 
 /** Level of a sine of this peak voltage, dB re 0.7746 V rms. */

@@ -3,11 +3,13 @@ import { DeviceTable } from './DeviceTable.tsx';
 import { Distortion } from './Distortion.tsx';
 import { Equation } from './Equation.tsx';
 import { FeedbackFigure } from './FeedbackFigure.tsx';
+import { GainFigure } from './GainFigure.tsx';
 import { GateFigure } from './GateFigure.tsx';
 import { LevelTable } from './LevelTable.tsx';
 import { Schematic } from './Schematic.tsx';
 import { SpectrumFigure } from './SpectrumFigure.tsx';
 import { Takes } from './Takes.tsx';
+import { TransferFigure } from './TransferFigure.tsx';
 import type { Layout } from './useLayout.ts';
 import { VariantTable } from './VariantTable.tsx';
 
@@ -17,12 +19,14 @@ export function Blocks({ layout }: { readonly layout: Layout }) {
     <div class="small-figures">
       <GateFigure />
       <SpectrumFigure />
+      <GainFigure />
+      <TransferFigure />
     </div>
   );
   const lower = (
     <div class="lower-tables">
       <VariantTable />
-      <DeviceTable />
+      <DeviceTable across={layout === 'wide' ? 3 : layout === 'tablet' ? 2 : 1} />
       <LevelTable />
     </div>
   );

@@ -7,6 +7,8 @@ import { DataTable } from './parts/DataTable.tsx';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { E24 } from './parts/stepping.ts';
 import { Sym } from './parts/Symbol.tsx';
+import { RowLimit } from './RowLimit.tsx';
+import { useSheetLimits } from './sheetLimits.ts';
 
 const COLUMNS = [
   { key: 'what', head: 'Characteristic' },
@@ -14,13 +16,16 @@ const COLUMNS = [
   { key: 'number min', head: 'Min' },
   { key: 'number now', head: 'Now' },
   { key: 'number max', head: 'Max' },
+  { key: 'number limit', head: 'Limit' },
   { key: 'unit', head: 'Unit' },
 ];
 
 /** Table 1: what the shadow tone finds at this moment, and the ends of the swing where they are known. */
 export function Characteristics() {
   const { bench, slowLive } = useBenchView();
-  const measured = { levels: slowLive.value, swing: bench.swing.value, noise: bench.noise.value };
+  const { feedthroughV, controlV, pastOffV } = useSheetLimits();
+  const limits = { feedthroughV: feedthroughV.value, controlV: controlV.value, pastOffV: pastOffV.value };
+  const measured = { limits, levels: slowLive.value, swing: bench.swing.value, noise: bench.noise.value };
   const variant = useVariant();
   const reading = useReading();
   const found = bench.period.value;
@@ -39,7 +44,7 @@ export function Characteristics() {
       {reading === null && (
         <tbody>
           <tr>
-            <td colSpan={6} class="unread">
+            <td colSpan={7} class="unread">
               no reading
             </td>
           </tr>
@@ -49,7 +54,8 @@ export function Characteristics() {
   );
 }
 
-function CharacteristicRow({ what, short, symbol, min, now, max, unit, measured }: Row) {
+function CharacteristicRow({ what, short, symbol, min, now, max, unit, limit, over = [], measured }: Row) {
+  const marked = (which: 'min' | 'max', text: string) => (over.includes(which) ? <span class="over">{text}</span> : text);
   return (
     <tr>
       <th scope="row" class="what">
@@ -57,9 +63,10 @@ function CharacteristicRow({ what, short, symbol, min, now, max, unit, measured 
         <span class="short">{short}</span>
       </th>
       <td class="symbol">{symbol && <Sym of={symbol[0]} {...(symbol[1] && { sub: symbol[1] })} />}</td>
-      <td class="number min">{min}</td>
-      <td class="number now">{now !== null && <span class={measured ? 'live' : undefined}>{now}</span>}</td>
-      <td class="number max">{max}</td>
+      <td class="number min">{marked('min', min)}</td>
+      <td class="number now">{now !== null && <span class={over.includes('now') ? 'over' : measured ? 'live' : undefined}>{now}</span>}</td>
+      <td class="number max">{marked('max', max)}</td>
+      <td class="number limit">{limit && <RowLimit limit={limit} />}</td>
       <td class="unit">{unit}</td>
     </tr>
   );
@@ -76,7 +83,7 @@ function Regions({ ohmic, saturated, cutoff, gateOn }: { ohmic: number; saturate
           <span class="long">Regions, share of the tone</span>
           <span class="short">Regions</span>
         </th>
-        <td colSpan={5}>
+        <td colSpan={6}>
           <span class="share">ohmic {share(ohmic, false)},</span> <span class="share">saturated {share(saturated, true)},</span>{' '}
           <span class="share">cut off {share(cutoff, false)},</span>{' '}
           <span class="share">

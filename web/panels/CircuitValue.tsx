@@ -1,3 +1,4 @@
+import type { Variant } from '../../model/design/types.ts';
 import { fieldAt, getAt, rangeFault } from '../../model/design/path.ts';
 import { formatQuantity, parseQuantity, type Unit } from '../../model/design/values.ts';
 import { valueVolts } from '../draw/words.ts';
@@ -18,11 +19,13 @@ interface CircuitValueProps {
 }
 
 /** One value of the heard variant, with the unit and limits that the document's schema gives it. */
-export function CircuitValue({ path, label, short, zeroIsAbsent = false, signed = false, stepping }: CircuitValueProps) {
+export function CircuitValue({ path: stated, label, short, zeroIsAbsent = false, signed = false, stepping }: CircuitValueProps) {
   const bench = useBench();
+  const variant = useVariant();
+  const path = shownPath(variant, stated);
   const field = fieldAt(path);
   if (field.kind !== 'number') throw new Error(`${path} is not a number and cannot be edited as one`);
-  const raw = getAt(useVariant(), path) as number | null;
+  const raw = getAt(variant, path) as number | null;
   const { unit, min, max } = field;
   return (
     <EditableValue
@@ -41,6 +44,11 @@ export function CircuitValue({ path, label, short, zeroIsAbsent = false, signed 
       }
     />
   );
+}
+
+/** Where the channels' devices differ, the sheet shows the first channel's: the one that is read. */
+function shownPath(variant: Variant, path: string): string {
+  return variant.devices === undefined ? path : path.replace(/^device\./, 'devices.0.');
 }
 
 /** The document's sentences name a value by its path; here it has a name of its own. */

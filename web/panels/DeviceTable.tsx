@@ -1,4 +1,6 @@
-import { parseQuantity } from '../../model/design/values.ts';
+import { deviceOf } from '../../model/cell/fromDesign.ts';
+import type { Device } from '../../model/design/types.ts';
+import { formatQuantity, parseQuantity } from '../../model/design/values.ts';
 import { decimals, valueVolts } from '../draw/words.ts';
 import { useBench, useVariant } from './BenchContext.ts';
 import { CircuitValue } from './CircuitValue.tsx';
@@ -39,61 +41,67 @@ const AMPLIFIER: readonly Entry[] = [
   { path: 'output.swingV', what: 'Swing, either side of 0\u2009V', short: 'The swing' },
 ];
 
-const COLUMNS = [
-  { key: 'what', head: 'Value' },
-  { key: 'number', head: 'Fitted' },
-];
+const WHAT = { key: 'what', head: 'Value' };
+const FITTED = { key: 'number', head: 'Fitted' };
 
-/** Table 4: what of the FET and the amplifier has no place in the drawing. */
-export function DeviceTable() {
+/** Table 4: what of the FET and the amplifier has no place in the drawing, in as many columns as there is room for. */
+export function DeviceTable({ across }: { readonly across: 1 | 2 | 3 }) {
   const bench = useBench();
-  const { device } = useVariant();
+  const variant = useVariant();
+  const device = deviceOf(variant, 0);
   const barrierToo = device.law !== 'gradual' && device.grading > 0;
   const channel = [...LAWS[device.law], ...(barrierToo ? LAWS.gradual : []), ...CHANNEL];
+  const cells = [
+    ...[...channel, ...GATE].map((entry) => <EntryCells key={entry.path} {...entry} />),
+    <ReverseCells key="reverse" />,
+    ...AMPLIFIER.map((entry) => <EntryCells key={entry.path} {...entry} />),
+  ];
+  const rows = Math.ceil(cells.length / across);
+  const columns = Array.from({ length: across }, () => [WHAT, FITTED]).flat();
   return (
     <DataTable
       number={4}
       className="device-table"
       caption={
-        <>J1 and the amplifier, in variant {bench.design.value.variants[bench.heardVariant.value].name}. «none» is ideal, or absent.</>
+        <>
+          J1 and the amplifier, in variant {bench.design.value.variants[bench.heardVariant.value].name}. «none» is ideal, or absent.
+          {variant.devices && ` ${otherDevice(variant.devices[1])}`}
+        </>
       }
-      columns={COLUMNS}
+      columns={columns}
     >
-      {[channel, GATE].map((entries) => (
-        <tbody key={entries[0].path}>
-          {entries.map((entry) => (
-            <EntryRow key={entry.path} {...entry} />
-          ))}
-          {entries === GATE && <ReverseRow />}
-        </tbody>
-      ))}
       <tbody>
-        {AMPLIFIER.map((entry) => (
-          <EntryRow key={entry.path} {...entry} />
+        {Array.from({ length: rows }, (_, row) => (
+          <tr key={cells[row].key}>{Array.from({ length: across }, (_, n) => cells[row + n * rows])}</tr>
         ))}
       </tbody>
     </DataTable>
   );
 }
 
-function EntryRow({ path, what, short, zeroIsAbsent = false }: Entry) {
+/** The sheet shows and reads the left channel's part. */
+function otherDevice({ idssA, gateOffV }: Device): string {
+  return `Shown and read is the left channel’s J1; the right one’s has IDSS ${formatQuantity(idssA, 'A')} and VGS(off) ${valueVolts(gateOffV)}.`;
+}
+
+function EntryCells({ path, what, short, zeroIsAbsent = false }: Entry) {
   return (
-    <tr>
+    <>
       <th scope="row" class="what">
         {what}
       </th>
       <td class="number">
         <CircuitValue path={path} label={what} short={short} zeroIsAbsent={zeroIsAbsent} />
       </td>
-    </tr>
+    </>
   );
 }
 
 /** A limit of the sheet, not a value of the circuit. */
-function ReverseRow() {
+function ReverseCells() {
   const limit = useReverseLimit();
   return (
-    <tr>
+    <>
       <th scope="row" class="what">
         Limit of the gate’s reverse voltage, by its sheet
       </th>
@@ -113,6 +121,6 @@ function ReverseRow() {
           }}
         />
       </td>
-    </tr>
+    </>
   );
 }

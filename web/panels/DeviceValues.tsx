@@ -1,3 +1,4 @@
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import type { Channel, Control, Law } from '../../model/design/types.ts';
 import type { Form } from '../draw/schematic.ts';
 import { useBench, useVariant } from './BenchContext.ts';
@@ -19,12 +20,15 @@ const CHANNELS: readonly { value: Channel; words: string }[] = [
 export function DeviceValues({ form }: { readonly form: Form }) {
   const bench = useBench();
   const variant = useVariant();
-  const { channel, law } = variant.device;
+  const { channel, law } = deviceOf(variant, 0);
   const chooseChannel = (next: Channel) => {
     if (next === channel) return null;
     return bench.setValues([
       ['control', mirrored(variant.control)],
-      ['device', { ...variant.device, channel: next, gateOffV: -variant.device.gateOffV }],
+      ...(variant.devices ?? [variant.device]).map((device, n): readonly [string, unknown] => [
+        variant.devices ? `devices.${n}` : 'device',
+        { ...device, channel: next, gateOffV: -device.gateOffV },
+      ]),
     ]);
   };
   const short = form === 'upright';
@@ -57,7 +61,7 @@ export function DeviceValues({ form }: { readonly form: Form }) {
           label="Law of J1"
           value={law}
           options={LAWS}
-          onChoose={(next) => bench.setValue('device.law', next)}
+          onChoose={(next) => bench.setValue(variant.devices ? 'devices.0.law' : 'device.law', next)}
           {...(short && { shown: law })}
         />
       </span>

@@ -2,14 +2,15 @@ import { feedbackFraction } from '../../model/design/feedback.ts';
 import { curveAt, type FeedbackPlot, leastWords, plotFeedback, thdRangeOf } from '../draw/feedbackPlot.ts';
 import { placeLabels } from '../draw/curveLabels.ts';
 import type { Point } from '../draw/line.ts';
-import type { FeedbackCurve } from '../state/bench.ts';
+import type { PlotTable } from '../draw/plotData.ts';
+import type { FeedbackCurve, FeedbackPoint } from '../state/bench.ts';
 import { toPixel } from '../draw/scale.ts';
-import { gateVolts, percentText } from '../draw/words.ts';
+import { decimals, gateVolts, percentText, signedPercentText } from '../draw/words.ts';
 import { useBench, usePlaying, useReading, useVariant } from './BenchContext.ts';
 import { FeedbackPointer } from './FeedbackPointer.tsx';
-import { Figure } from './parts/Figure.tsx';
+import { Clip } from './parts/Clip.tsx';
+import { type Drawing, PlotFigure } from './parts/PlotFigure.tsx';
 import { PlotFrame } from './parts/PlotFrame.tsx';
-import { useSheetSize } from './parts/useSheetSize.ts';
 import { useHeldRange } from './useHeldRange.ts';
 
 /** A curve of a gate voltage this near is that of the moment: both are printed to 10 mV. */
@@ -18,34 +19,54 @@ const SAME_GATE_V = 0.011;
 /** Fig. 2: distortion against k at this gate voltage. The axis itself is the control of k. */
 export function FeedbackFigure() {
   const bench = useBench();
-  const { ref, size } = useSheetSize<HTMLDivElement>();
   const curve = bench.feedbackCurve.value;
   const { cell } = useVariant();
   const drawable = curve !== null && curve.points.length > 1 ? curve : null;
   const vgsV = useReading()?.vgsV ?? null;
   const current = drawable === null || vgsV === null || Math.abs(drawable.gateV - vgsV) < SAME_GATE_V;
   const range = useHeldRange(drawable && thdRangeOf(drawable.points), usePlaying());
-  const plot = size && drawable && range ? plotFeedback(drawable.points, size.width, size.height, range) : null;
+  const drawn = (width: number, height: number): Drawing | null => {
+    if (drawable === null || range === null) return null;
+    const plot = plotFeedback(drawable.points, width, height, range);
+    const picture = (
+      <>
+        <Curves plot={plot} curve={drawable} current={current} />
+        <FeedbackPointer plot={plot} />
+      </>
+    );
+    return { area: plot.area, x: plot.x, tables: () => curveTables(drawable), picture };
+  };
   return (
-    <Figure
+    <PlotFigure
       number={2}
       className="feedback-figure"
+      title="Distortion against k"
       caption={
         <>
           Distortion against <i>k</i> (drag it){drawable && <>, gate at {gateVolts(drawable.gateV)}</>}
           {current ? <>. Shaded: 1{'\u2009'}% parts.</> : ' a moment ago.'}
         </>
       }
-    >
-      <div class="plot" ref={ref}>
-        {plot && drawable && <Curves plot={plot} curve={drawable} current={current} />}
-        {plot && <FeedbackPointer plot={plot} />}
-        {!plot && (
-          <p class="unread empty-plot">{cell.feedback.kind === 'none' ? 'no feedback is fitted, so k stays 0' : 'no reading yet'}</p>
-        )}
-      </div>
-    </Figure>
+      draw={drawn}
+      empty={<p class="unread empty-plot">{cell.feedback.kind === 'none' ? 'no feedback is fitted, so k stays 0' : 'no reading yet'}</p>}
+    />
   );
+}
+
+/** Per cent of the fundamental; the sign of H2 says which way to turn k. */
+function curveTables({ points }: FeedbackCurve): PlotTable[] {
+  const percent = (name: string, pick: (point: FeedbackPoint) => number, print = percentText) => ({
+    name,
+    unit: '%',
+    values: points.map((point) => 100 * pick(point)),
+    print: (value: number) => `${print(value / 100)}\u2009%`,
+  });
+  return [
+    {
+      x: { name: 'k', unit: '', values: points.map(({ k }) => k), print: (k) => `k ${decimals(k, 3)}` },
+      ys: [percent('THD', ({ thd }) => thd), percent('H2', ({ h2Signed }) => h2Signed, signedPercentText), percent('H3', ({ h3 }) => h3)],
+    },
+  ];
 }
 
 interface CurvesProps {
@@ -70,16 +91,13 @@ function Curves({ plot, curve, current }: CurvesProps) {
   return (
     <svg viewBox={`0 0 ${area.width} ${area.height}`} role="img" aria-label={`Distortion against k: ${leastWords(least)}`}>
       <PlotFrame area={area} xTicks={xTicks} yTicks={plot.yTicks} under={3} />
-      <clipPath id="feedback-clip">
-        <rect x={area.left} y={area.top} width={area.right - area.left} height={area.bottom - area.top} />
-      </clipPath>
-      <g clip-path="url(#feedback-clip)" class={current ? undefined : 'past'}>
+      <Clip id="feedback-clip" area={area} {...(!current && { className: 'past' })}>
         <path class="band" d={plot.band} />
         <path class="curve-h2-under" d={plot.h2} />
         <path class="now-line curve-thd" d={plot.thd} />
         <path class="curve-h2" d={plot.h2} />
         <path class="curve-h3" d={plot.h3} />
-      </g>
+      </Clip>
       {present && (
         <g>
           <path class="now-line thin" d={`M${present.x} ${present.y}V${area.bottom}`} />

@@ -1,3 +1,4 @@
+import { Load } from './Load.tsx';
 import { Caution } from './parts/Note.tsx';
 
 /** How to read the sheet, what its readings leave out, and the cautions of the bench. */
@@ -21,6 +22,7 @@ export function Foot() {
         <Caution /> <b>On the bench.</b> Keep parts in conductive foam: static kills gates. Keep the gate’s current under its sheet’s limit,
         with a series resistor. Use a battery or an approved supply, never an open mains chassis, and follow your local code.
       </p>
+      <Load />
     </footer>
   );
 }

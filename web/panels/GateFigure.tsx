@@ -1,132 +1,131 @@
-import { useEffect, useMemo, useRef } from 'preact/hooks';
-import type { ControlPicture, LiveLevels } from '../state/bench.ts';
-import { type GatePlot, isFollower, plotGate, type Region, turnOf } from '../draw/gatePlot.ts';
-import { toPixel } from '../draw/scale.ts';
-import { valueVolts, voltsText } from '../draw/words.ts';
-import { useBench, useBenchView, usePlaying } from './BenchContext.ts';
-import { Figure } from './parts/Figure.tsx';
-import { PlotFrame } from './parts/PlotFrame.tsx';
-import { useSheetSize } from './parts/useSheetSize.ts';
+import { useSignal } from '@preact/signals';
+import { useMemo } from 'preact/hooks';
+import { type GatePlot, isFollower, plotGate, regionAt } from '../draw/gatePlot.ts';
+import { createGateSweep, sweepLines, type SweepReading } from '../draw/gateSweep.ts';
+import type { PlotTable } from '../draw/plotData.ts';
+import type { Trace } from '../draw/traces.ts';
+import { dbuFromPeak, decimals, gateVolts, voltsText } from '../draw/words.ts';
+import type { ControlPicture } from '../state/bench.ts';
+import { useBench } from './BenchContext.ts';
+import { GatePicture } from './GatePicture.tsx';
+import { Choice, chosen } from './parts/Choice.tsx';
+import { type Drawing, PlotFigure } from './parts/PlotFigure.tsx';
+import { TraceCanvas } from './parts/TraceCanvas.tsx';
+import { useGateSweep } from './useGateSweep.ts';
 
-/** Fig. 3: the gate over one period of the control, with its regions in a strip below. */
+type View = 'control' | 'time';
+
+/** Time that the gate is written over, s. */
+const SWEEP_SEC = 10;
+
+/** Fig. 3: the gate over one period of the control, or over the level of a tone, with its regions in a strip below; or as it goes, over time. */
 export function GateFigure() {
-  const { ref, size } = useSheetSize<HTMLDivElement>();
   const found = useBench().period.value;
-  const period = found === null || 'fault' in found ? null : found;
-  const plot = useMemo(() => (size && period ? plotGate(period, size.width, size.height) : null), [period, size]);
-  const caption =
-    plot && period && `${subject(period)}, ${pastWords(plot.deepest.pastV)}. Strip: filled ohmic, empty off, hatched conducting.`;
+  const picture = found === null || 'fault' in found ? null : found;
+  const view = useSignal<View>('control');
+  const sweep = useMemo(() => createGateSweep(SWEEP_SEC), []);
+  useGateSweep(sweep);
+  const overTime = view.value === 'time';
+  const drawn = (width: number, height: number): Drawing | null => {
+    if (picture === null) return null;
+    const plot = plotGate(picture, width, height, overTime ? SWEEP_SEC : null);
+    return overTime ? timeDrawing(plot, picture, sweep) : controlDrawing(plot, picture);
+  };
   return (
-    <Figure number={3} className="gate-figure" caption={caption}>
-      <div class="plot" ref={ref}>
-        {plot && period && <Drawn plot={plot} period={period} />}
-        {found !== null && 'fault' in found && <p class="unread empty-plot">{found.fault}</p>}
-      </div>
-    </Figure>
+    <PlotFigure
+      key={view.value}
+      number={3}
+      className="gate-figure"
+      title="Gate voltage"
+      lead={
+        <>
+          Gate{' '}
+          <Choice
+            label="What the gate is drawn against in Fig. 3"
+            value={view.value}
+            options={[
+              { value: 'control', words: subject(picture) },
+              { value: 'time', words: `over ${SWEEP_SEC}\u2009s` },
+            ]}
+            onChoose={chosen((next) => (view.value = next))}
+          />
+        </>
+      }
+      caption={overTime ? ', as it goes.' : <Key picture={picture} />}
+      draw={drawn}
+      empty={found !== null && 'fault' in found && <p class="unread empty-plot">{found.fault}</p>}
+    />
   );
 }
 
-interface DrawnProps {
-  readonly plot: GatePlot;
-  readonly period: ControlPicture;
+function subject(picture: ControlPicture | null): string {
+  if (picture === null) return 'by its control';
+  if (isFollower(picture)) return 'by level of a tone';
+  return picture.steady ? 'at a fixed control' : 'over a period';
 }
 
-function subject(period: ControlPicture): string {
-  if (isFollower(period)) return 'Gate against the level of a steady tone';
-  return period.steady ? 'Gate at a fixed control' : 'Gate over a period';
+/** What the strip's fillings mean, of those that are there. */
+function Key({ picture }: { readonly picture: ControlPicture | null }) {
+  const seen = picture === null ? [] : Array.from(picture.gate, (v) => regionAt(v, picture));
+  const conducting = seen.includes('conducting');
+  return <>; filled ohmic, empty off{conducting && ', hatched conducting'}.</>;
 }
 
-function Drawn({ plot, period }: DrawnProps) {
-  const { gateOffV } = period;
-  const { area, offY, offArea, deepest } = plot;
-  const roomy = deepest.pastV > 0 && Math.abs(deepest.y - offY) >= 12;
-  const arrowX = Math.max(area.left + 6, Math.min(area.right - 6, deepest.x));
-  const labelLeft = deepest.x > (area.left + area.right) / 2;
-  return (
-    <svg
-      viewBox={`0 0 ${area.width} ${area.height}`}
-      role="img"
-      aria-label={`${subject(period)}, against VGS(off) ${valueVolts(gateOffV)}`}
-    >
-      <defs>
-        <pattern id="off-hatch" width="6" height="6" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
-          <path class="hatch" d="M0 0V6" />
-        </pattern>
-        <pattern id="on-hatch" width="4" height="4" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
-          <path class="hatch strong" d="M0 0V4" />
-        </pattern>
-      </defs>
-      <PlotFrame area={area} xTicks={plot.xTicks} yTicks={plot.yTicks} under={11} />
-      <rect x={area.left} y={offArea.top} width={area.right - area.left} height={Math.max(0, offArea.height)} fill="url(#off-hatch)" />
-      <path class="dash-dot" d={`M${area.left} ${offY}H${area.right}`} />
-      <path class="now-line" d={plot.gate} />
-      <text
-        class="note-text halo"
-        x={labelLeft ? area.left + 7 : area.right - 7}
-        y={plot.labelAbove ? offY - 6 : offY + 13}
-        text-anchor={labelLeft ? 'start' : 'end'}
-      >
-        <tspan class="italic">V</tspan>
-        <tspan class="subscript" dy={3}>
-          GS(off)
-        </tspan>
-      </text>
-      {roomy && (
-        <path
-          class="dimension"
-          d={`M${arrowX} ${offY}V${deepest.y}m-3 ${deepest.y > offY ? -6 : 6}l3 ${deepest.y > offY ? 6 : -6}l3 ${deepest.y > offY ? -6 : 6}`}
-        />
-      )}
-      <Strip plot={plot} />
-      <Present plot={plot} period={period} />
-    </svg>
-  );
+const secondsText = (sec: number) => `${decimals(sec, 3)}\u2009s`;
+
+function controlDrawing(plot: GatePlot, picture: ControlPicture): Drawing {
+  const { gate, control } = picture;
+  const x = isFollower(picture)
+    ? { name: 'level', unit: 'V', values: picture.levelV, print: (volts: number) => `${decimals(dbuFromPeak(volts), 1)}\u2009dBu` }
+    : { name: 'time', unit: 's', values: gate.map((_, n) => (n / (gate.length - 1)) * picture.seconds), print: secondsText };
+  const tables: PlotTable[] = [
+    {
+      x,
+      ys: [
+        { name: 'gate', unit: 'V', values: gate, print: gateVolts },
+        { name: 'control', unit: 'V', values: control, print: gateVolts },
+      ],
+    },
+  ];
+  return { area: plot.area, x: plot.x, tables: () => tables, picture: <GatePicture plot={plot} picture={picture} /> };
 }
 
-/** How far the deepest end of the swing lies past VGS(off). */
-function pastWords(pastV: number): string {
-  return pastV > 0 ? `past off by ${voltsText(pastV)} at its deepest` : `${voltsText(-pastV)} short of off`;
+function timeDrawing(plot: GatePlot, picture: ControlPicture, sweep: ReturnType<typeof createGateSweep>): Drawing {
+  const { area, x, y } = plot;
+  const traces = (): Trace[] => {
+    const { now, before } = sweepLines(sweep.readings(), SWEEP_SEC, x, y);
+    return [
+      { points: before, ink: '--ink3', width: 0.9 },
+      { points: now, ink: '--now', width: 1.8 },
+    ];
+  };
+  return {
+    area,
+    x,
+    tables: () => [sweepTable(sweep.readings())],
+    traces,
+    picture: (
+      <>
+        <GatePicture plot={plot} picture={picture} sweepSec={SWEEP_SEC} />
+        <TraceCanvas area={area} traces={traces} label={`The gate as it goes, ${voltsText(picture.gateOffV)} being VGS(off)`} />
+      </>
+    ),
+  };
 }
 
-function Strip({ plot }: { readonly plot: GatePlot }) {
-  const y = plot.area.bottom + 4;
-  return (
-    <g class="strip">
-      {plot.regions.map(({ region, from, to }) => (
-        <rect key={from} {...paintOf(region)} x={from} y={y} width={to - from} height={7} />
-      ))}
-      <rect class="border" x={plot.area.left} y={y} width={plot.area.right - plot.area.left} height={7} />
-    </g>
-  );
-}
+const NOTHING: SweepReading = { atSec: 0, controlV: Number.NaN, gateSourceV: Number.NaN, gateLowV: Number.NaN, gateHighV: Number.NaN };
 
-function paintOf(region: Region): { class: string } | { fill: string } {
-  return region === 'conducting' ? { fill: 'url(#on-hatch)' } : { class: `region-${region}` };
-}
-
-/** The point of this moment: moved at frame rate, outside rendering. */
-function Present({ plot, period }: DrawnProps) {
-  const { bench, slowLive } = useBenchView();
-  const playing = usePlaying();
-  const point = useRef<SVGCircleElement>(null);
-  useEffect(() => {
-    let before = 0;
-    const source = matchMedia('(prefers-reduced-motion: reduce)').matches ? slowLive : bench.live;
-    return source.subscribe((live) => {
-      if (live === null || point.current === null) return;
-      const { y, area } = plot;
-      const across = placeAcross(plot, period, live, live.controlV < before);
-      before = live.controlV;
-      const height = Math.max(area.top, Math.min(area.bottom, toPixel(y, live.gateSourceV)));
-      point.current.setAttribute('cx', String(across));
-      point.current.setAttribute('cy', String(height));
-    });
-  }, [bench, slowLive, plot, period]);
-  return <circle ref={point} class={playing ? 'present' : 'present hollow'} cx={plot.start.x} cy={plot.start.y} r={4.5} />;
-}
-
-function placeAcross({ area, x }: GatePlot, period: ControlPicture, live: LiveLevels, falling: boolean): number {
-  if (isFollower(period)) return Math.max(area.left, Math.min(area.right, toPixel(x, live.inputPeakV)));
-  if (period.steady) return (area.left + area.right) / 2;
-  return x.start + turnOf(period, live.controlV, falling) * (x.end - x.start);
+/** In the order in which the frame shows it; one row without numbers while nothing has sounded. */
+function sweepTable(readings: readonly SweepReading[]): PlotTable {
+  const rows = readings.length > 0 ? [...readings].sort((a, b) => (a.atSec % SWEEP_SEC) - (b.atSec % SWEEP_SEC)) : [NOTHING];
+  const volts = (name: string, pick: (reading: SweepReading) => number) => ({ name, unit: 'V', values: rows.map(pick), print: gateVolts });
+  return {
+    x: { name: 'time', unit: 's', values: rows.map(({ atSec }) => atSec % SWEEP_SEC), print: secondsText },
+    ys: [
+      volts('gate', ({ gateSourceV }) => gateSourceV),
+      volts('lowest', ({ gateLowV }) => gateLowV),
+      volts('highest', ({ gateHighV }) => gateHighV),
+      volts('control', ({ controlV }) => controlV),
+    ],
+  };
 }

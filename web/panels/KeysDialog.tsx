@@ -8,6 +8,10 @@ const ON_VALUES = [
   ['Esc', 'leave it as it was'],
   ['Drag, Shift and drag', 'through the steps, or freely'],
 ] as const;
+const ON_FIGURES = [
+  ['← →, Page Up, Page Down', 'move the cursor of the figure that has the focus'],
+  ['Home, End', 'to the ends of its axis; Esc puts it away'],
+] as const;
 
 const ON_PLACE = [
   ['← →, Page Up, Page Down', 'half a second, or five'],
@@ -27,7 +31,7 @@ export function KeysDialog({ onClose }: { readonly onClose: () => void }) {
             <dd>{words}</dd>
           </div>
         ))}
-        {ON_VALUES.map(([keys, words]) => (
+        {[...ON_VALUES, ...ON_FIGURES].map(([keys, words]) => (
           <div key={keys}>
             <dt>{keys}</dt>
             <dd>{words}</dd>

@@ -1,4 +1,5 @@
 import { useBench } from './BenchContext.ts';
+import { Hints } from './Hints.tsx';
 import { Note } from './parts/Note.tsx';
 
 /** What the user must be told, in place under the sound row. */
@@ -6,9 +7,10 @@ export function Notes() {
   const bench = useBench();
   const notes = bench.notes.value;
   const failed = bench.sound.value === 'failed';
-  if (notes.length === 0) return null;
+  if (notes.length === 0 && !bench.hints.value) return null;
   return (
     <div class="notes">
+      <Hints />
       {notes.map(({ id, kind, sentence, advice, list }, index) => (
         <Note key={id} kind={kind} sentence={sentence} advice={advice} list={list}>
           {failed && kind === 'fault' && index === notes.length - 1 && (

@@ -26,7 +26,7 @@ export function Schematic({ form }: { readonly form: Form }) {
     <Figure
       number={1}
       className={`schematic ${form}`}
-      caption="The cell, peak voltages in colour. Change what is underlined: type 6k8, use the arrow keys, or drag."
+      caption={'The cell; in colour: peaks of the last 1/30\u2009s. Underlined: type 6k8, step by the arrow keys, or drag.'}
     >
       <div class="drawing" ref={ref} style={{ height: rem(drawing?.height ?? 346) }}>
         {drawing && (

@@ -1,7 +1,7 @@
 import { feedbackFraction } from '../../model/design/feedback.ts';
-import { percentText } from '../draw/words.ts';
+import { decimals, percentText } from '../draw/words.ts';
 import { differences } from '../draw/differences.ts';
-import { useBench } from './BenchContext.ts';
+import { useBench, useBenchView } from './BenchContext.ts';
 import { DataTable } from './parts/DataTable.tsx';
 import { EditableText } from './parts/EditableText.tsx';
 import { WordActions } from './parts/WordActions.tsx';
@@ -14,8 +14,10 @@ const COLUMNS = [
   { key: 'which', head: 'Variant' },
   { key: 'what', head: 'What it tries' },
   { key: 'number k', head: <i>k</i> },
+  { key: 'number gain', head: 'Gain' },
   { key: 'number', head: 'THD, rest' },
   { key: 'number', head: 'Worst' },
+  { key: 'number level', head: 'Peak now' },
 ];
 
 /** Table 3: the variants side by side. */
@@ -25,7 +27,7 @@ export function VariantTable() {
     <DataTable
       number={3}
       className="variant-table"
-      caption="Variants by the shadow tone: THD with the control at rest, and the worst over its swing."
+      caption="Variants by the shadow tone: gain and worst THD over the control’s swing, THD with it at rest; what each puts out now."
       columns={COLUMNS}
     >
       <tbody>
@@ -39,8 +41,9 @@ export function VariantTable() {
 }
 
 function VariantRow({ index }: { readonly index: number }) {
-  const bench = useBench();
+  const { bench, slowLive } = useBenchView();
   const limit = useThdLimit();
+  const live = slowLive.value?.variants[index] ?? null;
   const { variants } = bench.design.value;
   const variant = variants[index];
   const heard = bench.heardVariant.value === index;
@@ -55,8 +58,10 @@ function VariantRow({ index }: { readonly index: number }) {
       <td class="what">
         {heard ? <VariantName name={variant.name} letter={LETTERS[index]} /> : variant.name !== LETTERS[index] && `${variant.name}: `}
         <span class="tries">{index === 0 ? 'the first' : told(differences(variants[0], variant))}</span>
+        {live && <Faults faults={live.faults} />}
       </td>
       <td class="number k">{feedbackFraction(variant.cell).toFixed(3)}</td>
+      <td class="number gain">{summary && gainWords(summary.gainDb)}</td>
       <td class="number">
         {summary && (
           <span>
@@ -73,8 +78,30 @@ function VariantRow({ index }: { readonly index: number }) {
           </span>
         )}
       </td>
+      <td class="number level">{live && <Level peakDbfs={live.peakDbfs} />}</td>
     </tr>
   );
+}
+
+function gainWords([least, most]: readonly [number, number]): string {
+  const [from, to] = [decimals(least, 1), decimals(most, 1)];
+  return `${from === to ? from : `${from} to ${to}`}\u2009dB`;
+}
+
+function Level({ peakDbfs }: { readonly peakDbfs: number }) {
+  if (!Number.isFinite(peakDbfs)) return <span class="aside">silent</span>;
+  return (
+    <span class="live">
+      {decimals(peakDbfs, 1)}
+      {'\u2009'}dBFS
+    </span>
+  );
+}
+
+/** Times that its chain fell back to its last good values. */
+function Faults({ faults }: { readonly faults: number }) {
+  if (faults === 0) return null;
+  return <span class="fault tries">, fell back {faults === 1 ? 'once' : `${faults} times`}</span>;
 }
 
 /** The heard one's name is changed where it stands. */
@@ -94,7 +121,7 @@ function EmptyRow({ letter }: { readonly letter: string }) {
       <th scope="row" class="which aside">
         {letter}
       </th>
-      <td colSpan={4} class="aside">
+      <td colSpan={6} class="aside">
         empty{' '}
         <WordActions
           actions={[{ words: 'Copy here', label: `Copy here, to ${letter}, the variant that is heard`, run: () => bench.addVariant() }]}

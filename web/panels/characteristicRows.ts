@@ -14,6 +14,9 @@ export interface Row {
   readonly now: string | null;
   readonly max: string;
   readonly unit: string;
+  /** Which of the designer's limits it has, and which of its numbers are past it. */
+  readonly limit?: keyof RowLimits;
+  readonly over?: readonly ('min' | 'now' | 'max')[];
   /** False for what follows from the circuit alone: it is never coloured. */
   readonly measured: boolean;
 }
@@ -26,6 +29,14 @@ export interface Measured {
   readonly picture: ControlPicture | null;
   readonly swing: readonly SwingPoint[] | null;
   readonly noise: readonly NoisePoint[] | null;
+  readonly limits: RowLimits;
+}
+
+/** V, as in `SheetLimits`. */
+export interface RowLimits {
+  readonly feedthroughV: number | null;
+  readonly controlV: number | null;
+  readonly pastOffV: number | null;
 }
 
 export function characteristicRows(variant: Variant, measured: Measured): Row[][] {
@@ -55,7 +66,27 @@ function endsOf(values: readonly number[] | Float64Array | null, print: (value: 
   return { min: print(Math.min(...values)), max: print(Math.max(...values)) };
 }
 
-function signalRows(reading: ToneReading, { levels, picture, swing, noise }: Measured): Row[] {
+type Numbers = { readonly [which in 'min' | 'now' | 'max']?: number | null };
+
+/** Which numbers of a row are past its limit. */
+function limited(
+  limit: keyof RowLimits,
+  size: number | null,
+  numbers: Numbers,
+  past: (value: number, limit: number) => boolean,
+): Pick<Row, 'limit' | 'over'> {
+  const over = (['min', 'now', 'max'] as const).filter((which) => {
+    const value = numbers[which];
+    return size !== null && value !== null && value !== undefined && past(value, size);
+  });
+  return { limit, over };
+}
+
+function spanOf(values: readonly number[] | Float64Array | null): Numbers {
+  return values === null || values.length < 2 ? {} : { min: Math.min(...values), max: Math.max(...values) };
+}
+
+function signalRows(reading: ToneReading, { levels, picture, swing, noise, limits }: Measured): Row[] {
   const gain = (db: number) => signedDecimals(db, 1);
   const through = levels?.feedthroughPeakV ?? Math.abs(reading.restDcV);
   const overPeriod = picture && 'drain' in picture && !picture.steady ? picture.drain.map(Math.abs) : null;
@@ -68,14 +99,17 @@ function signalRows(reading: ToneReading, { levels, picture, swing, noise }: Mea
   const range = swing?.map(({ gainDb }) => gainDb) ?? null;
   return [
     row('Gain of the cell, input to drain', 'Gain', ['G'], gain(reading.gainDb), 'dB', endsOf(range, gain)),
-    row(
-      'Control feedthrough at the drain, peak',
-      'Feedthrough',
-      ['V', 'FT'],
-      drain.print(through),
-      drain.unit,
-      endsOf(overPeriod, drain.print),
-    ),
+    {
+      ...row(
+        'Control feedthrough at the drain, peak',
+        'Feedthrough',
+        ['V', 'FT'],
+        drain.print(through),
+        drain.unit,
+        endsOf(overPeriod, drain.print),
+      ),
+      ...limited('feedthroughV', limits.feedthroughV, { now: through, ...spanOf(overPeriod) }, (v, most) => Math.abs(v) > most),
+    },
     row(
       'Noise at the drain, 20\u2009Hz to 20\u2009kHz',
       'Noise',
@@ -129,20 +163,27 @@ function channelRow(reading: ToneReading, swing: readonly SwingPoint[] | null): 
   return row('Drain to source, at rest', 'Drain-source', ['r', 'DS'], print(reading.rdsOhm), unit, endsOf(swing && ohms.slice(1), print));
 }
 
-function controlRows({ control }: Variant, { reading, levels, picture }: Measured): Row[] {
+function controlRows({ control }: Variant, { reading, levels, picture, limits }: Measured): Row[] {
   const volts = (v: number) => decimals(v, 2);
   const now = levels?.controlV ?? (control.source === 'fixed' ? control.controlV : null);
   const swing = controlEnds(control);
   const rows: Row[] = [];
   if (now !== null || swing)
-    rows.push(row('Control to be delivered', 'Control', ['V', 'C'], now === null ? null : volts(now), 'V', endsOf(swing, volts)));
+    rows.push({
+      ...row('Control to be delivered', 'Control', ['V', 'C'], now === null ? null : volts(now), 'V', endsOf(swing, volts)),
+      ...limited('controlV', limits.controlV, { now, ...spanOf(swing) }, (v, most) => Math.abs(v) > most),
+    });
   const still = picture === null || ('steady' in picture && picture.steady);
   const gate = still ? null : picture.gate;
   if (reading) rows.push(row('Gate to source, at rest', 'Gate-source', ['V', 'GS'], volts(reading.vgsV), 'V', endsOf(gate, volts)));
   if (picture) {
     const { gateOffV } = picture;
     const off = gateOffV < 0 ? gateOffV - Math.min(...picture.gate) : Math.max(...picture.gate) - gateOffV;
-    rows.push({ ...row('Past off, at the gate’s far end', 'Past off', null, signedDecimals(off, 2), 'V'), measured: false });
+    rows.push({
+      ...row('Past off, at the gate’s far end', 'Past off', null, signedDecimals(off, 2), 'V'),
+      ...limited('pastOffV', limits.pastOffV, { now: off }, (v, least) => v < least),
+      measured: false,
+    });
   }
   return rows;
 }

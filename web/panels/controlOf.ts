@@ -1,4 +1,5 @@
 /** One control made into another that moves the gate between the same two voltages. */
+import { deviceOf } from '../../model/cell/fromDesign.ts';
 import { controlRangeV } from '../../model/control/range.ts';
 import type { Control, Variant } from '../../model/design/types.ts';
 
@@ -24,9 +25,10 @@ export function kindOf(control: Control): ControlKind {
 const FIRST_GAIN = 6;
 
 /** What is left out takes its default when the document is checked. An LFO keeps rate and ends in another shape. */
-export function controlOf(kind: ControlKind, { control, device }: Variant): object {
+export function controlOf(kind: ControlKind, variant: Variant): object {
+  const { control } = variant;
   const [low, high] = swingOf(control);
-  const [off, on] = device.gateOffV < 0 ? [low, high] : [high, low];
+  const [off, on] = deviceOf(variant, 0).gateOffV < 0 ? [low, high] : [high, low];
   switch (kind) {
     case 'fixed':
       return { source: 'fixed', controlV: rounded((low + high) / 2) };

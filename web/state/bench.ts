@@ -10,6 +10,7 @@ import type { ResidualPart } from '../../model/chain/residual.ts';
 import type { Moves } from '../../model/design/feedback.ts';
 import type { Design, Variant } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
+import type { TransferPath } from '../../model/study/transfer.ts';
 
 export interface Bench {
   // The document
@@ -117,6 +118,10 @@ export interface Bench {
   readonly swing: ReadonlySignal<readonly SwingPoint[] | null>;
   /** For each variant, null where it is not known yet or cannot be read. */
   readonly summaries: ReadonlySignal<readonly (VariantSummary | null)[]>;
+  /** The shadow tone at gate voltages outside the swing, ascending: on to 0 V, and past VGS(off). */
+  readonly beyond: ReadonlySignal<readonly SwingPoint[] | null>;
+  /** What the shadow tone's path is drawn on; null while it is being computed, or where the cell cannot be. */
+  readonly plane: ReadonlySignal<TransferPlane | null>;
   /** Noise over the swing, ascending in the gate's voltage; null while it is being computed. */
   readonly noise: ReadonlySignal<readonly NoisePoint[] | null>;
   /** What the control does to the heard variant, by itself over a period or with a tone at its input, or why that cannot be said; null until the first answer. */
@@ -156,6 +161,12 @@ export interface Bench {
   playTake(id: number | null): void;
   readonly playingTake: ReadonlySignal<number | null>;
 
+  /** Hints for a first visit, until they are put away. */
+  readonly hints: ReadonlySignal<boolean>;
+  putHintsAway(): void;
+  /** Downloads a figure's numbers or picture; the design's title is put before `name`. */
+  savePlot(name: string, kind: PlotFile, text: string): void;
+
   // What the user must be told, newest last
   readonly notes: ReadonlySignal<readonly Note[]>;
   dismiss(id: number): void;
@@ -166,6 +177,8 @@ export type Hearing = 'cell' | 'bypass' | 'previous' | 'residual';
 export type SoundState = 'idle' | 'starting' | 'playing' | 'stopped' | 'failed';
 export type DesignPath = 'fullScaleV' | 'tempC' | 'oversampling' | 'title';
 export type TakeFormat = 'pcm16' | 'pcm24' | 'float32';
+
+export type PlotFile = 'csv' | 'svg';
 
 export interface ExampleEntry {
   readonly name: string;
@@ -207,6 +220,9 @@ export interface LiveLevels {
   readonly controlV: number;
   /** Of the first channel, without the audio that rides on it. */
   readonly gateSourceV: number;
+  /** The least and the highest that it was. */
+  readonly gateLowV: number;
+  readonly gateHighV: number;
   /** What the control alone leaves at the drain, peak. */
   readonly feedthroughPeakV: number;
   readonly inputPeakV: number;
@@ -239,6 +255,20 @@ export interface Moment {
   readonly reading: ToneReading | { readonly fault: string };
   /** The least and the highest THD that parts of 1 % make of this k, fractions; null without feedback. */
   readonly thdBand: readonly [number, number] | null;
+  /** The shadow tone's path on the transfer plane; null where there is no reading. */
+  readonly path: TransferPath | null;
+}
+
+/** Drain current against drain-source voltage of the FET alone, as wide as the shadow tone goes over the swing. */
+export interface TransferPlane {
+  /** Ascending, from −V to +V, 0 in its middle. */
+  readonly drainSourceV: Float64Array;
+  /** By gate voltages, steepest first: A at each of `drainSourceV`. */
+  readonly curves: readonly { readonly gateV: number; readonly drainA: Float64Array }[];
+  /** Where the channel leaves its ohmic region, A at each of `drainSourceV`. */
+  readonly edgeA: Float64Array;
+  /** The highest current worth showing, A. */
+  readonly topA: number;
 }
 
 /** One period of the control without audio. */
@@ -277,6 +307,8 @@ export interface WorstReading {
 export interface VariantSummary {
   readonly restThd: number;
   readonly worstThd: number;
+  /** Least and highest gain over the swing, dB. */
+  readonly gainDb: readonly [number, number];
 }
 
 /** The shadow tone at one gate voltage of the swing. */

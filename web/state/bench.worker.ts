@@ -6,7 +6,7 @@ import { renderClip } from '../../model/chain/render.ts';
 import { loudnessOf } from '../../model/measure/loudness.ts';
 import { controlPicture } from './controlPicture.ts';
 import { sentenceOf } from './notes.ts';
-import { readFeedbackCurve, readMoment, readNoise, readSummary, readSwing } from './toneStudy.ts';
+import { readBeyond, readFeedbackCurve, readMoment, readNoise, readPlane, readSummary, readSwing } from './toneStudy.ts';
 import type { FromLoudness, FromReading, FromRender, ToLoudness, ToneQuestion, ToReading, ToRender } from './workers.ts';
 
 let asked: { id: number; question: ToneQuestion } | null = null;
@@ -89,8 +89,15 @@ function* answerCurve(id: number, question: ToneQuestion, gateV: number | null):
 function* answerSwing(id: number, question: ToneQuestion): Generator<void, void> {
   tell({ type: 'period', id, period: controlPicture(question.design, question.variantIndex, question.toneHz) });
   yield;
+  tell({ type: 'plane', id, plane: yield* orNull(planeOf(question)) });
   tell({ type: 'worst', id, swing: yield* orNull(readSwing(question)) });
+  tell({ type: 'beyond', id, points: yield* orNull(readBeyond(question)) });
   begin('noise', answerNoise(id, question));
+}
+
+// biome-ignore lint/correctness/useYield: one step among others that take several
+function* planeOf(question: ToneQuestion) {
+  return readPlane(question);
 }
 
 function* answerNoise(id: number, question: ToneQuestion): Generator<void, void> {
@@ -105,7 +112,7 @@ function answerMoment(id: number, gateV: number | null): void {
   try {
     tell({ type: 'reading', id, ...readMoment(questionNow(), gateV) });
   } catch (error) {
-    tell({ type: 'reading', id, reading: { fault: sentenceOf(error) }, thdBand: null });
+    tell({ type: 'reading', id, reading: { fault: sentenceOf(error) }, thdBand: null, path: null });
   }
 }
 

@@ -1,5 +1,5 @@
 /** The real bench: document, sound, readings and takes put together. */
-import { computed } from '@preact/signals';
+import { computed, signal } from '@preact/signals';
 import firstDesign from '../../assets/designs/harbour-tremolo.json?raw';
 import { compileChain } from '../../model/chain/compile.ts';
 import { readDesign } from '../../model/design/read.ts';
@@ -69,6 +69,7 @@ export function assembleBench(parts: Parts): Bench {
     await parts.prepareSound();
   });
 
+  const hints = signal(true);
   return {
     ...document,
     ...listening,
@@ -79,6 +80,14 @@ export function assembleBench(parts: Parts): Bench {
     examples: library.examples,
     notes: notes.notes,
     dismiss: notes.dismiss,
+    hints,
+    putHintsAway() {
+      hints.value = false;
+    },
+    savePlot(name, kind, text) {
+      const mediaType = kind === 'csv' ? 'text/csv' : 'image/svg+xml';
+      parts.download(`${fileName(document.design.peek().title)}-${name}.${kind}`, new TextEncoder().encode(text), mediaType);
+    },
     openDesign: (file) => noting(async () => openText(await file.text(), file.name)),
     openExample: (name) => noting(async () => openText(await library.loadExample(name), name)),
     saveDesign() {

@@ -48,6 +48,8 @@ export function createLevels(now: () => number = () => performance.now()): Level
       live.value = {
         controlV: report.controlV,
         gateSourceV: report.gateSourceV,
+        gateLowV: report.gateLowV,
+        gateHighV: report.gateHighV,
         feedthroughPeakV: report.feedthroughPeakV,
         inputPeakV: report.inputPeakV,
         drainPeakV: report.drainPeakV,

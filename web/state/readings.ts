@@ -3,7 +3,17 @@ import type { ReadonlySignal } from '@preact/signals';
 import { batch, effect, signal } from '@preact/signals';
 import type { Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
-import type { Bench, ControlPicture, FeedbackCurve, LiveLevels, Moment, NoisePoint, SwingPoint, WorstReading } from './bench.ts';
+import type {
+  Bench,
+  ControlPicture,
+  FeedbackCurve,
+  LiveLevels,
+  Moment,
+  NoisePoint,
+  SwingPoint,
+  TransferPlane,
+  WorstReading,
+} from './bench.ts';
 import { createCurves } from './curves.ts';
 import { createSummaries } from './summaries.ts';
 import { setWithin } from './within.ts';
@@ -16,7 +26,7 @@ const CURVE_REST_MS = 60;
 const FIRST_TONE_V = 0.5;
 const FIRST_TONE_HZ = 1000;
 
-type Measured = 'moment' | 'period' | 'worst' | 'swing' | 'noise' | 'summaries' | 'feedbackCurve';
+type Measured = 'moment' | 'period' | 'worst' | 'swing' | 'beyond' | 'plane' | 'noise' | 'summaries' | 'feedbackCurve';
 type Readings = Pick<Bench, Measured | 'toneV' | 'setToneV' | 'toneHz' | 'setToneHz'>;
 
 export interface ReadingSources {
@@ -36,6 +46,8 @@ export function createReadings(
   const period = signal<ControlPicture | { readonly fault: string } | null>(null);
   const worst = signal<WorstReading | null>(null);
   const swing = signal<readonly SwingPoint[] | null>(null);
+  const beyond = signal<readonly SwingPoint[] | null>(null);
+  const plane = signal<TransferPlane | null>(null);
   const noise = signal<readonly NoisePoint[] | null>(null);
   const feedbackCurve = signal<FeedbackCurve | null>(null);
   const toneV = signal(FIRST_TONE_V);
@@ -48,7 +60,7 @@ export function createReadings(
   const momentTurn = createTurn(() => {
     asked = sources.playing.peek() ? sources.live.peek() : null;
     if (failed === null) worker.post({ type: 'moment', id, gateV: asked?.gateSourceV ?? null });
-    else publish({ fault: failed }, null);
+    else publish(unread(failed));
   }, now);
   const curves = createCurves();
   const curveTurn = createTurn(() => {
@@ -58,10 +70,10 @@ export function createReadings(
   const summaries = createSummaries((index) => worker.post({ type: 'variant', id, index }));
   const swingTurn = createTurn(() => worker.post({ type: 'swing', id }), now);
 
-  const publish = (reading: Moment['reading'], thdBand: Moment['thdBand']) => {
+  const publish = (read: Omit<Moment, 'levels'>) => {
     const known = asked && curves.at(asked.gateSourceV);
     batch(() => {
-      moment.value = { levels: asked, reading, thdBand };
+      moment.value = { levels: asked, ...read };
       if (known) feedbackCurve.value = known;
     });
     momentTurn.done();
@@ -71,7 +83,10 @@ export function createReadings(
   const receive = (message: FromReading) => {
     switch (message.type) {
       case 'reading':
-        if (message.id === id) return publish(message.reading, message.thdBand);
+        if (message.id === id) {
+          const { reading, thdBand, path } = message;
+          return publish({ reading, thdBand, path });
+        }
         return momentTurn.done(true);
       case 'curve':
         if (message.id === id && message.curve) curves.keep(message.curve);
@@ -86,6 +101,12 @@ export function createReadings(
         worst.value = message.swing?.worst ?? null;
         swing.value = message.swing?.points ?? null;
         return swingTurn.done();
+      case 'plane':
+        plane.value = message.plane;
+        return;
+      case 'beyond':
+        if (message.id === id) beyond.value = message.points;
+        return;
       case 'variant':
         return summaries.note(message.index, message.summary);
       case 'noise':
@@ -99,7 +120,7 @@ export function createReadings(
 
   worker.receive(receive, (sentence) => {
     failed = sentence;
-    publish({ fault: sentence }, null);
+    publish(unread(sentence));
   });
 
   effect(() => {
@@ -112,6 +133,7 @@ export function createReadings(
     };
     id++;
     noise.value = null;
+    beyond.value = null;
     curves.clear();
     worker.post({ type: 'question', id, question });
     momentTurn.ask();
@@ -134,6 +156,8 @@ export function createReadings(
     period,
     worst,
     swing,
+    beyond,
+    plane,
     noise,
     summaries: summaries.all,
     feedbackCurve,
@@ -142,6 +166,10 @@ export function createReadings(
     setToneV: (volts) => setWithin(toneV, volts, 0.0001, 100, 'The shadow tone', 'V peak'),
     setToneHz: (hz) => setWithin(toneHz, hz, 1, 20000, 'The shadow tone', 'Hz'),
   };
+}
+
+function unread(fault: string): Omit<Moment, 'levels'> {
+  return { reading: { fault }, thdBand: null, path: null };
 }
 
 /** One request at a time: what is asked for meanwhile is asked once more when the answer has come. */

@@ -8,8 +8,9 @@ import { signedHarmonic } from '../../model/study/signed.ts';
 import { controlSwing } from '../../model/study/swing.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import { measureTone } from '../../model/study/tone.ts';
+import { channelCurves, tonePath, type TransferPath } from '../../model/study/transfer.ts';
 import { fractionsWithin, thdWithin } from '../draw/tolerance.ts';
-import type { FeedbackCurve, FeedbackPoint, Moment, NoisePoint, SwingPoint, VariantSummary, WorstReading } from './bench.ts';
+import type { FeedbackCurve, FeedbackPoint, Moment, NoisePoint, SwingPoint, TransferPlane, VariantSummary, WorstReading } from './bench.ts';
 import type { ToneQuestion } from './workers.ts';
 
 const SWING_STEPS = 24;
@@ -25,18 +26,26 @@ export function readTone(question: ToneQuestion, gateV: number | null): ToneRead
   return measureTone(design, variantIndex, { toneHz, toneV, ...(gateV === null ? {} : { gateV }) });
 }
 
-/** The same, with what parts of 1 % make of it at that gate voltage. */
-export function readMoment(question: ToneQuestion, gateV: number | null): Pick<Moment, 'thdBand'> & { readonly reading: ToneReading } {
+/** The same, with its path on the transfer plane and what parts of 1 % make of it at that gate voltage. */
+export function readMoment(question: ToneQuestion, gateV: number | null): Omit<Moment, 'levels'> & { readonly reading: ToneReading } {
   const reading = readTone(question, gateV);
+  return { reading, path: pathAt(question, reading.vgsV), thdBand: bandOf(question, reading) };
+}
+
+function pathAt({ design, variantIndex, toneHz, toneV }: ToneQuestion, gateV: number): TransferPath {
+  return tonePath(design, variantIndex, { toneHz, toneV, gateV });
+}
+
+function bandOf(question: ToneQuestion, reading: ToneReading): Moment['thdBand'] {
   const variant = question.design.variants[question.variantIndex];
-  if (variant.cell.feedback.kind === 'none') return { reading, thdBand: null };
+  if (variant.cell.feedback.kind === 'none') return null;
   const k = feedbackFraction(variant.cell);
   const { channel } = deviceOf(variant, 0);
   const [low, high] = fractionsWithin(k).map((end) => {
     const moved = questionAt(question, end);
     return moved === null ? [] : [feedbackPoint(end, readTone(moved, reading.vgsV), channel)];
   });
-  return { reading, thdBand: thdWithin([...low, feedbackPoint(k, reading, channel), ...high]) };
+  return thdWithin([...low, feedbackPoint(k, reading, channel), ...high]);
 }
 
 /**
@@ -68,12 +77,78 @@ export function* readSwing(question: ToneQuestion): Generator<void, { worst: Wor
   return { worst, points: points.sort((a, b) => a.gateV - b.gateV) };
 }
 
+/** How far past VGS(off) and past the swing's ends the readings beyond it go, of VGS(off) and of the swing; and in how many steps on either side. */
+const PAST_OFF = 1.25;
+const PAST_SWING = 0.1;
+const BEYOND_STEPS = { off: 3, on: 10 } as const;
+
+/** The shadow tone from past VGS(off) up to the swing, and from there to 0 V, ascending in the gate's voltage. Yields between readings. */
+export function* readBeyond(question: ToneQuestion): Generator<void, readonly SwingPoint[]> {
+  const { gateOffV } = deviceOf(question.design.variants[question.variantIndex], 0);
+  const [from, to] = gateRangeV(question);
+  const pastV = PAST_SWING * (to - from);
+  const [low, high] = [
+    Math.min(0, PAST_OFF * gateOffV, from - (gateOffV < 0 ? pastV : 0)),
+    Math.max(0, PAST_OFF * gateOffV, to + (gateOffV < 0 ? 0 : pastV)),
+  ];
+  const side = (fromV: number, toV: number, isOff: boolean) => {
+    const steps = isOff ? BEYOND_STEPS.off : BEYOND_STEPS.on;
+    return fromV < toV ? Array.from({ length: steps }, (_, n) => fromV + ((toV - fromV) * n) / steps) : [];
+  };
+  const below = side(low, from, gateOffV < 0);
+  const above = side(-high, -to, gateOffV > 0)
+    .map((v) => -v)
+    .reverse();
+  const points: SwingPoint[] = [];
+  for (const gateV of [...below, ...above]) {
+    yield;
+    const { gainDb, rdsOhm } = readTone(question, gateV);
+    points.push({ gateV, gainDb, rdsOhm });
+  }
+  return points;
+}
+
+/** Where the plane's curves leave it, steepest first, as shares of its highest voltage and current: the labels then stand apart. */
+const EXITS = [
+  [0.12, 1],
+  [0.42, 1],
+  [1, 0.85],
+  [1, 0.55],
+  [1, 0.3],
+  [1, 0.12],
+] as const;
+const PLANE_POINTS = 81;
+/** Room about the widest path. */
+const PLANE_ROOM = 1.12;
+/** A cell that is cut off all the time has a plane of its own all the same, A. */
+const LEAST_TOP_A = 1e-9;
+
+/** The transfer plane, as wide as the shadow tone goes at the two ends of the swing. */
+export function readPlane(question: ToneQuestion): TransferPlane {
+  const { design, variantIndex } = question;
+  const ends = gateRangeV(question).map((gateV) => pathAt(question, gateV));
+  const most = (pick: (path: TransferPath) => Float64Array) => Math.max(...ends.flatMap((path) => Array.from(pick(path), Math.abs)));
+  const topV = PLANE_ROOM * most(({ drainSourceV }) => drainSourceV);
+  const topA = Math.max(LEAST_TOP_A, PLANE_ROOM * most(({ drainA }) => drainA));
+  const { currentA, edgeA, gateThroughV } = channelCurves(design, variantIndex);
+  const drainSourceV = Float64Array.from({ length: PLANE_POINTS }, (_, n) => topV * ((2 * n) / (PLANE_POINTS - 1) - 1));
+  const sign = deviceOf(design.variants[variantIndex], 0).channel === 'n' ? 1 : -1;
+  const gates = EXITS.map(([across, up]) => Number(gateThroughV(sign * across * topV, sign * up * topA).toFixed(2)));
+  return {
+    drainSourceV,
+    curves: [...new Set(gates)].map((gateV) => ({ gateV, drainA: drainSourceV.map((v) => currentA(gateV, v)) })),
+    edgeA: drainSourceV.map(edgeA),
+    topA,
+  };
+}
+
 /** The shadow tone at rest, and the worst over the swing. Yields between readings. */
 export function* readSummary(question: ToneQuestion): Generator<void, VariantSummary> {
   const restThd = readTone(question, null).thdFundamental;
   yield;
-  const { worst } = yield* readSwing(question);
-  return { restThd, worstThd: worst.thdFundamental };
+  const { worst, points } = yield* readSwing(question);
+  const gains = points.map(({ gainDb }) => gainDb);
+  return { restThd, worstThd: worst.thdFundamental, gainDb: [Math.min(...gains), Math.max(...gains)] };
 }
 
 /** The noise at the drain over the gate's swing, at 25 gate voltages. Yields between readings. */

@@ -1,7 +1,16 @@
 /** The wire between the page and its two workers. Each union goes one way; receivers end in `message satisfies never`. */
 import type { Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
-import type { ControlPicture, FeedbackCurve, Moment, NoisePoint, SwingPoint, VariantSummary, WorstReading } from './bench.ts';
+import type {
+  ControlPicture,
+  FeedbackCurve,
+  Moment,
+  NoisePoint,
+  SwingPoint,
+  TransferPlane,
+  VariantSummary,
+  WorstReading,
+} from './bench.ts';
 
 /** A worker as the state sees it, so that a test can stand something else in its place. */
 export interface WorkerPort<Out, In> {
@@ -28,13 +37,13 @@ export type ToReading =
   | { readonly type: 'moment'; readonly id: number; readonly gateV: number | null }
   /** Asks for the curve against k; replaces one that is being computed. */
   | { readonly type: 'curve'; readonly id: number; readonly gateV: number | null }
-  /** Asks for the period, the worst over the swing, then the noise over it, in this order; replaces one that is being computed. */
+  /** Asks for the period, the plane, the worst over the swing, what lies beyond it, then the noise over it, in this order; replaces one that is being computed. */
   | { readonly type: 'swing'; readonly id: number }
   /** Asks for the summary of one variant. */
   | { readonly type: 'variant'; readonly id: number; readonly index: number };
 
 export type FromReading =
-  | { readonly type: 'reading'; readonly id: number; readonly reading: Moment['reading']; readonly thdBand: Moment['thdBand'] }
+  | ({ readonly type: 'reading'; readonly id: number } & Omit<Moment, 'levels'>)
   | { readonly type: 'curve'; readonly id: number; readonly curve: FeedbackCurve | null }
   | { readonly type: 'period'; readonly id: number; readonly period: ControlPicture | { readonly fault: string } }
   | {
@@ -42,6 +51,8 @@ export type FromReading =
       readonly id: number;
       readonly swing: { readonly worst: WorstReading; readonly points: readonly SwingPoint[] } | null;
     }
+  | { readonly type: 'beyond'; readonly id: number; readonly points: readonly SwingPoint[] | null }
+  | { readonly type: 'plane'; readonly id: number; readonly plane: TransferPlane | null }
   | { readonly type: 'variant'; readonly id: number; readonly index: number; readonly summary: VariantSummary | null }
   | { readonly type: 'noise'; readonly id: number; readonly points: readonly NoisePoint[] | null };
 

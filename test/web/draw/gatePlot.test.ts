@@ -2,7 +2,7 @@ import { expect, test } from 'vitest';
 import { defaultDesign } from '../../../model/design/defaults.ts';
 import type { Cell, Control, Design } from '../../../model/design/types.ts';
 import { measureTone } from '../../../model/study/tone.ts';
-import { plotGate, regionAt, turnOf } from '../../../web/draw/gatePlot.ts';
+import { onPeriod, plotGate, regionAt, turnOf } from '../../../web/draw/gatePlot.ts';
 import type { GatePeriod } from '../../../web/state/bench.ts';
 import { controlPicture, gatePeriod } from '../../../web/state/controlPicture.ts';
 
@@ -62,6 +62,29 @@ test('the present point is found on the falling or the rising half, as the contr
   const period = periodOf(lfo(4), cell);
   expect(turnOf(period, -1.5, true)).toBeCloseTo(1 / 12, 2);
   expect(turnOf(period, -1.5, false)).toBeCloseTo(5 / 12, 2);
+});
+
+test('between two reports the present point goes evenly through the period and keeps to the curve, over the end of it as well', () => {
+  const period = periodOf(lfo(4), { ...cell, feedback: { kind: 'none' } });
+  const at = (turn: number) => -1.2 - 0.6 * Math.sin(2 * Math.PI * turn);
+  const report = (turn: number) => ({ controlV: at(turn), gateSourceV: at(turn) });
+  // The control starts midway and falls towards −1.8 V.
+  for (const [from, to, middle] of [
+    [0.05, 0.15, 0.1],
+    [0.95, 0.05, 0],
+  ]) {
+    const { turn, gateV } = onPeriod(period, { before: report(from), now: report(to), share: 0.5 });
+    expect(Math.abs(turn - middle - Math.round(turn - middle))).toBeLessThan(0.005);
+    expect(gateV).toBeCloseTo(at(middle), 2);
+  }
+  expect(onPeriod(period, { before: report(0.05), now: { ...report(0.15), gateSourceV: -1.5 }, share: 1 }).gateV).toBeCloseTo(-1.5, 9);
+});
+
+test('over time the frame has no curve of its own, and seconds under it', () => {
+  const plot = plotGate(periodOf(lfo(4), cell), 400, 150, 10);
+  expect(plot.gate).toBe('');
+  expect(plot.regions).toEqual([]);
+  expect(plot.xTicks.at(-1)?.words).toBe('10\u2009s');
 });
 
 test('a control that comes from outside has no period of its own, and the sentence says so', () => {

@@ -7,6 +7,8 @@ import type { LiveLevels } from '../../../web/state/bench.ts';
 
 const [variant] = defaultDesign().variants;
 
+const limits = { feedthroughV: 0.001, controlV: 1.5, pastOffV: 0.6 };
+
 function readAt(k: number) {
   const cell = { ...variant.cell, feedback: { kind: 'buffered', fraction: k } } as const;
   return measureTone({ ...defaultDesign(), variants: [{ ...variant, cell }] }, 0, { toneV: 0.2, controlV: -0.9 });
@@ -25,7 +27,10 @@ test('the rows of Table 1 have a number each, and their ends follow from an LFO�
     { gateV: -2, drainV: 1.8e-6 },
     { gateV: -0.4, drainV: 0.36e-6 },
   ];
-  const rows = characteristicRows({ ...variant, cell, control }, { reading: readAt(0.5), levels, picture: period, swing, noise }).flat();
+  const rows = characteristicRows(
+    { ...variant, cell, control },
+    { reading: readAt(0.5), levels, picture: period, swing, noise, limits },
+  ).flat();
   expect(rows.every(({ now, min, max }) => now !== null || (min !== '' && max !== ''))).toBe(true);
   const row = (name: string) => rows.find(({ short }) => short === name);
   expect(row('Gain')).toMatchObject({ min: '−27.9', max: '−0.1' });
@@ -35,10 +40,20 @@ test('the rows of Table 1 have a number each, and their ends follow from an LFO�
   const [controlRow] = rows.filter(({ short }) => short === 'Control');
   expect(controlRow).toMatchObject({ min: '−2.00', now: '−0.90', max: '−0.40', unit: 'V' });
   expect(rows.find(({ short }) => short === 'Past off')?.now).toBe('+0.50');
+  // 1.7 mV is over 1 mV and −2 V beyond ±1.5 V; 0.50 V past off is short of 0.6 V.
+  expect(row('Feedthrough')?.over).toContain('now');
+  expect(controlRow.over).toEqual(['min']);
+  expect(row('Past off')?.over).toEqual(['now']);
+  const free = { feedthroughV: null, controlV: null, pastOffV: null };
+  const unlimited = characteristicRows(
+    { ...variant, cell, control },
+    { reading: readAt(0.5), levels, picture: period, swing, noise, limits: free },
+  );
+  expect(unlimited.flat().flatMap(({ over = [] }) => over)).toEqual([]);
 });
 
 test('without a reading only what the circuit itself says is left', () => {
-  const rows = characteristicRows(variant, { reading: null, levels: null, picture: null, swing: null, noise: null }).flat();
+  const rows = characteristicRows(variant, { reading: null, levels: null, picture: null, swing: null, noise: null, limits }).flat();
   expect(rows.map(({ short }) => short)).not.toContain('Gain');
   expect(rows.length).toBeGreaterThan(0);
 });

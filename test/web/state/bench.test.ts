@@ -357,10 +357,10 @@ describe('readings', () => {
     const latest = readingWorker.posted.findLast((message) => message.type === 'question');
     expect(latest?.question.design).toBe(bench.design.value);
     const reading = { fault: 'none yet' };
-    readingWorker.answer({ type: 'reading', id: first.id, reading, thdBand: null });
+    readingWorker.answer({ type: 'reading', id: first.id, reading, thdBand: null, path: null });
     expect(bench.moment.value).toBeNull();
-    readingWorker.answer({ type: 'reading', id: latest?.id ?? 0, reading, thdBand: null });
-    expect(bench.moment.value).toEqual({ levels: null, reading, thdBand: null });
+    readingWorker.answer({ type: 'reading', id: latest?.id ?? 0, reading, thdBand: null, path: null });
+    expect(bench.moment.value).toEqual({ levels: null, reading, thdBand: null, path: null });
     const worst = { thdFundamental: 0.02, gainDb: -6, gateV: -1 };
     const asked = () => readingWorker.posted.filter(({ type }) => type === 'swing').length;
     expect(asked()).toBe(1);
@@ -389,12 +389,12 @@ describe('readings', () => {
         feedthroughPeakV: 0,
       },
       ...{ slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5), latencySamples: 48, loadFraction: 0.1 },
-      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: 2 * gateSourceV, gateSourceV },
+      ...{ faults: 0, ceilingFrames: 0, lagMs: 0, controlV: 2 * gateSourceV, gateSourceV, gateLowV: gateSourceV, gateHighV: gateSourceV },
     });
     const asked = () => readingWorker.posted.filter((message) => message.type === 'moment');
     const answer = () => {
       const { id = 0, gateV } = asked().at(-1) ?? {};
-      readingWorker.answer({ type: 'reading', id, reading: { fault: `at ${gateV}` }, thdBand: null });
+      readingWorker.answer({ type: 'reading', id, reading: { fault: `at ${gateV}` }, thdBand: null, path: null });
     };
     answer();
     answer();
@@ -638,7 +638,7 @@ describe('the load', () => {
     ...{ type: 'report', slot: 0, frame, input: new Float32Array(100), output: new Float32Array(100), loadFraction },
     ...{ inputPeak: 0, outputPeak: 0, heardPeak: 0, outputSquare: 0, heardSquare: 0, residualSquare: 0, inputPeakV: 0, drainPeakV: 0 },
     ...{ feedthroughPeakV: 0, faults: 0, slotPeaks: new Float64Array(5), slotFaults: new Float64Array(5) },
-    ...{ latencySamples: 48, ceilingFrames: 0, lagMs: 0, controlV: -1, gateSourceV: -1 },
+    ...{ latencySamples: 48, ceilingFrames: 0, lagMs: 0, controlV: -1, gateSourceV: -1, gateLowV: -1, gateHighV: -1 },
   });
 
   test('that lasts and leaves little of the time is said once, and again after it was low', async () => {

@@ -18,6 +18,8 @@ const quiet = {
   loadFraction: 0.5,
   controlV: -1,
   gateSourceV: -0.5,
+  gateLowV: -0.6,
+  gateHighV: -0.4,
   inputPeakV: 0.1,
   drainPeakV: 0.05,
   feedthroughPeakV: 0.001,

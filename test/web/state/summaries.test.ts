@@ -6,7 +6,7 @@ import type { ToneQuestion } from '../../../web/state/workers.ts';
 const [variant] = defaultDesign().variants;
 const design = { ...defaultDesign(), variants: [variant, { ...variant, name: 'B' }] };
 const question: ToneQuestion = { design, variantIndex: 0, moves: 'drainOhm', toneHz: 1000, toneV: 0.5 };
-const summary = (restThd: number) => ({ restThd, worstThd: 2 * restThd });
+const summary = (restThd: number) => ({ restThd, worstThd: 2 * restThd, gainDb: [-28, 0] as const });
 
 test('variants are asked for one at a time, and again only when they or the tone change', () => {
   const asked: number[] = [];

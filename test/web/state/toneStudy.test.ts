@@ -3,7 +3,16 @@ import { defaultVariant } from '../../../model/design/defaults.ts';
 import { withFeedbackFraction } from '../../../model/design/feedback.ts';
 import { checkDesign } from '../../../model/design/read.ts';
 import type { Control, Design, Feedback } from '../../../model/design/types.ts';
-import { curveFractions, readFeedbackCurve, readMoment, readNoise, readSwing, readTone } from '../../../web/state/toneStudy.ts';
+import {
+  curveFractions,
+  readBeyond,
+  readFeedbackCurve,
+  readMoment,
+  readNoise,
+  readPlane,
+  readSwing,
+  readTone,
+} from '../../../web/state/toneStudy.ts';
 import type { ToneQuestion } from '../../../web/state/workers.ts';
 
 /**
@@ -140,4 +149,35 @@ describe('over the swing', () => {
     expect(points[0].drainV * 1e6).toBeCloseTo(1.814, 2);
     expect(points).toHaveLength(25);
   });
+});
+
+describe('what lies beyond the swing', () => {
+  test('joins it on both sides, from past VGS(off) to 0 V, without a gap or a place twice', () => {
+    const asked = question(cellA({ kind: 'none' }, sweep(-1.4, -0.8)), 0.2);
+    const beyond = finish(readBeyond(asked)).map(({ gateV }) => gateV);
+    expect(beyond[0]).toBeCloseTo(-1.875, 9);
+    expect(beyond.at(-1)).toBeCloseTo(0, 9);
+    expect(beyond.every((v, n) => n === 0 || v > beyond[n - 1])).toBe(true);
+    expect(beyond.some((v) => v > -1.41 && v < -0.79)).toBe(false);
+  });
+
+  test('is none on a side that the swing covers', () => {
+    const asked = question(cellA({ kind: 'none' }, sweep(-1.8, 0)), 0.2);
+    expect(finish(readBeyond(asked)).every(({ gateV }) => gateV < -1.79)).toBe(true);
+  });
+});
+
+test('the transfer plane holds the shadow tone at both ends of the swing, and its curves leave it apart from one another', () => {
+  const asked = question(cellA({ kind: 'none' }, sweep(-1.8, -0.6)), 0.2);
+  const { drainSourceV, curves, topA, edgeA } = readPlane(asked);
+  // Cut off, the whole tone of 0.2 V stands at the drain; at −0.6 V rDS is 1 / (2·1.333 mS·0.9) = 417 Ω, and 0.2 V / 10.4 kΩ = 19.2 µA flow.
+  // Less a hundred-thousandth, for the load of 1 GΩ.
+  expect(drainSourceV.at(-1)).toBeCloseTo(1.12 * 0.2, 5);
+  expect(topA / 1.12).toBeGreaterThan(19e-6);
+  expect(topA / 1.12).toBeLessThan(19.6e-6);
+  expect(curves.length).toBeGreaterThan(3);
+  const ends = curves.map(({ drainA }) => drainA.at(-1) ?? 0);
+  expect(ends.every((amperes, n) => n === 0 || amperes < ends[n - 1])).toBe(true);
+  // The square law leaves its ohmic region on ID = β·VDS².
+  expect(edgeA.at(-1)).toBeCloseTo((3e-3 / 2.25) * (1.12 * 0.2) ** 2, 8);
 });

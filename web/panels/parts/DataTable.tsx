@@ -23,8 +23,8 @@ export function DataTable({ number, className, caption, columns, children }: Dat
         </caption>
         <thead>
           <tr>
-            {columns.map(({ key, head }) => (
-              <th key={key} scope="col" class={key}>
+            {columns.map(({ key, head }, n) => (
+              <th key={`${key} ${n}`} scope="col" class={key}>
                 {head}
               </th>
             ))}

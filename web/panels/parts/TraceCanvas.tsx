@@ -1,0 +1,36 @@
+import { useEffect, useRef } from 'preact/hooks';
+import { createPainter } from '../../draw/frame.ts';
+import type { PlotArea } from '../../draw/plotArea.ts';
+import { paintTraces, type Trace } from '../../draw/traces.ts';
+import { useBenchView } from '../BenchContext.ts';
+
+/** Lines that move with the sound, at the screen's own pixels: painted with each report, four times a second for those who ask for less motion. */
+export function TraceCanvas({
+  area,
+  traces,
+  label,
+}: {
+  readonly area: PlotArea;
+  readonly traces: () => readonly Trace[];
+  readonly label: string;
+}) {
+  const { bench, slowLive } = useBenchView();
+  const canvas = useRef<HTMLCanvasElement>(null);
+  const latest = useRef({ area, traces });
+  latest.current = { area, traces };
+  useEffect(() => {
+    const element = canvas.current;
+    if (element === null) return undefined;
+    const painter = createPainter(() => paintTraces(element, latest.current.area, latest.current.traces()));
+    const calm = matchMedia('(prefers-reduced-motion: reduce)').matches;
+    const scheme = matchMedia('(prefers-color-scheme: dark)');
+    scheme.addEventListener('change', painter.dirty);
+    const ends = [(calm ? slowLive : bench.live).subscribe(painter.dirty), bench.sound.subscribe(painter.dirty)];
+    return () => {
+      for (const end of ends) end();
+      scheme.removeEventListener('change', painter.dirty);
+      painter.stop();
+    };
+  }, [bench, slowLive, area.width, area.height]);
+  return <canvas ref={canvas} role="img" aria-label={label} />;
+}
