@@ -135,7 +135,7 @@ test('--residual gives what the cell adds, and refuses what is no part of it', a
   expect(Math.max(...takeApart(folder.read('out.wav')).samples.map(Math.abs))).toBeLessThan(1e-7);
   expect(await folder.fettle('render', 'a.json', 'in.wav', 'out.wav', '--residual', 'hum')).toMatchObject({
     code: 2,
-    stderr: '--residual is “hum”; expected distortion, feedthrough or noise\n',
+    stderr: '--residual is "hum"; expected distortion, feedthrough or noise\n',
   });
 });
 
