@@ -22,9 +22,11 @@ export interface WavClip {
   readonly design?: string;
 }
 
+export type Dither = 'none' | 'triangular';
+
 export interface WavOptions {
   /** 'none' when left out. */
-  readonly dither?: 'none' | 'triangular';
+  readonly dither?: Dither;
   /** Of the dither, a whole number; 1 when left out. */
   readonly ditherSeed?: number;
   /** Text of the design to put inside. */

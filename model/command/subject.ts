@@ -1,10 +1,11 @@
 /** The design and variant that a command is about, with the values that `--set` changes. */
+import { readWav } from '../chain/wav.ts';
 import { setAllFromText } from '../design/path.ts';
 import { readDesign } from '../design/read.ts';
 import type { Design } from '../design/types.ts';
 import { shown } from '../design/wording.ts';
-import { CommandFault } from './fault.ts';
-import { readText } from './files.ts';
+import { CommandFault, judged } from './fault.ts';
+import { readBytes, readText } from './files.ts';
 import type { Line, Option } from './line.ts';
 
 export const VARIANT: Option = { name: 'variant', value: 'NAME', about: 'which variant, by its name; the first when left out' };
@@ -27,7 +28,7 @@ export interface Subject {
 }
 
 export function openSubject(path: string, { values }: Line): Subject {
-  const read = readDesign(readText(path));
+  const read = readDesign(textAt(path));
   if ('faults' in read) throw new CommandFault(read.faults.map((fault) => `${path}: ${fault.sentence}`).join('\n'));
   const { design } = read;
   const names = design.variants.map(({ name }) => name);
@@ -35,6 +36,14 @@ export function openSubject(path: string, { values }: Line): Subject {
   const variantIndex = names.indexOf(wanted);
   if (variantIndex < 0) throw new CommandFault(`--variant is ${shown(wanted)}; ${path} has ${names.map(shown).join(', ')}`);
   return { design: withSettings(design, variantIndex, (values.get(SET.name) ?? []).map(splitSetting)), variantIndex };
+}
+
+/** The text of a design's file, or of the design inside a WAV file. */
+function textAt(path: string): string {
+  if (!/\.wav$/i.test(path)) return readText(path);
+  const { design } = judged(`${path}: `, () => readWav(readBytes(path)));
+  if (design === undefined) throw new CommandFault(`${path} holds sound and no design; expected a design, or a WAV file with one inside`);
+  return design;
 }
 
 type Setting = readonly [path: string, text: string];

@@ -1,6 +1,8 @@
 import { spawn, spawnSync } from 'node:child_process';
 import { existsSync } from 'node:fs';
 import { expect, test } from 'vitest';
+import { readWav } from '../../../model/chain/wav.ts';
+import type { Variant } from '../../../model/design/types.ts';
 import { ended, FETTLE, type Folder, newFolder, straightThrough } from './running.ts';
 import { type Kind, soundOf, takeApart, wavOf } from './sound.ts';
 
@@ -91,6 +93,50 @@ test('IN stays as it was and nothing but OUT is left', async () => {
   expect(folder.names()).toEqual(['a.json', 'in.wav', 'out.wav']);
   expect(folder.read('in.wav').equals(sound)).toBe(true);
   expect(takeApart(folder.read('out.wav')).samples).toHaveLength(100);
+});
+
+test('the design is inside OUT, its settings made, the rendered variant first; OUT then stands for the design', async () => {
+  const folder = folderWith(wavOf(PLAIN, soundOf(PLAIN, 500)));
+  const { variants, ...design } = straightThrough();
+  folder.write('two.json', JSON.stringify({ ...design, variants: [...variants, { ...variants[0], name: 'B' }] }));
+  const words = ['--variant', 'B', '--set', 'cell.seriesOhm=22k', '--set', 'cell.loadOhm=100k'];
+  expect(await folder.fettle('render', 'two.json', 'in.wav', 'out.wav', ...words)).toEqual(SILENT);
+  const inside = JSON.parse(readWav(folder.read('out.wav')).design ?? '');
+  expect(inside.variants.map(({ name, cell }: Variant) => [name, cell.seriesOhm])).toEqual([
+    ['B', 22000],
+    ['A', variants[0].cell.seriesOhm],
+  ]);
+  expect(await folder.fettle('render', 'out.wav', 'in.wav', 'again.wav')).toEqual(SILENT);
+  expect(folder.read('again.wav').equals(folder.read('out.wav'))).toBe(true);
+  expect(await folder.fettle('measure', 'in.wav')).toMatchObject({
+    code: 2,
+    stderr: 'in.wav holds sound and no design; expected a design, or a WAV file with one inside\n',
+  });
+});
+
+test('--dither adds what rounding needs, the same each time, and is refused for float samples', async () => {
+  const folder = folderWith(wavOf(PLAIN, Array(5000).fill(0)));
+  for (const name of ['one.wav', 'two.wav'])
+    expect(await folder.fettle('render', 'a.json', 'in.wav', name, '--dither', 'triangular')).toEqual(SILENT);
+  expect(folder.read('one.wav').equals(folder.read('two.wav'))).toBe(true);
+  const { samples } = takeApart(folder.read('one.wav'));
+  // Triangular dither two steps wide has a variance of 1/6 of a step's square, the rounding after it 1/12 (Lipshitz, Wannamaker & Vanderkooy 1992).
+  expect(samples.reduce((sum, x) => sum + x * x, 0) / samples.length).toBeCloseTo(1 / 4, 1);
+  const refused = await folder.fettle('render', 'a.json', 'in.wav', 'x.wav', '--dither', 'triangular', '--format', 'float32');
+  expect(refused).toMatchObject({
+    code: 2,
+    stderr: '--dither is triangular, but OUT is float32, which is not rounded; expected a --format of PCM\n',
+  });
+});
+
+test('--residual gives what the cell adds, and refuses what is no part of it', async () => {
+  const folder = folderWith(wavOf(PLAIN, soundOf(PLAIN, 5000)));
+  expect(await folder.fettle('render', 'a.json', 'in.wav', 'out.wav', '--residual', 'distortion', '--format', 'float32')).toEqual(SILENT);
+  expect(Math.max(...takeApart(folder.read('out.wav')).samples.map(Math.abs))).toBeLessThan(1e-7);
+  expect(await folder.fettle('render', 'a.json', 'in.wav', 'out.wav', '--residual', 'hum')).toMatchObject({
+    code: 2,
+    stderr: '--residual is "hum"; expected distortion, feedthrough or noise\n',
+  });
 });
 
 const SCRIPT = spawnSync('script', ['--version']).error === undefined;
