@@ -38,6 +38,10 @@ export function printReading(design: Design, variant: Variant, reading: ToneRead
     row('Saturated', percent(regions.saturated)),
     row('Cut off', percent(regions.cutoff)),
     row('Gate conducts', percent(regions.gateOn)),
+    '',
+    row('Error', reading.fundamentalError.toExponential(1), 'of the fundamental, by what the last doubling of the grid changed'),
+    row('', reading.harmonicsError.toExponential(1), 'of the harmonic that changed most'),
+    row('Grid', `${reading.gridPoints}`, `points; steady state ${reading.settledByTime ? 'run until it repeated' : 'found directly'}`),
   ];
   return `${rows.join('\n')}\n`;
 }

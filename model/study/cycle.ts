@@ -78,6 +78,8 @@ export interface CycleReading {
   readonly gridPoints: number;
   readonly changed: number;
   readonly converged: boolean;
+  /** Not found directly, but by running until it repeated. */
+  readonly settledByTime: boolean;
 }
 
 /** Throws a RangeError naming an option or a value that cannot be used, or a control that is no LFO. */
@@ -96,9 +98,13 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
     const period = periodOf(createCell(numbers, 1 / (control.rateHz * points)), audio, controlOver(control, points).ends, start);
     start = period.start;
     const lines = linesOf(period.output);
-    return { value: { lines, regions: regionShares(period) }, watched: watchedIn(lines, periods), settled: period.settled };
+    return {
+      value: { lines, regions: regionShares(period), byTime: period.byTime },
+      watched: watchedIn(lines, periods),
+      settled: period.settled,
+    };
   });
-  const { lines, regions } = cycle.value;
+  const { lines, regions, byTime } = cycle.value;
   const moments = momentsOf(lines, periods, control, toneV / gain);
   const fundamental = harmonicAmplitude(lines, periods, 1);
   return {
@@ -117,6 +123,7 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
     gridPoints: cycle.gridPoints,
     changed: cycle.changed,
     converged: cycle.converged,
+    settledByTime: byTime,
   };
 }
 

@@ -29,22 +29,23 @@ export interface Feedthrough {
   readonly gridPoints: number;
   readonly changed: number;
   readonly converged: boolean;
+  readonly settledByTime: boolean;
 }
 
 /** Of one variant and channel, times `gain`. */
 export function feedthroughOf(design: Design, variantIndex: number, channel: number, control: Lfo, gain: number): Feedthrough {
   const numbers = cellNumbers(design, variantIndex, channel);
-  const readOn = (points: number): OnGrid<{ lines: Lines; output: Float64Array }> => {
+  const readOn = (points: number): OnGrid<{ lines: Lines; output: Float64Array; byTime: boolean }> => {
     const cell = createCell(numbers, 1 / (control.rateHz * points));
-    const { output, settled } = periodOf(cell, new Float64Array(points), controlOver(control, points).ends);
+    const { output, settled, byTime } = periodOf(cell, new Float64Array(points), controlOver(control, points).ends);
     const lines = linesOf(output);
     return {
-      value: { lines, output },
+      value: { lines, output, byTime },
       watched: Float64Array.from({ length: LFO_HARMONICS }, (_, i) => lineAmplitude(lines, i + 1)),
       settled,
     };
   };
-  const { value, ...how } = refined(COARSEST, FINEST, readOn, STOPPED);
+  const { value, gridPoints, changed, converged } = refined(COARSEST, FINEST, readOn, STOPPED);
   const { lines, output } = value;
   const top = output.reduce((most, v) => Math.max(most, v), Number.NEGATIVE_INFINITY);
   const bottom = output.reduce((most, v) => Math.min(most, v), Number.POSITIVE_INFINITY);
@@ -57,7 +58,10 @@ export function feedthroughOf(design: Design, variantIndex: number, channel: num
       frequencyHz: (i + 1) * control.rateHz,
       amplitudeV: lineAmplitude(lines, i + 1) * gain,
     })),
-    ...how,
+    gridPoints,
+    changed,
+    converged,
+    settledByTime: value.byTime,
   };
 }
 

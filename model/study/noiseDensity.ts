@@ -4,7 +4,8 @@
  * Law      resistor 4kT/R; channel 4kT·(mean of its two ends' slopes); each junction 2q·(forward + reverse current), leakage and clamp included.
  *          Every part's current acts alone through the linear circuit (`network.ts`); squares add. The amplifier adds none of its own
  * Scheme   a band is integrated by Simpson's rule over the logarithm of frequency, its grid doubled until the square stops changing
- * Error    `errorRatio`: what the last doubling changed the voltage by, over it; under 1e-9 or the finest grid's
+ * Error    of a band, `errorRatio`: what the last doubling changed the voltage by, over it; under 1e-9 or the finest grid's. Of a density, the reading's
+ *          `errorRatio`: the largest that the linear solutions had been wrong by before their refinement
  * Valid    audio frequencies: flicker noise is left out. The channel's law is exact at VDS = 0
  * Source   Johnson, Nyquist, Phys. Rev. 32 (1928) 97, 110; channel: van der Ziel, Proc. IRE 50 (1962) 1808; shot noise: Schottky, Ann. Phys.
  *          362 (1918) 541 (from memory)
@@ -62,6 +63,7 @@ export interface NoiseReading {
   readonly output: BandNoise;
   /** `flatV` at the output, part by part, largest first; their squares add up to its square. */
   readonly parts: readonly { readonly part: string; readonly flatV: number }[];
+  readonly errorRatio: number;
 }
 
 interface Source {
@@ -82,21 +84,25 @@ export function noiseReading(design: Design, variantIndex: number, options: Nois
   const squaresAt = (hz: number, amplifier: Output | null) => squares(linear, sources, hz, amplifier);
   const atOutput = integrated((hz) => squaresAt(hz, output).byPart);
   const parts = sources.map(({ part }, index) => ({ part, flatV: Math.sqrt(atOutput.flat[index]) }));
+  let errorRatio = 0;
+  const densities = frequenciesHz.map((frequencyHz): NoiseDensity => {
+    const { byPart, audio, errorRatio: error } = squaresAt(frequencyHz, output);
+    errorRatio = Math.max(errorRatio, error);
+    const totalV = Math.sqrt(total(byPart));
+    return {
+      frequencyHz,
+      totalV,
+      inputReferredV: audio > 0 ? totalV / audio : Number.POSITIVE_INFINITY,
+      parts: sources.map(({ part }, index) => ({ part, densityV: Math.sqrt(byPart[index]) })),
+    };
+  });
   return {
     point: linear.point,
-    densities: frequenciesHz.map((frequencyHz) => {
-      const { byPart, audio } = squaresAt(frequencyHz, output);
-      const totalV = Math.sqrt(total(byPart));
-      return {
-        frequencyHz,
-        totalV,
-        inputReferredV: audio > 0 ? totalV / audio : Number.POSITIVE_INFINITY,
-        parts: sources.map(({ part }, index) => ({ part, densityV: Math.sqrt(byPart[index]) })),
-      };
-    }),
+    densities,
     drain: bandOf(integrated((hz) => squaresAt(hz, null).byPart)),
     output: bandOf(atOutput),
     parts: parts.sort((a, b) => b.flatV - a.flatV),
+    errorRatio,
   };
 }
 
@@ -128,7 +134,7 @@ function squares({ network }: Linearised, sources: readonly Source[], frequencyH
     const ohm = magnitude(effects.ofCurrent(from, to));
     return ohm * ohm * density;
   });
-  return { byPart, audio: magnitude(effects.ofDrive('audio')) };
+  return { byPart, audio: magnitude(effects.ofDrive('audio')), errorRatio: effects.errorRatio };
 }
 
 interface Integrals {

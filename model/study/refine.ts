@@ -24,6 +24,8 @@ export interface Refined<T> {
   readonly value: T;
   readonly gridPoints: number;
   readonly changed: number;
+  /** The same of the largest amplitude alone. */
+  readonly changedLargest: number;
   /** The largest amplitude changed by under 1e-7 unless said, every other by under 1e-4 dB, and the state repeats. */
   readonly converged: boolean;
 }
@@ -38,6 +40,7 @@ export function refined<T>(
   let points = coarsest;
   let { value, watched } = readOn(points);
   let changed = Number.POSITIVE_INFINITY;
+  let changedLargest = Number.POSITIVE_INFINITY;
   let converged = false;
   while (!converged && points < finest) {
     points *= 2;
@@ -45,10 +48,11 @@ export function refined<T>(
     const change = changeOf(watched, finer.watched);
     converged = finer.settled && change.ofLargest < stoppedLargest && change.ofAny < STOPPED;
     changed = change.ofAny;
+    changedLargest = change.ofLargest;
     value = finer.value;
     watched = finer.watched;
   }
-  return { value, gridPoints: points, changed, converged };
+  return { value, gridPoints: points, changed, changedLargest, converged };
 }
 
 function changeOf(before: Float64Array, after: Float64Array) {

@@ -26,6 +26,8 @@ export interface SteadyPeriod {
   readonly drainOverdrive: Float64Array;
   readonly gateOn: Uint8Array;
   readonly settled: boolean;
+  /** Not found directly: run until it repeated, or as long as that was tried. */
+  readonly byTime: boolean;
   readonly start: SteadyStart;
 }
 
@@ -61,9 +63,10 @@ export function periodOf(cell: Cell, audio: Float64Array, control: Float64Array,
   };
   run();
   const search = { slope: start?.slope ?? null };
-  const settled = shoot(cell, run, search) || runUntilSettled(cell, run, audio.length);
+  const byTime = !shoot(cell, run, search);
+  const settled = !byTime || runUntilSettled(cell, run, audio.length);
   const state = cell.state.slice(0, cell.stateCount);
-  return { ...recordPeriod(cell, audio, control), settled, start: { state, slope: search.slope } };
+  return { ...recordPeriod(cell, audio, control), settled, byTime, start: { state, slope: search.slope } };
 }
 
 /** Newton's method; the slope is renewed only where it no longer takes nine tenths of what is missing. */
@@ -123,7 +126,11 @@ function repeats(from: Float64Array, miss: Float64Array): boolean {
   return miss.every((value, i) => Math.abs(value) <= REPEATS * (Math.abs(from[i]) + 1e-6) + ROUNDING * largest);
 }
 
-function recordPeriod(cell: Cell, audio: Float64Array, control: Float64Array): Omit<SteadyPeriod, 'settled' | 'start'> {
+function recordPeriod(
+  cell: Cell,
+  audio: Float64Array,
+  control: Float64Array,
+): Pick<SteadyPeriod, 'output' | 'sourceOverdrive' | 'drainOverdrive' | 'gateOn'> {
   const size = audio.length;
   const output = new Float64Array(size);
   const sourceOverdrive = new Float64Array(size);

@@ -1,9 +1,9 @@
 /**
  * What a cell does to a tone, in the steady state, at a fixed control voltage.
  *
- * Scheme   the period is solved on its own grid, doubled until fundamental and harmonics stop changing
- * Error    the last doubling moved the fundamental by under 1e-7 and every harmonic above −160 dB by under 1e-4 dB; `converged` is false
- *          where the finest grid did not reach that. Harmonics under −260 dB re the fundamental are the arithmetic's own and reported as zero
+ * Scheme   the period is solved on its own grid (`steady.ts`), doubled until fundamental and harmonics stop changing (`refine.ts`)
+ * Error    `fundamentalError` and `harmonicsError`: what the last doubling changed, under 1e-7 of the fundamental and 1e-4 dB of every harmonic above
+ *          −160 dB; `converged` is false where the finest grid did not reach that. Harmonics under −260 dB re the fundamental are the arithmetic's own and reported as zero
  */
 import { createCell, gateSourceV, settle, forReadings } from '../cell/cell.ts';
 import { cellNumbers, deviceOf, variantAt } from '../cell/fromDesign.ts';
@@ -13,6 +13,7 @@ import { dbFromRatio, turnsOf } from '../device/math.ts';
 import { amplifiedDcV, amplifiedPeriod } from './amplified.ts';
 import { harmonicsOf } from '../measure/harmonics.ts';
 import { type OperatingOptions, restingControlV } from './operating.ts';
+import { refined } from './refine.ts';
 import { requireRange } from './require.ts';
 import { type RegionShares, regionShares, type SteadyPeriod, steadyPeriod } from './steady.ts';
 
@@ -62,6 +63,11 @@ export interface ToneReading {
   /** Samples in the finest period, and whether the reading had stopped changing there. */
   readonly gridPoints: number;
   readonly converged: boolean;
+  /** What the last doubling changed the fundamental by, over it; and the harmonic above −160 dB that it changed most. What is left is smaller. */
+  readonly fundamentalError: number;
+  readonly harmonicsError: number;
+  /** The steady state was not found directly, but by running until it repeated. */
+  readonly settledByTime: boolean;
 }
 
 /** Measures one variant. Throws a RangeError naming an option or a value that cannot be used. */
@@ -78,19 +84,13 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
     const amplified = amplifiedPeriod(variant.output, period.output, toneHz * size);
     return { ...period, output: amplified.period, settled: period.settled && amplified.settled };
   };
-  let size = COARSEST;
-  let period = solveOn(size);
-  let spectrum = harmonicsOf(period.output, HARMONICS);
-  let converged = false;
-  while (!converged && size < FINEST) {
-    size *= 2;
-    const finer = solveOn(size);
-    const finerSpectrum = harmonicsOf(finer.output, HARMONICS);
-    converged = finer.settled && hasStopped(amplitudes(spectrum), amplitudes(finerSpectrum));
-    period = finer;
-    spectrum = finerSpectrum;
-  }
-  const rest = createCell(numbers, 1 / (toneHz * size));
+  const { value, gridPoints, converged, changed, changedLargest } = refined(COARSEST, FINEST, (size) => {
+    const period = solveOn(size);
+    const spectrum = harmonicsOf(period.output, HARMONICS);
+    return { value: { period, spectrum }, watched: amplitudes(spectrum), settled: period.settled };
+  });
+  const { period, spectrum } = value;
+  const rest = createCell(numbers, 1 / (toneHz * gridPoints));
   const drainRestV = settle(rest, 0, controlV);
   const restDcV = at === 'drain' ? drainRestV : amplifiedDcV(variant.output, drainRestV);
   const law = lawConstants(deviceOf(variant, channel), design.tempC);
@@ -102,18 +102,16 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
     rdsOhm: restingResistanceOhm(law, numbers.polarity * vgsV),
     vgsV,
     regions: regionShares(period),
-    gridPoints: size,
+    gridPoints,
     converged,
+    fundamentalError: changedLargest,
+    harmonicsError: changed,
+    settledByTime: period.byTime,
   };
 }
 
 function amplitudes(set: { real: Float64Array; imaginary: Float64Array }): Float64Array {
   return Float64Array.from(set.real, (re, i) => Math.sqrt(re * re + set.imaginary[i] * set.imaginary[i]));
-}
-
-function hasStopped(before: Float64Array, after: Float64Array): boolean {
-  if (Math.abs(after[0] - before[0]) > 1e-7 * after[0]) return false;
-  return after.every((value, i) => value < 1e-8 * after[0] || Math.abs(value - before[i]) < 1.15e-5 * value);
 }
 
 function describe(set: { real: Float64Array; imaginary: Float64Array }, toneV: number) {

@@ -246,6 +246,9 @@ function inventedReading(k: number, saturated: number): ToneReading {
     regions: { ohmic: 1 - saturated, saturated, cutoff: 0, gateOn: 0 },
     gridPoints: 512,
     converged: true,
+    fundamentalError: 1e-12,
+    harmonicsError: 1e-9,
+    settledByTime: false,
   };
 }
 

@@ -68,7 +68,10 @@ test('--json prints one line with the fields that the help names, and they agree
   const { stdout } = await folder.fettle('--json', 'measure', '--toneHz', '1k', '--toneV=500m', '--controlV', '-0.75', '--', 'a.json');
   expect(stdout).toMatch(/^\{.*\}\n$/);
   const reading: Reading = JSON.parse(stdout);
-  const names = 'gainDb fundamentalV dcV restDcV thdFundamental thdTotal harmonics rdsOhm vgsV regions'.split(' ');
+  const names =
+    'gainDb fundamentalV dcV restDcV thdFundamental thdTotal harmonics rdsOhm vgsV regions gridPoints converged fundamentalError harmonicsError settledByTime'.split(
+      ' ',
+    );
   expect(Object.keys(reading).sort()).toEqual(names.sort());
   expect(Object.keys(reading.regions)).toEqual(['ohmic', 'saturated', 'cutoff', 'gateOn']);
   expect(reading.harmonics.map((each) => Object.keys(each).join())).toEqual(Array(9).fill('n,amplitudeV,db,phaseRad'));

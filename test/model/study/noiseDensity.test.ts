@@ -163,3 +163,9 @@ function gateFor(design: Design, ohm: number): number {
   }
   return on;
 }
+
+test('densities state what the linear solutions were wrong by: no more than rounding for a whole board', () => {
+  const { errorRatio } = noiseReading(designOf(variantOf(REAL_CELL, REAL_DEVICE)), 0);
+  expect(errorRatio).toBeGreaterThan(0);
+  expect(errorRatio).toBeLessThan(1e-9);
+});

@@ -19,6 +19,19 @@ test.each([
   expect(mean).toBeCloseTo(-1, 2);
 });
 
+test('a swing states what doubling its grid changed: no less than what a grid sixteen times finer still changes', () => {
+  const cell = { ...REAL_CELL, controlOhm: 1e6, feedback: { kind: 'resistor', drainOhm: 1e6, blockingF: 1e-7 } as const };
+  const control = { source: 'lfo', shape: 'sine', rateHz: 5, fromV: -0.5, toV: -1.4, edgeSec: 0.01 } as const;
+  const design = designOf(variantOf(cell, REAL_DEVICE, control));
+  const swing = controlSwing(design, 0, 64);
+  const finer = controlSwing(design, 0, 1024);
+  const left = Math.max(...swing.gateV.map((v, i) => Math.abs(v - finer.gateV[16 * i])));
+  expect(left).toBeGreaterThan(0);
+  expect(swing.errorV).toBeGreaterThan(left);
+  expect(swing.errorV).toBeLessThan(0.02);
+  expect(finer.errorV).toBeLessThan(swing.errorV / 50);
+});
+
 test('the control leaks through the pair: a 1 V step on R‖r = 5 kΩ and 100 k + 100 k leaves 24.4 mV (worked figure)', () => {
   const cell = {
     ...REAL_CELL,

@@ -2,6 +2,8 @@
 import { expect, test } from 'vitest';
 import { measureTone } from '../../../model/study/tone.ts';
 import { CELL_A_DEVICE, designOf, REAL_CELL, REAL_DEVICE, variantOf } from '../../support/designs.ts';
+import { boardPeriod } from '../../support/dynamicCell.ts';
+import { harmonicsOf, sizeOf } from '../../support/inBand.ts';
 
 /** k through a buffer, so that the control reaches the gate whole and nothing loads the drain. */
 const cellA = (k: number) => designOf(variantOf({ feedback: k === 0 ? { kind: 'none' } : { kind: 'buffered', fraction: k } }));
@@ -173,4 +175,20 @@ test('a gain-bandwidth product lowers the gain as one pole does: 40 dB from 1 MH
   const base = variantOf({ seriesOhm: 1, loadOhm: 1e9 }, {}, { source: 'fixed', controlV: -30 } as const);
   const variant = { ...base, output: { gainDb: 40, gainBandwidthHz: 1e6, slewVPerSec: null, swingV: null } };
   expect(measureTone(designOf(variant), 0, { toneV: 0.01, toneHz: 10000, at: 'output' }).gainDb).toBeCloseTo(40 - 3.0103, 3);
+});
+
+test('a reading states its error: no less than its distance from a Runge-Kutta solution, and under 1e-7 of the fundamental', () => {
+  const board = { feedbackOhm: 470e3, gateSourceF: 5e-12, gateDrainF: 3e-12, loadF: 1e-9 };
+  const cell = { loadF: board.loadF, controlOhm: 470e3, feedback: { kind: 'resistor', drainOhm: 470e3, blockingF: null } } as const;
+  const design = designOf(variantOf(cell, { gateSourceF: board.gateSourceF, gateDrainF: board.gateDrainF }));
+  const reading = measureTone(design, 0, { toneHz: 5000, toneV: 0.5, controlV: -2.4 });
+  const exact = harmonicsOf(boardPeriod(board, 5000, 0.5, -2.4)).map(sizeOf);
+  expect(reading.converged).toBe(true);
+  expect(reading.settledByTime).toBe(false);
+  expect(reading.fundamentalError).toBeLessThan(1e-7);
+  expect(reading.harmonicsError).toBeLessThan(1.15e-5);
+  // What Runge-Kutta's own steps are sure of: 1e-11.
+  expect(Math.abs(reading.fundamentalV / exact[1] - 1)).toBeLessThan(reading.fundamentalError + 1e-11);
+  for (const { n, amplitudeV } of reading.harmonics.slice(1, 4))
+    expect(Math.abs(amplitudeV / exact[n] - 1)).toBeLessThan(reading.harmonicsError + 1e-11 / (exact[n] / exact[1]));
 });
