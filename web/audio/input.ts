@@ -25,7 +25,7 @@ export interface LiveInput {
 export interface Inputs {
   list(): Promise<readonly InputDevice[]>;
   /** Asks for permission where it must. `ended` is called when the device goes away by itself. Rejects with a sentence. */
-  open(deviceId: string | null, ended: () => void): Promise<LiveInput>;
+  open(deviceId: string | null, ended: (input: LiveInput) => void): Promise<LiveInput>;
   /** The rate that an open input has now, Hz. */
   rateHz(input: LiveInput): number;
   /** Calls back whenever a device comes or goes. */
@@ -53,8 +53,9 @@ export function browserInputs(): Inputs {
         throw new Error(refusal(error));
       });
       const [track] = stream.getAudioTracks();
-      track.addEventListener('ended', ended);
-      return describe(track, stream);
+      const input = describe(track, stream);
+      track.addEventListener('ended', () => ended(input));
+      return input;
     },
     rateHz: ({ stream }) => rateOf(stream.getAudioTracks()[0].getSettings()),
     watch: (changed) => devices?.addEventListener('devicechange', changed),

@@ -8,7 +8,7 @@ export function LiveCaution({ onDone }: { readonly onDone: () => void }) {
     <Note
       kind="caution"
       sentence="A loudspeaker near the microphone howls; use headphones, and start low."
-      advice="Live input begins muted: press Mute to hear it. The browser may ask whether this page may listen."
+      advice="Live input begins muted: press Muted to hear it. The browser may ask whether this page may listen."
     >
       <button
         type="button"

@@ -53,6 +53,8 @@ export function createSources({ parts, library, document, notes, listening }: So
   /** The last one that was no live input. */
   let recorded: Source | null = null;
   let opened: LiveInput | null = null;
+  /** Inputs that went away, maybe while sound was still being opened for them. */
+  const gone = new WeakSet<LiveInput>();
 
   /** What is listened to from now on; the input before it is let go. */
   const hold = (source: Source) => {
@@ -60,6 +62,7 @@ export function createSources({ parts, library, document, notes, listening }: So
     if (live !== opened) opened?.end();
     opened = live;
     if (source.kind !== 'live') recorded = source;
+    else if (gone.has(source.input)) lost(source.input);
   };
 
   const choose = (load: () => Promise<Source>) => {
@@ -101,7 +104,10 @@ export function createSources({ parts, library, document, notes, listening }: So
   });
 
   const loadInput = async (deviceId: string | null): Promise<Source> => {
-    const live = await parts.inputs.open(deviceId, () => lost(live));
+    const live = await parts.inputs.open(deviceId, (input) => {
+      gone.add(input);
+      lost(input);
+    });
     inputs.value = await parts.inputs.list();
     if (live.keptOn.length > 0) {
       notes.add('note', `The browser keeps ${live.keptOn.join(' and ')} on for “${live.title}”; what is heard is not the input as it is.`);

@@ -118,7 +118,7 @@ export class FakeInputs implements Inputs {
     return this.devices;
   }
 
-  async open(deviceId: string | null, unplug: () => void): Promise<LiveInput> {
+  async open(deviceId: string | null, ended: (input: LiveInput) => void): Promise<LiveInput> {
     if (this.refusal !== null) throw this.refusal;
     const { id, title } = this.devices.find((device) => device.id === deviceId) ?? this.devices[0];
     const of = {
@@ -130,7 +130,7 @@ export class FakeInputs implements Inputs {
       keptOn: this.keptOn,
     };
     const input: LiveInput = { ...of, stream: {} as MediaStream, end: () => Object.assign(record, { ended: true }) };
-    const record = { input, unplug, ended: false };
+    const record = { input, unplug: () => ended(input), ended: false };
     this.opened.push(record);
     return input;
   }

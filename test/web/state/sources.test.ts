@@ -79,6 +79,20 @@ describe('live input', () => {
     expect(lastSound().latency).toBe('playback');
   });
 
+  test('that is unplugged while sound is opened for it is said too', async () => {
+    const { open } = parts.inputs;
+    parts.inputs.open = async (id, unplug) => {
+      const input = await open.call(parts.inputs, id, unplug);
+      queueMicrotask(() => unplug(input));
+      return input;
+    };
+    await bench.openInput();
+    await vi.advanceTimersByTimeAsync(200);
+    expect(sentences()).toEqual(['The input “Built-in microphone” is gone; sound was stopped.']);
+    expect(bench.source.value.kind).toBe('phrase');
+    expect(parts.inputs.opened[0].ended).toBe(true);
+  });
+
   test('whose rate changes is opened again at the new one, muted', async () => {
     await bench.openInput('interface');
     bench.setMuted(false);
