@@ -128,10 +128,12 @@ function spectrumDrawing({ read, sticks, silent }: SpectrumView, width: number, 
 const NUMBER_WIDE = 10;
 
 function namedOf(sticks: readonly Stick[]): Stick[] {
-  return sticks.reduce<Stick[]>((named, stick) => {
+  const named: Stick[] = [];
+  for (const stick of sticks) {
     const last = named.at(-1);
-    return last !== undefined && stick.x - last.x < NUMBER_WIDE ? named : [...named, stick];
-  }, []);
+    if (last === undefined || stick.x - last.x >= NUMBER_WIDE) named.push(stick);
+  }
+  return named;
 }
 
 function spoken(sticks: readonly Stick[]): string {
