@@ -20,8 +20,14 @@ export interface ChainReport {
   lost: number;
   recoveries: number;
   worstRecovery: number;
+  /** What was played, by kind, and how often it was set out for. */
+  readonly met: Map<Met, number>;
   readonly faults: string[];
 }
+
+/** What sessions must meet: values on the move, a fade, one between latencies, a move within a fade; and designs with these. */
+export const MEETINGS = ['ramp', 'fade', 'latency', 'move in fade', 'recorded control', 'loop', 'noise', 'real amplifier'] as const;
+type Met = (typeof MEETINGS)[number];
 
 export type Process = typeof processChain;
 
@@ -32,16 +38,18 @@ const OVERSHOOT = 4;
 const MOST_UPPER_SAMPLES = 60000;
 
 export function emptyChainReport(): ChainReport {
-  return { sessions: 0, solved: 0, refused: 0, moves: 0, lost: 0, recoveries: 0, worstRecovery: 0, faults: [] };
+  return { sessions: 0, solved: 0, refused: 0, moves: 0, lost: 0, recoveries: 0, worstRecovery: 0, met: new Map(), faults: [] };
 }
 
 interface Session {
   readonly seed: number;
   readonly dice: Dice;
+  /** Apart, so that a kept seed still means the same designs. */
+  readonly filterDice: Dice;
   readonly temper: Temper;
   readonly rateHz: number;
   readonly channels: number;
-  readonly filters: FilterSet;
+  filters: FilterSet;
   readonly report: ChainReport;
   readonly process: Process;
   design: Design;
@@ -61,6 +69,7 @@ export function runChainSeed(seed: number, report: ChainReport, process: Process
   const session: Session = {
     seed,
     dice,
+    filterDice: new Dice(seed + 0x5eed),
     temper,
     rateHz,
     channels,
@@ -75,6 +84,7 @@ export function runChainSeed(seed: number, report: ChainReport, process: Process
   report.sessions += 1;
   if (!numbers) return;
   const chain = createChain(numbers);
+  meetDesign(report, numbers);
   session.perV = gainPerV(design);
   session.sourcesV = boundV(design);
   const movesBefore = report.moves;
@@ -104,6 +114,7 @@ function compiled(session: Session, design: Design): ChainNumbers | null {
 /** Values of the same shape, another design, or the same design again; now and then twice in a row, in the middle of a fade or ramp. */
 function change(session: Session, chain: Chain): void {
   const { dice, temper } = session;
+  if (session.filterDice.chance(0.1)) session.filters = session.filters === 'lowLatency' ? 'linearPhase' : 'lowLatency';
   const design = dice.chance(0.6)
     ? movedDesign(session.design, dice, temper)
     : dice.chance(0.7)
@@ -111,16 +122,32 @@ function change(session: Session, chain: Chain): void {
       : session.design;
   const numbers = compiled(session, design);
   if (!numbers) return;
+  const { latencySamples, next } = chain;
   try {
     moveChain(chain, numbers);
   } catch (error) {
     complain(session, `moving threw ${error}`);
     return;
   }
+  meetDesign(session.report, numbers);
+  if (next) meet(session.report, 'move in fade');
+  else meet(session.report, chain.next ? 'fade' : 'ramp');
+  if (!next && chain.next && chain.latencySamples !== latencySamples) meet(session.report, 'latency');
   session.design = design;
   session.perV = Math.max(session.perV, gainPerV(design));
   session.sourcesV = Number.POSITIVE_INFINITY;
   session.report.moves += 1;
+}
+
+function meet({ met }: ChainReport, what: Met): void {
+  met.set(what, (met.get(what) ?? 0) + 1);
+}
+
+function meetDesign(report: ChainReport, { control, noiseSeed, idealAmplifier }: ChainNumbers): void {
+  if (control.kind === 'external') meet(report, 'recorded control');
+  if (control.kind === 'follower' && control.senses === 'output') meet(report, 'loop');
+  if (noiseSeed !== null) meet(report, 'noise');
+  if (!idealAmplifier) meet(report, 'real amplifier');
 }
 
 function play(session: Session, chain: Chain): void {

@@ -22,6 +22,8 @@ import { addNumber, addProduct } from './twofold.ts';
 /** Half an ulp of 1, times the roundings that eliminating two dozen unknowns adds up, about. */
 const ROUNDING = 64 * 2 ** -53;
 
+/** Of the largest voltage: what the output may miss besides, by rounding in branches that are no conductances. */
+const OUTPUT_SHARE = 1e-11;
 /** Of the smooth law's table, in its own unit: its pieces are polynomials of degree 5 over 1/8, f⁽⁶⁾/6!·(1/16)⁶/2⁵, f⁽⁶⁾ up to 4. */
 const TABLE_ERROR = 1e-11;
 
@@ -293,7 +295,7 @@ export class Witness {
       where: 'output',
       value: outputV - sum[0],
       currents: this.largestVoltage(),
-      floor: ROUNDING * (gross + network.outputSpread * this.largestVoltage()),
+      floor: ROUNDING * gross + (OUTPUT_SHARE + ROUNDING * network.outputSpread) * this.largestVoltage(),
     };
   }
 

@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import { processChain } from '../../../model/chain/chain.ts';
-import { emptyChainReport, type Process, runChainSeed } from '../../fuzz/chainCases.ts';
+import { emptyChainReport, MEETINGS, type Process, runChainSeed } from '../../fuzz/chainCases.ts';
 import { CHAIN_SEEDS } from '../../fuzz/seeds.ts';
 
 const SLICES = 6;
@@ -17,6 +17,21 @@ test.each(Array.from({ length: SLICES }, (_, slice) => slice))(
   },
   120_000,
 );
+
+test('the sessions of the slices meet every kind of change and of design', () => {
+  const met = new Set<string>();
+  const silent: Process = (_chain, _inputs, outputs) => {
+    for (const output of outputs) output.fill(0);
+  };
+  for (let slice = 0; slice < SLICES; slice++) {
+    for (let i = 0; i < SESSIONS_A_SLICE; i++) {
+      const report = emptyChainReport();
+      runChainSeed(1e7 + slice * 1e6 + i, report, silent);
+      for (const kind of report.met.keys()) met.add(kind);
+    }
+  }
+  expect([...met].sort()).toEqual([...MEETINGS].sort());
+}, 120_000);
 
 test.each(CHAIN_SEEDS)(
   'seed %i stays mended: %s',
