@@ -1,11 +1,24 @@
 /**
  * One complete path of a chain, for one shape of circuit: oversamplers, cells, control and amplifier with their state. Values move along straight
- * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
+ * lines in volts and gain, by equal ratios in conductance, capacitance and inductance; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
  * its coefficients go from one exact set to the next as `aimAt` in cell.ts says.
  */
-import { advanceCell, aimAt, approach, arrive, type Cell, createCell, inheritStates, loadValues, settle } from '../cell/cell.ts';
+import {
+  advanceCell,
+  aimAt,
+  approach,
+  approachMemory,
+  arrive,
+  type Cell,
+  createCell,
+  inheritStates,
+  loadValues,
+  settle,
+} from '../cell/cell.ts';
+import type { CellNumbers } from '../cell/cell.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
+import { expAt, log } from '../device/math.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
 import { createAmplifierState, GAIN, processAmplifier } from './amplifier.ts';
 import { createKinks } from '../cell/kernels/kinks.ts';
@@ -24,7 +37,11 @@ interface Moving {
   readonly now: Float64Array;
   readonly from: Float64Array;
   readonly to: Float64Array;
-  /** Where the present slice ends, and one sample's part of the way. */
+  readonly byRatio: readonly boolean[];
+  /** Of those that move by ratio: the logarithm of the whole one. */
+  readonly power: Float64Array;
+  /** The middle and the end of the present slice, and one sample's part of the way. */
+  readonly between: Float64Array;
   readonly aim: Float64Array;
   readonly increment: Float64Array;
 }
@@ -115,9 +132,17 @@ export interface Voice {
   readonly quiet: Quiet;
 }
 
-function moving(values: Float64Array): Moving {
+/** `byRatio` marks values that move by equal ratios, the others by equal steps. */
+function moving(values: Float64Array, byRatio: readonly boolean[] = []): Moving {
   const copy = () => Float64Array.from(values);
-  return { now: values, from: copy(), to: copy(), aim: copy(), increment: new Float64Array(values.length) };
+  const zeros = () => new Float64Array(values.length);
+  return { now: values, from: copy(), to: copy(), byRatio, power: zeros(), between: copy(), aim: copy(), increment: zeros() };
+}
+
+/** Parts' values move by equal ratios: over decades, too, a slice is then a small part of the way. */
+function partsOf({ plan, values }: CellNumbers): boolean[] {
+  const isPart = ({ kind }: (typeof plan.elements)[number]) => kind === 'conductance' || kind === 'capacitor' || kind === 'inductor';
+  return Array.from(values, (_, i) => i < plan.elements.length && isPart(plan.elements[i]));
 }
 
 /** A voice at its operating point. Throws when a cell's network is singular. */
@@ -137,7 +162,7 @@ export function createVoice(numbers: ChainNumbers): Voice {
       amplifier: createAmplifierState(),
       kinks: oversampling > 1 ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
       softener: createSoftener(),
-      values: moving(Float64Array.from(cell.values)),
+      values: moving(Float64Array.from(cell.values), partsOf(values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
       outputPeakV: 0,
@@ -184,13 +209,30 @@ export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
 function retarget(values: Moving, to: Float64Array): void {
   values.from.set(values.now);
   values.to.set(to);
+  for (let i = 0; i < to.length; i++) {
+    values.power[i] = values.byRatio[i] ? log(to[i] / values.from[i]) : 0;
+  }
 }
 
 /** Aims at a fraction of the whole way, `samples` steps from here. */
-function aim({ now, from, to, aim: end, increment }: Moving, fraction: number, samples: number): void {
-  for (let i = 0; i < now.length; i++) {
-    end[i] = fraction === 1 ? to[i] : from[i] + fraction * (to[i] - from[i]);
-    increment[i] = (end[i] - now[i]) / samples;
+function aim(values: Moving, fraction: number, middle: number, samples: number): void {
+  const { now, to, between, aim: end, increment } = values;
+  place(values, middle, between);
+  if (fraction === 1) end.set(to);
+  else place(values, fraction, end);
+  for (let i = 0; i < now.length; i++) increment[i] = (end[i] - now[i]) / samples;
+}
+
+/** The values after a fraction of the whole way. */
+function place({ from, to, byRatio, power }: Moving, fraction: number, into: Float64Array): void {
+  for (let i = 0; i < from.length; i++) {
+    if (byRatio[i]) {
+      into[i] = fraction * power[i];
+      expAt(into, i);
+      into[i] *= from[i];
+    } else {
+      into[i] = from[i] + fraction * (to[i] - from[i]);
+    }
   }
 }
 
@@ -268,12 +310,13 @@ function advanceAll(voice: Voice, upperCount: number): void {
   const { lanes, ramp, numbers } = voice;
   let at = 0;
   while (at < upperCount && ramp.done < ramp.total) {
-    if (ramp.inSlice === 0) beginSlice(voice, (ramp.done + 1) / ramp.total);
+    if (ramp.inSlice === 0) beginSlice(voice);
     stepSlice(voice);
-    ramp.inSlice += 1;
-    if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
     advanceSlice(voice.drive, lanes, numbers, at, at + 1);
     finish(voice, at, at + 1);
+    for (let channel = 0; channel < lanes.length; channel++) approachMemory(lanes[channel].cell);
+    ramp.inSlice += 1;
+    if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
     at += 1;
   }
   if (at === upperCount) return;
@@ -281,13 +324,16 @@ function advanceAll(voice: Voice, upperCount: number): void {
   finish(voice, at, upperCount);
 }
 
-function beginSlice(voice: Voice, fraction: number): void {
+function beginSlice(voice: Voice): void {
+  const { ramp } = voice;
   const { updateEvery } = voice.numbers;
-  aim(voice.control, fraction, updateEvery);
+  const end = (ramp.done + 1) / ramp.total;
+  const middle = (ramp.done + 0.5) / ramp.total;
+  aim(voice.control, end, middle, updateEvery);
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const { cell, values } = voice.lanes[channel];
-    aim(values, fraction, updateEvery);
-    aimAt(cell, values.aim, updateEvery);
+    aim(values, end, middle, updateEvery);
+    aimAt(cell, values.between, values.aim, updateEvery);
   }
   loadValues(voice.quiet.cell, voice.lanes[0].values.aim);
 }
