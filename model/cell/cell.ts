@@ -74,13 +74,13 @@ export interface Cell {
   readonly kernel: Kernel;
   /** The values in force; changed by `loadValues`. */
   readonly values: Float64Array;
-  /** The same with the next values of what stores charge. */
-  readonly stored: Float64Array;
   readonly reduction: Reduction;
-  /** In force; then those aimed at, and one step of the way there. */
+  /** In force; then those half way to those aimed at, and those aimed at; the next step of the way there, and what it changes by with each. */
   readonly coefficients: Float64Array;
+  readonly middle: Float64Array;
   readonly target: Float64Array;
   readonly increment: Float64Array;
+  readonly bend: Float64Array;
   readonly state: Float64Array;
   readonly stepSec: number;
   readonly rest: RestMemory;
@@ -162,11 +162,12 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
     numbers,
     stateCount: n,
     values: Float64Array.from(numbers.values),
-    stored: new Float64Array(numbers.values.length),
     reduction: createReduction(numbers.plan),
     coefficients: new Float64Array(L.coefficientLayout(n).length),
+    middle: new Float64Array(L.coefficientLayout(n).length),
     target: new Float64Array(L.coefficientLayout(n).length),
     increment: new Float64Array(L.coefficientLayout(n).length),
+    bend: new Float64Array(L.coefficientLayout(n).length),
     state: new Float64Array(slots + L.STATE_SLOTS),
     slots,
     kernel: kernelOf(numbers.law, numbers.plan),
@@ -191,62 +192,59 @@ export function copyOf(cell: Cell): Cell {
 
 /** Puts new values in force; the state stays as it is. False, with the old coefficients kept, when the network would be singular. */
 export function loadValues(cell: Cell, values: Float64Array): boolean {
-  if (!aimAt(cell, values, 1)) return false;
+  if (!pack(cell, values)) return false;
   arrive(cell);
   return true;
 }
 
 /**
- * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients at both ends are exact, between them they follow a
- * straight line, unless values are too far apart for that. What stores charge between samples, and holds a direct voltage, changes at once: half way
- * between two sets it would not stay at rest. False, and nothing changes, when the network would be singular.
+ * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients are exact here, half way, with the values `between`, and
+ * there, and follow the parabola through these, unless values are too far apart for that. False, and nothing changes, when a network would be singular.
  */
-export function aimAt(cell: Cell, values: Float64Array, samples: number): boolean {
-  const { plan } = cell.numbers;
-  const { stored } = cell;
-  let changes = false;
-  stored.set(cell.values);
-  for (let i = 0; i < plan.elements.length; i++) {
-    const { kind } = plan.elements[i];
-    if ((kind !== 'capacitor' && kind !== 'inductor') || values[i] === stored[i]) continue;
-    stored[i] = values[i];
-    changes = true;
+export function aimAt(cell: Cell, between: Float64Array, values: Float64Array, samples: number): boolean {
+  const { coefficients, middle, target, increment, bend } = cell;
+  const near = areNear(cell, values);
+  const solved = pack(cell, between);
+  middle.set(target);
+  if (!solved || !pack(cell, values)) {
+    target.set(coefficients);
+    increment.fill(0);
+    bend.fill(0);
+    return false;
   }
-  if (changes && samples > 1) {
-    if (!headFor(cell, stored, 1)) return false;
-    arrive(cell);
+  if (!near) arrive(cell);
+  for (let i = 0; i < target.length; i++) {
+    const way = target[i] - coefficients[i];
+    const sag = coefficients[i] - 2 * middle[i] + target[i];
+    // A threshold that was or becomes infinite has no way between: it changes on arrival.
+    const moves = near && Number.isFinite(way) && Number.isFinite(sag);
+    bend[i] = moves ? (4 * sag) / (samples * samples) : 0;
+    increment[i] = moves ? (way - 2 * sag) / samples + 0.5 * bend[i] : 0;
   }
-  return headFor(cell, values, samples);
+  return true;
 }
 
-function headFor(cell: Cell, values: Float64Array, samples: number): boolean {
-  const { reduction, stepSec, coefficients, target, increment } = cell;
+/** The coefficients of new values, into `target`. */
+function pack(cell: Cell, values: Float64Array): boolean {
+  const { reduction, stepSec } = cell;
   const { values: moved } = reduction;
   for (let i = 0; i < moved.length; i++) moved[i] = values[i];
   if (!respond(reduction) || !discretise(reduction, stepSec)) {
     for (let i = 0; i < moved.length; i++) moved[i] = cell.values[i];
     respond(reduction);
     discretise(reduction, stepSec);
-    increment.fill(0);
     return false;
   }
-  const near = areNear(cell, values);
   for (let i = 0; i < values.length; i++) cell.values[i] = values[i];
   packStep(cell);
-  if (!near) arrive(cell);
-  for (let i = 0; i < target.length; i++) {
-    // A threshold that was or becomes infinite has no way between: it changes on arrival.
-    const way = target[i] - coefficients[i];
-    increment[i] = Number.isFinite(way) ? way / samples : 0;
-  }
   return true;
 }
 
-/** The most by which a part's value may change along one straight line. */
-const MOST_RATIO = 1.25;
+/** The most by which a part's value may change along one parabola. */
+const MOST_RATIO = 1.5;
 
 /**
- * Whether no part's value changes by more than a quarter. A straight line between the coefficients of circuits further apart leads through what is no
+ * Whether no part's value changes by more than half. A parabola between the coefficients of circuits further apart leads through what is no
  * circuit, and may grow without limit: a move over decades steps there, in its first slices, and is heard as the click that it would be on a board.
  */
 function areNear(cell: Cell, values: Float64Array): boolean {
@@ -260,10 +258,24 @@ function areNear(cell: Cell, values: Float64Array): boolean {
   return true;
 }
 
-/** One step towards the values aimed at. */
+/** One step towards the values aimed at, before a sample: all but what the rows remember. */
 export function approach(cell: Cell): void {
-  const { coefficients, increment } = cell;
-  for (let i = 0; i < coefficients.length; i++) coefficients[i] += increment[i];
+  const { memory, device } = L.coefficientLayout(cell.stateCount);
+  stepOn(cell, 0, memory);
+  stepOn(cell, device, cell.coefficients.length);
+}
+
+/** The same step, after the sample, of what the rows remember: currents of the sample before flowed through the parts as they were then. */
+export function approachMemory(cell: Cell): void {
+  const { memory, device } = L.coefficientLayout(cell.stateCount);
+  stepOn(cell, memory, device);
+}
+
+function stepOn({ coefficients, increment, bend }: Cell, from: number, to: number): void {
+  for (let i = from; i < to; i++) {
+    coefficients[i] += increment[i];
+    increment[i] += bend[i];
+  }
 }
 
 /** The values aimed at, exactly. */

@@ -138,6 +138,7 @@ export function discretise(reduction: Reduction, stepSec: number): boolean {
   for (let row = 0; row < n; row++) addDrives(reduction, row);
   if (!factor(work.left, work.statePivots, n)) return false;
   solve(work.left, work.statePivots, n, work.right, width);
+  scaleMemory(reduction, stepSec);
   for (let i = 0; i < n * width; i++) step[2 * width + i] = work.right[i];
   for (let port = 0; port < 2; port++) {
     const p = (n + port) * plan.width;
@@ -155,6 +156,21 @@ export function discretise(reduction: Reduction, stepSec: number): boolean {
     for (let k = 0; k < plan.noisy.length; k++) step[to + columns.noise + k] += response[p + n + DRIVES + k];
   }
   return true;
+}
+
+/**
+ * Turns each row's memory from a charge over a step into a voltage (a current), by its own storage: at rest it is then the state itself, and so it is
+ * on any line between two sets of coefficients.
+ */
+function scaleMemory({ plan, values, memory, work }: Reduction, stepSec: number): void {
+  const n = plan.states.length;
+  const past = memoryColumns(n).width;
+  const { width } = stepColumns(n, plan.noisy.length);
+  for (let row = 0; row < n; row++) {
+    const own = values[plan.states[row].element] / stepSec;
+    for (let k = 0; k < past; k++) memory[row * past + k] /= own;
+    for (let state = 0; state < n; state++) work.right[state * width + row] *= own;
+  }
 }
 
 /** Adds f₁, and f₀ where the row is trapezoidal. Constants and noise are steady over a step. */

@@ -2,14 +2,27 @@
  * Control and cells closed into one loop at every upper-rate sample.
  *
  * Scheme   a control that does not listen to the output runs ahead of the cells, a slice at a time. A follower of the output is predicted along a straight
- *          line, the cells are solved with that and the follower with their output: the control asked for falls as the control given rises, so
- *          secants within a bracket bring the two together, to 0.1 µV or 24 passes
+ *          line, the cells are solved with that and the follower with their output and with what the control makes of it, which each pass learns
+ *          better: what it asks for is then nearly what it is to be given. Where that does not settle, secants within a bracket; to 0.1 µV
  * Error    against a continuous solution: test/model/chain/loop.test.ts
  */
 import { advanceCell, type Cell } from '../cell/cell.ts';
 import { fillNoise } from '../cell/noise.ts';
 import type { ControlNumbers } from '../control/control.ts';
-import { ENVELOPE, FOLLOWER_SLOTS, follow, HEARD, keepStep, LIMIT_V, NEXT_CONTROL_V, RECTIFIED, REST_V } from '../control/follower.ts';
+import {
+  CHANNEL_WIDTH,
+  CHANNELS,
+  CONTROL_V,
+  FOLLOWER_SLOTS,
+  follow,
+  GIVEN_V,
+  HEARD,
+  keepStep,
+  LIMIT_V,
+  NEXT_CONTROL_V,
+  PER_V,
+  REST_V,
+} from '../control/follower.ts';
 import { runOscillator } from '../control/oscillator.ts';
 import type { GaussianSource } from '../device/random.ts';
 import type { ChainNumbers } from './compile.ts';
@@ -23,22 +36,25 @@ interface Driven {
   readonly gaussian: GaussianSource;
 }
 
-/** After a follower's own memory: the control voltages of the two samples before, V. */
-const CONTROL_V = FOLLOWER_SLOTS;
-const EARLIER_V = FOLLOWER_SLOTS + 1;
-/** While a sample is solved: the bracket; what was given and how much more was asked for, in this pass and in the one before, V. */
-const LOW_V = FOLLOWER_SLOTS + 2;
-const HIGH_V = FOLLOWER_SLOTS + 3;
-const GIVEN_V = FOLLOWER_SLOTS + 4;
-const EXCESS_V = FOLLOWER_SLOTS + 5;
-const LAST_GIVEN_V = FOLLOWER_SLOTS + 6;
-const LAST_EXCESS_V = FOLLOWER_SLOTS + 7;
+/** After a follower's own memory: the control voltage of the sample before the last, V. */
+const EARLIER_V = FOLLOWER_SLOTS;
+/** While a sample is solved: the bracket; what was given and how much more was asked for, in this pass and in the one before, and what was heard then, V. */
+const LOW_V = FOLLOWER_SLOTS + 1;
+const HIGH_V = FOLLOWER_SLOTS + 2;
+const EXCESS_V = FOLLOWER_SLOTS + 3;
+const LAST_GIVEN_V = FOLLOWER_SLOTS + 4;
+const LAST_EXCESS_V = FOLLOWER_SLOTS + 5;
+const LAST_HEARD_V = FOLLOWER_SLOTS + 6;
 const DETECTOR_SLOTS = FOLLOWER_SLOTS + 8;
 
-const MOST_PASSES = 24;
+/** Passes that learn what the control makes of the voltage heard; then those that search within a bracket. */
+const LEARNING = 8;
+const MOST_PASSES = LEARNING + 24;
 const AGREED_V = 1e-7;
 /** Without a pass that halves the excess, the bracket is halved. */
 const TOO_LITTLE = 0.5;
+/** More than this, 1/V, no control makes of a voltage. */
+const MOST_PER_V = 1e3;
 
 export interface Drive {
   readonly control: ControlNumbers;
@@ -82,7 +98,7 @@ export function inheritDrive(drive: Drive, from: Drive): void {
   if (drive.control.kind !== 'follower' || from.control.kind !== 'follower') return;
   drive.detectors.forEach((slots, d) => {
     const theirs = from.detectors[Math.min(d, from.detectors.length - 1)];
-    for (const place of [ENVELOPE, RECTIFIED, CONTROL_V, EARLIER_V]) slots[place] = theirs[place];
+    for (let place = 0; place < slots.length; place++) slots[place] = theirs[place];
   });
 }
 
@@ -130,26 +146,30 @@ function followRecording(drive: Drive, from: number, to: number): void {
   for (let i = from; i < to; i++) controls[0][i] = values[1] + values[0] * recorded[i];
 }
 
+/** How many channels each detector hears. */
+function channelsOf({ detectors }: Drive, lanes: readonly Driven[]): number {
+  return detectors.length === 1 ? lanes.length : 1;
+}
+
 /**
- * What each detector hears at sample `i`, rectified: its own channel's voltage, or the larger of both when they are linked. Results of these
- * functions stand in arrays: a number that a call returns may cost memory.
+ * What each detector hears at sample `i`: its own channel's voltage, or those of both when they are linked. Results of these functions stand in
+ * arrays: a number that a call returns may cost memory.
  */
-function hear(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
-  const { detectors } = drive;
-  for (let d = 0; d < detectors.length; d++) detectors[d][HEARD] = 0;
+function hear({ detectors }: Drive, lanes: readonly Driven[], i: number): void {
   for (let channel = 0; channel < lanes.length; channel++) {
-    const { buffers } = lanes[channel].oversampler;
-    const v = buffers[buffers.length - 1][i];
     const slots = detectors[Math.min(channel, detectors.length - 1)];
-    slots[HEARD] = Math.max(slots[HEARD], fullWave ? Math.abs(v) : v);
+    const place = detectors.length === 1 ? channel : 0;
+    slots[CHANNELS + CHANNEL_WIDTH * place + HEARD] = top(lanes[channel])[i];
   }
 }
 
 function followInput(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
   const { detectors, values, controls } = drive;
-  hear(drive, lanes, fullWave, i);
+  const heardChannels = channelsOf(drive, lanes);
+  hear(drive, lanes, i);
   for (let d = 0; d < detectors.length; d++) {
-    follow(values, detectors[d]);
+    detectors[d][GIVEN_V] = detectors[d][CONTROL_V];
+    follow(values, detectors[d], fullWave, heardChannels);
     keepStep(detectors[d]);
     controls[d][i] = detectors[d][NEXT_CONTROL_V];
   }
@@ -158,6 +178,7 @@ function followInput(drive: Drive, lanes: readonly Driven[], fullWave: boolean, 
 /** Solves sample `i` with the predicted control, then with better ones, until the control given and the control asked for agree. */
 function closeLoop(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i: number): void {
   const { detectors, controls, saved, values } = drive;
+  const heardChannels = channelsOf(drive, lanes);
   for (let d = 0; d < detectors.length; d++) predict(values, detectors[d]);
   for (let channel = 0; channel < lanes.length; channel++) {
     const { cell } = lanes[channel];
@@ -171,46 +192,68 @@ function closeLoop(drive: Drive, lanes: readonly Driven[], fullWave: boolean, i:
     for (let channel = 0; channel < lanes.length; channel++) {
       advanceCell(lanes[channel].cell, top(lanes[channel]), controls[channel], i, i + 1, lanes[channel].noise, lanes[channel].kinks);
     }
-    hear(drive, lanes, fullWave, i);
+    hear(drive, lanes, i);
     let agreed = true;
     for (let d = 0; d < detectors.length; d++) {
-      compare(values, detectors[d], pass);
-      if (Math.abs(detectors[d][EXCESS_V]) > AGREED_V) agreed = false;
+      const slots = detectors[d];
+      if (pass > 0 && pass < LEARNING) learn(slots, heardChannels);
+      follow(values, slots, fullWave, heardChannels);
+      slots[EXCESS_V] = slots[NEXT_CONTROL_V] - slots[GIVEN_V];
+      if (Math.abs(slots[EXCESS_V]) > AGREED_V) agreed = false;
     }
     if (agreed || pass === MOST_PASSES - 1) break;
-    for (let d = 0; d < detectors.length; d++) if (Math.abs(detectors[d][EXCESS_V]) > AGREED_V) improve(detectors[d], pass);
+    for (let d = 0; d < detectors.length; d++)
+      if (Math.abs(detectors[d][EXCESS_V]) > AGREED_V) improve(values, detectors[d], heardChannels, pass);
   }
-  for (let d = 0; d < detectors.length; d++) takeStep(detectors[d]);
+  for (let d = 0; d < detectors.length; d++) {
+    detectors[d][EARLIER_V] = detectors[d][CONTROL_V];
+    keepStep(detectors[d]);
+  }
 }
 
 function predict(values: Float64Array, slots: Float64Array): void {
   const low = Math.min(values[REST_V], values[LIMIT_V]);
   const high = Math.max(values[REST_V], values[LIMIT_V]);
-  slots[LOW_V] = low;
-  slots[HIGH_V] = high;
   slots[GIVEN_V] = Math.min(high, Math.max(low, 2 * slots[CONTROL_V] - slots[EARLIER_V]));
 }
 
-/** How much more control the present output asks for than it was given; it narrows the bracket. */
-function compare(values: Float64Array, slots: Float64Array, pass: number): void {
-  follow(values, slots);
-  if (pass > 0 && slots[GIVEN_V] === slots[LAST_GIVEN_V]) return;
-  const excess = slots[NEXT_CONTROL_V] - slots[GIVEN_V];
-  slots[EXCESS_V] = excess;
-  if (excess > 0) slots[LOW_V] = slots[GIVEN_V];
-  else slots[HIGH_V] = slots[GIVEN_V];
+/** What the control makes of each voltage heard, from this pass and the one before: v is in proportion to 1/(1 + p·(given − last control)). */
+function learn(slots: Float64Array, channels: number): void {
+  const now = slots[GIVEN_V] - slots[CONTROL_V];
+  const then = slots[LAST_GIVEN_V] - slots[CONTROL_V];
+  if (now === then) return;
+  for (let channel = 0; channel < channels; channel++) {
+    const at = CHANNELS + CHANNEL_WIDTH * channel;
+    const v = slots[at + HEARD];
+    const earlier = slots[LAST_HEARD_V + channel];
+    const perV = (earlier - v) / (v * now - earlier * then);
+    if (Math.abs(perV) < MOST_PER_V) slots[at + PER_V] = perV;
+  }
 }
 
-/** The next control to give: at first the one asked for, then the secant's, and half way where that leaves the bracket or gains too little. */
-function improve(slots: Float64Array, pass: number): void {
+/**
+ * The next control to give: the one asked for, while passes learn; then, what they have learnt being kept, the excess falls as more is given, and the
+ * secant's, or half way where that leaves the bracket or gains too little.
+ */
+function improve(values: Float64Array, slots: Float64Array, channels: number, pass: number): void {
   const given = slots[GIVEN_V];
   const excess = slots[EXCESS_V];
-  const change = excess - slots[LAST_EXCESS_V];
-  const gains = pass < 2 || Math.abs(excess) < TOO_LITTLE * Math.abs(slots[LAST_EXCESS_V]);
-  let next = pass === 0 || change === 0 ? given + excess : given - (excess * (given - slots[LAST_GIVEN_V])) / change;
-  if (!(gains && next >= slots[LOW_V] && next <= slots[HIGH_V])) next = 0.5 * (slots[LOW_V] + slots[HIGH_V]);
+  if (pass === LEARNING) {
+    slots[LOW_V] = Math.min(values[REST_V], values[LIMIT_V]);
+    slots[HIGH_V] = Math.max(values[REST_V], values[LIMIT_V]);
+  }
+  let next = slots[NEXT_CONTROL_V];
+  if (pass >= LEARNING) {
+    if (excess > 0) slots[LOW_V] = given;
+    else slots[HIGH_V] = given;
+    const change = excess - slots[LAST_EXCESS_V];
+    if (pass > LEARNING && change !== 0) next = given - (excess * (given - slots[LAST_GIVEN_V])) / change;
+    const gains = pass < LEARNING + 2 || Math.abs(excess) < TOO_LITTLE * Math.abs(slots[LAST_EXCESS_V]);
+    if (!(gains && next >= slots[LOW_V] && next <= slots[HIGH_V])) next = 0.5 * (slots[LOW_V] + slots[HIGH_V]);
+  }
   slots[LAST_GIVEN_V] = given;
   slots[LAST_EXCESS_V] = excess;
+  for (let channel = 0; channel < channels; channel++) slots[LAST_HEARD_V + channel] = slots[CHANNELS + CHANNEL_WIDTH * channel + HEARD];
   slots[GIVEN_V] = next;
 }
 
@@ -221,10 +264,4 @@ function restore(lanes: readonly Driven[], saved: readonly Float64Array[], i: nu
     top(lanes[channel])[i] = saved[channel][state.length];
     if (lanes[channel].kinks.length > 0) lanes[channel].kinks[0] = saved[channel][state.length + 1];
   }
-}
-
-function takeStep(slots: Float64Array): void {
-  keepStep(slots);
-  slots[EARLIER_V] = slots[CONTROL_V];
-  slots[CONTROL_V] = slots[NEXT_CONTROL_V];
 }

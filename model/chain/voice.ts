@@ -1,11 +1,24 @@
 /**
  * One complete path of a chain, for one shape of circuit: oversamplers, cells, control and amplifier with their state. Values move along straight
- * lines in conductance, capacitance, volts and gain; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
+ * lines in volts and gain, by equal ratios in conductance, capacitance and inductance; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
  * its coefficients go from one exact set to the next as `aimAt` in cell.ts says.
  */
-import { advanceCell, aimAt, approach, arrive, type Cell, createCell, inheritStates, loadValues, settle } from '../cell/cell.ts';
+import {
+  advanceCell,
+  aimAt,
+  approach,
+  approachMemory,
+  arrive,
+  type Cell,
+  createCell,
+  inheritStates,
+  loadValues,
+  settle,
+} from '../cell/cell.ts';
+import type { CellNumbers } from '../cell/cell.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
+import { expAt, log } from '../device/math.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
 import { createAmplifierState, processAmplifier } from './amplifier.ts';
 import { createKinks } from '../cell/kernels/kinks.ts';
@@ -28,7 +41,11 @@ interface Moving {
   readonly now: Float64Array;
   readonly from: Float64Array;
   readonly to: Float64Array;
-  /** Where the present slice ends, and one sample's part of the way. */
+  readonly byRatio: readonly boolean[];
+  /** Of those that move by ratio: the logarithm of the whole one. */
+  readonly power: Float64Array;
+  /** The middle and the end of the present slice, and one sample's part of the way. */
+  readonly between: Float64Array;
   readonly aim: Float64Array;
   readonly increment: Float64Array;
 }
@@ -125,9 +142,17 @@ export interface Voice {
   residual: Residual | null;
 }
 
-function moving(values: Float64Array): Moving {
+/** `byRatio` marks values that move by equal ratios, the others by equal steps. */
+function moving(values: Float64Array, byRatio: readonly boolean[] = []): Moving {
   const copy = () => Float64Array.from(values);
-  return { now: values, from: copy(), to: copy(), aim: copy(), increment: new Float64Array(values.length) };
+  const zeros = () => new Float64Array(values.length);
+  return { now: values, from: copy(), to: copy(), byRatio, power: zeros(), between: copy(), aim: copy(), increment: zeros() };
+}
+
+/** Parts' values move by equal ratios: over decades, too, a slice is then a small part of the way. */
+function partsOf({ plan, values }: CellNumbers): boolean[] {
+  const isPart = ({ kind }: (typeof plan.elements)[number]) => kind === 'conductance' || kind === 'capacitor' || kind === 'inductor';
+  return Array.from(values, (_, i) => i < plan.elements.length && isPart(plan.elements[i]));
 }
 
 /** A voice at its operating point. Throws when a cell's network is singular. */
@@ -150,7 +175,7 @@ export function createVoice(numbers: ChainNumbers): Voice {
       softener: createSoftener(bendTable(oversampling)),
       amplifierKinks: isReal ? createKinks(LONGEST_BLOCK * oversampling) : new Float64Array(0),
       amplifierSoftener: createSoftener(lagTable(oversampling)),
-      values: moving(Float64Array.from(cell.values)),
+      values: moving(Float64Array.from(cell.values), partsOf(values)),
       noise: new Float64Array(noiseLength),
       gaussian: createGaussian((noiseSeed ?? 0) + 0x9e37 * channel),
       outputPeakV: 0,
@@ -203,13 +228,30 @@ export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
 function retarget(values: Moving, to: Float64Array): void {
   values.from.set(values.now);
   values.to.set(to);
+  for (let i = 0; i < to.length; i++) {
+    values.power[i] = values.byRatio[i] ? log(to[i] / values.from[i]) : 0;
+  }
 }
 
 /** Aims at a fraction of the whole way, `samples` steps from here. */
-function aim({ now, from, to, aim: end, increment }: Moving, fraction: number, samples: number): void {
-  for (let i = 0; i < now.length; i++) {
-    end[i] = fraction === 1 ? to[i] : from[i] + fraction * (to[i] - from[i]);
-    increment[i] = (end[i] - now[i]) / samples;
+function aim(values: Moving, fraction: number, middle: number, samples: number): void {
+  const { now, to, between, aim: end, increment } = values;
+  place(values, middle, between);
+  if (fraction === 1) end.set(to);
+  else place(values, fraction, end);
+  for (let i = 0; i < now.length; i++) increment[i] = (end[i] - now[i]) / samples;
+}
+
+/** The values after a fraction of the whole way. */
+function place({ from, to, byRatio, power }: Moving, fraction: number, into: Float64Array): void {
+  for (let i = 0; i < from.length; i++) {
+    if (byRatio[i]) {
+      into[i] = fraction * power[i];
+      expAt(into, i);
+      into[i] *= from[i];
+    } else {
+      into[i] = from[i] + fraction * (to[i] - from[i]);
+    }
   }
 }
 
@@ -296,13 +338,14 @@ function advanceAll(voice: Voice, upperCount: number): boolean {
   let at = 0;
   let regular = true;
   while (at < upperCount && ramp.done < ramp.total) {
-    if (ramp.inSlice === 0) regular = beginSlice(voice, (ramp.done + 1) / ramp.total) && regular;
+    if (ramp.inSlice === 0) regular = beginSlice(voice) && regular;
     stepSlice(voice);
-    ramp.inSlice += 1;
-    if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
     advanceSlice(voice.drive, lanes, numbers, at, at + 1);
     if (voice.residual !== null) advanceResidual(voice.residual, voice, at, at + 1);
     finish(voice, at, at + 1);
+    for (let channel = 0; channel < lanes.length; channel++) approachMemory(lanes[channel].cell);
+    ramp.inSlice += 1;
+    if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
     at += 1;
   }
   if (at < upperCount) {
@@ -325,14 +368,17 @@ function leaveResidual(voice: Voice, residual: Residual, outputs: readonly Float
 }
 
 /** False where the slice's values make a singular network: that cell stays as it is. */
-function beginSlice(voice: Voice, fraction: number): boolean {
+function beginSlice(voice: Voice): boolean {
+  const { ramp } = voice;
   const { updateEvery } = voice.numbers;
   let regular = true;
-  aim(voice.control, fraction, updateEvery);
+  const end = (ramp.done + 1) / ramp.total;
+  const middle = (ramp.done + 0.5) / ramp.total;
+  aim(voice.control, end, middle, updateEvery);
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const { cell, values } = voice.lanes[channel];
-    aim(values, fraction, updateEvery);
-    if (!aimAt(cell, values.aim, updateEvery)) regular = false;
+    aim(values, end, middle, updateEvery);
+    if (!aimAt(cell, values.between, values.aim, updateEvery)) regular = false;
   }
   return loadValues(voice.quiet.cell, voice.lanes[0].values.aim) && regular;
 }

@@ -6,7 +6,17 @@
  * Valid    a steady tone, long after attack and release; one that follows the output hears a small tone's gain
  */
 import { cosTurns } from '../../model/device/math.ts';
-import { ENVELOPE, FOLLOWER_SLOTS, follow, followerValues, HEARD, keepStep, RECTIFIED } from '../../model/control/follower.ts';
+import {
+  BEFORE,
+  CHANNELS,
+  EARLIER,
+  ENVELOPE,
+  FOLLOWER_SLOTS,
+  follow,
+  followerValues,
+  HEARD,
+  keepStep,
+} from '../../model/control/follower.ts';
 import type { Control, Design } from '../../model/design/types.ts';
 import { deviceOf } from '../../model/cell/fromDesign.ts';
 import { conductsFromV } from '../../model/device/junction.ts';
@@ -54,18 +64,16 @@ export function followerCurve(design: Design, variantIndex: number, control: Env
 /** Mean of the envelope of a tone of 1 V peak once it repeats, V. */
 export function steadyEnvelope(control: Envelope, toneHz: number): number {
   const values = followerValues(control, POINTS * toneHz);
-  const rectified = (n: number) => {
-    const v = cosTurns((n % POINTS) / POINTS);
-    return control.rectifier === 'full' ? Math.abs(v) : Math.max(v, 0);
-  };
+  const toneAt = (n: number) => cosTurns((n % POINTS) / POINTS);
   const over = (startV: number) => {
     const slots = new Float64Array(FOLLOWER_SLOTS);
     slots[ENVELOPE] = startV;
-    slots[RECTIFIED] = rectified(0);
+    slots[CHANNELS + EARLIER] = toneAt(POINTS - 1);
+    slots[CHANNELS + BEFORE] = toneAt(0);
     let sum = 0;
     for (let n = 0; n < POINTS; n++) {
-      slots[HEARD] = rectified(n + 1);
-      follow(values, slots);
+      slots[CHANNELS + HEARD] = toneAt(n + 1);
+      follow(values, slots, control.rectifier === 'full', 1);
       keepStep(slots);
       sum += slots[ENVELOPE];
     }

@@ -163,33 +163,6 @@ test('a move of values makes no step larger than the slope that the signal had',
   expect(Math.abs(after[0] - before[before.length - 1])).toBeLessThan(steepest(before) * 1.1);
 });
 
-test.each([
-  ['seriesOhm 10 k to 22 k', { cell: { ...REAL_CELL, seriesOhm: 22000 } }],
-  ['k ½ to ⅓', { cell: { ...REAL_CELL, feedback: { kind: 'resistor', drainOhm: 9.4e5, blockingF: 1e-7 } } }],
-  ['loadF 100 pF to 1 nF', { cell: { ...REAL_CELL, loadF: 1e-9 } }],
-  [
-    'gate blocking 100 nF to 150 nF',
-    { cell: { ...REAL_CELL, feedback: { ...REAL_CELL.feedback, blockingF: 1.5e-7 } as Cell['feedback'] } },
-  ],
-  ['another part', { device: { ...REAL_DEVICE, idssA: 0.006, gateOffV: -2 } }],
-  ['the control', { control: { source: 'fixed', controlV: -1.4 } }],
-] as [string, Partial<Variant>][])(
-  '%s: moved with matrices made every 64 samples, under −80 dB from the same move with one at every sample',
-  (_, change) => {
-    const still = withVariant(DESIGN, { control: { source: 'fixed', controlV: -1.1 } });
-    const play = (updateEvery: number) => {
-      const chain = createChain({ ...compileChain(still, 0, RATE, 1, 'lowLatency'), updateEvery });
-      run(chain, tone(4800), 128);
-      moveChain(chain, compileChain(withVariant(still, change), 0, RATE, 1, 'lowLatency'));
-      return run(chain, tone(1920), 128);
-    };
-    const coarse = play(64);
-    const fine = play(1);
-    const power = (samples: Float32Array) => samples.reduce((sum, v) => sum + v * v, 0);
-    expect(10 * Math.log10(power(coarse.map((v, i) => v - fine[i])) / power(fine) + 1e-30)).toBeLessThan(-80);
-  },
-);
-
 test('a move through values without a path to ground is counted, and the last good ones sound on until there are others', () => {
   const resistive = designOf(variantOf(CELL_A, CELL_A_DEVICE, TREMOLO));
   const chain = chainOf(resistive);

@@ -61,7 +61,10 @@ test.each([
   [['play'], '"play" is not a command; expected render, measure or schema'],
   [['measure', 'a.json', '--tonehz', '5'], '--tonehz is not an option; expected --toneHz, perhaps'],
   [['measure', 'a.json', '-x'], '-x is not an option; fettle --help lists them'],
-  [['render', 'a.json', 'b', 'c', '--json'], '--json is not an option of render; expected --variant, --set, --format, --dither, --control or --residual'],
+  [
+    ['render', 'a.json', 'b', 'c', '--json'],
+    '--json is not an option of render; expected --variant, --set, --format, --dither, --control or --residual',
+  ],
   [['schema', '--json'], '--json is not an option of schema; it has none'],
   [['measure'], 'measure is given no files; expected 1 (DESIGN)'],
   [['render', 'a.json'], 'render is given 1 file; expected 3 (DESIGN IN.wav OUT.wav)'],
