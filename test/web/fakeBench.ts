@@ -49,6 +49,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
   const variant = computed(() => document.design.value.variants[document.heardVariant.value]);
   const k = computed(() => feedbackFraction(variant.value.cell));
   return {
+    restored: Promise.resolve(),
     ...document,
     openDesign: asyncNone,
     openExample: asyncNone,
@@ -136,7 +137,8 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     endTake: none,
     renderClip: asyncNone,
     endRender: none,
-    saveTake: none,
+    saveTake: asyncNone,
+    takesLast: signal('lasting'),
     deleteTake: (id) =>
       assign(
         takes,
@@ -152,7 +154,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
         takes,
         takes.value.map((take) => (take.id === id ? { ...take, name } : take)),
       ),
-    playTake: none,
+    playTake: asyncNone,
     playingTake: signal(null),
     notes,
     dismiss: (id) =>

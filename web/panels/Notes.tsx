@@ -9,11 +9,23 @@ export function Notes() {
   if (notes.length === 0) return null;
   return (
     <div class="notes">
-      {notes.map(({ id, kind, sentence, advice, list }, index) => (
+      {notes.map(({ id, kind, sentence, advice, list, offer }, index) => (
         <Note key={id} kind={kind} sentence={sentence} advice={advice} list={list}>
           {failed && kind === 'fault' && index === notes.length - 1 && (
             <button type="button" class="button small" onClick={() => void bench.start()}>
               Start again
+            </button>
+          )}
+          {offer !== undefined && (
+            <button
+              type="button"
+              class="button small"
+              onClick={() => {
+                offer.run();
+                bench.dismiss(id);
+              }}
+            >
+              {offer.words}
             </button>
           )}
           <button type="button" class="button small" onClick={() => bench.dismiss(id)}>
