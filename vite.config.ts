@@ -1,5 +1,6 @@
-import { cpSync } from 'node:fs';
-import { basename } from 'node:path';
+import { createHash } from 'node:crypto';
+import { cpSync, readdirSync, readFileSync } from 'node:fs';
+import { basename, join, relative } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { gzipSync } from 'node:zlib';
 import type { Plugin, Rolldown } from 'vite';
@@ -7,6 +8,9 @@ import { defineConfig } from 'vitest/config';
 
 /** JavaScript that a first visit may load, compressed, in kB of 1000 bytes. The README states the same number. */
 const FIRST_LOAD_LIMIT_KB = 300;
+
+/** The worker that serves the page without a network stands at the root, since it serves what lies below it. */
+const OFFLINE = 'offline.js';
 
 const here = (path: string) => fileURLToPath(new URL(path, import.meta.url));
 
@@ -42,12 +46,41 @@ const reloadWithModel: Plugin = {
   },
 };
 
+const isFetched = (path: string) => !/\.(mjs|js|ts|py|sh)$|screenshots/.test(path);
+
 /** Copies what the page fetches out of assets/, and leaves the scripts that made it behind. */
 const assetsWithoutScripts: Plugin = {
   name: 'fettle-assets',
   apply: 'build',
-  writeBundle: () =>
-    cpSync(here('assets'), here('dist'), { recursive: true, filter: (path) => !/\.(mjs|js|ts|py|sh)$|screenshots/.test(path) }),
+  writeBundle: () => cpSync(here('assets'), here('dist'), { recursive: true, filter: isFetched }),
+};
+
+/** Puts into the worker that serves the page without a network what the page consists of, each file with a revision that follows from its bytes. */
+const offlineFiles: Plugin = {
+  name: 'fettle-offline',
+  apply: 'build',
+  generateBundle: {
+    order: 'post',
+    handler(_options, bundle) {
+      const worker = bundle[OFFLINE];
+      if (worker?.type !== 'chunk') throw new Error(`The build made no ${OFFLINE}`);
+      const revisions: Record<string, string> = {};
+      const revisionOf = (bytes: string | Uint8Array) => createHash('sha256').update(bytes).digest('hex').slice(0, 12);
+      for (const file of Object.values(bundle)) {
+        if (file === worker || file.fileName.endsWith('.map')) continue;
+        revisions[file.fileName] = revisionOf(file.type === 'chunk' ? file.code : file.source);
+      }
+      for (const entry of readdirSync(here('assets'), { recursive: true, withFileTypes: true })) {
+        const path = relative(here('assets'), join(entry.parentPath, entry.name)).replaceAll('\\', '/');
+        if (entry.isFile() && isFetched(path)) revisions[path] = revisionOf(readFileSync(here(`assets/${path}`)));
+      }
+      const { phrases } = JSON.parse(readFileSync(here('assets/phrases/manifest.json'), 'utf8'));
+      const onDemand = phrases.slice(1).map(({ file }: { file: string }) => `phrases/${file}`);
+      worker.code = worker.code
+        .replaceAll('FETTLE_FILES', `(${JSON.stringify(revisions)})`)
+        .replaceAll('FETTLE_ON_DEMAND', JSON.stringify(onDemand));
+    },
+  },
 };
 
 /**
@@ -89,7 +122,7 @@ export default defineConfig({
   root: here('web'),
   base: './',
   publicDir: here('assets'),
-  plugins: [policy, reloadWithModel, assetsWithoutScripts, firstLoadBudget],
+  plugins: [policy, reloadWithModel, assetsWithoutScripts, offlineFiles, firstLoadBudget],
   oxc: { jsx: { runtime: 'automatic', importSource: 'preact' } },
   worker: { format: 'es' },
   server: { host: 'localhost', fs: { allow: [here('.')] } },
@@ -103,7 +136,11 @@ export default defineConfig({
     copyPublicDir: false,
     reportCompressedSize: false,
     // Our own plugins take most of so short a build, which is no news to anyone who starts the page.
-    rolldownOptions: { checks: { pluginTimings: false } },
+    rolldownOptions: {
+      checks: { pluginTimings: false },
+      input: { index: here('web/index.html'), offline: here('web/workers/offline.ts') },
+      output: { entryFileNames: ({ name }) => (name === 'offline' ? OFFLINE : 'assets/[name]-[hash].js') },
+    },
   },
   test: {
     root: here('.'),

@@ -18,4 +18,10 @@ import './style/narrow.css';
 const place = document.getElementById('sheet');
 if (place === null) throw new Error('The page has no place for the sheet');
 const missing = missingForPage();
-render(missing.length > 0 ? <Missing features={missing} /> : <Sheet bench={createBench()} />, place);
+if (missing.length > 0) render(<Missing features={missing} />, place);
+else {
+  const bench = createBench();
+  // What was kept is there within a few milliseconds as a rule; waiting for it spares the sight of another design.
+  const patience = new Promise((resolve) => setTimeout(resolve, 300));
+  void Promise.race([bench.restored, patience]).then(() => render(<Sheet bench={bench} />, place));
+}

@@ -9,7 +9,7 @@ import type { Measured, Meter } from './meter.ts';
 import { createMeter, processMeter, returnReport } from './meter.ts';
 import { choose, createMix, processMix, setGains } from './mix.ts';
 import { createMonitor, processMonitor, setCeiling, setGain, setMuted } from './monitor.ts';
-import type { CellOptions, FromCell, Heard, Match, ResidualChoice, ToCell } from './protocol.ts';
+import type { CellOptions, FromCell, Heard, Match, ResidualChoice, ReturnedChunk, ToCell } from './protocol.ts';
 import { PREVIOUS_SLOT, SLOTS } from './protocol.ts';
 import type { Recorder } from './recorder.ts';
 import { createRecorder, endRecording, processRecorder, returnChunk, startRecording } from './recorder.ts';
@@ -49,7 +49,7 @@ export class CellProcessor extends AudioWorkletProcessor {
     const monitor = createMonitor(gain, ceilingPeak, muted, sampleRate);
     this.measured = { bank, mix, monitor, load: createLoad() };
     this.meter = createMeter(this.port, sampleRate);
-    this.recorder = createRecorder(this.port, channels);
+    this.recorder = createRecorder(this.port, channels, sampleRate);
     this.inputs = Array.from({ length: channels }, () => this.silence);
     this.asides = Array.from({ length: channels }, () => this.silence);
     this.sources = Array.from({ length: SOURCES }, () => this.asides);
@@ -147,7 +147,7 @@ export class CellProcessor extends AudioWorkletProcessor {
         setMuted(monitor, message.on);
         return;
       case 'record':
-        message.on ? startRecording(this.recorder) : endRecording(this.recorder);
+        message.on ? this.record(message.to ?? null) : endRecording(this.recorder);
         return;
       case 'return report':
         returnReport(this.meter, message.slot, message.input, message.output);
@@ -162,6 +162,12 @@ export class CellProcessor extends AudioWorkletProcessor {
         message satisfies never;
         throw new TypeError(`The cell's processor does not know the message ${JSON.stringify(message)}`);
     }
+  }
+
+  private record(to: MessagePort | null): void {
+    startRecording(this.recorder, to ?? this.port);
+    if (to === null) return;
+    to.onmessage = ({ data }: MessageEvent<ReturnedChunk>) => returnChunk(this.recorder, data.slot, data.channels);
   }
 
   private turnTo(focus: number, heard: Heard): void {

@@ -60,7 +60,8 @@ export type ToCell =
   | { readonly type: 'gain'; readonly gain: number }
   | { readonly type: 'ceiling'; readonly peak: number }
   | { readonly type: 'mute'; readonly on: boolean }
-  | { readonly type: 'record'; readonly on: boolean }
+  /** Chunks go to the page, or through `to` straight to whoever keeps them, and come back the same way. */
+  | { readonly type: 'record'; readonly on: boolean; readonly to?: MessagePort }
   | {
       readonly type: 'return report';
       readonly slot: number;
@@ -120,6 +121,13 @@ export interface Report {
   ceilingFrames: number;
   /** How far the audio clock is behind the wall clock, ms, up to a constant: where its least value steps up, there was a gap in the sound. */
   lagMs: number;
+}
+
+/** A chunk's arrays on their way back. */
+export interface ReturnedChunk {
+  readonly type: 'return chunk';
+  readonly slot: number;
+  readonly channels: Float32Array<ArrayBuffer>[];
 }
 
 /** Part of a take: `frames` samples of each channel from context frame `frame` on, without a gap from the chunk before. */

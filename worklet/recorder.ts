@@ -1,11 +1,13 @@
 /**
- * Records what is chosen to be heard: chunks of 8192 frames with their frame numbers, from a pool, without a gap.
+ * Records what is chosen to be heard: chunks of 8192 frames, or 0.2 s where that is less, with their frame numbers, from a pool, without a gap.
  * The pool lasts 2.7 s at 48 kHz; should the page be silent for longer, the frames that found no chunk are counted and told.
  */
 import type { Post } from './meter.ts';
 import type { Chunk } from './protocol.ts';
 
 export const CHUNK_FRAMES = 8192;
+/** Where that many last longer than this, fewer make a chunk: what is in one is lost when the page is killed. */
+const LONGEST_SEC = 0.2;
 const POOL = 16;
 
 export interface Recorder {
@@ -16,18 +18,22 @@ export interface Recorder {
   on: boolean;
   slot: number;
   lostFrames: number;
+  /** Where chunks go. */
+  to: Post;
 }
 
-export function createRecorder(post: Post, channels: number): Recorder {
+export function createRecorder(post: Post, channels: number, sampleRateHz: number): Recorder {
+  const chunkFrames = Math.min(CHUNK_FRAMES, Math.ceil(LONGEST_SEC * sampleRateHz));
   const chunks = Array.from({ length: POOL }, (_, slot): Chunk => {
-    const lines = Array.from({ length: channels }, () => new Float32Array(CHUNK_FRAMES));
+    const lines = Array.from({ length: channels }, () => new Float32Array(chunkFrames));
     return { type: 'chunk', slot, frame: 0, frames: 0, channels: lines, last: false };
   });
   const transfers = chunks.map((chunk): Transferable[] => chunk.channels.map((line) => line.buffer));
-  return { post, chunks, transfers, free: chunks.map(() => true), on: false, slot: -1, lostFrames: 0 };
+  return { post, chunks, transfers, free: chunks.map(() => true), on: false, slot: -1, lostFrames: 0, to: post };
 }
 
-export function startRecording(recorder: Recorder): void {
+export function startRecording(recorder: Recorder, to: Post = recorder.post): void {
+  recorder.to = to;
   recorder.on = true;
   recorder.lostFrames = 0;
 }
@@ -38,7 +44,7 @@ export function endRecording(recorder: Recorder): void {
   recorder.on = false;
   if (recorder.lostFrames > 0) recorder.post.postMessage({ type: 'lost', frames: recorder.lostFrames }, []);
   if (recorder.slot >= 0) send(recorder, true);
-  else recorder.post.postMessage({ type: 'chunk', slot: -1, frame: 0, frames: 0, channels: [], last: true } satisfies Chunk, []);
+  else recorder.to.postMessage({ type: 'chunk', slot: -1, frame: 0, frames: 0, channels: [], last: true } satisfies Chunk, []);
 }
 
 export function processRecorder(recorder: Recorder, frame: number, outputs: readonly Float32Array[]): void {
@@ -51,7 +57,7 @@ export function processRecorder(recorder: Recorder, frame: number, outputs: read
     const chunk = recorder.chunks[recorder.slot];
     for (let c = 0; c < outputs.length; c++) chunk.channels[c][chunk.frames] = outputs[c][n];
     chunk.frames++;
-    if (chunk.frames === CHUNK_FRAMES) send(recorder, false);
+    if (chunk.frames === chunk.channels[0].length) send(recorder, false);
   }
 }
 
@@ -79,6 +85,6 @@ function takeSlot(recorder: Recorder, frame: number): boolean {
 function send(recorder: Recorder, last: boolean): void {
   const chunk = recorder.chunks[recorder.slot];
   chunk.last = last;
-  recorder.post.postMessage(chunk, recorder.transfers[recorder.slot]);
+  recorder.to.postMessage(chunk, recorder.transfers[recorder.slot]);
   recorder.slot = -1;
 }

@@ -15,7 +15,8 @@ import type { Cell, Control, Variant } from './types.ts';
 import { plainly } from './wording.ts';
 
 /** Which resistors of a pair make another k: one of them, or both so that their sum or the value of both in parallel stays. */
-export type Moves = 'drainOhm' | 'controlOhm' | 'bothKeepSum' | 'bothKeepParallel';
+export const MOVES = ['drainOhm', 'controlOhm', 'bothKeepSum', 'bothKeepParallel'] as const;
+export type Moves = (typeof MOVES)[number];
 
 /** k, 0 to 1. */
 export function feedbackFraction(cell: Cell): number {

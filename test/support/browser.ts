@@ -3,7 +3,7 @@
 import { existsSync, readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import { fileURLToPath } from 'node:url';
-import { type Browser, chromium, type Page } from 'playwright-core';
+import { type Browser, type BrowserContext, chromium, type Page } from 'playwright-core';
 import { createServer, preview } from 'vite';
 import { findChromium } from './chromium.ts';
 
@@ -28,7 +28,17 @@ export interface Site {
 export async function serveDist(): Promise<Site> {
   if (!existsSync(fileURLToPath(new URL('../../dist/index.html', import.meta.url))))
     throw new Error('dist/ is empty: run npm run build first');
-  const server = await preview({ configFile, logLevel: 'warn', preview: { port: 4300, host: 'localhost', open: false } });
+  return serveFolder(fileURLToPath(new URL('../../dist', import.meta.url)));
+}
+
+/** The same for a copy of it. */
+export async function serveFolder(outDir: string): Promise<Site> {
+  const server = await preview({
+    configFile,
+    logLevel: 'warn',
+    build: { outDir },
+    preview: { port: 4300, host: 'localhost', open: false },
+  });
   return siteOf(server.resolvedUrls, () => server.close());
 }
 
@@ -59,6 +69,18 @@ export function launchBrowser(options: BrowserOptions = {}): Promise<Browser> {
     headless: true,
     chromiumSandbox: false,
     args: [...FLAGS, ...autoplay, ...(options.flags ?? [])],
+  });
+}
+
+/** A browser with a profile in `folder`: what its pages keep stays there when it is closed or killed. */
+export function openProfile(folder: string): Promise<BrowserContext> {
+  return chromium.launchPersistentContext(folder, {
+    executablePath: findChromium(),
+    headless: true,
+    chromiumSandbox: false,
+    viewport: { width: 1280, height: 800 },
+    acceptDownloads: true,
+    args: FLAGS,
   });
 }
 

@@ -62,7 +62,7 @@ const RULES: readonly Rule[] = [
   {
     room: 'web/',
     may: ['worklet/protocol.ts', ...MODEL, 'assets/designs/'],
-    packages: ['preact', '@preact/signals', 'tone', 'standardized-audio-context', 'uplot'],
+    packages: ['preact', '@preact/signals', 'idb', 'tone', 'standardized-audio-context', 'uplot'],
   },
 ];
 

@@ -62,6 +62,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
   const variant = computed(() => document.design.value.variants[document.heardVariant.value]);
   const k = computed(() => feedbackFraction(variant.value.cell));
   return {
+    restored: Promise.resolve(),
     ...document,
     openDesign: asyncNone,
     openExample: asyncNone,
@@ -157,7 +158,8 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     endTake: none,
     renderClip: asyncNone,
     endRender: none,
-    saveTake: none,
+    saveTake: asyncNone,
+    takesLast: signal('lasting'),
     deleteTake: (id) =>
       assign(
         takes,
@@ -173,7 +175,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
         takes,
         takes.value.map((take) => (take.id === id ? { ...take, name } : take)),
       ),
-    playTake: none,
+    playTake: asyncNone,
     playingTake: signal(null),
     hints,
     putHintsAway: () => assign(hints, false),

@@ -28,6 +28,7 @@ describe('the recorder', () => {
         returnChunk(recorder, message.slot, message.channels);
       }),
       2,
+      48000,
     );
     for (let block = 0; block < 700; block++) {
       if (block === 10) startRecording(recorder);
@@ -49,6 +50,7 @@ describe('the recorder', () => {
     const recorder = createRecorder(
       portFor((message) => sent.push(message)),
       1,
+      48000,
     );
     startRecording(recorder);
     const line = new Float32Array(CHUNK_FRAMES);
@@ -63,6 +65,7 @@ describe('the recorder', () => {
     const recorder = createRecorder(
       portFor(() => {}),
       2,
+      48000,
     );
     expect(() => returnChunk(recorder, 99, [])).toThrow('Chunk 99 came back with 0 channels');
     expect(() => returnChunk(recorder, 0, [new Float32Array(1)])).toThrow('Chunk 0 came back with 1 channels');

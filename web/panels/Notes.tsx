@@ -11,11 +11,23 @@ export function Notes() {
   return (
     <div class="notes">
       <Hints />
-      {notes.map(({ id, kind, sentence, advice, list }, index) => (
+      {notes.map(({ id, kind, sentence, advice, list, offer }, index) => (
         <Note key={id} kind={kind} sentence={sentence} advice={advice} list={list}>
           {failed && kind === 'fault' && index === notes.length - 1 && (
             <button type="button" class="button small" onClick={() => void bench.start()}>
               Start again
+            </button>
+          )}
+          {offer !== undefined && (
+            <button
+              type="button"
+              class="button small"
+              onClick={() => {
+                offer.run();
+                bench.dismiss(id);
+              }}
+            >
+              {offer.words}
             </button>
           )}
           <button type="button" class="button small" onClick={() => bench.dismiss(id)}>

@@ -41,10 +41,10 @@ export function TakeRow({ take, format }: { readonly take: Take; readonly format
           actions={[
             {
               words: playing ? 'Stop' : 'Play',
-              run: () => bench.playTake(playing ? null : take.id),
+              run: () => void bench.playTake(playing ? null : take.id),
               label: `${playing ? 'Stop' : 'Play'} “${take.name}”`,
             },
-            { words: 'Save', run: () => bench.saveTake(take.id, format), label: `Save “${take.name}”` },
+            { words: 'Save', run: () => void bench.saveTake(take.id, format), label: `Save “${take.name}”` },
             { words: 'Delete', run: () => bench.deleteTake(take.id), label: `Delete “${take.name}”` },
           ]}
         />

@@ -1,7 +1,7 @@
 import { useSignal } from '@preact/signals';
 import { useRef } from 'preact/hooks';
 import { clockText } from '../draw/words.ts';
-import type { TakeFormat } from '../state/bench.ts';
+import type { TakeFormat, TakesLast } from '../state/bench.ts';
 import { useBench } from './BenchContext.ts';
 import { Choice, chosen } from './parts/Choice.tsx';
 import { DataTable } from './parts/DataTable.tsx';
@@ -23,6 +23,12 @@ const FORMATS: readonly { value: TakeFormat; words: string }[] = [
   { value: 'float32', words: '32-bit float WAV' },
 ];
 
+const KEPT: Readonly<Record<TakesLast, string>> = {
+  page: 'Takes, kept until this page closes.',
+  browser: 'Takes, kept in this browser, which may remove them when it is short of room.',
+  lasting: 'Takes, kept in this browser until they are deleted.',
+};
+
 /** Table 2: what was recorded or rendered, newest first. */
 export function Takes() {
   const bench = useBench();
@@ -35,7 +41,7 @@ export function Takes() {
       <DataTable
         number={2}
         className="take-table"
-        caption={takes.length === 0 && !busy ? 'Takes: none yet.' : 'Takes, kept until this page closes.'}
+        caption={takes.length === 0 && !busy ? 'Takes: none yet.' : KEPT[bench.takesLast.value]}
         columns={COLUMNS}
       >
         <tbody>

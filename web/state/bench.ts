@@ -13,6 +13,9 @@ import type { ToneReading } from '../../model/study/tone.ts';
 import type { TransferPath } from '../../model/study/transfer.ts';
 
 export interface Bench {
+  /** Resolves when the design and the settings of the last visit are in place, or there are none. */
+  readonly restored: Promise<void>;
+
   // The document
   readonly design: ReadonlySignal<Design>;
   readonly heardVariant: ReadonlySignal<number>;
@@ -139,7 +142,9 @@ export interface Bench {
   inputSamples(into: Float32Array): void;
   readonly spectrumRateHz: ReadonlySignal<number>;
 
-  // Takes: kept in memory until the page closes
+  // Takes
+  /** How long takes stay: until the page closes; in this browser, which may remove them when it is short of room; in this browser for good. */
+  readonly takesLast: ReadonlySignal<TakesLast>;
   readonly takes: ReadonlySignal<readonly Take[]>;
   readonly taking: ReadonlySignal<{ readonly seconds: number } | null>;
   readonly rendering: ReadonlySignal<{ readonly fraction: number } | null>;
@@ -149,16 +154,16 @@ export interface Bench {
   /** Renders the whole source through the heard variant, off the audio thread, with the linear-phase filters. */
   renderClip(): Promise<void>;
   endRender(): void;
-  saveTake(id: number, format: TakeFormat): void;
+  saveTake(id: number, format: TakeFormat): Promise<void>;
   /**
-   * Marks a take as deleted; `restoreTake` takes that back as long as it is in the list. The last three stay, while there is room in memory; of
-   * others nothing is kept.
+   * Marks a take as deleted; `restoreTake` takes that back as long as it is in the list. The last three stay while there is room; of others
+   * nothing is kept.
    */
   deleteTake(id: number): void;
   restoreTake(id: number): void;
   renameTake(id: number, name: string): void;
   /** Plays a take once in place of the chain's output, at the listening level and under the ceiling; null ends it. */
-  playTake(id: number | null): void;
+  playTake(id: number | null): Promise<void>;
   readonly playingTake: ReadonlySignal<number | null>;
 
   /** Hints for a first visit, until they are put away. */
@@ -176,6 +181,7 @@ export type Keep = 'gate' | 'control';
 export type Hearing = 'cell' | 'bypass' | 'previous' | 'residual';
 export type SoundState = 'idle' | 'starting' | 'playing' | 'stopped' | 'failed';
 export type DesignPath = 'fullScaleV' | 'tempC' | 'oversampling' | 'title';
+export type TakesLast = 'page' | 'browser' | 'lasting';
 export type TakeFormat = 'pcm16' | 'pcm24' | 'float32';
 
 export type PlotFile = 'csv' | 'svg';
@@ -359,4 +365,6 @@ export interface Note {
   readonly advice?: string;
   /** Sentences under the first, where there are several of one kind: every fault of a file. */
   readonly list?: readonly string[];
+  /** What can be done about it; once done, the note is put away. */
+  readonly offer?: { readonly words: string; readonly run: () => void };
 }

@@ -3,10 +3,12 @@ import { computed, signal } from '@preact/signals';
 import firstDesign from '../../assets/designs/harbour-tremolo.json?raw';
 import { compileChain } from '../../model/chain/compile.ts';
 import { readDesign } from '../../model/design/read.ts';
+import { MOVES, type Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
-import type { Bench } from './bench.ts';
+import type { Bench, Keep } from './bench.ts';
 import { createDocument } from './document.ts';
 import { fileName } from './fileName.ts';
+import { createKeeping } from './keeping.ts';
 import { createLevels } from './levels.ts';
 import { createLibrary } from './library.ts';
 import type { Listening } from './listening.ts';
@@ -15,6 +17,8 @@ import { createNotes } from './notes.ts';
 import type { Parts } from './parts.ts';
 import { browserParts } from './parts.ts';
 import { createReadings } from './readings.ts';
+import { choiceSetting, numberSetting, textSetting } from './settings.ts';
+import { createShelf } from './shelf.ts';
 import type { Sources } from './sources.ts';
 import { createSources } from './sources.ts';
 import type { Takes } from './takes.ts';
@@ -34,9 +38,14 @@ export function assembleBench(parts: Parts): Bench {
   const document = createDocument(openingDesign(), (design, variantIndex) => {
     compileChain(design, variantIndex, listening.rateHz.peek() ?? TRY_OUT_HZ, 1, 'lowLatency');
   });
-  const sources: Sources = createSources({ parts, library, document, notes, listening: () => listening });
+  const sources: Sources = createSources({
+    ...{ parts, library, document, notes, listening: () => listening },
+    restored: () => keeping.restored,
+  });
   const listening: Listening = createListening({ parts, document, levels, notes, takes: () => takes, loadFirstSource: sources.loadFirst });
-  const takes: Takes = createTakes(parts, document, listening.forTakes, notes);
+  const store = parts.openStore(() => keepAnew());
+  const shelf = createShelf(store, notes);
+  const takes: Takes = createTakes({ parts, document, source: listening.forTakes, notes, shelf, store });
   const readings = createReadings(parts.openReadingWorker(), {
     design: document.design,
     heardVariant: document.heardVariant,
@@ -44,6 +53,28 @@ export function assembleBench(parts: Parts): Bench {
     live: levels.live,
     playing: computed(() => listening.sound.value === 'playing'),
   });
+
+  const keeping = createKeeping({
+    ...{ store, shelf, document, notes, download: parts.download },
+    settings: {
+      listenDb: numberSetting('The listening level', listening.listenDb, listening.setListenDb),
+      ceilingDbfs: numberSetting('The ceiling', listening.ceilingDbfs, listening.setCeilingDbfs),
+      matched: choiceSetting('Matching of loudness', [true, false], listening.matched, listening.setMatched),
+      toneV: numberSetting('The shadow tone’s level', readings.toneV, readings.setToneV),
+      toneHz: numberSetting('The shadow tone’s frequency', readings.toneHz, readings.setToneHz),
+      testToneV: numberSetting('The test tone’s level', sources.testToneV, sources.setTestToneV),
+      testToneHz: numberSetting('The test tone’s frequency', sources.testToneHz, sources.setTestToneHz),
+      keep: choiceSetting<Keep>('What setting k leaves alone', ['gate', 'control'], document.keep, document.setKeep),
+      moves: choiceSetting<Moves>('What setting k moves', MOVES, document.moves, document.setMoves),
+      phrase: textSetting('The phrase', sources.phrase),
+    },
+    hold: takes.hold,
+  });
+  const keepAnew = () => {
+    notes.add('note', 'The browser has closed or removed what Fettle kept here.', 'What this page holds is being written anew.');
+    keeping.keepAnew();
+    takes.keepAnew();
+  };
 
   /** Runs what may fail; its sentence goes to the notes. */
   const noting = async (work: () => Promise<unknown>) => {
@@ -67,10 +98,16 @@ export function assembleBench(parts: Parts): Bench {
   noting(async () => {
     await sources.loadFirst();
     await parts.prepareSound();
+    parts.keepOffline({
+      newer: () =>
+        notes.add('note', 'A newer Fettle has been fetched; it opens when this page is reloaded.', 'Close its other tabs first.'),
+      failed: (reason) => notes.add('note', `This page will not open without a network: ${reason}.`, 'The next visit tries again.'),
+    });
   });
 
   const hints = signal(true);
   return {
+    restored: keeping.restored,
     ...document,
     ...listening,
     ...levels,

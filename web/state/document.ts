@@ -9,6 +9,8 @@ import type { DesignPath, Keep } from './bench.ts';
 import { sentenceOf } from './notes.ts';
 
 const MOST_UNDO = 200;
+/** Of them, how many are kept between visits: writing them with every change must stay a matter of a few milliseconds. */
+const MOST_KEPT = 50;
 const MOST_VARIANTS = 4;
 const LETTERS = ['A', 'B', 'C', 'D'];
 /** Changes of one path that follow each other sooner than this undo as one. */
@@ -34,6 +36,20 @@ export interface DocumentState {
   redo(): void;
   /** Takes the place of the whole document; can be undone. */
   replace(design: Design): string | null;
+  /** What is kept of it between visits. */
+  readonly record: ReadonlySignal<DocumentRecord>;
+  /** Puts a kept document in place; what was changed before that stays, and the kept one becomes its past. */
+  restore(record: DocumentRecord): string | null;
+  /** Counts the documents that were put in place: what came before them is no earlier setting of theirs. */
+  readonly restores: ReadonlySignal<number>;
+}
+
+/** The nearest steps of undo and redo, the nearest one last. */
+export interface DocumentRecord {
+  readonly design: Design;
+  readonly heardVariant: number;
+  readonly past: readonly Design[];
+  readonly future: readonly Design[];
 }
 
 /** `tryOut` throws a RangeError with a sentence where a design cannot be made to sound; such a change is refused. */
@@ -44,15 +60,22 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
   const moves = signal<Moves>('drainOhm');
   const past = signal<readonly Design[]>([]);
   const future = signal<readonly Design[]>([]);
+  const restores = signal(0);
   let lastKey = '';
   let lastMs = 0;
 
-  const put = (next: Design, key: string, heardNext = heard.value): string | null => {
+  const refusal = (next: Design, heardNext: number): string | null => {
     try {
       tryOut(next, heardNext);
     } catch (error) {
       return sentenceOf(error);
     }
+    return null;
+  };
+
+  const put = (next: Design, key: string, heardNext = heard.value): string | null => {
+    const refused = refusal(next, heardNext);
+    if (refused !== null) return refused;
     const now = Date.now();
     const sameChange = key === lastKey && now - lastMs < SAME_CHANGE_MS;
     lastKey = key;
@@ -134,5 +157,27 @@ export function createDocument(first: Design, tryOut: (design: Design, variantIn
     undo: () => step(past, future),
     redo: () => step(future, past),
     replace: (next) => put(next, '', 0),
+    record: computed(() => ({
+      design: design.value,
+      heardVariant: heard.value,
+      past: past.value.slice(-MOST_KEPT),
+      future: future.value.slice(-MOST_KEPT),
+    })),
+    restores,
+    restore(kept) {
+      const refused = refusal(kept.design, kept.heardVariant);
+      if (refused !== null) return refused;
+      const untouched = design.value === first && past.value.length === 0 && future.value.length === 0;
+      batch(() => {
+        if (untouched) {
+          restores.value++;
+          design.value = kept.design;
+          heard.value = kept.heardVariant;
+          future.value = kept.future;
+        }
+        past.value = untouched ? kept.past : [...kept.past, kept.design, ...past.value];
+      });
+      return null;
+    },
   };
 }

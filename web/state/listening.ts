@@ -294,7 +294,9 @@ export function createListening({ parts, document, levels, notes, takes, loadFir
       else await line.close();
     },
     forTakes: {
-      record: (on) => (state.peek() === 'playing' || !on ? line.send({ type: 'record', on }) : false),
+      record: (on, to) => line.send({ type: 'record', on, ...(to === undefined ? {} : { to }) }, to === undefined ? [] : [to]),
+      channels: line.channels,
+      plays: () => state.peek() === 'playing',
       play(take, name) {
         if (line.sound() === null || (take !== null && state.peek() !== 'playing')) return false;
         line.sound()?.playTake(take);

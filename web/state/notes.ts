@@ -5,7 +5,7 @@ import type { Note } from './bench.ts';
 
 export interface Notes {
   readonly notes: ReadonlySignal<readonly Note[]>;
-  add(kind: Note['kind'], sentence: string, advice?: string, list?: readonly string[]): void;
+  add(kind: Note['kind'], sentence: string, advice?: string, list?: readonly string[], offer?: Note['offer']): void;
   /** Adds a fault from anything that was thrown. */
   fault(error: unknown, advice?: string): void;
   dismiss(id: number): void;
@@ -14,12 +14,14 @@ export interface Notes {
 export function createNotes(): Notes {
   const notes = signal<readonly Note[]>([]);
   let nextId = 1;
-  const add: Notes['add'] = (kind, sentence, advice, list) => {
+  const add: Notes['add'] = (kind, sentence, advice, list, offer) => {
     const others = notes.value.filter((note) => note.sentence !== sentence);
-    notes.value = [
-      ...others,
-      { id: nextId++, kind, sentence, ...(advice === undefined ? {} : { advice }), ...(list === undefined ? {} : { list }) },
-    ];
+    const more = {
+      ...(advice === undefined ? {} : { advice }),
+      ...(list === undefined ? {} : { list }),
+      ...(offer === undefined ? {} : { offer }),
+    };
+    notes.value = [...others, { id: nextId++, kind, sentence, ...more }];
   };
   return {
     notes,

@@ -6,6 +6,10 @@ import type { Inputs } from '../audio/input.ts';
 import { browserInputs } from '../audio/input.ts';
 import type { OpenSound } from '../audio/sound.ts';
 import { openSound, prepareSound } from '../audio/sound.ts';
+import { openStore } from '../store/browserStore.ts';
+import type { OfflineEvents } from '../store/offline.ts';
+import { keepOffline } from '../store/offline.ts';
+import type { Store } from '../store/store.ts';
 import BenchWorker from './bench.worker.ts?worker';
 import type { FromLoudness, FromReading, FromRender, ToLoudness, ToReading, ToRender, WorkerPort } from './workers.ts';
 
@@ -22,6 +26,10 @@ export interface Parts {
   openRenderWorker(): WorkerPort<ToRender, FromRender>;
   openLoudnessWorker(): WorkerPort<ToLoudness, FromLoudness>;
   download(name: string, bytes: Uint8Array<ArrayBuffer>, mediaType: string): void;
+  /** What is kept between visits; `lost` is told when the browser has removed the records while the page is open. */
+  openStore(lost: () => void): Store;
+  /** Fetches what the page needs to open without a network; called when nothing else is being fetched. */
+  keepOffline(events: OfflineEvents): void;
 }
 
 export function browserParts(): Parts {
@@ -36,6 +44,8 @@ export function browserParts(): Parts {
     openRenderWorker: () => portOf(new BenchWorker()),
     openLoudnessWorker: () => portOf(new BenchWorker()),
     download,
+    openStore,
+    keepOffline,
   };
 }
 

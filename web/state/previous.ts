@@ -15,17 +15,19 @@ export interface Before {
 
 /** Of the heard variant; null where nothing that sounds has changed since it was there. */
 export function watchPrevious(
-  { design, heardVariant }: Pick<DocumentState, 'design' | 'heardVariant'>,
+  { design, heardVariant, restores }: Pick<DocumentState, 'design' | 'heardVariant' | 'restores'>,
   now: () => number = () => Date.now(),
 ): ReadonlySignal<Before | null> {
   const all = signal<readonly (Before | null)[]>([]);
   let last = design.peek();
   let changedMs: number[] = [];
+  let seen = restores.peek();
   design.subscribe((next) => {
     const from = last;
     last = next;
     if (from === next) return;
-    if (from.variants.length !== next.variants.length) {
+    if (from.variants.length !== next.variants.length || seen !== restores.peek()) {
+      seen = restores.peek();
       all.value = [];
       changedMs = [];
       return;

@@ -1,4 +1,5 @@
 /** What can be put through the chain, and the choice of it: phrases, the user's files, the test tone, live input. */
+import type { Signal } from '@preact/signals';
 import { signal } from '@preact/signals';
 import { testTone } from '../../model/chain/testTone.ts';
 import type { LiveInput } from '../audio/input.ts';
@@ -31,7 +32,9 @@ export interface Sources
     | 'inputs'
     | 'openInput'
   > {
-  /** Chooses the first phrase where nothing is chosen or being loaded. Rejects with a sentence. */
+  /** The name of the phrase that was chosen last; null before the first choice. */
+  readonly phrase: Signal<string | null>;
+  /** Chooses the last visit's phrase, else the first one, where nothing is chosen or being loaded. Rejects with a sentence. */
   loadFirst(): Promise<void>;
 }
 
@@ -40,10 +43,13 @@ export interface SourcesNeeds {
   readonly library: Library;
   readonly document: Pick<DocumentState, 'design'>;
   readonly notes: Notes;
+  /** Resolves when the last visit's phrase is known. */
+  restored(): Promise<void>;
   listening(): Pick<Listening, 'source' | 'setSource' | 'stop'>;
 }
 
-export function createSources({ parts, library, document, notes, listening }: SourcesNeeds): Sources {
+export function createSources({ parts, library, document, notes, restored, listening }: SourcesNeeds): Sources {
+  const phrase = signal<string | null>(null);
   const testToneHz = signal(FIRST_TONE_HZ);
   const testToneV = signal(FIRST_TONE_V);
   const inputs = signal<Bench['inputs']['value']>([]);
@@ -84,7 +90,10 @@ export function createSources({ parts, library, document, notes, listening }: So
   };
 
   const noting = (work: Promise<unknown>) => work.then(() => undefined, notes.fault);
-  const loadPhrase = async (name: string): Promise<Source> => ({ kind: 'phrase', clip: await library.loadPhrase(name) });
+  const loadPhrase = async (name: string): Promise<Source> => {
+    phrase.value = name;
+    return { kind: 'phrase', clip: await library.loadPhrase(name) };
+  };
 
   const loadTone = async (): Promise<Source> => {
     const peak = testToneV.peek() / document.design.peek().fullScaleV;
@@ -146,6 +155,7 @@ export function createSources({ parts, library, document, notes, listening }: So
 
   return {
     phrases: library.phrases,
+    phrase,
     choosePhrase: (name) => noting(choose(() => loadPhrase(name))),
     openAudio: (file) => noting(choose(() => openFile(file))),
     chooseTestTone: () => noting(choose(loadTone)),
@@ -156,10 +166,11 @@ export function createSources({ parts, library, document, notes, listening }: So
     inputs,
     openInput: (deviceId) => noting(choose(() => loadInput(deviceId ?? null))),
     async loadFirst() {
-      await library.load();
+      await Promise.all([library.load(), restored()]);
       await choosing;
-      const [first] = library.phrases.peek();
-      if (first !== undefined && listening().source.peek().title === '') await choose(() => loadPhrase(first.name));
+      const names = library.phrases.peek().map(({ name }) => name);
+      const first = names.find((name) => name === phrase.peek()) ?? names[0];
+      if (first !== undefined && listening().source.peek().title === '') await choose(() => loadPhrase(first));
     },
   };
 }

@@ -440,7 +440,7 @@ describe('takes', () => {
     const sound = await startSound();
     const line = createNoise(1, 20000, 0.9);
     bench.startTake();
-    expect(sound.last('record')).toEqual({ type: 'record', on: true });
+    expect(sound.last('record')).toMatchObject({ type: 'record', on: true });
     sound.events.message(chunk(0, line.slice(0, 8192), false));
     sound.events.message(chunk(8192, line.slice(8192, 16384), false));
     expect(bench.taking.value?.seconds).toBeCloseTo(16384 / 48000, 9);
@@ -450,7 +450,7 @@ describe('takes', () => {
     expect(bench.taking.value).toBeNull();
     expect(bench.takes.value).toMatchObject([{ name: 'Take 1', variant: 'A', how: 'heard', sampleRateHz: 48000, seconds: 20000 / 48000 }]);
     bench.renameTake(1, 'with / slash');
-    bench.saveTake(1, 'float32');
+    await bench.saveTake(1, 'float32');
     const [saved] = parts.downloads;
     expect(saved.name).toBe('with slash.wav');
     expect(readWav(saved.bytes)).toMatchObject({ sampleRateHz: 48000, channels: [line], float: true });
@@ -460,7 +460,7 @@ describe('takes', () => {
     const sound = await startSound();
     bench.startTake();
     sound.events.message(chunk(0, Float32Array.from([0.5, 1.5, -2]), true));
-    bench.saveTake(1, 'pcm16');
+    await bench.saveTake(1, 'pcm16');
     expect(sentences()).toEqual(['2 samples of “Take 1” lie past full scale and were cut.']);
   });
 
@@ -507,13 +507,13 @@ describe('takes', () => {
     bench.startTake();
     sound.events.message(chunk(0, createNoise(1, 1000, 0.5), true));
     bench.hear('bypass');
-    bench.playTake(1);
+    await bench.playTake(1);
     expect(bench.playingTake.value).toBe(1);
     expect(sound.last('hear')).toEqual({ type: 'hear', heard: 'aside' });
     sound.events.takeEnded();
     expect(bench.playingTake.value).toBeNull();
     expect(sound.last('hear')).toEqual({ type: 'hear', heard: 'bypass' });
-    bench.playTake(1);
+    await bench.playTake(1);
     bench.deleteTake(1);
     expect(sound.played.at(-1)).toBeNull();
     expect(bench.playingTake.value).toBeNull();
@@ -524,20 +524,20 @@ describe('takes', () => {
 
   test('a row says what was heard, one after the other, and has a k only where it began with the cell', async () => {
     const sound = await startSound();
-    const take = (work: () => void) => {
+    const take = async (work: () => unknown) => {
       bench.startTake();
-      work();
+      await work();
       sound.events.message(chunk(0, createNoise(1, 1000, 0.5), true));
       return bench.takes.value.at(-1);
     };
-    expect(take(() => bench.hearVariant(1))).toMatchObject({ variant: 'A then B', k: expect.any(Number) });
+    expect(await take(() => bench.hearVariant(1))).toMatchObject({ variant: 'A then B', k: expect.any(Number) });
     bench.hear('bypass');
-    expect(take(() => {})).toMatchObject({ variant: 'bypass', k: null });
-    expect(take(() => bench.playTake(1))).toMatchObject({ variant: 'bypass then Take 1' });
+    expect(await take(() => {})).toMatchObject({ variant: 'bypass', k: null });
+    expect(await take(() => bench.playTake(1))).toMatchObject({ variant: 'bypass then Take 1' });
     sound.events.takeEnded();
     const letters = () => [0, 1, 2, 0, 1].map((index) => bench.hearVariant(index));
     bench.hear('cell');
-    expect(take(letters)?.variant).toBe('B then A then B then C and on');
+    expect((await take(letters))?.variant).toBe('B then A then B then C and on');
   });
 
   test('of deleted takes the last three can be brought back; those before are gone', async () => {
@@ -556,12 +556,17 @@ describe('takes', () => {
     bench.restoreTake(1);
     bench.deleteTake(5);
     expect(bench.takes.value.map(({ id }) => id)).toEqual([1, 3, 4, 5]);
-    bench.saveTake(2, 'pcm16');
+    await bench.saveTake(2, 'pcm16');
     expect(sentences()).toEqual(['There is no take 2 to save.']);
   });
 
-  test('takes fill the memory that is kept for them and no more; deleted ones make room first', async () => {
+  test('where there are no files, takes fill the memory that is kept for them and no more; deleted ones make room first', async () => {
+    parts.store.filesRefusal = 'it has no files for pages';
+    bench = assembleBench(parts);
     const sound = await startSound();
+    expect(bench.takesLast.value).toBe('page');
+    expect(sentences()).toEqual(['This browser keeps no audio here: it has no files for pages. Takes last until this page closes.']);
+    bench.dismiss(bench.notes.value[0].id);
     const big = new Float32Array(30e6);
     for (let n = 1; n <= 4; n++) {
       bench.startTake();
@@ -588,8 +593,8 @@ describe('takes', () => {
     runRender(parts.renderWorkers[0]);
     await done;
     bench.startTake();
-    bench.playTake(1);
-    bench.playTake(2);
+    await bench.playTake(1);
+    await bench.playTake(2);
     expect(bench.taking.value).toBeNull();
     expect(sentences()).toEqual([
       'There is no sound to take. Press Start first.',

@@ -8,9 +8,11 @@ import { decodeAudio } from '../../../web/audio/decode.ts';
 import type { InputDevice, Inputs, LiveInput } from '../../../web/audio/input.ts';
 import type { Feed, SourceForm } from '../../../web/audio/source.ts';
 import type { Sound, SoundEvents } from '../../../web/audio/sound.ts';
+import type { OfflineEvents } from '../../../web/store/offline.ts';
 import type { Parts } from '../../../web/state/parts.ts';
 import type { FromLoudness, FromReading, FromRender, ToLoudness, ToReading, ToRender, WorkerPort } from '../../../web/state/workers.ts';
 import type { CellOptions, FromCell, ToCell } from '../../../worklet/protocol.ts';
+import { FakeStore } from '../store/fakeStore.ts';
 
 export class FakeSound implements Sound {
   readonly told: ToCell[] = [];
@@ -151,6 +153,8 @@ export interface FakeParts extends Parts {
   readonly renderWorkers: FakeWorker<ToRender, FromRender>[];
   readonly loudnessWorkers: FakeWorker<ToLoudness, FromLoudness>[];
   readonly downloads: { name: string; bytes: Uint8Array; mediaType: string }[];
+  readonly store: FakeStore;
+  offline: OfflineEvents | null;
   missing: string | null;
   /** What opening sound rejects with; the machine's rate where it cannot run at the one asked for. */
   refusal: Error | null;
@@ -159,13 +163,15 @@ export interface FakeParts extends Parts {
 
 const asset = (path: string) => fileURLToPath(new URL(`../../../assets/${path}`, import.meta.url));
 
-export function createFakeParts(): FakeParts {
+export function createFakeParts(store = new FakeStore()): FakeParts {
   const parts: FakeParts = {
     sounds: [],
     readingWorker: new FakeWorker(),
     renderWorkers: [],
     loudnessWorkers: [],
     downloads: [],
+    store,
+    offline: null,
     missing: null,
     refusal: null,
     onlyRateHz: null,
@@ -197,6 +203,13 @@ export function createFakeParts(): FakeParts {
       return worker;
     },
     download: (name, bytes, mediaType) => parts.downloads.push({ name, bytes, mediaType }),
+    openStore(lost) {
+      store.lost = lost;
+      return store;
+    },
+    keepOffline(events) {
+      parts.offline = events;
+    },
   };
   return parts;
 }
