@@ -2,7 +2,7 @@ import { useRef } from 'preact/hooks';
 import { useBench } from './BenchContext.ts';
 import { Dialog } from './Dialog.tsx';
 
-/** A design from a file, or a worked example. */
+/** A design from a file of its own or from inside a saved take, or a worked example. */
 export function OpenDialog({ onClose }: { readonly onClose: () => void }) {
   const bench = useBench();
   const picker = useRef<HTMLInputElement>(null);
@@ -16,7 +16,7 @@ export function OpenDialog({ onClose }: { readonly onClose: () => void }) {
           ref={picker}
           type="file"
           hidden
-          accept=".json,application/json"
+          accept=".json,application/json,.wav,audio/wav"
           onChange={(event) => {
             const file = event.currentTarget.files?.[0];
             if (!file) return;

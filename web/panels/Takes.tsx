@@ -19,7 +19,9 @@ const COLUMNS = [
 
 const FORMATS: readonly { value: TakeFormat; words: string }[] = [
   { value: 'pcm16', words: '16-bit WAV' },
+  { value: 'pcm16 dithered', words: '16-bit WAV, dithered' },
   { value: 'pcm24', words: '24-bit WAV' },
+  { value: 'pcm24 dithered', words: '24-bit WAV, dithered' },
   { value: 'float32', words: '32-bit float WAV' },
 ];
 

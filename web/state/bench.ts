@@ -38,7 +38,7 @@ export interface Bench {
   redo(): void;
   readonly canUndo: ReadonlySignal<boolean>;
   readonly canRedo: ReadonlySignal<boolean>;
-  /** Faults of a file go to `notes`; the document stays as it was. */
+  /** A design, or a WAV file with one inside. Faults of a file go to `notes`; the document stays as it was. */
   openDesign(file: File): Promise<void>;
   openExample(name: string): Promise<void>;
   /** Downloads the design as JSON. */
@@ -154,6 +154,7 @@ export interface Bench {
   /** Renders the whole source through the heard variant, off the audio thread, with the linear-phase filters. */
   renderClip(): Promise<void>;
   endRender(): void;
+  /** Downloads a WAV file with the take's design inside. */
   saveTake(id: number, format: TakeFormat): Promise<void>;
   /**
    * Marks a take as deleted; `restoreTake` takes that back as long as it is in the list. The last three stay while there is room; of others
@@ -182,7 +183,8 @@ export type Hearing = 'cell' | 'bypass' | 'previous' | 'residual';
 export type SoundState = 'idle' | 'starting' | 'playing' | 'stopped' | 'failed';
 export type DesignPath = 'fullScaleV' | 'tempC' | 'oversampling' | 'title';
 export type TakesLast = 'page' | 'browser' | 'lasting';
-export type TakeFormat = 'pcm16' | 'pcm24' | 'float32';
+/** Samples are rounded to the nearest step; with dither, after triangular noise of two steps' width. */
+export type TakeFormat = 'pcm16' | 'pcm16 dithered' | 'pcm24' | 'pcm24 dithered' | 'float32';
 
 export type PlotFile = 'csv' | 'svg';
 
@@ -352,6 +354,8 @@ export interface Take {
   readonly name: string;
   readonly variant: string;
   readonly k: number | null;
+  /** Text of the design as it was when the take began, the heard variant first; null where that is not known any more. */
+  readonly design: string | null;
   readonly seconds: number;
   readonly sampleRateHz: number;
   readonly how: 'heard' | 'rendered';

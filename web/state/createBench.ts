@@ -2,7 +2,9 @@
 import { computed, signal } from '@preact/signals';
 import firstDesign from '../../assets/designs/harbour-tremolo.json?raw';
 import { compileChain } from '../../model/chain/compile.ts';
+import { readWav } from '../../model/chain/wav.ts';
 import { readDesign } from '../../model/design/read.ts';
+import { designText } from '../../model/design/text.ts';
 import { MOVES, type Moves } from '../../model/design/feedback.ts';
 import type { Design } from '../../model/design/types.ts';
 import type { Bench, Keep } from './bench.ts';
@@ -13,7 +15,7 @@ import { createLevels } from './levels.ts';
 import { createLibrary } from './library.ts';
 import type { Listening } from './listening.ts';
 import { createListening } from './listening.ts';
-import { createNotes } from './notes.ts';
+import { createNotes, sentenceOf } from './notes.ts';
 import type { Parts } from './parts.ts';
 import { browserParts } from './parts.ts';
 import { createReadings } from './readings.ts';
@@ -125,15 +127,11 @@ export function assembleBench(parts: Parts): Bench {
       const mediaType = kind === 'csv' ? 'text/csv' : 'image/svg+xml';
       parts.download(`${fileName(document.design.peek().title)}-${name}.${kind}`, new TextEncoder().encode(text), mediaType);
     },
-    openDesign: (file) => noting(async () => openText(await file.text(), file.name)),
+    openDesign: (file) => noting(async () => openText(await designIn(file), file.name)),
     openExample: (name) => noting(async () => openText(await library.loadExample(name), name)),
     saveDesign() {
       const design = document.design.peek();
-      parts.download(
-        `${fileName(design.title)}.json`,
-        new TextEncoder().encode(`${JSON.stringify(design, null, 2)}\n`),
-        'application/json',
-      );
+      parts.download(`${fileName(design.title)}.json`, new TextEncoder().encode(designText(design)), 'application/json');
     },
   };
 }
@@ -143,4 +141,16 @@ function openingDesign(): Design {
   const result = readDesign(firstDesign);
   if ('faults' in result) throw new Error(`The design that the page opens with is faulty: ${result.faults[0].sentence}`);
   return result.design;
+}
+
+/** The text of a design's file, or of the design inside a WAV file. Throws with a sentence where a WAV file holds none. */
+async function designIn(file: File): Promise<string> {
+  if (!/\.wav$/i.test(file.name)) return file.text();
+  try {
+    const { design } = readWav(new Uint8Array(await file.arrayBuffer()));
+    if (design !== undefined) return design;
+  } catch (error) {
+    throw new Error(`“${file.name}” cannot be read: ${sentenceOf(error)}.`);
+  }
+  throw new Error(`“${file.name}” holds sound and no design. Expected a design, or a saved take with one inside.`);
 }

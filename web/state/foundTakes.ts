@@ -54,7 +54,7 @@ export function findTakes(records: readonly KeptRecord[], files: readonly { read
     const reason = faults.get(file) ?? 'there is none';
     faults.delete(file);
     sentences.push(`A take was found without a record that can be read (${reason}); it is “${name}”, ${secondsOf(frames, format)} long.`);
-    takes.push({ ...format, id, name, file, frames, variant: 'unknown', k: null, how: 'heard', deletedMs: null });
+    takes.push({ ...format, id, name, file, frames, variant: 'unknown', k: null, how: 'heard', design: null, deletedMs: null });
   }
   for (const reason of faults.values()) sentences.push(`The record of a take cannot be read (${reason}), and its audio is not there.`);
   return { takes: takes.sort((a, b) => a.id - b.id), stale, empty, sentences };

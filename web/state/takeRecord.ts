@@ -41,7 +41,7 @@ export function readTakeRecord(value: unknown): TakeRecord | string {
   if (!isFields(value)) return `it is ${shown(value)}; expected fields`;
   const whole = (n: unknown, least: number) => typeof n === 'number' && Number.isSafeInteger(n) && n >= least;
   const text = (each: unknown) => typeof each === 'string' && each !== '' && each.length <= 500;
-  const { file, frames, deletedMs, k } = value;
+  const { file, frames, deletedMs, k, design } = value;
   const format = typeof file === 'string' ? formatOf(file) : null;
   const checks: readonly (readonly [name: string, ok: boolean, expected: string])[] = [
     ['file', format !== null, 'the name of a take’s file'],
@@ -52,6 +52,7 @@ export function readTakeRecord(value: unknown): TakeRecord | string {
     ['variant', text(value.variant), 'a name'],
     ['how', value.how === 'heard' || value.how === 'rendered', '“heard” or “rendered”'],
     ['k', k === null || (typeof k === 'number' && k >= 0 && k <= 1), '0 to 1, or null'],
+    ['design', design === null || typeof design === 'string', 'a text, or null'],
     ['frames', frames === null || whole(frames, 0), 'a whole number, or null'],
     ['deletedMs', deletedMs === null || whole(deletedMs, 0), 'a time, or null'],
   ];

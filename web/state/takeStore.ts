@@ -17,7 +17,7 @@ export const MOST_BYTES = 480e6;
 /** Deletions that can be taken back. */
 const MOST_DELETED = 3;
 
-export type About = Pick<Take, 'variant' | 'k' | 'how'>;
+export type About = Pick<Take, 'variant' | 'k' | 'how' | 'design'>;
 
 /** A take that is under way. */
 export interface Draft {
@@ -166,6 +166,6 @@ export function createTakeStore(shelf: Shelf, notes: Notes): TakeStore {
   };
 }
 
-function takeOf({ id, name, variant, k, how, sampleRateHz, frames, deletedMs }: TakeRecord): Take {
-  return { id, name, variant, k, how, sampleRateHz, seconds: (frames ?? 0) / sampleRateHz, deleted: deletedMs !== null };
+function takeOf({ id, name, variant, k, how, design, sampleRateHz, frames, deletedMs }: TakeRecord): Take {
+  return { id, name, variant, k, how, design, sampleRateHz, seconds: (frames ?? 0) / sampleRateHz, deleted: deletedMs !== null };
 }

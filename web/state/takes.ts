@@ -1,12 +1,13 @@
 /** Takes: what was heard, recorded, or the source rendered whole. */
 import type { ReadonlySignal } from '@preact/signals';
 import { signal } from '@preact/signals';
-import { writeWav } from '../../model/chain/wav.ts';
+import { type WavFormat, writeWav } from '../../model/chain/wav.ts';
 import { feedbackFraction } from '../../model/design/feedback.ts';
+import { designText } from '../../model/design/text.ts';
 import type { Chunk } from '../../worklet/protocol.ts';
 import type { Clip } from '../audio/clip.ts';
 import type { KeptRecord, Store } from '../store/store.ts';
-import type { Bench, TakesLast } from './bench.ts';
+import type { Bench, TakeFormat, TakesLast } from './bench.ts';
 import type { DocumentState } from './document.ts';
 import { fileName } from './fileName.ts';
 import type { Notes } from './notes.ts';
@@ -59,6 +60,15 @@ type TakeActions = Pick<
   | 'takesLast'
 >;
 
+const DITHERED = ' dithered';
+const CODINGS: Readonly<Record<TakeFormat, WavFormat>> = {
+  pcm16: 'pcm16',
+  'pcm16 dithered': 'pcm16',
+  pcm24: 'pcm24',
+  'pcm24 dithered': 'pcm24',
+  float32: 'float32',
+};
+
 export interface TakesNeeds {
   readonly parts: Parts;
   readonly document: DocumentState;
@@ -82,6 +92,7 @@ export interface Takes extends TakeActions {
 
 interface Recording {
   readonly k: number | null;
+  readonly design: string;
   readonly sampleRateHz: number;
   readonly channelCount: number;
   readonly draft: Draft;
@@ -104,9 +115,10 @@ export function createTakes({ parts, document, source, notes, shelf, store }: Ta
 
   const takeOf = (id: number) => list.takes.peek().find((each) => each.id === id);
   const heardK = () => feedbackFraction(document.variant.peek().cell);
-  const aboutOf = ({ heard, k }: Recording): About => {
+  const textNow = () => designText(document.design.peek(), document.heardVariant.peek());
+  const aboutOf = ({ heard, k, design }: Recording): About => {
     const variant = heard.slice(0, MOST_NAMED).join(' then ') + (heard.length > MOST_NAMED ? ' and on' : '');
-    return { variant, k, how: 'heard' };
+    return { variant, k, design, how: 'heard' };
   };
 
   const finish = () => {
@@ -186,8 +198,9 @@ export function createTakes({ parts, document, source, notes, shelf, store }: Ta
       const k = source.hearsCell() ? heardK() : null;
       const heard = [source.heardWords.peek()];
       const sampleRateHz = source.rateHz();
-      const draft = list.begin({ channelCount, sampleRateHz }, { variant: heard[0], k, how: 'heard' });
-      const begun: Recording = { k, sampleRateHz, channelCount, draft, heard, frames: 0 };
+      const design = textNow();
+      const draft = list.begin({ channelCount, sampleRateHz }, { variant: heard[0], k, design, how: 'heard' });
+      const begun: Recording = { k, design, sampleRateHz, channelCount, draft, heard, frames: 0 };
       recording = begun;
       taking.value = { seconds: 0 };
       const port = draft.openPort((frames, last) => {
@@ -217,7 +230,7 @@ export function createTakes({ parts, document, source, notes, shelf, store }: Ta
         return Promise.resolve();
       }
       askToPersist();
-      const about: About = { variant: document.variant.peek().name, k: heardK(), how: 'rendered' };
+      const about: About = { variant: document.variant.peek().name, k: heardK(), design: textNow(), how: 'rendered' };
       const worker = parts.openRenderWorker();
       rendering.value = { fraction: 0 };
       return new Promise<void>((done) => {
@@ -234,7 +247,11 @@ export function createTakes({ parts, document, source, notes, shelf, store }: Ta
       if (take === undefined) return notes.fault(`There is no take ${id} to save.`);
       try {
         const clip = await list.read(id);
-        const { bytes, cut } = writeWav(clip.channels, clip.sampleRateHz, format);
+        const { design } = take;
+        const { bytes, cut } = writeWav(clip.channels, clip.sampleRateHz, CODINGS[format], {
+          dither: format.endsWith(DITHERED) ? 'triangular' : 'none',
+          ...(design === null ? {} : { design }),
+        });
         parts.download(`${fileName(take.name)}.wav`, bytes, 'audio/wav');
         if (cut > 0) notes.add('note', cutSentence(take.name, cut), 'Save it as 32-bit float to keep it whole.');
       } catch (error) {

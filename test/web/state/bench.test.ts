@@ -453,7 +453,19 @@ describe('takes', () => {
     await bench.saveTake(1, 'float32');
     const [saved] = parts.downloads;
     expect(saved.name).toBe('with slash.wav');
-    expect(readWav(saved.bytes)).toMatchObject({ sampleRateHz: 48000, channels: [line], float: true });
+    const file = readWav(saved.bytes);
+    expect(file).toMatchObject({ sampleRateHz: 48000, channels: [line], float: true });
+    expect(JSON.parse(file.design ?? '')).toEqual(bench.design.value);
+    await bench.saveTake(1, 'pcm16 dithered');
+    const { channels } = readWav(parts.downloads[1].bytes);
+    expect(channels[0].every((x, n) => Math.abs(x - line[n]) <= 1.51 / 32768)).toBe(true);
+    expect(channels[0].some((x, n) => Math.abs(x - line[n]) > 0.51 / 32768)).toBe(true);
+    bench.setValue('cell.seriesOhm', 4700);
+    const take = new File([new Uint8Array(saved.bytes)], 'with slash.wav');
+    await bench.openDesign(take);
+    expect(bench.design.value.variants[0].cell.seriesOhm).toBe(10000);
+    await bench.openDesign(fileOf([line], 48000, 'plain.wav'));
+    expect(sentences()).toEqual(['“plain.wav” holds sound and no design. Expected a design, or a saved take with one inside.']);
   });
 
   test('samples past full scale are cut in 16 bits, and that is said', async () => {
