@@ -126,6 +126,8 @@ describe('a figure is saved', () => {
     for (const number of FIGURES) {
       const { name, text } = await saved(page, number, 'SVG');
       expect(name).toMatch(/\.svg$/);
+      // What stands over the canvas is saved with what stands under it.
+      if (number === 4) expect(text).toContain('shadow tone');
       const found = await page.evaluate((source) => {
         const parsed = new DOMParser().parseFromString(source, 'image/svg+xml');
         const curves = [...parsed.querySelectorAll('path')].filter((path) => (path.getAttribute('d') ?? '').length > 100);

@@ -9,24 +9,36 @@ const PROPERTIES = [
 const FONT = 'Fettle Serif, Charter, Cambria, Liberation Serif, Times New Roman, serif';
 const CLIP = 'fettle-frame';
 
-/** `drawn` is the figure's own drawing on the page; `traces` is what stands on its canvas. */
-export function savedPicture(drawn: SVGSVGElement, area: PlotArea, traces: readonly Trace[], title: string): string {
-  const copy = drawn.cloneNode(true) as SVGSVGElement;
-  const originals = [drawn, ...drawn.querySelectorAll('*')];
-  for (const [n, element] of [copy, ...copy.querySelectorAll('*')].entries()) writeStyle(element, getComputedStyle(originals[n]));
-  const sheet = getComputedStyle(drawn);
-  const inkOf = (name: string) => sheet.getPropertyValue(name).trim();
+/** `under` and `over` are the figure's own drawings on the page, below and above its canvas; `traces` is what stands on the canvas. */
+export function savedPicture(
+  { under, over }: { readonly under: SVGSVGElement; readonly over: SVGSVGElement | null },
+  area: PlotArea,
+  traces: readonly Trace[],
+  title: string,
+): string {
   const { width, height, left, top, right, bottom } = area;
-  const { body } = copy.ownerDocument;
-  for (const [name, value] of Object.entries({ width, height, 'font-family': FONT, role: 'img', 'aria-label': title }))
-    copy.setAttribute(name, String(value));
-  const ground = `<rect width="${width}" height="${height}" fill="${getComputedStyle(body).backgroundColor}"/>`;
-  const clip = `<clipPath id="${CLIP}"><rect x="${left}" y="${top}" width="${right - left}" height="${bottom - top}"/></clipPath>`;
-  const lines = `<g clip-path="url(#${CLIP})">${traceElements(traces, inkOf)}</g>`;
-  const text = new XMLSerializer().serializeToString(copy);
-  const inside = text.indexOf('>') + 1;
-  const heading = `<title>${escaped(title)}</title>`;
-  return `${text.slice(0, inside)}${heading}${clip}${ground}${text.slice(inside, text.lastIndexOf('</svg>'))}${lines}</svg>\n`;
+  const sheet = getComputedStyle(under);
+  const inkOf = (name: string) => sheet.getPropertyValue(name).trim();
+  const ground = getComputedStyle(under.ownerDocument.body).backgroundColor;
+  return [
+    `<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 ${width} ${height}" width="${width}" height="${height}" font-family="${FONT}" role="img">`,
+    `<title>${escaped(title)}</title>`,
+    `<clipPath id="${CLIP}"><rect x="${left}" y="${top}" width="${right - left}" height="${bottom - top}"/></clipPath>`,
+    `<rect width="${width}" height="${height}" fill="${ground}"/>`,
+    insideOf(under),
+    `<g clip-path="url(#${CLIP})">${traceElements(traces, inkOf)}</g>`,
+    over === null ? '' : insideOf(over),
+    '</svg>\n',
+  ].join('\n');
+}
+
+/** What a drawing holds, each part with the style that it has on the page. */
+function insideOf(drawn: SVGSVGElement): string {
+  const copy = drawn.cloneNode(true) as SVGSVGElement;
+  const originals = drawn.querySelectorAll('*');
+  for (const [n, element] of copy.querySelectorAll('*').entries()) writeStyle(element, getComputedStyle(originals[n]));
+  const serializer = new XMLSerializer();
+  return [...copy.children].map((child) => serializer.serializeToString(child)).join('');
 }
 
 function writeStyle(element: Element, style: CSSStyleDeclaration): void {

@@ -1,6 +1,6 @@
 import type { ReadonlySignal, Signal } from '@preact/signals';
-import { rowAt, stepFrom } from '../../draw/plotData.ts';
-import { toPixel } from '../../draw/scale.ts';
+import { type PlotTable, rowAt, stepFrom } from '../../draw/plotData.ts';
+import { type Scale, toPixel, toValue } from '../../draw/scale.ts';
 import type { Drawing } from './PlotFigure.tsx';
 import { rem } from './useSheetSize.ts';
 
@@ -19,11 +19,11 @@ const PAGE = 0.1;
 /** The line at which a figure is read, moved by the pointer or, once it has the focus, by the keyboard. */
 export function PlotCursor({ drawing, title, at, words }: PlotCursorProps) {
   const { area, x, tables } = drawing;
-  const [table] = tables();
   const width = area.right - area.left;
   const pixel = at.value ?? (area.left + area.right) / 2;
-  const row = rowAt(table, x, pixel);
-  const across = Math.max(area.left, Math.min(area.right, toPixel(x, table.x.values[row])));
+  // Numbers are only gathered while somebody reads: a spectrum takes two transforms.
+  const value = at.value === null ? toValue(x, pixel) : valueAt(tables()[0], x, pixel);
+  const across = Math.max(area.left, Math.min(area.right, toPixel(x, value)));
   const onKeyDown = (event: KeyboardEvent) => {
     const steps: Record<string, number> = {
       ArrowRight: STEP,
@@ -37,7 +37,7 @@ export function PlotCursor({ drawing, title, at, words }: PlotCursorProps) {
     if (event.key === 'Escape') at.value = null;
     else if (event.key === 'Home') at.value = area.left;
     else if (event.key === 'End') at.value = area.right;
-    else if (step !== undefined) at.value = Math.max(area.left, Math.min(area.right, stepFrom(table, x, pixel, step * width)));
+    else if (step !== undefined) at.value = Math.max(area.left, Math.min(area.right, stepFrom(tables()[0], x, pixel, step * width)));
     else return;
     event.preventDefault();
   };
@@ -49,7 +49,7 @@ export function PlotCursor({ drawing, title, at, words }: PlotCursorProps) {
       aria-label={`Cursor on ${title}`}
       aria-valuemin={x.from}
       aria-valuemax={x.to}
-      aria-valuenow={table.x.values[row]}
+      aria-valuenow={value}
       aria-valuetext={words.value ?? 'not reading; an arrow key moves it'}
       style={{ left: rem(area.left), top: rem(area.top), width: rem(width), height: rem(area.bottom - area.top) }}
       onFocus={() => {
@@ -63,4 +63,8 @@ export function PlotCursor({ drawing, title, at, words }: PlotCursorProps) {
       {at.value !== null && <i class="cursor-line" style={{ left: rem(across - area.left) }} />}
     </div>
   );
+}
+
+function valueAt(table: PlotTable, x: Scale, pixel: number): number {
+  return table.x.values[rowAt(table, x, pixel)];
 }

@@ -20,7 +20,7 @@ export interface Drawing {
   readonly tables: () => readonly PlotTable[];
   /** What stands on its canvas now. */
   readonly traces?: () => readonly Trace[];
-  /** Its first `svg` is what is saved. */
+  /** What is saved is an `svg` under its canvas, and another over it where there is one. */
   readonly picture: ComponentChildren;
 }
 
@@ -66,8 +66,8 @@ export function PlotFigure({ number, className, title, lead, caption, draw, empt
   const file = `fig-${number}-${title.toLowerCase().replaceAll(/[^a-z0-9]+/g, '-')}`;
   const saveCsv = () => drawing && bench.savePlot(file, 'csv', csvOf(drawing.tables()));
   const saveSvg = () => {
-    const svg = ref.current?.querySelector('svg');
-    if (drawing && svg) bench.savePlot(file, 'svg', savedPicture(svg, drawing.area, drawing.traces?.() ?? [], title));
+    const [under, over = null] = [...(ref.current?.children ?? [])].filter((child) => child instanceof SVGSVGElement);
+    if (drawing && under) bench.savePlot(file, 'svg', savedPicture({ under, over }, drawing.area, drawing.traces?.() ?? [], title));
   };
   const actions = drawing && (
     <WordActions
