@@ -69,14 +69,12 @@ function LevelRow({ node, print }: LevelRowProps) {
     <tr>
       <th scope="row" class="what">
         {name}
+        {clipV !== null && <span class="clips-by">limit: {clipsBy}</span>}
       </th>
       <td class="number">{print(nominalV)}</td>
       <td class="number">{peakV !== null && <span class="live">{print(peakV)}</span>}</td>
       <td class="number">{print(noiseV, true)}</td>
-      <td class="number">
-        {print(clipV)}
-        {clipV !== null && <span class="clips-by">{clipsBy}</span>}
-      </td>
+      <td class="number">{print(clipV)}</td>
       <td class="number">{marginDb !== null && <span class={marginDb < 0 ? 'over' : undefined}>{signedDecimals(marginDb, 1)}</span>}</td>
     </tr>
   );
