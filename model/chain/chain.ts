@@ -200,8 +200,8 @@ function takeExternal(chain: Chain, external: Float32Array | null, start: number
 /** Copies the block's input to Float64; false when a sample was not a usable number. */
 function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number, count: number): boolean {
   const { readings } = chain;
-  const fullScaleV = chain.numbers.fullScaleV;
   let sound = true;
+  let peak = 0;
   for (let channel = 0; channel < chain.inputs.length; channel++) {
     const to = chain.inputs[channel];
     const from = inputs.length > 0 ? inputs[Math.min(channel, inputs.length - 1)] : null;
@@ -211,9 +211,10 @@ function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number
       const usable = size <= LARGEST_SAMPLE;
       if (!usable) sound = false;
       to[i] = usable ? sample : 0;
-      if (usable && size * fullScaleV > readings.inputPeakV) readings.inputPeakV = size * fullScaleV;
+      if (usable && size > peak) peak = size;
     }
   }
+  readings.inputPeakV = Math.max(readings.inputPeakV, peak * chain.numbers.fullScaleV);
   return sound;
 }
 

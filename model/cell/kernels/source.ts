@@ -102,7 +102,8 @@ export function kernelModule(law: Law): string {
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { ${helpers} } from './channel.ts';
-import type { Conductor, Kernel } from './kernel.ts';
+import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
+import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
 ${law === 'smooth' ? '' : "import { markKink } from './kinks.ts';\n"}import { currents, searchPorts } from './ports.ts';
 import { expAt } from '../../device/math.ts';
@@ -111,7 +112,12 @@ ${conductor(law, typescript)}
 
 ${kernels}
 
+${loopedKernel(law)}
+
 export const ${law.toUpperCase()}_CONDUCTOR: Conductor = ${conductorName(law)};
+
+/** For shapes that are not written out. */
+export const ${law.toUpperCase()}_LOOPED: LoopedKernel = ${loopedName(law)};
 
 /** By the key of a shape. */
 export const ${law.toUpperCase()}_KERNELS: Readonly<Record<string, Kernel>> = {
@@ -127,6 +133,10 @@ export function kernelName(law: Law, { trapezoidal, stiff, output }: Shape): str
 /** The same kernel in C, for the bench, with its solver for a conducting gate. */
 export function kernelInC(law: Law, shape: Shape): { conductor: string; kernel: string } {
   return { conductor: conductor(law, c), kernel: kernel(law, shape, c) };
+}
+
+function loopedName(law: Law): string {
+  return `looped_${law}`;
 }
 
 function conductorName(law: Law): string {
@@ -179,8 +189,9 @@ function conductor(law: Law, language: Language): string {
     ...exponential('vs', 'clampOn', 'movedS * clampRate', 'clamped', 'clampA', 'clampRate', language),
     `    ${variable} S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;`,
     '    if (grading != 0) {',
-    `      addGraded(c, device, vs, ${device(L.STEP_S)}, s, n + ${L.CHARGES_S}, n + ${L.PORT_S}); S += ${slot(L.PORT_S)}; slopeS += ${slot(L.PORT_S + 1)};`,
-    `      addGraded(c, device, vd, ${device(L.STEP_D)}, s, n + ${L.CHARGES_D}, n + ${L.PORT_D}); D += ${slot(L.PORT_D)}; slopeD += ${slot(L.PORT_D + 1)};`,
+    `      ${slot(L.CHARGES_S + 4)} = vs; ${slot(L.CHARGES_D + 4)} = vd;`,
+    `      addGraded(c, device, ${L.STEP_S}, s, n + ${L.CHARGES_S}, n + ${L.PORT_S}); S += ${slot(L.PORT_S)}; slopeS += ${slot(L.PORT_S + 1)};`,
+    `      addGraded(c, device, ${L.STEP_D}, s, n + ${L.CHARGES_D}, n + ${L.PORT_D}); D += ${slot(L.PORT_D)}; slopeD += ${slot(L.PORT_D + 1)};`,
     '    }',
     `    ${constant} channel = Fs - Fd;`,
     `    ${constant} rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;`,
@@ -193,7 +204,10 @@ function conductor(law: Law, language: Language): string {
     `      ${slot(L.EARLIER_S)} = lastS; ${slot(L.EARLIER_D)} = lastD; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
     `      ${slot(L.CHANNEL_A)} = channel + fs * stepS - fd * stepD;`,
     `      ${slot(L.JUNCTION_S)} = S + slopeS * stepS; ${slot(L.JUNCTION_D)} = D + slopeD * stepD;`,
-    '      if (grading != 0) keepCharges(c, device, s, n);',
+    '      if (grading != 0) {',
+    `        ${slot(L.CHARGES_S + 4)} += ${slot(L.CHARGES_S + 5)} * stepS; ${slot(L.CHARGES_D + 4)} += ${slot(L.CHARGES_D + 5)} * stepD;`,
+    '        keepCharges(s, n);',
+    '      }',
     '      return;',
     '    }',
     `    if (${absolute}(stepS) < rounding && ${absolute}(stepD) < rounding) {`,
@@ -339,6 +353,106 @@ function kernel(law: Law, shape: Shape, language: Language): string {
   return lines.join('\n');
 }
 
+/**
+ * The kernel of any number of states, in loops over the same coefficients: for circuits of a shape that is not written out. A function that makes it,
+ * with the scratch memory that it needs.
+ */
+function loopedKernel(law: Law): string {
+  const { constant, variable, sqrt } = typescript;
+  const device = (index: number) => `c[device + ${index}]`;
+  const slot = (index: number) => `s[slots + ${index}]`;
+  const places = 'device, aI, bI';
+  const bends = law !== 'smooth';
+  const solution =
+    law === 'square'
+      ? squareSolution('perAs', 'perAd', places, slot, typescript)
+      : newtonSolution(law, 'perAs', 'perAd', places, slot, typescript);
+  return [
+    `function ${loopedName(law)}(trapezoidal: number, stiff: number): Kernel {`,
+    '  const n = trapezoidal + stiff, { row, past, all } = layoutOf(n), { device, junction, rows, outputRow } = all;',
+    '  const slots = slotStart(trapezoidal, stiff), width = row.width, aI = row.current, bI = width + row.current;',
+    "  /** What each row remembers, then the audio, the control and 1; the stiff states' past, weighted; the sums of the rows. */",
+    '  const drives = new Float64Array(n + 3), weighed = new Float64Array(n), sums = new Float64Array(n + 3);',
+    '  drives[n + 2] = 1;',
+    '  return (c, t, w, e, s, audio, control, output, from, to) => {',
+    '  const noisy = w.length > 0, marking = e.length > 0;',
+    '  const perAs = c[aI], perAd = c[bI];',
+    ...deviceConstants(law, device).map(([name, value]) => `  ${constant} ${name} = ${value};`),
+    `  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`,
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
+    '  for (let i = from; i < to; i++) {',
+    ...[
+      `${constant} u = audio[i], v = control[i], noise = i * (rows + 1);`,
+      ...(bends ? [`${constant} qs = vs, qd = vd;`] : []),
+      'for (let k = 0; k < trapezoidal; k++) weighed[k] = s[k];',
+      'for (let k = 0; k < stiff; k++) {',
+      '  const x = s[trapezoidal + k], e1 = s[n + k], e2 = s[n + stiff + k];',
+      `  weighed[trapezoidal + k] = 3.5 * x - 2.25 * e1 + ${5 / 6} * e2 - 0.125 * s[n + 2 * stiff + k];`,
+      '  s[n + 2 * stiff + k] = e2; s[n + stiff + k] = e1; s[n + k] = x;',
+      '}',
+      'for (let r = 0; r < n; r++) {',
+      '  const at = all.memory + r * past.width, x = r < trapezoidal ? s : weighed;',
+      '  let even = c[at + n] * u0, odd = c[at + n + 1] * v0;',
+      '  for (let k = 0; k + 1 < n; k += 2) { even += c[at + k] * x[k]; odd += c[at + k + 1] * x[k + 1]; }',
+      '  if (n % 2 === 1) even += c[at + n - 1] * x[n - 1];',
+      '  if (r < trapezoidal) {',
+      '    const old = all.memoryJunction + 2 * r;',
+      '    even += c[at + n + 2] * I0; odd += c[old] * S0 + c[old + 1] * D0;',
+      '  }',
+      '  drives[r] = even + odd;',
+      '}',
+      'drives[n] = u; drives[n + 1] = v;',
+      'for (let r = 0; r < n + 2; r++) {',
+      '  const at = r * width;',
+      '  let even = c[at + n], odd = c[at + n + 1] * v;',
+      '  even = even * u + c[at + n + 2];',
+      '  for (let k = 0; k + 1 < n; k += 2) { even += c[at + k] * drives[k]; odd += c[at + k + 1] * drives[k + 1]; }',
+      '  if (n % 2 === 1) odd += c[at + n - 1] * drives[n - 1];',
+      '  sums[r] = even + odd;',
+      '}',
+      `${variable} a = sums[0], b = sums[1], I = 0, S = 0, D = 0, J = 0;`,
+      'if (noisy) {',
+      `  ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+      `  evaluate(c, t, device, s, slots + ${L.OVERDRIVE_S}, slots + ${L.TERM_S}); evaluate(c, t, device, s, slots + ${L.OVERDRIVE_D}, slots + ${L.TERM_D});`,
+      `  J = w[noise + rows] * ${sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
+      '  a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;',
+      '  for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];',
+      '}',
+      ...solution,
+      'if (vs > on || vd > on) {',
+      `  ${slot(L.GIVEN_A)} = a; ${slot(L.GIVEN_B)} = b; ${slot(L.GIVEN_FREE)} = I;`,
+      `  ${conductorName(law)}(c, t, device, aI, bI, junction, s, slots);`,
+      `  I = ${slot(L.CHANNEL_A)}; S = ${slot(L.JUNCTION_S)}; D = ${slot(L.JUNCTION_D)}; vs = ${slot(L.OVERDRIVE_S)}; vd = ${slot(L.OVERDRIVE_D)};`,
+      '}',
+      'I += J;',
+      `${constant} last = outputRow * width;`,
+      `${variable} y = c[last + n] * u + c[last + n + 1] * v + c[last + n + 2] + c[last + n + 3] * I + c[junction + 2 * outputRow] * S + c[junction + 2 * outputRow + 1] * D;`,
+      'if (noisy) y += w[noise + outputRow];',
+      'for (let k = 0; k < n; k++) {',
+      '  const at = junction + 4 + 2 * k, x = sums[2 + k] + c[(2 + k) * width + n + 3] * I + (c[at] * S + c[at + 1] * D);',
+      '  s[k] = x; y += c[last + k] * x;',
+      '}',
+      'output[i] = y;',
+      ...(bends
+        ? [
+            'if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {',
+            `  ${slot(L.BEFORE_S)} = qs; ${slot(L.BEFORE_D)} = qd; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; ${slot(L.PER_A)} = c[last + n + 3];`,
+            '  markKink(c, t, device, aI, bI, e, i, s, slots);',
+            '}',
+          ]
+        : []),
+      'u0 = u; v0 = v;',
+      'E0 = I0; I0 = I; S0 = S; D0 = D;',
+    ].map((line) => `    ${line}`),
+    '  }',
+    `  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`,
+    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
+    `  if (to > from) { ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; }`,
+    '  };',
+    '}',
+  ].join('\n');
+}
+
 /** Added in pairs, so that no addition waits for a long row of others. */
 function sum(terms: readonly string[]): string {
   if (terms.length <= 2) return terms.join(' + ');
@@ -374,9 +488,24 @@ function deviceConstants(law: Law, device: (index: number) => string): [string, 
   return law === 'gradual' ? shaped : [...shaped, ['pieces', device(L.PIECES)]];
 }
 
+function givenText(slot: (index: number) => string): string {
+  return `${slot(L.GIVEN_A)} = a; ${slot(L.GIVEN_B)} = b;`;
+}
+
+function searchText(places: string, slot: (index: number) => string): string {
+  return `${givenText(slot)} searched(c, t, ${places}, s, ${slotsOf(slot)}); I = ${slot(L.GIVEN_FREE)}; ${slot(L.FALLBACKS)} += 1;`;
+}
+
+/** Where the slots begin. */
+function slotsOf(slot: (index: number) => string): string {
+  return slot(0).slice(2, -1);
+}
+
 function squareSolution(aI: string, bI: string, places: string, slot: (index: number) => string, { constant, sqrt }: Language): string[] {
+  const given = givenText(slot);
+  const searches = searchText(places, slot);
   return [
-    `if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, ${places}, a, b, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; ${slot(L.FALLBACKS)} += 1; }`,
+    `if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { ${searches} }`,
     'else if (a > 0 || b > 0) {',
     `  ${constant} q = 1 + fall * a + rise * b;`,
     `  ${constant} w = scale * (a - b) * (a + b);`,
@@ -387,7 +516,7 @@ function squareSolution(aI: string, bI: string, places: string, slot: (index: nu
     '    } else {',
     `      I = -2 * scale * b * b / (1 + rise * b + ${sqrt}(1 + 2 * rise * b));`,
     '    }',
-    `    if (lambda != 0) { bent(c, t, ${places}, a, b, I, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; }`,
+    `    if (lambda != 0) { ${given} ${slot(L.GIVEN_FREE)} = I; bent(c, t, ${places}, s, ${slotsOf(slot)}); I = ${slot(L.GIVEN_FREE)}; }`,
     '  }',
     '}',
     `vs = a + ${aI} * I;`,
@@ -443,7 +572,7 @@ function newtonSolution(law: Law, aI: string, bI: string, places: string, slot: 
     `  ${language.constant} moved = (${bI} - ${aI}) * change;`,
     '  if (moved < enough && moved > -enough) { settled = 1; break; }',
     '}',
-    `if (settled == 0) { searched(c, t, ${places}, a, b, s, ${slot(L.TERM_S).slice(2, -1)}); I = ${slot(L.TERM_S)}; ${slot(L.FALLBACKS)} += 1; }`,
+    `if (settled == 0) { ${searchText(places, slot)} }`,
     `vs = a + ${aI} * I; vd = b + ${bI} * I;`,
   ];
 }
