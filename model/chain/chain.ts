@@ -8,7 +8,7 @@ import { type Aligner, align, createAligner, setAligner } from './align.ts';
 import type { ChainNumbers } from './compile.ts';
 import { latencyOf } from './latency.ts';
 import type { ResidualPart } from './residual.ts';
-import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, setVoiceResidual, type Voice } from './voice.ts';
+import { createVoice, FULL_SCALE_V, inherit, LONGEST_BLOCK, moveVoice, processVoice, setVoiceResidual, type Voice } from './voice.ts';
 
 const FADE_SEC = 0.03;
 /** A new voice runs unheard for at least this long before it is faded in, so that its filters are full. */
@@ -214,7 +214,8 @@ function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number
       if (usable && size > peak) peak = size;
     }
   }
-  readings.inputPeakV = Math.max(readings.inputPeakV, peak * chain.numbers.fullScaleV);
+  // From an array: the numbers come in objects of many makings, of which reading a fraction costs memory.
+  readings.inputPeakV = Math.max(readings.inputPeakV, peak * chain.voice.levels.to[FULL_SCALE_V]);
   return sound;
 }
 
