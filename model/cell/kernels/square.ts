@@ -25,9 +25,9 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const lambda = c[device + 5];
   const scale = c[device + 6];
   const lastS = s[n + 5], lineS = lastS - s[n + 32];
-  let vs = Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
+  let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
   const lastD = s[n + 6], lineD = lastD - s[n + 33];
-  let vd = Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
+  let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
     let Fs = 0, fs = 0, Fd = 0, fd = 0;

@@ -18,10 +18,10 @@ export function conductor(law: Law, language: Language): string {
     (law === 'square' ? [`if (${v} > 0) { ${F} = scale * ${v} * ${v}; ${f} = 2 * scale * ${v}; }`] : lawText(law, v, F, f, language)).map(
       (line) => `    ${line.replaceAll('DEVICE', 'device').replaceAll('TERM', `n + ${L.TERM_S}`)}`,
     );
-  /** Where an end last conducted, a step further along its line unless that is half of nVT; or just into conduction. */
+  /** Where an end last conducted, a step further along its line unless that is half of nVT; or just into conduction; with graded capacitances always along its line. */
   const start = (end: 'S' | 'D', free: string, over: number, earlier: number) => [
     `  ${constant} last${end} = ${slot(over)}, line${end} = last${end} - ${slot(earlier)};`,
-    `  ${variable} v${end === 'S' ? 's' : 'd'} = ${least}(${free}, last${end} > on${end} ? last${end} + (line${end} * rate${end} < 0.5 && line${end} * rate${end} > -0.5 ? line${end} : 0) : knee${end});`,
+    `  ${variable} v${end === 'S' ? 's' : 'd'} = grading != 0 && last${end} < on${end} ? last${end} + line${end} : ${least}(${free}, last${end} > on${end} ? last${end} + (line${end} * rate${end} < 0.5 && line${end} * rate${end} > -0.5 ? line${end} : 0) : knee${end});`,
   ];
   const cut = (end: 'S' | 'D', v: string) =>
     `    ${constant} step${end} = whole${end} * rate${end} <= 2 ? whole${end} : ${v} < on${end} ? ${least}(whole${end}, knee${end} - ${v}) : (2 + whole${end} * rate${end} / (1 + 0.1 * whole${end} * rate${end})) / rate${end};`;
