@@ -9,11 +9,11 @@ import { atTemperature, thermalVoltage } from '../device/temperature.ts';
 import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
-import { loopedKernel } from './kernels/looped.ts';
 import { restCharge } from './kernels/graded.ts';
-import { GRADUAL_CONDUCTOR, GRADUAL_KERNELS } from './kernels/gradual.ts';
-import { SMOOTH_CONDUCTOR, SMOOTH_KERNELS } from './kernels/smooth.ts';
-import { SQUARE_CONDUCTOR, SQUARE_KERNELS } from './kernels/square.ts';
+import { GRADUAL_KERNELS, GRADUAL_LOOPED } from './kernels/gradual.ts';
+import { SMOOTH_KERNELS, SMOOTH_LOOPED } from './kernels/smooth.ts';
+import { SQUARE_KERNELS, SQUARE_LOOPED } from './kernels/square.ts';
+import { createNoiseRows, type NoiseRows } from './noise.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
 import {
   BARRIER_V,
@@ -34,7 +34,7 @@ import {
 import { createReduction, discretise, type Reduction, respond, respondAtRest } from './reduce.ts';
 
 const KERNELS = { square: SQUARE_KERNELS, gradual: GRADUAL_KERNELS, smooth: SMOOTH_KERNELS };
-const CONDUCTORS = { square: SQUARE_CONDUCTOR, gradual: GRADUAL_CONDUCTOR, smooth: SMOOTH_CONDUCTOR };
+const LOOPED = { square: SQUARE_LOOPED, gradual: GRADUAL_LOOPED, smooth: SMOOTH_LOOPED };
 
 /** The smooth law's table reaches this far past VGS = 0; beyond it, and beyond the longest table, the law is evaluated directly. */
 const TABLE_BEYOND_V = 1.5;
@@ -71,6 +71,7 @@ export interface Cell {
   readonly stateCount: number;
   /** Where the slots of `kernels/layout.ts` begin in `state`. */
   readonly slots: number;
+  readonly layout: L.Layout;
   readonly kernel: Kernel;
   /** The values in force; changed by `loadValues`. */
   readonly values: Float64Array;
@@ -83,10 +84,12 @@ export interface Cell {
   readonly bend: Float64Array;
   readonly state: Float64Array;
   readonly stepSec: number;
+  readonly noise: NoiseRows;
   readonly rest: RestMemory;
 }
 
 interface RestMemory {
+  readonly layout: L.Layout;
   readonly coefficients: Float64Array;
   readonly state: Float64Array;
   readonly audio: Float64Array;
@@ -150,7 +153,7 @@ function kernelOf(law: Law, plan: Plan): Kernel {
   const stiff = voltages.states.slice(trapezoidal);
   const kernels = KERNELS[law];
   const exact = kernels[`${trapezoidal} ${stiff} ${voltages.output}`];
-  return exact ?? kernels[`${trapezoidal} ${'x'.repeat(stiff.length)} x`] ?? loopedKernel(trapezoidal, stiff.length, CONDUCTORS[law]);
+  return exact ?? kernels[`${trapezoidal} ${'x'.repeat(stiff.length)} x`] ?? LOOPED[law](trapezoidal, stiff.length);
 }
 
 /** A cell advancing by `stepSec`, with its states at zero: call `settle` before the first sample. Throws when the network is singular. */
@@ -158,22 +161,27 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
   const n = numbers.plan.states.length;
   const { trapezoidal } = numbers.plan;
   const slots = L.slotStart(trapezoidal, n - trapezoidal);
+  const layout = L.layoutOf(n);
+  const restLayout = L.layoutOf(0);
   const cell: Cell = {
     numbers,
     stateCount: n,
     values: Float64Array.from(numbers.values),
     reduction: createReduction(numbers.plan),
-    coefficients: new Float64Array(L.coefficientLayout(n).length),
-    middle: new Float64Array(L.coefficientLayout(n).length),
-    target: new Float64Array(L.coefficientLayout(n).length),
-    increment: new Float64Array(L.coefficientLayout(n).length),
-    bend: new Float64Array(L.coefficientLayout(n).length),
+    coefficients: new Float64Array(layout.all.length),
+    middle: new Float64Array(layout.all.length),
+    target: new Float64Array(layout.all.length),
+    increment: new Float64Array(layout.all.length),
+    bend: new Float64Array(layout.all.length),
     state: new Float64Array(slots + L.STATE_SLOTS),
     slots,
+    layout,
     kernel: kernelOf(numbers.law, numbers.plan),
     stepSec,
+    noise: createNoiseRows(n, numbers.plan.noisy.length),
     rest: {
-      coefficients: new Float64Array(L.coefficientLayout(0).length),
+      layout: restLayout,
+      coefficients: new Float64Array(restLayout.all.length),
       state: new Float64Array(L.STATE_SLOTS),
       audio: new Float64Array(1),
       control: new Float64Array(1),
@@ -368,9 +376,11 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   state[cell.slots + L.OLD_CONTROL] = controlV;
   state[cell.slots + L.EARLIER_A] = channelA;
   if (cell.numbers.grading > 0) {
-    const { device } = L.coefficientLayout(n);
-    restCharge(cell.target, device, overdriveV(cell, 'source'), state, cell.slots + L.CHARGES_S);
-    restCharge(cell.target, device, overdriveV(cell, 'drain'), state, cell.slots + L.CHARGES_D);
+    const { device } = cell.layout.all;
+    state[cell.slots + L.CHARGES_S + 4] = overdriveV(cell, 'source');
+    state[cell.slots + L.CHARGES_D + 4] = overdriveV(cell, 'drain');
+    restCharge(cell.target, device, state, cell.slots + L.CHARGES_S);
+    restCharge(cell.target, device, state, cell.slots + L.CHARGES_D);
   }
   return rest.output[0];
 }

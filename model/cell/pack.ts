@@ -2,12 +2,12 @@
  * A cell's reduced matrices, in the frame of an n-channel part, as the coefficients that kernels read: `kernels/layout.ts` says what stands where.
  */
 import type { Law } from '../design/types.ts';
-import { log } from '../device/math.ts';
+import { logAt } from '../device/math.ts';
 import { TERMS } from '../device/table.ts';
 import type { Cell } from './cell.ts';
 import * as L from './kernels/layout.ts';
+import { packNoise } from './noise.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN } from './plan.ts';
-import { memoryColumns, stepColumns } from './reduce.ts';
 
 /** Below this many nVT, and where less than this flows above it, a junction carries its reverse current and no more. */
 const OFF_BELOW = -10;
@@ -41,9 +41,8 @@ export function packStep(cell: Cell): void {
   const n = cell.stateCount;
   const { target: c, reduction } = cell;
   const { polarity, plan } = cell.numbers;
-  const row = L.rowLayout(n);
-  const all = L.coefficientLayout(n);
-  const columns = stepColumns(n, plan.noisy.length);
+  const { row, all } = cell.layout;
+  const columns = reduction.layout.step;
   const { step, response } = reduction;
   for (let r = 0; r < n + 2; r++) {
     const from = r * columns.width;
@@ -63,6 +62,7 @@ export function packStep(cell: Cell): void {
   packMemory(cell);
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
   packGrading(cell, c, all.device);
+  packNoise(cell);
 }
 
 /** The gate's capacitances where they fall with reverse voltage: then every sample is solved by the ports. */
@@ -82,8 +82,8 @@ function packCurrents(
   c: Float64Array,
   to: number,
   r: number,
-  row: ReturnType<typeof L.rowLayout>,
-  all: ReturnType<typeof L.coefficientLayout>,
+  row: L.Layout['row'],
+  all: L.Layout['all'],
   byChannel: number,
   byD: number,
 ): void {
@@ -99,10 +99,8 @@ function packMemory(cell: Cell): void {
   const n = cell.stateCount;
   const { target: c, reduction } = cell;
   const { polarity } = cell.numbers;
-  const row = L.rowLayout(n);
-  const past = L.memoryLayout(n);
-  const all = L.coefficientLayout(n);
-  const from = memoryColumns(n);
+  const { row, past, all } = cell.layout;
+  const from = reduction.layout.memory;
   for (let i = 0; i < n; i++) {
     const at = i * from.width;
     const to = all.memory + i * past.width;
@@ -136,8 +134,8 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   c[at + L.LAW] = L.LAW_NUMBER[law];
   c[at + L.POLARITY] = cell.numbers.polarity;
   c[at + L.GATE_OFF_V] = offV;
-  c[at + L.JUNCTION_ON_V] = conductsFrom(reverseA, nVt) - offV;
-  c[at + L.CLAMP_ON_V] = conductsFrom(clampA, clampNVt) - offV;
+  putThreshold(c, at + L.JUNCTION_ON_V, reverseA, nVt, offV);
+  putThreshold(c, at + L.CLAMP_ON_V, clampA, clampNVt, offV);
   c[at + L.ON_V] = Math.min(c[at + L.JUNCTION_ON_V], c[at + L.CLAMP_ON_V]);
   c[at + L.REVERSE_A] = reverseA;
   c[at + L.INVERSE_NVT] = 1 / nVt;
@@ -162,17 +160,18 @@ function mostCurvature(law: Law, scale: number, widthV: number, offV: number, ex
   return ((exponent * scale) / (widthV * widthV)) * (exponent > 2 ? Math.max(1, -offV / widthV) : 1);
 }
 
-/** The voltage below which a junction's current above its reverse current is left out, V. */
-function conductsFrom(reverseA: number, nVtV: number): number {
-  return reverseA > 0 ? Math.min(OFF_BELOW, log(LEFT_OUT_A / reverseA)) * nVtV : Number.POSITIVE_INFINITY;
+/** The overdrive below which a junction's current above its reverse current is left out, V. */
+function putThreshold(c: Float64Array, at: number, reverseA: number, nVtV: number, offV: number): void {
+  c[at] = LEFT_OUT_A / reverseA;
+  logAt(c, at);
+  c[at] = reverseA > 0 ? Math.min(OFF_BELOW, c[at]) * nVtV - offV : Number.POSITIVE_INFINITY;
 }
 
 /** The direct-current network as the coefficients of a cell without states. */
 export function packRest(cell: Cell): void {
   const { rest, reduction, stateCount: n } = cell;
   const { polarity } = cell.numbers;
-  const row = L.rowLayout(0);
-  const all = L.coefficientLayout(0);
+  const { row, all } = rest.layout;
   const c = rest.coefficients;
   for (let r = 0; r < 3; r++) {
     const from = (n + r) * DRIVES;

@@ -27,6 +27,7 @@ export interface Reduction {
   readonly memory: Float64Array;
   /** Discrete map: rows port voltages (2), new states; columns in `stepColumns`. */
   readonly step: Float64Array;
+  readonly layout: { readonly step: ReturnType<typeof stepColumns>; readonly memory: ReturnType<typeof memoryColumns> };
   readonly work: {
     readonly matrix: Float64Array;
     readonly pivots: Int32Array;
@@ -53,15 +54,17 @@ const NEWEST = 47 / 24;
 
 export function createReduction(plan: Plan): Reduction {
   const n = plan.states.length;
-  const { width } = stepColumns(n, plan.noisy.length);
+  const layout = { step: stepColumns(n, plan.noisy.length), memory: memoryColumns(n) };
+  const { width } = layout.step;
   const largest = Math.max(plan.size, plan.rest.size);
   return {
     plan,
     values: Float64Array.from(plan.values),
     response: new Float64Array((n + 3) * plan.width),
     rest: new Float64Array((n + 3) * DRIVES),
-    memory: new Float64Array(n * memoryColumns(n).width),
+    memory: new Float64Array(n * layout.memory.width),
     step: new Float64Array((n + 2) * width),
+    layout,
     work: {
       matrix: new Float64Array(largest * largest),
       pivots: new Int32Array(largest),
@@ -129,7 +132,7 @@ function subtractRow(to: Float64Array, toRow: number, from: Float64Array, fromRo
 export function discretise(reduction: Reduction, stepSec: number): boolean {
   const { plan, response, step, memory, work } = reduction;
   const n = plan.states.length;
-  const columns = stepColumns(n, plan.noisy.length);
+  const columns = reduction.layout.step;
   const { width } = columns;
   work.left.fill(0);
   work.right.fill(0);
@@ -174,10 +177,10 @@ function scaleMemory({ plan, values, memory, work }: Reduction, stepSec: number)
 }
 
 /** Adds f₁, and f₀ where the row is trapezoidal. Constants and noise are steady over a step. */
-function addDrives({ plan, response, memory, work }: Reduction, row: number): void {
+function addDrives({ plan, response, memory, work, layout }: Reduction, row: number): void {
   const n = plan.states.length;
-  const columns = stepColumns(n, plan.noisy.length);
-  const past = memoryColumns(n);
+  const columns = layout.step;
+  const past = layout.memory;
   const isTrapezoidal = row < plan.trapezoidal;
   const weight = isTrapezoidal ? 0.5 : 1;
   const f = row * plan.width;
@@ -217,17 +220,16 @@ function addStorage(reduction: Reduction, stepSec: number): void {
 }
 
 /** Adds `weight` times h times the derivative of a state to a row: by backward differences where both are stiff, else by one difference. */
-function addDerivative({ plan, memory, work }: Reduction, row: number, column: number, weight: number): void {
+function addDerivative({ plan, memory, work, layout }: Reduction, row: number, column: number, weight: number): void {
   const n = plan.states.length;
   const isStiff = row >= plan.trapezoidal && column >= plan.trapezoidal;
   work.left[row * n + column] += isStiff ? NEWEST * weight : weight;
-  memory[row * memoryColumns(n).width + column] += weight;
+  memory[row * layout.memory.width + column] += weight;
 }
 
-function addSourceDerivative({ plan, memory, work }: Reduction, row: number, fromSources: Float64Array, weight: number): void {
-  const n = plan.states.length;
-  const columns = stepColumns(n, plan.noisy.length);
-  const past = memoryColumns(n);
+function addSourceDerivative({ memory, work, layout }: Reduction, row: number, fromSources: Float64Array, weight: number): void {
+  const columns = layout.step;
+  const past = layout.memory;
   for (let k = 0; k < 2; k++) {
     work.right[row * columns.width + columns.newU + k] -= weight * fromSources[k];
     memory[row * past.width + past.oldU + k] += weight * fromSources[k];

@@ -10,9 +10,9 @@
 import { expAt } from '../device/math.ts';
 import { type Cell, copyOf } from './cell.ts';
 import { evaluate } from './kernels/channel.ts';
-import { deviation, NEWEST, pastCharge, pushCharge } from './kernels/graded.ts';
+import { deviate, NEWEST, pastCharge, pushCharge } from './kernels/graded.ts';
 import * as L from './kernels/layout.ts';
-import { addRows, remember, shiftPast, weighPast } from './kernels/looped.ts';
+import { addRows, remember, shiftPast, weighPast } from './kernels/rows.ts';
 
 /** In `work`: both slopes of the channel, those of the gate's ports and what their charges remember, and room for one exponential. */
 const BY_S = 0;
@@ -113,7 +113,8 @@ function findSlopes(cell: Cell, silent: Cell, state: Float64Array, work: Float64
     work[GATE_S + end] = slope;
     work[HELD_S + end] = 0;
     if (c[device + L.GRADING] === 0) continue;
-    deviation(c[device + L.GRADING], c[device + L.BARRIER_V], v, work, DEVIATION);
+    work[DEVIATION] = v;
+    deviate(c, device, work, DEVIATION);
     const perStepS = c[device + (end === 0 ? L.STEP_S : L.STEP_D)];
     work[EXCESS_S + end] = work[DEVIATION + 1];
     work[GATE_S + end] += perStepS * NEWEST * work[DEVIATION + 1];

@@ -8,7 +8,7 @@ import { type Aligner, align, createAligner, setAligner } from './align.ts';
 import type { ChainNumbers } from './compile.ts';
 import { latencyOf } from './latency.ts';
 import type { ResidualPart } from './residual.ts';
-import { createVoice, inherit, LONGEST_BLOCK, moveVoice, processVoice, setVoiceResidual, type Voice } from './voice.ts';
+import { createVoice, FULL_SCALE_V, inherit, LONGEST_BLOCK, moveVoice, processVoice, setVoiceResidual, type Voice } from './voice.ts';
 
 const FADE_SEC = 0.03;
 /** A new voice runs unheard for at least this long before it is faded in, so that its filters are full. */
@@ -200,8 +200,8 @@ function takeExternal(chain: Chain, external: Float32Array | null, start: number
 /** Copies the block's input to Float64; false when a sample was not a usable number. */
 function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number, count: number): boolean {
   const { readings } = chain;
-  const fullScaleV = chain.numbers.fullScaleV;
   let sound = true;
+  let peak = 0;
   for (let channel = 0; channel < chain.inputs.length; channel++) {
     const to = chain.inputs[channel];
     const from = inputs.length > 0 ? inputs[Math.min(channel, inputs.length - 1)] : null;
@@ -211,9 +211,11 @@ function takeInputs(chain: Chain, inputs: readonly Float32Array[], start: number
       const usable = size <= LARGEST_SAMPLE;
       if (!usable) sound = false;
       to[i] = usable ? sample : 0;
-      if (usable && size * fullScaleV > readings.inputPeakV) readings.inputPeakV = size * fullScaleV;
+      if (usable && size > peak) peak = size;
     }
   }
+  // From an array: the numbers come in objects of many makings, of which reading a fraction costs memory.
+  readings.inputPeakV = Math.max(readings.inputPeakV, peak * chain.voice.levels.to[FULL_SCALE_V]);
   return sound;
 }
 

@@ -57,7 +57,8 @@ interface Levels {
   total: number;
 }
 
-const FULL_SCALE_V = 0;
+/** Places in a voice's levels. */
+export const FULL_SCALE_V = 0;
 const PER_V = 1;
 const RESIDUAL_PER_V = 2;
 

@@ -26,10 +26,19 @@ function powersOfTwo(): Float64Array {
 
 /** e^x. Overflows to Infinity above 709.78, underflows to 0 below −745.13; NaN in, NaN out. */
 export function exp(x: number): number {
-  if (x > 709.782712893384) return Number.POSITIVE_INFINITY;
-  if (x < -745.1332191019412) return 0;
-  if (Number.isNaN(x)) return Number.NaN;
-  const k = Math.floor(x * INVERSE_LN2 + 0.5);
+  const slot = Float64Array.of(x);
+  expAt(slot, 0);
+  return slot[0];
+}
+
+/** Puts e to the power of `slots[at]` in its place: on the audio thread, where a number as an argument or a result may cost memory. */
+export function expAt(slots: Float64Array, at: number): void {
+  const x = slots[at];
+  if (!(x <= 709.782712893384 && x >= -745.1332191019412)) {
+    slots[at] = x > 0 ? Number.POSITIVE_INFINITY : x < 0 ? 0 : Number.NaN;
+    return;
+  }
+  const k = (x * INVERSE_LN2 + (x < 0 ? -0.5 : 0.5)) | 0;
   const high = x - k * LN2_HIGH;
   const low = k * LN2_LOW;
   const r = high - low;
@@ -41,24 +50,34 @@ export function exp(x: number): number {
         t *
           (-2.77777777770155933842e-3 + t * (6.61375632143793436117e-5 + t * (-1.6533902205465251539e-6 + t * 4.13813679705723846039e-8))));
   const y = 1 - (low - (r * c) / (2 - c) - high);
-  if (k > -1021) return k > 1022 ? y * 2 * POWERS_OF_TWO[k - 1 - LOWEST_EXPONENT] : y * POWERS_OF_TWO[k - LOWEST_EXPONENT];
-  return y * POWERS_OF_TWO[k + 100 - LOWEST_EXPONENT] * POWERS_OF_TWO[-100 - LOWEST_EXPONENT];
-}
-
-/** Puts e to the power of `slots[at]` in its place: a number as an argument or a result may cost memory. */
-export function expAt(slots: Float64Array, at: number): void {
-  slots[at] = exp(slots[at]);
+  if (k > 1022) slots[at] = y * 2 * POWERS_OF_TWO[k - 1 - LOWEST_EXPONENT];
+  else if (k > -1021) slots[at] = y * POWERS_OF_TWO[k - LOWEST_EXPONENT];
+  else slots[at] = y * POWERS_OF_TWO[k + 100 - LOWEST_EXPONENT] * POWERS_OF_TWO[-100 - LOWEST_EXPONENT];
 }
 
 /** Natural logarithm. log(0) is −Infinity, of a negative number NaN. */
 export function log(x: number): number {
-  if (x < 0 || Number.isNaN(x)) return Number.NaN;
-  if (x === 0) return Number.NEGATIVE_INFINITY;
-  if (x === Number.POSITIVE_INFINITY) return x;
-  if (x < POWERS_OF_TWO[-1000 - LOWEST_EXPONENT]) return log(x * POWERS_OF_TWO[100 - LOWEST_EXPONENT]) - 100 * LN2_HIGH - 100 * LN2_LOW;
-  let k = 0;
-  let m = x;
-  for (let p = 512; p >= 1; p /= 2) {
+  const slot = Float64Array.of(x);
+  logAt(slot, 0);
+  return slot[0];
+}
+
+/** Between these the exponent is found in four steps. */
+const SMALL = POWERS_OF_TWO[-15 - LOWEST_EXPONENT];
+const LARGE = POWERS_OF_TWO[16 - LOWEST_EXPONENT];
+/** Below this, POWERS_OF_TWO has no reciprocal. */
+const TINY = POWERS_OF_TWO[-1000 - LOWEST_EXPONENT];
+
+/** Puts the natural logarithm of `slots[at]` in its place, as `expAt` does. */
+export function logAt(slots: Float64Array, at: number): void {
+  const x = slots[at];
+  if (!(x > 0 && x < Number.POSITIVE_INFINITY)) {
+    slots[at] = x === 0 ? Number.NEGATIVE_INFINITY : x > 0 ? x : Number.NaN;
+    return;
+  }
+  let k = x < TINY ? -100 : 0;
+  let m = x < TINY ? x * POWERS_OF_TWO[100 - LOWEST_EXPONENT] : x;
+  for (let p = m > SMALL && m < LARGE ? 8 : 512; p >= 1; p >>= 1) {
     if (m >= POWERS_OF_TWO[p - LOWEST_EXPONENT]) {
       m *= POWERS_OF_TWO[-p - LOWEST_EXPONENT];
       k += p;
@@ -68,7 +87,7 @@ export function log(x: number): number {
     }
   }
   if (m >= 1.4142135623730951) {
-    m /= 2;
+    m *= 0.5;
     k += 1;
   } else if (m < 0.7071067811865476) {
     m *= 2;
@@ -79,10 +98,10 @@ export function log(x: number): number {
   const z = s * s;
   const w = z * z;
   const odd = w * (3.999999999940941908e-1 + w * (2.222219843214978396e-1 + w * 1.531383769920937332e-1));
-  const even = z * (6.66666666666673513e-1 + w * (2.857142874366239149e-1 + w * (1.818357216161805012e-1 + w * 1.479819860511658591e-1)));
+  const even = z * (6.66666666666673513e-1 + w * (2.857142874366239149e-1 + w * (1.818357216161805012e-1 + w * 1.479819860510658591e-1)));
   const r = odd + even;
   const half = 0.5 * f * f;
-  return k * LN2_HIGH - (half - (s * (half + r) + k * LN2_LOW) - f);
+  slots[at] = k * LN2_HIGH - (half - (s * (half + r) + k * LN2_LOW) - f);
 }
 
 /** Logarithm to base ten, within 2 ulp. */

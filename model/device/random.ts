@@ -1,15 +1,37 @@
 /**
  * Gaussian and triangular numbers from a seed, the same in every engine.
  *
- * Law      xorshift128 on four 32-bit words (Marsaglia, J. Stat. Soft. 8 (2003) 14), seeded by a multiplicative hash; pairs of uniform numbers to
- *          Gaussian ones by the polar method (Marsaglia & Bray, SIAM Rev. 6 (1964) 260), or added to triangular ones; from memory
+ * Law      xorshift128 on four 32-bit words (Marsaglia, J. Stat. Soft. 8 (2003) 14), seeded by a multiplicative hash; a uniform number to a Gaussian
+ *          one by layers of equal area (Marsaglia & Tsang, J. Stat. Soft. 5 (2000) 8), its layer and its place from different bits (Doornik, 2005);
+ *          two added to a triangular one; from memory
  */
-import { log } from './math.ts';
+import { exp, expAt, log, logAt } from './math.ts';
 
-/** Words of the generator, then a kept Gaussian number and whether there is one. */
+/** Layers of equal area under exp(−x²/2), the lowest with the tail beyond TAIL_FROM: figures of Marsaglia & Tsang for 128. */
+const LAYERS = 128;
+const TAIL_FROM = 3.442619855899;
+const AREA = 9.91256303526217e-3;
+const INVERSE_WORD = 1 / 4294967296;
+const EDGES = edges();
+const HEIGHTS = EDGES.map((x) => exp(-0.5 * x * x));
+/** For each layer, what turns 24 bits with their sign into a place in it: the lowest counts as wide as its area. */
+const WIDTHS = EDGES.map((x, layer) => (layer === 0 ? AREA / HEIGHTS[1] : x) / 8388608).slice(0, LAYERS);
+
+/** Right edge of each layer from below: of the lowest that of the tail, of the topmost 0. */
+function edges(): Float64Array {
+  const x = new Float64Array(LAYERS + 1);
+  x[0] = TAIL_FROM;
+  x[1] = TAIL_FROM;
+  for (let layer = 2; layer < LAYERS; layer++) {
+    const height = exp(-0.5 * x[layer - 1] * x[layer - 1]) + AREA / x[layer - 1];
+    x[layer] = Math.sqrt(-2 * log(height));
+  }
+  return x;
+}
+
+/** Words of the generator. */
 export interface GaussianSource {
   readonly words: Uint32Array;
-  readonly kept: Float64Array;
 }
 
 export function createGaussian(seed: number): GaussianSource {
@@ -19,13 +41,13 @@ export function createGaussian(seed: number): GaussianSource {
     x = (Math.imul(x ^ (x >>> 16), 0x45d9f3b) + 0x9e3779b9) >>> 0;
     words[i] = x | 1;
   }
-  const source = { words, kept: new Float64Array(2) };
+  const source = { words };
   for (let i = 0; i < 16; i++) uniform(words);
   return source;
 }
 
-/** −1 … 1, 32 bits. */
-function uniform(words: Uint32Array): number {
+/** The next word, signed. */
+function next(words: Uint32Array): number {
   let t = words[3];
   const first = words[0];
   words[3] = words[2];
@@ -33,28 +55,55 @@ function uniform(words: Uint32Array): number {
   words[1] = first;
   t ^= t << 11;
   t ^= t >>> 8;
-  words[0] = t ^ first ^ (first >>> 19);
+  t ^= first ^ (first >>> 19);
+  words[0] = t;
+  return t | 0;
+}
+
+/** −1 … 1, 32 bits. */
+function uniform(words: Uint32Array): number {
+  next(words);
   return words[0] / 2147483648 - 1;
 }
 
-/** The next number of mean 0 and variance 1. Allocates nothing. */
-export function nextGaussian({ words, kept }: GaussianSource): number {
-  if (kept[1] === 1) {
-    kept[1] = 0;
-    return kept[0];
+/** Puts the next number of mean 0 and variance 1 into `slots[at]`. Allocates nothing. */
+export function putGaussian({ words }: GaussianSource, slots: Float64Array, at: number): void {
+  for (;;) {
+    const word = next(words);
+    const layer = word & (LAYERS - 1);
+    // The upper 24 bits, apart from those that chose the layer.
+    const x = (word >> 8) * WIDTHS[layer];
+    const size = Math.abs(x);
+    if (size < EDGES[layer + 1]) {
+      slots[at] = x;
+      return;
+    }
+    if (layer === 0) {
+      putTail(words, slots, at, x < 0);
+      return;
+    }
+    slots[at] = -0.5 * size * size;
+    expAt(slots, at);
+    if (HEIGHTS[layer] + (next(words) * INVERSE_WORD + 0.5) * (HEIGHTS[layer + 1] - HEIGHTS[layer]) < slots[at]) {
+      slots[at] = x;
+      return;
+    }
   }
-  let x = 0;
-  let y = 0;
-  let square = 0;
-  do {
-    x = uniform(words);
-    y = uniform(words);
-    square = x * x + y * y;
-  } while (square >= 1 || square === 0);
-  const scale = Math.sqrt((-2 * log(square)) / square);
-  kept[0] = y * scale;
-  kept[1] = 1;
-  return x * scale;
+}
+
+/** Beyond the last edge, by Marsaglia's method. */
+function putTail(words: Uint32Array, slots: Float64Array, at: number, negative: boolean): void {
+  for (;;) {
+    slots[at] = next(words) * INVERSE_WORD + 0.5 + 0.5 * INVERSE_WORD;
+    logAt(slots, at);
+    const past = -slots[at] / TAIL_FROM;
+    slots[at] = next(words) * INVERSE_WORD + 0.5 + 0.5 * INVERSE_WORD;
+    logAt(slots, at);
+    if (-2 * slots[at] >= past * past) {
+      slots[at] = negative ? -(TAIL_FROM + past) : TAIL_FROM + past;
+      return;
+    }
+  }
 }
 
 /** The next number of triangular density, −1 … 1, mean 0 and variance 1/6. Allocates nothing. */

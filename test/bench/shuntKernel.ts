@@ -3,7 +3,7 @@
  * the coefficients are zero and calls nothing general; the bench holds the kernels for any circuit against it.
  */
 import * as L from '../../model/cell/kernels/layout.ts';
-import { exp } from '../../model/device/math.ts';
+import { expAt } from '../../model/device/math.ts';
 
 const N = 3;
 const ROW = L.rowLayout(N);
@@ -105,8 +105,12 @@ function conductByHand(c: Float64Array, s: Float64Array, a: number, b: number, f
   for (let step = 0; step < 40; step++) {
     const ps = Math.max(vs, 0);
     const pd = Math.max(vd, 0);
-    const S = vs > on ? reverseA * exp((vs + off) * rate) : 0;
-    const D = vd > on ? reverseA * exp((vd + off) * rate) : 0;
+    s[SLOTS + L.PORT_S] = (vs + off) * rate;
+    s[SLOTS + L.PORT_D] = (vd + off) * rate;
+    if (vs > on) expAt(s, SLOTS + L.PORT_S);
+    if (vd > on) expAt(s, SLOTS + L.PORT_D);
+    const S = vs > on ? reverseA * s[SLOTS + L.PORT_S] : 0;
+    const D = vd > on ? reverseA * s[SLOTS + L.PORT_D] : 0;
     const channel = scale * (ps - pd) * (ps + pd);
     const rs = vs - a - aI * channel - aS * S - aD * D;
     const rd = vd - b - bI * channel - bS * S - bD * D;

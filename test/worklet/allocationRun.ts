@@ -1,7 +1,7 @@
 /**
- * Runs by itself, bundled as the page's worklet is: counts garbage collections over 200 000 blocks of the cell's processor, four variants in it and
- * another heard at every block, then over as
- * many turns of a loop that makes one object each. Prints both as JSON. Needs --expose-gc.
+ * Runs by itself, bundled as the page's worklet is: counts garbage collections over blocks of the cell's processor, four variants in it and another
+ * heard at every block, then over as many turns of a loop that makes one object each. The argument says which four. Prints both as JSON. Needs
+ * --expose-gc.
  */
 import { PerformanceObserver } from 'node:perf_hooks';
 import { compileChain } from '../../model/chain/compile.ts';
@@ -12,17 +12,58 @@ import type { FromCell, ToCell } from '../../worklet/protocol.ts';
 import { createNoise } from '../support/noise.ts';
 import { createScope } from './workletScope.ts';
 
-const BLOCKS = 200_000;
 const BLOCK = 128;
 const RATE = 48000;
 
-/** Feedback, a moving control, two channels; low oversampling, because a block allocates the same whatever it costs. */
-function movingDesign(): Design {
-  const feedback = { kind: 'resistor', drainOhm: 1e6, blockingF: 1e-7 };
-  const control = { source: 'lfo', shape: 'sine', rateHz: 5, fromV: -2.4, toV: -1, edgeSec: 0 };
-  const design = setAt(setAt(defaultDesign(), 'oversampling', 2), 'variants[0].cell.feedback', feedback);
-  return setAt(design, 'variants[0].control', control);
+const FEEDBACK = { kind: 'resistor', drainOhm: 1e6, blockingF: 1e-7 };
+const SWING = { source: 'lfo', shape: 'sine', rateHz: 5, fromV: -2.4, toV: -1, edgeSec: 0 };
+const FOLLOWER = {
+  source: 'envelope',
+  senses: 'output',
+  rectifier: 'full',
+  attackOhm: 1000,
+  releaseOhm: 1e5,
+  timingF: 1e-6,
+  thresholdV: 0.1,
+  gainVPerV: 5,
+  restV: -3,
+  limitV: 0,
+  linked: true,
+};
+const AMPLIFIER = { gainDb: 12, gainBandwidthHz: 3e6, slewVPerSec: 1.3e7, swingV: 12 };
+
+/** The default with feedback, a control that swings, and these values. */
+function designWith(values: Readonly<Record<string, unknown>>): Design {
+  const start = { 'variants[0].cell.feedback': FEEDBACK, 'variants[0].control': SWING, ...values };
+  return Object.entries(start).reduce((design, [path, value]) => setAt(design, path, value), defaultDesign());
 }
+
+interface Run {
+  readonly blocks: number;
+  readonly designs: readonly Design[];
+  /** Blocks from one move of the first variant's series resistor to the next; 0 for none. */
+  readonly moveEvery: number;
+}
+
+const RUNS: Readonly<Record<string, Run>> = {
+  /** Low oversampling, because a block allocates the same whatever it costs. */
+  plain: {
+    blocks: 200_000,
+    designs: [5000, 6800, 10_000, 22_000].map((ohm) => designWith({ oversampling: 2, 'variants[0].cell.seriesOhm': ohm })),
+    moveEvery: 0,
+  },
+  /** Noise while values move, the loop with a real amplifier, graded capacitances of a part that conducts, λ in the gradual law. */
+  everything: {
+    blocks: 20_000,
+    designs: [
+      designWith({ oversampling: 8, noise: { kind: 'thermal', seed: 1 } }),
+      designWith({ oversampling: 8, 'variants[0].control': FOLLOWER, 'variants[0].output': AMPLIFIER }),
+      designWith({ oversampling: 8, 'variants[0].device.grading': 0.33, 'variants[0].control.toV': 0.5 }),
+      designWith({ oversampling: 8, 'variants[0].device.law': 'gradual', 'variants[0].device.lambdaPerV': 0.05 }),
+    ],
+    moveEvery: 500,
+  },
+};
 
 /** A port that returns reports and chunks at once, in messages made once, so that it allocates nothing itself. */
 class ReturningPort {
@@ -68,9 +109,12 @@ async function countCollections(work: () => void): Promise<number> {
 const port = new ReturningPort();
 const scope = createScope(RATE, port);
 const { CellProcessor } = await import('../../worklet/cell.ts');
-const chains = [5000, 6800, 10_000, 22_000].map((ohm) =>
-  compileChain(setAt(movingDesign(), 'variants[0].cell.seriesOhm', ohm), 0, RATE, 2, 'lowLatency'),
-);
+const { blocks: BLOCKS, designs, moveEvery } = RUNS[process.argv[2]];
+const compiled = (design: Design) => compileChain(design, 0, RATE, 2, 'lowLatency');
+const chains = designs.map(compiled);
+const moves: { data: ToCell }[] = [4700, 5600].map((ohm) => ({
+  data: { type: 'move', slot: 0, numbers: compiled(setAt(designs[0], 'variants[0].cell.seriesOhm', ohm)) },
+}));
 const match = { slots: [1, 2, 3, 4, 1], bypass: 0.5 };
 const level = { residual: { part: null, gain: 1 }, gain: 0.7, ceilingPeak: 0.05, muted: false };
 const cell = new CellProcessor({ processorOptions: { chains, focus: 0, channels: 2, heard: 'cell', match, ...level } });
@@ -85,6 +129,7 @@ const turns: { data: ToCell }[] = [
 const run = (blocks: number) => {
   for (let block = 0; block < blocks; block++) {
     port.onmessage?.(turns[block % turns.length]);
+    if (moveEvery > 0 && block % moveEvery === 0) port.onmessage?.(moves[(block / moveEvery) % 2]);
     cell.process(inputs, outputs);
     scope.currentFrame += BLOCK;
   }

@@ -95,84 +95,73 @@ export function channelA(c: Float64Array, t: Float64Array, device: number, vs: n
 }
 
 const BEND_STEPS = 30;
-
-/** The square law's saturated current with λ, A, into `out[at]`: by Newton from the current without it, by search where that does not settle. */
-export function bent(
-  c: Float64Array,
-  t: Float64Array,
-  device: number,
-  aI: number,
-  bI: number,
-  a: number,
-  b: number,
-  from: number,
-  out: Float64Array,
-  at: number,
-): void {
-  let current = from;
-  for (let step = 0; step < BEND_STEPS; step++) {
-    const change =
-      excess(c, t, device, a + c[aI] * current, b + c[bI] * current, current) / excessSlope(c, t, device, aI, bI, a, b, current);
-    current -= change;
-    if (Math.abs((c[bI] - c[aI]) * change) < 1e-8) {
-      out[at] = current;
-      return;
-    }
-  }
-  searched(c, t, device, aI, bI, a, b, out, at);
-}
-
-function excess(c: Float64Array, t: Float64Array, device: number, vs: number, vd: number, current: number): number {
-  return channelA(c, t, device, vs, vd) - current;
-}
-
-function excessSlope(
-  c: Float64Array,
-  t: Float64Array,
-  device: number,
-  aI: number,
-  bI: number,
-  a: number,
-  b: number,
-  current: number,
-): number {
-  const vs = a + c[aI] * current;
-  const vd = b + c[bI] * current;
-  const lambda = c[device + L.LAMBDA];
-  const past = Math.max(-vd, 0);
-  const pastReversed = Math.max(-vs, 0);
-  let slope = c[aI] * slopeAt(c, t, device, vs) * (1 + lambda * past) - c[bI] * slopeAt(c, t, device, vd) * (1 + lambda * pastReversed) - 1;
-  if (past > 0) slope -= lambda * c[bI] * termAt(c, t, device, vs);
-  if (pastReversed > 0) slope += lambda * c[aI] * termAt(c, t, device, vd);
-  return slope;
-}
+const BEND_ENOUGH_V = 1e-8;
 
 /**
- * A current that solves I = F(a − αI) − F(b + γI), A, into `out[at]`, by bisection to the last bit. For α, γ ≥ 0 the two sides move apart, and it lies
- * between none and what flows with none; where a buffer and a capacitance together feed more than the drain's voltage back, γ is negative and the
- * search begins wider.
+ * The saturated current with λ, A: by Newton from the one in the slot GIVEN_FREE, in whose place it is left, with the overdrives for no current in
+ * GIVEN_A and GIVEN_B; by search where that does not settle.
  */
-export function searched(
-  c: Float64Array,
-  t: Float64Array,
-  device: number,
-  aI: number,
-  bI: number,
-  a: number,
-  b: number,
-  out: Float64Array,
-  at: number,
-): void {
-  const free = channelA(c, t, device, a, b);
+export function bent(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, s: Float64Array, n: number): void {
+  for (let step = 0; step < BEND_STEPS; step++) {
+    excess(c, t, device, aI, bI, s, n);
+    const change = s[n + L.EXCESS_A] / s[n + L.EXCESS_SLOPE];
+    s[n + L.GIVEN_FREE] -= change;
+    if (Math.abs((c[bI] - c[aI]) * change) < BEND_ENOUGH_V) return;
+  }
+  searched(c, t, device, aI, bI, s, n);
+}
+
+/** By how much the channel's current exceeds the one in GIVEN_FREE, and the derivative of that, into their slots. */
+function excess(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, s: Float64Array, n: number): void {
+  const current = s[n + L.GIVEN_FREE];
+  const vs = s[n + L.GIVEN_A] + c[aI] * current;
+  const vd = s[n + L.GIVEN_B] + c[bI] * current;
+  const lambda = c[device + L.LAMBDA];
+  s[n + L.TERM_S] = vs;
+  s[n + L.TERM_D] = vd;
+  evaluate(c, t, device, s, n + L.TERM_S, n + L.TERM_S);
+  evaluate(c, t, device, s, n + L.TERM_D, n + L.TERM_D);
+  const past = vd < 0 ? 1 - lambda * vd : 1;
+  const pastReversed = vs < 0 ? 1 - lambda * vs : 1;
+  let slope = c[aI] * s[n + L.TERM_S + 1] * past - c[bI] * s[n + L.TERM_D + 1] * pastReversed - 1;
+  if (vd < 0) slope -= lambda * c[bI] * s[n + L.TERM_S];
+  if (vs < 0) slope += lambda * c[aI] * s[n + L.TERM_D];
+  s[n + L.EXCESS_A] = s[n + L.TERM_S] * past - s[n + L.TERM_D] * pastReversed - current;
+  s[n + L.EXCESS_SLOPE] = slope;
+}
+
+const MOST_HALVINGS = 2100;
+
+/**
+ * A current that solves I = F(a − αI) − F(b + γI), A, into the slot GIVEN_FREE, from a and b in GIVEN_A and GIVEN_B, by bisection to the last bit. For
+ * α, γ ≥ 0 the two sides move apart, and it lies between none and what flows with none; where a buffer and a capacitance together feed more than the
+ * drain's voltage back, γ is negative and the search begins wider.
+ */
+export function searched(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, s: Float64Array, n: number): void {
+  s[n + L.GIVEN_FREE] = 0;
+  excess(c, t, device, aI, bI, s, n);
+  const free = s[n + L.EXCESS_A];
   let low = Math.min(0, free);
   let high = Math.max(0, free);
-  for (let wider = Math.abs(free); excess(c, t, device, a + c[aI] * low, b + c[bI] * low, low) < 0; wider *= 2) low -= wider;
-  for (let wider = Math.abs(free); excess(c, t, device, a + c[aI] * high, b + c[bI] * high, high) > 0; wider *= 2) high += wider;
-  for (let step = 0; step < 2100; step++) {
+  for (let wider = Math.abs(free); ; wider *= 2) {
+    s[n + L.GIVEN_FREE] = low;
+    excess(c, t, device, aI, bI, s, n);
+    if (!(s[n + L.EXCESS_A] < 0)) break;
+    low -= wider;
+  }
+  for (let wider = Math.abs(free); ; wider *= 2) {
+    s[n + L.GIVEN_FREE] = high;
+    excess(c, t, device, aI, bI, s, n);
+    if (!(s[n + L.EXCESS_A] > 0)) break;
+    high += wider;
+  }
+  for (let step = 0; step < MOST_HALVINGS; step++) {
     const middle = low + (high - low) / 2;
     if (middle === low || middle === high) break;
-    if (excess(c, t, device, a + c[aI] * middle, b + c[bI] * middle, middle) > 0) low = middle;
+    s[n + L.GIVEN_FREE] = middle;
+    excess(c, t, device, aI, bI, s, n);
+    if (s[n + L.EXCESS_A] > 0) low = middle;
     else high = middle;
   }
-  out[at] = low;
+  s[n + L.GIVEN_FREE] = low;
 }

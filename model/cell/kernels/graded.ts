@@ -5,7 +5,7 @@
  * Scheme   the backward difference that the circuit's picofarads have (reduce.ts), on charge, so that none is lost
  * Source   abrupt and graded junctions: textbook; the tangent beyond half the barrier is common practice, no source
  */
-import { power } from '../../device/math.ts';
+import { expAt, logAt } from '../../device/math.ts';
 import * as L from './layout.ts';
 
 /** Newest, then past ones, of the backward difference in reduce.ts. */
@@ -17,30 +17,47 @@ const PAST_4 = -1 / 8;
 
 /** q/C0, V, and C/C0 − 1 at the junction's voltage, into `out[at]` and `out[at + 1]`. */
 export function deviation(m: number, barrierV: number, v: number, out: Float64Array, at: number): void {
-  const knee = barrierV / 2;
-  const x = 1 - Math.min(v, knee) / barrierV;
-  const xm = m === 0.5 ? Math.sqrt(x) : power(x, m);
-  const past = Math.max(v - knee, 0);
-  const kneeC = 1 / xm;
-  const rise = (kneeC * m) / (x * barrierV);
-  out[at] = (barrierV / (1 - m)) * (1 - x / xm) - Math.min(v, knee) + (kneeC - 1) * past + 0.5 * rise * past * past;
-  out[at + 1] = kneeC - 1 + rise * past;
+  const c = new Float64Array(L.DEVICE_WIDTH);
+  c[L.GRADING] = m;
+  c[L.BARRIER_V] = barrierV;
+  out[at] = v;
+  deviate(c, 0, out, at);
 }
 
-/** Current and slope of one junction into `s[at]`, `s[at + 1]`; `charges` is where its four past q/C0 stand in `s`. */
-export function addGraded(
-  c: Float64Array,
-  device: number,
-  overV: number,
-  perStepS: number,
-  s: Float64Array,
-  charges: number,
-  at: number,
-): void {
+/** The same from the voltage in `s[at]`, with the constants of the device. */
+export function deviate(c: Float64Array, device: number, s: Float64Array, at: number): void {
+  const m = c[device + L.GRADING];
+  const barrierV = c[device + L.BARRIER_V];
+  const v = s[at];
+  const knee = 0.5 * barrierV;
+  const below = Math.min(v, knee);
+  const x = 1 - below / barrierV;
+  s[at] = x;
+  if (m !== 0.5) {
+    logAt(s, at);
+    s[at] *= -m;
+    expAt(s, at);
+  }
+  const ratio = m === 0.5 ? 1 / Math.sqrt(x) : s[at];
+  s[at] = (barrierV / (1 - m)) * (1 - x * ratio) - below;
+  s[at + 1] = ratio - 1;
+  if (v <= knee) return;
+  const past = v - knee;
+  const rise = (ratio * m) / (x * barrierV);
+  s[at] += (ratio - 1 + 0.5 * rise * past) * past;
+  s[at + 1] += rise * past;
+}
+
+/**
+ * Current and slope of one junction into `s[at]`, `s[at + 1]`; `charges` is where its four past q/C0 stand in `s`, then its overdrive, in the place
+ * of which q/C0 and C/C0 − 1 are left. `perStep` is the place of C0 over a step among the device's constants.
+ */
+export function addGraded(c: Float64Array, device: number, perStep: number, s: Float64Array, charges: number, at: number): void {
   const scratch = charges + 4;
-  deviation(c[device + L.GRADING], c[device + L.BARRIER_V], overV + c[device + L.GATE_OFF_V], s, scratch);
-  s[at] = perStepS * (NEWEST * s[scratch] - pastCharge(s, charges));
-  s[at + 1] = perStepS * NEWEST * s[scratch + 1];
+  s[scratch] += c[device + L.GATE_OFF_V];
+  deviate(c, device, s, scratch);
+  s[at] = c[device + perStep] * (NEWEST * s[scratch] - pastCharge(s, charges));
+  s[at + 1] = c[device + perStep] * NEWEST * s[scratch + 1];
 }
 
 /** What the backward difference takes of the past q/C0 from `charges` on. */
@@ -54,19 +71,15 @@ export function pushCharge(s: Float64Array, charges: number): void {
   s[charges] = s[charges + 4];
 }
 
-/** The charges of both junctions at the sample's solution become the newest of the past ones. */
-export function keepCharges(c: Float64Array, device: number, s: Float64Array, n: number): void {
-  keepCharge(c, device, s[n + L.OVERDRIVE_S], s, n + L.CHARGES_S);
-  keepCharge(c, device, s[n + L.OVERDRIVE_D], s, n + L.CHARGES_D);
+/** The charges that `addGraded` left, of both junctions, become the newest of the past ones. */
+export function keepCharges(s: Float64Array, n: number): void {
+  pushCharge(s, n + L.CHARGES_S);
+  pushCharge(s, n + L.CHARGES_D);
 }
 
-function keepCharge(c: Float64Array, device: number, overV: number, s: Float64Array, charges: number): void {
-  deviation(c[device + L.GRADING], c[device + L.BARRIER_V], overV + c[device + L.GATE_OFF_V], s, charges + 4);
-  pushCharge(s, charges);
-}
-
-/** All past charges as at rest. */
-export function restCharge(c: Float64Array, device: number, overV: number, s: Float64Array, charges: number): void {
-  deviation(c[device + L.GRADING], c[device + L.BARRIER_V], overV + c[device + L.GATE_OFF_V], s, charges + 4);
+/** All past charges as at rest, at the overdrive in the slot after them. */
+export function restCharge(c: Float64Array, device: number, s: Float64Array, charges: number): void {
+  s[charges + 4] += c[device + L.GATE_OFF_V];
+  deviate(c, device, s, charges + 4);
   for (let k = 0; k < 4; k++) s[charges + k] = s[charges + 4];
 }

@@ -23,3 +23,6 @@ export type Conductor = (
   s: Float64Array,
   n: number,
 ) => void;
+
+/** Makes a kernel for numbers of trapezoidal and stiff states, with the scratch memory that it needs. */
+export type LoopedKernel = (trapezoidal: number, stiff: number) => Kernel;

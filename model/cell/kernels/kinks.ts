@@ -46,18 +46,36 @@ export function markKink(
   const vd = s[n + L.OVERDRIVE_D];
   if (vs > 0 !== qs > 0) {
     const own = half / (1 + c[bI] * s[n + L.TERM_D + 1]);
-    add(e, i, qs, vs, -c[aI] * own, perA * own);
+    const at = 1 + KINK_WIDTH * e[0];
+    if (at + KINK_WIDTH <= e.length) {
+      e[at + 1] = qs;
+      e[at + 2] = vs;
+      e[at + 3] = -c[aI] * own;
+      e[at + 4] = perA * own;
+      keep(e, i, at);
+    }
   }
   if (vd > 0 !== qd > 0) {
     const own = half / (1 - c[aI] * s[n + L.TERM_S + 1]);
-    add(e, i, qd, vd, c[bI] * own, -perA * own);
+    const at = 1 + KINK_WIDTH * e[0];
+    if (at + KINK_WIDTH <= e.length) {
+      e[at + 1] = qd;
+      e[at + 2] = vd;
+      e[at + 3] = c[bI] * own;
+      e[at + 4] = -perA * own;
+      keep(e, i, at);
+    }
   }
 }
 
-function add(e: Float64Array, i: number, before: number, after: number, bend: number, amount: number): void {
-  const at = 1 + KINK_WIDTH * e[0];
+/** Makes a kink of what stands from `at` on: the overdrives before and after, the bend and the amount. */
+function keep(e: Float64Array, i: number, at: number): void {
+  const before = e[at + 1];
+  const after = e[at + 2];
+  const bend = e[at + 3];
+  const amount = e[at + 4];
   // Where more than the drain's voltage is fed back the bend may open the other way, without limit: that is no kink to soften.
-  if (at + KINK_WIDTH > e.length || !(bend >= 0)) return;
+  if (!(bend >= 0)) return;
   const comesOn = after > 0;
   const on = Math.max(before, after);
   const off = Math.min(before, after);

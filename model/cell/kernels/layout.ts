@@ -76,6 +76,17 @@ export function coefficientLayout(stateCount: number) {
   return { rows, outputRow: stateCount + 2, junction, memory, memoryJunction, device, length: device + DEVICE_WIDTH };
 }
 
+/** Of one number of states, made once: a value that moves needs them on the audio thread. */
+export interface Layout {
+  readonly row: ReturnType<typeof rowLayout>;
+  readonly past: ReturnType<typeof memoryLayout>;
+  readonly all: ReturnType<typeof coefficientLayout>;
+}
+
+export function layoutOf(stateCount: number): Layout {
+  return { row: rowLayout(stateCount), past: memoryLayout(stateCount), all: coefficientLayout(stateCount) };
+}
+
 /** Where the slots begin: after the states and the past of the stiff ones. */
 export function slotStart(trapezoidal: number, stiff: number): number {
   return trapezoidal + 4 * stiff;
@@ -111,7 +122,10 @@ export const PER_A = 31;
 /** Overdrives of the conducting sample before the last, for the first guess of the next. */
 export const EARLIER_S = 32;
 export const EARLIER_D = 33;
-/** For a conductor: overdrives without currents, V, and the channel current without the junctions', A; then the argument of its exponential and its value. */
+/**
+ * For a conductor, and for what channel.ts solves: overdrives without currents, V, and the channel current without the junctions', A; then the argument
+ * of an exponential and its value.
+ */
 export const GIVEN_A = 34;
 export const GIVEN_B = 35;
 export const GIVEN_FREE = 36;
@@ -119,4 +133,7 @@ export const POWER = 37;
 /** Working memory of ports.ts: by how much the equations of the two ends are missed, V. */
 export const MISSED_S = 38;
 export const MISSED_D = 39;
-export const STATE_SLOTS = 40;
+/** Of channel.ts: by how much the channel's current exceeds the one given, A, and the derivative of that. */
+export const EXCESS_A = 40;
+export const EXCESS_SLOPE = 41;
+export const STATE_SLOTS = 42;

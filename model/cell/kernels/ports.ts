@@ -51,8 +51,10 @@ function gatePorts(c: Float64Array, device: number, s: Float64Array, n: number):
   const slopeS = s[S + 1];
   const conductedD = s[D];
   const slopeD = s[D + 1];
-  addGraded(c, device, s[n + L.OVERDRIVE_S], c[device + L.STEP_S], s, n + L.CHARGES_S, S);
-  addGraded(c, device, s[n + L.OVERDRIVE_D], c[device + L.STEP_D], s, n + L.CHARGES_D, D);
+  s[n + L.CHARGES_S + 4] = s[n + L.OVERDRIVE_S];
+  s[n + L.CHARGES_D + 4] = s[n + L.OVERDRIVE_D];
+  addGraded(c, device, L.STEP_S, s, n + L.CHARGES_S, S);
+  addGraded(c, device, L.STEP_D, s, n + L.CHARGES_D, D);
   s[S] += conductedS;
   s[S + 1] += slopeS;
   s[D] += conductedD;
@@ -79,7 +81,7 @@ export function currents(c: Float64Array, t: Float64Array, device: number, s: Fl
   gatePorts(c, device, s, n);
   s[n + L.JUNCTION_S] = s[n + L.PORT_S];
   s[n + L.JUNCTION_D] = s[n + L.PORT_D];
-  if (c[device + L.GRADING] !== 0) keepCharges(c, device, s, n);
+  if (c[device + L.GRADING] !== 0) keepCharges(s, n);
 }
 
 /**

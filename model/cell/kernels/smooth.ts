@@ -8,7 +8,8 @@
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { evaluate, searched } from './channel.ts';
-import type { Conductor, Kernel } from './kernel.ts';
+import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
+import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
 import { currents, searchPorts } from './ports.ts';
 import { expAt } from '../../device/math.ts';
@@ -26,9 +27,9 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
   const slope = c[device + 8];
   const pieces = c[device + 12];
   const lastS = s[n + 5], lineS = lastS - s[n + 32];
-  let vs = Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
+  let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
   const lastD = s[n + 6], lineD = lastD - s[n + 33];
-  let vd = Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
+  let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
     let Fs = 0, fs = 0, Fd = 0, fd = 0;
@@ -71,8 +72,9 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
     } else clamped = 0;
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
-      addGraded(c, device, vs, c[device + 21], s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
-      addGraded(c, device, vd, c[device + 22], s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+      s[n + 21] = vs; s[n + 27] = vd;
+      addGraded(c, device, 21, s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
+      addGraded(c, device, 22, s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
     }
     const channel = Fs - Fd;
     const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
@@ -85,7 +87,10 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
       s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
-      if (grading != 0) keepCharges(c, device, s, n);
+      if (grading != 0) {
+        s[n + 21] += s[n + 22] * stepS; s[n + 27] += s[n + 28] * stepD;
+        keepCharges(s, n);
+      }
       return;
     }
     if (Math.abs(stepS) < rounding && Math.abs(stepD) < rounding) {
@@ -159,7 +164,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    if (settled == 0) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
       s[34] = a; s[35] = b; s[36] = I;
@@ -253,7 +258,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    if (settled == 0) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[35] = a; s[36] = b; s[37] = I;
@@ -375,7 +380,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    if (settled == 0) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[36] = a; s[37] = b; s[38] = I;
@@ -523,7 +528,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    if (settled == 0) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[37] = a; s[38] = b; s[39] = I;
@@ -701,7 +706,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 106, 7, 15, s, 4); I = s[40]; s[12] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[38] = a; s[39] = b; s[40] = I;
@@ -815,7 +820,7 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 34, 4, 9, s, 4); I = s[40]; s[12] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[38] = a; s[39] = b; s[40] = I;
@@ -939,7 +944,7 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 54, 5, 11, s, 5); I = s[41]; s[13] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[39] = a; s[40] = b; s[41] = I;
@@ -1059,7 +1064,7 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[42] = a; s[43] = b; s[44] = I;
@@ -1202,7 +1207,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[43] = a; s[44] = b; s[45] = I;
@@ -1374,7 +1379,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    if (settled == 0) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[44] = a; s[45] = b; s[46] = I;
@@ -1496,7 +1501,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[42] = a; s[43] = b; s[44] = I;
@@ -1626,7 +1631,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[43] = a; s[44] = b; s[45] = I;
@@ -1725,7 +1730,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    if (settled == 0) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
       s[34] = a; s[35] = b; s[36] = I;
@@ -1831,7 +1836,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    if (settled == 0) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[35] = a; s[36] = b; s[37] = I;
@@ -1962,7 +1967,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    if (settled == 0) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[36] = a; s[37] = b; s[38] = I;
@@ -2120,7 +2125,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    if (settled == 0) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[37] = a; s[38] = b; s[39] = I;
@@ -2257,7 +2262,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[42] = a; s[43] = b; s[44] = I;
@@ -2419,7 +2424,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[43] = a; s[44] = b; s[45] = I;
@@ -2612,7 +2617,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    if (settled == 0) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[44] = a; s[45] = b; s[46] = I;
@@ -2840,7 +2845,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
+    if (settled == 0) { s[45] = a; s[46] = b; searched(c, t, 138, 8, 17, s, 11); I = s[47]; s[19] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
       s[45] = a; s[46] = b; s[47] = I;
@@ -3041,7 +3046,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 106, 7, 15, s, 13); I = s[49]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[47] = a; s[48] = b; s[49] = I;
@@ -3271,7 +3276,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
+    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 138, 8, 17, s, 14); I = s[50]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
       s[48] = a; s[49] = b; s[50] = I;
@@ -3321,7 +3326,120 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
+function looped_smooth(trapezoidal: number, stiff: number): Kernel {
+  const n = trapezoidal + stiff, { row, past, all } = layoutOf(n), { device, junction, rows, outputRow } = all;
+  const slots = slotStart(trapezoidal, stiff), width = row.width, aI = row.current, bI = width + row.current;
+  /** What each row remembers, then the audio, the control and 1; the stiff states' past, weighted; the sums of the rows. */
+  const drives = new Float64Array(n + 3), weighed = new Float64Array(n), sums = new Float64Array(n + 3);
+  drives[n + 2] = 1;
+  return (c, t, w, e, s, audio, control, output, from, to) => {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const perAs = c[aI], perAd = c[bI];
+  const on = c[device + 2];
+  const lambda = c[device + 5];
+  const scale = c[device + 6];
+  const inverseWidth = c[device + 7];
+  const slope = c[device + 8];
+  const enough = c[device + 18];
+  const pieces = c[device + 12];
+  let u0 = s[slots + 0], v0 = s[slots + 1];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i], noise = i * (rows + 1);
+    for (let k = 0; k < trapezoidal; k++) weighed[k] = s[k];
+    for (let k = 0; k < stiff; k++) {
+      const x = s[trapezoidal + k], e1 = s[n + k], e2 = s[n + stiff + k];
+      weighed[trapezoidal + k] = 3.5 * x - 2.25 * e1 + 0.8333333333333334 * e2 - 0.125 * s[n + 2 * stiff + k];
+      s[n + 2 * stiff + k] = e2; s[n + stiff + k] = e1; s[n + k] = x;
+    }
+    for (let r = 0; r < n; r++) {
+      const at = all.memory + r * past.width, x = r < trapezoidal ? s : weighed;
+      let even = c[at + n] * u0, odd = c[at + n + 1] * v0;
+      for (let k = 0; k + 1 < n; k += 2) { even += c[at + k] * x[k]; odd += c[at + k + 1] * x[k + 1]; }
+      if (n % 2 === 1) even += c[at + n - 1] * x[n - 1];
+      if (r < trapezoidal) {
+        const old = all.memoryJunction + 2 * r;
+        even += c[at + n + 2] * I0; odd += c[old] * S0 + c[old + 1] * D0;
+      }
+      drives[r] = even + odd;
+    }
+    drives[n] = u; drives[n + 1] = v;
+    for (let r = 0; r < n + 2; r++) {
+      const at = r * width;
+      let even = c[at + n], odd = c[at + n + 1] * v;
+      even = even * u + c[at + n + 2];
+      for (let k = 0; k + 1 < n; k += 2) { even += c[at + k] * drives[k]; odd += c[at + k + 1] * drives[k + 1]; }
+      if (n % 2 === 1) odd += c[at + n - 1] * drives[n - 1];
+      sums[r] = even + odd;
+    }
+    let a = sums[0], b = sums[1], I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[slots + 5] = vs; s[slots + 6] = vd;
+      evaluate(c, t, device, s, slots + 5, slots + 9); evaluate(c, t, device, s, slots + 6, slots + 11);
+      J = w[noise + rows] * Math.sqrt(0.5 * (s[slots + 10] + s[slots + 12]));
+      a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
+      for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
+    }
+    I = 2 * I0 - E0;
+    let settled = 0;
+    for (let step = 0; step < 40; step++) {
+      vs = a + perAs * I; vd = b + perAd * I;
+      let Fs = 0, fs = 0, Fd = 0, fd = 0;
+      if (vs * inverseWidth > -40) {
+        const z = (vs * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fs = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fs = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { s[slots + 9] = vs; evaluate(c, t, device, s, slots + 9, slots + 9); Fs = s[slots + 9]; fs = s[slots + 9 + 1]; }
+      }
+      if (vd * inverseWidth > -40) {
+        const z = (vd * inverseWidth + 40) * 8;
+        if (z < pieces) {
+          const piece = z | 0, d = (z - piece - 0.5) * 0.125, o = piece * 6;
+          Fd = scale * (t[o] + d * (t[o + 1] + d * (t[o + 2] + d * (t[o + 3] + d * (t[o + 4] + d * t[o + 5])))));
+          fd = slope * (t[o + 1] + d * (2 * t[o + 2] + d * (3 * t[o + 3] + d * (4 * t[o + 4] + d * 5 * t[o + 5]))));
+        } else { s[slots + 9] = vd; evaluate(c, t, device, s, slots + 9, slots + 9); Fd = s[slots + 9]; fd = s[slots + 9 + 1]; }
+      }
+      let h = Fs - Fd - I, slopes = perAs * fs - perAd * fd - 1;
+      if (lambda != 0) {
+        if (vd < 0) { h -= lambda * vd * Fs; slopes -= lambda * (vd * perAs * fs + perAd * Fs); }
+        if (vs < 0) { h += lambda * vs * Fd; slopes += lambda * (vs * perAd * fd + perAs * Fd); }
+      }
+      const change = h / slopes;
+      I -= change;
+      const moved = (perAd - perAs) * change;
+      if (moved < enough && moved > -enough) { settled = 1; break; }
+    }
+    if (settled == 0) { s[slots + 34] = a; s[slots + 35] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 36]; s[slots + 8] += 1; }
+    vs = a + perAs * I; vd = b + perAd * I;
+    if (vs > on || vd > on) {
+      s[slots + 34] = a; s[slots + 35] = b; s[slots + 36] = I;
+      conduct_smooth(c, t, device, aI, bI, junction, s, slots);
+      I = s[slots + 2]; S = s[slots + 3]; D = s[slots + 4]; vs = s[slots + 5]; vd = s[slots + 6];
+    }
+    I += J;
+    const last = outputRow * width;
+    let y = c[last + n] * u + c[last + n + 1] * v + c[last + n + 2] + c[last + n + 3] * I + c[junction + 2 * outputRow] * S + c[junction + 2 * outputRow + 1] * D;
+    if (noisy) y += w[noise + outputRow];
+    for (let k = 0; k < n; k++) {
+      const at = junction + 4 + 2 * k, x = sums[2 + k] + c[(2 + k) * width + n + 3] * I + (c[at] * S + c[at + 1] * D);
+      s[k] = x; y += c[last + k] * x;
+    }
+    output[i] = y;
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[slots + 0] = u0; s[slots + 1] = v0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
+  };
+}
+
 export const SMOOTH_CONDUCTOR: Conductor = conduct_smooth;
+
+/** For shapes that are not written out. */
+export const SMOOTH_LOOPED: LoopedKernel = looped_smooth;
 
 /** By the key of a shape. */
 export const SMOOTH_KERNELS: Readonly<Record<string, Kernel>> = {

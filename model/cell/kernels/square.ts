@@ -8,7 +8,8 @@
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
 import { bent, evaluate, searched } from './channel.ts';
-import type { Conductor, Kernel } from './kernel.ts';
+import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
+import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
 import { markKink } from './kinks.ts';
 import { currents, searchPorts } from './ports.ts';
@@ -24,9 +25,9 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const lambda = c[device + 5];
   const scale = c[device + 6];
   const lastS = s[n + 5], lineS = lastS - s[n + 32];
-  let vs = Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
+  let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
   const lastD = s[n + 6], lineD = lastD - s[n + 33];
-  let vd = Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
+  let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
     let Fs = 0, fs = 0, Fd = 0, fd = 0;
@@ -55,8 +56,9 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     } else clamped = 0;
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
-      addGraded(c, device, vs, c[device + 21], s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
-      addGraded(c, device, vd, c[device + 22], s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+      s[n + 21] = vs; s[n + 27] = vd;
+      addGraded(c, device, 21, s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
+      addGraded(c, device, 22, s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
     }
     const channel = Fs - Fd;
     const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
@@ -69,7 +71,10 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
       s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
-      if (grading != 0) keepCharges(c, device, s, n);
+      if (grading != 0) {
+        s[n + 21] += s[n + 22] * stepS; s[n + 27] += s[n + 28] * stepD;
+        keepCharges(s, n);
+      }
       return;
     }
     if (Math.abs(stepS) < rounding && Math.abs(stepD) < rounding) {
@@ -112,7 +117,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -123,7 +128,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 18, 3, 7, a, b, I, s, 9); I = s[9]; }
+        if (lambda != 0) { s[34] = a; s[35] = b; s[36] = I; bent(c, t, 18, 3, 7, s, 0); I = s[36]; }
       }
     }
     vs = a + a3 * I;
@@ -193,7 +198,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -204,7 +209,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 34, 4, 9, a, b, I, s, 10); I = s[10]; }
+        if (lambda != 0) { s[35] = a; s[36] = b; s[37] = I; bent(c, t, 34, 4, 9, s, 1); I = s[37]; }
       }
     }
     vs = a + a4 * I;
@@ -302,7 +307,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -313,7 +318,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 11); I = s[11]; }
+        if (lambda != 0) { s[36] = a; s[37] = b; s[38] = I; bent(c, t, 54, 5, 11, s, 2); I = s[38]; }
       }
     }
     vs = a + a5 * I;
@@ -437,7 +442,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -448,7 +453,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 12); I = s[12]; }
+        if (lambda != 0) { s[37] = a; s[38] = b; s[39] = I; bent(c, t, 78, 6, 13, s, 3); I = s[39]; }
       }
     }
     vs = a + a6 * I;
@@ -602,7 +607,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 13); I = s[13]; s[12] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 106, 7, 15, s, 4); I = s[40]; s[12] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -613,7 +618,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 13); I = s[13]; }
+        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 106, 7, 15, s, 4); I = s[40]; }
       }
     }
     vs = a + a7 * I;
@@ -703,7 +708,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 13); I = s[13]; s[12] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 34, 4, 9, s, 4); I = s[40]; s[12] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -714,7 +719,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 34, 4, 9, a, b, I, s, 13); I = s[13]; }
+        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 34, 4, 9, s, 4); I = s[40]; }
       }
     }
     vs = a + a4 * I;
@@ -814,7 +819,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 14); I = s[14]; s[13] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 54, 5, 11, s, 5); I = s[41]; s[13] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -825,7 +830,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 14); I = s[14]; }
+        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 54, 5, 11, s, 5); I = s[41]; }
       }
     }
     vs = a + a5 * I;
@@ -921,7 +926,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -932,7 +937,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 17); I = s[17]; }
+        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 54, 5, 11, s, 8); I = s[44]; }
       }
     }
     vs = a + a5 * I;
@@ -1051,7 +1056,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1062,7 +1067,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 18); I = s[18]; }
+        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 78, 6, 13, s, 9); I = s[45]; }
       }
     }
     vs = a + a6 * I;
@@ -1210,7 +1215,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1221,7 +1226,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 19); I = s[19]; }
+        if (lambda != 0) { s[44] = a; s[45] = b; s[46] = I; bent(c, t, 106, 7, 15, s, 10); I = s[46]; }
       }
     }
     vs = a + a7 * I;
@@ -1319,7 +1324,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1330,7 +1335,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 17); I = s[17]; }
+        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 54, 5, 11, s, 8); I = s[44]; }
       }
     }
     vs = a + a5 * I;
@@ -1436,7 +1441,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1447,7 +1452,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 18); I = s[18]; }
+        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 78, 6, 13, s, 9); I = s[45]; }
       }
     }
     vs = a + a6 * I;
@@ -1522,7 +1527,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 18, 3, 7, a, b, s, 9); I = s[9]; s[8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1533,7 +1538,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 18, 3, 7, a, b, I, s, 9); I = s[9]; }
+        if (lambda != 0) { s[34] = a; s[35] = b; s[36] = I; bent(c, t, 18, 3, 7, s, 0); I = s[36]; }
       }
     }
     vs = a + a3 * I;
@@ -1615,7 +1620,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 34, 4, 9, a, b, s, 10); I = s[10]; s[9] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1626,7 +1631,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 34, 4, 9, a, b, I, s, 10); I = s[10]; }
+        if (lambda != 0) { s[35] = a; s[36] = b; s[37] = I; bent(c, t, 34, 4, 9, s, 1); I = s[37]; }
       }
     }
     vs = a + a4 * I;
@@ -1733,7 +1738,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 11); I = s[11]; s[10] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1744,7 +1749,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 11); I = s[11]; }
+        if (lambda != 0) { s[36] = a; s[37] = b; s[38] = I; bent(c, t, 54, 5, 11, s, 2); I = s[38]; }
       }
     }
     vs = a + a5 * I;
@@ -1878,7 +1883,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 12); I = s[12]; s[11] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1889,7 +1894,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 12); I = s[12]; }
+        if (lambda != 0) { s[37] = a; s[38] = b; s[39] = I; bent(c, t, 78, 6, 13, s, 3); I = s[39]; }
       }
     }
     vs = a + a6 * I;
@@ -2002,7 +2007,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 54, 5, 11, a, b, s, 17); I = s[17]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2013,7 +2018,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 54, 5, 11, a, b, I, s, 17); I = s[17]; }
+        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 54, 5, 11, s, 8); I = s[44]; }
       }
     }
     vs = a + a5 * I;
@@ -2151,7 +2156,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 78, 6, 13, a, b, s, 18); I = s[18]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2162,7 +2167,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 78, 6, 13, a, b, I, s, 18); I = s[18]; }
+        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 78, 6, 13, s, 9); I = s[45]; }
       }
     }
     vs = a + a6 * I;
@@ -2331,7 +2336,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 19); I = s[19]; s[18] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2342,7 +2347,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 19); I = s[19]; }
+        if (lambda != 0) { s[44] = a; s[45] = b; s[46] = I; bent(c, t, 106, 7, 15, s, 10); I = s[46]; }
       }
     }
     vs = a + a7 * I;
@@ -2546,7 +2551,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 20); I = s[20]; s[19] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[45] = a; s[46] = b; searched(c, t, 138, 8, 17, s, 11); I = s[47]; s[19] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2557,7 +2562,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 138, 8, 17, a, b, I, s, 20); I = s[20]; }
+        if (lambda != 0) { s[45] = a; s[46] = b; s[47] = I; bent(c, t, 138, 8, 17, s, 11); I = s[47]; }
       }
     }
     vs = a + a8 * I;
@@ -2734,7 +2739,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 106, 7, 15, a, b, s, 22); I = s[22]; s[21] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 106, 7, 15, s, 13); I = s[49]; s[21] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2745,7 +2750,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 106, 7, 15, a, b, I, s, 22); I = s[22]; }
+        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 106, 7, 15, s, 13); I = s[49]; }
       }
     }
     vs = a + a7 * I;
@@ -2951,7 +2956,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { searched(c, t, 138, 8, 17, a, b, s, 23); I = s[23]; s[22] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 138, 8, 17, s, 14); I = s[50]; s[22] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2962,7 +2967,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { bent(c, t, 138, 8, 17, a, b, I, s, 23); I = s[23]; }
+        if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 138, 8, 17, s, 14); I = s[50]; }
       }
     }
     vs = a + a8 * I;
@@ -3019,7 +3024,107 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
+function looped_square(trapezoidal: number, stiff: number): Kernel {
+  const n = trapezoidal + stiff, { row, past, all } = layoutOf(n), { device, junction, rows, outputRow } = all;
+  const slots = slotStart(trapezoidal, stiff), width = row.width, aI = row.current, bI = width + row.current;
+  /** What each row remembers, then the audio, the control and 1; the stiff states' past, weighted; the sums of the rows. */
+  const drives = new Float64Array(n + 3), weighed = new Float64Array(n), sums = new Float64Array(n + 3);
+  drives[n + 2] = 1;
+  return (c, t, w, e, s, audio, control, output, from, to) => {
+  const noisy = w.length > 0, marking = e.length > 0;
+  const perAs = c[aI], perAd = c[bI];
+  const on = c[device + 2];
+  const lambda = c[device + 5];
+  const scale = c[device + 6];
+  const bent_ = c[device + 9];
+  const fall = c[device + 10];
+  const rise = c[device + 11];
+  let u0 = s[slots + 0], v0 = s[slots + 1];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  for (let i = from; i < to; i++) {
+    const u = audio[i], v = control[i], noise = i * (rows + 1);
+    const qs = vs, qd = vd;
+    for (let k = 0; k < trapezoidal; k++) weighed[k] = s[k];
+    for (let k = 0; k < stiff; k++) {
+      const x = s[trapezoidal + k], e1 = s[n + k], e2 = s[n + stiff + k];
+      weighed[trapezoidal + k] = 3.5 * x - 2.25 * e1 + 0.8333333333333334 * e2 - 0.125 * s[n + 2 * stiff + k];
+      s[n + 2 * stiff + k] = e2; s[n + stiff + k] = e1; s[n + k] = x;
+    }
+    for (let r = 0; r < n; r++) {
+      const at = all.memory + r * past.width, x = r < trapezoidal ? s : weighed;
+      let even = c[at + n] * u0, odd = c[at + n + 1] * v0;
+      for (let k = 0; k + 1 < n; k += 2) { even += c[at + k] * x[k]; odd += c[at + k + 1] * x[k + 1]; }
+      if (n % 2 === 1) even += c[at + n - 1] * x[n - 1];
+      if (r < trapezoidal) {
+        const old = all.memoryJunction + 2 * r;
+        even += c[at + n + 2] * I0; odd += c[old] * S0 + c[old + 1] * D0;
+      }
+      drives[r] = even + odd;
+    }
+    drives[n] = u; drives[n + 1] = v;
+    for (let r = 0; r < n + 2; r++) {
+      const at = r * width;
+      let even = c[at + n], odd = c[at + n + 1] * v;
+      even = even * u + c[at + n + 2];
+      for (let k = 0; k + 1 < n; k += 2) { even += c[at + k] * drives[k]; odd += c[at + k + 1] * drives[k + 1]; }
+      if (n % 2 === 1) odd += c[at + n - 1] * drives[n - 1];
+      sums[r] = even + odd;
+    }
+    let a = sums[0], b = sums[1], I = 0, S = 0, D = 0, J = 0;
+    if (noisy) {
+      s[slots + 5] = vs; s[slots + 6] = vd;
+      evaluate(c, t, device, s, slots + 5, slots + 9); evaluate(c, t, device, s, slots + 6, slots + 11);
+      J = w[noise + rows] * Math.sqrt(0.5 * (s[slots + 10] + s[slots + 12]));
+      a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
+      for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
+    }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[slots + 34] = a; s[slots + 35] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 36]; s[slots + 8] += 1; }
+    else if (a > 0 || b > 0) {
+      const q = 1 + fall * a + rise * b;
+      const w = scale * (a - b) * (a + b);
+      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      if (!(a + perAs * I >= 0 && b + perAd * I >= 0)) {
+        if (a > b) {
+          I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
+        } else {
+          I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
+        }
+        if (lambda != 0) { s[slots + 34] = a; s[slots + 35] = b; s[slots + 36] = I; bent(c, t, device, aI, bI, s, slots + 0); I = s[slots + 36]; }
+      }
+    }
+    vs = a + perAs * I;
+    vd = b + perAd * I;
+    if (vs > on || vd > on) {
+      s[slots + 34] = a; s[slots + 35] = b; s[slots + 36] = I;
+      conduct_square(c, t, device, aI, bI, junction, s, slots);
+      I = s[slots + 2]; S = s[slots + 3]; D = s[slots + 4]; vs = s[slots + 5]; vd = s[slots + 6];
+    }
+    I += J;
+    const last = outputRow * width;
+    let y = c[last + n] * u + c[last + n + 1] * v + c[last + n + 2] + c[last + n + 3] * I + c[junction + 2 * outputRow] * S + c[junction + 2 * outputRow + 1] * D;
+    if (noisy) y += w[noise + outputRow];
+    for (let k = 0; k < n; k++) {
+      const at = junction + 4 + 2 * k, x = sums[2 + k] + c[(2 + k) * width + n + 3] * I + (c[at] * S + c[at + 1] * D);
+      s[k] = x; y += c[last + k] * x;
+    }
+    output[i] = y;
+    if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
+      s[slots + 29] = qs; s[slots + 30] = qd; s[slots + 5] = vs; s[slots + 6] = vd; s[slots + 31] = c[last + n + 3];
+      markKink(c, t, device, aI, bI, e, i, s, slots);
+    }
+    u0 = u; v0 = v;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
+  }
+  s[slots + 0] = u0; s[slots + 1] = v0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
+  };
+}
+
 export const SQUARE_CONDUCTOR: Conductor = conduct_square;
+
+/** For shapes that are not written out. */
+export const SQUARE_LOOPED: LoopedKernel = looped_square;
 
 /** By the key of a shape. */
 export const SQUARE_KERNELS: Readonly<Record<string, Kernel>> = {

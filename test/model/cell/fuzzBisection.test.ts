@@ -47,10 +47,9 @@ test('Newton at the ports finds what the bisection behind it finds, to 1e-9 of t
       const b = freeV(dice, cell);
       const newton = new Float64Array(L.STATE_SLOTS);
       const halved = new Float64Array(L.STATE_SLOTS);
-      searched(c, numbers.table, device, aI, bI, a, b, newton, L.TERM_S);
       newton[L.GIVEN_A] = a;
       newton[L.GIVEN_B] = b;
-      newton[L.GIVEN_FREE] = newton[L.TERM_S];
+      searched(c, numbers.table, device, aI, bI, newton, 0);
       CONDUCTORS[numbers.law](c, numbers.table, device, aI, bI, junction, newton, 0);
       if (newton[L.FALLBACKS] > 0 || c[bI] < 0) continue;
       halved[L.GIVEN_A] = a;
@@ -77,9 +76,11 @@ test("the kernels' channel current is what the search behind it finds, to 1 μV 
       const current = cell.state[cell.slots + L.CHANNEL_A];
       const a = overdriveV(cell, 'source') - c[aI] * current;
       const b = overdriveV(cell, 'drain') - c[bI] * current;
-      const found = new Float64Array(1);
-      searched(c, numbers.table, device, aI, bI, a, b, found, 0);
-      const missedV = (c[bI] - c[aI]) * Math.abs(found[0] - current);
+      const found = new Float64Array(L.STATE_SLOTS);
+      found[L.GIVEN_A] = a;
+      found[L.GIVEN_B] = b;
+      searched(c, numbers.table, device, aI, bI, found, 0);
+      const missedV = (c[bI] - c[aI]) * Math.abs(found[L.GIVEN_FREE] - current);
       expect(missedV, `seed ${seed}`).toBeLessThan(1e-6 + 1e-12 * (Math.abs(a) + Math.abs(b)));
       compared += 1;
     }
