@@ -16,6 +16,7 @@ import { SQUARE_KERNELS, SQUARE_LOOPED } from './kernels/square.ts';
 import { createNoiseRows, type NoiseRows } from './noise.ts';
 import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN, type Plan, planCircuit } from './plan.ts';
 import {
+  addHeld,
   BARRIER_V,
   CLAMP_A,
   CLAMP_NVT_V,
@@ -268,15 +269,18 @@ function areNear(cell: Cell, values: Float64Array): boolean {
 
 /** One step towards the values aimed at, before a sample: all but what the rows remember. */
 export function approach(cell: Cell): void {
-  const { memory, device } = L.coefficientLayout(cell.stateCount);
+  const { memory, device, held, own, length } = cell.layout.all;
   stepOn(cell, 0, memory);
-  stepOn(cell, device, cell.coefficients.length);
+  stepOn(cell, device, held);
+  stepOn(cell, own, length);
+  addHeld(cell, cell.coefficients);
 }
 
 /** The same step, after the sample, of what the rows remember: currents of the sample before flowed through the parts as they were then. */
 export function approachMemory(cell: Cell): void {
-  const { memory, device } = L.coefficientLayout(cell.stateCount);
+  const { memory, device, held, own } = cell.layout.all;
   stepOn(cell, memory, device);
+  stepOn(cell, held, own);
 }
 
 function stepOn({ coefficients, increment, bend }: Cell, from: number, to: number): void {

@@ -94,7 +94,7 @@ function packCurrents(
   c[all.junction + r * L.JUNCTION_WIDTH + L.BY_D] = byD;
 }
 
-/** The memory rows; old reverse currents, which are as steady as the new ones, go into the constants of the rows through their memory. */
+/** The memory rows; what is constant in them, steady reverse currents too, goes into the constants of the other rows. */
 function packMemory(cell: Cell): void {
   const n = cell.stateCount;
   const { target: c, reduction } = cell;
@@ -111,8 +111,19 @@ function packMemory(cell: Cell): void {
     c[to + past.oldI] = byChannel;
     c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_S] = byS;
     c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_D] = byD;
-    const steady = steadyCurrents(cell, byS, byD);
-    for (let r = 0; r < n + 2; r++) c[r * row.width + row.constant] += c[r * row.width + i] * steady;
+    c[all.held + i] = reduction.memory[at + from.constant] + steadyCurrents(cell, byS, byD);
+  }
+  for (let r = 0; r < n + 2; r++) c[all.own + r] = c[r * row.width + row.constant];
+  addHeld(cell, c);
+}
+
+/** The constants of the rows: their own, and what their memories hold. */
+export function addHeld({ stateCount: n, layout }: Cell, c: Float64Array): void {
+  const { row, all } = layout;
+  for (let r = 0; r < n + 2; r++) {
+    let sum = c[all.own + r];
+    for (let i = 0; i < n; i++) sum += c[r * row.width + i] * c[all.held + i];
+    c[r * row.width + row.constant] = sum;
   }
 }
 

@@ -46,7 +46,7 @@ export function stepColumns(stateCount: number, noiseCount: number) {
 
 /** Columns of `memory`. */
 export function memoryColumns(stateCount: number) {
-  return { oldU: stateCount, oldJ: stateCount + 2, width: stateCount + 4 };
+  return { oldU: stateCount, oldJ: stateCount + 2, constant: stateCount + 4, width: stateCount + 5 };
 }
 
 /** Weight of the new state in the backward difference; `kernels/source.ts` has the past ones'. */
@@ -176,7 +176,7 @@ function scaleMemory({ plan, values, memory, work }: Reduction, stepSec: number)
   }
 }
 
-/** Adds f₁, and f₀ where the row is trapezoidal. Constants and noise are steady over a step. */
+/** Adds f₁, and f₀ where the row is trapezoidal. Noise is steady over a step. */
 function addDrives({ plan, response, memory, work, layout }: Reduction, row: number): void {
   const n = plan.states.length;
   const columns = layout.step;
@@ -198,8 +198,9 @@ function addDrives({ plan, response, memory, work, layout }: Reduction, row: num
       memory[m + past.oldU + k] += 0.5 * response[f + n + k];
       memory[m + past.oldJ + k] += 0.5 * response[f + n + CHANNEL + k];
     }
+    memory[m + past.constant] += 0.5 * response[f + n + CONSTANT];
   }
-  work.right[r + columns.constant] += response[f + n + CONSTANT];
+  work.right[r + columns.constant] += weight * response[f + n + CONSTANT];
   for (let k = 0; k < plan.noisy.length; k++) work.right[r + columns.noise + k] += response[f + n + DRIVES + k];
 }
 

@@ -3,7 +3,8 @@
  * stiff states.
  *
  * Coefficients: rows of `rowWidth` for the overdrives of the two ends (gate-source, gate-drain), the new states and the output; for each of these
- * the weights of the junction currents; the memory rows; for each of these the weights of the old junction currents; then the device.
+ * the weights of the junction currents; the memory rows; for each of these the weights of the old junction currents; then the device. Last, read by no kernel:
+ * what is constant in the memory rows, and in the others beside it.
  * State: the states; of the stiff ones the values one, two and three samples before; then the slots below.
  */
 
@@ -73,7 +74,9 @@ export function coefficientLayout(stateCount: number) {
   const memory = junction + rows * JUNCTION_WIDTH;
   const memoryJunction = memory + stateCount * memoryLayout(stateCount).width;
   const device = memoryJunction + stateCount * JUNCTION_WIDTH;
-  return { rows, outputRow: stateCount + 2, junction, memory, memoryJunction, device, length: device + DEVICE_WIDTH };
+  const held = device + DEVICE_WIDTH;
+  const own = held + stateCount;
+  return { rows, outputRow: stateCount + 2, junction, memory, memoryJunction, device, held, own, length: own + stateCount + 2 };
 }
 
 /** Of one number of states, made once: a value that moves needs them on the audio thread. */
