@@ -13,6 +13,7 @@ function folderWith(frames: number, kind = PLAIN): Folder {
   const folder = newFolder();
   folder.write('a.json', JSON.stringify(straightThrough()));
   folder.write('in.wav', wavOf(kind, soundOf(kind, frames)));
+  folder.write('sound.json', wavOf(kind, soundOf(kind, frames)));
   mkdirSync(folder.at('there'));
   return folder;
 }
@@ -23,7 +24,8 @@ test.each([
   [['measure', 'none.json'], `none.json cannot be read: ${NO_FILE}`],
   [['measure', 'there'], 'there cannot be read: it is a folder; expected a file'],
   [['measure', 'a.json/b'], 'a.json/b cannot be read: part of its path is a file, not a folder'],
-  [['measure', 'in.wav'], 'in.wav is not a text in UTF-8; expected a design'],
+  [['measure', 'in.wav'], 'in.wav holds sound and no design; expected a design, or a WAV file with one inside'],
+  [['measure', 'sound.json'], 'sound.json is not a text in UTF-8; expected a design'],
   [['render', 'a.json', 'none.wav', 'out.wav'], `none.wav cannot be read: ${NO_FILE}`],
   [['render', 'a.json', 'there', 'out.wav'], 'there cannot be read: it is a folder; expected a file'],
   [['render', 'a.json', 'in.wav', 'there'], 'there is a folder; expected a file or a new name'],
@@ -93,7 +95,7 @@ test.skipIf(!POSIX)('a write that fails on the way is a failure, leaves no part 
   const limited = `ulimit -f 64; exec "${process.execPath}" "${FETTLE}" render a.json in.wav out.wav`;
   const { code, stderr } = await ended(spawn('sh', ['-c', limited], { cwd: folder.path }));
   expect({ code, stderr }).toEqual({ code: 1, stderr: 'out.wav cannot be written: the file is larger than the system allows\n' });
-  expect(folder.names()).toEqual(['a.json', 'in.wav', 'out.wav', 'there']);
+  expect(folder.names()).toEqual(['a.json', 'in.wav', 'out.wav', 'sound.json', 'there']);
   expect(folder.read('out.wav').toString()).toBe('an older take');
 });
 
@@ -105,7 +107,7 @@ test.skipIf(!POSIX).each(['SIGINT', 'SIGTERM'] as const)('%s during the render l
   await wait(800);
   child.kill(signal);
   expect(await ended(child)).toMatchObject({ code: null, signal });
-  expect(folder.names()).toEqual(['a.json', 'in.wav', 'out.wav', 'there']);
+  expect(folder.names()).toEqual(['a.json', 'in.wav', 'out.wav', 'sound.json', 'there']);
   expect(folder.read('out.wav').toString()).toBe('an older take');
 });
 
