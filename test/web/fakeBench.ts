@@ -19,6 +19,7 @@ import type {
 } from '../../web/state/bench.ts';
 import { controlPicture } from '../../web/state/controlPicture.ts';
 import { createDocument } from '../../web/state/document.ts';
+import { createLimits } from '../../web/state/limits.ts';
 
 export interface FakeOptions {
   readonly sound?: SoundState;
@@ -95,6 +96,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
     source: signal(options.source ?? { title: 'Plucked chords', seconds: 16, kind: 'phrase' }),
     choosePhrase: asyncNone,
     openAudio: asyncNone,
+    openDropped: asyncNone,
     chooseTestTone: asyncNone,
     testToneHz: signal(997),
     setTestToneHz: () => null,
@@ -177,6 +179,7 @@ export function createFakeBench(options: FakeOptions = {}): Bench {
       ),
     playTake: asyncNone,
     playingTake: signal(null),
+    limits: createLimits(),
     hints,
     putHintsAway: () => assign(hints, false),
     savePlot: none,

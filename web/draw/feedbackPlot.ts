@@ -55,9 +55,20 @@ function mixed(a: CurvePoint, b: CurvePoint, share: number): CurvePoint {
 
 /** The curve at a k on it; null beyond its ends. */
 export function curveAt(curve: readonly CurvePoint[], k: number): CurvePoint | null {
-  const n = curve.findIndex((point) => point.k >= k);
-  if (n < 0 || (n === 0 && curve[0].k > k)) return null;
+  const n = placeOf(curve, k);
+  if (n === curve.length || (n === 0 && curve[0].k > k)) return null;
   return n === 0 ? curve[0] : mixed(curve[n - 1], curve[n], (k - curve[n - 1].k) / (curve[n].k - curve[n - 1].k));
+}
+
+/** Of the first point at k or after it; the curve's length beyond its end. */
+function placeOf(curve: readonly CurvePoint[], k: number): number {
+  let [from, to] = [0, curve.length];
+  while (from < to) {
+    const middle = (from + to) >> 1;
+    if (curve[middle].k < k) from = middle + 1;
+    else to = middle;
+  }
+  return from;
 }
 
 /** What parts of 1 % make of each k: where all that they can give lies on the curve. */
@@ -66,7 +77,7 @@ function bandOf(curve: readonly CurvePoint[]): { readonly k: number; readonly lo
     const [from, to] = fractionsWithin(k);
     const [first, last] = [curveAt(curve, from), curveAt(curve, to)];
     if (first === null || last === null) return [];
-    const [low, high] = thdWithin([first, ...curve.filter((point) => point.k > from && point.k < to), last]);
+    const [low, high] = thdWithin([first, ...curve.slice(placeOf(curve, from), placeOf(curve, to)), last]);
     return [{ k, low, high }];
   });
 }

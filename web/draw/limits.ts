@@ -5,8 +5,6 @@ import type { Variant } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import { decimals } from './words.ts';
 
-/** Reverse voltage of the gate that small JFETs stand unless their sheet says otherwise, V (common practice, no source: 25 V to 40 V). */
-export const FIRST_REVERSE_LIMIT_V = 25;
 /** Share of the tone below which a region is not spoken of. */
 const LEAST_SHARE = 0.0005;
 

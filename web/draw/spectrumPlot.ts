@@ -1,11 +1,12 @@
 /** Fig. 4: a spectrum as one highest level for each column of pixels, so that no peak falls between two. */
+import { dbFromPower } from '../../model/measure/spectrum.ts';
 import type { Point } from './line.ts';
 import type { Scale } from './scale.ts';
 import { toPixel, toValue } from './scale.ts';
 
 export interface Spectrum {
-  /** Level of bin n, dBFS, at n·binHz. */
-  readonly dbfs: ArrayLike<number>;
+  /** Of bin n, at n·binHz, re full scale. */
+  readonly powers: ArrayLike<number>;
   readonly binHz: number;
 }
 
@@ -13,15 +14,15 @@ export interface Spectrum {
 export function spectrumColumns(spectrum: Spectrum, x: Scale, y: Scale): Float64Array {
   const count = Math.max(0, Math.floor(x.end - x.start) + 1);
   const columns = new Float64Array(count);
-  const last = spectrum.dbfs.length - 1;
+  const last = spectrum.powers.length - 1;
   for (let column = 0; column < count; column++) {
     const pixel = x.start + column;
     const from = toValue(x, pixel - 0.5) / spectrum.binHz;
     const to = toValue(x, pixel + 0.5) / spectrum.binHz;
     const level =
       Math.ceil(from) <= Math.floor(to)
-        ? highest(spectrum.dbfs, Math.ceil(from), Math.min(last, Math.floor(to)))
-        : between(spectrum.dbfs, (from + to) / 2);
+        ? dbFromPower(highest(spectrum.powers, Math.ceil(from), Math.min(last, Math.floor(to))))
+        : between(spectrum.powers, (from + to) / 2);
     columns[column] = Number.isFinite(level) ? toPixel(y, level) : Number.NaN;
   }
   return columns;
@@ -62,15 +63,16 @@ export function harmonicSticks(
     .map((stick) => ({ ...stick, x: toPixel(x, stick.hz), y: Math.max(Math.min(y.start, y.end), toPixel(y, stick.dbfs)) }));
 }
 
-function highest(dbfs: ArrayLike<number>, from: number, to: number): number {
-  let level = Number.NEGATIVE_INFINITY;
-  for (let n = from; n <= to; n++) level = Math.max(level, dbfs[n]);
-  return level;
+function highest(powers: ArrayLike<number>, from: number, to: number): number {
+  let power = 0;
+  for (let n = from; n <= to; n++) power = Math.max(power, powers[n]);
+  return power;
 }
 
-/** Low frequencies have fewer bins than pixels: a straight line between two bins. */
-function between(dbfs: ArrayLike<number>, bin: number): number {
+/** Low frequencies have fewer bins than pixels: a straight line between the levels of two bins. */
+function between(powers: ArrayLike<number>, bin: number): number {
   const n = Math.floor(bin);
-  if (n + 1 >= dbfs.length) return Number.NEGATIVE_INFINITY;
-  return dbfs[n] + (bin - n) * (dbfs[n + 1] - dbfs[n]);
+  if (n + 1 >= powers.length) return Number.NEGATIVE_INFINITY;
+  const db = dbFromPower(powers[n]);
+  return db + (bin - n) * (dbFromPower(powers[n + 1]) - db);
 }

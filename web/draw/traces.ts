@@ -9,16 +9,19 @@ export interface Trace {
   readonly width: number;
 }
 
-/** Paints within the frame. Sheet pixels are scaled to the canvas's own box and the screen's pixels. */
-export function paintTraces(canvas: HTMLCanvasElement, area: PlotArea, traces: readonly Trace[]): void {
-  const context = canvas.getContext('2d');
-  if (context === null) throw new Error('This browser gives no canvas to draw on');
+/** Gives the canvas the screen's own pixels. Reads its box, so the page is laid out for it: not while it is painted. */
+export function fitCanvas(canvas: HTMLCanvasElement): void {
   const { width, height } = canvas.getBoundingClientRect();
   const ratio = window.devicePixelRatio;
   const [pixelsWide, pixelsHigh] = [Math.round(width * ratio), Math.round(height * ratio)];
   if (canvas.width !== pixelsWide || canvas.height !== pixelsHigh) Object.assign(canvas, { width: pixelsWide, height: pixelsHigh });
-  const style = getComputedStyle(canvas);
-  context.setTransform(pixelsWide / area.width, 0, 0, pixelsHigh / area.height, 0, 0);
+}
+
+/** Paints within the frame, sheet pixels scaled to those of the canvas, in the colours that `inkOf` gives. */
+export function paintTraces(canvas: HTMLCanvasElement, area: PlotArea, traces: readonly Trace[], inkOf: (name: string) => string): void {
+  const context = canvas.getContext('2d');
+  if (context === null) throw new Error('This browser gives no canvas to draw on');
+  context.setTransform(canvas.width / area.width, 0, 0, canvas.height / area.height, 0, 0);
   context.clearRect(0, 0, area.width, area.height);
   context.save();
   context.beginPath();
@@ -35,7 +38,7 @@ export function paintTraces(canvas: HTMLCanvasElement, area: PlotArea, traces: r
         pen = true;
       }
     }
-    context.strokeStyle = style.getPropertyValue(ink);
+    context.strokeStyle = inkOf(ink);
     context.lineWidth = lineWidth;
     context.lineJoin = 'round';
     context.stroke();

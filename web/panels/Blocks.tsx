@@ -26,8 +26,8 @@ export function Blocks({ layout }: { readonly layout: Layout }) {
   const lower = (
     <div class="lower-tables">
       <VariantTable />
-      <DeviceTable across={layout === 'wide' ? 3 : layout === 'tablet' ? 2 : 1} />
       <LevelTable />
+      <DeviceTable across={layout === 'wide' ? 3 : layout === 'tablet' ? 2 : 1} />
     </div>
   );
   if (layout === 'wide') {

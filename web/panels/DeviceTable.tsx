@@ -1,7 +1,7 @@
 import { deviceOf } from '../../model/cell/fromDesign.ts';
 import type { Device } from '../../model/design/types.ts';
 import { formatQuantity, parseQuantity } from '../../model/design/values.ts';
-import { decimals, valueVolts } from '../draw/words.ts';
+import { valueVolts } from '../draw/words.ts';
 import { useBench, useVariant } from './BenchContext.ts';
 import { CircuitValue } from './CircuitValue.tsx';
 import { DataTable } from './parts/DataTable.tsx';
@@ -44,7 +44,7 @@ const AMPLIFIER: readonly Entry[] = [
 const WHAT = { key: 'what', head: 'Value' };
 const FITTED = { key: 'number', head: 'Fitted' };
 
-/** Table 4: what of the FET and the amplifier has no place in the drawing, in as many columns as there is room for. */
+/** Table 5: what of the FET and the amplifier has no place in the drawing, in as many columns as there is room for. */
 export function DeviceTable({ across }: { readonly across: 1 | 2 | 3 }) {
   const bench = useBench();
   const variant = useVariant();
@@ -60,7 +60,7 @@ export function DeviceTable({ across }: { readonly across: 1 | 2 | 3 }) {
   const columns = Array.from({ length: across }, () => [WHAT, FITTED]).flat();
   return (
     <DataTable
-      number={4}
+      number={5}
       className="device-table"
       caption={
         <>
@@ -113,12 +113,7 @@ function ReverseCells() {
           stepping={{ kind: 'linear', step: 5 }}
           format={valueVolts}
           read={(text) => parseQuantity(text, 'V')}
-          onSet={(volts) => {
-            if (volts === null || !(volts > 0 && volts <= 1000))
-              return `The limit is ${decimals(volts ?? 0, 1)} V; expected more than 0 and at most 1000 V.`;
-            limit.value = volts;
-            return null;
-          }}
+          onSet={limit.set}
         />
       </td>
     </>

@@ -1,9 +1,9 @@
-import type { Signal } from '@preact/signals';
 import { deviceOf } from '../../model/cell/fromDesign.ts';
 import { parseQuantity } from '../../model/design/values.ts';
 import { signedHarmonic } from '../../model/study/signed.ts';
 import { decimals, gateVolts, percentText, signedDecimals, signedPercentText } from '../draw/words.ts';
 import type { Bench } from '../state/bench.ts';
+import type { Limit } from '../state/limits.ts';
 import { useBench, useBenchView, useReading, useVariant } from './BenchContext.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { LiveReading } from './parts/LiveReading.tsx';
@@ -97,7 +97,7 @@ function H3Words({ h3 }: { readonly h3: number }) {
   );
 }
 
-function Worst({ worst, limit }: { readonly worst: Bench['worst']['value']; readonly limit: Signal<number> }) {
+function Worst({ worst, limit }: { readonly worst: Bench['worst']['value']; readonly limit: Limit }) {
   const over = worst !== null && overLimit(worst.thdFundamental, limit.value);
   const editable = (
     <EditableValue
@@ -107,12 +107,7 @@ function Worst({ worst, limit }: { readonly worst: Bench['worst']['value']; read
       stepping={{ kind: 'preferred', series: 'E12', from: 0.01 }}
       format={(percent) => `${decimals(percent, percent < 1 ? 2 : 1)}${PERCENT}`}
       read={(text) => parseQuantity(text.replace(/%\s*$/, ''), '')}
-      onSet={(percent) => {
-        if (percent === null || !(percent > 0 && percent <= 100))
-          return `The limit is ${percent} %; expected more than 0 and at most 100 %.`;
-        limit.value = percent / 100;
-        return null;
-      }}
+      onSet={(percent) => limit.set((percent as number) / 100)}
     />
   );
   return (

@@ -1,8 +1,10 @@
+import { useMemo } from 'preact/hooks';
 import { feedbackFraction } from '../../model/design/feedback.ts';
 import { curveAt, type FeedbackPlot, leastWords, plotFeedback, thdRangeOf } from '../draw/feedbackPlot.ts';
 import { placeLabels } from '../draw/curveLabels.ts';
 import type { Point } from '../draw/line.ts';
 import type { PlotTable } from '../draw/plotData.ts';
+import { remembered } from '../draw/remembered.ts';
 import type { FeedbackCurve, FeedbackPoint } from '../state/bench.ts';
 import { toPixel } from '../draw/scale.ts';
 import { decimals, gateVolts, percentText, signedPercentText } from '../draw/words.ts';
@@ -24,10 +26,11 @@ export function FeedbackFigure() {
   const drawable = curve !== null && curve.points.length > 1 ? curve : null;
   const vgsV = useReading()?.vgsV ?? null;
   const current = drawable === null || vgsV === null || Math.abs(drawable.gateV - vgsV) < SAME_GATE_V;
+  const plotOf = useMemo(() => remembered(plotCurve), []);
   const range = useHeldRange(drawable && thdRangeOf(drawable.points), usePlaying());
   const drawn = (width: number, height: number): Drawing | null => {
     if (drawable === null || range === null) return null;
-    const plot = plotFeedback(drawable.points, width, height, range);
+    const plot = plotOf(drawable, width, height, range.from, range.to);
     const picture = (
       <>
         <Curves plot={plot} curve={drawable} current={current} />
@@ -51,6 +54,10 @@ export function FeedbackFigure() {
       empty={<p class="unread empty-plot">{cell.feedback.kind === 'none' ? 'no feedback is fitted, so k stays 0' : 'no reading yet'}</p>}
     />
   );
+}
+
+function plotCurve({ points }: FeedbackCurve, width: number, height: number, from: number, to: number): FeedbackPlot {
+  return plotFeedback(points, width, height, { from, to });
 }
 
 /** Per cent of the fundamental; the sign of H2 says which way to turn k. */
@@ -84,20 +91,13 @@ function Curves({ plot, curve, current }: CurvesProps) {
   const playing = usePlaying();
   const thd = useReading()?.thdFundamental ?? curveAt(curve.points, k)?.thd ?? null;
   const pointer = toPixel(plot.x, k);
-  const xTicks = plot.xTicks.map((tick) => (Math.abs(tick.at - pointer) < 24 ? { ...tick, words: null } : tick));
   const present = thd === null ? null : { x: pointer, y: Math.min(area.bottom, Math.max(area.top, toPixel(plot.y, thd))) };
   const nowWords = playing || thd === null ? 'now' : `THD ${percentText(thd)}\u2009%`;
+  const still = useMemo(() => <Still plot={plot} pointer={pointer} current={current} />, [plot, pointer, current]);
   const labels = placeLabels(plot, present, { now: LETTER * nowWords.length, least: LETTER * leastWords(least).length, harmonic: 48 });
   return (
     <svg viewBox={`0 0 ${area.width} ${area.height}`} role="img" aria-label={`Distortion against k: ${leastWords(least)}`}>
-      <PlotFrame area={area} xTicks={xTicks} yTicks={plot.yTicks} under={3} />
-      <Clip id="feedback-clip" area={area} {...(!current && { className: 'past' })}>
-        <path class="band" d={plot.band} />
-        <path class="curve-h2-under" d={plot.h2} />
-        <path class="now-line curve-thd" d={plot.thd} />
-        <path class="curve-h2" d={plot.h2} />
-        <path class="curve-h3" d={plot.h3} />
-      </Clip>
+      {still}
       {present && (
         <g>
           <path class="now-line thin" d={`M${present.x} ${present.y}V${area.bottom}`} />
@@ -115,6 +115,24 @@ function Curves({ plot, curve, current }: CurvesProps) {
         {leastWords(least)}
       </text>
     </svg>
+  );
+}
+
+/** What stays while only the point of now moves. */
+function Still({ plot, pointer, current }: { readonly plot: FeedbackPlot; readonly pointer: number; readonly current: boolean }) {
+  const { area } = plot;
+  const xTicks = plot.xTicks.map((tick) => (Math.abs(tick.at - pointer) < 24 ? { ...tick, words: null } : tick));
+  return (
+    <>
+      <PlotFrame area={area} xTicks={xTicks} yTicks={plot.yTicks} under={3} />
+      <Clip id="feedback-clip" area={area} {...(!current && { className: 'past' })}>
+        <path class="band" d={plot.band} />
+        <path class="curve-h2-under" d={plot.h2} />
+        <path class="now-line curve-thd" d={plot.thd} />
+        <path class="curve-h2" d={plot.h2} />
+        <path class="curve-h3" d={plot.h3} />
+      </Clip>
+    </>
   );
 }
 

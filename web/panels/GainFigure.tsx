@@ -51,7 +51,6 @@ function Picture({ plot, worst }: { readonly plot: GainPlot; readonly worst: Wor
   const { area, swing } = plot;
   const [left, right] = swing;
   const ruler = area.bottom - 10;
-  const reading = useReading();
   const words = worst ? `worst over the swing at ${gateVolts(worst.gateV)}` : '';
   return (
     <svg viewBox={`0 0 ${area.width} ${area.height}`} role="img" aria-label={`Gain against gate voltage; ${words}`}>
@@ -69,7 +68,7 @@ function Picture({ plot, worst }: { readonly plot: GainPlot; readonly worst: Wor
         </>
       )}
       {plot.worst && worst && <Worst plot={plot} worst={worst} />}
-      <Present plot={plot} gateV={reading?.vgsV ?? null} />
+      <Present plot={plot} />
     </svg>
   );
 }
@@ -92,15 +91,11 @@ function Worst({ plot, worst }: { readonly plot: GainPlot; readonly worst: Worst
   );
 }
 
-interface PresentProps {
-  readonly plot: GainPlot;
-  /** Where the moment's reading was made, for a point that stands; null where there is none. */
-  readonly gateV: number | null;
-}
-
 /** The point on the curve glides with the gate, outside rendering, and its words with it. */
-function Present({ plot, gateV }: PresentProps) {
+function Present({ plot }: { readonly plot: GainPlot }) {
   const playing = usePlaying();
+  /** Where the moment's reading was made, for a point that stands. */
+  const gateV = useReading()?.vgsV ?? null;
   const point = useRef<SVGCircleElement>(null);
   const words = useRef<SVGTextElement>(null);
   const say = useSlowWords(decibels);

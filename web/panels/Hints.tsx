@@ -7,7 +7,7 @@ export function Hints() {
   if (!bench.hints.value) return null;
   return (
     <Note
-      kind="note"
+      kind="hints"
       sentence="What is underlined is changed where it is printed: type, use the arrow keys, or drag."
       advice="The letters A to D are variants of one circuit; an empty letter takes a copy of the one that is heard. A figure is read out where you point, or with the arrow keys once it has the focus."
     >

@@ -10,7 +10,7 @@ const COLUMNS = [
   { key: 'what', head: 'At' },
   { key: 'number', head: 'Nominal' },
   { key: 'number', head: 'Peak' },
-  { key: 'number', head: 'Noise, rms' },
+  { key: 'number noise', head: 'Noise, rms' },
   { key: 'number', head: 'Clips at' },
   { key: 'number', head: 'Margin, dB' },
 ];
@@ -21,7 +21,7 @@ const UNITS: readonly { value: LevelUnit; words: string }[] = [
   { value: 'dBFS', words: 'dBFS' },
 ];
 
-/** Table 5: levels at every point of the chain, and how far each is from its limit. */
+/** Table 4: levels at every point of the chain, and how far each is from its limit. */
 export function LevelTable() {
   const { bench, slowLive } = useBenchView();
   const unit = useSignal<LevelUnit>('dBu');
@@ -48,7 +48,7 @@ export function LevelTable() {
     </>
   );
   return (
-    <DataTable number={5} className="level-table" caption={caption} columns={COLUMNS}>
+    <DataTable number={4} className="level-table" caption={caption} columns={COLUMNS}>
       <tbody>
         {nodes.map((node) => (
           <LevelRow key={node.name} node={node} print={(volts, rms) => levelText(volts, unit.value, fullScaleV, rms)} />
@@ -73,7 +73,7 @@ function LevelRow({ node, print }: LevelRowProps) {
       </th>
       <td class="number">{print(nominalV)}</td>
       <td class="number">{peakV !== null && <span class="live">{print(peakV)}</span>}</td>
-      <td class="number">{print(noiseV, true)}</td>
+      <td class="number noise">{print(noiseV, true)}</td>
       <td class="number">{print(clipV)}</td>
       <td class="number">{marginDb !== null && <span class={marginDb < 0 ? 'over' : undefined}>{signedDecimals(marginDb, 1)}</span>}</td>
     </tr>

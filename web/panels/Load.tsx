@@ -7,6 +7,7 @@ export function Load() {
   const live = slowLive.value;
   if (!usePlaying() || live === null) return null;
   const latencySec = bench.latencySec.value;
+  const outputSec = bench.outputLatencySec.value;
   const { underruns } = live;
   return (
     <p class="load">
@@ -20,6 +21,12 @@ export function Load() {
         <>
           , and delay it by {decimals(1000 * latencySec, 1)}
           {'\u2009'}ms
+          {outputSec !== null && (
+            <>
+              ; browser and device add {decimals(1000 * outputSec, 0)}
+              {'\u2009'}ms
+            </>
+          )}
         </>
       )}
       {underruns > 0 && <>; {underruns === 1 ? 'one gap' : `${underruns} gaps`} since the start</>}.

@@ -1,7 +1,7 @@
 import { RESIDUAL_PARTS, type ResidualPart } from '../../model/chain/residual.ts';
 import { parseQuantity } from '../../model/design/values.ts';
 import { decimals } from '../draw/words.ts';
-import { useBench } from './BenchContext.ts';
+import { useBench, useBenchView } from './BenchContext.ts';
 import { Choice } from './parts/Choice.tsx';
 import { EditableValue } from './parts/EditableValue.tsx';
 
@@ -38,7 +38,7 @@ export function Residual() {
 }
 
 function Level() {
-  const db = useBench().live.value?.residualDb ?? null;
+  const db = useBenchView().slowLive.value?.residualDb ?? null;
   if (db === null) return null;
   return (
     <span class="live">

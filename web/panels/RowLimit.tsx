@@ -1,5 +1,5 @@
 import { parseQuantity } from '../../model/design/values.ts';
-import { decimals, valueVolts } from '../draw/words.ts';
+import { valueVolts } from '../draw/words.ts';
 import type { RowLimits } from './characteristicRows.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { useSheetLimits } from './sheetLimits.ts';
@@ -9,19 +9,18 @@ interface LimitWords {
   readonly short: string;
   readonly sign: '' | '±';
   readonly step: number;
-  readonly mostV: number;
 }
 
 const WORDS: Readonly<Record<keyof RowLimits, LimitWords>> = {
-  feedthroughV: { label: 'Most control feedthrough, peak', short: 'The limit', sign: '', step: 0.001, mostV: 10 },
-  controlV: { label: 'Most control voltage, either side of 0 V', short: 'The limit', sign: '±', step: 0.5, mostV: 1000 },
-  pastOffV: { label: 'Least way past VGS(off)', short: 'The limit', sign: '', step: 0.05, mostV: 100 },
+  feedthroughV: { label: 'Most control feedthrough, peak', short: 'The limit', sign: '', step: 0.001 },
+  controlV: { label: 'Most control voltage, either side of 0 V', short: 'The limit', sign: '±', step: 0.5 },
+  pastOffV: { label: 'Least way past VGS(off)', short: 'The limit', sign: '', step: 0.05 },
 };
 
 /** A limit of Table 1, in the designer's hands; «none» asks nothing. */
 export function RowLimit({ limit }: { readonly limit: keyof RowLimits }) {
   const kept = useSheetLimits()[limit];
-  const { label, short, sign, step, mostV } = WORDS[limit];
+  const { label, short, sign, step } = WORDS[limit];
   return (
     <EditableValue
       label={label}
@@ -31,12 +30,7 @@ export function RowLimit({ limit }: { readonly limit: keyof RowLimits }) {
       stepping={{ kind: 'linear', step }}
       format={(volts) => `${sign}${valueVolts(volts)}`}
       read={(text) => parseQuantity(text.replace(/^\s*±/, ''), 'V')}
-      onSet={(volts) => {
-        if (volts !== null && !(volts >= 0 && volts <= mostV))
-          return `The limit is ${decimals(volts, 3)} V; expected 0 to ${mostV} V, or «none».`;
-        kept.value = volts;
-        return null;
-      }}
+      onSet={kept.set}
     />
   );
 }

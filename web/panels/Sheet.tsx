@@ -16,7 +16,6 @@ import { SoundButtons } from './SoundButtons.tsx';
 import { SourceScale } from './SourceScale.tsx';
 import { runShortcut } from './shortcuts.ts';
 import { createRateTap } from './tap.ts';
-import { createSheetLimits, LimitsContext } from './sheetLimits.ts';
 import { useFileDrop } from './useFileDrop.ts';
 import { useLayout } from './useLayout.ts';
 
@@ -25,7 +24,6 @@ const CALM_EVERY_MS = 250;
 /** The page «Listen»: one design, heard and measured. */
 export function Sheet({ bench }: { readonly bench: Bench }) {
   const layout = useLayout();
-  const limits = useMemo(createSheetLimits, []);
   const dialog = useSignal<'open' | 'keys' | null>(null);
   const dropping = useFileDrop(bench);
   const slow = useMemo(() => sampled(bench.moment, matchMedia('(prefers-reduced-motion: reduce)').matches ? CALM_EVERY_MS : 0), [bench]);
@@ -52,28 +50,26 @@ export function Sheet({ bench }: { readonly bench: Bench }) {
   };
   return (
     <BenchContext.Provider value={view}>
-      <LimitsContext.Provider value={limits}>
-        <div class={`sheet ${layout} ${bench.sound.value === 'playing' ? 'is-live' : ''} ${dropping ? 'dropping' : ''}`}>
-          <Heading onOpen={() => (dialog.value = 'open')} onKeys={() => (dialog.value = 'keys')} />
-          <main>
-            <section class="sound" aria-label="Sound">
-              <SoundButtons />
-              <div class="sentences">
-                <Conditions />
-                <Heard />
-              </div>
-              <Ruler />
-              <SourceScale />
-            </section>
-            <Notes />
-            <Blocks layout={layout} />
-          </main>
-          <Foot />
-          {dialog.value === 'open' && <OpenDialog onClose={close} />}
-          {dialog.value === 'keys' && <KeysDialog onClose={close} />}
-          {dropping && <p class="drop-word">Drop a recording to hear it through the cell, or a design to open it.</p>}
-        </div>
-      </LimitsContext.Provider>
+      <div class={`sheet ${layout} ${bench.sound.value === 'playing' ? 'is-live' : ''} ${dropping ? 'dropping' : ''}`}>
+        <Heading onOpen={() => (dialog.value = 'open')} onKeys={() => (dialog.value = 'keys')} />
+        <main>
+          <section class="sound" aria-label="Sound">
+            <SoundButtons />
+            <div class="sentences">
+              <Conditions />
+              <Heard />
+            </div>
+            <Ruler />
+            <SourceScale />
+          </section>
+          <Notes />
+          <Blocks layout={layout} />
+        </main>
+        <Foot />
+        {dialog.value === 'open' && <OpenDialog onClose={close} />}
+        {dialog.value === 'keys' && <KeysDialog onClose={close} />}
+        {dropping && <p class="drop-word">Drop a recording to hear it through the cell, or a design to open it.</p>}
+      </div>
     </BenchContext.Provider>
   );
 }

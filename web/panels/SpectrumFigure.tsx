@@ -1,15 +1,17 @@
-import { useSignal } from '@preact/signals';
+import { type ReadonlySignal, useSignal } from '@preact/signals';
+import type { ComponentChildren } from 'preact';
 import { useMemo } from 'preact/hooks';
 import type { PlotTable } from '../draw/plotData.ts';
-import { plotArea } from '../draw/plotArea.ts';
+import { type PlotArea, plotArea } from '../draw/plotArea.ts';
 import { linearScale, logScale, type Scale, toPixel } from '../draw/scale.ts';
 import { harmonicSticks, type Spectrum, spectrumPoints, type Stick } from '../draw/spectrumPlot.ts';
 import { createSpectrumReader } from '../draw/spectrumSource.ts';
 import type { Trace } from '../draw/traces.ts';
 import { decimals } from '../draw/words.ts';
 import { formatQuantity } from '../../model/design/values.ts';
-import type { Bench } from '../state/bench.ts';
-import { useBench, useReading, useVariant } from './BenchContext.ts';
+import { dbFromPower } from '../../model/measure/spectrum.ts';
+import type { Bench, Moment } from '../state/bench.ts';
+import { useBench, useBenchView, useVariant } from './BenchContext.ts';
 import { PlotFrame } from './parts/PlotFrame.tsx';
 import { type Drawing, PlotFigure } from './parts/PlotFigure.tsx';
 import { TraceCanvas } from './parts/TraceCanvas.tsx';
@@ -23,7 +25,7 @@ const HZ = [20, 100, 1000, 10000] as const;
 
 /** Fig. 4: what goes in and what comes out, as spectrum or as waveforms. */
 export function SpectrumFigure() {
-  const bench = useBench();
+  const { bench, moment } = useBenchView();
   const view = useSignal<SignalView>('spectrum');
   const spanSec = useSignal(0.02);
   const sticks = useSticks();
@@ -40,19 +42,23 @@ export function SpectrumFigure() {
       lead={<SignalChoice view={view} spanSec={spanSec} />}
       caption={isSpectrum ? ', in (grey) and out.' : ', in (grey) and out, from a rise through 0.'}
       draw={(width, height) =>
-        isSpectrum ? spectrumDrawing({ read, sticks, silent }, width, height) : waveformDrawing(waveforms, width, height)
+        isSpectrum ? spectrumDrawing({ read, sticks, moment, silent }, width, height) : waveformDrawing(waveforms, width, height)
       }
     />
   );
 }
 
-/** The shadow tone's harmonics at the output. */
-function useSticks(): (x: Scale, y: Scale) => Stick[] {
+/** The shadow tone's harmonics at the output, of a moment. */
+type Sticks = (moment: Moment | null, x: Scale, y: Scale) => Stick[];
+
+function useSticks(): Sticks {
   const bench = useBench();
-  const reading = useReading();
   const { gainDb } = useVariant().output;
   const at = { toneHz: bench.toneHz.value, gainDb, fullScaleV: bench.design.value.fullScaleV };
-  return (x, y) => (reading === null ? [] : harmonicSticks(reading.harmonics, at, x, y));
+  return (moment, x, y) => {
+    const reading = moment?.reading ?? null;
+    return reading === null || 'fault' in reading ? [] : harmonicSticks(reading.harmonics, at, x, y);
+  };
 }
 
 interface Spectra {
@@ -71,11 +77,12 @@ function createReaders(bench: Bench): () => Spectra {
 
 interface SpectrumView {
   readonly read: () => Spectra;
-  readonly sticks: (x: Scale, y: Scale) => Stick[];
+  readonly sticks: Sticks;
+  readonly moment: ReadonlySignal<Moment | null>;
   readonly silent: boolean;
 }
 
-function spectrumDrawing({ read, sticks, silent }: SpectrumView, width: number, height: number): Drawing {
+function spectrumDrawing({ read, sticks, moment, silent }: SpectrumView, width: number, height: number): Drawing {
   const area = plotArea(width, height, MARGINS);
   const x = logScale(20, 20000, area.left, area.right);
   const y = linearScale(LOWEST_DB, 0, area.bottom, area.top);
@@ -91,37 +98,55 @@ function spectrumDrawing({ read, sticks, silent }: SpectrumView, width: number, 
       { points: spectrumPoints(after, x, y), ink: '--now', width: 1.5 },
     ];
   };
-  const standing = sticks(x, y);
+  const frame = <PlotFrame area={area} xTicks={xTicks} yTicks={yTicks} />;
   return {
     area,
     x,
-    tables: () => spectrumTables(read(), standing),
+    tables: () => spectrumTables(read(), sticks(moment.peek(), x, y)),
     traces,
     picture: (
       <>
-        <svg viewBox={`0 0 ${width} ${height}`} aria-hidden="true">
-          <PlotFrame area={area} xTicks={xTicks} yTicks={yTicks} />
-          {standing.map(({ n, x: across, y: top }) => (
-            <path key={n} class="stick" d={`M${across} ${area.bottom}V${top}`} />
-          ))}
-        </svg>
-        <TraceCanvas area={area} traces={traces} label={spoken(standing)} />
-        <svg class="over-canvas" viewBox={`0 0 ${width} ${height}`} aria-hidden="true">
-          {namedOf(standing).map(({ n, x: across, y: top }) => (
-            <text key={n} class="note-text halo stick-text" x={across} y={Math.max(area.top + 11, top - 4)} text-anchor="middle">
-              {n}
-            </text>
-          ))}
-          {standing.length > 0 && (
-            <text class="note-text halo" x={area.right - 6} y={area.top + 13} text-anchor="end">
-              shadow tone
-            </text>
-          )}
-        </svg>
+        <Picture area={area} frame={frame} traces={traces} sticks={() => sticks(moment.value, x, y)} />
         {silent && <p class="aside plot-word">no sound yet</p>}
       </>
     ),
   };
+}
+
+interface PictureProps {
+  readonly area: PlotArea;
+  readonly frame: ComponentChildren;
+  readonly traces: () => Trace[];
+  readonly sticks: () => readonly Stick[];
+}
+
+/** Apart, so that the sticks of the moment draw nothing else anew. */
+function Picture({ area, frame, traces, sticks }: PictureProps) {
+  const standing = sticks();
+  const viewBox = `0 0 ${area.width} ${area.height}`;
+  return (
+    <>
+      <svg viewBox={viewBox} aria-hidden="true">
+        {frame}
+        {standing.map(({ n, x: across, y: top }) => (
+          <path key={n} class="stick" d={`M${across} ${area.bottom}V${top}`} />
+        ))}
+      </svg>
+      <TraceCanvas area={area} traces={traces} label={spoken(standing)} />
+      <svg class="over-canvas" viewBox={viewBox} aria-hidden="true">
+        {namedOf(standing).map(({ n, x: across, y: top }) => (
+          <text key={n} class="note-text halo stick-text" x={across} y={Math.max(area.top + 11, top - 4)} text-anchor="middle">
+            {n}
+          </text>
+        ))}
+        {standing.length > 0 && (
+          <text class="note-text halo" x={area.right - 6} y={area.top + 13} text-anchor="end">
+            shadow tone
+          </text>
+        )}
+      </svg>
+    </>
+  );
 }
 
 /** A stick's number takes so much, pixels: high orders stand closer than that, and are named where there is room. */
@@ -144,13 +169,15 @@ function spoken(sticks: readonly Stick[]): string {
 const dbText = (db: number) => `${decimals(db, 1)}\u2009dB`;
 const hzText = (hz: number) => formatQuantity(hz, 'Hz', 3);
 
+const levelsOf = ({ powers }: Spectrum) => Float64Array.from(powers, dbFromPower);
+
 function spectrumTables({ before, after }: Spectra, sticks: readonly Stick[]): PlotTable[] {
-  const hz = Float64Array.from(after.dbfs, (_, n) => n * after.binHz);
+  const hz = Float64Array.from(after.powers, (_, n) => n * after.binHz);
   const level = (name: string, values: ArrayLike<number>) => ({ name, unit: 'dBFS', values, print: dbText });
   return [
     {
       x: { name: 'frequency', unit: 'Hz', values: hz, print: hzText },
-      ys: [level('in', before.dbfs), level('out', after.dbfs)],
+      ys: [level('in', levelsOf(before)), level('out', levelsOf(after))],
       keeps: 'highest',
     },
     {

@@ -1,6 +1,8 @@
+import { useMemo } from 'preact/hooks';
 import type { TransferPath } from '../../model/study/transfer.ts';
 import { formatQuantity } from '../../model/design/values.ts';
 import type { Column, PlotTable } from '../draw/plotData.ts';
+import { remembered } from '../draw/remembered.ts';
 import { pathCurrentAt, pathOn, plotTransfer, type TransferPlot } from '../draw/transferPlot.ts';
 import { gateVolts, voltsText } from '../draw/words.ts';
 import type { TransferPlane } from '../state/bench.ts';
@@ -14,11 +16,13 @@ import { Sym } from './parts/Symbol.tsx';
 export function TransferFigure() {
   const bench = useBench();
   const plane = bench.plane.value;
-  const path = useBenchView().moment.value?.path ?? null;
+  const { moment } = useBenchView();
+  const plotOf = useMemo(() => remembered(plotTransfer), []);
   const drawn = (width: number, height: number): Drawing | null => {
     if (plane === null) return null;
-    const plot = plotTransfer(plane, width, height);
-    return { area: plot.area, x: plot.x, tables: () => transferTables(plane, path), picture: <Picture plot={plot} path={path} /> };
+    const plot = plotOf(plane, width, height);
+    const tables = () => transferTables(plane, moment.peek()?.path ?? null);
+    return { area: plot.area, x: plot.x, tables, picture: <Picture plot={plot} /> };
   };
   return (
     <PlotFigure
@@ -50,12 +54,13 @@ function transferTables(plane: TransferPlane, path: TransferPath | null): PlotTa
   ];
 }
 
-function Picture({ plot, path }: { readonly plot: TransferPlot; readonly path: TransferPath | null }) {
+function Picture({ plot }: { readonly plot: TransferPlot }) {
   const { area, x, y } = plot;
+  const path = useBenchView().moment.value?.path ?? null;
   const playing = usePlaying();
   const reading = useReading();
   const drawn = path && pathOn({ x, y }, path);
-  const [middleX, middleY] = [(area.left + area.right) / 2, (area.top + area.bottom) / 2];
+  const still = useMemo(() => <Still plot={plot} />, [plot]);
   const at = reading === null ? '' : `; the shadow tone at a gate of ${gateVolts(reading.vgsV)}`;
   return (
     <svg
@@ -63,6 +68,19 @@ function Picture({ plot, path }: { readonly plot: TransferPlot; readonly path: T
       role="img"
       aria-label={`Drain current against drain-source voltage by gate voltage${at}`}
     >
+      {still}
+      {drawn && <path class="now-line path-line" clip-path="url(#transfer-clip)" d={drawn.line} />}
+      {drawn && <circle class={playing ? 'present' : 'present hollow'} cx={drawn.crest.x} cy={drawn.crest.y} r={4.5} />}
+    </svg>
+  );
+}
+
+/** What stays while the path moves. */
+function Still({ plot }: { readonly plot: TransferPlot }) {
+  const { area } = plot;
+  const [middleX, middleY] = [(area.left + area.right) / 2, (area.top + area.bottom) / 2];
+  return (
+    <>
       <PlotFrame area={area} xTicks={plot.xTicks} yTicks={plot.yTicks} />
       <path class="axis" d={`M${middleX} ${area.top}V${area.bottom}M${area.left} ${middleY}H${area.right}`} />
       <Clip id="transfer-clip" area={area}>
@@ -70,7 +88,6 @@ function Picture({ plot, path }: { readonly plot: TransferPlot; readonly path: T
           <path key={curve} class="curve" d={curve} />
         ))}
         <path class="dash-dot" d={plot.edge} />
-        {drawn && <path class="now-line path-line" d={drawn.line} />}
       </Clip>
       {plot.labels.map(({ words, place, side }) => (
         <text
@@ -83,7 +100,6 @@ function Picture({ plot, path }: { readonly plot: TransferPlot; readonly path: T
           {words}
         </text>
       ))}
-      {drawn && <circle class={playing ? 'present' : 'present hollow'} cx={drawn.crest.x} cy={drawn.crest.y} r={4.5} />}
-    </svg>
+    </>
   );
 }

@@ -1,3 +1,4 @@
+import { useMemo } from 'preact/hooks';
 import { feedbackFraction } from '../../model/design/feedback.ts';
 import { decimals, percentText } from '../draw/words.ts';
 import { differences } from '../draw/differences.ts';
@@ -48,6 +49,7 @@ function VariantRow({ index }: { readonly index: number }) {
   const variant = variants[index];
   const heard = bench.heardVariant.value === index;
   const summary = bench.summaries.value[index] ?? null;
+  const tries = useMemo(() => (index === 0 ? 'the first' : told(differences(variants[0], variant))), [variants[0], variant]);
   const over = summary !== null && overLimit(summary.worstThd, limit.value);
   return (
     <tr class={heard ? 'heard' : undefined}>
@@ -57,7 +59,7 @@ function VariantRow({ index }: { readonly index: number }) {
       </th>
       <td class="what">
         {heard ? <VariantName name={variant.name} letter={LETTERS[index]} /> : variant.name !== LETTERS[index] && `${variant.name}: `}
-        <span class="tries">{index === 0 ? 'the first' : told(differences(variants[0], variant))}</span>
+        <span class="tries">{tries}</span>
         {live && <Faults faults={live.faults} />}
       </td>
       <td class="number k">{feedbackFraction(variant.cell).toFixed(3)}</td>

@@ -2,7 +2,7 @@ import { useSignal } from '@preact/signals';
 import { useEffect } from 'preact/hooks';
 import type { Bench } from '../state/bench.ts';
 
-/** Files dropped anywhere on the page: a design is opened, anything else is heard through the cell. True while one hovers. */
+/** Files dropped anywhere on the page are opened. True while one hovers. */
 export function useFileDrop(bench: Bench): boolean {
   const hovering = useSignal(false);
   useEffect(() => {
@@ -18,8 +18,7 @@ export function useFileDrop(bench: Bench): boolean {
     const drop = (event: DragEvent) => {
       event.preventDefault();
       hovering.value = false;
-      const file = event.dataTransfer?.files[0];
-      if (file) void (/\.json$/i.test(file.name) ? bench.openDesign(file) : bench.openAudio(file));
+      void bench.openDropped([...(event.dataTransfer?.files ?? [])]);
     };
     window.addEventListener('dragover', over, { signal });
     window.addEventListener('dragleave', leave, { signal });

@@ -21,7 +21,8 @@ export function usePlace(bench: Bench, mark: RefObject<HTMLElement | null>, time
       const due = now - toldMs >= SLOW_MS;
       if (element === null || (calm.matches && !due)) return;
       const seconds = bench.positionSec();
-      element.style.left = rem(toPixel(time, seconds));
+      // By a transform, for which the page is not laid out anew.
+      element.style.transform = `translateX(${rem(toPixel(time, seconds))})`;
       if (!due) return;
       toldMs = now;
       element.setAttribute('aria-valuenow', seconds.toFixed(1));

@@ -11,6 +11,7 @@ import type { Moves } from '../../model/design/feedback.ts';
 import type { Design, Variant } from '../../model/design/types.ts';
 import type { ToneReading } from '../../model/study/tone.ts';
 import type { TransferPath } from '../../model/study/transfer.ts';
+import type { Limits } from './limits.ts';
 
 export interface Bench {
   /** Resolves when the design and the settings of the last visit are in place, or there are none. */
@@ -73,6 +74,8 @@ export interface Bench {
   readonly source: ReadonlySignal<SourceInfo>;
   choosePhrase(name: string): Promise<void>;
   openAudio(file: File): Promise<void>;
+  /** A design is opened, anything else is heard through the cell; of several files the first, and `notes` say so. */
+  openDropped(files: readonly File[]): Promise<void>;
   /** A sine, from one to 20000 Hz, of so many V peak at the cell's input whatever full scale is. */
   chooseTestTone(): Promise<void>;
   readonly testToneHz: ReadonlySignal<number>;
@@ -167,6 +170,8 @@ export interface Bench {
   playTake(id: number | null): Promise<void>;
   readonly playingTake: ReadonlySignal<number | null>;
 
+  /** What the designer asks of the circuit. */
+  readonly limits: Limits;
   /** Hints for a first visit, until they are put away. */
   readonly hints: ReadonlySignal<boolean>;
   putHintsAway(): void;

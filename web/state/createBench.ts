@@ -13,6 +13,7 @@ import { fileName } from './fileName.ts';
 import { createKeeping } from './keeping.ts';
 import { createLevels } from './levels.ts';
 import { createLibrary } from './library.ts';
+import { createLimits, limitSettings } from './limits.ts';
 import type { Listening } from './listening.ts';
 import { createListening } from './listening.ts';
 import { createNotes, sentenceOf } from './notes.ts';
@@ -56,6 +57,14 @@ export function assembleBench(parts: Parts): Bench {
     playing: computed(() => listening.sound.value === 'playing'),
   });
 
+  const limits = createLimits();
+  const hintsAway = signal(false);
+  const putAway = (away: boolean) => {
+    hintsAway.value = away;
+  };
+  /** Hints wait until it is known whether an earlier visit has put them away. */
+  const visitKnown = signal(false);
+
   const keeping = createKeeping({
     ...{ store, shelf, document, notes, download: parts.download },
     settings: {
@@ -69,6 +78,9 @@ export function assembleBench(parts: Parts): Bench {
       keep: choiceSetting<Keep>('What setting k leaves alone', ['gate', 'control'], document.keep, document.setKeep),
       moves: choiceSetting<Moves>('What setting k moves', MOVES, document.moves, document.setMoves),
       phrase: textSetting('The phrase', sources.phrase),
+      file: textSetting('The file', sources.file),
+      hintsAway: choiceSetting('Whether the hints are away', [true, false], hintsAway, putAway),
+      ...limitSettings(limits),
     },
     hold: takes.hold,
   });
@@ -107,7 +119,11 @@ export function assembleBench(parts: Parts): Bench {
     });
   });
 
-  const hints = signal(true);
+  void keeping.restored.then(() => {
+    visitKnown.value = true;
+  });
+
+  const openDesign = (file: File) => noting(async () => openText(await designIn(file), file.name));
   return {
     restored: keeping.restored,
     ...document,
@@ -119,15 +135,20 @@ export function assembleBench(parts: Parts): Bench {
     examples: library.examples,
     notes: notes.notes,
     dismiss: notes.dismiss,
-    hints,
-    putHintsAway() {
-      hints.value = false;
-    },
+    limits,
+    hints: computed(() => visitKnown.value && !hintsAway.value),
+    putHintsAway: () => putAway(true),
     savePlot(name, kind, text) {
       const mediaType = kind === 'csv' ? 'text/csv' : 'image/svg+xml';
       parts.download(`${fileName(document.design.peek().title)}-${name}.${kind}`, new TextEncoder().encode(text), mediaType);
     },
-    openDesign: (file) => noting(async () => openText(await designIn(file), file.name)),
+    openDesign,
+    async openDropped(files) {
+      const [file] = files;
+      if (file === undefined) return;
+      if (files.length > 1) notes.add('note', `${files.length} files were dropped; “${file.name}” is opened, the others are not.`);
+      await (/\.json$/i.test(file.name) ? openDesign(file) : sources.openAudio(file));
+    },
     openExample: (name) => noting(async () => openText(await library.loadExample(name), name)),
     saveDesign() {
       const design = document.design.peek();

@@ -34,6 +34,8 @@ export interface Sources
   > {
   /** The name of the phrase that was chosen last; null before the first choice. */
   readonly phrase: Signal<string | null>;
+  /** The name of the user's file that is chosen, at first that of the last visit; null while anything else is. */
+  readonly file: Signal<string | null>;
   /** Chooses the last visit's phrase, else the first one, where nothing is chosen or being loaded. Rejects with a sentence. */
   loadFirst(): Promise<void>;
 }
@@ -50,6 +52,7 @@ export interface SourcesNeeds {
 
 export function createSources({ parts, library, document, notes, restored, listening }: SourcesNeeds): Sources {
   const phrase = signal<string | null>(null);
+  const file = signal<string | null>(null);
   const testToneHz = signal(FIRST_TONE_HZ);
   const testToneV = signal(FIRST_TONE_V);
   const inputs = signal<Bench['inputs']['value']>([]);
@@ -78,6 +81,7 @@ export function createSources({ parts, library, document, notes, restored, liste
       try {
         if (mine !== choice) return letGo(source);
         await listening().setSource(source);
+        file.value = source.kind === 'file' ? source.clip.title : null;
         hold(source);
       } catch (error) {
         letGo(source);
@@ -156,6 +160,7 @@ export function createSources({ parts, library, document, notes, restored, liste
   return {
     phrases: library.phrases,
     phrase,
+    file,
     choosePhrase: (name) => noting(choose(() => loadPhrase(name))),
     openAudio: (file) => noting(choose(() => openFile(file))),
     chooseTestTone: () => noting(choose(loadTone)),
@@ -170,7 +175,15 @@ export function createSources({ parts, library, document, notes, restored, liste
       await choosing;
       const names = library.phrases.peek().map(({ name }) => name);
       const first = names.find((name) => name === phrase.peek()) ?? names[0];
-      if (first !== undefined && listening().source.peek().title === '') await choose(() => loadPhrase(first));
+      if (first === undefined || listening().source.peek().title !== '') return;
+      if (file.peek() !== null) {
+        notes.add(
+          'note',
+          `“${file.peek()}” was heard at the last visit; recordings of yours are not kept here.`,
+          'Open it again to hear it.',
+        );
+      }
+      await choose(() => loadPhrase(first));
     },
   };
 }

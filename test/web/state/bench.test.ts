@@ -290,6 +290,13 @@ describe('sources', () => {
     expect(bench.sound.value).toBe('playing');
   });
 
+  test('of several files that are dropped the first is opened, and that is said', async () => {
+    const files = ['one.wav', 'two.wav'].map((name) => fileOf([createNoise(1, 4800, 0.5)], 48000, name));
+    await bench.openDropped(files);
+    expect(bench.source.value.title).toBe('one.wav');
+    expect(sentences()).toEqual(['2 files were dropped; “one.wav” is opened, the others are not.']);
+  });
+
   test('of sources chosen while another is being loaded the last one counts, the first phrase too', async () => {
     const { fetchBytes } = parts;
     const waiting: (() => void)[] = [];

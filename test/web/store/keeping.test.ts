@@ -1,4 +1,5 @@
 import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest';
+import { writeWav } from '../../../model/chain/wav.ts';
 import type { Bench } from '../../../web/state/bench.ts';
 import { assembleBench } from '../../../web/state/createBench.ts';
 import { createFakeParts, type FakeParts } from '../state/fakeParts.ts';
@@ -86,6 +87,36 @@ describe('design and settings', () => {
     ]);
     expect(source.value.title).toBe(first.source.value.title);
     expect(parts.sounds[0].cells[0].gain).toBeCloseTo(0.1, 9);
+  });
+
+  test('limits and hints that were put away come back; a limit that is none is refused by name', async () => {
+    const first = await visit();
+    expect(first.hints.value).toBe(true);
+    first.putHintsAway();
+    expect([first.limits.thd.set(0.05), first.limits.controlV.set(null), first.limits.reverseV.set(40)]).toEqual([null, null, null]);
+    expect(first.limits.thd.set(1.5)).toBe('The limit is 150 %; expected more than 0 and at most 100 %.');
+    expect(first.limits.pastOffV.set(-1)).toBe('The limit is -1 V; expected 0 to 100 V, or «none».');
+    await rest();
+    const { hints, limits } = await visit();
+    expect([hints.value, limits.thd.value, limits.controlV.value, limits.reverseV.value, limits.pastOffV.value]).toEqual([
+      false,
+      0.05,
+      null,
+      40,
+      0.1,
+    ]);
+  });
+
+  test('the user’s own file is not kept, which is said once by its name', async () => {
+    const first = await visit();
+    await first.openAudio(new File([writeWav([new Float32Array(4800).fill(0.1)], 48000, 'float32').bytes], 'mine.wav'));
+    await rest();
+    const second = await visit();
+    await second.start();
+    expect(second.source.value.kind).toBe('phrase');
+    expect(sentences(second)).toEqual(['“mine.wav” was heard at the last visit; recordings of yours are not kept here.']);
+    await rest();
+    expect(sentences(await visit())).toEqual([]);
   });
 
   test('a value that is dragged is written a few times a second, and the last one when the page goes', async () => {

@@ -1,7 +1,7 @@
 import type { ComponentChildren } from 'preact';
 
 interface NoteProps {
-  readonly kind: 'fault' | 'note' | 'caution';
+  readonly kind: 'fault' | 'note' | 'caution' | 'hints';
   /** One sentence; in bold up to its first semicolon. */
   readonly sentence: string;
   /** One plain sentence more. */
@@ -15,7 +15,7 @@ interface NoteProps {
 export function Note({ kind, sentence, advice, list, children }: NoteProps) {
   const [head, ...rest] = sentence.split('; ');
   return (
-    <section class={`note ${kind}`} role={kind === 'fault' ? 'alert' : 'status'}>
+    <section class={kind === 'note' ? 'note' : `note ${kind}`} role={kind === 'fault' ? 'alert' : 'status'}>
       <p>
         {kind === 'caution' && <Caution />}
         <strong>{head}</strong>
