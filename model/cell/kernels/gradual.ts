@@ -26,9 +26,9 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
   const scale = c[device + 6];
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
-  const lastS = s[n + 5], lineS = lastS - s[n + 32];
+  const lastS = s[n + 5], beforeS = s[n + 32], lineS = 2 * lastS - 3 * beforeS + s[n + 42];
   let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], lineD = lastD - s[n + 33];
+  const lastD = s[n + 6], beforeD = s[n + 33], lineD = 2 * lastD - 3 * beforeD + s[n + 43];
   let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
@@ -82,7 +82,7 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 42] = beforeS; s[n + 43] = beforeD; s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -117,7 +117,8 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[36];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
+  let E0 = s[7], G0 = s[44];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -131,7 +132,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -173,9 +174,9 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[44] = G0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -209,7 +210,8 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[52];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
+  let E0 = s[8], G0 = s[45];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -227,7 +229,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -277,11 +279,11 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[45] = G0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -331,7 +333,8 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
+  let E0 = s[9], G0 = s[46];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -351,7 +354,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -404,12 +407,12 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[46] = G0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -479,7 +482,8 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
+  let E0 = s[10], G0 = s[47];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -501,7 +505,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -557,13 +561,13 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[47] = G0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -657,7 +661,8 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
+  let E0 = s[11], G0 = s[48];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -681,7 +686,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -740,14 +745,14 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[48] = G0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -781,7 +786,8 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
+  let E0 = s[11], G0 = s[48];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -797,7 +803,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -848,12 +854,12 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[48] = G0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -903,7 +909,8 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
+  let E0 = s[12], G0 = s[49];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -923,7 +930,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -977,13 +984,13 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[49] = G0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -1027,7 +1034,8 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let E0 = s[15], G0 = s[52];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1045,7 +1053,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1098,14 +1106,14 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[52] = G0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1168,7 +1176,8 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let E0 = s[16], G0 = s[53];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1190,7 +1199,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1246,7 +1255,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1254,7 +1263,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[53] = G0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1340,7 +1349,8 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
+  let E0 = s[17], G0 = s[54];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1364,7 +1374,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -1423,7 +1433,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1432,7 +1442,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[54] = G0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1470,7 +1480,8 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let E0 = s[15], G0 = s[52];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1488,7 +1499,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1535,14 +1546,14 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[52] = G0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1598,7 +1609,8 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let E0 = s[16], G0 = s[53];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1620,7 +1632,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1674,7 +1686,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1682,7 +1694,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[53] = G0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1707,7 +1719,8 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[36];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
+  let E0 = s[7], G0 = s[44];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1721,7 +1734,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -1770,9 +1783,9 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[44] = G0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1811,7 +1824,8 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[52];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
+  let E0 = s[8], G0 = s[45];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1829,7 +1843,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -1882,11 +1896,11 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[45] = G0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1942,7 +1956,8 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
+  let E0 = s[9], G0 = s[46];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1962,7 +1977,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2018,12 +2033,12 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[46] = G0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -2100,7 +2115,8 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
+  let E0 = s[10], G0 = s[47];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2122,7 +2138,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2181,13 +2197,13 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[47] = G0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -2243,7 +2259,8 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let E0 = s[15], G0 = s[52];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2261,7 +2278,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2319,14 +2336,14 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[52] = G0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2403,7 +2420,8 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let E0 = s[16], G0 = s[53];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2425,7 +2443,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2486,7 +2504,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2494,7 +2512,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[53] = G0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2596,7 +2614,8 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
+  let E0 = s[17], G0 = s[54];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2620,7 +2639,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -2684,7 +2703,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2693,7 +2712,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[54] = G0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2824,7 +2843,8 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
+  let E0 = s[18], G0 = s[55];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2850,7 +2870,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -2917,7 +2937,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2927,7 +2947,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[55] = G0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -3029,7 +3049,8 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
+  let E0 = s[20], G0 = s[57];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3053,7 +3074,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -3118,7 +3139,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3128,7 +3149,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[57] = G0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -3259,7 +3280,8 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
+  let E0 = s[21], G0 = s[58];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3285,7 +3307,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -3353,7 +3375,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3364,7 +3386,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[58] = G0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3384,7 +3406,8 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
   const slope = c[device + 8];
   const enough = c[device + 18];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
+  let E0 = s[slots + 7], G0 = s[slots + 44];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3422,7 +3445,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + perAs * I; vd = b + perAd * I;
@@ -3472,10 +3495,10 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 44] = G0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

@@ -105,7 +105,7 @@ export const JUNCTION_D = 4;
 /** Overdrives of the two ends, V. */
 export const OVERDRIVE_S = 5;
 export const OVERDRIVE_D = 6;
-/** Channel current of the sample before, for the first guess, A. */
+/** Channel current of the sample before the last, for the first guess, A. */
 export const EARLIER_A = 7;
 /** Samples that Newton's method left to the bisection behind it. */
 export const FALLBACKS = 8;
@@ -122,9 +122,12 @@ export const CHARGES_D = 23;
 export const BEFORE_S = 29;
 export const BEFORE_D = 30;
 export const PER_A = 31;
-/** Overdrives of the conducting sample before the last, for the first guess of the next. */
+/** Overdrives of the conducting sample before the last, for the first guess of the next; then of the one before that, and its channel current. */
 export const EARLIER_S = 32;
 export const EARLIER_D = 33;
+export const EARLIEST_S = 42;
+export const EARLIEST_D = 43;
+export const EARLIEST_A = 44;
 /**
  * For a conductor, and for what channel.ts solves: overdrives without currents, V, and the channel current without the junctions', A; then the argument
  * of an exponential and its value.
@@ -139,4 +142,4 @@ export const MISSED_D = 39;
 /** Of channel.ts: by how much the channel's current exceeds the one given, A, and the derivative of that. */
 export const EXCESS_A = 40;
 export const EXCESS_SLOPE = 41;
-export const STATE_SLOTS = 42;
+export const STATE_SLOTS = 45;

@@ -24,9 +24,9 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const enough = 0.1 * c[device + 18], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
-  const lastS = s[n + 5], lineS = lastS - s[n + 32];
+  const lastS = s[n + 5], beforeS = s[n + 32], lineS = 2 * lastS - 3 * beforeS + s[n + 42];
   let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], lineD = lastD - s[n + 33];
+  const lastD = s[n + 6], beforeD = s[n + 33], lineD = 2 * lastD - 3 * beforeD + s[n + 43];
   let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
@@ -68,7 +68,7 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 42] = beforeS; s[n + 43] = beforeD; s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -103,7 +103,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const bent_ = c[27];
   const fall = c[28];
   const rise = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -144,9 +144,9 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -180,7 +180,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -233,11 +233,11 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -287,7 +287,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -345,12 +345,12 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -420,7 +420,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -483,13 +483,13 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -583,7 +583,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -651,14 +651,14 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -692,7 +692,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -744,12 +744,12 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -799,7 +799,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -858,13 +858,13 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  s[7] = I0; s[8] = S0; s[9] = D0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -908,7 +908,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -964,14 +964,14 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1034,7 +1034,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1097,7 +1097,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1105,7 +1105,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1191,7 +1191,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1259,7 +1259,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1268,7 +1268,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1306,7 +1306,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1356,14 +1356,14 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1419,7 +1419,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1480,7 +1480,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1488,7 +1488,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1513,7 +1513,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const bent_ = c[27];
   const fall = c[28];
   const rise = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1561,9 +1561,9 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1602,7 +1602,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1658,11 +1658,11 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1718,7 +1718,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1779,12 +1779,12 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -1861,7 +1861,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1927,13 +1927,13 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -1989,7 +1989,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2050,14 +2050,14 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2134,7 +2134,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2202,7 +2202,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2210,7 +2210,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2312,7 +2312,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2385,7 +2385,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2394,7 +2394,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2525,7 +2525,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2603,7 +2603,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2613,7 +2613,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  s[13] = I0; s[14] = S0; s[15] = D0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -2715,7 +2715,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2789,7 +2789,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2799,7 +2799,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  s[15] = I0; s[16] = S0; s[17] = D0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -2930,7 +2930,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3009,7 +3009,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3020,7 +3020,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  s[16] = I0; s[17] = S0; s[18] = D0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3040,7 +3040,7 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
   const fall = c[device + 10];
   const rise = c[device + 11];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3113,10 +3113,10 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }
