@@ -2,7 +2,7 @@ import type { Law } from '../../../design/types.ts';
 import * as L from '../layout.ts';
 import { conductorName } from './conductor.ts';
 import { typescript } from './language.ts';
-import { deviceConstants, newtonSolution, squareSolution } from './law.ts';
+import { channelNoise, deviceConstants, newtonSolution, squareSolution } from './law.ts';
 
 export function loopedName(law: Law): string {
   return `looped_${law}`;
@@ -13,7 +13,7 @@ export function loopedName(law: Law): string {
  * with the scratch memory that it needs.
  */
 export function loopedKernel(law: Law): string {
-  const { constant, variable, sqrt } = typescript;
+  const { constant, variable } = typescript;
   const device = (index: number) => `c[device + ${index}]`;
   const slot = (index: number) => `s[slots + ${index}]`;
   const places = 'device, aI, bI';
@@ -69,9 +69,7 @@ export function loopedKernel(law: Law): string {
       '}',
       `${variable} a = sums[0], b = sums[1], I = 0, S = 0, D = 0, J = 0;`,
       'if (noisy) {',
-      `  ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
-      `  evaluate(c, t, device, s, slots + ${L.OVERDRIVE_S}, slots + ${L.TERM_S}); evaluate(c, t, device, s, slots + ${L.OVERDRIVE_D}, slots + ${L.TERM_D});`,
-      `  J = w[noise + rows] * ${sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
+      ...channelNoise(law, 'w[noise + rows]', 'device', slot, typescript),
       '  a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;',
       '  for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];',
       '}',

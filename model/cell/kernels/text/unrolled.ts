@@ -3,7 +3,7 @@ import type { Law } from '../../../design/types.ts';
 import * as L from '../layout.ts';
 import { conductorName } from './conductor.ts';
 import type { Language } from './language.ts';
-import { deviceConstants, newtonSolution, squareSolution } from './law.ts';
+import { channelNoise, deviceConstants, newtonSolution, squareSolution } from './law.ts';
 
 /**
  * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of: `g` gate to source, `m` gate to
@@ -97,9 +97,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
     `${variable} b = ${linear(1, 'r')};`,
     `${variable} I = 0, S = 0, D = 0, J = 0;`,
     'if (noisy) {',
-    `  ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
-    `  evaluate(c, t, ${all.device}, s, ${slots + L.OVERDRIVE_S}, ${slots + L.TERM_S}); evaluate(c, t, ${all.device}, s, ${slots + L.OVERDRIVE_D}, ${slots + L.TERM_D});`,
-    `  J = ${noise(all.rows)} * ${language.sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
+    ...channelNoise(law, noise(all.rows), `${all.device}`, slot, language),
     `  a += ${noise(0)} + ${aI} * J;`,
     `  b += ${noise(1)} + ${bI} * J;`,
     '}',
