@@ -83,6 +83,9 @@ export interface Cell {
   readonly target: Float64Array;
   readonly increment: Float64Array;
   readonly bend: Float64Array;
+  /** Places of the coefficients that are on their way, and of those of what the rows remember; each after their number. */
+  readonly moving: Int32Array;
+  readonly movingMemory: Int32Array;
   readonly state: Float64Array;
   readonly stepSec: number;
   readonly noise: NoiseRows;
@@ -174,6 +177,8 @@ export function createCell(numbers: CellNumbers, stepSec: number): Cell {
     target: new Float64Array(layout.all.length),
     increment: new Float64Array(layout.all.length),
     bend: new Float64Array(layout.all.length),
+    moving: new Int32Array(1 + layout.all.length),
+    movingMemory: new Int32Array(1 + layout.all.length),
     state: new Float64Array(slots + L.STATE_SLOTS),
     slots,
     layout,
@@ -217,11 +222,14 @@ export function aimAt(cell: Cell, between: Float64Array, values: Float64Array, s
   middle.set(target);
   if (!solved || !pack(cell, values)) {
     target.set(coefficients);
-    increment.fill(0);
-    bend.fill(0);
+    cell.moving[0] = 0;
+    cell.movingMemory[0] = 0;
     return false;
   }
   if (!near) arrive(cell);
+  const { memory, device, held, own } = cell.layout.all;
+  cell.moving[0] = 0;
+  cell.movingMemory[0] = 0;
   for (let i = 0; i < target.length; i++) {
     const way = target[i] - coefficients[i];
     const sag = coefficients[i] - 2 * middle[i] + target[i];
@@ -229,6 +237,11 @@ export function aimAt(cell: Cell, between: Float64Array, values: Float64Array, s
     const moves = near && Number.isFinite(way) && Number.isFinite(sag);
     bend[i] = moves ? (4 * sag) / (samples * samples) : 0;
     increment[i] = moves ? (way - 2 * sag) / samples + 0.5 * bend[i] : 0;
+    if (increment[i] === 0 && bend[i] === 0) continue;
+    const isMemory = (i >= memory && i < device) || (i >= held && i < own);
+    const list = isMemory ? cell.movingMemory : cell.moving;
+    list[0] += 1;
+    list[list[0]] = i;
   }
   return true;
 }
@@ -269,22 +282,19 @@ function areNear(cell: Cell, values: Float64Array): boolean {
 
 /** One step towards the values aimed at, before a sample: all but what the rows remember. */
 export function approach(cell: Cell): void {
-  const { memory, device, held, own, length } = cell.layout.all;
-  stepOn(cell, 0, memory);
-  stepOn(cell, device, held);
-  stepOn(cell, own, length);
+  stepOn(cell, cell.moving);
   addHeld(cell, cell.coefficients);
 }
 
 /** The same step, after the sample, of what the rows remember: currents of the sample before flowed through the parts as they were then. */
 export function approachMemory(cell: Cell): void {
-  const { memory, device, held, own } = cell.layout.all;
-  stepOn(cell, memory, device);
-  stepOn(cell, held, own);
+  stepOn(cell, cell.movingMemory);
 }
 
-function stepOn({ coefficients, increment, bend }: Cell, from: number, to: number): void {
-  for (let i = from; i < to; i++) {
+function stepOn({ coefficients, increment, bend }: Cell, places: Int32Array): void {
+  const count = places[0];
+  for (let k = 1; k <= count; k++) {
+    const i = places[k];
     coefficients[i] += increment[i];
     increment[i] += bend[i];
   }
@@ -379,6 +389,7 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   state[cell.slots + L.OLD_AUDIO] = audioV;
   state[cell.slots + L.OLD_CONTROL] = controlV;
   state[cell.slots + L.EARLIER_A] = channelA;
+  state[cell.slots + L.EARLIEST_A] = channelA;
   if (cell.numbers.grading > 0) {
     const { device } = cell.layout.all;
     state[cell.slots + L.CHARGES_S + 4] = overdriveV(cell, 'source');

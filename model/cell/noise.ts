@@ -7,7 +7,7 @@
  * Error    the hold falls by sin(x)/x towards half the step rate: 0.04 dB at 20 kHz of 384 kHz
  * Source   Johnson, Nyquist, Phys. Rev. 32 (1928); channel: van der Ziel, Proc. IRE 50 (1962) 1808
  */
-import { type GaussianSource, putGaussian } from '../device/random.ts';
+import { type GaussianSource, putGaussians } from '../device/random.ts';
 import { ZERO_CELSIUS_K } from '../device/temperature.ts';
 import type { Cell } from './cell.ts';
 import { noiseWidth } from './kernels/layout.ts';
@@ -86,14 +86,14 @@ export function fillNoise(cell: Cell, source: GaussianSource, tempC: number, row
   for (let i = from; i < to; i++) {
     const at = i * width;
     const last = at + width - 1;
-    for (let row = at; row < last; row++) rows[row] = 0;
-    for (let column = 0; column < independent; column++) {
-      putGaussian(source, rows, last);
-      const size = root * rows[last];
-      const of = column * (width - 1);
-      for (let row = column; row < width - 1; row++) rows[at + row] += weights[of + row] * size;
+    putGaussians(source, rows, at, at + independent + 1);
+    rows[last] = root * rows[at + independent];
+    for (let column = 0; column < independent; column++) rows[at + column] *= root;
+    // Rows from the last up, each in the place of a number that no earlier row needs.
+    for (let row = width - 2; row >= 0; row--) {
+      let sum = 0;
+      for (let column = 0; column <= row && column < independent; column++) sum += weights[column * (width - 1) + row] * rows[at + column];
+      rows[at + row] = sum;
     }
-    putGaussian(source, rows, last);
-    rows[last] *= root;
   }
 }

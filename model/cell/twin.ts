@@ -22,11 +22,12 @@ const GATE_D = 3;
 const HELD_S = 4;
 const HELD_D = 5;
 const POWER = 6;
+/** Four places, of `deviate` in graded.ts. */
 const DEVIATION = 7;
 /** C/C0 − 1 of both ends. */
-const EXCESS_S = 9;
-const EXCESS_D = 10;
-const WORK = 11;
+const EXCESS_S = 11;
+const EXCESS_D = 12;
+const WORK = 13;
 
 export interface Twin {
   /** Whose coefficients it has, whose slopes, and its own state in the layout of the kernels. */

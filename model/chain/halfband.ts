@@ -65,22 +65,62 @@ export function doubleRate(half: Half, input: Float64Array, output: Float64Array
   const { weights, history } = half;
   const side = weights.length;
   const kept = 2 * side - 1;
-  const paired = side - (side % 2);
   for (let i = 0; i < count; i++) history[kept + i] = input[i];
+  sumSides(weights, history, output, 2, count);
   for (let i = 0; i < count; i++) {
-    let even = 0;
-    let odd = 0;
-    const below = i + side - 1;
-    for (let k = 0; k < paired; k += 2) {
-      even += weights[k] * (history[below - k] + history[below + 1 + k]);
-      odd += weights[k + 1] * (history[below - k - 1] + history[below + 2 + k]);
-    }
-    if (paired < side) even += weights[paired] * (history[below - paired] + history[below + 1 + paired]);
-    const sum = even + odd;
-    output[2 * i] = 2 * sum;
-    output[2 * i + 1] = history[below + 1];
+    output[2 * i] *= 2;
+    output[2 * i + 1] = history[i + side];
   }
   for (let k = 0; k < kept; k++) history[k] = history[count + k];
+}
+
+/**
+ * The taps' sum at each of `count` samples of `history`, to every `stride`th of `output`. Two outputs at a time share what they read; each has the same
+ * sums, in the same order, as the last of an odd number has alone.
+ */
+function sumSides(weights: Float64Array, history: Float64Array, output: Float64Array, stride: number, count: number): void {
+  const side = weights.length;
+  const paired = side - (side % 2);
+  let i = 0;
+  for (; i + 1 < count; i += 2) {
+    const below = i + side - 1;
+    let even = 0;
+    let odd = 0;
+    let nextEven = 0;
+    let nextOdd = 0;
+    let nearBelow = history[below + 1];
+    let nearAbove = nearBelow;
+    for (let k = 0; k < paired; k += 2) {
+      const first = weights[k];
+      const second = weights[k + 1];
+      const below0 = history[below - k];
+      const below1 = history[below - k - 1];
+      const above1 = history[below + 2 + k];
+      const above2 = history[below + 3 + k];
+      even += first * (below0 + nearAbove);
+      odd += second * (below1 + above1);
+      nextEven += first * (nearBelow + above1);
+      nextOdd += second * (below0 + above2);
+      nearBelow = below1;
+      nearAbove = above2;
+    }
+    if (paired < side) {
+      even += weights[paired] * (history[below - paired] + nearAbove);
+      nextEven += weights[paired] * (nearBelow + history[below + 2 + paired]);
+    }
+    output[stride * i] = even + odd;
+    output[stride * (i + 1)] = nextEven + nextOdd;
+  }
+  if (i === count) return;
+  const below = i + side - 1;
+  let even = 0;
+  let odd = 0;
+  for (let k = 0; k < paired; k += 2) {
+    even += weights[k] * (history[below - k] + history[below + 1 + k]);
+    odd += weights[k + 1] * (history[below - k - 1] + history[below + 2 + k]);
+  }
+  if (paired < side) even += weights[paired] * (history[below - paired] + history[below + 1 + paired]);
+  output[stride * i] = even + odd;
 }
 
 /** In silence a recursive filter decays into numbers that processors are slow with, and stays there. */
@@ -105,20 +145,9 @@ export function halveRate(half: Half, input: Float64Array, output: Float64Array,
   const { weights, history, state } = half;
   const side = weights.length;
   const kept = 2 * side - 1;
-  const paired = side - (side % 2);
   for (let i = 0; i < count; i++) history[kept + i] = input[2 * i];
-  for (let i = 0; i < count; i++) {
-    let even = 0;
-    let odd = 0;
-    const below = i + side - 1;
-    for (let k = 0; k < paired; k += 2) {
-      even += weights[k] * (history[below - k] + history[below + 1 + k]);
-      odd += weights[k + 1] * (history[below - k - 1] + history[below + 2 + k]);
-    }
-    if (paired < side) even += weights[paired] * (history[below - paired] + history[below + 1 + paired]);
-    const sum = even + odd;
-    output[i] = sum + 0.5 * (i >= side ? input[2 * (i - side) + 1] : state[i]);
-  }
+  sumSides(weights, history, output, 1, count);
+  for (let i = 0; i < count; i++) output[i] += 0.5 * (i >= side ? input[2 * (i - side) + 1] : state[i]);
   for (let k = 0; k < kept; k++) history[k] = history[count + k];
   keepOdd(state, input, count, side);
 }

@@ -246,7 +246,7 @@ function aim(values: Moving, fraction: number, middle: number, samples: number):
 /** The values after a fraction of the whole way. */
 function place({ from, to, byRatio, power }: Moving, fraction: number, into: Float64Array): void {
   for (let i = 0; i < from.length; i++) {
-    if (byRatio[i]) {
+    if (byRatio[i] && power[i] !== 0) {
       into[i] = fraction * power[i];
       expAt(into, i);
       into[i] *= from[i];
@@ -343,7 +343,6 @@ function advanceAll(voice: Voice, upperCount: number): boolean {
     stepSlice(voice);
     advanceSlice(voice.drive, lanes, numbers, at, at + 1);
     if (voice.residual !== null) advanceResidual(voice.residual, voice, at, at + 1);
-    finish(voice, at, at + 1);
     for (let channel = 0; channel < lanes.length; channel++) approachMemory(lanes[channel].cell);
     ramp.inSlice += 1;
     if (ramp.inSlice === numbers.updateEvery) endSlice(voice);
@@ -352,8 +351,8 @@ function advanceAll(voice: Voice, upperCount: number): boolean {
   if (at < upperCount) {
     advanceSlice(voice.drive, lanes, numbers, at, upperCount);
     if (voice.residual !== null) advanceResidual(voice.residual, voice, at, upperCount);
-    finish(voice, at, upperCount);
   }
+  finish(voice, upperCount);
   return regular;
 }
 
@@ -401,12 +400,12 @@ function endSlice(voice: Voice): void {
 }
 
 /** Notes the cells' peaks. */
-function finish(voice: Voice, from: number, to: number): void {
+function finish(voice: Voice, upperCount: number): void {
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const lane = voice.lanes[channel];
     const { buffers } = lane.oversampler;
     const signal = buffers[buffers.length - 1];
-    for (let i = from; i < to; i++) {
+    for (let i = 0; i < upperCount; i++) {
       const size = Math.abs(signal[i]);
       if (!(size < RUNAWAY_V)) lane.lost = true;
       if (size > lane.outputPeakV) lane.outputPeakV = size;

@@ -66,10 +66,42 @@ function uniform(words: Uint32Array): number {
   return words[0] / 2147483648 - 1;
 }
 
-/** Puts the next number of mean 0 and variance 1 into `slots[at]`. Allocates nothing. */
-export function putGaussian({ words }: GaussianSource, slots: Float64Array, at: number): void {
-  for (;;) {
-    const word = next(words);
+/** Puts the next numbers of mean 0 and variance 1 into `slots`, `from` to `to`. Allocates nothing. */
+export function putGaussians({ words }: GaussianSource, slots: Float64Array, from: number, to: number): void {
+  // `next`, with its words in locals: nearly every number is taken from its first word.
+  let a = words[0] | 0;
+  let b = words[1] | 0;
+  let c = words[2] | 0;
+  let d = words[3] | 0;
+  for (let at = from; at < to; at++) {
+    const t = d ^ (d << 11);
+    d = c;
+    c = b;
+    b = a;
+    a = t ^ (t >>> 8) ^ (a ^ (a >>> 19));
+    const layer = a & (LAYERS - 1);
+    const x = (a >> 8) * WIDTHS[layer];
+    slots[at] = x;
+    if (Math.abs(x) < EDGES[layer + 1]) continue;
+    words[0] = a;
+    words[1] = b;
+    words[2] = c;
+    words[3] = d;
+    putFromWord(words, slots, at);
+    a = words[0] | 0;
+    b = words[1] | 0;
+    c = words[2] | 0;
+    d = words[3] | 0;
+  }
+  words[0] = a;
+  words[1] = b;
+  words[2] = c;
+  words[3] = d;
+}
+
+/** Puts the number that begins with the word last drawn. */
+function putFromWord(words: Uint32Array, slots: Float64Array, at: number): void {
+  for (let word = words[0] | 0; ; word = next(words)) {
     const layer = word & (LAYERS - 1);
     // The upper 24 bits, apart from those that chose the layer.
     const x = (word >> 8) * WIDTHS[layer];

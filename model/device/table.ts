@@ -11,8 +11,21 @@ export const LOWEST_Z = -40;
 export const PIECES_PER_UNIT = 8;
 export const TERMS = 6;
 
-/** Coefficients, TERMS for each piece, from LOWEST_Z up to at least `highestZ`. */
+/** Tables take milliseconds to make and are only read: the last few stay, the latest asked for at the end. */
+const KEPT = new Map<string, Float64Array>();
+const MOST_KEPT = 8;
+
+/** Coefficients, TERMS for each piece, from LOWEST_Z up to at least `highestZ`. To be read only: others may have the same array. */
 export function smoothTable(exponent: number, highestZ: number): Float64Array {
+  const key = `${exponent} ${highestZ}`;
+  const table = KEPT.get(key) ?? makeTable(exponent, highestZ);
+  KEPT.delete(key);
+  KEPT.set(key, table);
+  if (KEPT.size > MOST_KEPT) KEPT.delete(KEPT.keys().next().value ?? key);
+  return table;
+}
+
+function makeTable(exponent: number, highestZ: number): Float64Array {
   const pieces = Math.ceil((highestZ - LOWEST_Z) * PIECES_PER_UNIT);
   const table = new Float64Array(pieces * TERMS);
   const half = 0.5 / PIECES_PER_UNIT;

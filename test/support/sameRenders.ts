@@ -6,7 +6,7 @@ import { renderClip } from '../../model/chain/render.ts';
 import { writeWav } from '../../model/chain/wav.ts';
 import type { Control, Design } from '../../model/design/types.ts';
 import { sinTurns } from '../../model/device/math.ts';
-import { createGaussian, putGaussian } from '../../model/device/random.ts';
+import { createGaussian, putGaussians } from '../../model/device/random.ts';
 import { designOf, REAL_CELL, REAL_DEVICE, variantOf } from './designs.ts';
 
 const LOOP: Control = {
@@ -62,7 +62,7 @@ export function renderNamed(name: string): Uint8Array<ArrayBuffer> {
   const clip = Array.from({ length: channels }, (_, channel) => {
     const gaussian = createGaussian(channel + 1);
     const noise = new Float64Array(length);
-    for (let n = 0; n < length; n++) putGaussian(gaussian, noise, n);
+    putGaussians(gaussian, noise, 0, length);
     return Float32Array.from(noise, (value, n) => (0.3 * value + sinTurns((220 * n) / rateHz)) * (n / length));
   });
   return writeWav(renderClip(design(), 0, clip, rateHz), rateHz, 'pcm24').bytes;

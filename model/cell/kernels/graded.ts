@@ -20,11 +20,19 @@ export function deviation(m: number, barrierV: number, v: number, out: Float64Ar
   const c = new Float64Array(L.DEVICE_WIDTH);
   c[L.GRADING] = m;
   c[L.BARRIER_V] = barrierV;
-  out[at] = v;
-  deviate(c, 0, out, at);
+  const s = Float64Array.of(v, 0, 0, 0);
+  deviate(c, 0, s, 0);
+  out[at] = s[0];
+  out[at + 1] = s[1];
 }
 
-/** The same from the voltage in `s[at]`, with the constants of the device. */
+/** How far the series reaches from where the power was last taken: seven terms leave 1e-16 of it. */
+const REACH = 1 / 64;
+
+/**
+ * The same from the voltage in `s[at]`, with the constants of the device. The two places after the results remember 1/x and x^−m where the power was
+ * last taken whole; near there a series goes on from it.
+ */
 export function deviate(c: Float64Array, device: number, s: Float64Array, at: number): void {
   const m = c[device + L.GRADING];
   const barrierV = c[device + L.BARRIER_V];
@@ -32,13 +40,22 @@ export function deviate(c: Float64Array, device: number, s: Float64Array, at: nu
   const knee = 0.5 * barrierV;
   const below = Math.min(v, knee);
   const x = 1 - below / barrierV;
-  s[at] = x;
-  if (m !== 0.5) {
-    logAt(s, at);
-    s[at] *= -m;
-    expAt(s, at);
+  let ratio = 1;
+  if (m === 0.5) ratio = 1 / Math.sqrt(x);
+  else {
+    const d = x * s[at + 2] - 1;
+    if (d < REACH && d > -REACH) {
+      const far = 1 - d * (m + 4) * (1 / 5) * (1 - d * (m + 5) * (1 / 6) * (1 - d * (m + 6) * (1 / 7)));
+      ratio = s[at + 3] * (1 - d * m * (1 - d * (m + 1) * 0.5 * (1 - d * (m + 2) * (1 / 3) * (1 - d * (m + 3) * 0.25 * far))));
+    } else {
+      s[at + 2] = 1 / x;
+      s[at + 3] = x;
+      logAt(s, at + 3);
+      s[at + 3] *= -m;
+      expAt(s, at + 3);
+      ratio = s[at + 3];
+    }
   }
-  const ratio = m === 0.5 ? 1 / Math.sqrt(x) : s[at];
   s[at] = (barrierV / (1 - m)) * (1 - x * ratio) - below;
   s[at + 1] = ratio - 1;
   if (v <= knee) return;

@@ -16,7 +16,7 @@ import { currents, searchPorts } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
-  const a = s[n + 34], b = s[n + 35], freeA = s[n + 36];
+  const a = s[n + 38], b = s[n + 39], freeA = s[n + 40];
   const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
   const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
   const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
@@ -26,9 +26,9 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
   const scale = c[device + 6];
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
-  const lastS = s[n + 5], lineS = lastS - s[n + 32];
+  const lastS = s[n + 5], beforeS = s[n + 36], lineS = 2 * lastS - 3 * beforeS + s[n + 46];
   let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], lineD = lastD - s[n + 33];
+  const lastD = s[n + 6], beforeD = s[n + 37], lineD = 2 * lastD - 3 * beforeD + s[n + 47];
   let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
@@ -56,23 +56,23 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     if (vs > onD) {
       const x = movedS * rateD;
       if (junctionS > 0 && x < 1e-3 && x > -1e-3) junctionS = junctionS * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 37] = (vs + off) * rateD; expAt(s, n + 37); junctionS = reverse * s[n + 37]; }
+      else { s[n + 41] = (vs + off) * rateD; expAt(s, n + 41); junctionS = reverse * s[n + 41]; }
     } else junctionS = 0;
     if (vd > onD) {
       const x = movedD * rateD;
       if (junctionD > 0 && x < 1e-3 && x > -1e-3) junctionD = junctionD * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 37] = (vd + off) * rateD; expAt(s, n + 37); junctionD = reverse * s[n + 37]; }
+      else { s[n + 41] = (vd + off) * rateD; expAt(s, n + 41); junctionD = reverse * s[n + 41]; }
     } else junctionD = 0;
     if (vs > clampOn) {
       const x = movedS * clampRate;
       if (clamped > 0 && x < 1e-3 && x > -1e-3) clamped = clamped * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 37] = (vs + off) * clampRate; expAt(s, n + 37); clamped = clampA * s[n + 37]; }
+      else { s[n + 41] = (vs + off) * clampRate; expAt(s, n + 41); clamped = clampA * s[n + 41]; }
     } else clamped = 0;
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
-      s[n + 21] = vs; s[n + 27] = vd;
+      s[n + 21] = vs; s[n + 29] = vd;
       addGraded(c, device, 21, s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
-      addGraded(c, device, 22, s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+      addGraded(c, device, 22, s, n + 25, n + 15); D += s[n + 15]; slopeD += s[n + 16];
     }
     const channel = Fs - Fd;
     const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
@@ -82,11 +82,11 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 46] = beforeS; s[n + 47] = beforeD; s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
-        s[n + 21] += s[n + 22] * stepS; s[n + 27] += s[n + 28] * stepD;
+        s[n + 21] += s[n + 22] * stepS; s[n + 29] += s[n + 30] * stepD;
         keepCharges(s, n);
       }
       return;
@@ -117,7 +117,8 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[36];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
+  let E0 = s[7], G0 = s[48];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -131,7 +132,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -160,22 +161,22 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[34] = a; s[35] = b; s[36] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_gradual(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = sign * (a3 - b3);
+      s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[48] = G0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -209,7 +210,8 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[52];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
+  let E0 = s[8], G0 = s[49];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -227,7 +229,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -256,10 +258,10 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[35] = a; s[36] = b; s[37] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_gradual(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -273,15 +275,15 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = sign * (a4 - b4);
+      s[34] = qs; s[35] = qd; s[6] = vs; s[7] = vd; s[36] = sign * (a4 - b4);
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[49] = G0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -331,7 +333,8 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
+  let E0 = s[9], G0 = s[50];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -351,7 +354,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -380,10 +383,10 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[36] = a; s[37] = b; s[38] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -400,16 +403,16 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = sign * (a5 - b5);
+      s[35] = qs; s[36] = qd; s[7] = vs; s[8] = vd; s[37] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[50] = G0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -479,7 +482,8 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
+  let E0 = s[10], G0 = s[51];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -501,7 +505,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -530,10 +534,10 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
+    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[37] = a; s[38] = b; s[39] = I;
+      s[41] = a; s[42] = b; s[43] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -553,17 +557,17 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = sign * (a6 - b6);
+      s[36] = qs; s[37] = qd; s[8] = vs; s[9] = vd; s[38] = sign * (a6 - b6);
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[51] = G0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -657,7 +661,8 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
+  let E0 = s[11], G0 = s[52];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -681,7 +686,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -710,10 +715,10 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 106, 7, 15, s, 4); I = s[40]; s[12] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[42] = a; s[43] = b; s[44] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -736,18 +741,18 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a7 - b7);
+      s[37] = qs; s[38] = qd; s[9] = vs; s[10] = vd; s[39] = sign * (a7 - b7);
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[52] = G0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -781,7 +786,8 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
+  let E0 = s[11], G0 = s[52];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -797,7 +803,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -826,10 +832,10 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 34, 4, 9, s, 4); I = s[40]; s[12] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[42] = a; s[43] = b; s[44] = I;
       conduct_gradual(c, t, 34, 4, 9, 20, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -844,16 +850,16 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a4 - b4);
+      s[37] = qs; s[38] = qd; s[9] = vs; s[10] = vd; s[39] = sign * (a4 - b4);
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[52] = G0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -903,7 +909,8 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
+  let E0 = s[12], G0 = s[53];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -923,7 +930,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -952,10 +959,10 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 54, 5, 11, s, 5); I = s[41]; s[13] += 1; }
+    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[39] = a; s[40] = b; s[41] = I;
+      s[43] = a; s[44] = b; s[45] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 5);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
@@ -973,17 +980,17 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[34] = qs; s[35] = qd; s[10] = vs; s[11] = vd; s[36] = sign * (a5 - b5);
+      s[38] = qs; s[39] = qd; s[10] = vs; s[11] = vd; s[40] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[53] = G0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -1027,7 +1034,8 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let E0 = s[15], G0 = s[56];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1045,7 +1053,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1074,10 +1082,10 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -1094,18 +1102,18 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      s[41] = qs; s[42] = qd; s[13] = vs; s[14] = vd; s[43] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1168,7 +1176,8 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let E0 = s[16], G0 = s[57];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1190,7 +1199,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1219,10 +1228,10 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1242,11 +1251,11 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      s[42] = qs; s[43] = qd; s[14] = vs; s[15] = vd; s[44] = sign * (a6 - b6);
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1254,7 +1263,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1340,7 +1349,8 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
+  let E0 = s[17], G0 = s[58];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1364,7 +1374,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -1393,10 +1403,10 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
+    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[44] = a; s[45] = b; s[46] = I;
+      s[48] = a; s[49] = b; s[50] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -1419,11 +1429,11 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = sign * (a7 - b7);
+      s[43] = qs; s[44] = qd; s[15] = vs; s[16] = vd; s[45] = sign * (a7 - b7);
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1432,7 +1442,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[58] = G0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1470,7 +1480,8 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let E0 = s[15], G0 = s[56];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1488,7 +1499,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1517,10 +1528,10 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -1531,18 +1542,18 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     x1 = sign * (vd + off);
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      s[41] = qs; s[42] = qd; s[13] = vs; s[14] = vd; s[43] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1598,7 +1609,8 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let E0 = s[16], G0 = s[57];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1620,7 +1632,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1649,10 +1661,10 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1670,11 +1682,11 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      s[42] = qs; s[43] = qd; s[14] = vs; s[15] = vd; s[44] = sign * (a6 - b6);
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1682,7 +1694,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1707,7 +1719,8 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[36];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
+  let E0 = s[7], G0 = s[48];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1721,7 +1734,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -1750,10 +1763,10 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[34] = a; s[35] = b; s[36] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_gradual(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
@@ -1767,12 +1780,12 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = y + (y0 * u + y1 * v) + y2 + y3 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = y3;
+      s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[48] = G0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1811,7 +1824,8 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[52];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
+  let E0 = s[8], G0 = s[49];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1829,7 +1843,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -1858,10 +1872,10 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[35] = a; s[36] = b; s[37] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_gradual(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -1878,15 +1892,15 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = y + (y0 * x0 + y1 * u) + (y2 * v + y3) + y4 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = y4;
+      s[34] = qs; s[35] = qd; s[6] = vs; s[7] = vd; s[36] = y4;
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[49] = G0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1942,7 +1956,8 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
+  let E0 = s[9], G0 = s[50];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1962,7 +1977,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1991,10 +2006,10 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[36] = a; s[37] = b; s[38] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -2014,16 +2029,16 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = y5;
+      s[35] = qs; s[36] = qd; s[7] = vs; s[8] = vd; s[37] = y5;
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[50] = G0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -2100,7 +2115,8 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
+  let E0 = s[10], G0 = s[51];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2122,7 +2138,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2151,10 +2167,10 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
+    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[37] = a; s[38] = b; s[39] = I;
+      s[41] = a; s[42] = b; s[43] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -2177,17 +2193,17 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = y6;
+      s[36] = qs; s[37] = qd; s[8] = vs; s[9] = vd; s[38] = y6;
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[51] = G0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -2243,7 +2259,8 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let E0 = s[15], G0 = s[56];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2261,7 +2278,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2290,10 +2307,10 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -2315,18 +2332,18 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = y5;
+      s[41] = qs; s[42] = qd; s[13] = vs; s[14] = vd; s[43] = y5;
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2403,7 +2420,8 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let E0 = s[16], G0 = s[57];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2425,7 +2443,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2454,10 +2472,10 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -2482,11 +2500,11 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = y6;
+      s[42] = qs; s[43] = qd; s[14] = vs; s[15] = vd; s[44] = y6;
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2494,7 +2512,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2596,7 +2614,8 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
+  let E0 = s[17], G0 = s[58];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2620,7 +2639,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -2649,10 +2668,10 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
+    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[44] = a; s[45] = b; s[46] = I;
+      s[48] = a; s[49] = b; s[50] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -2680,11 +2699,11 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = y7;
+      s[43] = qs; s[44] = qd; s[15] = vs; s[16] = vd; s[45] = y7;
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2693,7 +2712,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[58] = G0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2824,7 +2843,8 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
+  let E0 = s[18], G0 = s[59];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2850,7 +2870,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -2879,10 +2899,10 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[45] = a; s[46] = b; searched(c, t, 138, 8, 17, s, 11); I = s[47]; s[19] += 1; }
+    if (settled == 0) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[45] = a; s[46] = b; s[47] = I;
+      s[49] = a; s[50] = b; s[51] = I;
       conduct_gradual(c, t, 138, 8, 17, 72, s, 11);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
@@ -2913,11 +2933,11 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[40] = qs; s[41] = qd; s[16] = vs; s[17] = vd; s[42] = y8;
+      s[44] = qs; s[45] = qd; s[16] = vs; s[17] = vd; s[46] = y8;
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2927,7 +2947,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[59] = G0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -3029,7 +3049,8 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
+  let E0 = s[20], G0 = s[61];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3053,7 +3074,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -3082,10 +3103,10 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 106, 7, 15, s, 13); I = s[49]; s[21] += 1; }
+    if (settled == 0) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[51] = a; s[52] = b; s[53] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 13);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
@@ -3114,11 +3135,11 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[42] = qs; s[43] = qd; s[18] = vs; s[19] = vd; s[44] = y7;
+      s[46] = qs; s[47] = qd; s[18] = vs; s[19] = vd; s[48] = y7;
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3128,7 +3149,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[61] = G0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -3259,7 +3280,8 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
+  let E0 = s[21], G0 = s[62];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3285,7 +3307,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -3314,10 +3336,10 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 138, 8, 17, s, 14); I = s[50]; s[22] += 1; }
+    if (settled == 0) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[48] = a; s[49] = b; s[50] = I;
+      s[52] = a; s[53] = b; s[54] = I;
       conduct_gradual(c, t, 138, 8, 17, 72, s, 14);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
@@ -3349,11 +3371,11 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[43] = qs; s[44] = qd; s[19] = vs; s[20] = vd; s[45] = y8;
+      s[47] = qs; s[48] = qd; s[19] = vs; s[20] = vd; s[49] = y8;
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3364,7 +3386,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[62] = G0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3384,7 +3406,8 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
   const slope = c[device + 8];
   const enough = c[device + 18];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
+  let E0 = s[slots + 7], G0 = s[slots + 48];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3422,7 +3445,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + G0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + perAs * I; vd = b + perAd * I;
@@ -3451,10 +3474,10 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       const moved = (perAd - perAs) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[slots + 34] = a; s[slots + 35] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 36]; s[slots + 8] += 1; }
+    if (settled == 0) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; }
     vs = a + perAs * I; vd = b + perAd * I;
     if (vs > on || vd > on) {
-      s[slots + 34] = a; s[slots + 35] = b; s[slots + 36] = I;
+      s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I;
       conduct_gradual(c, t, device, aI, bI, junction, s, slots);
       I = s[slots + 2]; S = s[slots + 3]; D = s[slots + 4]; vs = s[slots + 5]; vd = s[slots + 6];
     }
@@ -3468,14 +3491,14 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
     }
     output[i] = y;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[slots + 29] = qs; s[slots + 30] = qd; s[slots + 5] = vs; s[slots + 6] = vd; s[slots + 31] = c[last + n + 3];
+      s[slots + 33] = qs; s[slots + 34] = qd; s[slots + 5] = vs; s[slots + 6] = vd; s[slots + 35] = c[last + n + 3];
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 48] = G0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

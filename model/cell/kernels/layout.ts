@@ -105,7 +105,7 @@ export const JUNCTION_D = 4;
 /** Overdrives of the two ends, V. */
 export const OVERDRIVE_S = 5;
 export const OVERDRIVE_D = 6;
-/** Channel current of the sample before, for the first guess, A. */
+/** Channel current of the sample before the last, for the first guess, A. */
 export const EARLIER_A = 7;
 /** Samples that Newton's method left to the bisection behind it. */
 export const FALLBACKS = 8;
@@ -115,28 +115,31 @@ export const TERM_D = 11;
 /** Current and slope of both gate ports. */
 export const PORT_S = 13;
 export const PORT_D = 15;
-/** Of each junction: four past charges above C0·v, over C0, then working memory. */
+/** Of each junction: four past charges above C0·v, over C0, then the four places of `deviate` in graded.ts. */
 export const CHARGES_S = 17;
-export const CHARGES_D = 23;
+export const CHARGES_D = 25;
 /** Overdrives of the sample before, and the output's weight of the channel current, for kinks.ts. */
-export const BEFORE_S = 29;
-export const BEFORE_D = 30;
-export const PER_A = 31;
-/** Overdrives of the conducting sample before the last, for the first guess of the next. */
-export const EARLIER_S = 32;
-export const EARLIER_D = 33;
+export const BEFORE_S = 33;
+export const BEFORE_D = 34;
+export const PER_A = 35;
+/** Overdrives of the conducting sample before the last, for the first guess of the next; then of the one before that, and its channel current. */
+export const EARLIER_S = 36;
+export const EARLIER_D = 37;
+export const EARLIEST_S = 46;
+export const EARLIEST_D = 47;
+export const EARLIEST_A = 48;
 /**
  * For a conductor, and for what channel.ts solves: overdrives without currents, V, and the channel current without the junctions', A; then the argument
  * of an exponential and its value.
  */
-export const GIVEN_A = 34;
-export const GIVEN_B = 35;
-export const GIVEN_FREE = 36;
-export const POWER = 37;
+export const GIVEN_A = 38;
+export const GIVEN_B = 39;
+export const GIVEN_FREE = 40;
+export const POWER = 41;
 /** Working memory of ports.ts: by how much the equations of the two ends are missed, V. */
-export const MISSED_S = 38;
-export const MISSED_D = 39;
+export const MISSED_S = 42;
+export const MISSED_D = 43;
 /** Of channel.ts: by how much the channel's current exceeds the one given, A, and the derivative of that. */
-export const EXCESS_A = 40;
-export const EXCESS_SLOPE = 41;
-export const STATE_SLOTS = 42;
+export const EXCESS_A = 44;
+export const EXCESS_SLOPE = 45;
+export const STATE_SLOTS = 49;

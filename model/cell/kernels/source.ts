@@ -43,7 +43,7 @@ export function shapeKey({ trapezoidal, stiff, output }: Shape): string {
 /** The TypeScript module with all kernels of one law. */
 export function kernelModule(law: Law): string {
   const kernels = SHAPES.map((shape) => kernel(law, shape, typescript)).join('\n\n');
-  const helpers = law === 'square' ? 'bent, evaluate, searched' : 'evaluate, searched';
+  const helpers = law === 'square' ? 'bent, searched' : 'evaluate, searched';
   return `/**
  * Kernels of the ${law} law by number of trapezoidal and of stiff states: written from source.ts by \`npm run kernels\`, where the method is
  * explained. Not to be edited.

@@ -7,7 +7,7 @@
  */
 // biome-ignore-all lint: written by a program
 // biome-ignore-all format: written by a program
-import { bent, evaluate, searched } from './channel.ts';
+import { bent, searched } from './channel.ts';
 import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
 import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
@@ -16,7 +16,7 @@ import { currents, searchPorts } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
-  const a = s[n + 34], b = s[n + 35], freeA = s[n + 36];
+  const a = s[n + 38], b = s[n + 39], freeA = s[n + 40];
   const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
   const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
   const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
@@ -24,9 +24,9 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const enough = 0.1 * c[device + 18], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
-  const lastS = s[n + 5], lineS = lastS - s[n + 32];
+  const lastS = s[n + 5], beforeS = s[n + 36], lineS = 2 * lastS - 3 * beforeS + s[n + 46];
   let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], lineD = lastD - s[n + 33];
+  const lastD = s[n + 6], beforeD = s[n + 37], lineD = 2 * lastD - 3 * beforeD + s[n + 47];
   let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
@@ -42,23 +42,23 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     if (vs > onD) {
       const x = movedS * rateD;
       if (junctionS > 0 && x < 1e-3 && x > -1e-3) junctionS = junctionS * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 37] = (vs + off) * rateD; expAt(s, n + 37); junctionS = reverse * s[n + 37]; }
+      else { s[n + 41] = (vs + off) * rateD; expAt(s, n + 41); junctionS = reverse * s[n + 41]; }
     } else junctionS = 0;
     if (vd > onD) {
       const x = movedD * rateD;
       if (junctionD > 0 && x < 1e-3 && x > -1e-3) junctionD = junctionD * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 37] = (vd + off) * rateD; expAt(s, n + 37); junctionD = reverse * s[n + 37]; }
+      else { s[n + 41] = (vd + off) * rateD; expAt(s, n + 41); junctionD = reverse * s[n + 41]; }
     } else junctionD = 0;
     if (vs > clampOn) {
       const x = movedS * clampRate;
       if (clamped > 0 && x < 1e-3 && x > -1e-3) clamped = clamped * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 37] = (vs + off) * clampRate; expAt(s, n + 37); clamped = clampA * s[n + 37]; }
+      else { s[n + 41] = (vs + off) * clampRate; expAt(s, n + 41); clamped = clampA * s[n + 41]; }
     } else clamped = 0;
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
-      s[n + 21] = vs; s[n + 27] = vd;
+      s[n + 21] = vs; s[n + 29] = vd;
       addGraded(c, device, 21, s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
-      addGraded(c, device, 22, s, n + 23, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+      addGraded(c, device, 22, s, n + 25, n + 15); D += s[n + 15]; slopeD += s[n + 16];
     }
     const channel = Fs - Fd;
     const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
@@ -68,11 +68,11 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 32] = lastS; s[n + 33] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 46] = beforeS; s[n + 47] = beforeD; s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
-        s[n + 21] += s[n + 22] * stepS; s[n + 27] += s[n + 28] * stepD;
+        s[n + 21] += s[n + 22] * stepS; s[n + 29] += s[n + 30] * stepD;
         keepCharges(s, n);
       }
       return;
@@ -103,7 +103,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const bent_ = c[27];
   const fall = c[28];
   const rise = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -111,13 +111,11 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = (b0 * u + b1 * v) + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[5] = vs; s[6] = vd;
-      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
-      J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
+      J = w[i * 4 + 3] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -128,25 +126,25 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[34] = a; s[35] = b; s[36] = I; bent(c, t, 18, 3, 7, s, 0); I = s[36]; }
+        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 18, 3, 7, s, 0); I = s[40]; }
       }
     }
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[34] = a; s[35] = b; s[36] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_square(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
     I += J;
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = sign * (a3 - b3);
+      s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -180,7 +178,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -192,13 +190,11 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[6] = vs; s[7] = vd;
-      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
-      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
+      J = w[i * 5 + 4] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -209,13 +205,13 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[35] = a; s[36] = b; s[37] = I; bent(c, t, 34, 4, 9, s, 1); I = s[37]; }
+        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 34, 4, 9, s, 1); I = s[41]; }
       }
     }
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[35] = a; s[36] = b; s[37] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_square(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -229,15 +225,15 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = sign * (a4 - b4);
+      s[34] = qs; s[35] = qd; s[6] = vs; s[7] = vd; s[36] = sign * (a4 - b4);
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -287,7 +283,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -301,13 +297,11 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[7] = vs; s[8] = vd;
-      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
+      J = w[i * 6 + 5] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -318,13 +312,13 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[36] = a; s[37] = b; s[38] = I; bent(c, t, 54, 5, 11, s, 2); I = s[38]; }
+        if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 54, 5, 11, s, 2); I = s[42]; }
       }
     }
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[36] = a; s[37] = b; s[38] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -341,16 +335,16 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = sign * (a5 - b5);
+      s[35] = qs; s[36] = qd; s[7] = vs; s[8] = vd; s[37] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -420,7 +414,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -436,13 +430,11 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[8] = vs; s[9] = vd;
-      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
+      J = w[i * 7 + 6] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -453,13 +445,13 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[37] = a; s[38] = b; s[39] = I; bent(c, t, 78, 6, 13, s, 3); I = s[39]; }
+        if (lambda != 0) { s[41] = a; s[42] = b; s[43] = I; bent(c, t, 78, 6, 13, s, 3); I = s[43]; }
       }
     }
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[37] = a; s[38] = b; s[39] = I;
+      s[41] = a; s[42] = b; s[43] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -479,17 +471,17 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = sign * (a6 - b6);
+      s[36] = qs; s[37] = qd; s[8] = vs; s[9] = vd; s[38] = sign * (a6 - b6);
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -583,7 +575,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -601,13 +593,11 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[9] = vs; s[10] = vd;
-      evaluate(c, t, 106, s, 9, 13); evaluate(c, t, 106, s, 10, 15);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[14] + s[16]));
+      J = w[i * 8 + 7] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 106, 7, 15, s, 4); I = s[40]; s[12] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -618,13 +608,13 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 106, 7, 15, s, 4); I = s[40]; }
+        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 106, 7, 15, s, 4); I = s[44]; }
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[42] = a; s[43] = b; s[44] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -647,18 +637,18 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a7 - b7);
+      s[37] = qs; s[38] = qd; s[9] = vs; s[10] = vd; s[39] = sign * (a7 - b7);
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -692,7 +682,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -702,13 +692,11 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[9] = vs; s[10] = vd;
-      evaluate(c, t, 34, s, 9, 13); evaluate(c, t, 34, s, 10, 15);
-      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[14] + s[16]));
+      J = w[i * 5 + 4] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 34, 4, 9, s, 4); I = s[40]; s[12] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -719,13 +707,13 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 34, 4, 9, s, 4); I = s[40]; }
+        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 34, 4, 9, s, 4); I = s[44]; }
       }
     }
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[42] = a; s[43] = b; s[44] = I;
       conduct_square(c, t, 34, 4, 9, 20, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -740,16 +728,16 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[33] = qs; s[34] = qd; s[9] = vs; s[10] = vd; s[35] = sign * (a4 - b4);
+      s[37] = qs; s[38] = qd; s[9] = vs; s[10] = vd; s[39] = sign * (a4 - b4);
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -799,7 +787,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -813,13 +801,11 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[10] = vs; s[11] = vd;
-      evaluate(c, t, 54, s, 10, 14); evaluate(c, t, 54, s, 11, 16);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[15] + s[17]));
+      J = w[i * 6 + 5] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 54, 5, 11, s, 5); I = s[41]; s[13] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -830,13 +816,13 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 54, 5, 11, s, 5); I = s[41]; }
+        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 54, 5, 11, s, 5); I = s[45]; }
       }
     }
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[39] = a; s[40] = b; s[41] = I;
+      s[43] = a; s[44] = b; s[45] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 5);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
@@ -854,17 +840,17 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[34] = qs; s[35] = qd; s[10] = vs; s[11] = vd; s[36] = sign * (a5 - b5);
+      s[38] = qs; s[39] = qd; s[10] = vs; s[11] = vd; s[40] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  s[7] = I0; s[8] = S0; s[9] = D0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -908,7 +894,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -920,13 +906,11 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[13] = vs; s[14] = vd;
-      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
+      J = w[i * 6 + 5] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -937,13 +921,13 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 54, 5, 11, s, 8); I = s[44]; }
+        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
       }
     }
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -960,18 +944,18 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      s[41] = qs; s[42] = qd; s[13] = vs; s[14] = vd; s[43] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1034,7 +1018,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1050,13 +1034,11 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[14] = vs; s[15] = vd;
-      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      J = w[i * 7 + 6] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1067,13 +1049,13 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 78, 6, 13, s, 9); I = s[45]; }
+        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
       }
     }
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1093,11 +1075,11 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      s[42] = qs; s[43] = qd; s[14] = vs; s[15] = vd; s[44] = sign * (a6 - b6);
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1105,7 +1087,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1191,7 +1173,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1209,13 +1191,11 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[15] = vs; s[16] = vd;
-      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
+      J = w[i * 8 + 7] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1226,13 +1206,13 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[44] = a; s[45] = b; s[46] = I; bent(c, t, 106, 7, 15, s, 10); I = s[46]; }
+        if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 106, 7, 15, s, 10); I = s[50]; }
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[44] = a; s[45] = b; s[46] = I;
+      s[48] = a; s[49] = b; s[50] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -1255,11 +1235,11 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = sign * (a7 - b7);
+      s[43] = qs; s[44] = qd; s[15] = vs; s[16] = vd; s[45] = sign * (a7 - b7);
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1268,7 +1248,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1306,7 +1286,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1318,13 +1298,11 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[13] = vs; s[14] = vd;
-      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
+      J = w[i * 6 + 5] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1335,13 +1313,13 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 54, 5, 11, s, 8); I = s[44]; }
+        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
       }
     }
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -1352,18 +1330,18 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     x1 = sign * (vd + off);
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = sign * (a5 - b5);
+      s[41] = qs; s[42] = qd; s[13] = vs; s[14] = vd; s[43] = sign * (a5 - b5);
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1419,7 +1397,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1435,13 +1413,11 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[14] = vs; s[15] = vd;
-      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      J = w[i * 7 + 6] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1452,13 +1428,13 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 78, 6, 13, s, 9); I = s[45]; }
+        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
       }
     }
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1476,11 +1452,11 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = sign * (a6 - b6);
+      s[42] = qs; s[43] = qd; s[14] = vs; s[15] = vd; s[44] = sign * (a6 - b6);
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1488,7 +1464,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1513,7 +1489,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const bent_ = c[27];
   const fall = c[28];
   const rise = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1521,13 +1497,11 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = (b0 * u + b1 * v) + b2;
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[5] = vs; s[6] = vd;
-      evaluate(c, t, 18, s, 5, 9); evaluate(c, t, 18, s, 6, 11);
-      J = w[i * 4 + 3] * Math.sqrt(0.5 * (s[10] + s[12]));
+      J = w[i * 4 + 3] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[34] = a; s[35] = b; searched(c, t, 18, 3, 7, s, 0); I = s[36]; s[8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1538,13 +1512,13 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[34] = a; s[35] = b; s[36] = I; bent(c, t, 18, 3, 7, s, 0); I = s[36]; }
+        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 18, 3, 7, s, 0); I = s[40]; }
       }
     }
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[34] = a; s[35] = b; s[36] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_square(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
@@ -1558,12 +1532,12 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + (y0 * u + y1 * v) + y2 + y3 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[29] = qs; s[30] = qd; s[5] = vs; s[6] = vd; s[31] = y3;
+      s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1602,7 +1576,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1614,13 +1588,11 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = (b0 * r0 + b1 * u) + (b2 * v + b3);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[6] = vs; s[7] = vd;
-      evaluate(c, t, 34, s, 6, 10); evaluate(c, t, 34, s, 7, 12);
-      J = w[i * 5 + 4] * Math.sqrt(0.5 * (s[11] + s[13]));
+      J = w[i * 5 + 4] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[35] = a; s[36] = b; searched(c, t, 34, 4, 9, s, 1); I = s[37]; s[9] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1631,13 +1603,13 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[35] = a; s[36] = b; s[37] = I; bent(c, t, 34, 4, 9, s, 1); I = s[37]; }
+        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 34, 4, 9, s, 1); I = s[41]; }
       }
     }
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[35] = a; s[36] = b; s[37] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_square(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -1654,15 +1626,15 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + (y0 * x0 + y1 * u) + (y2 * v + y3) + y4 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[30] = qs; s[31] = qd; s[6] = vs; s[7] = vd; s[32] = y4;
+      s[34] = qs; s[35] = qd; s[6] = vs; s[7] = vd; s[36] = y4;
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1718,7 +1690,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1732,13 +1704,11 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[7] = vs; s[8] = vd;
-      evaluate(c, t, 54, s, 7, 11); evaluate(c, t, 54, s, 8, 13);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[12] + s[14]));
+      J = w[i * 6 + 5] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[36] = a; s[37] = b; searched(c, t, 54, 5, 11, s, 2); I = s[38]; s[10] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1749,13 +1719,13 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[36] = a; s[37] = b; s[38] = I; bent(c, t, 54, 5, 11, s, 2); I = s[38]; }
+        if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 54, 5, 11, s, 2); I = s[42]; }
       }
     }
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[36] = a; s[37] = b; s[38] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -1775,16 +1745,16 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[31] = qs; s[32] = qd; s[7] = vs; s[8] = vd; s[33] = y5;
+      s[35] = qs; s[36] = qd; s[7] = vs; s[8] = vd; s[37] = y5;
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -1861,7 +1831,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1877,13 +1847,11 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[8] = vs; s[9] = vd;
-      evaluate(c, t, 78, s, 8, 12); evaluate(c, t, 78, s, 9, 14);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[13] + s[15]));
+      J = w[i * 7 + 6] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[37] = a; s[38] = b; searched(c, t, 78, 6, 13, s, 3); I = s[39]; s[11] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -1894,13 +1862,13 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[37] = a; s[38] = b; s[39] = I; bent(c, t, 78, 6, 13, s, 3); I = s[39]; }
+        if (lambda != 0) { s[41] = a; s[42] = b; s[43] = I; bent(c, t, 78, 6, 13, s, 3); I = s[43]; }
       }
     }
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[37] = a; s[38] = b; s[39] = I;
+      s[41] = a; s[42] = b; s[43] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -1923,17 +1891,17 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[32] = qs; s[33] = qd; s[8] = vs; s[9] = vd; s[34] = y6;
+      s[36] = qs; s[37] = qd; s[8] = vs; s[9] = vd; s[38] = y6;
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -1989,7 +1957,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2001,13 +1969,11 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * u) + (b3 * v + b4);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[13] = vs; s[14] = vd;
-      evaluate(c, t, 54, s, 13, 17); evaluate(c, t, 54, s, 14, 19);
-      J = w[i * 6 + 5] * Math.sqrt(0.5 * (s[18] + s[20]));
+      J = w[i * 6 + 5] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 54, 5, 11, s, 8); I = s[44]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2018,13 +1984,13 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 54, 5, 11, s, 8); I = s[44]; }
+        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
       }
     }
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -2046,18 +2012,18 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[37] = qs; s[38] = qd; s[13] = vs; s[14] = vd; s[39] = y5;
+      s[41] = qs; s[42] = qd; s[13] = vs; s[14] = vd; s[43] = y5;
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2134,7 +2100,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2150,13 +2116,11 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + b2 * r2) + ((b3 * u + b4 * v) + b5);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[14] = vs; s[15] = vd;
-      evaluate(c, t, 78, s, 14, 18); evaluate(c, t, 78, s, 15, 20);
-      J = w[i * 7 + 6] * Math.sqrt(0.5 * (s[19] + s[21]));
+      J = w[i * 7 + 6] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 78, 6, 13, s, 9); I = s[45]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2167,13 +2131,13 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 78, 6, 13, s, 9); I = s[45]; }
+        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
       }
     }
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -2198,11 +2162,11 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[38] = qs; s[39] = qd; s[14] = vs; s[15] = vd; s[40] = y6;
+      s[42] = qs; s[43] = qd; s[14] = vs; s[15] = vd; s[44] = y6;
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2210,7 +2174,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2312,7 +2276,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2330,13 +2294,11 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[15] = vs; s[16] = vd;
-      evaluate(c, t, 106, s, 15, 19); evaluate(c, t, 106, s, 16, 21);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[20] + s[22]));
+      J = w[i * 8 + 7] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[44] = a; s[45] = b; searched(c, t, 106, 7, 15, s, 10); I = s[46]; s[18] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2347,13 +2309,13 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[44] = a; s[45] = b; s[46] = I; bent(c, t, 106, 7, 15, s, 10); I = s[46]; }
+        if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 106, 7, 15, s, 10); I = s[50]; }
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[44] = a; s[45] = b; s[46] = I;
+      s[48] = a; s[49] = b; s[50] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -2381,11 +2343,11 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[39] = qs; s[40] = qd; s[15] = vs; s[16] = vd; s[41] = y7;
+      s[43] = qs; s[44] = qd; s[15] = vs; s[16] = vd; s[45] = y7;
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2394,7 +2356,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2525,7 +2487,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2545,13 +2507,11 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[16] = vs; s[17] = vd;
-      evaluate(c, t, 138, s, 16, 20); evaluate(c, t, 138, s, 17, 22);
-      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[21] + s[23]));
+      J = w[i * 9 + 8] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[45] = a; s[46] = b; searched(c, t, 138, 8, 17, s, 11); I = s[47]; s[19] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2562,13 +2522,13 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[45] = a; s[46] = b; s[47] = I; bent(c, t, 138, 8, 17, s, 11); I = s[47]; }
+        if (lambda != 0) { s[49] = a; s[50] = b; s[51] = I; bent(c, t, 138, 8, 17, s, 11); I = s[51]; }
       }
     }
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[45] = a; s[46] = b; s[47] = I;
+      s[49] = a; s[50] = b; s[51] = I;
       conduct_square(c, t, 138, 8, 17, 72, s, 11);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
@@ -2599,11 +2559,11 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[40] = qs; s[41] = qd; s[16] = vs; s[17] = vd; s[42] = y8;
+      s[44] = qs; s[45] = qd; s[16] = vs; s[17] = vd; s[46] = y8;
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2613,7 +2573,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  s[13] = I0; s[14] = S0; s[15] = D0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -2715,7 +2675,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2733,13 +2693,11 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * u + b5 * v) + b6);
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[18] = vs; s[19] = vd;
-      evaluate(c, t, 106, s, 18, 22); evaluate(c, t, 106, s, 19, 24);
-      J = w[i * 8 + 7] * Math.sqrt(0.5 * (s[23] + s[25]));
+      J = w[i * 8 + 7] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 106, 7, 15, s, 13); I = s[49]; s[21] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2750,13 +2708,13 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 106, 7, 15, s, 13); I = s[49]; }
+        if (lambda != 0) { s[51] = a; s[52] = b; s[53] = I; bent(c, t, 106, 7, 15, s, 13); I = s[53]; }
       }
     }
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[51] = a; s[52] = b; s[53] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 13);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
@@ -2785,11 +2743,11 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[42] = qs; s[43] = qd; s[18] = vs; s[19] = vd; s[44] = y7;
+      s[46] = qs; s[47] = qd; s[18] = vs; s[19] = vd; s[48] = y7;
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2799,7 +2757,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  s[15] = I0; s[16] = S0; s[17] = D0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -2930,7 +2888,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2950,13 +2908,11 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     let b = ((b0 * r0 + b1 * r1) + (b2 * r2 + b3 * r3)) + ((b4 * r4 + b5 * u) + (b6 * v + b7));
     let I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[19] = vs; s[20] = vd;
-      evaluate(c, t, 138, s, 19, 23); evaluate(c, t, 138, s, 20, 25);
-      J = w[i * 9 + 8] * Math.sqrt(0.5 * (s[24] + s[26]));
+      J = w[i * 9 + 8] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 138, 8, 17, s, 14); I = s[50]; s[22] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -2967,13 +2923,13 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 138, 8, 17, s, 14); I = s[50]; }
+        if (lambda != 0) { s[52] = a; s[53] = b; s[54] = I; bent(c, t, 138, 8, 17, s, 14); I = s[54]; }
       }
     }
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[48] = a; s[49] = b; s[50] = I;
+      s[52] = a; s[53] = b; s[54] = I;
       conduct_square(c, t, 138, 8, 17, 72, s, 14);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
@@ -3005,11 +2961,11 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[43] = qs; s[44] = qd; s[19] = vs; s[20] = vd; s[45] = y8;
+      s[47] = qs; s[48] = qd; s[19] = vs; s[20] = vd; s[49] = y8;
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3020,7 +2976,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  s[16] = I0; s[17] = S0; s[18] = D0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3040,7 +2996,7 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
   const fall = c[device + 10];
   const rise = c[device + 11];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3072,13 +3028,11 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
     }
     let a = sums[0], b = sums[1], I = 0, S = 0, D = 0, J = 0;
     if (noisy) {
-      s[slots + 5] = vs; s[slots + 6] = vd;
-      evaluate(c, t, device, s, slots + 5, slots + 9); evaluate(c, t, device, s, slots + 6, slots + 11);
-      J = w[noise + rows] * Math.sqrt(0.5 * (s[slots + 10] + s[slots + 12]));
+      J = w[noise + rows] * Math.sqrt(scale * (Math.max(vs, 0) + Math.max(vd, 0)));
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[slots + 34] = a; s[slots + 35] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 36]; s[slots + 8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; }
     else if (a > 0 || b > 0) {
       const q = 1 + fall * a + rise * b;
       const w = scale * (a - b) * (a + b);
@@ -3089,13 +3043,13 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[slots + 34] = a; s[slots + 35] = b; s[slots + 36] = I; bent(c, t, device, aI, bI, s, slots + 0); I = s[slots + 36]; }
+        if (lambda != 0) { s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I; bent(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; }
       }
     }
     vs = a + perAs * I;
     vd = b + perAd * I;
     if (vs > on || vd > on) {
-      s[slots + 34] = a; s[slots + 35] = b; s[slots + 36] = I;
+      s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I;
       conduct_square(c, t, device, aI, bI, junction, s, slots);
       I = s[slots + 2]; S = s[slots + 3]; D = s[slots + 4]; vs = s[slots + 5]; vd = s[slots + 6];
     }
@@ -3109,14 +3063,14 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
     }
     output[i] = y;
     if (marking && ((vs > 0) != (qs > 0) || (vd > 0) != (qd > 0))) {
-      s[slots + 29] = qs; s[slots + 30] = qd; s[slots + 5] = vs; s[slots + 6] = vd; s[slots + 31] = c[last + n + 3];
+      s[slots + 33] = qs; s[slots + 34] = qd; s[slots + 5] = vs; s[slots + 6] = vd; s[slots + 35] = c[last + n + 3];
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

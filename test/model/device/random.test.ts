@@ -1,12 +1,12 @@
 import { expect, test } from 'vitest';
-import { createGaussian, putGaussian } from '../../../model/device/random.ts';
+import { createGaussian, putGaussians } from '../../../model/device/random.ts';
 
 const DRAWN = 4_000_000;
 
 function draw(seed: number): Float64Array {
   const numbers = new Float64Array(DRAWN);
   const source = createGaussian(seed);
-  for (let i = 0; i < DRAWN; i++) putGaussian(source, numbers, i);
+  putGaussians(source, numbers, 0, DRAWN);
   return numbers;
 }
 

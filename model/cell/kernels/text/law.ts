@@ -63,6 +63,17 @@ export function squareSolution(
   ];
 }
 
+/** J, the channel's noise current, from the unit noise and the overdrives of the sample before, with 4kT·g at the mean of the slopes. */
+export function channelNoise(law: Law, unit: string, device: string, slot: (index: number) => string, { most, sqrt }: Language): string[] {
+  if (law === 'square') return [`  J = ${unit} * ${sqrt}(scale * (${most}(vs, 0) + ${most}(vd, 0)));`];
+  const at = (index: number) => slot(index).slice(2, -1);
+  return [
+    `  ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    `  evaluate(c, t, ${device}, s, ${at(L.OVERDRIVE_S)}, ${at(L.TERM_S)}); evaluate(c, t, ${device}, s, ${at(L.OVERDRIVE_D)}, ${at(L.TERM_D)});`,
+    `  J = ${unit} * ${sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
+  ];
+}
+
 /** F and F′ at an overdrive, into variables that exist. */
 export function lawText(law: Law, v: string, F: string, f: string, { constant, sqrt }: Language): string[] {
   if (law === 'gradual') {
@@ -101,7 +112,7 @@ export function newtonSolution(
   const text = (v: string, F: string, f: string) =>
     lawText(law, v, F, f, language).map((line) => `  ${line.replaceAll('DEVICE', device).replaceAll('TERM', slot(L.TERM_S).slice(2, -1))}`);
   return [
-    'I = 2 * I0 - E0;',
+    'I = 3 * (I0 - E0) + G0;',
     `${variable} settled = 0;`,
     `for (${language.variable === 'let' ? 'let' : 'int'} step = 0; step < ${NEWTON_STEPS}; step++) {`,
     `  vs = a + ${aI} * I; vd = b + ${bI} * I;`,

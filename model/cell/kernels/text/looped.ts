@@ -2,7 +2,7 @@ import type { Law } from '../../../design/types.ts';
 import * as L from '../layout.ts';
 import { conductorName } from './conductor.ts';
 import { typescript } from './language.ts';
-import { deviceConstants, newtonSolution, squareSolution } from './law.ts';
+import { channelNoise, deviceConstants, newtonSolution, squareSolution } from './law.ts';
 
 export function loopedName(law: Law): string {
   return `looped_${law}`;
@@ -13,11 +13,12 @@ export function loopedName(law: Law): string {
  * with the scratch memory that it needs.
  */
 export function loopedKernel(law: Law): string {
-  const { constant, variable, sqrt } = typescript;
+  const { constant, variable } = typescript;
   const device = (index: number) => `c[device + ${index}]`;
   const slot = (index: number) => `s[slots + ${index}]`;
   const places = 'device, aI, bI';
   const bends = law !== 'smooth';
+  const guesses = law !== 'square';
   const solution =
     law === 'square'
       ? squareSolution('perAs', 'perAd', places, slot, typescript)
@@ -34,7 +35,8 @@ export function loopedKernel(law: Law): string {
     '  const perAs = c[aI], perAd = c[bI];',
     ...deviceConstants(law, device).map(([name, value]) => `  ${constant} ${name} = ${value};`),
     `  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`,
-    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
+    ...(guesses ? [`  ${variable} E0 = ${slot(L.EARLIER_A)}, G0 = ${slot(L.EARLIEST_A)};`] : []),
     '  for (let i = from; i < to; i++) {',
     ...[
       `${constant} u = audio[i], v = control[i], noise = i * (rows + 1);`,
@@ -67,9 +69,7 @@ export function loopedKernel(law: Law): string {
       '}',
       `${variable} a = sums[0], b = sums[1], I = 0, S = 0, D = 0, J = 0;`,
       'if (noisy) {',
-      `  ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
-      `  evaluate(c, t, device, s, slots + ${L.OVERDRIVE_S}, slots + ${L.TERM_S}); evaluate(c, t, device, s, slots + ${L.OVERDRIVE_D}, slots + ${L.TERM_D});`,
-      `  J = w[noise + rows] * ${sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
+      ...channelNoise(law, 'w[noise + rows]', 'device', slot, typescript),
       '  a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;',
       '  for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];',
       '}',
@@ -97,11 +97,11 @@ export function loopedKernel(law: Law): string {
           ]
         : []),
       'u0 = u; v0 = v;',
-      'E0 = I0; I0 = I; S0 = S; D0 = D;',
+      `${guesses ? 'G0 = E0; E0 = I0; ' : ''}I0 = I; S0 = S; D0 = D;`,
     ].map((line) => `    ${line}`),
     '  }',
     `  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`,
-    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
+    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0;${guesses ? ` ${slot(L.EARLIER_A)} = E0; ${slot(L.EARLIEST_A)} = G0;` : ''}`,
     `  if (to > from) { ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; }`,
     '  };',
     '}',

@@ -3,7 +3,7 @@ import type { Law } from '../../../design/types.ts';
 import * as L from '../layout.ts';
 import { conductorName } from './conductor.ts';
 import type { Language } from './language.ts';
-import { deviceConstants, newtonSolution, squareSolution } from './law.ts';
+import { channelNoise, deviceConstants, newtonSolution, squareSolution } from './law.ts';
 
 /**
  * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of: `g` gate to source, `m` gate to
@@ -34,6 +34,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
     letter === 'g' ? 'sign * (vs + off)' : letter === 'm' ? 'sign * (vd + off)' : letter === 'd' ? 'sign * (vs - vd)' : null;
   const stateShortcut = (i: number) => (i < trapezoidal ? null : shortcut(shape.stiff[i - trapezoidal]));
   const hasRow = (r: number) => (r === all.outputRow ? shape.output === 'x' : r < 2 || stateShortcut(r - 2) === null);
+  const guesses = law !== 'square';
   const { constant, variable } = language;
   const rowName = (r: number) => (r === 0 ? 'a' : r === 1 ? 'b' : r === all.outputRow ? 'y' : `n${r - 2}_`);
   const device = (index: number) => `c[${all.device + index}]`;
@@ -72,7 +73,8 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
   });
   if (n > 0) lines.push(`  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`);
   lines.push(
-    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
+    ...(guesses ? [`  ${variable} E0 = ${slot(L.EARLIER_A)}, G0 = ${slot(L.EARLIEST_A)};`] : []),
     loop,
   );
 
@@ -95,9 +97,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
     `${variable} b = ${linear(1, 'r')};`,
     `${variable} I = 0, S = 0, D = 0, J = 0;`,
     'if (noisy) {',
-    `  ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
-    `  evaluate(c, t, ${all.device}, s, ${slots + L.OVERDRIVE_S}, ${slots + L.TERM_S}); evaluate(c, t, ${all.device}, s, ${slots + L.OVERDRIVE_D}, ${slots + L.TERM_D});`,
-    `  J = ${noise(all.rows)} * ${language.sqrt}(0.5 * (${slot(L.TERM_S + 1)} + ${slot(L.TERM_D + 1)}));`,
+    ...channelNoise(law, noise(all.rows), `${all.device}`, slot, language),
     `  a += ${noise(0)} + ${aI} * J;`,
     `  b += ${noise(1)} + ${bI} * J;`,
     '}',
@@ -135,7 +135,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
     );
   }
   if (n > 0) body.push('u0 = u; v0 = v;');
-  body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');
+  body.push(`${guesses ? 'G0 = E0; E0 = I0; ' : ''}I0 = I; S0 = S; D0 = D;`);
   lines.push(...body.map((line) => `    ${line}`), '  }');
 
   lines.push(...states.map((i) => `  s[${i}] = x${i};`));
@@ -144,7 +144,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
   });
   if (n > 0) lines.push(`  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`);
   lines.push(
-    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
+    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0;${guesses ? ` ${slot(L.EARLIER_A)} = E0; ${slot(L.EARLIEST_A)} = G0;` : ''}`,
     `  if (to > from) { ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; }`,
     '}',
   );
