@@ -43,6 +43,7 @@ export interface Chain {
   pending: Voice | null;
   fadeDone: number;
   readonly aligner: Aligner;
+  readonly residualAligner: Aligner;
   readonly inputs: readonly Float64Array[];
   readonly external: Float64Array;
   readonly outputs: readonly Float64Array[];
@@ -74,6 +75,7 @@ export function createChain(numbers: ChainNumbers): Chain {
     pending: null,
     fadeDone: 0,
     aligner: createAligner(numbers.cells.length),
+    residualAligner: createAligner(numbers.cells.length),
     inputs: buffers(),
     external: new Float64Array(LONGEST_BLOCK),
     outputs: buffers(),
@@ -117,7 +119,10 @@ export function moveChain(chain: Chain, numbers: ChainNumbers): void {
 function startFade(chain: Chain, next: Voice): void {
   inherit(next, chain.voice);
   setVoiceResidual(next, chain.residual);
-  setAligner(chain.aligner, latencyOf(next.numbers) - latencyOf(chain.voice.numbers), Math.round(LEAD_SEC * next.numbers.sampleRateHz));
+  const lateness = latencyOf(next.numbers) - latencyOf(chain.voice.numbers);
+  const lead = Math.round(LEAD_SEC * next.numbers.sampleRateHz);
+  setAligner(chain.aligner, lateness, lead);
+  setAligner(chain.residualAligner, lateness, lead);
   chain.next = next;
   chain.fadeDone = -chain.aligner.glide;
   chain.latencySamples = latencyOf(next.numbers);
@@ -143,10 +148,11 @@ export function processChain(
   let start = 0;
   while (start < length) {
     const count = Math.min(LONGEST_BLOCK, length - start, samplesToFadeEnd(chain));
-    takeExternal(chain, external, start, count);
-    processBlock(chain, inputs, outputs, start, count);
+    const heard = takeExternal(chain, external, start, count);
+    if (!processBlock(chain, inputs, outputs, start, count) || !heard) readings.faults += 1;
     for (let channel = 0; channel < residuals.length; channel++) {
-      for (let i = 0; i < count; i++) residuals[channel][start + i] = chain.residual === null ? 0 : chain.residuals[channel][i];
+      const from = chain.residuals[Math.min(channel, chain.residuals.length - 1)];
+      for (let i = 0; i < count; i++) residuals[channel][start + i] = chain.residual === null ? 0 : from[i];
     }
     start += count;
   }
@@ -167,7 +173,13 @@ function fadeSamples(next: Voice): number {
   return Math.round(FADE_SEC * next.numbers.sampleRateHz);
 }
 
-function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: readonly Float32Array[], start: number, count: number): void {
+function processBlock(
+  chain: Chain,
+  inputs: readonly Float32Array[],
+  outputs: readonly Float32Array[],
+  start: number,
+  count: number,
+): boolean {
   const { readings, voice } = chain;
   let sound = takeInputs(chain, inputs, start, count);
   sound = processVoice(voice, chain.inputs, chain.external, chain.outputs, chain.residuals, count) && sound;
@@ -187,14 +199,19 @@ function processBlock(chain: Chain, inputs: readonly Float32Array[], outputs: re
   }
   readings.feedthroughPeakV = Math.max(readings.feedthroughPeakV, voice.quiet.feedthroughPeakV);
   readings.controlV = voice.drive.controls[0][count * voice.numbers.oversampling - 1];
-  if (!sound) readings.faults += 1;
+  return sound;
 }
 
-function takeExternal(chain: Chain, external: Float32Array | null, start: number, count: number): void {
+/** False when a sample of the recorded control was not a usable number: it is taken as 0. */
+function takeExternal(chain: Chain, external: Float32Array | null, start: number, count: number): boolean {
+  let sound = true;
   for (let i = 0; i < count; i++) {
     const sample = external ? external[start + i] : 0;
-    chain.external[i] = Math.abs(sample) <= LARGEST_SAMPLE ? sample : 0;
+    const usable = Math.abs(sample) <= LARGEST_SAMPLE;
+    if (!usable) sound = false;
+    chain.external[i] = usable ? sample : 0;
   }
+  return sound;
 }
 
 /** Copies the block's input to Float64; false when a sample was not a usable number. */
@@ -224,10 +241,12 @@ function crossfade(chain: Chain, next: Voice, count: number): boolean {
   const total = fadeSamples(next);
   const { aligner } = chain;
   const since = chain.fadeDone + aligner.glide;
-  if (aligner.lateness > 0) align(aligner, chain.outputs, since, 0, count);
-  else if (aligner.lateness < 0) align(aligner, chain.fadeOutputs, since, aligner.glide + total, count);
+  alignFade(aligner, chain.outputs, chain.fadeOutputs, since, total, count);
   mixIn(chain, chain.outputs, chain.fadeOutputs, total, count);
-  if (chain.residual !== null) mixIn(chain, chain.residuals, chain.fadeResiduals, total, count);
+  if (chain.residual !== null) {
+    alignFade(chain.residualAligner, chain.residuals, chain.fadeResiduals, since, total, count);
+    mixIn(chain, chain.residuals, chain.fadeResiduals, total, count);
+  }
   chain.fadeDone += count;
   if (chain.fadeDone >= total + tailSamples(aligner)) {
     chain.voice = next;
@@ -237,6 +256,19 @@ function crossfade(chain: Chain, next: Voice, count: number): boolean {
     if (pending) startFade(chain, pending);
   }
   return sound;
+}
+
+/** Delays whichever of the two is earlier. */
+function alignFade(
+  aligner: Aligner,
+  leaving: readonly Float64Array[],
+  coming: readonly Float64Array[],
+  since: number,
+  total: number,
+  count: number,
+): void {
+  if (aligner.lateness > 0) align(aligner, leaving, since, 0, count);
+  else if (aligner.lateness < 0) align(aligner, coming, since, aligner.glide + total, count);
 }
 
 function mixIn({ fadeDone }: Chain, lines: readonly Float64Array[], incoming: readonly Float64Array[], total: number, count: number): void {

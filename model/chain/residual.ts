@@ -23,6 +23,9 @@ interface Copies {
   readonly twin: Twin | null;
   /** Of `noise`. */
   readonly noisy: Cell | null;
+  /** Of the block; and what a residual beyond is that of copies that have run away, V. */
+  audioPeakV: number;
+  boundV: number;
   /** At the upper rate: the audio that went into the cell; the outputs of the copies. */
   readonly audio: Float64Array;
   readonly silentV: Float64Array;
@@ -59,6 +62,8 @@ export function createResidual({ lanes, drive, quiet, numbers }: Voice, part: Re
         silent,
         twin: part === 'distortion' ? createTwin(lane.cell, silent) : null,
         noisy: part === 'noise' ? copyOf(silent) : null,
+        audioPeakV: 0,
+        boundV: 0,
         audio: new Float64Array(upper),
         silentV: new Float64Array(upper),
         noisyV: new Float64Array(part === 'noise' ? upper : 0),
@@ -70,12 +75,32 @@ export function createResidual({ lanes, drive, quiet, numbers }: Voice, part: Re
   };
 }
 
+/** No cell adds more than this many times what goes in and comes out; values that jump may make a copy's memory do so. */
+const MOST_TIMES = 4;
+const LEAST_BOUND_V = 1e-6;
+const BOUND_FALLS = 0.999;
+
+/** Whether a block of a channel's residual, V, is one that its cell can add, whose largest output in the block stands in the lane. */
+export function isBounded({ lanes }: Residual, voice: Voice, channel: number, residualV: Float64Array, count: number): boolean {
+  const copies = lanes[channel];
+  const now = MOST_TIMES * (copies.audioPeakV + voice.lanes[channel].outputPeakV) + LEAST_BOUND_V;
+  copies.boundV = Math.max(copies.boundV * BOUND_FALLS, now);
+  const { boundV } = copies;
+  for (let i = 0; i < count; i++) if (!(Math.abs(residualV[i]) <= boundV)) return false;
+  return true;
+}
+
 /** Keeps the audio before the cells put their output in its place. */
 export function keepAudio({ lanes }: Residual, voice: Voice, upperCount: number): void {
   for (let channel = 0; channel < lanes.length; channel++) {
     const from = topOf(voice.lanes[channel].oversampler);
-    const { audio } = lanes[channel];
-    for (let i = 0; i < upperCount; i++) audio[i] = from[i];
+    const copies = lanes[channel];
+    let peak = 0;
+    for (let i = 0; i < upperCount; i++) {
+      copies.audio[i] = from[i];
+      peak = Math.max(peak, Math.abs(from[i]));
+    }
+    copies.audioPeakV = peak;
   }
 }
 

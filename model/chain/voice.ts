@@ -29,7 +29,16 @@ import { bendTable, lagTable } from './kinkTables.ts';
 import { timesSoftened } from './latency.ts';
 import { GAIN } from './limits.ts';
 import { clearOversampler, createOversampler, lower, type Oversampler, raise } from './oversample.ts';
-import { advanceResidual, createResidual, keepAudio, lowerResidual, type Residual, type ResidualPart, restResidual } from './residual.ts';
+import {
+  advanceResidual,
+  createResidual,
+  isBounded,
+  keepAudio,
+  lowerResidual,
+  type Residual,
+  type ResidualPart,
+  restResidual,
+} from './residual.ts';
 
 /** Lower-rate samples that a voice takes at a time. */
 export const LONGEST_BLOCK = 128;
@@ -356,12 +365,12 @@ function advanceAll(voice: Voice, upperCount: number): boolean {
   return regular;
 }
 
-/** The residual at the lower rate, in samples; silence where a state was lost. */
+/** The residual at the lower rate, in samples; silence where a state was lost, or where the copies run away and are put at rest. */
 function leaveResidual(voice: Voice, residual: Residual, outputs: readonly Float64Array[], lost: boolean, count: number): void {
   let usable = !lost;
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const low = lowerResidual(residual, voice, channel, count);
-    usable = usable && allFinite(low, count);
+    usable = isBounded(residual, voice, channel, low, count) && usable;
     for (let i = 0; i < count; i++) outputs[channel][i] = usable ? low[i] * levelAt(voice.levels, RESIDUAL_PER_V, i) : 0;
   }
   if (!usable) restResidual(residual, quietControlV(voice.numbers.control));
@@ -475,5 +484,7 @@ function advanceQuiet(voice: Voice, count: number): void {
   advanceCell(quiet.cell, quiet.signal, quiet.control, 0, steps);
   quiet.feedthroughPeakV = 0;
   for (let i = 0; i < steps; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
-  if (!(quiet.feedthroughPeakV < RUNAWAY_V)) settle(quiet.cell, 0, quietControlV(numbers.control));
+  if (quiet.feedthroughPeakV < RUNAWAY_V) return;
+  quiet.feedthroughPeakV = 0;
+  settle(quiet.cell, 0, quietControlV(numbers.control));
 }
