@@ -51,14 +51,15 @@ const watch = (page: Page): Promise<Watched> =>
 test('the gate in Fig. 1 is the gate in Table 1 at every frame; readings come at least eight times a second and Fig. 2 follows', async () => {
   const { page, complaints, close } = await openTab(browser, site, { widthPx: 1280, heightPx: 900 });
   await page.getByRole('button', { name: 'Start' }).click();
-  await page.locator('.characteristics .live').first().waitFor();
+  // Table 1 is read at the control's rest before there is sound; the drawing has voltages once there is.
+  await page.locator('.drawing .volts', { hasText: 'VGS' }).waitFor();
   await page.waitForTimeout(2500);
   const { frames, apart, readings, curves } = await watch(page);
   expect(apart).toEqual([]);
   // Aimed at are 10 to 15. A machine that is busy with other things draws fewer frames: then one in four of those that it draws.
   expect(readings).toBeGreaterThan(Math.min(8 * SECONDS, frames / 4));
   expect(readings / SECONDS).toBeLessThan(17);
-  expect(curves / SECONDS).toBeGreaterThan(1);
+  expect(curves).toBeGreaterThan(Math.min(SECONDS, readings / 8));
   expect(complaints).toEqual([]);
   await close();
 });
