@@ -13,14 +13,17 @@ const root = fileURLToPath(new URL('./harness', import.meta.url));
 export async function serveHarness(): Promise<Site> {
   const outDir = mkdtempSync(join(tmpdir(), 'fettle-harness-'));
   const { test: _, plugins, ...rest } = config;
-  const copying = (plugins as Plugin[]).filter(({ name }) => name !== 'fettle-assets' && name !== 'fettle-budget');
+  // What belongs to the page alone stays away: its assets, its budget, its entries and its worker for use without a network.
+  const { rolldownOptions: __, ...buildOptions } = rest.build ?? {};
+  const ofPage = ['fettle-assets', 'fettle-budget', 'fettle-offline'];
+  const copying = (plugins as Plugin[]).filter(({ name }) => !ofPage.includes(name));
   await build({
     ...rest,
     configFile: false,
     root,
     logLevel: 'warn',
     plugins: copying,
-    build: { ...rest.build, outDir, copyPublicDir: true },
+    build: { ...buildOptions, outDir, copyPublicDir: true },
   });
   const server = await preview({
     configFile: false,

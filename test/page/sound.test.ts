@@ -4,6 +4,7 @@ import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, test } fr
 import { renderClip } from '../../model/chain/render.ts';
 import { readWav, writeWav } from '../../model/chain/wav.ts';
 import { readDesign } from '../../model/design/read.ts';
+import { designText } from '../../model/design/text.ts';
 import { launchBrowser, openTab, type Site, serveDist, type Tab } from '../support/browser.ts';
 import { installSoundProbe } from './soundProbe.ts';
 
@@ -121,7 +122,7 @@ describe('sound on the built page, after a real click', () => {
     expect(channels[0].length / sampleRateHz).toBeGreaterThan(1.4);
     // No sample is there twice or missing: the source has no run of equal samples this long, and no silence.
     expect(longestRun(channels[0])).toBeLessThan(32);
-    expect(Math.max(...channels[0].map(Math.abs))).toBeGreaterThan(0.01);
+    expect(channels[0].some((x) => Math.abs(x) > 0.01)).toBe(true);
   });
 
   test('a file plays at its own rate, also where only the browser can decode it', async () => {
@@ -172,7 +173,9 @@ describe('sound on the built page, after a real click', () => {
     const read = readDesign(asset('designs/harbour-tremolo.json').toString());
     if ('faults' in read) throw new Error(read.faults[0].sentence);
     const { channels, sampleRateHz } = readWav(asset('phrases/guitar.wav'));
-    const expected = writeWav(renderClip(read.design, 0, channels, sampleRateHz), sampleRateHz, 'pcm24').bytes;
+    const expected = writeWav(renderClip(read.design, 0, channels, sampleRateHz), sampleRateHz, 'pcm24', {
+      design: designText(read.design, 0),
+    }).bytes;
     expect(Buffer.compare(bytes, expected)).toBe(0);
   });
 
