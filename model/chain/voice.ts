@@ -3,22 +3,9 @@
  * lines in volts and gain, by equal ratios in conductance, capacitance and inductance; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
  * its coefficients go from one exact set to the next as `aimAt` in cell.ts says.
  */
-import {
-  advanceCell,
-  aimAt,
-  approach,
-  approachMemory,
-  arrive,
-  type Cell,
-  createCell,
-  inheritStates,
-  loadValues,
-  settle,
-} from '../cell/cell.ts';
-import type { CellNumbers } from '../cell/cell.ts';
+import { aimAt, approach, approachMemory, arrive, type Cell, createCell, inheritStates, loadValues, settle } from '../cell/cell.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
-import { expAt, log } from '../device/math.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
 import { createAmplifierState, processAmplifier } from './amplifier.ts';
 import { createKinks } from '../cell/kernels/kinks.ts';
@@ -29,6 +16,8 @@ import { bendTable, lagTable } from './kinkTables.ts';
 import { timesSoftened } from './latency.ts';
 import { GAIN } from './limits.ts';
 import { clearOversampler, createOversampler, lower, type Oversampler, raise } from './oversample.ts';
+import { advanceQuiet, createQuiet, type Quiet, RUNAWAY_V } from './quiet.ts';
+import { aim, type Levels, levelAt, type Moving, moving, partsOf, retarget, setOut, standing, step } from './ramp.ts';
 import {
   advanceResidual,
   createResidual,
@@ -43,28 +32,6 @@ import {
 /** Lower-rate samples that a voice takes at a time. */
 export const LONGEST_BLOCK = 128;
 const RAMP_SEC = 0.02;
-/** A voltage that no cell of this kind reaches: beyond it the state is taken to be lost. */
-const RUNAWAY_V = 1e6;
-
-interface Moving {
-  readonly now: Float64Array;
-  readonly from: Float64Array;
-  readonly to: Float64Array;
-  readonly byRatio: readonly boolean[];
-  /** Of those that move by ratio: the logarithm of the whole one. */
-  readonly power: Float64Array;
-  /** The middle and the end of the present slice, and one sample's part of the way. */
-  readonly between: Float64Array;
-  readonly aim: Float64Array;
-  readonly increment: Float64Array;
-}
-
-interface Levels {
-  readonly from: Float64Array;
-  readonly to: Float64Array;
-  done: number;
-  total: number;
-}
 
 /** Places in a voice's levels. */
 export const FULL_SCALE_V = 0;
@@ -74,37 +41,6 @@ const RESIDUAL_PER_V = 2;
 function levelsOf({ fullScaleV, idealAmplifier, amplifier }: ChainNumbers): Float64Array {
   return Float64Array.of(fullScaleV, (idealAmplifier ? amplifier[GAIN] : 1) / fullScaleV, amplifier[GAIN] / fullScaleV);
 }
-
-function standing(values: Float64Array): Levels {
-  return { from: Float64Array.from(values), to: Float64Array.from(values), done: 0, total: 0 };
-}
-
-/** Sets out from where the levels are now, to arrive after `total` samples. */
-function setOut(levels: Levels, to: Float64Array, total: number): void {
-  for (let index = 0; index < to.length; index++) levels.from[index] = levelAt(levels, index, -1);
-  levels.to.set(to);
-  levels.done = 0;
-  levels.total = total;
-}
-
-/** A level at sample `i` of the block. */
-function levelAt({ from, to, done, total }: Levels, index: number, i: number): number {
-  const at = done + i + 1;
-  return at >= total ? to[index] : from[index] + (at / total) * (to[index] - from[index]);
-}
-
-interface Quiet {
-  readonly cell: Cell;
-  readonly signal: Float64Array;
-  readonly control: Float64Array;
-  /** Lower-rate samples until its next step. */
-  waiting: number;
-  /** Of its last steps. */
-  feedthroughPeakV: number;
-}
-
-/** Lower-rate samples in a step of the silent copy. */
-const QUIET_STEP = 4;
 
 /** One audio channel of a voice. */
 export interface Lane {
@@ -143,26 +79,9 @@ export interface Voice {
   readonly amplifierNow: Float64Array;
   /** Slices done and to do of the ramp; upper-rate samples done of the slice. */
   readonly ramp: { done: number; total: number; inSlice: number };
-  /**
-   * A silent copy of the first channel's cell at a quarter of the lower rate: where the gate stands without the audio that rides on it, and what the
-   * control alone leaves at the output.
-   */
   readonly quiet: Quiet;
   /** Null unless it is asked for. */
   residual: Residual | null;
-}
-
-/** `byRatio` marks values that move by equal ratios, the others by equal steps. */
-function moving(values: Float64Array, byRatio: readonly boolean[] = []): Moving {
-  const copy = () => Float64Array.from(values);
-  const zeros = () => new Float64Array(values.length);
-  return { now: values, from: copy(), to: copy(), byRatio, power: zeros(), between: copy(), aim: copy(), increment: zeros() };
-}
-
-/** Parts' values move by equal ratios: over decades, too, a slice is then a small part of the way. */
-function partsOf({ plan, values }: CellNumbers): boolean[] {
-  const isPart = ({ kind }: (typeof plan.elements)[number]) => kind === 'conductance' || kind === 'capacitor' || kind === 'inductor';
-  return Array.from(values, (_, i) => i < plan.elements.length && isPart(plan.elements[i]));
 }
 
 /** A voice at its operating point. Throws when a cell's network is singular. */
@@ -170,8 +89,6 @@ export function createVoice(numbers: ChainNumbers): Voice {
   const { oversampling, filters, sampleRateHz, noiseSeed } = numbers;
   const stepSec = 1 / (sampleRateHz * oversampling);
   const restV = quietControlV(numbers.control);
-  const quietCell = createCell(numbers.cells[0], QUIET_STEP / sampleRateHz);
-  settle(quietCell, 0, restV);
   const isReal = oversampling > 1 && !numbers.idealAmplifier;
   const lanes = numbers.cells.map((values, channel): Lane => {
     const cell = createCell(values, stepSec);
@@ -205,13 +122,7 @@ export function createVoice(numbers: ChainNumbers): Voice {
     amplifier: standing(numbers.amplifier),
     amplifierNow: Float64Array.from(numbers.amplifier),
     ramp: { done: 0, total: 0, inSlice: 0 },
-    quiet: {
-      cell: quietCell,
-      signal: new Float64Array(LONGEST_BLOCK / QUIET_STEP),
-      control: new Float64Array(LONGEST_BLOCK / QUIET_STEP),
-      waiting: QUIET_STEP,
-      feedthroughPeakV: 0,
-    },
+    quiet: createQuiet(numbers, LONGEST_BLOCK),
     residual: null,
   };
 }
@@ -233,40 +144,6 @@ export function moveVoice(voice: Voice, numbers: ChainNumbers): void {
   voice.ramp.done = 0;
   voice.ramp.inSlice = 0;
   voice.ramp.total = Math.max(1, Math.round((RAMP_SEC * numbers.sampleRateHz * numbers.oversampling) / numbers.updateEvery));
-}
-
-function retarget(values: Moving, to: Float64Array): void {
-  values.from.set(values.now);
-  values.to.set(to);
-  for (let i = 0; i < to.length; i++) {
-    values.power[i] = values.byRatio[i] ? log(to[i] / values.from[i]) : 0;
-  }
-}
-
-/** Aims at a fraction of the whole way, `samples` steps from here. */
-function aim(values: Moving, fraction: number, middle: number, samples: number): void {
-  const { now, to, between, aim: end, increment } = values;
-  place(values, middle, between);
-  if (fraction === 1) end.set(to);
-  else place(values, fraction, end);
-  for (let i = 0; i < now.length; i++) increment[i] = (end[i] - now[i]) / samples;
-}
-
-/** The values after a fraction of the whole way. */
-function place({ from, to, byRatio, power }: Moving, fraction: number, into: Float64Array): void {
-  for (let i = 0; i < from.length; i++) {
-    if (byRatio[i] && power[i] !== 0) {
-      into[i] = fraction * power[i];
-      expAt(into, i);
-      into[i] *= from[i];
-    } else {
-      into[i] = from[i] + fraction * (to[i] - from[i]);
-    }
-  }
-}
-
-function step({ now, increment }: Moving): void {
-  for (let i = 0; i < now.length; i++) now[i] += increment[i];
 }
 
 /** Takes over what a voice of another shape remembers and this one has too: the control's memory, and the states of elements of the same name. */
@@ -307,7 +184,7 @@ export function processVoice(
   }
   if (residual !== null) keepAudio(residual, voice, upperCount);
   let sound = advanceAll(voice, upperCount);
-  advanceQuiet(voice, count);
+  advanceQuiet(voice.quiet, numbers, voice.drive.controls[0], count);
   let lost = false;
   for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) lost = true;
   if (lost) {
@@ -467,24 +344,4 @@ function putAtRest(voice: Voice, lane: Lane, upperCount: number): void {
   lane.outputPeakV = 0;
   lane.cell.state.fill(0);
   settle(lane.cell, 0, quietControlV(voice.numbers.control));
-}
-
-function advanceQuiet(voice: Voice, count: number): void {
-  const { quiet, drive, numbers } = voice;
-  let steps = 0;
-  for (let i = 0; i < count; i++) {
-    quiet.waiting -= 1;
-    if (quiet.waiting > 0) continue;
-    quiet.waiting = QUIET_STEP;
-    quiet.signal[steps] = 0;
-    quiet.control[steps] = drive.controls[0][(i + 1) * numbers.oversampling - 1];
-    steps += 1;
-  }
-  if (steps === 0) return;
-  advanceCell(quiet.cell, quiet.signal, quiet.control, 0, steps);
-  quiet.feedthroughPeakV = 0;
-  for (let i = 0; i < steps; i++) quiet.feedthroughPeakV = Math.max(quiet.feedthroughPeakV, Math.abs(quiet.signal[i]));
-  if (quiet.feedthroughPeakV < RUNAWAY_V) return;
-  quiet.feedthroughPeakV = 0;
-  settle(quiet.cell, 0, quietControlV(numbers.control));
 }
