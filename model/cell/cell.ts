@@ -389,7 +389,6 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   state[cell.slots + L.OLD_AUDIO] = audioV;
   state[cell.slots + L.OLD_CONTROL] = controlV;
   state[cell.slots + L.EARLIER_A] = channelA;
-  state[cell.slots + L.EARLIEST_A] = channelA;
   if (cell.numbers.grading > 0) {
     const { device } = cell.layout.all;
     state[cell.slots + L.CHARGES_S + 4] = overdriveV(cell, 'source');

@@ -26,9 +26,9 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
   const scale = c[device + 6];
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
-  const lastS = s[n + 5], beforeS = s[n + 36], lineS = 2 * lastS - 3 * beforeS + s[n + 46];
+  const lastS = s[n + 5], lineS = lastS - s[n + 36];
   let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], beforeD = s[n + 37], lineD = 2 * lastD - 3 * beforeD + s[n + 47];
+  const lastD = s[n + 6], lineD = lastD - s[n + 37];
   let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
@@ -82,7 +82,7 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 46] = beforeS; s[n + 47] = beforeD; s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -117,8 +117,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[36];
-  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
-  let E0 = s[7], G0 = s[48];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -132,7 +131,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -174,9 +173,9 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[48] = G0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -210,8 +209,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[52];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
-  let E0 = s[8], G0 = s[49];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -229,7 +227,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -279,11 +277,11 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[49] = G0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -333,8 +331,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
-  let E0 = s[9], G0 = s[50];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -354,7 +351,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -407,12 +404,12 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[50] = G0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -482,8 +479,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
-  let E0 = s[10], G0 = s[51];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -505,7 +501,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -561,13 +557,13 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[51] = G0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -661,8 +657,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
-  let E0 = s[11], G0 = s[52];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -686,7 +681,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -745,14 +740,14 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[52] = G0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -786,8 +781,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
-  let E0 = s[11], G0 = s[52];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -803,7 +797,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -854,12 +848,12 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[52] = G0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -909,8 +903,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
-  let E0 = s[12], G0 = s[53];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -930,7 +923,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -984,13 +977,13 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[53] = G0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -1034,8 +1027,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
-  let E0 = s[15], G0 = s[56];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1053,7 +1045,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1106,14 +1098,14 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1176,8 +1168,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
-  let E0 = s[16], G0 = s[57];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1199,7 +1190,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1255,7 +1246,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1263,7 +1254,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1349,8 +1340,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
-  let E0 = s[17], G0 = s[58];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1374,7 +1364,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -1433,7 +1423,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1442,7 +1432,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[58] = G0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1480,8 +1470,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
-  let E0 = s[15], G0 = s[56];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1499,7 +1488,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1546,14 +1535,14 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1609,8 +1598,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
-  let E0 = s[16], G0 = s[57];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1632,7 +1620,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1686,7 +1674,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1694,7 +1682,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1719,8 +1707,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[36];
-  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
-  let E0 = s[7], G0 = s[48];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1734,7 +1721,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -1783,9 +1770,9 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[48] = G0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1824,8 +1811,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[52];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
-  let E0 = s[8], G0 = s[49];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1843,7 +1829,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -1896,11 +1882,11 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[49] = G0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1956,8 +1942,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
-  let E0 = s[9], G0 = s[50];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1977,7 +1962,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2033,12 +2018,12 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[50] = G0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -2115,8 +2100,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
-  let E0 = s[10], G0 = s[51];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2138,7 +2122,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2197,13 +2181,13 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[51] = G0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -2259,8 +2243,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
-  let E0 = s[15], G0 = s[56];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2278,7 +2261,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2336,14 +2319,14 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2420,8 +2403,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
-  let E0 = s[16], G0 = s[57];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2443,7 +2425,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2504,7 +2486,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2512,7 +2494,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2614,8 +2596,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
-  let E0 = s[17], G0 = s[58];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2639,7 +2620,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -2703,7 +2684,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2712,7 +2693,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[58] = G0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2843,8 +2824,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
-  let E0 = s[18], G0 = s[59];
+  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2870,7 +2850,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -2937,7 +2917,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2947,7 +2927,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[59] = G0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -3049,8 +3029,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
-  let E0 = s[20], G0 = s[61];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3074,7 +3053,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -3139,7 +3118,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3149,7 +3128,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[61] = G0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -3280,8 +3259,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
-  let E0 = s[21], G0 = s[62];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3307,7 +3285,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -3375,7 +3353,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3386,7 +3364,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[62] = G0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3406,8 +3384,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
   const slope = c[device + 8];
   const enough = c[device + 18];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
-  let E0 = s[slots + 7], G0 = s[slots + 48];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3445,7 +3422,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + perAs * I; vd = b + perAd * I;
@@ -3495,10 +3472,10 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 48] = G0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

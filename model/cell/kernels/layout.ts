@@ -122,12 +122,9 @@ export const CHARGES_D = 25;
 export const BEFORE_S = 33;
 export const BEFORE_D = 34;
 export const PER_A = 35;
-/** Overdrives of the conducting sample before the last, for the first guess of the next; then of the one before that, and its channel current. */
+/** Overdrives of the conducting sample before the last, for the first guess of the next. */
 export const EARLIER_S = 36;
 export const EARLIER_D = 37;
-export const EARLIEST_S = 46;
-export const EARLIEST_D = 47;
-export const EARLIEST_A = 48;
 /**
  * For a conductor, and for what channel.ts solves: overdrives without currents, V, and the channel current without the junctions', A; then the argument
  * of an exponential and its value.
@@ -142,4 +139,4 @@ export const MISSED_D = 43;
 /** Of channel.ts: by how much the channel's current exceeds the one given, A, and the derivative of that. */
 export const EXCESS_A = 44;
 export const EXCESS_SLOPE = 45;
-export const STATE_SLOTS = 49;
+export const STATE_SLOTS = 46;

@@ -26,9 +26,9 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
   const pieces = c[device + 12];
-  const lastS = s[n + 5], beforeS = s[n + 36], lineS = 2 * lastS - 3 * beforeS + s[n + 46];
+  const lastS = s[n + 5], lineS = lastS - s[n + 36];
   let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], beforeD = s[n + 37], lineD = 2 * lastD - 3 * beforeD + s[n + 47];
+  const lastD = s[n + 6], lineD = lastD - s[n + 37];
   let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
@@ -84,7 +84,7 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 46] = beforeS; s[n + 47] = beforeD; s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -120,8 +120,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const slope = c[26];
   const enough = c[36];
   const pieces = c[30];
-  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
-  let E0 = s[7], G0 = s[48];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = (a0 * u + a1 * v) + a2;
@@ -134,7 +133,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -174,9 +173,9 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     I += J;
     output[i] = sign * (vs - vd);
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[48] = G0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -211,8 +210,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const pieces = c[46];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
-  let E0 = s[8], G0 = s[49];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
@@ -229,7 +227,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -277,11 +275,11 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[49] = G0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -332,8 +330,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
-  let E0 = s[9], G0 = s[50];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
@@ -352,7 +349,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -403,12 +400,12 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[50] = G0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -479,8 +476,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
-  let E0 = s[10], G0 = s[51];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
@@ -501,7 +497,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -555,13 +551,13 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[51] = G0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -656,8 +652,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
-  let E0 = s[11], G0 = s[52];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
@@ -680,7 +675,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -737,14 +732,14 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[52] = G0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -779,8 +774,7 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
-  let E0 = s[11], G0 = s[52];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -795,7 +789,7 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -844,12 +838,12 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[52] = G0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -900,8 +894,7 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
-  let E0 = s[12], G0 = s[53];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -920,7 +913,7 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -972,13 +965,13 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[53] = G0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -1023,8 +1016,7 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
-  let E0 = s[15], G0 = s[56];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -1041,7 +1033,7 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1092,14 +1084,14 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1163,8 +1155,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
-  let E0 = s[16], G0 = s[57];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -1185,7 +1176,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1239,7 +1230,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1247,7 +1238,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1334,8 +1325,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
-  let E0 = s[17], G0 = s[58];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
@@ -1358,7 +1348,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -1415,7 +1405,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1424,7 +1414,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[58] = G0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1463,8 +1453,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
-  let E0 = s[15], G0 = s[56];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -1481,7 +1470,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1526,14 +1515,14 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     x1 = sign * (vd + off);
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1590,8 +1579,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
-  let E0 = s[16], G0 = s[57];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -1612,7 +1600,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1664,7 +1652,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1672,7 +1660,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1698,8 +1686,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const slope = c[26];
   const enough = c[36];
   const pieces = c[30];
-  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
-  let E0 = s[7], G0 = s[48];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = (a0 * u + a1 * v) + a2;
@@ -1712,7 +1699,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -1759,9 +1746,9 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       y += c[16] * S + c[17] * D;
     }
     output[i] = y + (y0 * u + y1 * v) + y2 + y3 * I;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[48] = G0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1801,8 +1788,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const pieces = c[46];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
-  let E0 = s[8], G0 = s[49];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
@@ -1819,7 +1805,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -1870,11 +1856,11 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + (y0 * x0 + y1 * u) + (y2 * v + y3) + y4 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[49] = G0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1931,8 +1917,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
-  let E0 = s[9], G0 = s[50];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
@@ -1951,7 +1936,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2005,12 +1990,12 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[50] = G0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -2088,8 +2073,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
-  let E0 = s[10], G0 = s[51];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
@@ -2110,7 +2094,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2167,13 +2151,13 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[51] = G0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -2230,8 +2214,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
-  let E0 = s[15], G0 = s[56];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -2248,7 +2231,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2304,14 +2287,14 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[56] = G0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2389,8 +2372,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
-  let E0 = s[16], G0 = s[57];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -2411,7 +2393,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2470,7 +2452,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2478,7 +2460,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[57] = G0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2581,8 +2563,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
-  let E0 = s[17], G0 = s[58];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
@@ -2605,7 +2586,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -2667,7 +2648,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2676,7 +2657,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[58] = G0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2808,8 +2789,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
-  let E0 = s[18], G0 = s[59];
+  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
@@ -2834,7 +2814,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -2899,7 +2879,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2909,7 +2889,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[59] = G0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -3012,8 +2992,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
-  let E0 = s[20], G0 = s[61];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -3036,7 +3015,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -3099,7 +3078,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3109,7 +3088,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[61] = G0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -3241,8 +3220,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
-  let E0 = s[21], G0 = s[62];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
@@ -3267,7 +3245,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -3333,7 +3311,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3344,7 +3322,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[62] = G0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3365,8 +3343,7 @@ function looped_smooth(trapezoidal: number, stiff: number): Kernel {
   const enough = c[device + 18];
   const pieces = c[device + 12];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
-  let E0 = s[slots + 7], G0 = s[slots + 48];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     for (let k = 0; k < trapezoidal; k++) weighed[k] = s[k];
@@ -3403,7 +3380,7 @@ function looped_smooth(trapezoidal: number, stiff: number): Kernel {
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    I = 3 * (I0 - E0) + G0;
+    I = 2 * I0 - E0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + perAs * I; vd = b + perAd * I;
@@ -3451,10 +3428,10 @@ function looped_smooth(trapezoidal: number, stiff: number): Kernel {
     }
     output[i] = y;
     u0 = u; v0 = v;
-    G0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 48] = G0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

@@ -24,9 +24,9 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const enough = 0.1 * c[device + 18], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
-  const lastS = s[n + 5], beforeS = s[n + 36], lineS = 2 * lastS - 3 * beforeS + s[n + 46];
+  const lastS = s[n + 5], lineS = lastS - s[n + 36];
   let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], beforeD = s[n + 37], lineD = 2 * lastD - 3 * beforeD + s[n + 47];
+  const lastD = s[n + 6], lineD = lastD - s[n + 37];
   let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
@@ -68,7 +68,7 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 46] = beforeS; s[n + 47] = beforeD; s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -103,7 +103,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const bent_ = c[27];
   const fall = c[28];
   const rise = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -142,9 +142,9 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -178,7 +178,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -229,11 +229,11 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -283,7 +283,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -339,12 +339,12 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -414,7 +414,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -475,13 +475,13 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -575,7 +575,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -641,14 +641,14 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -682,7 +682,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -732,12 +732,12 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -787,7 +787,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -844,13 +844,13 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -894,7 +894,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -948,14 +948,14 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1018,7 +1018,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1079,7 +1079,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1087,7 +1087,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1173,7 +1173,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1239,7 +1239,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1248,7 +1248,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1286,7 +1286,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1334,14 +1334,14 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1397,7 +1397,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1456,7 +1456,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1464,7 +1464,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1489,7 +1489,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const bent_ = c[27];
   const fall = c[28];
   const rise = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1535,9 +1535,9 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1576,7 +1576,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1630,11 +1630,11 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1690,7 +1690,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1749,12 +1749,12 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -1831,7 +1831,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1895,13 +1895,13 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -1957,7 +1957,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2016,14 +2016,14 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2100,7 +2100,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2166,7 +2166,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2174,7 +2174,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2276,7 +2276,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2347,7 +2347,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2356,7 +2356,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2487,7 +2487,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2563,7 +2563,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2573,7 +2573,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -2675,7 +2675,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2747,7 +2747,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2757,7 +2757,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -2888,7 +2888,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2965,7 +2965,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2976,7 +2976,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -2996,7 +2996,7 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
   const fall = c[device + 10];
   const rise = c[device + 11];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3067,10 +3067,10 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    I0 = I; S0 = S; D0 = D;
+    E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

@@ -18,9 +18,9 @@ export function conductor(law: Law, language: Language): string {
     (law === 'square' ? [`if (${v} > 0) { ${F} = scale * ${v} * ${v}; ${f} = 2 * scale * ${v}; }`] : lawText(law, v, F, f, language)).map(
       (line) => `    ${line.replaceAll('DEVICE', 'device').replaceAll('TERM', `n + ${L.TERM_S}`)}`,
     );
-  /** Where an end last conducted, a step further along its parabola unless that is half of nVT; or just into conduction; with graded capacitances always along its parabola. */
-  const start = (end: 'S' | 'D', free: string, over: number, earlier: number, earliest: number) => [
-    `  ${constant} last${end} = ${slot(over)}, before${end} = ${slot(earlier)}, line${end} = 2 * last${end} - 3 * before${end} + ${slot(earliest)};`,
+  /** Where an end last conducted, a step further along its line unless that is half of nVT; or just into conduction; with graded capacitances always along its line. */
+  const start = (end: 'S' | 'D', free: string, over: number, earlier: number) => [
+    `  ${constant} last${end} = ${slot(over)}, line${end} = last${end} - ${slot(earlier)};`,
     `  ${variable} v${end === 'S' ? 's' : 'd'} = grading != 0 && last${end} < on${end} ? last${end} + line${end} : ${least}(${free}, last${end} > on${end} ? last${end} + (line${end} * rate${end} < 0.5 && line${end} * rate${end} > -0.5 ? line${end} : 0) : knee${end});`,
   ];
   const cut = (end: 'S' | 'D', v: string) =>
@@ -36,8 +36,8 @@ export function conductor(law: Law, language: Language): string {
     ...deviceConstants(law, device)
       .filter(([name]) => !['on', 'bent_', 'fall', 'rise', 'enough'].includes(name))
       .map(([name, value]) => `  ${constant} ${name} = ${value};`),
-    ...start('S', 'a + perAs * freeA', L.OVERDRIVE_S, L.EARLIER_S, L.EARLIEST_S),
-    ...start('D', 'b + perAd * freeA', L.OVERDRIVE_D, L.EARLIER_D, L.EARLIEST_D),
+    ...start('S', 'a + perAs * freeA', L.OVERDRIVE_S, L.EARLIER_S),
+    ...start('D', 'b + perAd * freeA', L.OVERDRIVE_D, L.EARLIER_D),
     `  ${variable} junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;`,
     `  for (${counter} step = 0; step < ${NEWTON_STEPS}; step++) {`,
     `    ${variable} Fs = 0, fs = 0, Fd = 0, fd = 0;`,
@@ -66,7 +66,7 @@ export function conductor(law: Law, language: Language): string {
     cut('D', 'vd'),
     '    vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;',
     `    if (${absolute}(stepS) < enough && ${absolute}(stepD) < enough) {`,
-    `      ${slot(L.EARLIEST_S)} = beforeS; ${slot(L.EARLIEST_D)} = beforeD; ${slot(L.EARLIER_S)} = lastS; ${slot(L.EARLIER_D)} = lastD; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    `      ${slot(L.EARLIER_S)} = lastS; ${slot(L.EARLIER_D)} = lastD; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
     `      ${slot(L.CHANNEL_A)} = channel + fs * stepS - fd * stepD;`,
     `      ${slot(L.JUNCTION_S)} = S + slopeS * stepS; ${slot(L.JUNCTION_D)} = D + slopeD * stepD;`,
     '      if (grading != 0) {',

@@ -112,7 +112,7 @@ export function newtonSolution(
   const text = (v: string, F: string, f: string) =>
     lawText(law, v, F, f, language).map((line) => `  ${line.replaceAll('DEVICE', device).replaceAll('TERM', slot(L.TERM_S).slice(2, -1))}`);
   return [
-    'I = 3 * (I0 - E0) + G0;',
+    'I = 2 * I0 - E0;',
     `${variable} settled = 0;`,
     `for (${language.variable === 'let' ? 'let' : 'int'} step = 0; step < ${NEWTON_STEPS}; step++) {`,
     `  vs = a + ${aI} * I; vd = b + ${bI} * I;`,

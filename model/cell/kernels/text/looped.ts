@@ -18,7 +18,6 @@ export function loopedKernel(law: Law): string {
   const slot = (index: number) => `s[slots + ${index}]`;
   const places = 'device, aI, bI';
   const bends = law !== 'smooth';
-  const guesses = law !== 'square';
   const solution =
     law === 'square'
       ? squareSolution('perAs', 'perAd', places, slot, typescript)
@@ -35,8 +34,7 @@ export function loopedKernel(law: Law): string {
     '  const perAs = c[aI], perAd = c[bI];',
     ...deviceConstants(law, device).map(([name, value]) => `  ${constant} ${name} = ${value};`),
     `  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`,
-    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
-    ...(guesses ? [`  ${variable} E0 = ${slot(L.EARLIER_A)}, G0 = ${slot(L.EARLIEST_A)};`] : []),
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
     '  for (let i = from; i < to; i++) {',
     ...[
       `${constant} u = audio[i], v = control[i], noise = i * (rows + 1);`,
@@ -97,11 +95,11 @@ export function loopedKernel(law: Law): string {
           ]
         : []),
       'u0 = u; v0 = v;',
-      `${guesses ? 'G0 = E0; E0 = I0; ' : ''}I0 = I; S0 = S; D0 = D;`,
+      'E0 = I0; I0 = I; S0 = S; D0 = D;',
     ].map((line) => `    ${line}`),
     '  }',
     `  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`,
-    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0;${guesses ? ` ${slot(L.EARLIER_A)} = E0; ${slot(L.EARLIEST_A)} = G0;` : ''}`,
+    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
     `  if (to > from) { ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; }`,
     '  };',
     '}',

@@ -34,7 +34,6 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
     letter === 'g' ? 'sign * (vs + off)' : letter === 'm' ? 'sign * (vd + off)' : letter === 'd' ? 'sign * (vs - vd)' : null;
   const stateShortcut = (i: number) => (i < trapezoidal ? null : shortcut(shape.stiff[i - trapezoidal]));
   const hasRow = (r: number) => (r === all.outputRow ? shape.output === 'x' : r < 2 || stateShortcut(r - 2) === null);
-  const guesses = law !== 'square';
   const { constant, variable } = language;
   const rowName = (r: number) => (r === 0 ? 'a' : r === 1 ? 'b' : r === all.outputRow ? 'y' : `n${r - 2}_`);
   const device = (index: number) => `c[${all.device + index}]`;
@@ -73,8 +72,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
   });
   if (n > 0) lines.push(`  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`);
   lines.push(
-    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
-    ...(guesses ? [`  ${variable} E0 = ${slot(L.EARLIER_A)}, G0 = ${slot(L.EARLIEST_A)};`] : []),
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
     loop,
   );
 
@@ -135,7 +133,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
     );
   }
   if (n > 0) body.push('u0 = u; v0 = v;');
-  body.push(`${guesses ? 'G0 = E0; E0 = I0; ' : ''}I0 = I; S0 = S; D0 = D;`);
+  body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');
   lines.push(...body.map((line) => `    ${line}`), '  }');
 
   lines.push(...states.map((i) => `  s[${i}] = x${i};`));
@@ -144,7 +142,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
   });
   if (n > 0) lines.push(`  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`);
   lines.push(
-    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0;${guesses ? ` ${slot(L.EARLIER_A)} = E0; ${slot(L.EARLIEST_A)} = G0;` : ''}`,
+    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
     `  if (to > from) { ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; }`,
     '}',
   );
