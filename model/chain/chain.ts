@@ -148,7 +148,7 @@ export function processChain(
   let start = 0;
   while (start < length) {
     const count = Math.min(LONGEST_BLOCK, length - start, samplesToFadeEnd(chain));
-    const heard = takeExternal(chain, external, start, count);
+    const heard = takeExternal(chain, external, start, count) || chain.voice.external === null;
     if (!processBlock(chain, inputs, outputs, start, count) || !heard) readings.faults += 1;
     for (let channel = 0; channel < residuals.length; channel++) {
       const from = chain.residuals[Math.min(channel, chain.residuals.length - 1)];
