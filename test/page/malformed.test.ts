@@ -8,9 +8,9 @@ import { serveHarness } from './serveHarness.ts';
 import { installSoundProbe } from './soundProbe.ts';
 
 /** All of them: FETTLE_MALFORMED=2000. */
-const FILES = Number(process.env.FETTLE_MALFORMED ?? 300);
+const FILES = Number(process.env.FETTLE_MALFORMED ?? 100);
 const AT_ONCE = 100;
-const THROUGH_THE_DOOR = 12;
+const THROUGH_THE_DOOR = 6;
 const design = readFileSync(new URL('../../assets/designs/harbour-tremolo.json', import.meta.url), 'utf8');
 
 let browser: Browser;
