@@ -5,7 +5,7 @@
  * Law      channel i = S·a − D·b, junctions and graded capacitances their slopes times a or b; a, b the audio's part of the overdrives, S, D the
  *          channel's slopes at the silent copy's overdrives
  * Scheme   the cell's own coefficients, in loops; two equations in a and b, solved in place
- * Error    of rounding, against a cell that is linear: test/model/chain/residual.test.ts
+ * Error    of rounding, against a cell that is linear and whose values stand: test/model/chain/residual.test.ts
  */
 import { expAt } from '../device/math.ts';
 import { type Cell, copyOf } from './cell.ts';
