@@ -184,6 +184,7 @@ test('the loop is drawn, seeks are pressed, and nothing of it clicks', async () 
 
 test('the place and the loop are set by key, and by typing', async () => {
   const { page, complaints, close } = await openTab(browser, site);
+  await expect.poll(async () => Number(await place(page).getAttribute('aria-valuemax'))).toBeGreaterThan(7);
   await place(page).focus();
   for (const key of ['ArrowRight', 'ArrowRight', 'ArrowRight', 'ArrowRight', '[', 'PageUp', ']', 'Home']) await page.keyboard.press(key);
   expect(await spin(page, /^Loop begins/).textContent()).toBe('0:02');

@@ -103,7 +103,7 @@ export interface Tab {
   close(): Promise<void>;
 }
 
-/** Opens the page in a fresh profile (nothing stored), 1280 × 800 and light unless told otherwise, and waits until it has loaded. */
+/** Opens the page in a fresh profile (nothing stored), 1280 × 800 and light unless told otherwise, and waits until it stands there: it is drawn once what was kept has been read. */
 export async function openTab(browser: Browser, site: Site, options: TabOptions = {}): Promise<Tab> {
   const context = await browser.newContext({
     viewport: { width: options.widthPx ?? 1280, height: options.heightPx ?? 800 },
@@ -128,6 +128,9 @@ export async function openTab(browser: Browser, site: Site, options: TabOptions 
   });
   if (options.beforeLoad) await page.addInitScript(options.beforeLoad);
   await page.goto(site.url + (options.path ?? ''), { waitUntil: 'load' });
+  await peek(page, async () => {
+    while (!document.getElementById('sheet')?.hasChildNodes()) await new Promise((resolve) => setTimeout(resolve, 10));
+  });
   return { page, complaints, close: () => context.close() };
 }
 

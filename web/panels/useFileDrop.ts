@@ -1,11 +1,11 @@
 import { useSignal } from '@preact/signals';
-import { useEffect } from 'preact/hooks';
+import { useLayoutEffect } from 'preact/hooks';
 import type { Bench } from '../state/bench.ts';
 
 /** Files dropped anywhere on the page are opened. True while one hovers. */
 export function useFileDrop(bench: Bench): boolean {
   const hovering = useSignal(false);
-  useEffect(() => {
+  useLayoutEffect(() => {
     const ends = new AbortController();
     const { signal } = ends;
     const over = (event: DragEvent) => {
