@@ -321,24 +321,32 @@ export function advanceCell(
   cell.kernel(cell.coefficients, cell.numbers.table, noise, kinks, cell.state, signal, control, signal, from, to);
 }
 
-/** Takes over the states, and their past, of elements that have the same name in both cells. Allocates. */
+/** Takes over the states, and their past, of elements that have the same name in both cells. */
 export function inheritStates(cell: Cell, from: Cell): void {
-  const named = (of: Cell) => of.numbers.plan.states.map(({ element }) => of.numbers.plan.elements[element].name);
-  const theirs = named(from);
-  named(cell).forEach((name, to) => {
-    const place = theirs.indexOf(name);
-    if (place < 0) return;
+  const stiffCount = cell.stateCount - cell.numbers.plan.trapezoidal;
+  const fromStiffCount = from.stateCount - from.numbers.plan.trapezoidal;
+  for (let to = 0; to < cell.stateCount; to++) {
+    const place = stateNamed(from, nameOfState(cell, to));
+    if (place < 0) continue;
     cell.state[to] = from.state[place];
     const stiff = to - cell.numbers.plan.trapezoidal;
-    if (stiff < 0) return;
+    if (stiff < 0) continue;
     const fromStiff = place - from.numbers.plan.trapezoidal;
-    const width = cell.stateCount - cell.numbers.plan.trapezoidal;
-    const fromWidth = from.stateCount - from.numbers.plan.trapezoidal;
     for (let past = 0; past < 3; past++) {
-      cell.state[cell.stateCount + past * width + stiff] =
-        fromStiff < 0 ? from.state[place] : from.state[from.stateCount + past * fromWidth + fromStiff];
+      cell.state[cell.stateCount + past * stiffCount + stiff] =
+        fromStiff < 0 ? from.state[place] : from.state[from.stateCount + past * fromStiffCount + fromStiff];
     }
-  });
+  }
+}
+
+function nameOfState({ numbers: { plan } }: Cell, state: number): string {
+  return plan.elements[plan.states[state].element].name;
+}
+
+/** Its place, or −1 where the cell has none of that name. */
+function stateNamed(cell: Cell, name: string): number {
+  for (let state = 0; state < cell.stateCount; state++) if (nameOfState(cell, state) === name) return state;
+  return -1;
 }
 
 /** Gate-source voltage of the last sample, V, with the sign of the part's channel. */

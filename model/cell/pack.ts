@@ -156,7 +156,6 @@ function packDevice(cell: Cell, c: Float64Array, at: number, aI: number, bI: num
   c[at + L.SCALE] = law === 'gradual' ? (scale * widthV) / 3 : scale;
   c[at + L.INVERSE_WIDTH] = 1 / widthV;
   c[at + L.SLOPE] = law === 'gradual' ? scale : scale / widthV;
-  c[at + L.BENT] = scale * (aI - bI) * (aI + bI);
   c[at + L.FALL] = -2 * scale * aI;
   c[at + L.RISE] = 2 * scale * bI;
   c[at + L.PIECES] = table.length / TERMS;

@@ -13,6 +13,8 @@ import { createVoice, FULL_SCALE_V, inherit, LONGEST_BLOCK, moveVoice, processVo
 const FADE_SEC = 0.03;
 /** A new voice runs unheard for at least this long before it is faded in, so that its filters are full. */
 const LEAD_SEC = 0.01;
+/** Or of its own latency, where that is longer. */
+const LEAD_LATENCIES = 2;
 /** Input samples beyond this many times full scale are no audio: they count as faults and are taken as silence. */
 export const LARGEST_SAMPLE = 1e4;
 
@@ -91,6 +93,7 @@ export function setResidual(chain: Chain, part: ResidualPart | null): void {
   chain.residual = part;
   setVoiceResidual(chain.voice, part);
   if (chain.next !== null) setVoiceResidual(chain.next, part);
+  if (chain.pending !== null) setVoiceResidual(chain.pending, part);
 }
 
 /**
@@ -108,24 +111,25 @@ export function moveChain(chain: Chain, numbers: ChainNumbers): void {
   if (numbers.shape === heading.numbers.shape) {
     moveVoice(heading, numbers);
     chain.pending = null;
-  } else if (chain.next) {
-    chain.pending = createVoice(numbers);
   } else {
-    startFade(chain, createVoice(numbers));
+    const coming = createVoice(numbers);
+    setVoiceResidual(coming, chain.residual);
+    if (chain.next) chain.pending = coming;
+    else startFade(chain, coming);
   }
   chain.numbers = numbers;
 }
 
 function startFade(chain: Chain, next: Voice): void {
   inherit(next, chain.voice);
-  setVoiceResidual(next, chain.residual);
-  const lateness = latencyOf(next.numbers) - latencyOf(chain.voice.numbers);
-  const lead = Math.round(LEAD_SEC * next.numbers.sampleRateHz);
+  const latency = latencyOf(next.numbers);
+  const lateness = latency - latencyOf(chain.voice.numbers);
+  const lead = Math.round(Math.max(LEAD_SEC * next.numbers.sampleRateHz, LEAD_LATENCIES * latency));
   setAligner(chain.aligner, lateness, lead);
   setAligner(chain.residualAligner, lateness, lead);
   chain.next = next;
   chain.fadeDone = -chain.aligner.glide;
-  chain.latencySamples = latencyOf(next.numbers);
+  chain.latencySamples = latency;
 }
 
 /**
@@ -198,7 +202,7 @@ function processBlock(
     readings.drainPeakV = Math.max(readings.drainPeakV, voice.lanes[channel].outputPeakV);
   }
   readings.feedthroughPeakV = Math.max(readings.feedthroughPeakV, voice.quiet.feedthroughPeakV);
-  readings.controlV = voice.drive.controls[0][count * voice.numbers.oversampling - 1];
+  readings.controlV = voice.drive.lastV[0];
   return sound;
 }
 

@@ -63,6 +63,8 @@ export interface Drive {
   readonly phase: Float64Array;
   /** Control voltage of each channel at the upper rate; channels that share one share the array. */
   readonly controls: readonly Float64Array[];
+  /** The last of each, V. */
+  readonly lastV: Float64Array;
   /** One for each control. */
   readonly detectors: readonly Float64Array[];
   /** States of the cells before a sample, then its input and the number of kinks, to solve it again. */
@@ -81,6 +83,7 @@ export function createDrive(control: ControlNumbers, values: Float64Array, lanes
     values,
     phase: new Float64Array(1),
     controls: lanes.map((_, channel) => (shared || channel === 0 ? first : new Float64Array(longest))),
+    lastV: new Float64Array(lanes.length).fill(restV),
     detectors: (shared ? lanes.slice(0, 1) : lanes).map(() => {
       const slots = new Float64Array(DETECTOR_SLOTS);
       slots[CONTROL_V] = restV;
@@ -95,6 +98,7 @@ export function createDrive(control: ControlNumbers, values: Float64Array, lanes
 /** Takes over an oscillator's phase and, between two followers, what they have heard. */
 export function inheritDrive(drive: Drive, from: Drive): void {
   drive.phase[0] = from.phase[0];
+  for (let channel = 0; channel < drive.lastV.length; channel++) drive.lastV[channel] = from.lastV[channel];
   if (drive.control.kind !== 'follower' || from.control.kind !== 'follower') return;
   drive.detectors.forEach((slots, d) => {
     const theirs = from.detectors[Math.min(d, from.detectors.length - 1)];
@@ -113,6 +117,11 @@ export function restDrive({ detectors, control, values }: Drive): void {
 
 function restControlV(control: ControlNumbers, values: Float64Array): number {
   return control.kind === 'external' ? values[1] : values[0];
+}
+
+/** Notes the last control of a block of `upperCount`. */
+export function endBlock({ controls, lastV }: Drive, upperCount: number): void {
+  for (let channel = 0; channel < lastV.length; channel++) lastV[channel] = controls[channel][upperCount - 1];
 }
 
 /** Solves the upper-rate samples `from` to `to` of every lane's top buffer in place. Allocates nothing. */

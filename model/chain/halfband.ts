@@ -5,64 +5,87 @@
  *          linear phase   H(z) = ½·z⁻ᶜ + Σ t·(z^−(c−d) + z^−(c+d)), d odd: constant delay of c samples
  * Source   Valenzuela & Constantinides, IEE Proc. G 130 (1983) 225; Vaidyanathan & Nguyen, IEEE TCAS 34 (1987) 297 (from memory)
  *
- * A half keeps its memory in `state`; process allocates nothing and gives the same bits for any cutting into blocks.
+ * Processing allocates nothing and gives the same bits for any cutting into blocks.
  */
+import { type AllPassPair, createAllPassPair, runAllPassPair } from './allPass.ts';
 import { ALL_PASS, LINEAR_PHASE } from './coefficients.ts';
 
 export type FilterSet = 'lowLatency' | 'linearPhase';
 
-export interface Half {
-  readonly filters: FilterSet;
-  readonly stage: number;
-  /** Low latency: poles, the straight branch first. Linear phase: the taps at odd distances on one side, the nearest first. */
-  readonly weights: Float64Array;
-  readonly straightCount: number;
-  readonly state: Float64Array;
-  /** Linear phase only: past input, so that each output is one sum over a run of it. */
-  readonly history: Float64Array;
+interface AllPassHalf {
+  readonly filters: 'lowLatency';
+  readonly pair: AllPassPair;
 }
 
-/** Longest run of lower-rate samples that one call may hold, for a linear-phase half. */
+interface LinearPhaseHalf {
+  readonly filters: 'linearPhase';
+  /** The taps at odd distances on one side, the nearest first. */
+  readonly weights: Float64Array;
+  /** Past input, so that each output is one sum over a run of it; past odd samples of the way down. */
+  readonly history: Float64Array;
+  readonly odd: Float64Array;
+}
+
+export type Half = AllPassHalf | LinearPhaseHalf;
+
+/** Longest run of lower-rate samples that one call may hold. */
 export const LONGEST_RUN = 128 * 8;
 
 export function createHalf(filters: FilterSet, stage: number): Half {
-  if (filters === 'lowLatency') {
-    const poles = ALL_PASS[stage];
-    const straight = poles.filter((_, i) => i % 2 === 0);
-    const delayed = poles.filter((_, i) => i % 2 === 1);
-    const weights = Float64Array.from([...straight, ...delayed]);
-    const state = new Float64Array(poles.length + 2);
-    return { filters, stage, weights, straightCount: straight.length, state, history: new Float64Array(0) };
-  }
+  if (filters === 'lowLatency') return { filters, pair: createAllPassPair(ALL_PASS[stage], LONGEST_RUN) };
   const side = LINEAR_PHASE[stage];
   return {
     filters,
-    stage,
     weights: Float64Array.from(side),
-    straightCount: 0,
-    state: new Float64Array(side.length),
     history: new Float64Array(4 * side.length + 2 * LONGEST_RUN),
+    odd: new Float64Array(side.length),
   };
 }
 
-export function clearHalf({ state, history }: Half): void {
-  state.fill(0);
-  history.fill(0);
+export function clearHalf(half: Half): void {
+  if (half.filters === 'lowLatency') half.pair.memory.fill(0);
+  else {
+    half.history.fill(0);
+    half.odd.fill(0);
+  }
 }
 
 /** Doubles the rate: `count` samples of `input` become 2·`count` of `output`. */
 export function doubleRate(half: Half, input: Float64Array, output: Float64Array, count: number): void {
-  if (half.filters === 'lowLatency') {
-    const { weights, straightCount, state } = half;
-    for (let i = 0; i < count; i++) {
-      const x = input[i];
-      output[2 * i] = allPassChain(weights, 0, straightCount, state, 0, x);
-      output[2 * i + 1] = allPassChain(weights, straightCount, weights.length, state, 1, x);
-    }
-    forgetNothing(state);
-    return;
+  if (half.filters === 'lowLatency') doubleByPair(half.pair, input, output, count);
+  else doubleByTaps(half, input, output, count);
+}
+
+/** Halves the rate: 2·`count` samples of `input` become `count` of `output`. */
+export function halveRate(half: Half, input: Float64Array, output: Float64Array, count: number): void {
+  if (half.filters === 'lowLatency') halveByPair(half.pair, input, output, count);
+  else halveByTaps(half, input, output, count);
+}
+
+function doubleByPair(pair: AllPassPair, input: Float64Array, output: Float64Array, count: number): void {
+  const { straight, delayed } = pair;
+  for (let i = 0; i < count; i++) {
+    straight[i] = input[i];
+    delayed[i] = input[i];
   }
-  const { weights, history } = half;
+  runAllPassPair(pair, count);
+  for (let i = 0; i < count; i++) {
+    output[2 * i] = straight[i];
+    output[2 * i + 1] = delayed[i];
+  }
+}
+
+function halveByPair(pair: AllPassPair, input: Float64Array, output: Float64Array, count: number): void {
+  const { straight, delayed } = pair;
+  for (let i = 0; i < count; i++) {
+    delayed[i] = input[2 * i];
+    straight[i] = input[2 * i + 1];
+  }
+  runAllPassPair(pair, count);
+  for (let i = 0; i < count; i++) output[i] = 0.5 * (straight[i] + delayed[i]);
+}
+
+function doubleByTaps({ weights, history }: LinearPhaseHalf, input: Float64Array, output: Float64Array, count: number): void {
   const side = weights.length;
   const kept = 2 * side - 1;
   for (let i = 0; i < count; i++) history[kept + i] = input[i];
@@ -72,6 +95,16 @@ export function doubleRate(half: Half, input: Float64Array, output: Float64Array
     output[2 * i + 1] = history[i + side];
   }
   for (let k = 0; k < kept; k++) history[k] = history[count + k];
+}
+
+function halveByTaps({ weights, history, odd }: LinearPhaseHalf, input: Float64Array, output: Float64Array, count: number): void {
+  const side = weights.length;
+  const kept = 2 * side - 1;
+  for (let i = 0; i < count; i++) history[kept + i] = input[2 * i];
+  sumSides(weights, history, output, 1, count);
+  for (let i = 0; i < count; i++) output[i] += 0.5 * (i >= side ? input[2 * (i - side) + 1] : odd[i]);
+  for (let k = 0; k < kept; k++) history[k] = history[count + k];
+  keepOdd(odd, input, count, side);
 }
 
 /**
@@ -123,56 +156,10 @@ function sumSides(weights: Float64Array, history: Float64Array, output: Float64A
   output[stride * i] = even + odd;
 }
 
-/** In silence a recursive filter decays into numbers that processors are slow with, and stays there. */
-const NOTHING = 1e-300;
-
-function forgetNothing(state: Float64Array): void {
-  for (let k = 0; k < state.length; k++) if (state[k] < NOTHING && state[k] > -NOTHING) state[k] = 0;
-}
-
-/** Halves the rate: 2·`count` samples of `input` become `count` of `output`. */
-export function halveRate(half: Half, input: Float64Array, output: Float64Array, count: number): void {
-  if (half.filters === 'lowLatency') {
-    const { weights, straightCount, state } = half;
-    for (let i = 0; i < count; i++) {
-      const delayed = allPassChain(weights, straightCount, weights.length, state, 1, input[2 * i]);
-      const straight = allPassChain(weights, 0, straightCount, state, 0, input[2 * i + 1]);
-      output[i] = 0.5 * (straight + delayed);
-    }
-    forgetNothing(state);
-    return;
-  }
-  const { weights, history, state } = half;
-  const side = weights.length;
-  const kept = 2 * side - 1;
-  for (let i = 0; i < count; i++) history[kept + i] = input[2 * i];
-  sumSides(weights, history, output, 1, count);
-  for (let i = 0; i < count; i++) output[i] += 0.5 * (i >= side ? input[2 * (i - side) + 1] : state[i]);
-  for (let k = 0; k < kept; k++) history[k] = history[count + k];
-  keepOdd(state, input, count, side);
-}
-
 /** The last `centre` odd samples stay for the next run. */
-function keepOdd(state: Float64Array, input: Float64Array, count: number, centre: number): void {
-  if (count < centre) for (let k = 0; k < centre - count; k++) state[k] = state[count + k];
-  for (let k = Math.max(0, centre - count); k < centre; k++) state[k] = input[2 * (count - centre + k) + 1];
-}
-
-/**
- * First-order all-pass sections (c + z⁻¹)/(1 + c·z⁻¹) from `from` to `to`. Each section's past output is the next one's past input, so a branch
- * of m sections keeps m + 1 values, at `from + branch` on.
- */
-function allPassChain(weights: Float64Array, from: number, to: number, state: Float64Array, branch: number, input: number): number {
-  let x = input;
-  let past = state[from + branch];
-  state[from + branch] = x;
-  for (let k = from; k < to; k++) {
-    const y = weights[k] * (x - state[k + 1 + branch]) + past;
-    past = state[k + 1 + branch];
-    state[k + 1 + branch] = y;
-    x = y;
-  }
-  return x;
+function keepOdd(odd: Float64Array, input: Float64Array, count: number, centre: number): void {
+  if (count < centre) for (let k = 0; k < centre - count; k++) odd[k] = odd[count + k];
+  for (let k = Math.max(0, centre - count); k < centre; k++) odd[k] = input[2 * (count - centre + k) + 1];
 }
 
 /** Delay of a doubling and a halving together, in samples of the lower rate; at low frequencies for the all-pass pair. */

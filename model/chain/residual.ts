@@ -50,14 +50,13 @@ export function withNoise(design: Design): Design {
 }
 
 /** The copies of a voice's cells, at the state that the voice is in; for blocks of up to `longest` lower-rate samples. Allocates. */
-export function createResidual({ lanes, drive, quiet, numbers }: Voice, part: ResidualPart, longest: number): Residual {
+export function createResidual(voice: Voice, part: ResidualPart, longest: number): Residual {
+  const { lanes, numbers } = voice;
   const upper = longest * numbers.oversampling;
-  return {
+  const residual = {
     part,
-    lanes: lanes.map((lane, channel): Copies => {
+    lanes: lanes.map((lane): Copies => {
       const silent = copyOf(lane.cell);
-      settle(silent, 0, drive.controls[channel][0]);
-      inheritStates(silent, quiet.cell);
       return {
         silent,
         twin: part === 'distortion' ? createTwin(lane.cell, silent) : null,
@@ -73,6 +72,19 @@ export function createResidual({ lanes, drive, quiet, numbers }: Voice, part: Re
       };
     }),
   };
+  bringResidual(residual, voice);
+  return residual;
+}
+
+/** Puts the copies at the state that the voice is in. */
+export function bringResidual({ lanes }: Residual, { drive, quiet }: Voice): void {
+  for (let channel = 0; channel < lanes.length; channel++) {
+    const { silent, twin, noisy } = lanes[channel];
+    settle(silent, 0, drive.lastV[channel]);
+    inheritStates(silent, quiet.cell);
+    if (twin !== null) restTwin(twin);
+    if (noisy !== null) noisy.state.set(silent.state);
+  }
 }
 
 /** No cell adds more than this many times what goes in and comes out; values that jump may make a copy's memory do so. */

@@ -10,7 +10,7 @@ import { createGaussian, type GaussianSource } from '../device/random.ts';
 import { createAmplifierState, processAmplifier } from './amplifier.ts';
 import { createKinks } from '../cell/kernels/kinks.ts';
 import type { ChainNumbers } from './compile.ts';
-import { advanceSlice, createDrive, type Drive, inheritDrive, restDrive } from './drive.ts';
+import { advanceSlice, createDrive, type Drive, endBlock, inheritDrive, restDrive } from './drive.ts';
 import { clearSoftener, createSoftener, type Softener, soften } from './kinks.ts';
 import { bendTable, lagTable } from './kinkTables.ts';
 import { timesSoftened } from './latency.ts';
@@ -20,6 +20,7 @@ import { advanceQuiet, createQuiet, type Quiet, RUNAWAY_V } from './quiet.ts';
 import { aim, type Levels, levelAt, type Moving, moving, partsOf, retarget, setOut, standing, step } from './ramp.ts';
 import {
   advanceResidual,
+  bringResidual,
   createResidual,
   isBounded,
   keepAudio,
@@ -151,12 +152,13 @@ export function inherit(voice: Voice, from: Voice): void {
   inheritDrive(voice.drive, from.drive);
   inheritStates(voice.quiet.cell, from.quiet.cell);
   for (let channel = 0; channel < voice.lanes.length; channel++) inheritStates(voice.lanes[channel].cell, from.lanes[channel].cell);
+  if (voice.residual !== null) bringResidual(voice.residual, voice);
 }
 
 /**
  * Advances by `count` samples, at most LONGEST_BLOCK; `external` is the recorded control, used where there is one. What the cells add goes to
  * `residuals`, where it is asked for. False when a state was lost, and the voice is at rest again, or when values on the way of a move make a singular
- * network, and the cell plays on with its last good ones.
+ * network, and the cell keeps its last good ones, muted until others are good.
  */
 export function processVoice(
   voice: Voice,
@@ -183,7 +185,9 @@ export function processVoice(
     lanes[channel].lost = false;
   }
   if (residual !== null) keepAudio(residual, voice, upperCount);
-  let sound = advanceAll(voice, upperCount);
+  const regular = advanceAll(voice, upperCount);
+  let sound = regular;
+  endBlock(voice.drive, upperCount);
   advanceQuiet(voice.quiet, numbers, voice.drive.controls[0], count);
   let lost = false;
   for (let channel = 0; channel < lanes.length; channel++) if (lanes[channel].lost) lost = true;
@@ -194,6 +198,7 @@ export function processVoice(
   if (residual !== null) leaveResidual(voice, residual, residuals, lost, count);
   for (let channel = 0; channel < lanes.length; channel++) {
     if (lanes[channel].lost) putAtRest(voice, lanes[channel], upperCount);
+    else if (!regular) fadeOut(voice, lanes[channel], upperCount);
     else fadeIn(voice, lanes[channel], upperCount);
     lanes[channel].lastV = top(lanes[channel])[upperCount - 1];
     if (numbers.oversampling > 1) soften(lanes[channel].softener, top(lanes[channel]), lanes[channel].kinks, upperCount);
@@ -325,7 +330,17 @@ function mutedSamples({ numbers }: Voice): number {
   return Math.round(RAMP_SEC * numbers.sampleRateHz * numbers.oversampling);
 }
 
-/** Brings a lane that was lost back to its level. */
+/** Mutes a lane within the block, from whatever level it is at. */
+function fadeOut(voice: Voice, lane: Lane, upperCount: number): void {
+  const total = mutedSamples(voice);
+  const signal = top(lane);
+  const level = 1 - lane.muted / total;
+  for (let i = 0; i < upperCount; i++) signal[i] *= level * (1 - (i + 1) / upperCount);
+  lane.muted = total;
+  if (lane.kinks.length > 0) lane.kinks[0] = 0;
+}
+
+/** Brings a lane that was muted back to its level. */
 function fadeIn(voice: Voice, lane: Lane, upperCount: number): void {
   const total = mutedSamples(voice);
   const signal = top(lane);

@@ -28,7 +28,6 @@ export function shuntByHand(
   const on = c[ALL.device + L.ON_V];
   const off = c[ALL.device + L.GATE_OFF_V];
   const scale = c[ALL.device + L.SCALE];
-  const bent = c[ALL.device + L.BENT];
   const fall = c[ALL.device + L.FALL];
   const rise = c[ALL.device + L.RISE];
   const [nS, nD] = [c[ALL.junction + 2 * L.JUNCTION_WIDTH], c[ALL.junction + 2 * L.JUNCTION_WIDTH + 1]];
@@ -49,9 +48,9 @@ export function shuntByHand(
     let S = 0;
     let D = 0;
     if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = (2 * w) / (q + Math.sqrt(q * q - 4 * bent * w));
+      const p = fall * a + rise * b;
+      const g = fall * b + rise * a;
+      I = (2 * scale * (a - b) * (a + b)) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + aI * I >= 0 && b + bI * I >= 0)) {
         if (a > b) I = (2 * scale * a * a) / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
         else I = (-2 * scale * b * b) / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));

@@ -12,6 +12,7 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [5356, 'a ground path of 100 Ω moved to 0.6 mΩ in one sample: 23 kV at the output, in what the witness held to be a circuit of volts'],
   [5581, "Newton's last step left 1.2 pA where the law's tail is 32 mV wide"],
   [5996, 'the smooth law’s table where VGS(off) is no larger than its tail'],
+  [6701, 'the roots of the square law’s equation nearly one: 1 500 V of overdrive behind 7 kΩ, seven digits lost in the discriminant'],
   [8612, 'a feedback loop of 10 Ω that floats on megohms: 45 pV of rounding at the output, where the witness allowed 7'],
 ];
 

@@ -43,27 +43,26 @@ export const SCALE = 6;
 export const INVERSE_WIDTH = 7;
 export const SLOPE = 8;
 /** Smooth: pieces in the table, and the exponent Q. */
-export const PIECES = 12;
-export const EXPONENT = 13;
-/** Square law: β(α² − γ²), 2βα and 2βγ, with α and γ the fall and rise of the two overdrives for each ampere. */
-export const BENT = 9;
-export const FALL = 10;
-export const RISE = 11;
+export const PIECES = 11;
+export const EXPONENT = 12;
+/** Square law: 2βα and 2βγ, with α and γ the fall and rise of the two overdrives for each ampere. */
+export const FALL = 9;
+export const RISE = 10;
 /** The same threshold for the junctions and for the clamp from gate to source, and the clamp's reverse current and 1/nVT. */
-export const JUNCTION_ON_V = 14;
-export const CLAMP_ON_V = 15;
-export const CLAMP_A = 16;
-export const CLAMP_INVERSE_NVT = 17;
+export const JUNCTION_ON_V = 13;
+export const CLAMP_ON_V = 14;
+export const CLAMP_A = 15;
+export const CLAMP_INVERSE_NVT = 16;
 /** Step at which Newton's method stops, V. */
-export const ENOUGH_V = 18;
+export const ENOUGH_V = 17;
 /** Capacitances that fall with reverse voltage: exponent m (0: constant), barrier, C0 over a step of gate-source and gate-drain, S. */
-export const GRADING = 19;
-export const BARRIER_V = 20;
-export const STEP_S = 21;
-export const STEP_D = 22;
+export const GRADING = 18;
+export const BARRIER_V = 19;
+export const STEP_S = 20;
+export const STEP_D = 21;
 /** 1 for an n-channel part, −1 for a p-channel one. */
-export const POLARITY = 23;
-export const DEVICE_WIDTH = 24;
+export const POLARITY = 22;
+export const DEVICE_WIDTH = 23;
 
 export const LAW_NUMBER = { square: 0, gradual: 1, smooth: 2 } as const;
 

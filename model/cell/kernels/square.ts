@@ -18,10 +18,10 @@ import { expAt } from '../../device/math.ts';
 function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
   const a = s[n + 38], b = s[n + 39], freeA = s[n + 40];
   const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
-  const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 14];
-  const clampA = c[device + 16], clampRate = c[device + 17], clampOn = c[device + 15], grading = c[device + 19];
+  const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 13];
+  const clampA = c[device + 15], clampRate = c[device + 16], clampOn = c[device + 14], grading = c[device + 18];
   const rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;
-  const enough = 0.1 * c[device + 18], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
+  const enough = 0.1 * c[device + 17], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
   const lastS = s[n + 5], lineS = lastS - s[n + 36];
@@ -57,8 +57,8 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
       s[n + 21] = vs; s[n + 29] = vd;
-      addGraded(c, device, 21, s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
-      addGraded(c, device, 22, s, n + 25, n + 15); D += s[n + 15]; slopeD += s[n + 16];
+      addGraded(c, device, 20, s, n + 17, n + 13); S += s[n + 13]; slopeS += s[n + 14];
+      addGraded(c, device, 21, s, n + 25, n + 15); D += s[n + 15]; slopeD += s[n + 16];
     }
     const channel = Fs - Fd;
     const rs = vs - a - perAs * channel - aS * S - aD * D, rd = vd - b - perAd * channel - bS * S - bD * D;
@@ -96,13 +96,12 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const b1 = c[5];
   const b2 = c[6];
   const b3 = c[7];
-  const sign = c[41], off = c[19];
+  const sign = c[40], off = c[19];
   const on = c[20];
   const lambda = c[23];
   const scale = c[24];
-  const bent_ = c[27];
-  const fall = c[28];
-  const rise = c[29];
+  const fall = c[27];
+  const rise = c[28];
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
@@ -117,9 +116,8 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a3 * I >= 0 && b + b3 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -169,13 +167,12 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const m0_1 = c[29];
   const m0_2 = c[30];
   const m0_3 = c[31];
-  const sign = c[57], off = c[35];
+  const sign = c[56], off = c[35];
   const on = c[36];
   const lambda = c[39];
   const scale = c[40];
-  const bent_ = c[43];
-  const fall = c[44];
-  const rise = c[45];
+  const fall = c[43];
+  const rise = c[44];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
   let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
@@ -196,9 +193,8 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a4 * I >= 0 && b + b4 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -273,13 +269,12 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const m1_2 = c[47];
   const m1_3 = c[48];
   const m1_4 = c[49];
-  const sign = c[77], off = c[55];
+  const sign = c[76], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
-  const bent_ = c[63];
-  const fall = c[64];
-  const rise = c[65];
+  const fall = c[63];
+  const rise = c[64];
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
@@ -303,9 +298,8 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -403,13 +397,12 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const m2_3 = c[69];
   const m2_4 = c[70];
   const m2_5 = c[71];
-  const sign = c[101], off = c[79];
+  const sign = c[100], off = c[79];
   const on = c[80];
   const lambda = c[83];
   const scale = c[84];
-  const bent_ = c[87];
-  const fall = c[88];
-  const rise = c[89];
+  const fall = c[87];
+  const rise = c[88];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -436,9 +429,8 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -563,13 +555,12 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const m3_4 = c[95];
   const m3_5 = c[96];
   const m3_6 = c[97];
-  const sign = c[129], off = c[107];
+  const sign = c[128], off = c[107];
   const on = c[108];
   const lambda = c[111];
   const scale = c[112];
-  const bent_ = c[115];
-  const fall = c[116];
-  const rise = c[117];
+  const fall = c[115];
+  const rise = c[116];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -599,9 +590,8 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a7 * I >= 0 && b + b7 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -672,13 +662,12 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const m0_0 = c[28];
   const m0_1 = c[29];
   const m0_2 = c[30];
-  const sign = c[57], off = c[35];
+  const sign = c[56], off = c[35];
   const on = c[36];
   const lambda = c[39];
   const scale = c[40];
-  const bent_ = c[43];
-  const fall = c[44];
-  const rise = c[45];
+  const fall = c[43];
+  const rise = c[44];
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
@@ -698,9 +687,8 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a4 * I >= 0 && b + b4 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -776,13 +764,12 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const m1_1 = c[46];
   const m1_2 = c[47];
   const m1_3 = c[48];
-  const sign = c[77], off = c[55];
+  const sign = c[76], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
-  const bent_ = c[63];
-  const fall = c[64];
-  const rise = c[65];
+  const fall = c[63];
+  const rise = c[64];
   let x0 = s[0];
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
@@ -807,9 +794,8 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -882,13 +868,12 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m1_1 = c[46];
   const m1_2 = c[47];
   const m1_3 = c[48];
-  const sign = c[77], off = c[55];
+  const sign = c[76], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
-  const bent_ = c[63];
-  const fall = c[64];
-  const rise = c[65];
+  const fall = c[63];
+  const rise = c[64];
   let x0 = s[0];
   let x1 = s[1];
   let e0 = s[2], f0 = s[4], g0 = s[6];
@@ -912,9 +897,8 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1005,13 +989,12 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m2_2 = c[68];
   const m2_3 = c[69];
   const m2_4 = c[70];
-  const sign = c[101], off = c[79];
+  const sign = c[100], off = c[79];
   const on = c[80];
   const lambda = c[83];
   const scale = c[84];
-  const bent_ = c[87];
-  const fall = c[88];
-  const rise = c[89];
+  const fall = c[87];
+  const rise = c[88];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1040,9 +1023,8 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1159,13 +1141,12 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m3_3 = c[94];
   const m3_4 = c[95];
   const m3_5 = c[96];
-  const sign = c[129], off = c[107];
+  const sign = c[128], off = c[107];
   const on = c[108];
   const lambda = c[111];
   const scale = c[112];
-  const bent_ = c[115];
-  const fall = c[116];
-  const rise = c[117];
+  const fall = c[115];
+  const rise = c[116];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1197,9 +1178,8 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a7 * I >= 0 && b + b7 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1274,13 +1254,12 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m1_1 = c[46];
   const m1_2 = c[47];
   const m1_3 = c[48];
-  const sign = c[77], off = c[55];
+  const sign = c[76], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
-  const bent_ = c[63];
-  const fall = c[64];
-  const rise = c[65];
+  const fall = c[63];
+  const rise = c[64];
   let x0 = s[0];
   let x1 = s[1];
   let e0 = s[2], f0 = s[4], g0 = s[6];
@@ -1304,9 +1283,8 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1384,13 +1362,12 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m2_2 = c[68];
   const m2_3 = c[69];
   const m2_4 = c[70];
-  const sign = c[101], off = c[79];
+  const sign = c[100], off = c[79];
   const on = c[80];
   const lambda = c[83];
   const scale = c[84];
-  const bent_ = c[87];
-  const fall = c[88];
-  const rise = c[89];
+  const fall = c[87];
+  const rise = c[88];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1419,9 +1396,8 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1482,13 +1458,12 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const y1 = c[9];
   const y2 = c[10];
   const y3 = c[11];
-  const sign = c[41], off = c[19];
+  const sign = c[40], off = c[19];
   const on = c[20];
   const lambda = c[23];
   const scale = c[24];
-  const bent_ = c[27];
-  const fall = c[28];
-  const rise = c[29];
+  const fall = c[27];
+  const rise = c[28];
   let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
@@ -1503,9 +1478,8 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a3 * I >= 0 && b + b3 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1567,13 +1541,12 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const m0_1 = c[29];
   const m0_2 = c[30];
   const m0_3 = c[31];
-  const sign = c[57], off = c[35];
+  const sign = c[56], off = c[35];
   const on = c[36];
   const lambda = c[39];
   const scale = c[40];
-  const bent_ = c[43];
-  const fall = c[44];
-  const rise = c[45];
+  const fall = c[43];
+  const rise = c[44];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
   let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
@@ -1594,9 +1567,8 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a4 * I >= 0 && b + b4 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1680,13 +1652,12 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const m1_2 = c[47];
   const m1_3 = c[48];
   const m1_4 = c[49];
-  const sign = c[77], off = c[55];
+  const sign = c[76], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
-  const bent_ = c[63];
-  const fall = c[64];
-  const rise = c[65];
+  const fall = c[63];
+  const rise = c[64];
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
@@ -1710,9 +1681,8 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1820,13 +1790,12 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const m2_3 = c[69];
   const m2_4 = c[70];
   const m2_5 = c[71];
-  const sign = c[101], off = c[79];
+  const sign = c[100], off = c[79];
   const on = c[80];
   const lambda = c[83];
   const scale = c[84];
-  const bent_ = c[87];
-  const fall = c[88];
-  const rise = c[89];
+  const fall = c[87];
+  const rise = c[88];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -1853,9 +1822,8 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -1945,13 +1913,12 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m1_1 = c[46];
   const m1_2 = c[47];
   const m1_3 = c[48];
-  const sign = c[77], off = c[55];
+  const sign = c[76], off = c[55];
   const on = c[56];
   const lambda = c[59];
   const scale = c[60];
-  const bent_ = c[63];
-  const fall = c[64];
-  const rise = c[65];
+  const fall = c[63];
+  const rise = c[64];
   let x0 = s[0];
   let x1 = s[1];
   let e0 = s[2], f0 = s[4], g0 = s[6];
@@ -1975,9 +1942,8 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a5 * I >= 0 && b + b5 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -2087,13 +2053,12 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m2_2 = c[68];
   const m2_3 = c[69];
   const m2_4 = c[70];
-  const sign = c[101], off = c[79];
+  const sign = c[100], off = c[79];
   const on = c[80];
   const lambda = c[83];
   const scale = c[84];
-  const bent_ = c[87];
-  const fall = c[88];
-  const rise = c[89];
+  const fall = c[87];
+  const rise = c[88];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2122,9 +2087,8 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a6 * I >= 0 && b + b6 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -2262,13 +2226,12 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m3_3 = c[94];
   const m3_4 = c[95];
   const m3_5 = c[96];
-  const sign = c[129], off = c[107];
+  const sign = c[128], off = c[107];
   const on = c[108];
   const lambda = c[111];
   const scale = c[112];
-  const bent_ = c[115];
-  const fall = c[116];
-  const rise = c[117];
+  const fall = c[115];
+  const rise = c[116];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2300,9 +2263,8 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a7 * I >= 0 && b + b7 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -2472,13 +2434,12 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   const m4_4 = c[124];
   const m4_5 = c[125];
   const m4_6 = c[126];
-  const sign = c[161], off = c[139];
+  const sign = c[160], off = c[139];
   const on = c[140];
   const lambda = c[143];
   const scale = c[144];
-  const bent_ = c[147];
-  const fall = c[148];
-  const rise = c[149];
+  const fall = c[147];
+  const rise = c[148];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2513,9 +2474,8 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a8 * I >= 0 && b + b8 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -2660,13 +2620,12 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   const m3_3 = c[94];
   const m3_4 = c[95];
   const m3_5 = c[96];
-  const sign = c[129], off = c[107];
+  const sign = c[128], off = c[107];
   const on = c[108];
   const lambda = c[111];
   const scale = c[112];
-  const bent_ = c[115];
-  const fall = c[116];
-  const rise = c[117];
+  const fall = c[115];
+  const rise = c[116];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2699,9 +2658,8 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a7 * I >= 0 && b + b7 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -2872,13 +2830,12 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   const m4_4 = c[124];
   const m4_5 = c[125];
   const m4_6 = c[126];
-  const sign = c[161], off = c[139];
+  const sign = c[160], off = c[139];
   const on = c[140];
   const lambda = c[143];
   const scale = c[144];
-  const bent_ = c[147];
-  const fall = c[148];
-  const rise = c[149];
+  const fall = c[147];
+  const rise = c[148];
   let x0 = s[0];
   let x1 = s[1];
   let x2 = s[2];
@@ -2914,9 +2871,8 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + a8 * I >= 0 && b + b8 * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));
@@ -2992,9 +2948,8 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
   const on = c[device + 2];
   const lambda = c[device + 5];
   const scale = c[device + 6];
-  const bent_ = c[device + 9];
-  const fall = c[device + 10];
-  const rise = c[device + 11];
+  const fall = c[device + 9];
+  const rise = c[device + 10];
   let u0 = s[slots + 0], v0 = s[slots + 1];
   let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
@@ -3034,9 +2989,8 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
     }
     if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; }
     else if (a > 0 || b > 0) {
-      const q = 1 + fall * a + rise * b;
-      const w = scale * (a - b) * (a + b);
-      I = 2 * w / (q + Math.sqrt(q * q - 4 * bent_ * w));
+      const p = fall * a + rise * b, g = fall * b + rise * a;
+      I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
       if (!(a + perAs * I >= 0 && b + perAd * I >= 0)) {
         if (a > b) {
           I = 2 * scale * a * a / (1 + fall * a + Math.sqrt(1 + 2 * fall * a));

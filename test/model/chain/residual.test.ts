@@ -124,17 +124,18 @@ test.each(['distortion', 'feedthrough', 'noise'] as const)('%s: the output besid
 
 test('asked for while it plays, it is the residual that would have been there from the start', () => {
   const input = [sine(440, 0.2, RATE_HZ)];
-  const run = (from: number) => {
+  const run = (from: number, length = 480) => {
     const chain = createChain(compileChain(BOARD, 0, RATE_HZ, 1, 'lowLatency'));
     const left = new Float32Array(RATE_HZ);
-    for (let at = 0; at < RATE_HZ; at += 480) {
+    for (let at = 0; at < RATE_HZ; at += length) {
       if (at === from) setResidual(chain, 'distortion');
-      const block = (lines: readonly Float32Array[]) => lines.map((line) => line.subarray(at, at + 480));
-      processChain(chain, block(input), [new Float32Array(480)], null, block([left]));
+      const block = (lines: readonly Float32Array[]) => lines.map((line) => line.subarray(at, at + length));
+      processChain(chain, block(input), [new Float32Array(length)], null, block([left]));
     }
     return left;
   };
   const [early, late] = [run(0), run(24000)];
   const difference = late.map((x, n) => x - early[n]);
   expect(db(rms(difference, 36000) / rms(early, 36000))).toBeLessThan(-40);
+  for (const length of [50, 96]) expect(db(rms(run(24000, length).map((x, n) => x - late[n])) / rms(late, 36000))).toBe(-Infinity);
 });

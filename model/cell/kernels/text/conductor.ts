@@ -34,7 +34,7 @@ export function conductor(law: Law, language: Language): string {
     `  ${constant} rateS = clampOn < onD ? clampRate : rateD, onS = clampOn < onD ? clampOn : onD, kneeS = onS + 20 / rateS, kneeD = onD + 20 / rateD;`,
     `  ${constant} enough = 0.1 * ${device(L.ENOUGH_V)}, rounding = 1e-15 * (${absolute}(a) + ${absolute}(b));`,
     ...deviceConstants(law, device)
-      .filter(([name]) => !['on', 'bent_', 'fall', 'rise', 'enough'].includes(name))
+      .filter(([name]) => !['on', 'fall', 'rise', 'enough'].includes(name))
       .map(([name, value]) => `  ${constant} ${name} = ${value};`),
     ...start('S', 'a + perAs * freeA', L.OVERDRIVE_S, L.EARLIER_S),
     ...start('D', 'b + perAd * freeA', L.OVERDRIVE_D, L.EARLIER_D),

@@ -11,7 +11,7 @@ export function deviceConstants(law: Law, device: (index: number) => string): [s
     ['lambda', device(L.LAMBDA)],
     ['scale', device(L.SCALE)],
   ];
-  if (law === 'square') return [...common, ['bent_', device(L.BENT)], ['fall', device(L.FALL)], ['rise', device(L.RISE)]];
+  if (law === 'square') return [...common, ['fall', device(L.FALL)], ['rise', device(L.RISE)]];
   const shaped: [string, string][] = [
     ...common,
     ['inverseWidth', device(L.INVERSE_WIDTH)],
@@ -46,9 +46,9 @@ export function squareSolution(
   return [
     `if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { ${searches} }`,
     'else if (a > 0 || b > 0) {',
-    `  ${constant} q = 1 + fall * a + rise * b;`,
-    `  ${constant} w = scale * (a - b) * (a + b);`,
-    `  I = 2 * w / (q + ${sqrt}(q * q - 4 * bent_ * w));`,
+    // The discriminant of I = scale·(vs² − vd²), written so that nothing cancels where the two roots meet.
+    `  ${constant} p = fall * a + rise * b, g = fall * b + rise * a;`,
+    `  I = 2 * scale * (a - b) * (a + b) / (1 + p + ${sqrt}(1 + 2 * p + g * g));`,
     `  if (!(a + ${aI} * I >= 0 && b + ${bI} * I >= 0)) {`,
     '    if (a > b) {',
     `      I = 2 * scale * a * a / (1 + fall * a + ${sqrt}(1 + 2 * fall * a));`,
