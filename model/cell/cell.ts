@@ -9,6 +9,7 @@ import { atTemperature, thermalVoltage } from '../device/temperature.ts';
 import type { Circuit } from './circuit.ts';
 import type { Kernel } from './kernels/kernel.ts';
 import * as L from './kernels/layout.ts';
+import { stay } from './kernels/ports.ts';
 import { restCharge } from './kernels/graded.ts';
 import { GRADUAL_KERNELS, GRADUAL_LOOPED } from './kernels/gradual.ts';
 import { SMOOTH_KERNELS, SMOOTH_LOOPED } from './kernels/smooth.ts';
@@ -397,6 +398,8 @@ export function settle(cell: Cell, audioV: number, controlV: number): number {
   state[cell.slots + L.OLD_AUDIO] = audioV;
   state[cell.slots + L.OLD_CONTROL] = controlV;
   state[cell.slots + L.EARLIER_A] = channelA;
+  state[cell.slots + L.EARLIEST_A] = channelA;
+  stay(state, cell.slots);
   if (cell.numbers.grading > 0) {
     const { device } = cell.layout.all;
     state[cell.slots + L.CHARGES_S + 4] = overdriveV(cell, 'source');

@@ -12,7 +12,7 @@
  *
  * `reduce` writes in place and allocates nothing, so that values can be moved on the audio thread.
  */
-import { factor, solve } from './linear.ts';
+import { factor, refine, solve } from './linear.ts';
 import { CHANNEL, CONSTANT, DRIVES, type Plan, type RestPlan } from './plan.ts';
 
 /** Working memory and result of a reduction. Row-major; widths in `layout`. */
@@ -32,8 +32,12 @@ export interface Reduction {
     readonly matrix: Float64Array;
     readonly pivots: Int32Array;
     readonly columns: Float64Array;
+    /** Of the step: both sides of the rows' equations; the left one factored, the solution, and what that misses. */
     readonly left: Float64Array;
     readonly right: Float64Array;
+    readonly factored: Float64Array;
+    readonly solved: Float64Array;
+    readonly miss: Float64Array;
     readonly statePivots: Int32Array;
   };
 }
@@ -71,6 +75,9 @@ export function createReduction(plan: Plan): Reduction {
       columns: new Float64Array(largest * plan.width),
       left: new Float64Array(n * n),
       right: new Float64Array(n * width),
+      factored: new Float64Array(n * n),
+      solved: new Float64Array(n * width),
+      miss: new Float64Array(n * width),
       statePivots: new Int32Array(n),
     },
   };
@@ -139,16 +146,20 @@ export function discretise(reduction: Reduction, stepSec: number): boolean {
   memory.fill(0);
   addStorage(reduction, stepSec);
   for (let row = 0; row < n; row++) addDrives(reduction, row);
-  if (!factor(work.left, work.statePivots, n)) return false;
-  solve(work.left, work.statePivots, n, work.right, width);
+  const { left, right, factored, solved, statePivots } = work;
+  factored.set(left);
+  if (!factor(factored, statePivots, n)) return false;
+  solved.set(right);
+  solve(factored, statePivots, n, solved, width);
+  refine(left, factored, statePivots, n, right, solved, work.miss, width);
   scaleMemory(reduction, stepSec);
-  for (let i = 0; i < n * width; i++) step[2 * width + i] = work.right[i];
+  for (let i = 0; i < n * width; i++) step[2 * width + i] = solved[i];
   for (let port = 0; port < 2; port++) {
     const p = (n + port) * plan.width;
     const to = port * width;
     for (let column = 0; column < width; column++) {
       let sum = 0;
-      for (let state = 0; state < n; state++) sum += response[p + state] * work.right[state * width + column];
+      for (let state = 0; state < n; state++) sum += response[p + state] * solved[state * width + column];
       step[to + column] = sum;
     }
     for (let k = 0; k < 2; k++) {
@@ -172,7 +183,7 @@ function scaleMemory({ plan, values, memory, work }: Reduction, stepSec: number)
   for (let row = 0; row < n; row++) {
     const own = values[plan.states[row].element] / stepSec;
     for (let k = 0; k < past; k++) memory[row * past + k] /= own;
-    for (let state = 0; state < n; state++) work.right[state * width + row] *= own;
+    for (let state = 0; state < n; state++) work.solved[state * width + row] *= own;
   }
 }
 

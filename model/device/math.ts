@@ -1,10 +1,10 @@
 /**
  * Elementary functions from + − × ÷ alone, so that every engine returns the same bits.
  *
- * Law      exp, log: argument reduction and the minimax polynomials of fdlibm (Sun Microsystems, freely distributable); sine and cosine
- *          of a phase in turns: reduction to an eighth of a turn, fdlibm's kernels
+ * Law      exp: the nearest 32nd of an octave from a table, and Taylor's series for the rest; log: argument reduction and the minimax polynomial of fdlibm (Sun
+ *          Microsystems, freely distributable); sine and cosine of a phase in turns: reduction to an eighth of a turn, fdlibm's kernels
  * Error    at most 1 ulp over the ranges tested (test/model/device/math.test.ts, against 50-digit arithmetic)
- * Source   fdlibm e_exp.c, e_log.c, k_sin.c, k_cos.c (coefficients from memory, held by the test)
+ * Source   exp: after Tang, ACM TOMS 15 (1989) 144 (from memory); fdlibm e_log.c, k_sin.c, k_cos.c (coefficients from memory, held by the test)
  */
 
 const LN2_HIGH = 6.9314718036912381649e-1;
@@ -24,6 +24,76 @@ function powersOfTwo(): Float64Array {
   return table;
 }
 
+/** 2^(j/32), j from 0 up, and what each misses by its rounding: from 80-digit arithmetic. */
+const ROOTS = Float64Array.of(
+  1.0,
+  1.0218971486541166,
+  1.0442737824274138,
+  1.0671404006768237,
+  1.0905077326652577,
+  1.1143867425958924,
+  1.1387886347566916,
+  1.1637248587775775,
+  1.189207115002721,
+  1.215247359980469,
+  1.241857812073484,
+  1.2690509571917332,
+  1.2968395546510096,
+  1.3252366431597413,
+  1.3542555469368927,
+  1.383909881963832,
+  1.4142135623730951,
+  1.4451808069770467,
+  1.4768261459394993,
+  1.5091644275934228,
+  1.5422108254079407,
+  1.5759808451078865,
+  1.6104903319492543,
+  1.645755478153965,
+  1.681792830507429,
+  1.718619298122478,
+  1.7562521603732995,
+  1.7947090750031072,
+  1.8340080864093424,
+  1.8741676341103,
+  1.9152065613971474,
+  1.9571441241754002,
+);
+const ROOTS_REST = Float64Array.of(
+  0.0,
+  5.109225028973444e-17,
+  8.551889705537965e-17,
+  -7.899853966841582e-17,
+  -3.046782079812471e-17,
+  1.0410278456845571e-16,
+  8.912812676025408e-17,
+  3.8292048369240935e-17,
+  3.982015231465646e-17,
+  -7.712630692681488e-17,
+  4.658027591836937e-17,
+  2.667932131342186e-18,
+  2.5382502794888315e-17,
+  -2.8587312100388614e-17,
+  7.70094837980299e-17,
+  -6.770511658794786e-17,
+  -9.667293313452913e-17,
+  -3.0237581349939873e-17,
+  -3.483994556892796e-17,
+  -1.016455327754295e-16,
+  7.949834809697621e-17,
+  -1.0136916471278304e-17,
+  2.4707192569797888e-17,
+  -1.0125679913674773e-16,
+  8.199010020581497e-17,
+  -1.851380418263111e-17,
+  2.960140695448873e-17,
+  1.8227458427912087e-17,
+  3.283107224245627e-17,
+  -6.122763413004143e-17,
+  -1.0619946056195963e-16,
+  8.960767791036668e-17,
+);
+
 /** e^x. Overflows to Infinity above 709.78, underflows to 0 below −745.13; NaN in, NaN out. */
 export function exp(x: number): number {
   const slot = Float64Array.of(x);
@@ -38,18 +108,13 @@ export function expAt(slots: Float64Array, at: number): void {
     slots[at] = x > 0 ? Number.POSITIVE_INFINITY : x < 0 ? 0 : Number.NaN;
     return;
   }
-  const k = (x * INVERSE_LN2 + (x < 0 ? -0.5 : 0.5)) | 0;
-  const high = x - k * LN2_HIGH;
-  const low = k * LN2_LOW;
-  const r = high - low;
+  const m = (x * (32 * INVERSE_LN2) + (x < 0 ? -0.5 : 0.5)) | 0;
+  const j = m & 31;
+  const k = m >> 5;
+  const r = x - m * (LN2_HIGH / 32) - m * (LN2_LOW / 32);
   const t = r * r;
-  const c =
-    r -
-    t *
-      (1.66666666666666019037e-1 +
-        t *
-          (-2.77777777770155933842e-3 + t * (6.61375632143793436117e-5 + t * (-1.6533902205465251539e-6 + t * 4.13813679705723846039e-8))));
-  const y = 1 - (low - (r * c) / (2 - c) - high);
+  const p = r + t * (0.5 + r * (1 / 6) + t * (1 / 24 + r * (1 / 120) + t * (1 / 720)));
+  const y = ROOTS[j] + (ROOTS_REST[j] + ROOTS[j] * p);
   if (k > 1022) slots[at] = y * 2 * POWERS_OF_TWO[k - 1 - LOWEST_EXPONENT];
   else if (k > -1021) slots[at] = y * POWERS_OF_TWO[k - LOWEST_EXPONENT];
   else slots[at] = y * POWERS_OF_TWO[k + 100 - LOWEST_EXPONENT] * POWERS_OF_TWO[-100 - LOWEST_EXPONENT];

@@ -4,6 +4,7 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [177, 'junctions of 0.1 A reverse current through a ground path of 0.1 mΩ'],
   [716, 'a driver of 16 μΩ beside picofarads'],
   [1177, 'more than the drain fed back: the path from where nothing conducts turns back'],
+  [1274, 'an overdrive beyond cut-off without currents: the sums of the ohmic solution cancelled'],
   [1484, 'a pickup of 100 H: 900 V of L/h·I in the sums'],
   [1733, 'a pickup of 100 H with a bias of 1 mA'],
   [2276, '27 fF at the gate beside a ground path of 0.1 mΩ'],
@@ -13,6 +14,7 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [5581, "Newton's last step left 1.2 pA where the law's tail is 32 mV wide"],
   [5996, 'the smooth law’s table where VGS(off) is no larger than its tail'],
   [6701, 'the roots of the square law’s equation nearly one: 1 500 V of overdrive behind 7 kΩ, seven digits lost in the discriminant'],
+  [8897, '45 A through a ground path of 0.1 mΩ, of which the step’s equations left rounding in a state that does not know it'],
   [8612, 'a feedback loop of 10 Ω that floats on megohms: 45 pV of rounding at the output, where the witness allowed 7'],
 ];
 

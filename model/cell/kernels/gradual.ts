@@ -12,7 +12,7 @@ import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
 import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
 import { markKink } from './kinks.ts';
-import { currents, searchPorts } from './ports.ts';
+import { currents, searchPorts, stay } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
@@ -26,10 +26,16 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
   const scale = c[device + 6];
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
-  const lastS = s[n + 5], lineS = lastS - s[n + 36];
-  let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], lineD = lastD - s[n + 37];
-  let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
+  const lastS = s[n + 47], earlierS = s[n + 36], freeS = a + perAs * freeA;
+  const wayS = 2 * lastS - 3 * earlierS + s[n + 49];
+  let vs = lastS > onS ? lastS + (wayS * rateS < 0.5 && wayS * rateS > -0.5 ? wayS : 0) : kneeS;
+  if (grading != 0 && lastS < onS) vs = lastS + wayS;
+  else if (freeS < vs) vs = freeS;
+  const lastD = s[n + 48], earlierD = s[n + 37], freeD = b + perAd * freeA;
+  const wayD = 2 * lastD - 3 * earlierD + s[n + 50];
+  let vd = lastD > onD ? lastD + (wayD * rateD < 0.5 && wayD * rateD > -0.5 ? wayD : 0) : kneeD;
+  if (grading != 0 && lastD < onD) vd = lastD + wayD;
+  else if (freeD < vd) vd = freeD;
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
     let Fs = 0, fs = 0, Fd = 0, fd = 0;
@@ -82,7 +88,8 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 49] = earlierS; s[n + 50] = earlierD; s[n + 36] = lastS; s[n + 37] = lastD;
+      s[n + 47] = vs; s[n + 48] = vd; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -94,10 +101,12 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     if (Math.abs(stepS) < rounding && Math.abs(stepD) < rounding) {
       s[n + 5] = vs; s[n + 6] = vd;
       currents(c, t, device, s, n);
+      stay(s, n);
       return;
     }
   }
   searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
+  stay(s, n);
 }
 
 function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
@@ -117,7 +126,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[35];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[46], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -131,7 +140,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -160,7 +169,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; E0 = I; I0 = I; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
       s[38] = a; s[39] = b; s[40] = I;
@@ -173,9 +182,9 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[46] = F0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -209,7 +218,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[51];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[47], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -227,7 +236,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -256,7 +265,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[39] = a; s[40] = b; s[41] = I;
@@ -277,11 +286,11 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[47] = F0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -331,7 +340,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[48], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -351,7 +360,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -380,7 +389,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[40] = a; s[41] = b; s[42] = I;
@@ -404,12 +413,12 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[48] = F0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -479,7 +488,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[49], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -501,7 +510,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -530,7 +539,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
+    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[41] = a; s[42] = b; s[43] = I;
@@ -557,13 +566,13 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[49] = F0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -657,7 +666,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[50], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -681,7 +690,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -710,7 +719,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[42] = a; s[43] = b; s[44] = I;
@@ -740,14 +749,14 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[50] = F0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -781,7 +790,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[50], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -797,7 +806,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -826,7 +835,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[42] = a; s[43] = b; s[44] = I;
@@ -848,12 +857,12 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[50] = F0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -903,7 +912,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], F0 = s[51], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -923,7 +932,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -952,7 +961,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; }
+    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[43] = a; s[44] = b; s[45] = I;
@@ -977,13 +986,13 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[51] = F0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -1027,7 +1036,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1045,7 +1054,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1074,7 +1083,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[46] = a; s[47] = b; s[48] = I;
@@ -1098,14 +1107,14 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1168,7 +1177,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1190,7 +1199,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1219,7 +1228,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[47] = a; s[48] = b; s[49] = I;
@@ -1246,7 +1255,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1254,7 +1263,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1340,7 +1349,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[56], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1364,7 +1373,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -1393,7 +1402,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
+    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[48] = a; s[49] = b; s[50] = I;
@@ -1423,7 +1432,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1432,7 +1441,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[56] = F0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1470,7 +1479,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1488,7 +1497,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1517,7 +1526,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[46] = a; s[47] = b; s[48] = I;
@@ -1535,14 +1544,14 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1598,7 +1607,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1620,7 +1629,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1649,7 +1658,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[47] = a; s[48] = b; s[49] = I;
@@ -1674,7 +1683,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1682,7 +1691,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1707,7 +1716,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[35];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[46], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1721,7 +1730,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -1750,7 +1759,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; E0 = I; I0 = I; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
       s[38] = a; s[39] = b; s[40] = I;
@@ -1770,9 +1779,9 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[46] = F0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1811,7 +1820,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[51];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[47], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1829,7 +1838,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -1858,7 +1867,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[39] = a; s[40] = b; s[41] = I;
@@ -1882,11 +1891,11 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[47] = F0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1942,7 +1951,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[48], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1962,7 +1971,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1991,7 +2000,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[40] = a; s[41] = b; s[42] = I;
@@ -2018,12 +2027,12 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[48] = F0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -2100,7 +2109,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[49], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2122,7 +2131,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2151,7 +2160,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
+    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[41] = a; s[42] = b; s[43] = I;
@@ -2181,13 +2190,13 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[49] = F0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -2243,7 +2252,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2261,7 +2270,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2290,7 +2299,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[46] = a; s[47] = b; s[48] = I;
@@ -2319,14 +2328,14 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2403,7 +2412,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2425,7 +2434,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2454,7 +2463,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[47] = a; s[48] = b; s[49] = I;
@@ -2486,7 +2495,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2494,7 +2503,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2596,7 +2605,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[56], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2620,7 +2629,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -2649,7 +2658,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
+    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[48] = a; s[49] = b; s[50] = I;
@@ -2684,7 +2693,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2693,7 +2702,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[56] = F0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2824,7 +2833,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], F0 = s[57], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2850,7 +2859,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -2879,7 +2888,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; }
+    if (settled == 0) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; E0 = I; I0 = I; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
       s[49] = a; s[50] = b; s[51] = I;
@@ -2917,7 +2926,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2927,7 +2936,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[57] = F0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -3029,7 +3038,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], F0 = s[59], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3053,7 +3062,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -3082,7 +3091,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; }
+    if (settled == 0) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[51] = a; s[52] = b; s[53] = I;
@@ -3118,7 +3127,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3128,7 +3137,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[59] = F0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -3259,7 +3268,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], F0 = s[60], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3285,7 +3294,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -3314,7 +3323,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; }
+    if (settled == 0) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; E0 = I; I0 = I; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
       s[52] = a; s[53] = b; s[54] = I;
@@ -3353,7 +3362,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3364,7 +3373,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[60] = F0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3384,7 +3393,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
   const slope = c[device + 8];
   const enough = c[device + 17];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], F0 = s[slots + 46], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3422,7 +3431,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + perAs * I; vd = b + perAd * I;
@@ -3451,7 +3460,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       const moved = (perAd - perAs) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; }
+    if (settled == 0) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; E0 = I; I0 = I; }
     vs = a + perAs * I; vd = b + perAd * I;
     if (vs > on || vd > on) {
       s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I;
@@ -3472,10 +3481,10 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 46] = F0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

@@ -104,7 +104,7 @@ export const JUNCTION_D = 4;
 /** Overdrives of the two ends, V. */
 export const OVERDRIVE_S = 5;
 export const OVERDRIVE_D = 6;
-/** Channel current of the sample before the last, for the first guess, A. */
+/** Channel current of the sample before the last, for the first guess, A; EARLIEST_A goes with it. */
 export const EARLIER_A = 7;
 /** Samples that Newton's method left to the bisection behind it. */
 export const FALLBACKS = 8;
@@ -121,7 +121,7 @@ export const CHARGES_D = 25;
 export const BEFORE_S = 33;
 export const BEFORE_D = 34;
 export const PER_A = 35;
-/** Overdrives of the conducting sample before the last, for the first guess of the next. */
+/** Overdrives of the last three conducting samples, the newest first, for the first guess of the next, V: LATEST_S, LATEST_D and so on. */
 export const EARLIER_S = 36;
 export const EARLIER_D = 37;
 /**
@@ -138,4 +138,10 @@ export const MISSED_D = 43;
 /** Of channel.ts: by how much the channel's current exceeds the one given, A, and the derivative of that. */
 export const EXCESS_A = 44;
 export const EXCESS_SLOPE = 45;
-export const STATE_SLOTS = 46;
+/** Channel current of the sample before that of EARLIER_A, A. */
+export const EARLIEST_A = 46;
+export const LATEST_S = 47;
+export const LATEST_D = 48;
+export const EARLIEST_S = 49;
+export const EARLIEST_D = 50;
+export const STATE_SLOTS = 51;

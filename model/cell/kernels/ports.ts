@@ -84,6 +84,16 @@ export function currents(c: Float64Array, t: Float64Array, device: number, s: Fl
   if (c[device + L.GRADING] !== 0) keepCharges(s, n);
 }
 
+/** The next first guess is what stands in the slots: what went before led astray, or nowhere. */
+export function stay(s: Float64Array, n: number): void {
+  s[n + L.LATEST_S] = s[n + L.OVERDRIVE_S];
+  s[n + L.LATEST_D] = s[n + L.OVERDRIVE_D];
+  s[n + L.EARLIER_S] = s[n + L.OVERDRIVE_S];
+  s[n + L.EARLIER_D] = s[n + L.OVERDRIVE_D];
+  s[n + L.EARLIEST_S] = s[n + L.OVERDRIVE_S];
+  s[n + L.EARLIEST_D] = s[n + L.OVERDRIVE_D];
+}
+
 /**
  * By how much the overdrives in the slots miss the two equations whose parts without currents are in GIVEN_A and GIVEN_B, V, into slots, with the currents
  * and slopes that say so. Where the channel is `given` its current is in those parts already.

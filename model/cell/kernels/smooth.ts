@@ -11,7 +11,7 @@ import { evaluate, searched } from './channel.ts';
 import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
 import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
-import { currents, searchPorts } from './ports.ts';
+import { currents, searchPorts, stay } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
@@ -26,10 +26,16 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
   const pieces = c[device + 11];
-  const lastS = s[n + 5], lineS = lastS - s[n + 36];
-  let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], lineD = lastD - s[n + 37];
-  let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
+  const lastS = s[n + 47], earlierS = s[n + 36], freeS = a + perAs * freeA;
+  const wayS = 2 * lastS - 3 * earlierS + s[n + 49];
+  let vs = lastS > onS ? lastS + (wayS * rateS < 0.5 && wayS * rateS > -0.5 ? wayS : 0) : kneeS;
+  if (grading != 0 && lastS < onS) vs = lastS + wayS;
+  else if (freeS < vs) vs = freeS;
+  const lastD = s[n + 48], earlierD = s[n + 37], freeD = b + perAd * freeA;
+  const wayD = 2 * lastD - 3 * earlierD + s[n + 50];
+  let vd = lastD > onD ? lastD + (wayD * rateD < 0.5 && wayD * rateD > -0.5 ? wayD : 0) : kneeD;
+  if (grading != 0 && lastD < onD) vd = lastD + wayD;
+  else if (freeD < vd) vd = freeD;
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
     let Fs = 0, fs = 0, Fd = 0, fd = 0;
@@ -84,7 +90,8 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 49] = earlierS; s[n + 50] = earlierD; s[n + 36] = lastS; s[n + 37] = lastD;
+      s[n + 47] = vs; s[n + 48] = vd; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -96,10 +103,12 @@ function conduct_smooth(c: Float64Array, t: Float64Array, device: number, aI: nu
     if (Math.abs(stepS) < rounding && Math.abs(stepD) < rounding) {
       s[n + 5] = vs; s[n + 6] = vd;
       currents(c, t, device, s, n);
+      stay(s, n);
       return;
     }
   }
   searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
+  stay(s, n);
 }
 
 function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
@@ -120,7 +129,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const slope = c[26];
   const enough = c[35];
   const pieces = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[46], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = (a0 * u + a1 * v) + a2;
@@ -133,7 +142,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -164,7 +173,7 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; E0 = I; I0 = I; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
       s[38] = a; s[39] = b; s[40] = I;
@@ -173,9 +182,9 @@ function smooth0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     I += J;
     output[i] = sign * (vs - vd);
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[46] = F0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -210,7 +219,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const pieces = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[47], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
@@ -227,7 +236,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -258,7 +267,7 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[39] = a; s[40] = b; s[41] = I;
@@ -275,11 +284,11 @@ function smooth1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[47] = F0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -330,7 +339,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[48], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
@@ -349,7 +358,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -380,7 +389,7 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[40] = a; s[41] = b; s[42] = I;
@@ -400,12 +409,12 @@ function smooth2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[48] = F0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -476,7 +485,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[49], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
@@ -497,7 +506,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -528,7 +537,7 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
+    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[41] = a; s[42] = b; s[43] = I;
@@ -551,13 +560,13 @@ function smooth3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[49] = F0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -652,7 +661,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[50], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + (m0_2 * x2 + m0_3 * x3)) + ((m0_4 * u0 + m0_5 * v0) + m0_6 * I0);
@@ -675,7 +684,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -706,7 +715,7 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[42] = a; s[43] = b; s[44] = I;
@@ -732,14 +741,14 @@ function smooth4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[50] = F0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -774,7 +783,7 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[50], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -789,7 +798,7 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -820,7 +829,7 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; }
+    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[42] = a; s[43] = b; s[44] = I;
@@ -838,12 +847,12 @@ function smooth0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[50] = F0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -894,7 +903,7 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], F0 = s[51], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -913,7 +922,7 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -944,7 +953,7 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; }
+    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[43] = a; s[44] = b; s[45] = I;
@@ -965,13 +974,13 @@ function smooth1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[51] = F0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -1016,7 +1025,7 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -1033,7 +1042,7 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1064,7 +1073,7 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[46] = a; s[47] = b; s[48] = I;
@@ -1084,14 +1093,14 @@ function smooth0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1155,7 +1164,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -1176,7 +1185,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1207,7 +1216,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[47] = a; s[48] = b; s[49] = I;
@@ -1230,7 +1239,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1238,7 +1247,7 @@ function smooth1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1325,7 +1334,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[56], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
@@ -1348,7 +1357,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -1379,7 +1388,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
+    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[48] = a; s[49] = b; s[50] = I;
@@ -1405,7 +1414,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1414,7 +1423,7 @@ function smooth2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[56] = F0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1453,7 +1462,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -1470,7 +1479,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1501,7 +1510,7 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[46] = a; s[47] = b; s[48] = I;
@@ -1515,14 +1524,14 @@ function smooth0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     x1 = sign * (vd + off);
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1579,7 +1588,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -1600,7 +1609,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -1631,7 +1640,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[47] = a; s[48] = b; s[49] = I;
@@ -1652,7 +1661,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = sign * (vs - vd);
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1660,7 +1669,7 @@ function smooth1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1686,7 +1695,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const slope = c[26];
   const enough = c[35];
   const pieces = c[29];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[46], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let a = (a0 * u + a1 * v) + a2;
@@ -1699,7 +1708,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a3 * I; vd = b + b3 * I;
@@ -1730,7 +1739,7 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; E0 = I; I0 = I; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
       s[38] = a; s[39] = b; s[40] = I;
@@ -1746,9 +1755,9 @@ function smooth0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       y += c[16] * S + c[17] * D;
     }
     output[i] = y + (y0 * u + y1 * v) + y2 + y3 * I;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[46] = F0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1788,7 +1797,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const pieces = c[45];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[47], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = (m0_0 * x0 + m0_1 * u0) + (m0_2 * v0 + m0_3 * I0);
@@ -1805,7 +1814,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a4 * I; vd = b + b4 * I;
@@ -1836,7 +1845,7 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
       s[39] = a; s[40] = b; s[41] = I;
@@ -1856,11 +1865,11 @@ function smooth1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + (y0 * x0 + y1 * u) + (y2 * v + y3) + y4 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[47] = F0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1917,7 +1926,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[48], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * u0) + (m0_3 * v0 + m0_4 * I0);
@@ -1936,7 +1945,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -1967,7 +1976,7 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[40] = a; s[41] = b; s[42] = I;
@@ -1990,12 +1999,12 @@ function smooth2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[48] = F0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -2073,7 +2082,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[49], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     let r0 = ((m0_0 * x0 + m0_1 * x1) + m0_2 * x2) + ((m0_3 * u0 + m0_4 * v0) + m0_5 * I0);
@@ -2094,7 +2103,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2125,7 +2134,7 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
+    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[41] = a; s[42] = b; s[43] = I;
@@ -2151,13 +2160,13 @@ function smooth3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[49] = F0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -2214,7 +2223,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p0 = 3.5 * x0 - 2.25 * e0 + 0.8333333333333334 * f0 - 0.125 * g0;
@@ -2231,7 +2240,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a5 * I; vd = b + b5 * I;
@@ -2262,7 +2271,7 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
       s[46] = a; s[47] = b; s[48] = I;
@@ -2287,14 +2296,14 @@ function smooth0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * u) + (y3 * v + y4) + y5 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2372,7 +2381,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -2393,7 +2402,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a6 * I; vd = b + b6 * I;
@@ -2424,7 +2433,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
       s[47] = a; s[48] = b; s[49] = I;
@@ -2452,7 +2461,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + y2 * x2) + ((y3 * u + y4 * v) + y5) + y6 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2460,7 +2469,7 @@ function smooth1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2563,7 +2572,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[56], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
@@ -2586,7 +2595,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -2617,7 +2626,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
+    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[48] = a; s[49] = b; s[50] = I;
@@ -2648,7 +2657,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2657,7 +2666,7 @@ function smooth2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[56] = F0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2789,7 +2798,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], F0 = s[57], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p3 = 3.5 * x3 - 2.25 * e3 + 0.8333333333333334 * f3 - 0.125 * g3;
@@ -2814,7 +2823,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -2845,7 +2854,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; }
+    if (settled == 0) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; E0 = I; I0 = I; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
       s[49] = a; s[50] = b; s[51] = I;
@@ -2879,7 +2888,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2889,7 +2898,7 @@ function smooth3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[57] = F0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -2992,7 +3001,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], F0 = s[59], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p1 = 3.5 * x1 - 2.25 * e1 + 0.8333333333333334 * f1 - 0.125 * g1;
@@ -3015,7 +3024,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a7 * I; vd = b + b7 * I;
@@ -3046,7 +3055,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; }
+    if (settled == 0) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
       s[51] = a; s[52] = b; s[53] = I;
@@ -3078,7 +3087,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * u + y5 * v) + y6) + y7 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3088,7 +3097,7 @@ function smooth1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[59] = F0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -3220,7 +3229,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], F0 = s[60], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const p2 = 3.5 * x2 - 2.25 * e2 + 0.8333333333333334 * f2 - 0.125 * g2;
@@ -3245,7 +3254,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + a8 * I; vd = b + b8 * I;
@@ -3276,7 +3285,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; }
+    if (settled == 0) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; E0 = I; I0 = I; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
       s[52] = a; s[53] = b; s[54] = I;
@@ -3311,7 +3320,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     }
     output[i] = y + ((y0 * x0 + y1 * x1) + (y2 * x2 + y3 * x3)) + ((y4 * x4 + y5 * u) + (y6 * v + y7)) + y8 * I;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -3322,7 +3331,7 @@ function smooth2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[60] = F0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3343,7 +3352,7 @@ function looped_smooth(trapezoidal: number, stiff: number): Kernel {
   const enough = c[device + 17];
   const pieces = c[device + 11];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], F0 = s[slots + 46], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     for (let k = 0; k < trapezoidal; k++) weighed[k] = s[k];
@@ -3380,7 +3389,7 @@ function looped_smooth(trapezoidal: number, stiff: number): Kernel {
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    I = 2 * I0 - E0;
+    I = 3 * (I0 - E0) + F0;
     let settled = 0;
     for (let step = 0; step < 40; step++) {
       vs = a + perAs * I; vd = b + perAd * I;
@@ -3411,7 +3420,7 @@ function looped_smooth(trapezoidal: number, stiff: number): Kernel {
       const moved = (perAd - perAs) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; }
+    if (settled == 0) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; E0 = I; I0 = I; }
     vs = a + perAs * I; vd = b + perAd * I;
     if (vs > on || vd > on) {
       s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I;
@@ -3428,10 +3437,10 @@ function looped_smooth(trapezoidal: number, stiff: number): Kernel {
     }
     output[i] = y;
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 46] = F0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

@@ -57,7 +57,7 @@ import { ${helpers} } from './channel.ts';
 import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
 import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
-${law === 'smooth' ? '' : "import { markKink } from './kinks.ts';\n"}import { currents, searchPorts } from './ports.ts';
+${law === 'smooth' ? '' : "import { markKink } from './kinks.ts';\n"}import { currents, searchPorts, stay } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 ${conductor(law, typescript)}

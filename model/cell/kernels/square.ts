@@ -12,7 +12,7 @@ import type { Conductor, Kernel, LoopedKernel } from './kernel.ts';
 import { layoutOf, slotStart } from './layout.ts';
 import { addGraded, keepCharges } from './graded.ts';
 import { markKink } from './kinks.ts';
-import { currents, searchPorts } from './ports.ts';
+import { currents, searchPorts, stay } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
@@ -24,10 +24,16 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const enough = 0.1 * c[device + 17], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
-  const lastS = s[n + 5], lineS = lastS - s[n + 36];
-  let vs = grading != 0 && lastS < onS ? lastS + lineS : Math.min(a + perAs * freeA, lastS > onS ? lastS + (lineS * rateS < 0.5 && lineS * rateS > -0.5 ? lineS : 0) : kneeS);
-  const lastD = s[n + 6], lineD = lastD - s[n + 37];
-  let vd = grading != 0 && lastD < onD ? lastD + lineD : Math.min(b + perAd * freeA, lastD > onD ? lastD + (lineD * rateD < 0.5 && lineD * rateD > -0.5 ? lineD : 0) : kneeD);
+  const lastS = s[n + 47], earlierS = s[n + 36], freeS = a + perAs * freeA;
+  const wayS = 2 * lastS - 3 * earlierS + s[n + 49];
+  let vs = lastS > onS ? lastS + (wayS * rateS < 0.5 && wayS * rateS > -0.5 ? wayS : 0) : kneeS;
+  if (grading != 0 && lastS < onS) vs = lastS + wayS;
+  else if (freeS < vs) vs = freeS;
+  const lastD = s[n + 48], earlierD = s[n + 37], freeD = b + perAd * freeA;
+  const wayD = 2 * lastD - 3 * earlierD + s[n + 50];
+  let vd = lastD > onD ? lastD + (wayD * rateD < 0.5 && wayD * rateD > -0.5 ? wayD : 0) : kneeD;
+  if (grading != 0 && lastD < onD) vd = lastD + wayD;
+  else if (freeD < vd) vd = freeD;
   let junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;
   for (let step = 0; step < 40; step++) {
     let Fs = 0, fs = 0, Fd = 0, fd = 0;
@@ -68,7 +74,8 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 36] = lastS; s[n + 37] = lastD; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 49] = earlierS; s[n + 50] = earlierD; s[n + 36] = lastS; s[n + 37] = lastD;
+      s[n + 47] = vs; s[n + 48] = vd; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -80,10 +87,12 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     if (Math.abs(stepS) < rounding && Math.abs(stepD) < rounding) {
       s[n + 5] = vs; s[n + 6] = vd;
       currents(c, t, device, s, n);
+      stay(s, n);
       return;
     }
   }
   searchPorts(c, t, device, aI, bI, junction, s, n, a, b);
+  stay(s, n);
 }
 
 function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float64Array, s: Float64Array, audio: Float64Array, control: Float64Array, output: Float64Array, from: number, to: number): void {
@@ -102,7 +111,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const scale = c[24];
   const fall = c[27];
   const rise = c[28];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -125,6 +134,9 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 18, 3, 7, s, 0); I = s[40]; }
+      } else if (p < 0) {
+        const over = a + a3 * I, under = b + b3 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a3 * I;
@@ -140,9 +152,9 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = sign * (a3 - b3);
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -175,7 +187,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[44];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -202,6 +214,9 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 34, 4, 9, s, 1); I = s[41]; }
+      } else if (p < 0) {
+        const over = a + a4 * I, under = b + b4 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a4 * I;
@@ -225,11 +240,11 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -278,7 +293,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -307,6 +322,9 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 54, 5, 11, s, 2); I = s[42]; }
+      } else if (p < 0) {
+        const over = a + a5 * I, under = b + b5 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a5 * I;
@@ -333,12 +351,12 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -407,7 +425,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -438,6 +456,9 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[41] = a; s[42] = b; s[43] = I; bent(c, t, 78, 6, 13, s, 3); I = s[43]; }
+      } else if (p < 0) {
+        const over = a + a6 * I, under = b + b6 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a6 * I;
@@ -467,13 +488,13 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -566,7 +587,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -599,6 +620,9 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 106, 7, 15, s, 4); I = s[44]; }
+      } else if (p < 0) {
+        const over = a + a7 * I, under = b + b7 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a7 * I;
@@ -631,14 +655,14 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 106, 7, 15, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -671,7 +695,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -696,6 +720,9 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 34, 4, 9, s, 4); I = s[44]; }
+      } else if (p < 0) {
+        const over = a + a4 * I, under = b + b4 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a4 * I;
@@ -720,12 +747,12 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 34, 4, 9, e, i, s, 4);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0;
+  s[6] = I0; s[7] = S0; s[8] = D0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -774,7 +801,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -803,6 +830,9 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 54, 5, 11, s, 5); I = s[45]; }
+      } else if (p < 0) {
+        const over = a + a5 * I, under = b + b5 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a5 * I;
@@ -830,13 +860,13 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       markKink(c, t, 54, 5, 11, e, i, s, 5);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0;
+  s[7] = I0; s[8] = S0; s[9] = D0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -879,7 +909,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -906,6 +936,9 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
+      } else if (p < 0) {
+        const over = a + a5 * I, under = b + b5 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a5 * I;
@@ -932,14 +965,14 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1001,7 +1034,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1032,6 +1065,9 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
+      } else if (p < 0) {
+        const over = a + a6 * I, under = b + b6 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a6 * I;
@@ -1061,7 +1097,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1069,7 +1105,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1154,7 +1190,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1187,6 +1223,9 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 106, 7, 15, s, 10); I = s[50]; }
+      } else if (p < 0) {
+        const over = a + a7 * I, under = b + b7 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a7 * I;
@@ -1219,7 +1258,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1228,7 +1267,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1265,7 +1304,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1292,6 +1331,9 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
+      } else if (p < 0) {
+        const over = a + a5 * I, under = b + b5 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a5 * I;
@@ -1312,14 +1354,14 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1374,7 +1416,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1405,6 +1447,9 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
+      } else if (p < 0) {
+        const over = a + a6 * I, under = b + b6 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a6 * I;
@@ -1432,7 +1477,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -1440,7 +1485,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1464,7 +1509,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const scale = c[24];
   const fall = c[27];
   const rise = c[28];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1487,6 +1532,9 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 18, 3, 7, s, 0); I = s[40]; }
+      } else if (p < 0) {
+        const over = a + a3 * I, under = b + b3 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a3 * I;
@@ -1509,9 +1557,9 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       s[33] = qs; s[34] = qd; s[5] = vs; s[6] = vd; s[35] = y3;
       markKink(c, t, 18, 3, 7, e, i, s, 0);
     }
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0;
+  s[2] = I0; s[3] = S0; s[4] = D0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1549,7 +1597,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   const rise = c[44];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1576,6 +1624,9 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 34, 4, 9, s, 1); I = s[41]; }
+      } else if (p < 0) {
+        const over = a + a4 * I, under = b + b4 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a4 * I;
@@ -1602,11 +1653,11 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 34, 4, 9, e, i, s, 1);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0;
+  s[3] = I0; s[4] = S0; s[5] = D0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1661,7 +1712,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1690,6 +1741,9 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 54, 5, 11, s, 2); I = s[42]; }
+      } else if (p < 0) {
+        const over = a + a5 * I, under = b + b5 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a5 * I;
@@ -1719,12 +1773,12 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 54, 5, 11, e, i, s, 2);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0;
+  s[4] = I0; s[5] = S0; s[6] = D0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -1800,7 +1854,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1831,6 +1885,9 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[41] = a; s[42] = b; s[43] = I; bent(c, t, 78, 6, 13, s, 3); I = s[43]; }
+      } else if (p < 0) {
+        const over = a + a6 * I, under = b + b6 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a6 * I;
@@ -1863,13 +1920,13 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       markKink(c, t, 78, 6, 13, e, i, s, 3);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0;
+  s[5] = I0; s[6] = S0; s[7] = D0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -1924,7 +1981,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1951,6 +2008,9 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
+      } else if (p < 0) {
+        const over = a + a5 * I, under = b + b5 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a5 * I;
@@ -1982,14 +2042,14 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 54, 5, 11, e, i, s, 8);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0;
+  s[10] = I0; s[11] = S0; s[12] = D0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2065,7 +2125,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2096,6 +2156,9 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
+      } else if (p < 0) {
+        const over = a + a6 * I, under = b + b6 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a6 * I;
@@ -2130,7 +2193,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 78, 6, 13, e, i, s, 9);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2138,7 +2201,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0;
+  s[11] = I0; s[12] = S0; s[13] = D0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2239,7 +2302,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2272,6 +2335,9 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 106, 7, 15, s, 10); I = s[50]; }
+      } else if (p < 0) {
+        const over = a + a7 * I, under = b + b7 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a7 * I;
@@ -2309,7 +2375,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 106, 7, 15, e, i, s, 10);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2318,7 +2384,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0;
+  s[12] = I0; s[13] = S0; s[14] = D0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2448,7 +2514,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2483,6 +2549,9 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[49] = a; s[50] = b; s[51] = I; bent(c, t, 138, 8, 17, s, 11); I = s[51]; }
+      } else if (p < 0) {
+        const over = a + a8 * I, under = b + b8 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a8 * I;
@@ -2523,7 +2592,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       markKink(c, t, 138, 8, 17, e, i, s, 11);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2533,7 +2602,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0;
+  s[13] = I0; s[14] = S0; s[15] = D0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -2634,7 +2703,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2667,6 +2736,9 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[51] = a; s[52] = b; s[53] = I; bent(c, t, 106, 7, 15, s, 13); I = s[53]; }
+      } else if (p < 0) {
+        const over = a + a7 * I, under = b + b7 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a7 * I;
@@ -2705,7 +2777,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 106, 7, 15, e, i, s, 13);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2715,7 +2787,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0;
+  s[15] = I0; s[16] = S0; s[17] = D0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -2845,7 +2917,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2880,6 +2952,9 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[52] = a; s[53] = b; s[54] = I; bent(c, t, 138, 8, 17, s, 14); I = s[54]; }
+      } else if (p < 0) {
+        const over = a + a8 * I, under = b + b8 * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + a8 * I;
@@ -2921,7 +2996,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       markKink(c, t, 138, 8, 17, e, i, s, 14);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[0] = x0;
   s[1] = x1;
@@ -2932,7 +3007,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0;
+  s[16] = I0; s[17] = S0; s[18] = D0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -2951,7 +3026,7 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
   const fall = c[device + 9];
   const rise = c[device + 10];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -2998,6 +3073,9 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
         if (lambda != 0) { s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I; bent(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; }
+      } else if (p < 0) {
+        const over = a + perAs * I, under = b + perAd * I;
+        I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
       }
     }
     vs = a + perAs * I;
@@ -3021,10 +3099,10 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
       markKink(c, t, device, aI, bI, e, i, s, slots);
     }
     u0 = u; v0 = v;
-    E0 = I0; I0 = I; S0 = S; D0 = D;
+    I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

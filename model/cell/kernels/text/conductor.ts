@@ -18,11 +18,22 @@ export function conductor(law: Law, language: Language): string {
     (law === 'square' ? [`if (${v} > 0) { ${F} = scale * ${v} * ${v}; ${f} = 2 * scale * ${v}; }`] : lawText(law, v, F, f, language)).map(
       (line) => `    ${line.replaceAll('DEVICE', 'device').replaceAll('TERM', `n + ${L.TERM_S}`)}`,
     );
-  /** Where an end last conducted, a step further along its line unless that is half of nVT; or just into conduction; with graded capacitances always along its line. */
-  const start = (end: 'S' | 'D', free: string, over: number, earlier: number) => [
-    `  ${constant} last${end} = ${slot(over)}, line${end} = last${end} - ${slot(earlier)};`,
-    `  ${variable} v${end === 'S' ? 's' : 'd'} = grading != 0 && last${end} < on${end} ? last${end} + line${end} : ${least}(${free}, last${end} > on${end} ? last${end} + (line${end} * rate${end} < 0.5 && line${end} * rate${end} > -0.5 ? line${end} : 0) : knee${end});`,
-  ];
+  /**
+   * Where an end last conducted, a step further along its parabola unless that is half of nVT; or just into conduction; with graded capacitances always
+   * along its parabola.
+   */
+  const start = (end: 'S' | 'D', free: string, latest: number, earlier: number, earliest: number) => {
+    const v = `v${end.toLowerCase()}`;
+    const way = `way${end}`;
+    return [
+      `  ${constant} last${end} = ${slot(latest)}, earlier${end} = ${slot(earlier)}, free${end} = ${free};`,
+      `  ${constant} ${way} = 2 * last${end} - 3 * earlier${end} + ${slot(earliest)};`,
+      `  ${variable} ${v} = last${end} > on${end} ? last${end} + (${way} * rate${end} < 0.5 && ${way} * rate${end} > -0.5 ? ${way} : 0) : knee${end};`,
+      `  if (grading != 0 && last${end} < on${end}) ${v} = last${end} + ${way};`,
+      // By a branch, which the processor foresees: the smaller of two would wait for the current that flows without junctions.
+      `  else if (free${end} < ${v}) ${v} = free${end};`,
+    ];
+  };
   const cut = (end: 'S' | 'D', v: string) =>
     `    ${constant} step${end} = whole${end} * rate${end} <= 2 ? whole${end} : ${v} < on${end} ? ${least}(whole${end}, knee${end} - ${v}) : (2 + whole${end} * rate${end} / (1 + 0.1 * whole${end} * rate${end})) / rate${end};`;
   return [
@@ -36,8 +47,8 @@ export function conductor(law: Law, language: Language): string {
     ...deviceConstants(law, device)
       .filter(([name]) => !['on', 'fall', 'rise', 'enough'].includes(name))
       .map(([name, value]) => `  ${constant} ${name} = ${value};`),
-    ...start('S', 'a + perAs * freeA', L.OVERDRIVE_S, L.EARLIER_S),
-    ...start('D', 'b + perAd * freeA', L.OVERDRIVE_D, L.EARLIER_D),
+    ...start('S', 'a + perAs * freeA', L.LATEST_S, L.EARLIER_S, L.EARLIEST_S),
+    ...start('D', 'b + perAd * freeA', L.LATEST_D, L.EARLIER_D, L.EARLIEST_D),
     `  ${variable} junctionS = 0, junctionD = 0, clamped = 0, movedS = 1, movedD = 1;`,
     `  for (${counter} step = 0; step < ${NEWTON_STEPS}; step++) {`,
     `    ${variable} Fs = 0, fs = 0, Fd = 0, fd = 0;`,
@@ -66,7 +77,8 @@ export function conductor(law: Law, language: Language): string {
     cut('D', 'vd'),
     '    vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;',
     `    if (${absolute}(stepS) < enough && ${absolute}(stepD) < enough) {`,
-    `      ${slot(L.EARLIER_S)} = lastS; ${slot(L.EARLIER_D)} = lastD; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
+    `      ${slot(L.EARLIEST_S)} = earlierS; ${slot(L.EARLIEST_D)} = earlierD; ${slot(L.EARLIER_S)} = lastS; ${slot(L.EARLIER_D)} = lastD;`,
+    `      ${slot(L.LATEST_S)} = vs; ${slot(L.LATEST_D)} = vd; ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
     `      ${slot(L.CHANNEL_A)} = channel + fs * stepS - fd * stepD;`,
     `      ${slot(L.JUNCTION_S)} = S + slopeS * stepS; ${slot(L.JUNCTION_D)} = D + slopeD * stepD;`,
     '      if (grading != 0) {',
@@ -78,10 +90,12 @@ export function conductor(law: Law, language: Language): string {
     `    if (${absolute}(stepS) < rounding && ${absolute}(stepD) < rounding) {`,
     `      ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd;`,
     '      currents(c, t, device, s, n);',
+    '      stay(s, n);',
     '      return;',
     '    }',
     '  }',
     '  searchPorts(c, t, device, aI, bI, junction, s, n, a, b);',
+    '  stay(s, n);',
     '}',
   ].join('\n');
 }

@@ -56,6 +56,10 @@ export function squareSolution(
     `      I = -2 * scale * b * b / (1 + rise * b + ${sqrt}(1 + 2 * rise * b));`,
     '    }',
     `    if (lambda != 0) { ${given} ${slot(L.GIVEN_FREE)} = I; bent(c, t, ${places}, s, ${slotsOf(slot)}); I = ${slot(L.GIVEN_FREE)}; }`,
+    '  } else if (p < 0) {',
+    // Here what stands there without currents is beyond cut-off, and the sums above cancel: one step of Newton's method makes that good.
+    `    ${constant} over = a + ${aI} * I, under = b + ${bI} * I;`,
+    '    I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);',
     '  }',
     '}',
     `vs = a + ${aI} * I;`,
@@ -99,6 +103,17 @@ export function lawText(law: Law, v: string, F: string, f: string, { constant, s
   ];
 }
 
+/** Past currents that Newton's first guess runs through, from sample to sample; the square law is solved without a guess. */
+export function guessText(law: Law, slot: (index: number) => string): { open: string; keep: string; close: string } {
+  if (law === 'square') return { open: '', keep: '', close: '' };
+  return {
+    open: `, E0 = ${slot(L.EARLIER_A)}, F0 = ${slot(L.EARLIEST_A)}`,
+    keep: 'F0 = E0; E0 = I0; ',
+    close: ` ${slot(L.EARLIER_A)} = E0; ${slot(L.EARLIEST_A)} = F0;`,
+  };
+}
+
+/** Newton's method from the parabola through the last three currents. A search may end far from these: the next guess then is what it found. */
 export function newtonSolution(
   law: Law,
   aI: string,
@@ -112,7 +127,7 @@ export function newtonSolution(
   const text = (v: string, F: string, f: string) =>
     lawText(law, v, F, f, language).map((line) => `  ${line.replaceAll('DEVICE', device).replaceAll('TERM', slot(L.TERM_S).slice(2, -1))}`);
   return [
-    'I = 2 * I0 - E0;',
+    'I = 3 * (I0 - E0) + F0;',
     `${variable} settled = 0;`,
     `for (${language.variable === 'let' ? 'let' : 'int'} step = 0; step < ${NEWTON_STEPS}; step++) {`,
     `  vs = a + ${aI} * I; vd = b + ${bI} * I;`,
@@ -129,7 +144,7 @@ export function newtonSolution(
     `  ${language.constant} moved = (${bI} - ${aI}) * change;`,
     '  if (moved < enough && moved > -enough) { settled = 1; break; }',
     '}',
-    `if (settled == 0) { ${searchText(places, slot)} }`,
+    `if (settled == 0) { ${searchText(places, slot)} E0 = I; I0 = I; }`,
     `vs = a + ${aI} * I; vd = b + ${bI} * I;`,
   ];
 }

@@ -2,7 +2,7 @@ import type { Law } from '../../../design/types.ts';
 import * as L from '../layout.ts';
 import { conductorName } from './conductor.ts';
 import { typescript } from './language.ts';
-import { channelNoise, deviceConstants, newtonSolution, squareSolution } from './law.ts';
+import { channelNoise, deviceConstants, guessText, newtonSolution, squareSolution } from './law.ts';
 
 export function loopedName(law: Law): string {
   return `looped_${law}`;
@@ -18,6 +18,7 @@ export function loopedKernel(law: Law): string {
   const slot = (index: number) => `s[slots + ${index}]`;
   const places = 'device, aI, bI';
   const bends = law !== 'smooth';
+  const guess = guessText(law, slot);
   const solution =
     law === 'square'
       ? squareSolution('perAs', 'perAd', places, slot, typescript)
@@ -34,7 +35,7 @@ export function loopedKernel(law: Law): string {
     '  const perAs = c[aI], perAd = c[bI];',
     ...deviceConstants(law, device).map(([name, value]) => `  ${constant} ${name} = ${value};`),
     `  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`,
-    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}${guess.open}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
     '  for (let i = from; i < to; i++) {',
     ...[
       `${constant} u = audio[i], v = control[i], noise = i * (rows + 1);`,
@@ -95,11 +96,11 @@ export function loopedKernel(law: Law): string {
           ]
         : []),
       'u0 = u; v0 = v;',
-      'E0 = I0; I0 = I; S0 = S; D0 = D;',
+      `${guess.keep}I0 = I; S0 = S; D0 = D;`,
     ].map((line) => `    ${line}`),
     '  }',
     `  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`,
-    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
+    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0;${guess.close}`,
     `  if (to > from) { ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; }`,
     '  };',
     '}',

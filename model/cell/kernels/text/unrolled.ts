@@ -3,7 +3,7 @@ import type { Law } from '../../../design/types.ts';
 import * as L from '../layout.ts';
 import { conductorName } from './conductor.ts';
 import type { Language } from './language.ts';
-import { channelNoise, deviceConstants, newtonSolution, squareSolution } from './law.ts';
+import { channelNoise, deviceConstants, guessText, newtonSolution, squareSolution } from './law.ts';
 
 /**
  * What a kernel is written out for: the number of trapezoidal states; for each stiff state what it is the voltage of: `g` gate to source, `m` gate to
@@ -35,6 +35,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
   const stateShortcut = (i: number) => (i < trapezoidal ? null : shortcut(shape.stiff[i - trapezoidal]));
   const hasRow = (r: number) => (r === all.outputRow ? shape.output === 'x' : r < 2 || stateShortcut(r - 2) === null);
   const { constant, variable } = language;
+  const guess = guessText(law, (index) => `s[${slots + index}]`);
   const rowName = (r: number) => (r === 0 ? 'a' : r === 1 ? 'b' : r === all.outputRow ? 'y' : `n${r - 2}_`);
   const device = (index: number) => `c[${all.device + index}]`;
   const weight = (r: number, k: number) => `c[${all.junction + r * L.JUNCTION_WIDTH + k}]`;
@@ -72,7 +73,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
   });
   if (n > 0) lines.push(`  ${variable} u0 = ${slot(L.OLD_AUDIO)}, v0 = ${slot(L.OLD_CONTROL)};`);
   lines.push(
-    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}, E0 = ${slot(L.EARLIER_A)}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
+    `  ${variable} I0 = ${slot(L.CHANNEL_A)}, S0 = ${slot(L.JUNCTION_S)}, D0 = ${slot(L.JUNCTION_D)}${guess.open}, vs = ${slot(L.OVERDRIVE_S)}, vd = ${slot(L.OVERDRIVE_D)};`,
     loop,
   );
 
@@ -133,7 +134,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
     );
   }
   if (n > 0) body.push('u0 = u; v0 = v;');
-  body.push('E0 = I0; I0 = I; S0 = S; D0 = D;');
+  body.push(`${guess.keep}I0 = I; S0 = S; D0 = D;`);
   lines.push(...body.map((line) => `    ${line}`), '  }');
 
   lines.push(...states.map((i) => `  s[${i}] = x${i};`));
@@ -142,7 +143,7 @@ export function kernel(law: Law, shape: Shape, language: Language): string {
   });
   if (n > 0) lines.push(`  ${slot(L.OLD_AUDIO)} = u0; ${slot(L.OLD_CONTROL)} = v0;`);
   lines.push(
-    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0; ${slot(L.EARLIER_A)} = E0;`,
+    `  ${slot(L.CHANNEL_A)} = I0; ${slot(L.JUNCTION_S)} = S0; ${slot(L.JUNCTION_D)} = D0;${guess.close}`,
     `  if (to > from) { ${slot(L.OVERDRIVE_S)} = vs; ${slot(L.OVERDRIVE_D)} = vd; }`,
     '}',
   );
