@@ -207,21 +207,33 @@ export function copyOf(cell: Cell): Cell {
 
 /** Puts new values in force; the state stays as it is. False, with the old coefficients kept, when the network would be singular. */
 export function loadValues(cell: Cell, values: Float64Array): boolean {
-  if (!pack(cell, values)) return false;
+  if (!pack(cell, values, true)) return false;
+  arrive(cell);
+  return true;
+}
+
+/** The same with what `from`, a cell of the same circuit that advances by another step, has just computed for its values. */
+export function loadValuesOf(cell: Cell, from: Cell): boolean {
+  cell.reduction.response.set(from.reduction.response);
+  cell.reduction.values.set(from.reduction.values);
+  if (!discretise(cell.reduction, cell.stepSec)) return false;
+  cell.values.set(from.values);
+  packStep(cell);
   arrive(cell);
   return true;
 }
 
 /**
  * Sets out for new values, to be reached in `samples` steps of `approach`: the coefficients are exact here, half way, with the values `between`, and
- * there, and follow the parabola through these, unless values are too far apart for that. False, and nothing changes, when a network would be singular.
+ * there, and follow the parabola through these, unless values are too far apart for that. `last` says that the values are those of the end of a move, and are to
+ * be in force as if they had been loaded. False, and nothing changes, when a network would be singular.
  */
-export function aimAt(cell: Cell, between: Float64Array, values: Float64Array, samples: number): boolean {
+export function aimAt(cell: Cell, between: Float64Array, values: Float64Array, samples: number, last: boolean): boolean {
   const { coefficients, middle, target, increment, bend } = cell;
   const near = areNear(cell, values);
-  const solved = pack(cell, between);
+  const solved = pack(cell, between, false);
   middle.set(target);
-  if (!solved || !pack(cell, values)) {
+  if (!solved || !pack(cell, values, last)) {
     target.set(coefficients);
     cell.moving[0] = 0;
     cell.movingMemory[0] = 0;
@@ -248,13 +260,13 @@ export function aimAt(cell: Cell, between: Float64Array, values: Float64Array, s
 }
 
 /** The coefficients of new values, into `target`. */
-function pack(cell: Cell, values: Float64Array): boolean {
+function pack(cell: Cell, values: Float64Array, refined: boolean): boolean {
   const { reduction, stepSec } = cell;
   const { values: moved } = reduction;
   for (let i = 0; i < moved.length; i++) moved[i] = values[i];
-  if (!respond(reduction) || !discretise(reduction, stepSec)) {
+  if (!respond(reduction, refined) || !discretise(reduction, stepSec)) {
     for (let i = 0; i < moved.length; i++) moved[i] = cell.values[i];
-    respond(reduction);
+    respond(reduction, refined);
     discretise(reduction, stepSec);
     return false;
   }

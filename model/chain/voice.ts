@@ -3,7 +3,7 @@
  * lines in volts and gain, by equal ratios in conductance, capacitance and inductance; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
  * its coefficients go from one exact set to the next as `aimAt` in cell.ts says.
  */
-import { aimAt, approach, approachMemory, arrive, type Cell, createCell, inheritStates, loadValues, settle } from '../cell/cell.ts';
+import { aimAt, approach, approachMemory, arrive, type Cell, createCell, inheritStates, loadValuesOf, settle } from '../cell/cell.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';
@@ -269,9 +269,9 @@ function beginSlice(voice: Voice): boolean {
   for (let channel = 0; channel < voice.lanes.length; channel++) {
     const { cell, values } = voice.lanes[channel];
     aim(values, end, middle, updateEvery);
-    if (!aimAt(cell, values.between, values.aim, updateEvery)) regular = false;
+    if (!aimAt(cell, values.between, values.aim, updateEvery, end === 1)) regular = false;
   }
-  return loadValues(voice.quiet.cell, voice.lanes[0].values.aim) && regular;
+  return loadValuesOf(voice.quiet.cell, voice.lanes[0].cell) && regular;
 }
 
 function stepSlice(voice: Voice): void {

@@ -16,6 +16,7 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [6701, 'the roots of the square law’s equation nearly one: 1 500 V of overdrive behind 7 kΩ, seven digits lost in the discriminant'],
   [8897, '45 A through a ground path of 0.1 mΩ, of which the step’s equations left rounding in a state that does not know it'],
   [8612, 'a feedback loop of 10 Ω that floats on megohms: 45 pV of rounding at the output, where the witness allowed 7'],
+  [29914, 'a bias of 1 mA through 10 MΩ: 10 kV in the network’s sums left 3 pV'],
 ];
 
 export const CHAIN_SEEDS: readonly (readonly [seed: number, found: string])[] = [
