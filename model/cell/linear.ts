@@ -60,6 +60,18 @@ export function refine(
       miss[row * width + column] = sum;
     }
   }
+  makeGood(factored, pivots, size, solved, miss, width);
+}
+
+/** Takes out of the `solved` columns what is missed, which is used up. */
+export function makeGood(
+  factored: Float64Array,
+  pivots: Int32Array,
+  size: number,
+  solved: Float64Array,
+  miss: Float64Array,
+  width: number,
+): void {
   solve(factored, pivots, size, miss, width);
   for (let i = 0; i < size * width; i++) solved[i] += miss[i];
 }

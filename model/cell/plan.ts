@@ -35,6 +35,13 @@ export interface Stamps {
   readonly sign: Float64Array;
 }
 
+/** The same sums for what is taken from them exactly: conductances between two nodes apart, whose large part otherwise hides a small one beside it. */
+export interface Branches {
+  /** Rows of both ends, and the element, one after the other. */
+  readonly bridges: Int32Array;
+  readonly others: Stamps;
+}
+
 export interface Plan {
   readonly shape: string;
   readonly elements: readonly Element[];
@@ -51,6 +58,7 @@ export interface Plan {
   readonly stateRows: Int32Array;
   readonly stateRowsLess: Int32Array;
   readonly matrix: Stamps;
+  readonly branches: Branches;
   /** Right-hand sides, `size` × `width`, that do not depend on values; and the constants' column, which does. */
   readonly columns: Float64Array;
   readonly constants: Stamps;
@@ -69,6 +77,7 @@ export interface Plan {
 export interface RestPlan {
   readonly size: number;
   readonly matrix: Stamps;
+  readonly branches: Branches;
   readonly columns: Float64Array;
   readonly constants: Stamps;
   /** For each state the unknown that it is, and the one taken from it (−1 for none): a capacitor's ends, an inductor's current. */
@@ -127,6 +136,7 @@ export function planCircuit(circuit: Circuit, noise = false): Plan {
     stateRows: Int32Array.from(stateElements, (index) => branchOf.get(index) ?? endRow(elements[index], row, 'a')),
     stateRowsLess: Int32Array.from(stateElements, (index) => (branchOf.has(index) ? -1 : endRow(elements[index], row, 'b'))),
     matrix: stampsOf(matrixStamps(elements, places)),
+    branches: branchesOf(elements, places),
     columns: fixedColumns(elements, places, stateElements, noisy, ends, width),
     constants: stampsOf(constantStamps(elements, places)),
     width,
@@ -168,6 +178,7 @@ function planRest(
   return {
     size: places.size,
     matrix: stampsOf(matrixStamps(elements, places)),
+    branches: branchesOf(elements, places),
     columns: fixedColumns(elements, places, [], new Int32Array(0), ends, DRIVES),
     constants: stampsOf(constantStamps(elements, places)),
     stateRows: Int32Array.from(stateElements, (index) => branchOf.get(index) ?? end(index, 'a')),
@@ -232,6 +243,15 @@ function matrixStamps(elements: readonly Element[], { row, branchOf, size }: Pla
     }
   });
   return list;
+}
+
+function branchesOf(elements: readonly Element[], places: Places): Branches {
+  const isBridge = (element: Element) => element.kind === 'conductance' && places.row(element.a) >= 0 && places.row(element.b) >= 0;
+  const bridges = elements.flatMap((element, index) =>
+    element.kind === 'conductance' && isBridge(element) ? [places.row(element.a), places.row(element.b), index] : [],
+  );
+  const others = matrixStamps(elements, places).filter(([, element]) => element < 0 || !isBridge(elements[element]));
+  return { bridges: Int32Array.from(bridges), others: stampsOf(others) };
 }
 
 /** Right-hand side of the constants: supplies at their branch, drawn currents at their node. */

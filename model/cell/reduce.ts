@@ -12,7 +12,7 @@
  *
  * `reduce` writes in place and allocates nothing, so that values can be moved on the audio thread.
  */
-import { factor, refine, solve } from './linear.ts';
+import { factor, makeGood, refine, solve } from './linear.ts';
 import { CHANNEL, CONSTANT, DRIVES, type Plan, type RestPlan } from './plan.ts';
 
 /** Working memory and result of a reduction. Row-major; widths in `layout`. */
@@ -32,9 +32,7 @@ export interface Reduction {
     readonly matrix: Float64Array;
     readonly pivots: Int32Array;
     readonly columns: Float64Array;
-    /** The network's equations as they stand before they are factored, both sides, and what their solution misses. */
-    readonly network: Float64Array;
-    readonly given: Float64Array;
+    /** What the network's solution misses. */
     readonly missed: Float64Array;
     /** Of the step: both sides of the rows' equations; the left one factored, the solution, and what that misses. */
     readonly left: Float64Array;
@@ -77,8 +75,6 @@ export function createReduction(plan: Plan): Reduction {
       matrix: new Float64Array(largest * largest),
       pivots: new Int32Array(largest),
       columns: new Float64Array(largest * plan.width),
-      network: new Float64Array(largest * largest),
-      given: new Float64Array(largest * plan.width),
       missed: new Float64Array(largest * plan.width),
       left: new Float64Array(n * n),
       right: new Float64Array(n * width),
@@ -113,22 +109,21 @@ function solveNetwork(
   rows: Float64Array,
   refined: boolean,
 ): boolean {
-  const { size, matrix, constants } = network;
+  const { size, matrix } = network;
   const n = plan.states.length;
   work.matrix.fill(0);
   for (let i = 0; i < matrix.target.length; i++) {
     const element = matrix.element[i];
     work.matrix[matrix.target[i]] += matrix.sign[i] * (element < 0 ? 1 : values[element]);
   }
-  if (refined) work.network.set(work.matrix);
   if (!factor(work.matrix, work.pivots, size)) return false;
-  work.columns.set(network.columns);
-  for (let i = 0; i < constants.target.length; i++) {
-    work.columns[constants.target[i] * width + stateColumns + CONSTANT] += constants.sign[i] * values[constants.element[i]];
-  }
-  if (refined) work.given.set(work.columns);
+  putDrives(network, values, width, stateColumns, work.columns);
   solve(work.matrix, work.pivots, size, work.columns, width);
-  if (refined) refine(work.network, work.matrix, work.pivots, size, work.given, work.columns, work.missed, width);
+  if (refined) {
+    putDrives(network, values, width, stateColumns, work.missed);
+    takeBranches(network, values, width, work.columns, work.missed);
+    makeGood(work.matrix, work.pivots, size, work.columns, work.missed, width);
+  }
   for (let state = 0; state < n; state++) {
     copyRow(rows, state, work.columns, network.stateRows[state], width);
     subtractRow(rows, state, work.columns, network.stateRowsLess[state], width);
@@ -139,6 +134,35 @@ function solveNetwork(
   subtractRow(rows, n + 1, work.columns, plan.drain, width);
   copyRow(rows, n + 2, work.columns, plan.output, width);
   return true;
+}
+
+/** Right-hand sides of the network's equations. */
+function putDrives({ columns, constants }: RestPlan, values: Float64Array, width: number, stateColumns: number, to: Float64Array): void {
+  to.set(columns);
+  for (let i = 0; i < constants.target.length; i++) {
+    to[constants.target[i] * width + stateColumns + CONSTANT] += constants.sign[i] * values[constants.element[i]];
+  }
+}
+
+/** Takes the left-hand sides of a solution from the right-hand ones in `from`: the current of a conductance from the difference of its ends, the same at both. */
+function takeBranches({ size, branches }: RestPlan, values: Float64Array, width: number, solved: Float64Array, from: Float64Array): void {
+  const { bridges, others } = branches;
+  for (let i = 0; i < others.target.length; i++) {
+    const weight = others.sign[i] * (others.element[i] < 0 ? 1 : values[others.element[i]]);
+    const row = Math.floor(others.target[i] / size);
+    const unknown = others.target[i] - row * size;
+    for (let column = 0; column < width; column++) from[row * width + column] -= weight * solved[unknown * width + column];
+  }
+  for (let i = 0; i < bridges.length; i += 3) {
+    const a = bridges[i] * width;
+    const b = bridges[i + 1] * width;
+    const conductance = values[bridges[i + 2]];
+    for (let column = 0; column < width; column++) {
+      const current = conductance * (solved[a + column] - solved[b + column]);
+      from[a + column] -= current;
+      from[b + column] += current;
+    }
+  }
 }
 
 function copyRow(to: Float64Array, toRow: number, from: Float64Array, fromRow: number, width: number): void {

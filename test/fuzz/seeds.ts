@@ -17,6 +17,8 @@ export const CELL_SEEDS: readonly (readonly [seed: number, found: string])[] = [
   [8897, '45 A through a ground path of 0.1 mΩ, of which the step’s equations left rounding in a state that does not know it'],
   [8612, 'a feedback loop of 10 Ω that floats on megohms: 45 pV of rounding at the output, where the witness allowed 7'],
   [29914, 'a bias of 1 mA through 10 MΩ: 10 kV in the network’s sums left 3 pV'],
+  [35524, '1 Ω beside 100 MΩ: the sum of both in a node’s equation lost nine digits of the smaller'],
+  [37995, 'the smooth law’s table at its error, which the witness had rounded down'],
 ];
 
 export const CHAIN_SEEDS: readonly (readonly [seed: number, found: string])[] = [
