@@ -24,75 +24,35 @@ function powersOfTwo(): Float64Array {
   return table;
 }
 
-/** 2^(j/32), j from 0 up, and what each misses by its rounding: from 80-digit arithmetic. */
-const ROOTS = Float64Array.of(
-  1.0,
-  1.0218971486541166,
-  1.0442737824274138,
-  1.0671404006768237,
-  1.0905077326652577,
-  1.1143867425958924,
-  1.1387886347566916,
-  1.1637248587775775,
-  1.189207115002721,
-  1.215247359980469,
-  1.241857812073484,
-  1.2690509571917332,
-  1.2968395546510096,
-  1.3252366431597413,
-  1.3542555469368927,
-  1.383909881963832,
-  1.4142135623730951,
-  1.4451808069770467,
-  1.4768261459394993,
-  1.5091644275934228,
-  1.5422108254079407,
-  1.5759808451078865,
-  1.6104903319492543,
-  1.645755478153965,
-  1.681792830507429,
-  1.718619298122478,
-  1.7562521603732995,
-  1.7947090750031072,
-  1.8340080864093424,
-  1.8741676341103,
-  1.9152065613971474,
-  1.9571441241754002,
-);
-const ROOTS_REST = Float64Array.of(
-  0.0,
-  5.109225028973444e-17,
-  8.551889705537965e-17,
-  -7.899853966841582e-17,
-  -3.046782079812471e-17,
-  1.0410278456845571e-16,
-  8.912812676025408e-17,
-  3.8292048369240935e-17,
-  3.982015231465646e-17,
-  -7.712630692681488e-17,
-  4.658027591836937e-17,
-  2.667932131342186e-18,
-  2.5382502794888315e-17,
-  -2.8587312100388614e-17,
-  7.70094837980299e-17,
-  -6.770511658794786e-17,
-  -9.667293313452913e-17,
-  -3.0237581349939873e-17,
-  -3.483994556892796e-17,
-  -1.016455327754295e-16,
-  7.949834809697621e-17,
-  -1.0136916471278304e-17,
-  2.4707192569797888e-17,
-  -1.0125679913674773e-16,
-  8.199010020581497e-17,
-  -1.851380418263111e-17,
-  2.960140695448873e-17,
-  1.8227458427912087e-17,
-  3.283107224245627e-17,
-  -6.122763413004143e-17,
-  -1.0619946056195963e-16,
-  8.960767791036668e-17,
-);
+/** 2^(1/32) and what it misses by its rounding, from 60-digit arithmetic. */
+const ROOT = 1.0218971486541166;
+const ROOT_REST = 5.109225028973444e-17;
+
+/** 2^(j/32), j from 0 up, each followed by what it misses by its rounding: products in twice the digits (Dekker, Numer. Math. 18 (1971) 224, from memory). */
+const ROOTS = rootsOfTwo();
+
+function rootsOfTwo(): Float64Array {
+  const table = new Float64Array(64);
+  const [rootUpper, rootLower] = halves(ROOT);
+  table[0] = 1;
+  for (let j = 2; j < 64; j += 2) {
+    const high = table[j - 2];
+    const [upper, lower] = halves(high);
+    const product = high * ROOT;
+    const rounding = lower * rootLower - (product - upper * rootUpper - lower * rootUpper - upper * rootLower);
+    const rest = rounding + (high * ROOT_REST + table[j - 1] * ROOT);
+    table[j] = product + rest;
+    table[j + 1] = rest - (table[j] - product);
+  }
+  return table;
+}
+
+/** Two numbers of half the digits that add up to this. */
+function halves(value: number): [number, number] {
+  const scaled = 134217729 * value;
+  const upper = scaled - (scaled - value);
+  return [upper, value - upper];
+}
 
 /** e^x. Overflows to Infinity above 709.78, underflows to 0 below −745.13; NaN in, NaN out. */
 export function exp(x: number): number {
@@ -109,12 +69,12 @@ export function expAt(slots: Float64Array, at: number): void {
     return;
   }
   const m = (x * (32 * INVERSE_LN2) + (x < 0 ? -0.5 : 0.5)) | 0;
-  const j = m & 31;
+  const j = 2 * (m & 31);
   const k = m >> 5;
   const r = x - m * (LN2_HIGH / 32) - m * (LN2_LOW / 32);
   const t = r * r;
   const p = r + t * (0.5 + r * (1 / 6) + t * (1 / 24 + r * (1 / 120) + t * (1 / 720)));
-  const y = ROOTS[j] + (ROOTS_REST[j] + ROOTS[j] * p);
+  const y = ROOTS[j] + (ROOTS[j + 1] + ROOTS[j] * p);
   if (k > 1022) slots[at] = y * 2 * POWERS_OF_TWO[k - 1 - LOWEST_EXPONENT];
   else if (k > -1021) slots[at] = y * POWERS_OF_TWO[k - LOWEST_EXPONENT];
   else slots[at] = y * POWERS_OF_TWO[k + 100 - LOWEST_EXPONENT] * POWERS_OF_TWO[-100 - LOWEST_EXPONENT];
