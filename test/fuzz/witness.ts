@@ -154,7 +154,8 @@ export class Witness {
     const Fd = term(d, s);
     const bit = ROUNDING * (Math.abs(vgs) + Math.abs(vgd) + Math.abs(constants.gateOffV));
     const steepest = channelTerm(constants, Math.max(s, d) + bit) - channelTerm(constants, Math.max(s, d) - bit);
-    const tableA = numbers.law === 'smooth' ? TABLE_ERROR * constants.scale : 0;
+    // Of both ends' terms.
+    const tableA = numbers.law === 'smooth' ? 2 * TABLE_ERROR * constants.scale : 0;
     const past = 1 + lambdaPerV * Math.max(0, -s, -d);
     return {
       channel: Fs - Fd,
