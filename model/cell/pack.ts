@@ -7,7 +7,7 @@ import { TERMS } from '../device/table.ts';
 import type { Cell } from './cell.ts';
 import * as L from './kernels/layout.ts';
 import { packNoise } from './noise.ts';
-import { CHANNEL, CONSTANT, DRIVES, GATE_DRAIN } from './plan.ts';
+import { CHANNEL, CONSTANT, DRIVES } from './plan.ts';
 
 /** Below this many nVT, and where less than this flows above it, a junction carries its reverse current and no more. */
 const OFF_BELOW = -10;
@@ -50,14 +50,13 @@ export function packStep(cell: Cell): void {
     const sign = r < 2 ? polarity : 1;
     for (let k = 0; k < n; k++) c[to + k] = sign * step[from + k];
     for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * step[from + columns.newU + k];
-    const j = from + columns.newJ;
-    packCurrents(cell, c, to, r, row, all, sign * polarity * step[j], sign * polarity * step[j + 1]);
+    packCurrents(cell, c, to, r, row, all, step, from + columns.newJ, sign * polarity);
     c[to + row.constant] += sign * step[from + columns.constant] - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
   }
   const from = (n + 2) * plan.width;
   const to = all.outputRow * row.width;
   for (let k = 0; k < n + 2; k++) c[to + k] = response[from + k];
-  packCurrents(cell, c, to, all.outputRow, row, all, polarity * response[from + n + CHANNEL], polarity * response[from + n + GATE_DRAIN]);
+  packCurrents(cell, c, to, all.outputRow, row, all, response, from + n + CHANNEL, polarity);
   c[to + row.constant] += response[from + n + CONSTANT];
   packMemory(cell);
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);
@@ -76,7 +75,7 @@ function packGrading(cell: Cell, c: Float64Array, at: number): void {
   if (grading > 0) c[at + L.ON_V] = Number.NEGATIVE_INFINITY;
 }
 
-/** A row's weights of the port currents, and as its constant what the steady reverse currents add. */
+/** A row's weights of the port currents, `weights` from `at` on times `sign`, and as its constant what the steady reverse currents add. */
 function packCurrents(
   cell: Cell,
   c: Float64Array,
@@ -84,11 +83,13 @@ function packCurrents(
   r: number,
   row: L.Layout['row'],
   all: L.Layout['all'],
-  byChannel: number,
-  byD: number,
+  weights: Float64Array,
+  at: number,
+  sign: number,
 ): void {
-  const byS = byChannel + byD;
-  c[to + row.current] = byChannel;
+  const byD = sign * weights[at + 1];
+  const byS = sign * weights[at + 2];
+  c[to + row.current] = sign * weights[at];
   c[to + row.constant] = steadyCurrents(cell, byS, byD);
   c[all.junction + r * L.JUNCTION_WIDTH + L.BY_S] = byS;
   c[all.junction + r * L.JUNCTION_WIDTH + L.BY_D] = byD;
@@ -107,7 +108,7 @@ function packMemory(cell: Cell): void {
     for (let k = 0; k < n + 2; k++) c[to + k] = reduction.memory[at + k];
     const byChannel = polarity * reduction.memory[at + from.oldJ];
     const byD = polarity * reduction.memory[at + from.oldJ + 1];
-    const byS = byChannel + byD;
+    const byS = polarity * reduction.memory[at + from.oldJ + 2];
     c[to + past.oldI] = byChannel;
     c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_S] = byS;
     c[all.memoryJunction + i * L.JUNCTION_WIDTH + L.BY_D] = byD;
@@ -188,16 +189,7 @@ export function packRest(cell: Cell): void {
     const to = r * row.width;
     const sign = r < 2 ? polarity : 1;
     for (let k = 0; k < 2; k++) c[to + row.u + k] = sign * reduction.rest[from + k];
-    packCurrents(
-      cell,
-      c,
-      to,
-      r,
-      row,
-      all,
-      sign * polarity * reduction.rest[from + CHANNEL],
-      sign * polarity * reduction.rest[from + GATE_DRAIN],
-    );
+    packCurrents(cell, c, to, r, row, all, reduction.rest, from + CHANNEL, sign * polarity);
     c[to + row.constant] += sign * reduction.rest[from + CONSTANT] - (r < 2 ? deviceValue(cell, GATE_OFF_V) : 0);
   }
   packDevice(cell, c, all.device, c[row.current], c[row.width + row.current]);

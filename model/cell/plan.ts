@@ -10,15 +10,16 @@ import { type Circuit, circuitShape, type Element, elementNodes, elementValue, G
 import { chooseForest } from './forest.ts';
 
 /**
- * Columns that drive the network besides the states: two sources, the constants, a current along the channel from drain to source and one from gate
- * to drain. A current from gate to source is both: as a column of its own, its difference to the other would lose what the gate's impedance adds to each.
+ * Columns that drive the network besides the states: two sources, the constants, a current along the channel from drain to source, one from gate to drain and
+ * one from gate to source. Each is one of its own: the third is the sum of the other two, which behind megohms cancel.
  */
 export const AUDIO = 0;
 export const CONTROL = 1;
 export const CONSTANT = 2;
 export const CHANNEL = 3;
 export const GATE_DRAIN = 4;
-export const DRIVES = 5;
+export const GATE_SOURCE = 5;
+export const DRIVES = 6;
 
 /** A capacitor or inductor that is a state or closes a loop. */
 export interface StoragePlan {
@@ -291,6 +292,7 @@ function fixedColumns(
   });
   current(ends.drain, ends.source, n + CHANNEL);
   current(ends.gate, ends.drain, n + GATE_DRAIN);
+  current(ends.gate, ends.source, n + GATE_SOURCE);
   noisy.forEach((index, k) => {
     const element = elements[index];
     if (element.kind === 'conductance') current(row(element.a), row(element.b), n + DRIVES + k);

@@ -44,15 +44,19 @@ export interface Reduction {
   };
 }
 
+/** Along the channel, gate to drain, gate to source: `CHANNEL` and what follows it in the plan. */
+const PORT_CURRENTS = 3;
+
 /** Columns of `step`: the rows' memories, new u, new j, the constants, then one for each noise current. */
 export function stepColumns(stateCount: number, noiseCount: number) {
   const n = stateCount;
-  return { newU: n, newJ: n + 2, constant: n + 4, noise: n + 5, width: n + 5 + noiseCount };
+  return { newU: n, newJ: n + 2, constant: n + 2 + PORT_CURRENTS, noise: n + 3 + PORT_CURRENTS, width: n + 3 + PORT_CURRENTS + noiseCount };
 }
 
 /** Columns of `memory`. */
 export function memoryColumns(stateCount: number) {
-  return { oldU: stateCount, oldJ: stateCount + 2, constant: stateCount + 4, width: stateCount + 5 };
+  const constant = stateCount + 2 + PORT_CURRENTS;
+  return { oldU: stateCount, oldJ: stateCount + 2, constant, width: constant + 1 };
 }
 
 /** Weight of the new state in the backward difference; `kernels/source.ts` has the past ones'. */
@@ -200,10 +204,8 @@ export function discretise(reduction: Reduction, stepSec: number): boolean {
       for (let state = 0; state < n; state++) sum += response[p + state] * solved[state * width + column];
       step[to + column] = sum;
     }
-    for (let k = 0; k < 2; k++) {
-      step[to + columns.newU + k] += response[p + n + k];
-      step[to + columns.newJ + k] += response[p + n + CHANNEL + k];
-    }
+    for (let k = 0; k < 2; k++) step[to + columns.newU + k] += response[p + n + k];
+    for (let k = 0; k < PORT_CURRENTS; k++) step[to + columns.newJ + k] += response[p + n + CHANNEL + k];
     step[to + columns.constant] += response[p + n + CONSTANT];
     for (let k = 0; k < plan.noisy.length; k++) step[to + columns.noise + k] += response[p + n + DRIVES + k];
   }
@@ -237,16 +239,12 @@ function addDrives({ plan, response, memory, work, layout }: Reduction, row: num
   const m = row * past.width;
   work.right[r + row] = 1;
   for (let state = 0; state < n; state++) work.left[row * n + state] -= weight * response[f + state];
-  for (let k = 0; k < 2; k++) {
-    work.right[r + columns.newU + k] += weight * response[f + n + k];
-    work.right[r + columns.newJ + k] += weight * response[f + n + CHANNEL + k];
-  }
+  for (let k = 0; k < 2; k++) work.right[r + columns.newU + k] += weight * response[f + n + k];
+  for (let k = 0; k < PORT_CURRENTS; k++) work.right[r + columns.newJ + k] += weight * response[f + n + CHANNEL + k];
   if (isTrapezoidal) {
     for (let state = 0; state < n; state++) memory[m + state] += 0.5 * response[f + state];
-    for (let k = 0; k < 2; k++) {
-      memory[m + past.oldU + k] += 0.5 * response[f + n + k];
-      memory[m + past.oldJ + k] += 0.5 * response[f + n + CHANNEL + k];
-    }
+    for (let k = 0; k < 2; k++) memory[m + past.oldU + k] += 0.5 * response[f + n + k];
+    for (let k = 0; k < PORT_CURRENTS; k++) memory[m + past.oldJ + k] += 0.5 * response[f + n + CHANNEL + k];
     memory[m + past.constant] += 0.5 * response[f + n + CONSTANT];
   }
   work.right[r + columns.constant] += weight * response[f + n + CONSTANT];
