@@ -11,7 +11,7 @@ import { cellNumbers } from '../cell/fromDesign.ts';
 import { compileOscillator, oscillatorValues, runOscillator } from '../control/oscillator.ts';
 import type { Control, Design } from '../design/types.ts';
 import { lineAmplitude, type Lines, linesOf } from '../measure/lines.ts';
-import { type OnGrid, refined, STOPPED } from './refine.ts';
+import { type OnGrid, refined, STOPPED, TO_READ } from './refine.ts';
 import { periodOf } from './steady.ts';
 
 const LFO_HARMONICS = 16;
@@ -45,7 +45,7 @@ export function feedthroughOf(design: Design, variantIndex: number, channel: num
       settled,
     };
   };
-  const { value, gridPoints, changed, converged } = refined(COARSEST, FINEST, readOn, STOPPED);
+  const { value, gridPoints, changed, converged } = refined(COARSEST, FINEST, readOn, { ...TO_READ, largest: STOPPED });
   const { lines, output } = value;
   const top = output.reduce((most, v) => Math.max(most, v), Number.NEGATIVE_INFINITY);
   const bottom = output.reduce((most, v) => Math.min(most, v), Number.POSITIVE_INFINITY);

@@ -1,17 +1,26 @@
 /**
  * A reading on a grid that is doubled until it stops changing.
  *
- * Error    `changed`: the largest that the last doubling changed any watched amplitude by, over that amplitude; amplitudes under 1e-8 of the
- *          largest, or under 1 pV, are left out. For a scheme of order two or more what is left is smaller than that
+ * Error    `changed`: the largest that the last doubling changed any watched amplitude by, over that amplitude; amplitudes that are too small to watch
+ *          are left out. For a scheme of order two or more what is left is smaller than that
  */
 
-/** −160 dB: what lies below is watched no longer. */
-const SMALL = 1e-8;
+/** When a reading has stopped changing. */
+export interface Stop {
+  /** What the largest amplitude may still change by, and any other, over itself. */
+  readonly largest: number;
+  readonly any: number;
+  /** Over the largest: what lies below is watched no longer. */
+  readonly small: number;
+}
+
 const SMALL_V = 1e-12;
 /** 1e-4 dB. */
 export const STOPPED = 1.15e-5;
-/** For the largest amplitude. */
-const STOPPED_LARGEST = 1e-7;
+/** The largest to 1e-7, the others to 1e-4 dB down to −160 dB. */
+export const TO_READ: Stop = { largest: 1e-7, any: STOPPED, small: 1e-8 };
+/** The largest to 1e-4 dB, the others to 0.01 dB down to −120 dB. */
+export const TO_DRAW: Stop = { largest: STOPPED, any: 100 * STOPPED, small: 1e-6 };
 
 export interface OnGrid<T> {
   readonly value: T;
@@ -26,17 +35,12 @@ export interface Refined<T> {
   readonly changed: number;
   /** The same of the largest amplitude alone. */
   readonly changedLargest: number;
-  /** The largest amplitude changed by under 1e-7 unless said, every other by under 1e-4 dB, and the state repeats. */
+  /** Every amplitude has stopped changing, and the state repeats. */
   readonly converged: boolean;
 }
 
-/** From `coarsest` points, doubled up to `finest`; `stoppedLargest` is what the largest amplitude may still change by. */
-export function refined<T>(
-  coarsest: number,
-  finest: number,
-  readOn: (points: number) => OnGrid<T>,
-  stoppedLargest = STOPPED_LARGEST,
-): Refined<T> {
+/** From `coarsest` points, doubled up to `finest`. */
+export function refined<T>(coarsest: number, finest: number, readOn: (points: number) => OnGrid<T>, stop: Stop = TO_READ): Refined<T> {
   let points = coarsest;
   let { value, watched } = readOn(points);
   let changed = Number.POSITIVE_INFINITY;
@@ -45,8 +49,8 @@ export function refined<T>(
   while (!converged && points < finest) {
     points *= 2;
     const finer = readOn(points);
-    const change = changeOf(watched, finer.watched);
-    converged = finer.settled && change.ofLargest < stoppedLargest && change.ofAny < STOPPED;
+    const change = changeOf(watched, finer.watched, stop.small);
+    converged = finer.settled && change.ofLargest < stop.largest && change.ofAny < stop.any;
     changed = change.ofAny;
     changedLargest = change.ofLargest;
     value = finer.value;
@@ -55,12 +59,12 @@ export function refined<T>(
   return { value, gridPoints: points, changed, changedLargest, converged };
 }
 
-function changeOf(before: Float64Array, after: Float64Array) {
+function changeOf(before: Float64Array, after: Float64Array, small: number) {
   const largest = Math.max(...after);
   let ofLargest = 0;
   let ofAny = 0;
   after.forEach((value, i) => {
-    if (value < SMALL * largest || value < SMALL_V) return;
+    if (value < small * largest || value < SMALL_V) return;
     const change = Math.abs(value - before[i]) / value;
     ofAny = Math.max(ofAny, change);
     if (value === largest) ofLargest = change;

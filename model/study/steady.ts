@@ -43,10 +43,10 @@ interface Slope {
   readonly pivots: Int32Array;
 }
 
-/** The period of `size` samples of `toneV`·cos; the cell's step must be the period divided by `size`. */
-export function steadyPeriod(cell: Cell, toneV: number, controlV: number, size: number): SteadyPeriod {
+/** The period of `size` samples of `toneV`·cos; the cell's step must be the period divided by `size`. `start` as for `periodOf`. */
+export function steadyPeriod(cell: Cell, toneV: number, controlV: number, size: number, start: SteadyStart | null = null): SteadyPeriod {
   const audio = Float64Array.from({ length: size }, (_, i) => toneV * cosTurns((i + 1) / size));
-  return periodOf(cell, audio, new Float64Array(size).fill(controlV));
+  return periodOf(cell, audio, new Float64Array(size).fill(controlV), start);
 }
 
 /**

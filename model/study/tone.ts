@@ -13,12 +13,13 @@ import { dbFromRatio, turnsOf } from '../device/math.ts';
 import { amplifiedDcV, amplifiedPeriod } from './amplified.ts';
 import { harmonicsOf } from '../measure/harmonics.ts';
 import { type OperatingOptions, restingControlV } from './operating.ts';
-import { refined } from './refine.ts';
+import { refined, TO_DRAW, TO_READ } from './refine.ts';
 import { requireRange } from './require.ts';
-import { type RegionShares, regionShares, type SteadyPeriod, steadyPeriod } from './steady.ts';
+import { type RegionShares, regionShares, type SteadyPeriod, type SteadyStart, steadyPeriod } from './steady.ts';
 
 const HARMONICS = 9;
-const COARSEST = 256;
+const COARSEST = { read: 256, draw: 64 };
+const STOP = { read: TO_READ, draw: TO_DRAW };
 const FINEST = 32768;
 /** What a tone may be: least and most, Hz, and V peak. */
 export const TONE_HZ_RANGE = [0.1, 1e6] as const;
@@ -34,6 +35,8 @@ export interface ToneOptions extends OperatingOptions {
   readonly toneV?: number;
   /** `output` is after the make-up amplifier, with its gain, pole, slew rate and swing. */
   readonly at?: 'drain' | 'output';
+  /** What it is for: a figure to be read (when left out), or a point of a curve, to 0.01 dB and in a fraction of the time. */
+  readonly to?: 'read' | 'draw';
 }
 
 export interface Harmonic {
@@ -72,23 +75,30 @@ export interface ToneReading {
 
 /** Measures one variant. Throws a RangeError naming an option or a value that cannot be used. */
 export function measureTone(design: Design, variantIndex: number, options: ToneOptions = {}): ToneReading {
-  const { toneHz = 1000, toneV = 0.5, at = 'drain', channel = 0 } = options;
+  const { toneHz = 1000, toneV = 0.5, at = 'drain', channel = 0, to = 'read' } = options;
   const variant = variantAt(design, variantIndex);
   requireRange('toneHz', toneHz, ...TONE_HZ_RANGE, 'Hz');
   requireRange('toneV', toneV, ...TONE_V_RANGE, 'V', ' peak');
   const numbers = forReadings(cellNumbers(design, variantIndex, channel));
   const controlV = restingControlV(design, variantIndex, numbers, options);
+  let start: SteadyStart | null = null;
   const solveOn = (size: number): SteadyPeriod => {
-    const period = steadyPeriod(createCell(numbers, 1 / (toneHz * size)), toneV, controlV, size);
+    const period = steadyPeriod(createCell(numbers, 1 / (toneHz * size)), toneV, controlV, size, start);
+    start = period.start;
     if (at === 'drain') return period;
     const amplified = amplifiedPeriod(variant.output, period.output, toneHz * size);
     return { ...period, output: amplified.period, settled: period.settled && amplified.settled };
   };
-  const { value, gridPoints, converged, changed, changedLargest } = refined(COARSEST, FINEST, (size) => {
-    const period = solveOn(size);
-    const spectrum = harmonicsOf(period.output, HARMONICS);
-    return { value: { period, spectrum }, watched: amplitudes(spectrum), settled: period.settled };
-  });
+  const { value, gridPoints, converged, changed, changedLargest } = refined(
+    COARSEST[to],
+    FINEST,
+    (size) => {
+      const period = solveOn(size);
+      const spectrum = harmonicsOf(period.output, HARMONICS);
+      return { value: { period, spectrum }, watched: amplitudes(spectrum), settled: period.settled };
+    },
+    STOP[to],
+  );
   const { period, spectrum } = value;
   const rest = createCell(numbers, 1 / (toneHz * gridPoints));
   const drainRestV = settle(rest, 0, controlV);

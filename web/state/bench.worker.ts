@@ -11,9 +11,9 @@ import type { FromLoudness, FromReading, FromRender, ToLoudness, ToneQuestion, T
 
 let asked: { id: number; question: ToneQuestion } | null = null;
 type Work = 'curve' | 'swing' | 'noise' | 'variant';
-/** What is looked at while values move; the rest is done when none of it is left. */
-const SOON: readonly Work[] = ['curve', 'swing'];
-/** In small steps, taken in turn. */
+/** What is looked at while values move comes first, the curve before all. */
+const ORDER: readonly Work[] = ['curve', 'swing', 'noise', 'variant'];
+/** In small steps. */
 const work = new Map<Work, Generator<void, void>>();
 let pumping = false;
 const pump = new MessageChannel();
@@ -62,12 +62,9 @@ function begin(name: Work, steps: Generator<void, void>): void {
 
 /** One step of the work, then back to the queue, so that a moment never waits for more than one reading. */
 pump.port1.onmessage = () => {
-  const first = [...work].find(([name]) => SOON.includes(name)) ?? [...work][0];
-  if (first !== undefined) {
-    const [name, steps] = first;
-    work.delete(name);
-    if (!steps.next().done) work.set(name, steps);
-  }
+  const name = ORDER.find((each) => work.has(each));
+  const steps = name && work.get(name);
+  if (name && steps?.next().done && work.get(name) === steps) work.delete(name);
   pumping = work.size > 0;
   if (pumping) pump.port2.postMessage(null);
 };

@@ -21,9 +21,9 @@ const CURVE_TO = 0.6;
 const CURVE_STEPS = 40;
 
 /** The shadow tone at a gate voltage; null is the gate with the control at rest. Throws a RangeError where the cell cannot be read. */
-export function readTone(question: ToneQuestion, gateV: number | null): ToneReading {
+export function readTone(question: ToneQuestion, gateV: number | null, to: 'read' | 'draw' = 'read'): ToneReading {
   const { design, variantIndex, toneHz, toneV } = question;
-  return measureTone(design, variantIndex, { toneHz, toneV, ...(gateV === null ? {} : { gateV }) });
+  return measureTone(design, variantIndex, { toneHz, toneV, to, ...(gateV === null ? {} : { gateV }) });
 }
 
 /** The same, with its path on the transfer plane and what parts of 1 % make of it at that gate voltage. */
@@ -43,7 +43,7 @@ function bandOf(question: ToneQuestion, reading: ToneReading): Moment['thdBand']
   const { channel } = deviceOf(variant, 0);
   const [low, high] = fractionsWithin(k).map((end) => {
     const moved = questionAt(question, end);
-    return moved === null ? [] : [feedbackPoint(end, readTone(moved, reading.vgsV), channel)];
+    return moved === null ? [] : [feedbackPoint(end, readTone(moved, reading.vgsV, 'draw'), channel)];
   });
   return thdWithin([...low, feedbackPoint(k, reading, channel), ...high]);
 }
@@ -56,7 +56,7 @@ export function* readSwing(question: ToneQuestion): Generator<void, { worst: Wor
   const [from, to] = gateRangeV(question);
   const points: SwingPoint[] = [];
   const measure = (gateV: number): WorstReading => {
-    const { thdFundamental, gainDb, rdsOhm } = readTone(question, gateV);
+    const { thdFundamental, gainDb, rdsOhm } = readTone(question, gateV, 'draw');
     points.push({ gateV, gainDb, rdsOhm });
     return { thdFundamental, gainDb, gateV };
   };
@@ -74,7 +74,9 @@ export function* readSwing(question: ToneQuestion): Generator<void, { worst: Wor
       if (nearV >= from && nearV <= to) worst = higher(worst, measure(nearV));
     }
   }
-  return { worst, points: points.sort((a, b) => a.gateV - b.gateV) };
+  yield;
+  const { thdFundamental, gainDb } = readTone(question, worst.gateV);
+  return { worst: { thdFundamental, gainDb, gateV: worst.gateV }, points: points.sort((a, b) => a.gateV - b.gateV) };
 }
 
 /** How far past VGS(off) and past the swing's ends the readings beyond it go, of VGS(off) and of the swing; and in how many steps on either side. */
@@ -102,7 +104,7 @@ export function* readBeyond(question: ToneQuestion): Generator<void, readonly Sw
   const points: SwingPoint[] = [];
   for (const gateV of [...below, ...above]) {
     yield;
-    const { gainDb, rdsOhm } = readTone(question, gateV);
+    const { gainDb, rdsOhm } = readTone(question, gateV, 'draw');
     points.push({ gateV, gainDb, rdsOhm });
   }
   return points;
@@ -189,7 +191,7 @@ export function* readFeedbackCurve(question: ToneQuestion, gateV: number | null)
   for (const k of curveFractions(feedbackFraction(cell))) {
     yield;
     const moved = questionAt(question, k);
-    if (moved !== null) points.push(feedbackPoint(k, readTone(moved, keptV), channel));
+    if (moved !== null) points.push(feedbackPoint(k, readTone(moved, keptV, 'draw'), channel));
   }
   return { gateV: keptV, points };
 }
