@@ -38,7 +38,10 @@ function noteMessages(): void {
   } as typeof Worker.prototype.postMessage;
 }
 
-/** From the press of an arrow key on R1 to the new figure of THD, and from the question for a curve to its 41 points, ms. A string, so that no helper comes along. */
+/**
+ * From the press of an arrow key on R1 to the new figure of THD; and how long the worker is at a curve, from its answer to the moment, which comes first, to
+ * the 41 points, ms. Strings, so that no helper comes along.
+ */
 async function measureAnswers(page: Page): Promise<{ answers: number[]; curves: number[] }> {
   await page.evaluate(`{
     window.answers = [];
@@ -59,8 +62,8 @@ async function measureAnswers(page: Page): Promise<{ answers: number[]; curves: 
   return page.evaluate(`({
     answers: window.answers,
     curves: window.notes.filter(({ type, asked }) => type === 'curve' && !asked).flatMap(({ id, atMs }) => {
-      const question = window.notes.find((note) => note.type === 'curve' && note.asked && note.id === id);
-      return question ? [atMs - question.atMs] : [];
+      const moment = window.notes.find((note) => note.type === 'reading' && !note.asked && note.id === id);
+      return moment ? [atMs - moment.atMs] : [];
     }),
   })`);
 }
@@ -119,7 +122,7 @@ async function main(site: Site, minutes: number): Promise<void> {
   await page.waitForTimeout(4000);
   const resting = await measureAnswers(page);
   console.log(`a change answered, at rest: ${told(spreadOf(resting.answers), 100)} (${resting.answers.length} of ${CHANGES})`);
-  console.log(`curve of 41 points in the worker, queue and all: ${told(spreadOf(resting.curves), 50)} (${resting.curves.length})`);
+  console.log(`curve of 41 points in the worker: ${told(spreadOf(resting.curves), 50)} (${resting.curves.length})`);
   await page.getByRole('button', { name: 'Start', exact: true }).click();
   await page.waitForTimeout(3000);
   const blank = await browser.newPage();

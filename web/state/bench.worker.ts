@@ -13,6 +13,8 @@ let asked: { id: number; question: ToneQuestion } | null = null;
 type Work = 'curve' | 'swing' | 'noise' | 'variant';
 /** What is looked at while values move comes first, the curve before all. */
 const ORDER: readonly Work[] = ['curve', 'swing', 'noise', 'variant'];
+/** Of one go. */
+const STRETCH_MS = 5;
 /** In small steps. */
 const work = new Map<Work, Generator<void, void>>();
 let pumping = false;
@@ -60,11 +62,17 @@ function begin(name: Work, steps: Generator<void, void>): void {
   pump.port2.postMessage(null);
 }
 
-/** One step of the work, then back to the queue, so that a moment never waits for more than one reading. */
-pump.port1.onmessage = () => {
+function step(): void {
   const name = ORDER.find((each) => work.has(each));
   const steps = name && work.get(name);
   if (name && steps?.next().done && work.get(name) === steps) work.delete(name);
+}
+
+/** A stretch of the work, then back to the queue, so that a moment never waits for long. */
+pump.port1.onmessage = () => {
+  const end = performance.now() + STRETCH_MS;
+  do step();
+  while (work.size > 0 && performance.now() < end);
   pumping = work.size > 0;
   if (pumping) pump.port2.postMessage(null);
 };
