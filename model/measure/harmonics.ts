@@ -19,13 +19,27 @@ export function harmonicsOf(period: Float64Array, count: number): HarmonicSet {
   const size = period.length;
   const real = new Float64Array(count);
   const imaginary = new Float64Array(count);
-  const cosine = Float64Array.from({ length: size }, (_, i) => cosTurns(i / size));
-  const sine = Float64Array.from({ length: size }, (_, i) => sinTurns(i / size));
+  const { cosine, sine } = tablesOf(size);
   for (let n = 1; n <= count; n++) {
     real[n - 1] = (2 / size) * weightedSum(period, cosine, n);
     imaginary[n - 1] = (-2 / size) * weightedSum(period, sine, n);
   }
   return { mean: weightedSum(period, cosine, 0) / size, real, imaginary };
+}
+
+/** Of a turn in so many steps. Curves ask for the same few grids again and again: the last stay, to be read only. */
+const kept = new Map<number, { readonly cosine: Float64Array; readonly sine: Float64Array }>();
+const MOST_KEPT = 4;
+
+function tablesOf(size: number) {
+  const tables = kept.get(size) ?? {
+    cosine: Float64Array.from({ length: size }, (_, i) => cosTurns(i / size)),
+    sine: Float64Array.from({ length: size }, (_, i) => sinTurns(i / size)),
+  };
+  kept.delete(size);
+  kept.set(size, tables);
+  if (kept.size > MOST_KEPT) kept.delete(kept.keys().next().value ?? size);
+  return tables;
 }
 
 function weightedSum(period: Float64Array, table: Float64Array, n: number): number {
