@@ -39,6 +39,7 @@ const REST: readonly (readonly [paths: readonly string[], words: string])[] = [
   [['cell.drainReturnOhm', 'cell.outputCouplingF'], 'the output of the board'],
   [['cell.driverOhm', 'cell.smoothing'], 'the path of the control'],
   [['cell.reference', 'cell.sharedGround', 'cell.clamp', 'cell.strayF'], 'the source pin or the gate'],
+  [['devices.1'], 'the right channel’s J1'],
 ];
 
 /** Each difference in a few words, in the order of the circuit; empty for two of the same. */
@@ -51,7 +52,9 @@ export function differences(base: Variant, other: Variant): string[] {
     const toldOf = before === undefined || after === undefined || before === after;
     return toldOf ? [] : [`${name} ${printed(path, after)}`];
   });
-  const groups = REST.filter(([paths]) => paths.some((path) => different(getAt(base, path), getAt(other, path)))).map(([, words]) => words);
+  const groups = REST.filter(([paths]) => paths.some((path) => different(valueAt(base, path), valueAt(other, path)))).map(
+    ([, words]) => words,
+  );
   const told = [...kinds, ...controls, ...named, ...groups];
   const more =
     told.length === 0 && different(withoutName(base), withoutName(other)) ? ['smaller values of J1, its control or the amplifier'] : [];
@@ -62,10 +65,10 @@ function controlWords(control: Control): string {
   return control.source === 'lfo' ? control.shape : control.source;
 }
 
-/** Undefined where this variant has no such value. */
+/** Undefined where this variant has no such value. Where the channels' parts differ `device` is the left one's. */
 function valueAt(variant: Variant, path: string): unknown {
   try {
-    return getAt(variant, path);
+    return getAt(variant, variant.devices ? path.replace(/^device\./, 'devices.0.') : path);
   } catch (error) {
     if (error instanceof RangeError) return undefined;
     throw error;

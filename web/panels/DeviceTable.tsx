@@ -1,9 +1,9 @@
 import { deviceOf } from '../../model/cell/fromDesign.ts';
-import type { Device } from '../../model/design/types.ts';
-import { formatQuantity, parseQuantity } from '../../model/design/values.ts';
+import { parseQuantity } from '../../model/design/values.ts';
 import { valueVolts } from '../draw/words.ts';
 import { useBench, useVariant } from './BenchContext.ts';
 import { CircuitValue } from './CircuitValue.tsx';
+import { Choice } from './parts/Choice.tsx';
 import { DataTable } from './parts/DataTable.tsx';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { useReverseLimit } from './sheetLimits.ts';
@@ -41,6 +41,16 @@ const AMPLIFIER: readonly Entry[] = [
   { path: 'output.swingV', what: 'Swing, either side of 0\u2009V', short: 'The swing' },
 ];
 
+/** Of a right channel's part: its law is the left one's. */
+const RIGHT: readonly Entry[] = [
+  { path: 'devices.1.idssA', what: 'IDSS of the right channel’s J1', short: 'The right channel’s IDSS' },
+  { path: 'devices.1.gateOffV', what: 'VGS(off) of the right channel’s J1', short: 'The right channel’s VGS(off)' },
+];
+const PARTS: readonly { value: 'same' | 'own'; words: string }[] = [
+  { value: 'same', words: 'the same values' },
+  { value: 'own', words: 'values of its own' },
+];
+
 const WHAT = { key: 'what', head: 'Value' };
 const FITTED = { key: 'number', head: 'Fitted' };
 
@@ -54,6 +64,7 @@ export function DeviceTable({ across }: { readonly across: 1 | 2 | 3 }) {
   const cells = [
     ...[...channel, ...GATE].map((entry) => <EntryCells key={entry.path} {...entry} />),
     <ReverseCells key="reverse" />,
+    ...(variant.devices ? RIGHT : []).map((entry) => <EntryCells key={entry.path} {...entry} />),
     ...AMPLIFIER.map((entry) => <EntryCells key={entry.path} {...entry} />),
   ];
   const rows = Math.ceil(cells.length / across);
@@ -64,8 +75,23 @@ export function DeviceTable({ across }: { readonly across: 1 | 2 | 3 }) {
       className="device-table"
       caption={
         <>
-          J1 and the amplifier, in variant {bench.design.value.variants[bench.heardVariant.value].name}. «none» is ideal, or absent.
-          {variant.devices && ` ${otherDevice(variant.devices[1])}`}
+          J1 and the amplifier, in variant {variant.name}. «none» is ideal, or absent. The right channel’s J1 has{' '}
+          <Choice
+            label="J1 of the right channel"
+            value={variant.devices ? 'own' : 'same'}
+            options={PARTS}
+            onChoose={(part) =>
+              bench.setValues(
+                part === 'own'
+                  ? [['devices', [device, device]]]
+                  : [
+                      ['device', device],
+                      ['devices', undefined],
+                    ],
+              )
+            }
+          />
+          {variant.devices && '; shown and read is the left one’s'}.
         </>
       }
       columns={columns}
@@ -77,11 +103,6 @@ export function DeviceTable({ across }: { readonly across: 1 | 2 | 3 }) {
       </tbody>
     </DataTable>
   );
-}
-
-/** The sheet shows and reads the left channel's part. */
-function otherDevice({ idssA, gateOffV }: Device): string {
-  return `Shown and read is the left channel’s J1; the right one’s has IDSS ${formatQuantity(idssA, 'A')} and VGS(off) ${valueVolts(gateOffV)}.`;
 }
 
 function EntryCells({ path, what, short, zeroIsAbsent = false }: Entry) {

@@ -1,5 +1,5 @@
 import { deviceOf } from '../../model/cell/fromDesign.ts';
-import type { Channel, Control, Law } from '../../model/design/types.ts';
+import type { Channel, Control, Device, Law } from '../../model/design/types.ts';
 import type { Form } from '../draw/schematic.ts';
 import { useBench, useVariant } from './BenchContext.ts';
 import { CircuitValue } from './CircuitValue.tsx';
@@ -25,12 +25,15 @@ export function DeviceValues({ form }: { readonly form: Form }) {
     if (next === channel) return null;
     return bench.setValues([
       ['control', mirrored(variant.control)],
-      ...(variant.devices ?? [variant.device]).map((device, n): readonly [string, unknown] => [
-        variant.devices ? `devices.${n}` : 'device',
-        { ...device, channel: next, gateOffV: -device.gateOffV },
-      ]),
+      ...ofBoth((device) => ({ ...device, channel: next, gateOffV: -device.gateOffV })),
     ]);
   };
+  /** Both channels' parts are of one kind: what is chosen here is chosen for both. */
+  const ofBoth = (changed: (device: Device) => Device) =>
+    (variant.devices ?? [variant.device]).map((device, n): readonly [string, unknown] => [
+      variant.devices ? `devices.${n}` : 'device',
+      changed(device),
+    ]);
   const short = form === 'upright';
   return (
     <div class={short ? 'device upright' : 'device'}>
@@ -61,7 +64,7 @@ export function DeviceValues({ form }: { readonly form: Form }) {
           label="Law of J1"
           value={law}
           options={LAWS}
-          onChoose={(next) => bench.setValue(variant.devices ? 'devices.0.law' : 'device.law', next)}
+          onChoose={(next) => bench.setValues(ofBoth((device) => ({ ...device, law: next })))}
           {...(short && { shown: law })}
         />
       </span>

@@ -28,3 +28,21 @@ test('parts of the board and values without a name are told of too', () => {
   expect(differences(made(), made(['cell.pad.kind', 'divider']))).toEqual(['the input of the board']);
   expect(differences(made(), made(['device.junction.ideality', 1.2]))).toHaveLength(1);
 });
+
+test('a right channel’s part of its own is told of, and the left one’s values are still the ones that are named', () => {
+  const { device } = made();
+  const own = made(['devices', [device, { ...device, idssA: 0.004 }]]);
+  expect(differences(made(), own)).toEqual(['the right channel’s J1']);
+  expect(
+    differences(
+      own,
+      made([
+        'devices',
+        [
+          { ...device, idssA: 0.004 },
+          { ...device, idssA: 0.004 },
+        ],
+      ]),
+    ),
+  ).toEqual(['IDSS 4.00\u2009mA']);
+});

@@ -116,6 +116,26 @@ describe('the document', () => {
     expect(document.variant.value.cell).toMatchObject({ controlOhm: 1.2e6, feedback: { drainOhm: 1.2e6 } });
   });
 
+  test('the right channel gets a part of its own, keeps its values while the left one’s change, and gives it back', () => {
+    const document = open();
+    const { device } = document.variant.value;
+    expect(document.setValues([['devices', [device, device]]])).toBeNull();
+    later();
+    expect(document.setValue('devices.1.idssA', 0.004)).toBeNull();
+    later();
+    expect(document.setValue('devices.0.idssA', 0.002)).toBeNull();
+    expect(document.variant.value.devices?.map(({ idssA }) => idssA)).toEqual([0.002, 0.004]);
+    later();
+    const [left] = document.variant.value.devices ?? [];
+    const same = [
+      ['device', left],
+      ['devices', undefined],
+    ] as const;
+    expect(document.setValues(same)).toBeNull();
+    expect(document.variant.value.devices).toBeUndefined();
+    expect(document.variant.value.device.idssA).toBe(0.002);
+  });
+
   test('several values are one change, and a refused one among them leaves all as they were', () => {
     const document = open();
     const before = document.design.value;
