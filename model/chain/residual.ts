@@ -81,7 +81,8 @@ export function bringResidual({ lanes }: Residual, { drive, quiet }: Voice): voi
   for (let channel = 0; channel < lanes.length; channel++) {
     const { silent, twin, noisy } = lanes[channel];
     settle(silent, 0, drive.lastV[channel]);
-    inheritStates(silent, quiet.cell);
+    // The voice's own silent copy is one of the first channel; another channel's part may rest elsewhere.
+    if (channel === 0) inheritStates(silent, quiet.cell);
     if (twin !== null) restTwin(twin);
     if (noisy !== null) noisy.state.set(silent.state);
   }

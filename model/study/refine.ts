@@ -27,6 +27,8 @@ export interface OnGrid<T> {
   /** Amplitudes, V. */
   readonly watched: Float64Array;
   readonly settled: boolean;
+  /** By how much arithmetic lets the period repeat, V, where that is all it lets: a change by less is no change. */
+  readonly noiseV?: number;
 }
 
 export interface Refined<T> {
@@ -35,7 +37,7 @@ export interface Refined<T> {
   readonly changed: number;
   /** The same of the largest amplitude alone. */
   readonly changedLargest: number;
-  /** Every amplitude has stopped changing, and the state repeats. */
+  /** Every amplitude has stopped changing, as far as arithmetic tells, and the state repeats. */
   readonly converged: boolean;
 }
 
@@ -49,8 +51,8 @@ export function refined<T>(coarsest: number, finest: number, readOn: (points: nu
   while (!converged && points < finest) {
     points *= 2;
     const finer = readOn(points);
-    const change = changeOf(watched, finer.watched, stop.small);
-    converged = finer.settled && change.ofLargest < stop.largest && change.ofAny < stop.any;
+    const change = changeOf(watched, finer.watched, stop.small, finer.noiseV ?? 0);
+    converged = finer.settled && change.ofLargest < stop.largest && change.ofAnyBeyondNoise < stop.any;
     changed = change.ofAny;
     changedLargest = change.ofLargest;
     value = finer.value;
@@ -59,15 +61,17 @@ export function refined<T>(coarsest: number, finest: number, readOn: (points: nu
   return { value, gridPoints: points, changed, changedLargest, converged };
 }
 
-function changeOf(before: Float64Array, after: Float64Array, small: number) {
+function changeOf(before: Float64Array, after: Float64Array, small: number, noiseV: number) {
   const largest = Math.max(...after);
   let ofLargest = 0;
   let ofAny = 0;
+  let ofAnyBeyondNoise = 0;
   after.forEach((value, i) => {
     if (value < small * largest || value < SMALL_V) return;
     const change = Math.abs(value - before[i]) / value;
     ofAny = Math.max(ofAny, change);
+    if (change * value > noiseV) ofAnyBeyondNoise = Math.max(ofAnyBeyondNoise, change);
     if (value === largest) ofLargest = change;
   });
-  return { ofLargest, ofAny };
+  return { ofLargest, ofAny, ofAnyBeyondNoise };
 }

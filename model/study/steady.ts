@@ -4,7 +4,9 @@
  * Scheme   one period as a map of the state, its fixed point by Newton with a Jacobian by differences (exact for the linear part); where that
  *          does not settle the cell is run period after period until it does
  * Error    each state repeats within `REPEATS`·(its size + 1 µV) + `ROUNDING`·(the largest state) from one period to the next, or the reading says
- *          that it did not settle: beside a supply of some volts, arithmetic lets a small voltage repeat no better
+ *          that it did not settle: beside a supply of some volts, arithmetic lets a small voltage repeat no better. Where picofarads meet tenths of
+ *          an ohm the trapezoidal rule keeps its own rounding, as an alternation from sample to sample: Newton's method that has come within `ALTERNATES` of
+ *          the drive's swing, −160 dB, and comes no nearer has found the period
  * Source   shooting method: Aprille & Trick, Proc. IEEE 60 (1972) 108, from memory
  */
 import { advanceCell, type Cell, gateConducts, overdriveV, settle } from '../cell/cell.ts';
@@ -18,6 +20,9 @@ const SETTLING_PERIODS = 4000;
 const SETTLING_SAMPLES = 16777216;
 const REPEATS = 1e-12;
 const ROUNDING = 3e-14;
+const ALTERNATES = 1e-8;
+/** Rounds after which Newton's method comes no nearer. */
+const NEAREST_AFTER = 4;
 
 /** One period at the cell's own step: the output and both overdrives, V; whether a junction conducts. Sample 0 is the tone's crest. */
 export interface SteadyPeriod {
@@ -28,6 +33,8 @@ export interface SteadyPeriod {
   readonly settled: boolean;
   /** Not found directly: run until it repeated, or as long as that was tried. */
   readonly byTime: boolean;
+  /** By how much it repeats, V, where Newton's method came no nearer; else 0. */
+  readonly noiseV: number;
   readonly start: SteadyStart;
 }
 
@@ -41,6 +48,12 @@ export interface SteadyStart {
 interface Slope {
   readonly matrix: Float64Array;
   readonly pivots: Int32Array;
+}
+
+/** The slope in use, and what is left where the search comes no nearer, V. */
+interface Search {
+  slope: Slope | null;
+  noiseV: number;
 }
 
 /** The period of `size` samples of `toneV`·cos; the cell's step must be the period divided by `size`. `start` as for `periodOf`. */
@@ -62,15 +75,25 @@ export function periodOf(cell: Cell, audio: Float64Array, control: Float64Array,
     advanceCell(cell, scratch, control, 0, audio.length);
   };
   run();
-  const search = { slope: start?.slope ?? null };
-  const byTime = !shoot(cell, run, search);
+  const search: Search = { slope: start?.slope ?? null, noiseV: 0 };
+  const byTime = !shoot(cell, run, search, ALTERNATES * (swingOf(audio) + swingOf(control)));
   const settled = !byTime || runUntilSettled(cell, run, audio.length);
   const state = cell.state.slice(0, cell.stateCount);
-  return { ...recordPeriod(cell, audio, control), settled, byTime, start: { state, slope: search.slope } };
+  return { ...recordPeriod(cell, audio, control), settled, byTime, noiseV: search.noiseV, start: { state, slope: search.slope } };
 }
 
-/** Newton's method; the slope is renewed only where it no longer takes nine tenths of what is missing. */
-function shoot(cell: Cell, run: () => void, search: { slope: Slope | null }): boolean {
+function swingOf(signal: Float64Array): number {
+  let low = Number.POSITIVE_INFINITY;
+  let high = Number.NEGATIVE_INFINITY;
+  for (const value of signal) {
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  }
+  return high - low;
+}
+
+/** Newton's method; the slope is renewed only where it no longer takes nine tenths of what is missing. `nearV` is near enough once it comes no nearer. */
+function shoot(cell: Cell, run: () => void, search: Search, nearV: number): boolean {
   const n = cell.stateCount;
   if (n === 0) return true;
   const start = cell.state.slice();
@@ -82,6 +105,10 @@ function shoot(cell: Cell, run: () => void, search: { slope: Slope | null }): bo
     if (repeats(from, miss)) return true;
     const end = cell.state.slice();
     const size = miss.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+    if (round >= NEAREST_AFTER && size < nearV && size > 0.1 * before) {
+      search.noiseV = size;
+      return true;
+    }
     if (search.slope === null || size > 0.1 * before) search.slope = slopeAt(cell, run, from, end);
     if (search.slope === null) break;
     before = size;

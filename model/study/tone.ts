@@ -3,13 +3,13 @@
  *
  * Scheme   the period is solved on its own grid (`steady.ts`), doubled until fundamental and harmonics stop changing (`refine.ts`)
  * Error    `fundamentalError` and `harmonicsError`: what the last doubling changed, under 1e-7 of the fundamental and 1e-4 dB of every harmonic above
- *          −160 dB; `converged` is false where the finest grid did not reach that. Harmonics under −260 dB re the fundamental are the arithmetic's own and reported as zero
+ *          −160 dB, or what arithmetic leaves of one where picofarads meet tenths of an ohm; `converged` is false where the finest grid did not reach that. Harmonics under −260 dB re the fundamental are the arithmetic's own and reported as zero
  */
 import { createCell, gateSourceV, settle, forReadings } from '../cell/cell.ts';
 import { cellNumbers, deviceOf, variantAt } from '../cell/fromDesign.ts';
 import type { Design } from '../design/types.ts';
 import { lawConstants, restingResistanceOhm } from '../device/law.ts';
-import { dbFromRatio, turnsOf } from '../device/math.ts';
+import { dbFromRatio, ratioFromDb, turnsOf } from '../device/math.ts';
 import { amplifiedDcV, amplifiedPeriod } from './amplified.ts';
 import { harmonicsOf } from '../measure/harmonics.ts';
 import { type OperatingOptions, restingControlV } from './operating.ts';
@@ -87,7 +87,8 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
     start = period.start;
     if (at === 'drain') return period;
     const amplified = amplifiedPeriod(variant.output, period.output, toneHz * size);
-    return { ...period, output: amplified.period, settled: period.settled && amplified.settled };
+    const noiseV = period.noiseV * ratioFromDb(variant.output.gainDb);
+    return { ...period, output: amplified.period, settled: period.settled && amplified.settled, noiseV };
   };
   const { value, gridPoints, converged, changed, changedLargest } = refined(
     COARSEST[to],
@@ -95,7 +96,7 @@ export function measureTone(design: Design, variantIndex: number, options: ToneO
     (size) => {
       const period = solveOn(size);
       const spectrum = harmonicsOf(period.output, HARMONICS);
-      return { value: { period, spectrum }, watched: amplitudes(spectrum), settled: period.settled };
+      return { value: { period, spectrum }, watched: amplitudes(spectrum), settled: period.settled, noiseV: period.noiseV };
     },
     STOP[to],
   );
