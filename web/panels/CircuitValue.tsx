@@ -3,7 +3,7 @@ import { fieldAt, getAt, rangeFault } from '../../model/design/path.ts';
 import { formatQuantity, parseQuantity, type Unit } from '../../model/design/values.ts';
 import { valueVolts } from '../draw/words.ts';
 import { useBench, useVariant } from './BenchContext.ts';
-import { bareSentence } from './parts/bareSentence.ts';
+import { namedSentence } from './parts/bareSentence.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
 import type { Stepping } from './parts/stepping.ts';
 
@@ -40,7 +40,7 @@ export function CircuitValue({ path: stated, label, short, zeroIsAbsent = false,
       max={max}
       onSet={(value) =>
         (value === null ? null : rangeFault(field, value, short)) ??
-        named(bench.setValue(path, value ?? (zeroIsAbsent ? 0 : null)), path, short)
+        namedSentence(bench.setValue(path, value ?? (zeroIsAbsent ? 0 : null)), path, short)
       }
     />
   );
@@ -49,13 +49,6 @@ export function CircuitValue({ path: stated, label, short, zeroIsAbsent = false,
 /** Where the channels' devices differ, the sheet shows the first channel's: the one that is read. */
 function shownPath(variant: Variant, path: string): string {
   return variant.devices === undefined ? path : path.replace(/^device\./, 'devices.0.');
-}
-
-/** The document's sentences name a value by its path; here it has a name of its own. */
-function named(sentence: string | null, path: string, short: string): string | null {
-  if (sentence === null) return null;
-  const bare = bareSentence(sentence);
-  return bare.startsWith(`${path} `) ? `${short}${bare.slice(path.length)}` : bare;
 }
 
 function printed(value: number, unit: Unit, signed: boolean): string {

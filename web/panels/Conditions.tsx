@@ -1,8 +1,10 @@
 import { useSignal } from '@preact/signals';
+import { fieldAt, rangeFault } from '../../model/design/path.ts';
 import { formatQuantity, parseQuantity } from '../../model/design/values.ts';
 import { dbuFromPeak, decimals, peakFromDbu, valueVolts } from '../draw/words.ts';
 import { useBench } from './BenchContext.ts';
 import { LiveCaution } from './LiveCaution.tsx';
+import { namedSentence } from './parts/bareSentence.ts';
 import { EditableValue } from './parts/EditableValue.tsx';
 import { E24 } from './parts/stepping.ts';
 import { SourceWords } from './SourceWords.tsx';
@@ -12,6 +14,8 @@ export function Conditions() {
   const bench = useBench();
   const { fullScaleV, tempC } = bench.design.value;
   const asking = useSignal(false);
+  const set = (path: 'fullScaleV' | 'tempC', value: number | null, name: string) =>
+    (value === null ? null : rangeFault(fieldAt(path), value, name)) ?? namedSentence(bench.setDesignValue(path, value), path, name);
   return (
     <>
       <p class="sentence">
@@ -23,7 +27,7 @@ export function Conditions() {
           stepping={E24}
           format={valueVolts}
           read={(text) => parseQuantity(text, 'V')}
-          onSet={(volts) => bench.setDesignValue('fullScaleV', volts)}
+          onSet={(volts) => set('fullScaleV', volts, 'The full scale')}
         />{' '}
         peak ={' '}
         <span class="together">
@@ -34,7 +38,7 @@ export function Conditions() {
             stepping={{ kind: 'linear', step: 0.5 }}
             format={(dbu) => `${decimals(dbu, 1)}\u2009dBu`}
             read={(text) => parseQuantity(text.replace(/dBu\s*$/i, ''), 'dB')}
-            onSet={(dbu) => bench.setDesignValue('fullScaleV', peakFromDbu(dbu as number))}
+            onSet={(dbu) => set('fullScaleV', peakFromDbu(dbu as number), 'The full scale')}
           />
           ;
         </span>{' '}
@@ -45,7 +49,7 @@ export function Conditions() {
           stepping={{ kind: 'linear', step: 1 }}
           format={(c) => formatQuantity(c, '°C', Number.isInteger(c) ? 2 : 3)}
           read={(text) => parseQuantity(text, '°C')}
-          onSet={(c) => bench.setDesignValue('tempC', c)}
+          onSet={(c) => set('tempC', c, 'The temperature')}
         />
         .
       </p>

@@ -44,6 +44,9 @@ export function createReadings(
 ): Readings {
   const moment = signal<Moment | null>(null);
   const period = signal<ControlPicture | { readonly fault: string } | null>(null);
+  /** What the questions are about, and the first of them that is about that. */
+  let askedAbout = '';
+  let aboutFromId = 0;
   const worst = signal<WorstReading | null>(null);
   const swing = signal<readonly SwingPoint[] | null>(null);
   const beyond = signal<readonly SwingPoint[] | null>(null);
@@ -98,8 +101,10 @@ export function createReadings(
         period.value = message.period;
         return;
       case 'worst':
-        worst.value = message.swing?.worst ?? null;
-        swing.value = message.swing?.points ?? null;
+        if (message.id >= aboutFromId) {
+          worst.value = message.swing?.worst ?? null;
+          swing.value = message.swing?.points ?? null;
+        }
         return swingTurn.done();
       case 'plane':
         plane.value = message.plane;
@@ -134,6 +139,14 @@ export function createReadings(
     id++;
     noise.value = null;
     beyond.value = null;
+    // A value that moves keeps the ranges in sight until the new ones are there; those of another variant say nothing of this one.
+    const about = `${question.design.title} ${question.variantIndex}`;
+    if (about !== askedAbout) {
+      aboutFromId = id;
+      worst.value = null;
+      swing.value = null;
+    }
+    askedAbout = about;
     curves.clear();
     worker.post({ type: 'question', id, question });
     momentTurn.ask();

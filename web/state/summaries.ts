@@ -26,11 +26,12 @@ export function createSummaries(post: (index: number) => void) {
 
   return {
     all,
+    /** May stand in an effect: what it changes it does not listen to. */
     ask({ design, toneHz, toneV }: ToneQuestion) {
       const conditions = [design.tempC, toneHz, toneV].join(' ');
       wanted = design.variants.map((variant) => ({ variant, conditions }));
       known = known.slice(0, wanted.length);
-      all.value = wanted.map((about, n) => (same(about, known[n]) ? (all.value[n] ?? null) : null));
+      all.value = wanted.map((about, n) => (same(about, known[n]) ? (all.peek()[n] ?? null) : null));
       askNext();
     },
     note(index: number, summary: VariantSummary | null) {
@@ -38,7 +39,7 @@ export function createSummaries(post: (index: number) => void) {
       asked = null;
       if (about !== null && same(about, wanted[index])) {
         known = wanted.map((_, n) => (n === index ? about : known[n]));
-        all.value = wanted.map((_, n) => (n === index ? summary : (all.value[n] ?? null)));
+        all.value = wanted.map((_, n) => (n === index ? summary : (all.peek()[n] ?? null)));
       }
       askNext();
     },

@@ -1,3 +1,4 @@
+import { effect } from '@preact/signals';
 import { expect, test } from 'vitest';
 import { defaultDesign } from '../../../model/design/defaults.ts';
 import { createSummaries } from '../../../web/state/summaries.ts';
@@ -36,4 +37,17 @@ test('what cannot be read is asked for once', () => {
   summaries.note(0, null);
   expect(asked).toEqual([0]);
   expect(summaries.all.value).toEqual([null]);
+});
+
+test('asked in an effect they do not make it run again with each answer', () => {
+  const summaries = createSummaries(() => {});
+  let runs = 0;
+  const end = effect(() => {
+    runs++;
+    summaries.ask(question);
+  });
+  summaries.note(0, summary(0.1));
+  summaries.note(1, summary(0.2));
+  expect(runs).toBe(1);
+  end();
 });
