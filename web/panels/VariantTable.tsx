@@ -133,8 +133,11 @@ function EmptyRow({ letter }: { readonly letter: string }) {
   );
 }
 
+/** As narrow as the space before a unit, but where no line ends. */
+const NARROW_SPACE = '\u202f';
+
 function told(words: readonly string[]): string {
   if (words.length === 0) return 'the same as A';
   const rest = words.length - MOST_TOLD;
-  return [...words.slice(0, MOST_TOLD), ...(rest > 0 ? [`and ${rest} more`] : [])].join(', ');
+  return [...words.slice(0, MOST_TOLD), ...(rest > 0 ? [`and ${rest} more`] : [])].join(', ').replaceAll('\u2009', NARROW_SPACE);
 }
