@@ -26,6 +26,7 @@ import type { Sources } from './sources.ts';
 import { createSources } from './sources.ts';
 import type { Takes } from './takes.ts';
 import { createTakes } from './takes.ts';
+import { createTimeline } from './timeline.ts';
 
 /** Before any sound is open, a design is tried out at the lowest usual rate. */
 const TRY_OUT_HZ = 44100;
@@ -131,6 +132,7 @@ export function assembleBench(parts: Parts): Bench {
     ...levels,
     ...readings,
     ...takes,
+    ...createTimeline(document, takes),
     ...sources,
     examples: library.examples,
     notes: notes.notes,
