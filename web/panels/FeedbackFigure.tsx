@@ -46,8 +46,14 @@ export function FeedbackFigure() {
       title="Distortion against k"
       caption={
         <>
-          Distortion against <i>k</i> (drag it){drawable && <>, gate at {gateVolts(drawable.gateV)}</>}
-          {current ? <>. Shaded: 1{'\u2009'}% parts.</> : ' a moment ago.'}
+          Distortion against <i>k</i>
+          {drawable && (
+            <>
+              {' '}
+              (drag it), gate at {gateVolts(drawable.gateV)}
+              {current ? '' : ' a moment ago'}. Shaded: 1{'\u2009'}% parts.
+            </>
+          )}
         </>
       }
       draw={drawn}
