@@ -92,12 +92,13 @@ function swingOf(signal: Float64Array): number {
   return high - low;
 }
 
-/** Newton's method; the slope is renewed only where it no longer takes nine tenths of what is missing. `nearV` is near enough once it comes no nearer. */
+/** Newton's method; the slope is renewed only where it no longer takes nine tenths of what is missing. `nearV` is near enough once a new slope brings it no nearer. */
 function shoot(cell: Cell, run: () => void, search: Search, nearV: number): boolean {
   const n = cell.stateCount;
   if (n === 0) return true;
   const start = cell.state.slice();
   let before = Number.POSITIVE_INFINITY;
+  let isNew = false;
   for (let round = 0; round < NEWTON_ROUNDS; round++) {
     const from = cell.state.slice();
     run();
@@ -105,11 +106,13 @@ function shoot(cell: Cell, run: () => void, search: Search, nearV: number): bool
     if (repeats(from, miss)) return true;
     const end = cell.state.slice();
     const size = miss.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
-    if (round >= NEAREST_AFTER && size < nearV && size > 0.1 * before) {
+    const isSlow = size > 0.1 * before;
+    if (isSlow && isNew && round >= NEAREST_AFTER && size < nearV) {
       search.noiseV = size;
       return true;
     }
-    if (search.slope === null || size > 0.1 * before) search.slope = slopeAt(cell, run, from, end);
+    isNew = isSlow || search.slope === null;
+    if (isNew) search.slope = slopeAt(cell, run, from, end);
     if (search.slope === null) break;
     before = size;
     solve(search.slope.matrix, search.slope.pivots, n, miss, 1);

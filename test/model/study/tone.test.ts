@@ -192,3 +192,14 @@ test('a reading states its error: no less than its distance from a Runge-Kutta s
   for (const { n, amplitudeV } of reading.harmonics.slice(1, 4))
     expect(Math.abs(amplitudeV / exact[n] - 1)).toBeLessThan(reading.harmonicsError + 1e-11 / (exact[n] / exact[1]));
 });
+
+test('picofarads beside a shared ground of 0.1 Ω: found directly and converged, as without the ground to what its drop is of the signal', () => {
+  const shared = { kind: 'shared', groundOhm: 0.1, drawAPerV: 0 } as const;
+  const [plain, grounded] = [REAL_CELL, { ...REAL_CELL, sharedGround: shared }].map((cell) =>
+    measureTone(designOf(variantOf(cell, REAL_DEVICE, { source: 'fixed', controlV: -1.2 })), 0, { toneHz: 262, toneV: 0.15 }),
+  );
+  expect([grounded.settledByTime, grounded.converged, grounded.gridPoints <= 2048]).toEqual([false, true, true]);
+  // 0.1 Ω of some 10 kΩ.
+  expect(Math.abs(grounded.fundamentalV / plain.fundamentalV - 1)).toBeLessThan(1e-4);
+  expect(Math.abs(grounded.thdFundamental / plain.thdFundamental - 1)).toBeLessThan(1e-3);
+});
