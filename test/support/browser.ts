@@ -129,7 +129,8 @@ export async function openTab(browser: Browser, site: Site, options: TabOptions 
   if (options.beforeLoad) await page.addInitScript(options.beforeLoad);
   await page.goto(site.url + (options.path ?? ''), { waitUntil: 'load' });
   await peek(page, async () => {
-    while (!document.getElementById('sheet')?.hasChildNodes()) await new Promise((resolve) => setTimeout(resolve, 10));
+    const sheet = document.getElementById('sheet');
+    while (sheet !== null && !sheet.hasChildNodes()) await new Promise((resolve) => setTimeout(resolve, 10));
   });
   return { page, complaints, close: () => context.close() };
 }
