@@ -6,7 +6,7 @@ import { gzipSync } from 'node:zlib';
 import type { Plugin, Rolldown } from 'vite';
 import { defineConfig } from 'vitest/config';
 
-/** JavaScript that a first visit may load, compressed, in kB of 1000 bytes. The README states the same number. */
+/** JavaScript that a first visit may load, compressed, in kB of 1000 bytes. */
 const FIRST_LOAD_LIMIT_KB = 300;
 
 /** The worker that serves the page without a network stands at the root, since it serves what lies below it. */
@@ -124,7 +124,7 @@ export default defineConfig({
   publicDir: here('assets'),
   plugins: [policy, reloadWithModel, assetsWithoutScripts, offlineFiles, firstLoadBudget],
   oxc: { jsx: { runtime: 'automatic', importSource: 'preact' } },
-  // Kernels are alike, and compress to a fifth while their variables keep their names.
+  // Kernels are alike, and compress to half while their variables keep their names.
   worker: { format: 'es', rolldownOptions: { output: { minify: { mangle: false, compress: true, codegen: { removeWhitespace: true } } } } },
   server: { host: 'localhost', fs: { allow: [here('.')] } },
   preview: { host: 'localhost' },

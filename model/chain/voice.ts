@@ -1,9 +1,10 @@
 /**
  * One complete path of a chain, for one shape of circuit: oversamplers, cells, control and amplifier with their state. Values move along straight
  * lines in volts and gain, by equal ratios in conductance, capacitance and inductance; the cell's matrices are made anew every `updateEvery` upper-rate samples while they do, and
- * its coefficients go from one exact set to the next as `aimAt` in cell.ts says.
+ * its coefficients go from one exact set to the next as `aimAt` in cell/values.ts says.
  */
-import { aimAt, approach, approachMemory, arrive, type Cell, createCell, inheritStates, loadValuesOf, settle } from '../cell/cell.ts';
+import { type Cell, createCell, inheritStates, settle } from '../cell/cell.ts';
+import { aimAt, approach, approachMemory, arrive, loadValuesOf } from '../cell/values.ts';
 import { noiseWidth } from '../cell/kernels/layout.ts';
 import { quietControlV } from '../control/control.ts';
 import { createGaussian, type GaussianSource } from '../device/random.ts';

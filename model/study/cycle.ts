@@ -102,6 +102,7 @@ export function measureOverCycle(design: Design, variantIndex: number, options: 
       value: { lines, regions: regionShares(period), byTime: period.byTime },
       watched: watchedIn(lines, periods),
       settled: period.settled,
+      noiseV: period.noiseV,
     };
   });
   const { lines, regions, byTime } = cycle.value;

@@ -37,12 +37,13 @@ export function feedthroughOf(design: Design, variantIndex: number, channel: num
   const numbers = cellNumbers(design, variantIndex, channel);
   const readOn = (points: number): OnGrid<{ lines: Lines; output: Float64Array; byTime: boolean }> => {
     const cell = createCell(numbers, 1 / (control.rateHz * points));
-    const { output, settled, byTime } = periodOf(cell, new Float64Array(points), controlOver(control, points).ends);
+    const { output, settled, byTime, noiseV } = periodOf(cell, new Float64Array(points), controlOver(control, points).ends);
     const lines = linesOf(output);
     return {
       value: { lines, output, byTime },
       watched: Float64Array.from({ length: LFO_HARMONICS }, (_, i) => lineAmplitude(lines, i + 1)),
       settled,
+      noiseV,
     };
   };
   const { value, gridPoints, changed, converged } = refined(COARSEST, FINEST, readOn, { ...TO_READ, largest: STOPPED });

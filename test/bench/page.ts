@@ -136,6 +136,8 @@ async function main(site: Site, minutes: number): Promise<void> {
   await browser.close();
 }
 
+const minutes = Number(process.argv[2] ?? 0);
+if (!(minutes >= 0)) throw new RangeError(`the minutes of playing are “${process.argv[2]}”; expected a number of 0 or more`);
 const site = await serveDist();
-await main(site, Number(process.argv[2] ?? 0));
+await main(site, minutes);
 await site.close();

@@ -2,16 +2,8 @@
  * Random cells judged sample by sample. One case is one solved sample: its own signal and control, in a circuit of its own or with values of its own
  * since the last move.
  */
-import {
-  advanceCell,
-  type Cell,
-  type CellNumbers,
-  compileCell,
-  createCell,
-  loadValues,
-  settle,
-  forReadings,
-} from '../../model/cell/cell.ts';
+import { advanceCell, type Cell, type CellNumbers, compileCell, createCell, settle, forReadings } from '../../model/cell/cell.ts';
+import { loadValues } from '../../model/cell/values.ts';
 import type { Circuit } from '../../model/cell/circuit.ts';
 import { FALLBACKS } from '../../model/cell/kernels/layout.ts';
 import { shuntCircuit } from '../../model/cell/shunt.ts';

@@ -3,7 +3,7 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { findAccessFaults, launchBrowser, openTab, type Site, serveDist } from '../support/browser.ts';
 
-const WIDTHS = [320, 390, 1280, 1920, 2560];
+const WIDTHS = [320, 390, 768, 1280, 1600, 1920, 2560];
 const FEEDBACK = 'Feedback from drain to gate';
 const CONTROL = 'Control: what moves the gate';
 

@@ -10,8 +10,7 @@ import { installSoundProbe } from './soundProbe.ts';
 
 const asset = (path: string) => readFileSync(new URL(`../../assets/${path}`, import.meta.url));
 
-/** All of a minute: FETTLE_GAPS_SEC=60. */
-const RUN_SEC = Number(process.env.FETTLE_GAPS_SEC ?? 30);
+const RUN_SEC = 60;
 /**
  * The machine's other programs can only add gaps, and hit the busier of two threads first, so the best of a few runs is nearest to what the sound
  * needs by itself. A chain that is too slow has several gaps each second of every run.

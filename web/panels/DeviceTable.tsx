@@ -41,7 +41,7 @@ const AMPLIFIER: readonly Entry[] = [
   { path: 'output.swingV', what: 'Swing, either side of 0\u2009V', short: 'The swing' },
 ];
 
-/** Of a right channel's part: its law is the left one's. */
+/** Of a right channel's part; its channel and law are chosen with the left one's. */
 const RIGHT: readonly Entry[] = [
   { path: 'devices.1.idssA', what: 'IDSS of the right channel’s J1', short: 'The right channel’s IDSS' },
   { path: 'devices.1.gateOffV', what: 'VGS(off) of the right channel’s J1', short: 'The right channel’s VGS(off)' },

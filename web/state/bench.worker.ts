@@ -13,6 +13,10 @@ let asked: { id: number; question: ToneQuestion } | null = null;
 type Work = 'curve' | 'swing' | 'noise' | 'variant';
 /** What is looked at while values move comes first, the curve before all. */
 const ORDER: readonly Work[] = ['curve', 'swing', 'noise', 'variant'];
+/** One stretch in so many is for the others first: a curve that is asked for again and again leaves them room. */
+const TURN = 4;
+const OTHERS_FIRST: readonly Work[] = ['swing', 'noise', 'variant', 'curve'];
+let stretches = 0;
 /** Of one go. */
 const STRETCH_MS = 5;
 /** In small steps. */
@@ -62,8 +66,8 @@ function begin(name: Work, steps: Generator<void, void>): void {
   pump.port2.postMessage(null);
 }
 
-function step(): void {
-  const name = ORDER.find((each) => work.has(each));
+function step(order: readonly Work[]): void {
+  const name = order.find((each) => work.has(each));
   const steps = name && work.get(name);
   if (name && steps?.next().done && work.get(name) === steps) work.delete(name);
 }
@@ -71,7 +75,9 @@ function step(): void {
 /** A stretch of the work, then back to the queue, so that a moment never waits for long. */
 pump.port1.onmessage = () => {
   const end = performance.now() + STRETCH_MS;
-  do step();
+  stretches += 1;
+  const order = stretches % TURN === 0 ? OTHERS_FIRST : ORDER;
+  do step(order);
   while (work.size > 0 && performance.now() < end);
   pumping = work.size > 0;
   if (pumping) pump.port2.postMessage(null);

@@ -16,7 +16,7 @@ import { currents, searchPorts, stay } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
-  const a = s[n + 38], b = s[n + 39], freeA = s[n + 40];
+  const a = s[n + 36], b = s[n + 37], freeA = s[n + 38];
   const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
   const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 13];
   const clampA = c[device + 15], clampRate = c[device + 16], clampOn = c[device + 14], grading = c[device + 18];
@@ -26,13 +26,13 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
   const scale = c[device + 6];
   const inverseWidth = c[device + 7];
   const slope = c[device + 8];
-  const lastS = s[n + 47], earlierS = s[n + 36], freeS = a + perAs * freeA;
-  const wayS = 2 * lastS - 3 * earlierS + s[n + 49];
+  const lastS = s[n + 44], earlierS = s[n + 46], freeS = a + perAs * freeA;
+  const wayS = 2 * lastS - 3 * earlierS + s[n + 48];
   let vs = lastS > onS ? lastS + (wayS * rateS < 0.5 && wayS * rateS > -0.5 ? wayS : 0) : kneeS;
   if (grading != 0 && lastS < onS) vs = lastS + wayS;
   else if (freeS < vs) vs = freeS;
-  const lastD = s[n + 48], earlierD = s[n + 37], freeD = b + perAd * freeA;
-  const wayD = 2 * lastD - 3 * earlierD + s[n + 50];
+  const lastD = s[n + 45], earlierD = s[n + 47], freeD = b + perAd * freeA;
+  const wayD = 2 * lastD - 3 * earlierD + s[n + 49];
   let vd = lastD > onD ? lastD + (wayD * rateD < 0.5 && wayD * rateD > -0.5 ? wayD : 0) : kneeD;
   if (grading != 0 && lastD < onD) vd = lastD + wayD;
   else if (freeD < vd) vd = freeD;
@@ -62,17 +62,17 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     if (vs > onD) {
       const x = movedS * rateD;
       if (junctionS > 0 && x < 1e-3 && x > -1e-3) junctionS = junctionS * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 41] = (vs + off) * rateD; expAt(s, n + 41); junctionS = reverse * s[n + 41]; }
+      else { s[n + 39] = (vs + off) * rateD; expAt(s, n + 39); junctionS = reverse * s[n + 39]; }
     } else junctionS = 0;
     if (vd > onD) {
       const x = movedD * rateD;
       if (junctionD > 0 && x < 1e-3 && x > -1e-3) junctionD = junctionD * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 41] = (vd + off) * rateD; expAt(s, n + 41); junctionD = reverse * s[n + 41]; }
+      else { s[n + 39] = (vd + off) * rateD; expAt(s, n + 39); junctionD = reverse * s[n + 39]; }
     } else junctionD = 0;
     if (vs > clampOn) {
       const x = movedS * clampRate;
       if (clamped > 0 && x < 1e-3 && x > -1e-3) clamped = clamped * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 41] = (vs + off) * clampRate; expAt(s, n + 41); clamped = clampA * s[n + 41]; }
+      else { s[n + 39] = (vs + off) * clampRate; expAt(s, n + 39); clamped = clampA * s[n + 39]; }
     } else clamped = 0;
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
@@ -88,8 +88,8 @@ function conduct_gradual(c: Float64Array, t: Float64Array, device: number, aI: n
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 49] = earlierS; s[n + 50] = earlierD; s[n + 36] = lastS; s[n + 37] = lastD;
-      s[n + 47] = vs; s[n + 48] = vd; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 48] = earlierS; s[n + 49] = earlierD; s[n + 46] = lastS; s[n + 47] = lastD;
+      s[n + 44] = vs; s[n + 45] = vd; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -126,7 +126,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[35];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[46], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[50], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -169,10 +169,10 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[36] = a; s[37] = b; searched(c, t, 18, 3, 7, s, 0); I = s[38]; s[8] += 1; E0 = I; I0 = I; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[36] = a; s[37] = b; s[38] = I;
       conduct_gradual(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
@@ -184,7 +184,7 @@ function gradual0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[46] = F0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[50] = F0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -218,7 +218,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[51];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[47], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[51], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -265,10 +265,10 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[37] = a; s[38] = b; searched(c, t, 34, 4, 9, s, 1); I = s[39]; s[9] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[39] = a; s[40] = b; s[41] = I;
+      s[37] = a; s[38] = b; s[39] = I;
       conduct_gradual(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -290,7 +290,7 @@ function gradual1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[47] = F0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[51] = F0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -340,7 +340,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[48], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[52], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -389,10 +389,10 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 54, 5, 11, s, 2); I = s[40]; s[10] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[40] = a; s[41] = b; s[42] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -418,7 +418,7 @@ function gradual2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[48] = F0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[52] = F0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -488,7 +488,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[49], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[53], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -539,10 +539,10 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 78, 6, 13, s, 3); I = s[41]; s[11] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[41] = a; s[42] = b; s[43] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -572,7 +572,7 @@ function gradual3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[49] = F0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[53] = F0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -666,7 +666,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x2 = s[2];
   let x3 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[50], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[54], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -719,10 +719,10 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 106, 7, 15, s, 4); I = s[42]; s[12] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -756,7 +756,7 @@ function gradual4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   s[2] = x2;
   s[3] = x3;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[50] = F0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[54] = F0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -790,7 +790,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x0 = s[0];
   let e0 = s[1], f0 = s[2], g0 = s[3];
   let u0 = s[4], v0 = s[5];
-  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[50], vs = s[9], vd = s[10];
+  let I0 = s[6], S0 = s[7], D0 = s[8], E0 = s[11], F0 = s[54], vs = s[9], vd = s[10];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -835,10 +835,10 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 34, 4, 9, s, 4); I = s[42]; s[12] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_gradual(c, t, 34, 4, 9, 20, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -862,7 +862,7 @@ function gradual0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[0] = x0;
   s[1] = e0; s[2] = f0; s[3] = g0;
   s[4] = u0; s[5] = v0;
-  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[50] = F0;
+  s[6] = I0; s[7] = S0; s[8] = D0; s[11] = E0; s[54] = F0;
   if (to > from) { s[9] = vs; s[10] = vd; }
 }
 
@@ -912,7 +912,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   let x1 = s[1];
   let e1 = s[2], f1 = s[3], g1 = s[4];
   let u0 = s[5], v0 = s[6];
-  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], F0 = s[51], vs = s[10], vd = s[11];
+  let I0 = s[7], S0 = s[8], D0 = s[9], E0 = s[12], F0 = s[55], vs = s[10], vd = s[11];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -961,10 +961,10 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 54, 5, 11, s, 5); I = s[43]; s[13] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[41] = a; s[42] = b; s[43] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 5);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
@@ -992,7 +992,7 @@ function gradual1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
   s[1] = x1;
   s[2] = e1; s[3] = f1; s[4] = g1;
   s[5] = u0; s[6] = v0;
-  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[51] = F0;
+  s[7] = I0; s[8] = S0; s[9] = D0; s[12] = E0; s[55] = F0;
   if (to > from) { s[10] = vs; s[11] = vd; }
 }
 
@@ -1036,7 +1036,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[58], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1083,10 +1083,10 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[44] = a; s[45] = b; searched(c, t, 54, 5, 11, s, 8); I = s[46]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[46] = a; s[47] = b; s[48] = I;
+      s[44] = a; s[45] = b; s[46] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -1114,7 +1114,7 @@ function gradual0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[58] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1177,7 +1177,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[59], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1228,10 +1228,10 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[45] = a; s[46] = b; searched(c, t, 78, 6, 13, s, 9); I = s[47]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[45] = a; s[46] = b; s[47] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1263,7 +1263,7 @@ function gradual1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[59] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1349,7 +1349,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[56], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[60], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1402,10 +1402,10 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 106, 7, 15, s, 10); I = s[48]; s[18] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[48] = a; s[49] = b; s[50] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -1441,7 +1441,7 @@ function gradual2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[56] = F0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[60] = F0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -1479,7 +1479,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[58], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1526,10 +1526,10 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[44] = a; s[45] = b; searched(c, t, 54, 5, 11, s, 8); I = s[46]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[46] = a; s[47] = b; s[48] = I;
+      s[44] = a; s[45] = b; s[46] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -1551,7 +1551,7 @@ function gradual0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[58] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -1607,7 +1607,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[59], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1658,10 +1658,10 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[45] = a; s[46] = b; searched(c, t, 78, 6, 13, s, 9); I = s[47]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[45] = a; s[46] = b; s[47] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1691,7 +1691,7 @@ function gradual1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[59] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -1716,7 +1716,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const inverseWidth = c[25];
   const slope = c[26];
   const enough = c[35];
-  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[46], vs = s[5], vd = s[6];
+  let I0 = s[2], S0 = s[3], D0 = s[4], E0 = s[7], F0 = s[50], vs = s[5], vd = s[6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1759,10 +1759,10 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b3 - a3) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[36] = a; s[37] = b; searched(c, t, 18, 3, 7, s, 0); I = s[38]; s[8] += 1; E0 = I; I0 = I; }
     vs = a + a3 * I; vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[36] = a; s[37] = b; s[38] = I;
       conduct_gradual(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
@@ -1781,7 +1781,7 @@ function gradual0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     }
     F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
-  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[46] = F0;
+  s[2] = I0; s[3] = S0; s[4] = D0; s[7] = E0; s[50] = F0;
   if (to > from) { s[5] = vs; s[6] = vd; }
 }
 
@@ -1820,7 +1820,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   const enough = c[51];
   let x0 = s[0];
   let u0 = s[1], v0 = s[2];
-  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[47], vs = s[6], vd = s[7];
+  let I0 = s[3], S0 = s[4], D0 = s[5], E0 = s[8], F0 = s[51], vs = s[6], vd = s[7];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -1867,10 +1867,10 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b4 - a4) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[37] = a; s[38] = b; searched(c, t, 34, 4, 9, s, 1); I = s[39]; s[9] += 1; E0 = I; I0 = I; }
     vs = a + a4 * I; vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[39] = a; s[40] = b; s[41] = I;
+      s[37] = a; s[38] = b; s[39] = I;
       conduct_gradual(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -1895,7 +1895,7 @@ function gradual1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   }
   s[0] = x0;
   s[1] = u0; s[2] = v0;
-  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[47] = F0;
+  s[3] = I0; s[4] = S0; s[5] = D0; s[8] = E0; s[51] = F0;
   if (to > from) { s[6] = vs; s[7] = vd; }
 }
 
@@ -1951,7 +1951,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x0 = s[0];
   let x1 = s[1];
   let u0 = s[2], v0 = s[3];
-  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[48], vs = s[7], vd = s[8];
+  let I0 = s[4], S0 = s[5], D0 = s[6], E0 = s[9], F0 = s[52], vs = s[7], vd = s[8];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2000,10 +2000,10 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[38] = a; s[39] = b; searched(c, t, 54, 5, 11, s, 2); I = s[40]; s[10] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[40] = a; s[41] = b; s[42] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -2032,7 +2032,7 @@ function gradual2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   s[0] = x0;
   s[1] = x1;
   s[2] = u0; s[3] = v0;
-  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[48] = F0;
+  s[4] = I0; s[5] = S0; s[6] = D0; s[9] = E0; s[52] = F0;
   if (to > from) { s[7] = vs; s[8] = vd; }
 }
 
@@ -2109,7 +2109,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   let x1 = s[1];
   let x2 = s[2];
   let u0 = s[3], v0 = s[4];
-  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[49], vs = s[8], vd = s[9];
+  let I0 = s[5], S0 = s[6], D0 = s[7], E0 = s[10], F0 = s[53], vs = s[8], vd = s[9];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2160,10 +2160,10 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[39] = a; s[40] = b; searched(c, t, 78, 6, 13, s, 3); I = s[41]; s[11] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[41] = a; s[42] = b; s[43] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -2196,7 +2196,7 @@ function gradual3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
   s[1] = x1;
   s[2] = x2;
   s[3] = u0; s[4] = v0;
-  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[49] = F0;
+  s[5] = I0; s[6] = S0; s[7] = D0; s[10] = E0; s[53] = F0;
   if (to > from) { s[8] = vs; s[9] = vd; }
 }
 
@@ -2252,7 +2252,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e0 = s[2], f0 = s[4], g0 = s[6];
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let u0 = s[8], v0 = s[9];
-  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[54], vs = s[13], vd = s[14];
+  let I0 = s[10], S0 = s[11], D0 = s[12], E0 = s[15], F0 = s[58], vs = s[13], vd = s[14];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2299,10 +2299,10 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b5 - a5) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[44] = a; s[45] = b; searched(c, t, 54, 5, 11, s, 8); I = s[46]; s[16] += 1; E0 = I; I0 = I; }
     vs = a + a5 * I; vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[46] = a; s[47] = b; s[48] = I;
+      s[44] = a; s[45] = b; s[46] = I;
       conduct_gradual(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -2335,7 +2335,7 @@ function gradual0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[2] = e0; s[4] = f0; s[6] = g0;
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[8] = u0; s[9] = v0;
-  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[54] = F0;
+  s[10] = I0; s[11] = S0; s[12] = D0; s[15] = E0; s[58] = F0;
   if (to > from) { s[13] = vs; s[14] = vd; }
 }
 
@@ -2412,7 +2412,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e1 = s[3], f1 = s[5], g1 = s[7];
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let u0 = s[9], v0 = s[10];
-  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[55], vs = s[14], vd = s[15];
+  let I0 = s[11], S0 = s[12], D0 = s[13], E0 = s[16], F0 = s[59], vs = s[14], vd = s[15];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2463,10 +2463,10 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b6 - a6) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[45] = a; s[46] = b; searched(c, t, 78, 6, 13, s, 9); I = s[47]; s[17] += 1; E0 = I; I0 = I; }
     vs = a + a6 * I; vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[45] = a; s[46] = b; s[47] = I;
       conduct_gradual(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -2503,7 +2503,7 @@ function gradual1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[3] = e1; s[5] = f1; s[7] = g1;
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[9] = u0; s[10] = v0;
-  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[55] = F0;
+  s[11] = I0; s[12] = S0; s[13] = D0; s[16] = E0; s[59] = F0;
   if (to > from) { s[14] = vs; s[15] = vd; }
 }
 
@@ -2605,7 +2605,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e2 = s[4], f2 = s[6], g2 = s[8];
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let u0 = s[10], v0 = s[11];
-  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[56], vs = s[15], vd = s[16];
+  let I0 = s[12], S0 = s[13], D0 = s[14], E0 = s[17], F0 = s[60], vs = s[15], vd = s[16];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2658,10 +2658,10 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[46] = a; s[47] = b; searched(c, t, 106, 7, 15, s, 10); I = s[48]; s[18] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[48] = a; s[49] = b; s[50] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -2702,7 +2702,7 @@ function gradual2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[4] = e2; s[6] = f2; s[8] = g2;
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[10] = u0; s[11] = v0;
-  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[56] = F0;
+  s[12] = I0; s[13] = S0; s[14] = D0; s[17] = E0; s[60] = F0;
   if (to > from) { s[15] = vs; s[16] = vd; }
 }
 
@@ -2833,7 +2833,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   let e3 = s[5], f3 = s[7], g3 = s[9];
   let e4 = s[6], f4 = s[8], g4 = s[10];
   let u0 = s[11], v0 = s[12];
-  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], F0 = s[57], vs = s[16], vd = s[17];
+  let I0 = s[13], S0 = s[14], D0 = s[15], E0 = s[18], F0 = s[61], vs = s[16], vd = s[17];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -2888,10 +2888,10 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[47] = a; s[48] = b; searched(c, t, 138, 8, 17, s, 11); I = s[49]; s[19] += 1; E0 = I; I0 = I; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[49] = a; s[50] = b; s[51] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_gradual(c, t, 138, 8, 17, 72, s, 11);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
@@ -2936,7 +2936,7 @@ function gradual3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
   s[5] = e3; s[7] = f3; s[9] = g3;
   s[6] = e4; s[8] = f4; s[10] = g4;
   s[11] = u0; s[12] = v0;
-  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[57] = F0;
+  s[13] = I0; s[14] = S0; s[15] = D0; s[18] = E0; s[61] = F0;
   if (to > from) { s[16] = vs; s[17] = vd; }
 }
 
@@ -3038,7 +3038,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e2 = s[5], f2 = s[8], g2 = s[11];
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let u0 = s[13], v0 = s[14];
-  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], F0 = s[59], vs = s[18], vd = s[19];
+  let I0 = s[15], S0 = s[16], D0 = s[17], E0 = s[20], F0 = s[63], vs = s[18], vd = s[19];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3091,10 +3091,10 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       const moved = (b7 - a7) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[49] = a; s[50] = b; searched(c, t, 106, 7, 15, s, 13); I = s[51]; s[21] += 1; E0 = I; I0 = I; }
     vs = a + a7 * I; vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[51] = a; s[52] = b; s[53] = I;
+      s[49] = a; s[50] = b; s[51] = I;
       conduct_gradual(c, t, 106, 7, 15, 56, s, 13);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
@@ -3137,7 +3137,7 @@ function gradual1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[5] = e2; s[8] = f2; s[11] = g2;
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[13] = u0; s[14] = v0;
-  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[59] = F0;
+  s[15] = I0; s[16] = S0; s[17] = D0; s[20] = E0; s[63] = F0;
   if (to > from) { s[18] = vs; s[19] = vd; }
 }
 
@@ -3268,7 +3268,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   let e3 = s[6], f3 = s[9], g3 = s[12];
   let e4 = s[7], f4 = s[10], g4 = s[13];
   let u0 = s[14], v0 = s[15];
-  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], F0 = s[60], vs = s[19], vd = s[20];
+  let I0 = s[16], S0 = s[17], D0 = s[18], E0 = s[21], F0 = s[64], vs = s[19], vd = s[20];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i];
     const qs = vs, qd = vd;
@@ -3323,10 +3323,10 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
       const moved = (b8 - a8) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[50] = a; s[51] = b; searched(c, t, 138, 8, 17, s, 14); I = s[52]; s[22] += 1; E0 = I; I0 = I; }
     vs = a + a8 * I; vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[52] = a; s[53] = b; s[54] = I;
+      s[50] = a; s[51] = b; s[52] = I;
       conduct_gradual(c, t, 138, 8, 17, 72, s, 14);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
@@ -3373,7 +3373,7 @@ function gradual2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Fl
   s[6] = e3; s[9] = f3; s[12] = g3;
   s[7] = e4; s[10] = f4; s[13] = g4;
   s[14] = u0; s[15] = v0;
-  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[60] = F0;
+  s[16] = I0; s[17] = S0; s[18] = D0; s[21] = E0; s[64] = F0;
   if (to > from) { s[19] = vs; s[20] = vd; }
 }
 
@@ -3393,7 +3393,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
   const slope = c[device + 8];
   const enough = c[device + 17];
   let u0 = s[slots + 0], v0 = s[slots + 1];
-  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], F0 = s[slots + 46], vs = s[slots + 5], vd = s[slots + 6];
+  let I0 = s[slots + 2], S0 = s[slots + 3], D0 = s[slots + 4], E0 = s[slots + 7], F0 = s[slots + 50], vs = s[slots + 5], vd = s[slots + 6];
   for (let i = from; i < to; i++) {
     const u = audio[i], v = control[i], noise = i * (rows + 1);
     const qs = vs, qd = vd;
@@ -3460,10 +3460,10 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
       const moved = (perAd - perAs) * change;
       if (moved < enough && moved > -enough) { settled = 1; break; }
     }
-    if (settled == 0) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; E0 = I; I0 = I; }
+    if (settled == 0) { s[slots + 36] = a; s[slots + 37] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 38]; s[slots + 8] += 1; E0 = I; I0 = I; }
     vs = a + perAs * I; vd = b + perAd * I;
     if (vs > on || vd > on) {
-      s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I;
+      s[slots + 36] = a; s[slots + 37] = b; s[slots + 38] = I;
       conduct_gradual(c, t, device, aI, bI, junction, s, slots);
       I = s[slots + 2]; S = s[slots + 3]; D = s[slots + 4]; vs = s[slots + 5]; vd = s[slots + 6];
     }
@@ -3484,7 +3484,7 @@ function looped_gradual(trapezoidal: number, stiff: number): Kernel {
     F0 = E0; E0 = I0; I0 = I; S0 = S; D0 = D;
   }
   s[slots + 0] = u0; s[slots + 1] = v0;
-  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 46] = F0;
+  s[slots + 2] = I0; s[slots + 3] = S0; s[slots + 4] = D0; s[slots + 7] = E0; s[slots + 50] = F0;
   if (to > from) { s[slots + 5] = vs; s[slots + 6] = vd; }
   };
 }

@@ -42,12 +42,12 @@ export const SCALE = 6;
 /** Gradual: 1/W, and the slope G0, S. Smooth: 1/T, and the slope unit β·T^Q/T, S. */
 export const INVERSE_WIDTH = 7;
 export const SLOPE = 8;
-/** Smooth: pieces in the table, and the exponent Q. */
-export const PIECES = 11;
-export const EXPONENT = 12;
 /** Square law: 2βα and 2βγ, with α and γ the fall and rise of the two overdrives for each ampere. */
 export const FALL = 9;
 export const RISE = 10;
+/** Smooth: pieces in the table, and the exponent Q. */
+export const PIECES = 11;
+export const EXPONENT = 12;
 /** The same threshold for the junctions and for the clamp from gate to source, and the clamp's reverse current and 1/nVT. */
 export const JUNCTION_ON_V = 13;
 export const CLAMP_ON_V = 14;
@@ -104,7 +104,7 @@ export const JUNCTION_D = 4;
 /** Overdrives of the two ends, V. */
 export const OVERDRIVE_S = 5;
 export const OVERDRIVE_D = 6;
-/** Channel current of the sample before the last, for the first guess, A; EARLIEST_A goes with it. */
+/** Channel current of the sample before the last, for the first guess, A; EARLIEST_A is that of the sample before. */
 export const EARLIER_A = 7;
 /** Samples that Newton's method left to the bisection behind it. */
 export const FALLBACKS = 8;
@@ -121,27 +121,26 @@ export const CHARGES_D = 25;
 export const BEFORE_S = 33;
 export const BEFORE_D = 34;
 export const PER_A = 35;
-/** Overdrives of the last three conducting samples, the newest first, for the first guess of the next, V: LATEST_S, LATEST_D and so on. */
-export const EARLIER_S = 36;
-export const EARLIER_D = 37;
 /**
  * For a conductor, and for what channel.ts solves: overdrives without currents, V, and the channel current without the junctions', A; then the argument
  * of an exponential and its value.
  */
-export const GIVEN_A = 38;
-export const GIVEN_B = 39;
-export const GIVEN_FREE = 40;
-export const POWER = 41;
+export const GIVEN_A = 36;
+export const GIVEN_B = 37;
+export const GIVEN_FREE = 38;
+export const POWER = 39;
 /** Working memory of ports.ts: by how much the equations of the two ends are missed, V. */
-export const MISSED_S = 42;
-export const MISSED_D = 43;
+export const MISSED_S = 40;
+export const MISSED_D = 41;
 /** Of channel.ts: by how much the channel's current exceeds the one given, A, and the derivative of that. */
-export const EXCESS_A = 44;
-export const EXCESS_SLOPE = 45;
-/** Channel current of the sample before that of EARLIER_A, A. */
-export const EARLIEST_A = 46;
-export const LATEST_S = 47;
-export const LATEST_D = 48;
-export const EARLIEST_S = 49;
-export const EARLIEST_D = 50;
+export const EXCESS_A = 42;
+export const EXCESS_SLOPE = 43;
+/** Overdrives of the last three conducting samples, the newest first, for the first guess of the next, V. */
+export const LATEST_S = 44;
+export const LATEST_D = 45;
+export const EARLIER_S = 46;
+export const EARLIER_D = 47;
+export const EARLIEST_S = 48;
+export const EARLIEST_D = 49;
+export const EARLIEST_A = 50;
 export const STATE_SLOTS = 51;

@@ -16,7 +16,7 @@ import { currents, searchPorts, stay } from './ports.ts';
 import { expAt } from '../../device/math.ts';
 
 function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: number, bI: number, junction: number, s: Float64Array, n: number): void {
-  const a = s[n + 38], b = s[n + 39], freeA = s[n + 40];
+  const a = s[n + 36], b = s[n + 37], freeA = s[n + 38];
   const perAs = c[aI], perAd = c[bI], aS = c[junction], aD = c[junction + 1], bS = c[junction + 2], bD = c[junction + 3];
   const off = c[device + 1], reverse = c[device + 3], rateD = c[device + 4], onD = c[device + 13];
   const clampA = c[device + 15], clampRate = c[device + 16], clampOn = c[device + 14], grading = c[device + 18];
@@ -24,13 +24,13 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
   const enough = 0.1 * c[device + 17], rounding = 1e-15 * (Math.abs(a) + Math.abs(b));
   const lambda = c[device + 5];
   const scale = c[device + 6];
-  const lastS = s[n + 47], earlierS = s[n + 36], freeS = a + perAs * freeA;
-  const wayS = 2 * lastS - 3 * earlierS + s[n + 49];
+  const lastS = s[n + 44], earlierS = s[n + 46], freeS = a + perAs * freeA;
+  const wayS = 2 * lastS - 3 * earlierS + s[n + 48];
   let vs = lastS > onS ? lastS + (wayS * rateS < 0.5 && wayS * rateS > -0.5 ? wayS : 0) : kneeS;
   if (grading != 0 && lastS < onS) vs = lastS + wayS;
   else if (freeS < vs) vs = freeS;
-  const lastD = s[n + 48], earlierD = s[n + 37], freeD = b + perAd * freeA;
-  const wayD = 2 * lastD - 3 * earlierD + s[n + 50];
+  const lastD = s[n + 45], earlierD = s[n + 47], freeD = b + perAd * freeA;
+  const wayD = 2 * lastD - 3 * earlierD + s[n + 49];
   let vd = lastD > onD ? lastD + (wayD * rateD < 0.5 && wayD * rateD > -0.5 ? wayD : 0) : kneeD;
   if (grading != 0 && lastD < onD) vd = lastD + wayD;
   else if (freeD < vd) vd = freeD;
@@ -48,17 +48,17 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     if (vs > onD) {
       const x = movedS * rateD;
       if (junctionS > 0 && x < 1e-3 && x > -1e-3) junctionS = junctionS * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 41] = (vs + off) * rateD; expAt(s, n + 41); junctionS = reverse * s[n + 41]; }
+      else { s[n + 39] = (vs + off) * rateD; expAt(s, n + 39); junctionS = reverse * s[n + 39]; }
     } else junctionS = 0;
     if (vd > onD) {
       const x = movedD * rateD;
       if (junctionD > 0 && x < 1e-3 && x > -1e-3) junctionD = junctionD * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 41] = (vd + off) * rateD; expAt(s, n + 41); junctionD = reverse * s[n + 41]; }
+      else { s[n + 39] = (vd + off) * rateD; expAt(s, n + 39); junctionD = reverse * s[n + 39]; }
     } else junctionD = 0;
     if (vs > clampOn) {
       const x = movedS * clampRate;
       if (clamped > 0 && x < 1e-3 && x > -1e-3) clamped = clamped * (1 + x * (1 + x * (0.5 + x * 0.16666666666666666)));
-      else { s[n + 41] = (vs + off) * clampRate; expAt(s, n + 41); clamped = clampA * s[n + 41]; }
+      else { s[n + 39] = (vs + off) * clampRate; expAt(s, n + 39); clamped = clampA * s[n + 39]; }
     } else clamped = 0;
     let S = junctionS + clamped, slopeS = junctionS * rateD + clamped * clampRate, D = junctionD, slopeD = junctionD * rateD;
     if (grading != 0) {
@@ -74,8 +74,8 @@ function conduct_square(c: Float64Array, t: Float64Array, device: number, aI: nu
     const stepD = wholeD * rateD <= 2 ? wholeD : vd < onD ? Math.min(wholeD, kneeD - vd) : (2 + wholeD * rateD / (1 + 0.1 * wholeD * rateD)) / rateD;
     vs += stepS; vd += stepD; movedS = stepS; movedD = stepD;
     if (Math.abs(stepS) < enough && Math.abs(stepD) < enough) {
-      s[n + 49] = earlierS; s[n + 50] = earlierD; s[n + 36] = lastS; s[n + 37] = lastD;
-      s[n + 47] = vs; s[n + 48] = vd; s[n + 5] = vs; s[n + 6] = vd;
+      s[n + 48] = earlierS; s[n + 49] = earlierD; s[n + 46] = lastS; s[n + 47] = lastD;
+      s[n + 44] = vs; s[n + 45] = vd; s[n + 5] = vs; s[n + 6] = vd;
       s[n + 2] = channel + fs * stepS - fd * stepD;
       s[n + 3] = S + slopeS * stepS; s[n + 4] = D + slopeD * stepD;
       if (grading != 0) {
@@ -123,7 +123,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[36] = a; s[37] = b; searched(c, t, 18, 3, 7, s, 0); I = s[38]; s[8] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -133,7 +133,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 18, 3, 7, s, 0); I = s[40]; }
+        if (lambda != 0) { s[36] = a; s[37] = b; s[38] = I; bent(c, t, 18, 3, 7, s, 0); I = s[38]; }
       } else if (p < 0) {
         const over = a + a3 * I, under = b + b3 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -142,7 +142,7 @@ function square0__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[36] = a; s[37] = b; s[38] = I;
       conduct_square(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
@@ -203,7 +203,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[37] = a; s[38] = b; searched(c, t, 34, 4, 9, s, 1); I = s[39]; s[9] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -213,7 +213,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 34, 4, 9, s, 1); I = s[41]; }
+        if (lambda != 0) { s[37] = a; s[38] = b; s[39] = I; bent(c, t, 34, 4, 9, s, 1); I = s[39]; }
       } else if (p < 0) {
         const over = a + a4 * I, under = b + b4 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -222,7 +222,7 @@ function square1__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[39] = a; s[40] = b; s[41] = I;
+      s[37] = a; s[38] = b; s[39] = I;
       conduct_square(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -311,7 +311,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 54, 5, 11, s, 2); I = s[40]; s[10] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -321,7 +321,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 54, 5, 11, s, 2); I = s[42]; }
+        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 54, 5, 11, s, 2); I = s[40]; }
       } else if (p < 0) {
         const over = a + a5 * I, under = b + b5 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -330,7 +330,7 @@ function square2__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[40] = a; s[41] = b; s[42] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -445,7 +445,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 78, 6, 13, s, 3); I = s[41]; s[11] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -455,7 +455,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[41] = a; s[42] = b; s[43] = I; bent(c, t, 78, 6, 13, s, 3); I = s[43]; }
+        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 78, 6, 13, s, 3); I = s[41]; }
       } else if (p < 0) {
         const over = a + a6 * I, under = b + b6 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -464,7 +464,7 @@ function square3__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[41] = a; s[42] = b; s[43] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -609,7 +609,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 106, 7, 15, s, 4); I = s[44]; s[12] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 106, 7, 15, s, 4); I = s[42]; s[12] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -619,7 +619,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 106, 7, 15, s, 4); I = s[44]; }
+        if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 106, 7, 15, s, 4); I = s[42]; }
       } else if (p < 0) {
         const over = a + a7 * I, under = b + b7 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -628,7 +628,7 @@ function square4__d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -709,7 +709,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[42] = a; s[43] = b; searched(c, t, 34, 4, 9, s, 4); I = s[44]; s[12] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 34, 4, 9, s, 4); I = s[42]; s[12] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -719,7 +719,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[42] = a; s[43] = b; s[44] = I; bent(c, t, 34, 4, 9, s, 4); I = s[44]; }
+        if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 34, 4, 9, s, 4); I = s[42]; }
       } else if (p < 0) {
         const over = a + a4 * I, under = b + b4 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -728,7 +728,7 @@ function square0_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[42] = a; s[43] = b; s[44] = I;
+      s[40] = a; s[41] = b; s[42] = I;
       conduct_square(c, t, 34, 4, 9, 20, s, 4);
       I = s[6]; S = s[7]; D = s[8]; vs = s[9]; vd = s[10];
     }
@@ -819,7 +819,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[43] = a; s[44] = b; searched(c, t, 54, 5, 11, s, 5); I = s[45]; s[13] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[41] = a; s[42] = b; searched(c, t, 54, 5, 11, s, 5); I = s[43]; s[13] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -829,7 +829,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[43] = a; s[44] = b; s[45] = I; bent(c, t, 54, 5, 11, s, 5); I = s[45]; }
+        if (lambda != 0) { s[41] = a; s[42] = b; s[43] = I; bent(c, t, 54, 5, 11, s, 5); I = s[43]; }
       } else if (p < 0) {
         const over = a + a5 * I, under = b + b5 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -838,7 +838,7 @@ function square1_x_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Float
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[43] = a; s[44] = b; s[45] = I;
+      s[41] = a; s[42] = b; s[43] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 5);
       I = s[7]; S = s[8]; D = s[9]; vs = s[10]; vd = s[11];
     }
@@ -925,7 +925,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[44] = a; s[45] = b; searched(c, t, 54, 5, 11, s, 8); I = s[46]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -935,7 +935,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
+        if (lambda != 0) { s[44] = a; s[45] = b; s[46] = I; bent(c, t, 54, 5, 11, s, 8); I = s[46]; }
       } else if (p < 0) {
         const over = a + a5 * I, under = b + b5 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -944,7 +944,7 @@ function square0_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[46] = a; s[47] = b; s[48] = I;
+      s[44] = a; s[45] = b; s[46] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -1054,7 +1054,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[45] = a; s[46] = b; searched(c, t, 78, 6, 13, s, 9); I = s[47]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1064,7 +1064,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
+        if (lambda != 0) { s[45] = a; s[46] = b; s[47] = I; bent(c, t, 78, 6, 13, s, 9); I = s[47]; }
       } else if (p < 0) {
         const over = a + a6 * I, under = b + b6 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1073,7 +1073,7 @@ function square1_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[45] = a; s[46] = b; s[47] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1212,7 +1212,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 106, 7, 15, s, 10); I = s[48]; s[18] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1222,7 +1222,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 106, 7, 15, s, 10); I = s[50]; }
+        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 106, 7, 15, s, 10); I = s[48]; }
       } else if (p < 0) {
         const over = a + a7 * I, under = b + b7 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1231,7 +1231,7 @@ function square2_xg_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[48] = a; s[49] = b; s[50] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -1320,7 +1320,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[44] = a; s[45] = b; searched(c, t, 54, 5, 11, s, 8); I = s[46]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1330,7 +1330,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
+        if (lambda != 0) { s[44] = a; s[45] = b; s[46] = I; bent(c, t, 54, 5, 11, s, 8); I = s[46]; }
       } else if (p < 0) {
         const over = a + a5 * I, under = b + b5 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1339,7 +1339,7 @@ function square0_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[46] = a; s[47] = b; s[48] = I;
+      s[44] = a; s[45] = b; s[46] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -1436,7 +1436,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[45] = a; s[46] = b; searched(c, t, 78, 6, 13, s, 9); I = s[47]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1446,7 +1446,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
+        if (lambda != 0) { s[45] = a; s[46] = b; s[47] = I; bent(c, t, 78, 6, 13, s, 9); I = s[47]; }
       } else if (p < 0) {
         const over = a + a6 * I, under = b + b6 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1455,7 +1455,7 @@ function square1_gm_d(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[45] = a; s[46] = b; s[47] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -1521,7 +1521,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 4 + 0] + a3 * J;
       b += w[i * 4 + 1] + b3 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 18, 3, 7, s, 0); I = s[40]; s[8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[36] = a; s[37] = b; searched(c, t, 18, 3, 7, s, 0); I = s[38]; s[8] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1531,7 +1531,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 18, 3, 7, s, 0); I = s[40]; }
+        if (lambda != 0) { s[36] = a; s[37] = b; s[38] = I; bent(c, t, 18, 3, 7, s, 0); I = s[38]; }
       } else if (p < 0) {
         const over = a + a3 * I, under = b + b3 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1540,7 +1540,7 @@ function square0__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a3 * I;
     vd = b + b3 * I;
     if (vs > on || vd > on) {
-      s[38] = a; s[39] = b; s[40] = I;
+      s[36] = a; s[37] = b; s[38] = I;
       conduct_square(c, t, 18, 3, 7, 12, s, 0);
       I = s[2]; S = s[3]; D = s[4]; vs = s[5]; vd = s[6];
     }
@@ -1613,7 +1613,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 5 + 0] + a4 * J;
       b += w[i * 5 + 1] + b4 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 34, 4, 9, s, 1); I = s[41]; s[9] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[37] = a; s[38] = b; searched(c, t, 34, 4, 9, s, 1); I = s[39]; s[9] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1623,7 +1623,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 34, 4, 9, s, 1); I = s[41]; }
+        if (lambda != 0) { s[37] = a; s[38] = b; s[39] = I; bent(c, t, 34, 4, 9, s, 1); I = s[39]; }
       } else if (p < 0) {
         const over = a + a4 * I, under = b + b4 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1632,7 +1632,7 @@ function square1__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a4 * I;
     vd = b + b4 * I;
     if (vs > on || vd > on) {
-      s[39] = a; s[40] = b; s[41] = I;
+      s[37] = a; s[38] = b; s[39] = I;
       conduct_square(c, t, 34, 4, 9, 20, s, 1);
       I = s[3]; S = s[4]; D = s[5]; vs = s[6]; vd = s[7];
     }
@@ -1730,7 +1730,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[40] = a; s[41] = b; searched(c, t, 54, 5, 11, s, 2); I = s[42]; s[10] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[38] = a; s[39] = b; searched(c, t, 54, 5, 11, s, 2); I = s[40]; s[10] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1740,7 +1740,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[40] = a; s[41] = b; s[42] = I; bent(c, t, 54, 5, 11, s, 2); I = s[42]; }
+        if (lambda != 0) { s[38] = a; s[39] = b; s[40] = I; bent(c, t, 54, 5, 11, s, 2); I = s[40]; }
       } else if (p < 0) {
         const over = a + a5 * I, under = b + b5 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1749,7 +1749,7 @@ function square2__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[40] = a; s[41] = b; s[42] = I;
+      s[38] = a; s[39] = b; s[40] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 2);
       I = s[4]; S = s[5]; D = s[6]; vs = s[7]; vd = s[8];
     }
@@ -1874,7 +1874,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[41] = a; s[42] = b; searched(c, t, 78, 6, 13, s, 3); I = s[43]; s[11] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[39] = a; s[40] = b; searched(c, t, 78, 6, 13, s, 3); I = s[41]; s[11] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -1884,7 +1884,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[41] = a; s[42] = b; s[43] = I; bent(c, t, 78, 6, 13, s, 3); I = s[43]; }
+        if (lambda != 0) { s[39] = a; s[40] = b; s[41] = I; bent(c, t, 78, 6, 13, s, 3); I = s[41]; }
       } else if (p < 0) {
         const over = a + a6 * I, under = b + b6 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -1893,7 +1893,7 @@ function square3__x(c: Float64Array, t: Float64Array, w: Float64Array, e: Float6
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[41] = a; s[42] = b; s[43] = I;
+      s[39] = a; s[40] = b; s[41] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 3);
       I = s[5]; S = s[6]; D = s[7]; vs = s[8]; vd = s[9];
     }
@@ -1997,7 +1997,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 6 + 0] + a5 * J;
       b += w[i * 6 + 1] + b5 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 54, 5, 11, s, 8); I = s[48]; s[16] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[44] = a; s[45] = b; searched(c, t, 54, 5, 11, s, 8); I = s[46]; s[16] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -2007,7 +2007,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 54, 5, 11, s, 8); I = s[48]; }
+        if (lambda != 0) { s[44] = a; s[45] = b; s[46] = I; bent(c, t, 54, 5, 11, s, 8); I = s[46]; }
       } else if (p < 0) {
         const over = a + a5 * I, under = b + b5 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -2016,7 +2016,7 @@ function square0_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a5 * I;
     vd = b + b5 * I;
     if (vs > on || vd > on) {
-      s[46] = a; s[47] = b; s[48] = I;
+      s[44] = a; s[45] = b; s[46] = I;
       conduct_square(c, t, 54, 5, 11, 30, s, 8);
       I = s[10]; S = s[11]; D = s[12]; vs = s[13]; vd = s[14];
     }
@@ -2145,7 +2145,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 7 + 0] + a6 * J;
       b += w[i * 7 + 1] + b6 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 78, 6, 13, s, 9); I = s[49]; s[17] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[45] = a; s[46] = b; searched(c, t, 78, 6, 13, s, 9); I = s[47]; s[17] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -2155,7 +2155,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 78, 6, 13, s, 9); I = s[49]; }
+        if (lambda != 0) { s[45] = a; s[46] = b; s[47] = I; bent(c, t, 78, 6, 13, s, 9); I = s[47]; }
       } else if (p < 0) {
         const over = a + a6 * I, under = b + b6 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -2164,7 +2164,7 @@ function square1_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a6 * I;
     vd = b + b6 * I;
     if (vs > on || vd > on) {
-      s[47] = a; s[48] = b; s[49] = I;
+      s[45] = a; s[46] = b; s[47] = I;
       conduct_square(c, t, 78, 6, 13, 42, s, 9);
       I = s[11]; S = s[12]; D = s[13]; vs = s[14]; vd = s[15];
     }
@@ -2324,7 +2324,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[48] = a; s[49] = b; searched(c, t, 106, 7, 15, s, 10); I = s[50]; s[18] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[46] = a; s[47] = b; searched(c, t, 106, 7, 15, s, 10); I = s[48]; s[18] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -2334,7 +2334,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[48] = a; s[49] = b; s[50] = I; bent(c, t, 106, 7, 15, s, 10); I = s[50]; }
+        if (lambda != 0) { s[46] = a; s[47] = b; s[48] = I; bent(c, t, 106, 7, 15, s, 10); I = s[48]; }
       } else if (p < 0) {
         const over = a + a7 * I, under = b + b7 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -2343,7 +2343,7 @@ function square2_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[48] = a; s[49] = b; s[50] = I;
+      s[46] = a; s[47] = b; s[48] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 10);
       I = s[12]; S = s[13]; D = s[14]; vs = s[15]; vd = s[16];
     }
@@ -2538,7 +2538,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[49] = a; s[50] = b; searched(c, t, 138, 8, 17, s, 11); I = s[51]; s[19] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[47] = a; s[48] = b; searched(c, t, 138, 8, 17, s, 11); I = s[49]; s[19] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -2548,7 +2548,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[49] = a; s[50] = b; s[51] = I; bent(c, t, 138, 8, 17, s, 11); I = s[51]; }
+        if (lambda != 0) { s[47] = a; s[48] = b; s[49] = I; bent(c, t, 138, 8, 17, s, 11); I = s[49]; }
       } else if (p < 0) {
         const over = a + a8 * I, under = b + b8 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -2557,7 +2557,7 @@ function square3_xx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Floa
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[49] = a; s[50] = b; s[51] = I;
+      s[47] = a; s[48] = b; s[49] = I;
       conduct_square(c, t, 138, 8, 17, 72, s, 11);
       I = s[13]; S = s[14]; D = s[15]; vs = s[16]; vd = s[17];
     }
@@ -2725,7 +2725,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 8 + 0] + a7 * J;
       b += w[i * 8 + 1] + b7 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[51] = a; s[52] = b; searched(c, t, 106, 7, 15, s, 13); I = s[53]; s[21] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[49] = a; s[50] = b; searched(c, t, 106, 7, 15, s, 13); I = s[51]; s[21] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -2735,7 +2735,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[51] = a; s[52] = b; s[53] = I; bent(c, t, 106, 7, 15, s, 13); I = s[53]; }
+        if (lambda != 0) { s[49] = a; s[50] = b; s[51] = I; bent(c, t, 106, 7, 15, s, 13); I = s[51]; }
       } else if (p < 0) {
         const over = a + a7 * I, under = b + b7 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -2744,7 +2744,7 @@ function square1_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     vs = a + a7 * I;
     vd = b + b7 * I;
     if (vs > on || vd > on) {
-      s[51] = a; s[52] = b; s[53] = I;
+      s[49] = a; s[50] = b; s[51] = I;
       conduct_square(c, t, 106, 7, 15, 56, s, 13);
       I = s[15]; S = s[16]; D = s[17]; vs = s[18]; vd = s[19];
     }
@@ -2941,7 +2941,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
       a += w[i * 9 + 0] + a8 * J;
       b += w[i * 9 + 1] + b8 * J;
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[52] = a; s[53] = b; searched(c, t, 138, 8, 17, s, 14); I = s[54]; s[22] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[50] = a; s[51] = b; searched(c, t, 138, 8, 17, s, 14); I = s[52]; s[22] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -2951,7 +2951,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[52] = a; s[53] = b; s[54] = I; bent(c, t, 138, 8, 17, s, 14); I = s[54]; }
+        if (lambda != 0) { s[50] = a; s[51] = b; s[52] = I; bent(c, t, 138, 8, 17, s, 14); I = s[52]; }
       } else if (p < 0) {
         const over = a + a8 * I, under = b + b8 * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -2960,7 +2960,7 @@ function square2_xxx_x(c: Float64Array, t: Float64Array, w: Float64Array, e: Flo
     vs = a + a8 * I;
     vd = b + b8 * I;
     if (vs > on || vd > on) {
-      s[52] = a; s[53] = b; s[54] = I;
+      s[50] = a; s[51] = b; s[52] = I;
       conduct_square(c, t, 138, 8, 17, 72, s, 14);
       I = s[16]; S = s[17]; D = s[18]; vs = s[19]; vd = s[20];
     }
@@ -3062,7 +3062,7 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
       a += w[noise] + perAs * J; b += w[noise + 1] + perAd * J;
       for (let r = 2; r < n + 2; r++) sums[r] += w[noise + r];
     }
-    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[slots + 38] = a; s[slots + 39] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; s[slots + 8] += 1; }
+    if ((b > 0 && rise * b < -0.25) || (a > 0 && fall * a < -0.25)) { s[slots + 36] = a; s[slots + 37] = b; searched(c, t, device, aI, bI, s, slots + 0); I = s[slots + 38]; s[slots + 8] += 1; }
     else if (a > 0 || b > 0) {
       const p = fall * a + rise * b, g = fall * b + rise * a;
       I = 2 * scale * (a - b) * (a + b) / (1 + p + Math.sqrt(1 + 2 * p + g * g));
@@ -3072,7 +3072,7 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
         } else {
           I = -2 * scale * b * b / (1 + rise * b + Math.sqrt(1 + 2 * rise * b));
         }
-        if (lambda != 0) { s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I; bent(c, t, device, aI, bI, s, slots + 0); I = s[slots + 40]; }
+        if (lambda != 0) { s[slots + 36] = a; s[slots + 37] = b; s[slots + 38] = I; bent(c, t, device, aI, bI, s, slots + 0); I = s[slots + 38]; }
       } else if (p < 0) {
         const over = a + perAs * I, under = b + perAd * I;
         I -= (I - scale * (over - under) * (over + under)) / (1 + fall * over + rise * under);
@@ -3081,7 +3081,7 @@ function looped_square(trapezoidal: number, stiff: number): Kernel {
     vs = a + perAs * I;
     vd = b + perAd * I;
     if (vs > on || vd > on) {
-      s[slots + 38] = a; s[slots + 39] = b; s[slots + 40] = I;
+      s[slots + 36] = a; s[slots + 37] = b; s[slots + 38] = I;
       conduct_square(c, t, device, aI, bI, junction, s, slots);
       I = s[slots + 2]; S = s[slots + 3]; D = s[slots + 4]; vs = s[slots + 5]; vd = s[slots + 6];
     }

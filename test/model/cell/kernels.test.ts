@@ -1,7 +1,8 @@
 import { readFileSync } from 'node:fs';
 import fc from 'fast-check';
 import { expect, test } from 'vitest';
-import { advanceCell, compileCell, createCell, loadValues, overdriveV, settle } from '../../../model/cell/cell.ts';
+import { advanceCell, compileCell, createCell, overdriveV, settle } from '../../../model/cell/cell.ts';
+import { loadValues } from '../../../model/cell/values.ts';
 import { kernelModule } from '../../../model/cell/kernels/source.ts';
 import { shuntCircuit } from '../../../model/cell/shunt.ts';
 import type { Cell, Device } from '../../../model/design/types.ts';
